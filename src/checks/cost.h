@@ -1,0 +1,56 @@
+/* Takeoff and cost of one wall of the brief's length and height.
+ * Money rule: each line is quantity (fractional, waste included) x rate, rounded to the cent half-up; the total is the sum
+ * of rounded lines; per_m2 = total / area. Lines of the core (framing, fills, mounts, sealant, backing) and of the leaves
+ * (boards, membranes, their labour, tape and finish) never share an item, so cost = core + leaves, exactly, in cents, before markups,
+ * and markups depend only on the summed material and labour cents. */
+#ifndef CHECKS_COST_H
+#define CHECKS_COST_H
+
+#include "input/job.h"
+#include "input/prices.h"
+#include "wall/wall.h"
+
+typedef enum line_kind { LINE_MATERIAL, LINE_LABOUR, LINE_MARKUP } line_kind;
+
+typedef struct cost_line {
+  int item;             /* in the price book; CATALOG_NONE for markups */
+  const char *name;     /* item name */
+  const char *section;
+  line_kind kind;
+  double quantity;      /* in `unit`; labour in hours; markups: the base amount in currency */
+  const char *unit;     /* "m2", "m", "each", "h", "" */
+  double rate;          /* per unit, in currency; markups: the share */
+  long long cents;
+} cost_line;
+
+enum { COST_MAX_LINES = 96 };
+typedef struct takeoff {
+  int count;
+  cost_line line[COST_MAX_LINES];
+  double hours;
+  int missing;          /* an item without a price: its code below; the wall cannot be costed */
+  const char *missing_code;
+} takeoff;
+
+typedef struct cost_parts {
+  long long material_cents, labour_cents;
+  double hours;
+  bool missing;
+} cost_parts;
+
+typedef struct cost_total {
+  long long material_cents, labour_cents, markup_cents, total_cents;
+  long long floor_value_cents;  /* value of the floor under the thickness: apart from the total */
+  double area_m2, hours;
+} cost_total;
+
+/* The full takeoff with markup lines. */
+void cost_takeoff(const price_book *book, const catalog *c, const brief *b, const wall *w, takeoff *out, cost_total *total);
+/* The two parts, for the sweep. core: faces ignored. leaves: uses of the core only what leaf lines depend on (frame material and mil,
+ * support spacing of each side, mounts). */
+cost_parts cost_core(const price_book *book, const catalog *c, const brief *b, const wall *core);
+cost_parts cost_leaves(const price_book *book, const catalog *c, const brief *b, const wall *w);
+/* Markups and total from summed parts; the same arithmetic that cost_takeoff uses. */
+cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, cost_parts core, cost_parts leaves);
+
+#endif

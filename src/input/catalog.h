@@ -1,0 +1,172 @@
+/* The catalogs: what can be built with, the rows of fire rules and published ratings, the coefficients of the model.
+ * Read from a folder with boards.json frames.json fills.json mounts.json fire.json targets.json published.json
+ * acoustics.json. Every record carries its source. Indices are positions in the arrays below; they follow file order. */
+#ifndef INPUT_CATALOG_H
+#define INPUT_CATALOG_H
+
+#include <stdbool.h>
+#include <stddef.h>
+
+#include "input/json.h"
+
+enum { CATALOG_NONE = -1, CATALOG_MAX_RECORDS = 1000 };
+
+typedef enum layer_material {
+  LAYER_GYPSUM,      /* paper or glass-mat faced board */
+  LAYER_CEMENT,      /* cement backer */
+  LAYER_WOOD,        /* OSB, plywood */
+  LAYER_FIBREBOARD,  /* sound-deadening */
+  LAYER_LIMP,        /* mass-loaded vinyl: mass without stiffness */
+  LAYER_DAMPING      /* viscoelastic compound between two boards */
+} layer_material;
+
+/* A board or membrane. */
+typedef struct layer {
+  const char *id, *name, *source;
+  layer_material material;
+  bool membrane;           /* limp mass or damping: counts as no board */
+  double thickness_m, mass_kg_m2;
+  double coincidence_m_s;  /* critical frequency x thickness; 0 for membranes */
+  double bending_n_m;      /* stiffness per width, from mass, thickness and coincidence; 0 for membranes */
+  double loss_factor;      /* own loss of a damped board or layer; 0 = the model's installed loss */
+  bool face;               /* may be the room-side face */
+  bool face_if_asked;      /* wood panels: only where the brief allows */
+  bool backing;            /* OSB, plywood, fibreboard, cement: may stand behind finish boards */
+  bool type_x;             /* earns Type X fire credit (Type C too) */
+  bool type_c;
+  bool regular;            /* plain gypsum board */
+  bool abuse, moisture;    /* fit for abuse and wet sides */
+  bool noncombustible, frt; /* frt: fire-retardant-treated wood */
+  bool shear;              /* may serve as a shear panel */
+  bool special;            /* not a stock item */
+  bool ordinary;           /* enumerated in ordinary build */
+  double max_spacing_m;    /* stud spacing; 0 = any of the catalog's */
+  double max_spacing_single_m; /* as a single layer; 0 = as max_spacing_m */
+  int min_steel_mil;       /* steel studs must be at least so thick; 0 = any */
+  double fire_minutes;     /* component-additive membrane time of one layer (IBC 722.6.2(1)); 0 = none */
+} layer;
+
+typedef enum frame_material { FRAME_WOOD, FRAME_STEEL } frame_material;
+typedef enum frame_layout { FRAME_SINGLE, FRAME_STAGGERED, FRAME_DOUBLE } frame_layout;
+
+typedef struct frame {
+  const char *id, *name, *source;
+  frame_material material;
+  frame_layout layout;
+  const char *stud;         /* price item of the stud (the single-row frame's id): "steel-92-18", "wood-89" */
+  const char *runner;       /* price item of track or plate: "track-92-18", "plate-89", "plate-140" */
+  const char *group;        /* framing group; NULL = the material's */
+  double stud_depth_m;      /* of one stud: 0.0921 */
+  double row_depth_m;       /* of one row: the plate or runner; staggered: the common plate (0.1397) */
+  int rows;                 /* 1; double: 2 */
+  int mil;                  /* steel; 0 for wood */
+  double steel_thickness_m; /* design thickness; 0 for wood */
+  double flange_m, stud_width_m;
+  double stud_mass_kg_m, runner_mass_kg_m; /* per metre of one stud, of one runner */
+  double inertia_m4;        /* gross second moment of one stud */
+  double inertia_effective_m4, moment_n_m; /* effective I; allowable moment; 0 = not tabulated */
+  double composite_inertia_m4; /* with one board each side full height (limiting-height table); 0 = not tabulated */
+  double modulus_pa;
+  bool loadbearing;         /* may carry load (subject to the rules of checks/structure) */
+  bool noncombustible, frt;
+  bool special, ordinary;
+  double max_height_m, max_height_bearing_m; /* wood: prescriptive limits; 0 = none tabulated */
+  double knockout_m;        /* steel: width of the holes for services; 0 for wood */
+} frame;
+
+typedef enum fill_material { FILL_GLASS, FILL_STONE, FILL_CELLULOSE } fill_material;
+
+typedef struct fill {
+  const char *id, *name, *source;
+  fill_material material;
+  double thickness_m, density_kg_m3, mass_kg_m2, resistivity_pa_s_m2;
+  bool wood_only;           /* dense-packed cellulose in ordinary build */
+  bool special, ordinary;
+  bool dense;               /* earns the +15 min of component-additive fire */
+} fill;
+
+typedef struct mount {
+  const char *id, *name, *source;
+  bool clips;               /* isolation clips with furring channel, else resilient channel */
+  double depth_m;           /* air it adds behind the leaf (channel 0.013; clip and furring 0.041) */
+  double rail_mass_kg_m;    /* channel or furring, per metre */
+  double clip_mass_kg;
+  double max_leaf_kg_m2;    /* 0 = none stated */
+  double clip_capacity_kg;  /* per clip; 0 for channel */
+  const char *rail, *clip;  /* price items; clip NULL for channel */
+} mount;
+
+/* What a fire row, a published row or a listing asks of one side: n boards of a kind, or exact layers. */
+enum { ROW_MAX_SIDE = 4 };
+typedef struct row_side {
+  int boards;               /* number of gypsum layers */
+  const char *board[ROW_MAX_SIDE]; /* layer ids from the room inwards; each matches `id` (see row_match in checks) */
+} row_side;
+
+typedef enum row_mount { ROW_MOUNT_NONE, ROW_MOUNT_CHANNEL, ROW_MOUNT_ANY } row_mount;
+typedef enum row_fill { ROW_FILL_NONE, ROW_FILL_OPTIONAL, ROW_FILL_REQUIRED } row_fill;
+typedef enum fire_code { CODE_NONE, CODE_IBC, CODE_NBC } fire_code;
+
+/* One prescriptive fire row, published rating, or both (a code table's wall). */
+typedef struct wall_row {
+  const char *id, *source, *note;
+  fire_code code;
+  frame_material material;
+  frame_layout layout;
+  double depth_m;           /* stud depth */
+  int mil_min, mil_max;     /* steel; 0 = any */
+  double spacing_min_m, spacing_max_m; /* published: both count; fire: the maximum */
+  double gap_m;
+  row_side side_a, side_b;  /* side_a is the side of the mount */
+  row_mount mount;
+  double mount_spacing_min_m, mount_spacing_max_m; /* 0 = any */
+  row_fill fill;
+  unsigned fill_kinds;      /* bit per fill_material */
+  int filled_rows;          /* rows of a double wall that are filled */
+  double fill_kg_m2;        /* least mass of the fill per row; 0 = any */
+  bool fill_full;           /* at least 90 % of the cavity */
+  int minutes_bearing, minutes_nonbearing; /* fire; 0 = not assigned */
+  int stc;                  /* published rating; 0 = none */
+  double stc_sd;            /* 1.0 code table, 1.2 test report */
+} wall_row;
+
+typedef struct target_row {
+  const char *adjacency, *name, *metric, *source;
+  int value;                /* laboratory rating */
+  int field_value;          /* 0 = none stated */
+  bool composite;           /* scope */
+} target_row;
+
+typedef struct acoustics acoustics; /* acoustics/coefficients: see input/coefficients.h */
+
+typedef struct catalog {
+  const char *folder;
+  layer *layers;   size_t layer_count;
+  frame *frames;   size_t frame_count;
+  fill *fills;     size_t fill_count;
+  mount *mounts;   size_t mount_count;
+  wall_row *fire;  size_t fire_count;
+  wall_row *published; size_t published_count;
+  target_row *targets; size_t target_count;
+  int *spacings_mm; size_t spacing_count;             /* 305 406 610 */
+  int *mount_spacings_mm; size_t mount_spacing_count; /* 305 406 610 */
+  /* component-additive rule (fire.json "component_additive") */
+  double additive_frame_minutes, additive_fill_minutes, additive_max_minutes, additive_max_spacing_m;
+  const char *additive_source;
+  const acoustics *acoustics;
+} catalog;
+
+/* Reads all files of `folder`. NULL when any has an error. */
+catalog *catalog_load(arena *a, diag_list *d, const char *folder);
+/* Reads one catalog file of any kind into nothing, to check it. True when sound. */
+bool catalog_check_file(arena *a, diag_list *d, const json_value *root);
+
+/* Index by exact id or CATALOG_NONE. */
+int catalog_layer(const catalog *c, const char *id);
+int catalog_frame(const catalog *c, const char *id);
+int catalog_fill(const catalog *c, const char *id);
+int catalog_mount(const catalog *c, const char *id);
+/* The id nearest to a word among all ids, or NULL. */
+const char *catalog_nearest(const catalog *c, const char *word);
+
+#endif
