@@ -96,39 +96,66 @@ typedef struct mount {
   const char *rail, *clip;  /* price items; clip NULL for channel */
 } mount;
 
-/* What a fire row, a published row or a listing asks of one side: n boards of a kind, or exact layers. */
-enum { ROW_MAX_SIDE = 4 };
+/* What a fire row, a published row or a listing asks of one side: layers from the room inwards. */
+enum { ROW_MAX_SIDE = 4, ROW_MAX_NEEDS = 64, ROW_MAX_PAIRS = 128 };
+
+/* What one layer must be. Which layers of a wall serve is for the checks to say (fire: Type X for Type X, any plain or better
+ * gypsum for gypsum, a wood panel for wood, at least as thick; published ratings: the layer itself or its like). */
+typedef enum need_kind { NEED_TYPE_X, NEED_GYPSUM, NEED_WOOD, NEED_LAYER } need_kind;
+typedef struct layer_need {
+  need_kind kind;
+  double thickness_m;       /* least thickness; 0 for NEED_LAYER */
+  int layer;                /* catalog index; CATALOG_NONE in a need of a membrane table */
+} layer_need;
+
+/* The distinct sides that the rows of a file ask for; a leaf is matched against each once. */
+typedef struct side_need {
+  int count;
+  layer_need item[ROW_MAX_SIDE];
+  double minutes;           /* component-additive membranes only: the time the membrane earns */
+} side_need;
+
 typedef struct row_side {
-  int boards;               /* number of gypsum layers */
-  const char *board[ROW_MAX_SIDE]; /* layer ids from the room inwards; each matches `id` (see row_match in checks) */
+  int boards;               /* number of layers */
+  const char *board[ROW_MAX_SIDE]; /* layer ids from the room inwards */
+  int need;                 /* index among the needs of the file; set by rows_check_ids */
 } row_side;
 
 typedef enum row_mount { ROW_MOUNT_NONE, ROW_MOUNT_CHANNEL, ROW_MOUNT_ANY } row_mount;
 typedef enum row_fill { ROW_FILL_NONE, ROW_FILL_OPTIONAL, ROW_FILL_REQUIRED } row_fill;
 typedef enum fire_code { CODE_NONE, CODE_IBC, CODE_NBC } fire_code;
 
-/* One prescriptive fire row, published rating, or both (a code table's wall). */
+/* One prescriptive fire row, listing, or published rating. */
 typedef struct wall_row {
-  const char *id, *source, *note;
-  fire_code code;
+  const char *id, *name, *source, *note; /* note: "" when none */
+  fire_code code;           /* fire rows; CODE_NONE = a listing, which serves under every code */
   frame_material material;
   frame_layout layout;
   double depth_m;           /* stud depth */
   int mil_min, mil_max;     /* steel; 0 = any */
   double spacing_min_m, spacing_max_m; /* published: both count; fire: the maximum */
-  double gap_m;
+  double gap_m;             /* between the rows of a double frame; 0 = not stated. Fire: the least */
   row_side side_a, side_b;  /* side_a is the side of the mount */
+  int pair;                 /* index of the distinct (need of A, need of B), below ROW_MAX_PAIRS; set by rows_check_ids */
   row_mount mount;
   double mount_spacing_min_m, mount_spacing_max_m; /* 0 = any */
   row_fill fill;
   unsigned fill_kinds;      /* bit per fill_material */
-  int filled_rows;          /* rows of a double wall that are filled */
-  double fill_kg_m2;        /* least mass of the fill per row; 0 = any */
-  bool fill_full;           /* at least 90 % of the cavity */
+  int filled_rows;          /* rows of the frame that are filled; 0 without fill */
+  double fill_kg_m2;        /* least mass of the fill per row at the row's own depth; 0 = any */
+  double fill_thickness_m;  /* least thickness where the cavity need not be full; 0 = at least 90 % of the cavity */
   int minutes_bearing, minutes_nonbearing; /* fire; 0 = not assigned */
   int stc;                  /* published rating; 0 = none */
   double stc_sd;            /* 1.0 code table, 1.2 test report */
+  const json_value *json;   /* where it was read, for messages while loading */
 } wall_row;
+
+/* How far apart a wall and a published one are, in points: what a difference of each kind weighs (docs/methods/evidence.md). */
+typedef struct evidence_weights {
+  double layer, board, material, layout, mount, mount_kind, mount_side, mount_spacing, spacing, depth, steel, fill, partial_fill,
+      fill_row, gap;
+  const char *source;
+} evidence_weights;
 
 typedef struct target_row {
   const char *adjacency, *name, *metric, *source;
@@ -152,7 +179,15 @@ typedef struct catalog {
   int *mount_spacings_mm; size_t mount_spacing_count; /* 305 406 610 */
   /* component-additive rule (fire.json "component_additive") */
   double additive_frame_minutes, additive_fill_minutes, additive_max_minutes, additive_max_spacing_m;
+  double additive_min_depth_m;
+  double additive_fill_kg_m3[FILL_CELLULOSE + 1]; /* least density that earns the fill's minutes, per fill_material */
   const char *additive_source;
+  side_need *membranes; size_t membrane_count; /* tabulated membranes with their minutes */
+  side_need *fire_needs; size_t fire_need_count;           /* distinct sides of `fire`; at most ROW_MAX_NEEDS */
+  side_need *published_needs; size_t published_need_count; /* of `published` */
+  int nbc_max_storeys;                         /* the NBC table serves buildings up to so many; 0 = any */
+  const char *nbc_scope;                       /* sentence for buildings above, with its source */
+  evidence_weights distance;
   const acoustics *acoustics;
 } catalog;
 
