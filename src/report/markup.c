@@ -1,0 +1,159 @@
+#include "report/markup.h"
+
+#include <math.h>
+#include <stddef.h>
+#include <string.h>
+
+/* Length of the well-formed UTF-8 sequence at `s` (Unicode 15, table 3-7), 0 when there is none. */
+static size_t utf8_length(const unsigned char *s) {
+  static const struct {
+    unsigned char first, last, second_low, second_high, length;
+  } forms[] = {
+      {0x01, 0x7F, 0, 0, 1},       {0xC2, 0xDF, 0x80, 0xBF, 2}, {0xE0, 0xE0, 0xA0, 0xBF, 3},
+      {0xE1, 0xEC, 0x80, 0xBF, 3}, {0xED, 0xED, 0x80, 0x9F, 3}, {0xEE, 0xEF, 0x80, 0xBF, 3},
+      {0xF0, 0xF0, 0x90, 0xBF, 4}, {0xF1, 0xF3, 0x80, 0xBF, 4}, {0xF4, 0xF4, 0x80, 0x8F, 4},
+  };
+  for (size_t i = 0; i < sizeof forms / sizeof forms[0]; i++) {
+    if (s[0] < forms[i].first || s[0] > forms[i].last) continue;
+    if (forms[i].length == 1) return 1;
+    if (s[1] < forms[i].second_low || s[1] > forms[i].second_high) return 0;
+    for (size_t k = 2; k < forms[i].length; k++)
+      if (s[k] < 0x80 || s[k] > 0xBF) return 0;
+    return forms[i].length;
+  }
+  return 0;
+}
+
+static void put_json_character(text *out, const unsigned char *s, size_t length) {
+  if (length == 0)
+    text_put(out, "\xEF\xBF\xBD");
+  else if (*s == '"' || *s == '\\') {
+    text_char(out, '\\');
+    text_char(out, (char)*s);
+  } else if (*s == '\n')
+    text_put(out, "\\n");
+  else if (*s == '\t')
+    text_put(out, "\\t");
+  else if (*s < 0x20 || *s == 0x7F)
+    text_putf(out, "\\u%04x", (unsigned)*s);
+  else
+    text_putn(out, (const char *)s, length);
+}
+
+static void put_json_quoted(text *out, const char *value) {
+  text_char(out, '"');
+  for (const unsigned char *s = (const unsigned char *)value; *s != '\0';) {
+    size_t length = utf8_length(s);
+    put_json_character(out, s, length);
+    s += length ? length : 1;
+  }
+  text_char(out, '"');
+}
+
+static void new_line(markup_json *j) {
+  text_char(j->out, '\n');
+  for (int i = 0; i < j->depth; i++) text_put(j->out, "  ");
+}
+
+/* What stands before a value: comma, line break, key. */
+static void begin_value(markup_json *j, const char *key) {
+  if (j->depth > 0) {
+    int in = j->depth - 1;
+    if (j->filled[in]) text_char(j->out, ',');
+    if (!j->line[in])
+      new_line(j);
+    else if (j->filled[in])
+      text_char(j->out, ' ');
+    j->filled[in] = true;
+  }
+  if (key == NULL) return;
+  put_json_quoted(j->out, key);
+  text_put(j->out, ": ");
+}
+
+static void open_container(markup_json *j, const char *key, bool line, char opening, char closing) {
+  begin_value(j, key);
+  text_char(j->out, opening);
+  if (j->depth == MARKUP_MAX_DEPTH) return;
+  j->closing[j->depth] = closing;
+  j->filled[j->depth] = false;
+  j->line[j->depth] = line || (j->depth > 0 && j->line[j->depth - 1]);
+  j->depth++;
+}
+
+void markup_json_init(markup_json *j, text *out) {
+  memset(j, 0, sizeof *j);
+  j->out = out;
+}
+
+void markup_json_object(markup_json *j, const char *key, bool line) {
+  open_container(j, key, line, '{', '}');
+}
+
+void markup_json_array(markup_json *j, const char *key, bool line) {
+  open_container(j, key, line, '[', ']');
+}
+
+void markup_json_close(markup_json *j) {
+  if (j->depth == 0) return;
+  j->depth--;
+  if (j->filled[j->depth] && !j->line[j->depth]) new_line(j);
+  text_char(j->out, j->closing[j->depth]);
+  if (j->depth == 0) text_char(j->out, '\n');
+}
+
+void markup_json_string(markup_json *j, const char *key, const char *value) {
+  begin_value(j, key);
+  if (value == NULL)
+    text_put(j->out, "null");
+  else
+    put_json_quoted(j->out, value);
+}
+
+void markup_json_number(markup_json *j, const char *key, double value, int decimals) {
+  begin_value(j, key);
+  if (isfinite(value))
+    text_number(j->out, value, decimals);
+  else
+    text_put(j->out, "null");
+}
+
+void markup_json_integer(markup_json *j, const char *key, long long value) {
+  begin_value(j, key);
+  text_putf(j->out, "%lld", value);
+}
+
+void markup_json_bool(markup_json *j, const char *key, bool value) {
+  begin_value(j, key);
+  text_put(j->out, value ? "true" : "false");
+}
+
+void markup_json_null(markup_json *j, const char *key) {
+  begin_value(j, key);
+  text_put(j->out, "null");
+}
+
+void markup_json_cents(markup_json *j, const char *key, long long cents) {
+  begin_value(j, key);
+  text_cents(j->out, cents, false);
+}
+
+void markup_csv_field(text *out, const char *value, bool first) {
+  if (!first) text_char(out, ',');
+  bool formula = strchr("=+-@\t\r", value[0]) != NULL && value[0] != '\0';
+  bool number = formula && strspn(value + 1, "0123456789.") == strlen(value + 1) && value[1] != '\0';
+  bool guard = formula && !(number && value[0] == '-');
+  if (!guard && strpbrk(value, ",\"\r\n") == NULL) {
+    text_put(out, value);
+    return;
+  }
+  text_char(out, '"');
+  if (guard) text_char(out, '\'');
+  for (const char *s = value; *s != '\0'; s++) {
+    if (*s == '"') text_char(out, '"');
+    text_char(out, *s);
+  }
+  text_char(out, '"');
+}
+
+void markup_csv_end(text *out) { text_put(out, "\r\n"); }
