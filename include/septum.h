@@ -1,8 +1,9 @@
 /* septum: which wall to build between two rooms.
  * SPDX-License-Identifier: GPL-3.0-or-later
  *
- * The library neither prints nor exits. A handle belongs to one thread at a time; answers belong to their handle until
- * freed. Text is UTF-8. All numbers in answers carry their unit in the name. */
+ * The library neither prints nor exits. A handle belongs to one thread at a time; answers live
+ * until freed, also beyond their handle. Text is UTF-8. Numbers in answers carry their unit in
+ * the name. */
 #ifndef SEPTUM_H
 #define SEPTUM_H
 
@@ -19,15 +20,22 @@ typedef enum septum_status {
   SEPTUM_OK = 0,       /* an answer */
   SEPTUM_NO_WALL = 1,  /* an answer: no wall fits */
   SEPTUM_USAGE = 2,    /* an argument cannot be used */
-  SEPTUM_DATA = 3,     /* bad data; see the diagnostics */
+  SEPTUM_DATA = 3,     /* bad data; see the messages */
   SEPTUM_SYSTEM = 4,   /* memory or files */
   SEPTUM_INTERNAL = 5  /* a fault of the library */
 } septum_status;
 
+/* An open set of catalogs. Made by septum_open, freed by septum_close. */
 typedef struct septum septum;
+/* What a call found. Freed by septum_answer_free. */
 typedef struct septum_answer septum_answer;
 
-typedef enum septum_units { SEPTUM_UNITS_BRIEF = 0, SEPTUM_UNITS_US = 1, SEPTUM_UNITS_SI = 2 } septum_units;
+/* Units of the text answer. JSON and CSV are always SI (and per ft2 where the key says so). */
+typedef enum septum_units {
+  SEPTUM_UNITS_BRIEF = 0, /* as the brief says, else US */
+  SEPTUM_UNITS_US = 1,
+  SEPTUM_UNITS_SI = 2
+} septum_units;
 
 /* One located message. Strings live until the callback returns. */
 typedef struct septum_message {
@@ -35,38 +43,59 @@ typedef struct septum_message {
   int code;           /* number of docs/errors.md */
   const char *text;   /* the whole line: "file:line:column: error[E214] $.path: ..." */
 } septum_message;
+
+/* Hears each message as it is found; `user` is what septum_open was given. It must not call the
+ * library. */
 typedef void (*septum_listener)(void *user, const septum_message *message);
 
-/* Fill with septum_options_init, then change. Strings must live during the call. */
+/* Fill with septum_options_init, then change. Strings must live during the call. Files appear
+ * whole or not at all. */
 typedef struct septum_options {
-  const char *prices;      /* price book; NULL = the brief's, else the default book */
-  const char *brief;       /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
-  const char *save_model;  /* pick: write the 0-1 model in CPLEX LP format; NULL = don't */
-  double time_limit_s;     /* 0 = none */
-  septum_units units;
+  const char *prices;     /* price book; NULL = the brief's, else the data folder's default */
+  const char *brief;      /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
+  const char *save_model; /* pick: path for the 0-1 model in CPLEX LP format; NULL = none */
+  const char *save_csv;   /* rate, pick: path for the takeoff as CSV; NULL = none */
+  double time_limit_s;    /* pick: seconds for the solver; 0 = no limit */
+  septum_units units;     /* of the text answer */
 } septum_options;
 
+/* Sets every field to its default. */
 void septum_options_init(septum_options *options);
 
-/* A new handle with the catalogs of `data_dir`/catalogs (or of `catalogs_dir` when not NULL). NULL data_dir:
- * $SEPTUM_DATA, then `<directory of the executable>/../share/septum`. The listener hears every message of this handle. */
-septum_status septum_open(const char *catalogs_dir, septum_listener listener, void *user, septum **out);
+/* A new handle with the catalogs in `catalogs_dir`. NULL: those of the data folder, which is
+ * $SEPTUM_DATA, else `<folder of the executable>/../share/septum`, and holds catalogs/ and prices/.
+ * The listener (NULL = none) hears every message of this handle. *out is NULL unless SEPTUM_OK. */
+septum_status septum_open(const char *catalogs_dir, septum_listener listener, void *user,
+                          septum **out);
+/* Frees the handle. NULL is fine. */
 void septum_close(septum *handle);
 
-/* Rates one wall: a wall line, or the path of a wall/1 file. */
-septum_status septum_rate(septum *handle, const char *wall, const septum_options *options, septum_answer **out);
-/* The cheapest wall for the brief at `path`. */
-septum_status septum_pick(septum *handle, const char *path, const septum_options *options, septum_answer **out);
-/* Checks files of any kind that septum reads; messages go to the listener. *out gets a line a file. */
-septum_status septum_check(septum *handle, const char *const *paths, size_t count, septum_answer **out);
+/* Rates one wall: a wall line (it holds a `|`), or the path of a wall/1 file. `options` NULL =
+ * defaults. SEPTUM_OK, SEPTUM_DATA (a wall that cannot be read or built), SEPTUM_SYSTEM. *out is
+ * NULL unless SEPTUM_OK. */
+septum_status septum_rate(septum *handle, const char *wall, const septum_options *options,
+                          septum_answer **out);
+/* The cheapest wall for the brief at `path`. SEPTUM_OK and SEPTUM_NO_WALL both give an answer. */
+septum_status septum_pick(septum *handle, const char *path, const septum_options *options,
+                          septum_answer **out);
+/* Checks `count` files of any kind that septum reads, by their key "septum"; messages go to the
+ * listener. The answer has a line a file and is given also with SEPTUM_DATA and SEPTUM_SYSTEM,
+ * which say that at least one file has a fault (NULL only when memory ran out). */
+septum_status septum_check(septum *handle, const char *const *paths, size_t count,
+                           septum_answer **out);
 
-/* The answer as text for people, and as JSON; both live as long as the answer. */
+/* The answer as text for people, as JSON, and (rate and pick; else empty) its takeoff as CSV. All
+ * live as long as the answer. */
 const char *septum_answer_text(const septum_answer *answer);
 const char *septum_answer_json(const septum_answer *answer);
+const char *septum_answer_csv(const septum_answer *answer);
+/* Frees the answer. NULL is fine. */
 void septum_answer_free(septum_answer *answer);
 
 /* "0.1.0" */
 const char *septum_version(void);
+/* The one of `n` names that is nearest to `word` in spelling, NULL when none is near: for hints. */
+const char *septum_nearest(const char *word, const char *const *names, size_t n);
 
 #ifdef __cplusplus
 }
