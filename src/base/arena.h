@@ -11,7 +11,8 @@
 
 typedef struct arena arena;
 
-/* A new arena; NULL when memory ran out. `limit_bytes` 0 = no limit. `on_fail` outlives the arena's use. */
+/* A new arena; NULL when memory ran out. `limit_bytes` 0 = no limit. `on_fail` outlives the arena's use; an arena without one
+ * ends the program (abort) when memory runs out. */
 arena *arena_create(size_t limit_bytes, jmp_buf *on_fail);
 /* Frees the arena and all that came from it. NULL is fine. */
 void arena_free(arena *a);
@@ -23,9 +24,13 @@ void *arena_alloc(arena *a, size_t size);
 void *arena_array(arena *a, size_t count, size_t size);
 /* A larger copy of an array; the old one stays in the arena. */
 void *arena_grow(arena *a, const void *old, size_t old_bytes, size_t new_bytes);
+/* As arena_alloc, but NULL when memory ran out: for whoever must close something before the jump. */
+void *arena_try(arena *a, size_t size);
+/* Jumps to `on_fail` as if memory had run out: after closing what was open. */
+_Noreturn void arena_fail(arena *a);
 /* Bytes handed out so far. */
 size_t arena_used(const arena *a);
-/* For tests: the n-th allocation from now on fails (0 = never), over all arenas. */
+/* For tests: the n-th allocation from now on fails (0 = never), over all arenas; those after it succeed again. */
 void arena_fail_at(long n);
 
 #endif

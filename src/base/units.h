@@ -21,6 +21,9 @@ typedef enum units_system { UNITS_US, UNITS_SI } units_system;
  * `default_unit_m` metres (0 = refused). Blanks free. True and *metres set, else false and *expected names what is wanted. */
 bool units_parse_length(const char *s, double default_unit_m, double *metres, const char **expected);
 
+/* `value` of a named unit of length in metres: "m", "cm", "mm", "in", "ft". False for other names. */
+bool units_to_metres(const char *unit, double value, double *metres);
+
 /* Printing. US: to 1/16 in (thickness `4-7/8 in`), feet-inches (`9 ft 6 in`); SI: mm (`123.8 mm`) or m (`3.60 m`). */
 void units_put_thickness(text *out, double metres, units_system u);
 void units_put_height(text *out, double metres, units_system u);
