@@ -20,9 +20,17 @@ typedef enum layer_material {
   LAYER_DAMPING      /* viscoelastic compound between two boards */
 } layer_material;
 
+/* What people say for a record ("5/8X", "2x4", "R13"): catalog_find compares such words without blanks, hyphens, case and
+ * inch marks. A word may stand with several records: then it is ambiguous. */
+typedef struct said_words {
+  const char *const *word; /* `count` strings */
+  size_t count;
+} said_words;
+
 /* A board or membrane. */
 typedef struct layer {
   const char *id, *name, *source;
+  said_words said;
   layer_material material;
   bool membrane;           /* limp mass or damping: counts as no board */
   double thickness_m, mass_kg_m2;
@@ -51,6 +59,7 @@ typedef enum frame_layout { FRAME_SINGLE, FRAME_STAGGERED, FRAME_DOUBLE } frame_
 
 typedef struct frame {
   const char *id, *name, *source;
+  said_words said;
   frame_material material;
   frame_layout layout;
   const char *stud;         /* price item of the stud (the single-row frame's id): "steel-92-18", "wood-89" */
@@ -64,7 +73,8 @@ typedef struct frame {
   double flange_m, stud_width_m;
   double stud_mass_kg_m, runner_mass_kg_m; /* per metre of one stud, of one runner */
   double inertia_m4;        /* gross second moment of one stud */
-  double inertia_effective_m4, moment_n_m; /* effective I; allowable moment; 0 = not tabulated */
+  double inertia_effective_m4, moment_n_m; /* steel: effective I; allowable moment. Wood: 0 */
+  bool section_estimated;   /* these two are estimated from a tabulated neighbour, not tabulated (source says how) */
   double composite_inertia_m4; /* with one board each side full height (limiting-height table); 0 = not tabulated */
   double modulus_pa;
   bool loadbearing;         /* may carry load (subject to the rules of checks/structure) */
@@ -78,6 +88,7 @@ typedef enum fill_material { FILL_GLASS, FILL_STONE, FILL_CELLULOSE } fill_mater
 
 typedef struct fill {
   const char *id, *name, *source;
+  said_words said;
   fill_material material;
   double thickness_m, density_kg_m3, mass_kg_m2, resistivity_pa_s_m2;
   bool wood_only;           /* dense-packed cellulose in ordinary build */
@@ -87,12 +98,14 @@ typedef struct fill {
 
 typedef struct mount {
   const char *id, *name, *source;
+  said_words said;
   bool clips;               /* isolation clips with furring channel, else resilient channel */
   double depth_m;           /* air it adds behind the leaf (channel 0.013; clip and furring 0.041) */
   double rail_mass_kg_m;    /* channel or furring, per metre */
   double clip_mass_kg;
   double max_leaf_kg_m2;    /* 0 = none stated */
   double clip_capacity_kg;  /* per clip; 0 for channel */
+  int clip_spacing_mm;      /* along the row: the default and the most; 0 for channel */
   const char *rail, *clip;  /* price items; clip NULL for channel */
 } mount;
 
@@ -158,10 +171,17 @@ typedef struct evidence_weights {
 } evidence_weights;
 
 typedef struct target_row {
-  const char *adjacency, *name, *metric, *source;
+  const char *id;           /* unique: "ibc-dwelling-corridor" */
+  const char *adjacency;    /* "dwelling-corridor": several rows may share it, by code or guideline */
+  const char *name, *metric, *source;
+  const char *level;        /* "preferred", "grade II"; NULL without */
+  fire_code code;           /* CODE_NONE: a guideline, not a code */
   int value;                /* laboratory rating */
   int field_value;          /* 0 = none stated */
   bool composite;           /* scope */
+  int fire_minutes;         /* 0 = none stated */
+  int fire_minutes_sprinklered;     /* 0 = as fire_minutes */
+  int fire_minutes_from_4_storeys;  /* 0 = as fire_minutes */
 } target_row;
 
 typedef struct acoustics acoustics; /* acoustics/coefficients: see input/coefficients.h */
@@ -201,6 +221,18 @@ int catalog_layer(const catalog *c, const char *id);
 int catalog_frame(const catalog *c, const char *id);
 int catalog_fill(const catalog *c, const char *id);
 int catalog_mount(const catalog *c, const char *id);
+
+typedef enum catalog_kind { CATALOG_LAYER, CATALOG_FRAME, CATALOG_FILL, CATALOG_MOUNT, CATALOG_KINDS } catalog_kind;
+typedef struct catalog_ref { catalog_kind kind; int index; } catalog_ref;
+
+/* "board", "frame", "fill", "mount" */
+extern const char *const catalog_kind_names[CATALOG_KINDS];
+/* What `word` may mean: the record of that exact id, else every record whose id or said word it is (compared as said_words
+ * tells). Fills at most `max` of `out`, returns how many there are: 0 unknown, above 1 ambiguous. */
+size_t catalog_find(const catalog *c, const char *word, catalog_ref *out, size_t max);
+const char *catalog_id(const catalog *c, catalog_ref ref);
+/* The first row of `targets` for an adjacency under a code, or NULL. */
+const target_row *catalog_target(const catalog *c, const char *adjacency, fire_code code);
 /* The id nearest to a word among all ids, or NULL. */
 const char *catalog_nearest(const catalog *c, const char *word);
 
