@@ -116,9 +116,13 @@ static const char *follow_links(arena *a, const char *path) {
   return path;
 }
 
-/* Devices and pipes cannot be replaced: the bytes go straight into them. */
+/* Devices, pipes and the names that stand for open files (/dev/stdout) cannot be replaced: the bytes go straight into them. */
+static bool is_stream(const char *path, const struct stat *info) {
+  return !S_ISREG(info->st_mode) || text_starts(path, "/dev/") || text_starts(path, "/proc/");
+}
+
 static bool write_through(const char *path, const char *bytes, size_t len) {
-  int descriptor = open(path, O_WRONLY | O_CLOEXEC | O_NOCTTY);
+  int descriptor = open(path, O_WRONLY | O_APPEND | O_CLOEXEC | O_NOCTTY);
   if (descriptor < 0) return false;
   bool good = write_all(descriptor, bytes, len);
   int error = errno;
@@ -169,7 +173,7 @@ bool file_write(arena *a, diag_list *d, const char *path, const char *bytes, siz
   if (there && S_ISDIR(info.st_mode)) {
     errno = EISDIR;
     good = false;
-  } else if (there && !S_ISREG(info.st_mode)) {
+  } else if (there && is_stream(path, &info)) {
     good = write_through(path, bytes, len);
   } else {
     good = replace(real, temporary, size, there ? &info : NULL, bytes, len);
