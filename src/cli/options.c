@@ -1,0 +1,271 @@
+#include "options.h"
+
+#include <errno.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+typedef enum option_id {
+  OPTION_BRIEF,
+  OPTION_CATALOGS,
+  OPTION_CSV,
+  OPTION_HELP,
+  OPTION_JSON,
+  OPTION_PRICES,
+  OPTION_SAVE_MODEL,
+  OPTION_TIME_LIMIT,
+  OPTION_UNITS,
+  OPTION_VERSION
+} option_id;
+
+typedef struct option_row {
+  const char *name;
+  const char *value; /* what it takes, NULL for none */
+  option_id id;
+  int commands; /* bits of cli_command */
+  const char *help;
+} option_row;
+
+/* Sorted by name: the help and the manual keep this order. */
+static const option_row option_rows[] = {
+    {"brief", "FILE", OPTION_BRIEF, CLI_RATE, "judge the wall under this brief (brief/1)"},
+    {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
+    {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK,
+     "also write the takeoff as CSV; - prints it in place of the text"},
+    {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
+    {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
+    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK,
+     "price book (price-book/1) in place of the brief's or the default"},
+    {"save-model", "FILE", OPTION_SAVE_MODEL, CLI_PICK, "write the 0-1 model in CPLEX LP format"},
+    {"time-limit", "S", OPTION_TIME_LIMIT, CLI_PICK, "seconds for the solver; the gap is printed"},
+    {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK,
+     "units of the text; default: the brief's, else us"},
+    {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
+};
+enum { OPTION_COUNT = sizeof option_rows / sizeof option_rows[0] };
+
+typedef struct command_row {
+  const char *name, *operands;
+  cli_command command;
+  size_t least, most; /* operands */
+  const char *help, *more;
+} command_row;
+
+static const command_row command_rows[] = {
+    {"check", "FILE...", CLI_CHECK, 1, (size_t)-1, "are these catalogs, price books, briefs sound?",
+     "Reads files of any kind of septum, by their key \"septum\", and reports every fault with "
+     "file,\n"
+     "line, column and JSON path on stderr. One line a file on stdout.\n"},
+    {"pick", "BRIEF", CLI_PICK, 1, 1, "the cheapest wall that keeps every rule of a brief",
+     "BRIEF is a brief/1 file. The answer names the wall, its rating and what that rests on, the\n"
+     "takeoff, what cheaper walls fail, and what each rule costs.\n"},
+    {"rate", "LINE|FILE", CLI_RATE, 1, 1, "rate one wall: sound, fire, height, cost",
+     "LINE is a wall line, from side A to side B, or FILE a wall/1 file:\n"
+     "  septum rate '2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16'\n"
+     "Each face is written from its own room inwards; n* repeats, + adds a layer, @ is spacing in "
+     "mm.\n"},
+};
+enum { COMMAND_COUNT = sizeof command_rows / sizeof command_rows[0] };
+
+static void complain(const char *what, const char *word) {
+  fprintf(stderr, "septum: %s%s%s\n", what, *word ? " " : "", word);
+}
+
+static void hint(const char *near, const char *dashes) {
+  if (near != NULL) fprintf(stderr, "septum: did you mean %s%s?\n", dashes, near);
+}
+
+static const option_row *find_option(const char *name, size_t length) {
+  for (size_t i = 0; i < OPTION_COUNT; i++) {
+    const char *known = option_rows[i].name;
+    if (strlen(known) == length && strncmp(known, name, length) == 0) return &option_rows[i];
+  }
+  return NULL;
+}
+
+static bool unknown_option(const char *word) {
+  const char *names[OPTION_COUNT];
+  for (size_t i = 0; i < OPTION_COUNT; i++) names[i] = option_rows[i].name;
+  char name[64];
+  size_t length = strcspn(word, "=");
+  complain("unknown option", word);
+  if (length < sizeof name && strncmp(word, "--", 2) == 0) {
+    memcpy(name, word + 2, length - 2);
+    name[length - 2] = '\0';
+    hint(septum_nearest(name, names, OPTION_COUNT), "--");
+  }
+  return false;
+}
+
+static bool read_seconds(const char *value, double *seconds) {
+  char *end = NULL;
+  errno = 0;
+  *seconds = strtod(value, &end);
+  if (end != value && *end == '\0' && errno == 0 && *seconds >= 0.0 && *seconds <= 1e9) return true;
+  complain("--time-limit wants seconds from 0 to 1000000000, found", value);
+  return false;
+}
+
+static bool read_units(const char *value, septum_units *units) {
+  if (strcmp(value, "us") == 0)
+    *units = SEPTUM_UNITS_US;
+  else if (strcmp(value, "si") == 0)
+    *units = SEPTUM_UNITS_SI;
+  else {
+    complain("--units wants us or si, found", value);
+    return false;
+  }
+  return true;
+}
+
+static bool apply(option_id id, const char *value, cli_line *out) {
+  switch (id) {
+  case OPTION_BRIEF:
+    out->options.brief = value;
+    return true;
+  case OPTION_CATALOGS:
+    out->catalogs = value;
+    return true;
+  case OPTION_CSV:
+    out->csv = value;
+    return true;
+  case OPTION_HELP:
+    out->help = true;
+    return true;
+  case OPTION_JSON:
+    out->json = true;
+    return true;
+  case OPTION_PRICES:
+    out->options.prices = value;
+    return true;
+  case OPTION_SAVE_MODEL:
+    out->options.save_model = value;
+    return true;
+  case OPTION_TIME_LIMIT:
+    return read_seconds(value, &out->options.time_limit_s);
+  case OPTION_UNITS:
+    return read_units(value, &out->options.units);
+  case OPTION_VERSION:
+    out->version = true;
+    return true;
+  }
+  return false;
+}
+
+/* One option at argv[i]; returns how many words it took, 0 after a message. */
+static int read_option(int argc, char **argv, int i, cli_line *out, int *used) {
+  const char *word = argv[i] + 2;
+  size_t length = strcspn(word, "=");
+  const option_row *row = find_option(word, length);
+  if (row == NULL) return unknown_option(argv[i]);
+  const char *value = word[length] == '=' ? word + length + 1 : NULL;
+  int words = 1;
+  if (row->value == NULL && value != NULL) {
+    complain("this option takes no value:", argv[i]);
+    return 0;
+  }
+  if (row->value != NULL && value == NULL) {
+    value = i + 1 < argc ? argv[i + 1] : NULL;
+    words = 2;
+  }
+  if (row->value != NULL && (value == NULL || *value == '\0')) {
+    fprintf(stderr, "septum: --%s wants %s\n", row->name, row->value);
+    return 0;
+  }
+  *used |= 1 << row->id;
+  return apply(row->id, value, out) ? words : 0;
+}
+
+static const command_row *find_command(const char *name) {
+  for (size_t i = 0; i < COMMAND_COUNT; i++)
+    if (strcmp(command_rows[i].name, name) == 0) return &command_rows[i];
+  const char *names[COMMAND_COUNT];
+  for (size_t i = 0; i < COMMAND_COUNT; i++) names[i] = command_rows[i].name;
+  complain("unknown command", name);
+  hint(septum_nearest(name, names, COMMAND_COUNT), "");
+  return NULL;
+}
+
+/* Whether the options used belong to the command and the operands are as many as it takes. */
+static bool fits(const command_row *command, int used, size_t operands) {
+  for (size_t i = 0; i < OPTION_COUNT; i++) {
+    const option_row *row = &option_rows[i];
+    if ((used & (1 << row->id)) == 0 || (row->commands & (int)command->command) != 0) continue;
+    fprintf(stderr, "septum: --%s is not an option of %s\n", row->name, command->name);
+    return false;
+  }
+  if (operands >= command->least && operands <= command->most) return true;
+  fprintf(stderr, "septum: %s wants %s, found %zu operands\n", command->name, command->operands,
+          operands);
+  return false;
+}
+
+bool options_read(int argc, char **argv, cli_line *out) {
+  memset(out, 0, sizeof *out);
+  septum_options_init(&out->options);
+  int used = 0, kept = 0;
+  bool options_end = false;
+  for (int i = 1; i < argc;) {
+    bool option = !options_end && argv[i][0] == '-' && argv[i][1] != '\0';
+    if (!option) {
+      argv[kept++] = argv[i++];
+    } else if (strcmp(argv[i], "--") == 0) {
+      options_end = true;
+      i++;
+    } else {
+      int words =
+          argv[i][1] == '-' ? read_option(argc, argv, i, out, &used) : unknown_option(argv[i]);
+      if (words == 0) return false;
+      i += words;
+    }
+  }
+  const command_row *command = kept > 0 ? find_command(argv[0]) : NULL;
+  if (kept > 0 && command == NULL) return false;
+  if (command != NULL) out->command = command->command;
+  if (out->help || out->version) return true;
+  if (command == NULL) {
+    complain("no command; try septum --help", "");
+    return false;
+  }
+  out->operands = (const char *const *)argv + 1;
+  out->operand_count = (size_t)kept - 1;
+  if (out->json && out->csv != NULL && strcmp(out->csv, "-") == 0) {
+    complain("--json and --csv - both want stdout", "");
+    return false;
+  }
+  return fits(command, used, out->operand_count);
+}
+
+static void print_options(int commands) {
+  printf("Options, before or after the operands; -- ends them:\n");
+  for (size_t i = 0; i < OPTION_COUNT; i++) {
+    const option_row *row = &option_rows[i];
+    if ((row->commands & commands) == 0) continue;
+    int width =
+        printf("  --%s%s%s", row->name, row->value ? " " : "", row->value ? row->value : "");
+    printf("%*s%s\n", width < 21 ? 22 - width : 1, "", row->help);
+  }
+}
+
+void options_help(cli_command command) {
+  if (command == CLI_NONE) {
+    printf("septum %s: which wall to build between two rooms.\n\n", septum_version());
+    for (size_t i = 0; i < COMMAND_COUNT; i++)
+      printf("  septum %-5s %-10s %s\n", command_rows[i].name, command_rows[i].operands,
+             command_rows[i].help);
+    printf("\n");
+    print_options(CLI_ANY);
+    printf("\nData: --catalogs and --prices, else $SEPTUM_DATA, else ../share/septum beside the "
+           "program.\n");
+  }
+  for (size_t i = 0; i < COMMAND_COUNT; i++) {
+    const command_row *row = &command_rows[i];
+    if (row->command != command) continue;
+    printf("septum %s %s: %s\n\n%s\n", row->name, row->operands, row->help, row->more);
+    print_options((int)row->command);
+  }
+  printf("\nExit status: 0 answer, 1 no wall fits, 2 usage, 3 bad data, 4 system, 5 internal.\n"
+         "Ratings predicted here are estimates; fire and structure are screened only. Local code, "
+         "the\n"
+         "listed fire design and licensed practice decide.\n");
+}
