@@ -208,6 +208,7 @@ typedef struct catalog {
   int nbc_max_storeys;                         /* the NBC table serves buildings up to so many; 0 = any */
   const char *nbc_scope;                       /* sentence for buildings above, with its source */
   evidence_weights distance;
+  const char *caution_light_board, *caution_thin_steel; /* sentences for matches that today's goods may miss */
   const acoustics *acoustics;
 } catalog;
 

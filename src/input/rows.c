@@ -81,6 +81,7 @@ static const field published_root[] = {
     {"septum", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
     {"about", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
     {"distance", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
+    {"cautions", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
     {"records", FIELD_VALUE, FIELD_REQUIRED, 0, 0, 0, NULL, 0},
 };
 static const field listing_root[] = {
@@ -385,9 +386,16 @@ bool rows_read_distance(arena *a, diag_list *d, const json_value *root, catalog 
       WEIGHT(mount_side), WEIGHT(mount_spacing), WEIGHT(spacing), WEIGHT(depth), WEIGHT(steel), WEIGHT(fill),
       WEIGHT(partial_fill), WEIGHT(fill_row), WEIGHT(gap),
   };
-  const json_value *v = json_get(root, "distance");
+  static const field sentences[] = {
+      {"light_board", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL, offsetof(catalog, caution_light_board)},
+      {"thin_steel", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL, offsetof(catalog, caution_thin_steel)},
+      {"source", FIELD_IGNORE, FIELD_REQUIRED, 0, 0, 0, NULL, 0},
+  };
+  const json_value *v = json_get(root, "distance"), *says = json_get(root, "cautions");
   if (!v) return wrong(a, d, root, ERROR_FIELD_MISSING, "distance is missing");
-  return fields_read(a, d, v, table, sizeof table / sizeof table[0], &out->distance);
+  if (!says) return wrong(a, d, root, ERROR_FIELD_MISSING, "cautions is missing");
+  bool ok = fields_read(a, d, v, table, sizeof table / sizeof table[0], &out->distance);
+  return fields_read(a, d, says, sentences, sizeof sentences / sizeof sentences[0], out) && ok;
 }
 
 /* Boards by id, distinct sides, distinct pairs of sides */

@@ -10,7 +10,7 @@
 bool rows_read(arena *a, diag_list *d, const json_value *root, const char *kind, wall_row **rows, size_t *count);
 /* Reads "component_additive" and "scope" of a fire/1 file into the catalog's fields of that rule. */
 bool rows_read_additive(arena *a, diag_list *d, const json_value *root, catalog *out);
-/* Reads "distance" of a published/1 file into the catalog's weights. */
+/* Reads "distance" and "cautions" of a published/1 file into the catalog. */
 bool rows_read_distance(arena *a, diag_list *d, const json_value *root, catalog *out);
 /* Looks up every board that the rows of `c->fire` and `c->published` name, reports those that no catalog has, and sets the
  * distinct sides (fire_needs, published_needs) and `pair`. To be called after boards and rows are read, and again when rows were added. */
