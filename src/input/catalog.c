@@ -17,7 +17,8 @@ static bool read_fire(catalog_reader *r, const json_value *root, catalog *out) {
 }
 
 static bool read_published(catalog_reader *r, const json_value *root, catalog *out) {
-  return rows_read(r->arena, r->diags, root, "published", &out->published, &out->published_count);
+  bool rows = rows_read(r->arena, r->diags, root, "published", &out->published, &out->published_count);
+  return rows_read_distance(r->arena, r->diags, root, out) && rows;
 }
 
 static bool read_acoustics(catalog_reader *r, const json_value *root, catalog *out) {
@@ -47,7 +48,7 @@ catalog *catalog_load(arena *a, diag_list *d, const char *folder) {
     const json_value *root = json_load(a, d, file_join(a, folder, files[i].file));
     sound = root && files[i].read(&r, root, c) && sound;
   }
-  return sound ? c : NULL;
+  return sound && rows_check_ids(a, d, c) ? c : NULL;
 }
 
 bool catalog_check_file(arena *a, diag_list *d, const json_value *root) {
