@@ -13,19 +13,20 @@ typedef struct compat_finding {
   const char *source;
 } compat_finding;
 
-enum { COMPAT_MAX = 24 };
+enum { COMPAT_MAX = 48 }; /* more than there are rules */
 typedef struct compat_report {
   int count;
   compat_level worst;
   compat_finding finding[COMPAT_MAX];
 } compat_report;
 
-/* All findings of a wall. Unusual ones are cautions for rate and keep a wall out of ordinary enumeration. */
+/* All findings of a wall, each rule once. Unusual ones are cautions for rate and keep a wall out of ordinary enumeration; one of
+ * level fine is a note only. The wall's indices must be of `c`, its frame included. */
 void compat_check(const catalog *c, const wall *w, compat_report *out);
 /* The pieces the enumeration uses, so that it never builds what compat_check would refuse. `rate` and `pick` agree by test:
  * every enumerated wall has no illegal finding, and in ordinary build no unusual one. */
 compat_level compat_face(const catalog *c, const face *f);                 /* a leaf on its own */
-compat_level compat_fill(const catalog *c, int frame, int fill);           /* batt in a row */
+compat_level compat_fill(const catalog *c, int frame_index, int fill_index);           /* batt in a row */
 compat_level compat_core(const catalog *c, const wall *core);              /* frame, spacing, fills, gap, mounts; faces ignored */
 compat_level compat_face_on_core(const catalog *c, const wall *core, int side, const face *f);
 compat_level compat_pair(const catalog *c, const face *a, const face *b);  /* ordinary build: counts and kinds of both sides */
