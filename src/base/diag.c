@@ -1,5 +1,7 @@
 #include "base/diag.h"
 
+#include <string.h>
+
 enum { KEPT = 200, MESSAGE_MAX = 2000 };
 
 void diag_init(diag_list *d, arena *a) {
@@ -47,19 +49,18 @@ void diag_error(diag_list *d, error_code code, const char *format, ...) {
   va_end(args);
 }
 
-/* Text from files may hold line ends and terminal escapes (C0, DEL, and C1 as UTF-8): shown as \u00XX, so that a message stays
- * one harmless line. */
+/* Text from files may hold line ends, terminal escapes (C0, DEL, and C1 as UTF-8) and bytes that are no UTF-8: shown as \u00XX
+ * and \xXX, so that a message stays one harmless line of UTF-8. */
 static void put_visible(text *out, const char *s) {
-  for (const unsigned char *p = (const unsigned char *)s; *p; p++) {
-    bool c1 = p[0] == 0xC2 && p[1] >= 0x80 && p[1] < 0xA0;
-    if (c1) {
-      text_putf(out, "\\u%04x", p[1]);
-      p++;
-    } else if (*p < 0x20 || *p == 0x7F) {
-      text_putf(out, "\\u%04x", *p);
-    } else {
-      text_char(out, (char)*p);
-    }
+  const char *end = s + strlen(s);
+  while (s < end) {
+    size_t n = text_utf8(s, end);
+    const unsigned char *u = (const unsigned char *)s;
+    bool c1 = n == 2 && u[0] == 0xC2 && u[1] < 0xA0;
+    if (n == 0) text_putf(out, "\\x%02x", u[0]);
+    else if (u[0] < 0x20 || u[0] == 0x7F || c1) text_putf(out, "\\u%04x", u[n - 1]);
+    else text_putn(out, s, n);
+    s += n ? n : 1;
   }
 }
 

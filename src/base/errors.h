@@ -7,7 +7,7 @@
 #define ERROR_LIST(X)                                                                    \
   X(101, USAGE, "the command line cannot be understood")                                 \
   X(201, JSON_SYNTAX, "the text is not JSON")                                            \
-  X(202, JSON_ENCODING, "the text is not UTF-8")                                         \
+  X(202, JSON_ENCODING, "the text is not UTF-8 or holds a character that is refused")     \
   X(203, JSON_LIMIT, "the file goes beyond a limit (size, depth, count)")                \
   X(204, JSON_NUMBER, "a number is malformed or not finite")                             \
   X(205, JSON_DUPLICATE_KEY, "a key stands twice in one object")                         \

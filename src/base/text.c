@@ -296,6 +296,19 @@ const char *text_nearest(const char *word, const char *const *names, size_t n) {
   return best;
 }
 
+size_t text_utf8(const char *p, const char *end) {
+  const unsigned char *u = (const unsigned char *)p;
+  size_t n = u[0] < 0x80 ? 1 : u[0] < 0xC2 ? 0 : u[0] < 0xE0 ? 2 : u[0] < 0xF0 ? 3 : u[0] < 0xF5 ? 4 : 0;
+  if (n == 0 || (size_t)(end - p) < n) return 0;
+  for (size_t i = 1; i < n; i++)
+    if ((u[i] & 0xC0) != 0x80) return 0;
+  if (u[0] == 0xE0 && u[1] < 0xA0) return 0;
+  if (u[0] == 0xED && u[1] > 0x9F) return 0;
+  if (u[0] == 0xF0 && u[1] < 0x90) return 0;
+  if (u[0] == 0xF4 && u[1] > 0x8F) return 0;
+  return n;
+}
+
 bool text_equal(const char *a, const char *b) { return strcmp(a, b) == 0; }
 
 bool text_starts(const char *s, const char *prefix) { return strncmp(s, prefix, strlen(prefix)) == 0; }

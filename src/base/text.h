@@ -50,6 +50,9 @@ const char *text_of(arena *a, double value, int decimals);
 bool text_match(const char *pattern, const char *name);
 /* The name nearest to `word` by edit distance, NULL when none is near (more than a third of the letters differ). */
 const char *text_nearest(const char *word, const char *const *names, size_t n);
+/* Length in bytes of the UTF-8 code point that starts at `p` (< end), 0 when it is none: overlong, half a surrogate pair,
+ * beyond U+10FFFF, cut off. */
+size_t text_utf8(const char *p, const char *end);
 bool text_equal(const char *a, const char *b);
 bool text_starts(const char *s, const char *prefix);
 

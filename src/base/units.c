@@ -3,19 +3,21 @@
 #include <math.h>
 #include <string.h>
 
-/* How a unit of length is written; a quotient of exact numbers keeps 610 mm the double nearest to 0.61. */
+/* How a unit of length is written; a quotient of whole numbers keeps 610 mm the double nearest to 0.61 and 12 in that nearest to
+ * 0.3048. */
 typedef struct length_unit {
   const char *word;
   double factor, divisor; /* metres = value x factor / divisor */
 } length_unit;
 
+enum { INCH = 254, FOOT = 3048, PER_METRE = 10000 }; /* tenths of a millimetre: international inch and foot, exact */
+
 /* Longer words first where one begins another. */
 static const length_unit length_units[] = {
-    {"inches", UNITS_M_PER_IN, 1}, {"inch", UNITS_M_PER_IN, 1}, {"in", UNITS_M_PER_IN, 1},
-    {"\"", UNITS_M_PER_IN, 1},     {"''", UNITS_M_PER_IN, 1},   {"\xE2\x80\xB3", UNITS_M_PER_IN, 1},
-    {"feet", UNITS_M_PER_FT, 1},   {"foot", UNITS_M_PER_FT, 1}, {"ft", UNITS_M_PER_FT, 1},
-    {"'", UNITS_M_PER_FT, 1},      {"\xE2\x80\xB2", UNITS_M_PER_FT, 1},
-    {"mm", 1, 1000},               {"cm", 1, 100},              {"m", 1, 1},
+    {"inches", INCH, PER_METRE},   {"inch", INCH, PER_METRE}, {"in", INCH, PER_METRE},       {"\"", INCH, PER_METRE},
+    {"''", INCH, PER_METRE},       {"\xE2\x80\xB3", INCH, PER_METRE}, {"feet", FOOT, PER_METRE}, {"foot", FOOT, PER_METRE},
+    {"ft", FOOT, PER_METRE},      {"'", FOOT, PER_METRE},   {"\xE2\x80\xB2", FOOT, PER_METRE}, {"mm", 1, 1000},
+    {"cm", 1, 100},           {"m", 1, 1},
 };
 enum { LENGTH_UNITS = sizeof length_units / sizeof length_units[0], MAX_DIGITS = 15 };
 
@@ -114,7 +116,7 @@ static bool read_inches(const char **at, double *metres) {
   double value;
   if (!read_quantity(&s, &value)) return false;
   const length_unit *u = read_unit(&s);
-  if (!u || u->factor != UNITS_M_PER_IN) return false;
+  if (!u || u->factor != INCH) return false;
   *metres += in_metres(u, value);
   *at = s;
   return true;
@@ -130,7 +132,7 @@ static bool parse(const char *s, double default_unit_m, double *metres) {
     *metres = value * default_unit_m;
   } else {
     *metres = in_metres(u, value);
-    if (u->factor == UNITS_M_PER_FT && !read_inches(&s, metres)) return false;
+    if (u->factor == FOOT && !read_inches(&s, metres)) return false;
   }
   return *skip_blanks(s) == '\0';
 }

@@ -27,8 +27,8 @@ struct json_value {
   const char *string;        /* UTF-8, without NUL inside */
 };
 
-/* Parses `text`. All faults that can be told apart are reported; NULL when there was any error. `file` names the source. */
-json_value *json_parse(arena *a, diag_list *d, const char *file, const char *text, size_t len);
+/* Parses `bytes`. All faults that can be told apart are reported; NULL when there was any error. `file` names the source. */
+json_value *json_parse(arena *a, diag_list *d, const char *file, const char *bytes, size_t len);
 json_value *json_load(arena *a, diag_list *d, const char *path);
 /* The child of an object by exact key, or NULL. */
 const json_value *json_get(const json_value *object, const char *key);
