@@ -14,11 +14,22 @@ typedef struct explain_rule_price {
   assessment *wall;             /* the cheapest without the rule */
 } explain_rule_price;
 
+/* How far the price of one item or labour rate of the chosen wall may move before another wall is cheaper. */
+typedef struct explain_break_even {
+  const char *item;             /* code of the price book, or of the labour rate */
+  const char *unit;             /* "m2", "m", "each", "h" */
+  double price;                 /* today, per unit */
+  bool has_low, has_high;       /* false: no limit on that side */
+  double low, high;             /* the chosen wall stays cheapest between these */
+  const char *low_line, *high_line; /* the wall that takes over; NULL without limit */
+} explain_break_even;
+
 typedef struct explanation {
   assessment *chosen;           /* NULL when infeasible */
   assessment **runners; int runner_count;
   assessment **cheaper; int cheaper_count;   /* cheaper_but */
   explain_rule_price *prices; int price_count;
+  explain_break_even *break_even; int break_even_count;
   rule_mask *conflicts; int conflict_count;  /* smallest sets of rules that cannot hold together */
   assessment **nearest; int nearest_count;   /* when infeasible */
   long long walls;              /* judged */
