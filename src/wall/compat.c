@@ -88,7 +88,7 @@ static const compat_finding rules[RULES] = {
     [THICKNESS_DIFFER] = {COMPAT_UNUSUAL, "board-thickness", "Gypsum boards of more than one thickness in one wall.", COMMON},
 };
 
-_Static_assert(RULES <= COMPAT_MAX, "a report holds every rule");
+_Static_assert((int)RULES <= (int)COMPAT_MAX, "a report holds every rule");
 
 static void add(compat_report *r, rule which) {
   const compat_finding *f = &rules[which];

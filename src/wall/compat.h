@@ -26,7 +26,7 @@ void compat_check(const catalog *c, const wall *w, compat_report *out);
 /* The pieces the enumeration uses, so that it never builds what compat_check would refuse. `rate` and `pick` agree by test:
  * every enumerated wall has no illegal finding, and in ordinary build no unusual one. */
 compat_level compat_face(const catalog *c, const face *f);                 /* a leaf on its own */
-compat_level compat_fill(const catalog *c, int frame_index, int fill_index);           /* batt in a row */
+compat_level compat_fill(const catalog *c, int frame_index, int fill_index); /* batt in a row */
 compat_level compat_core(const catalog *c, const wall *core);              /* frame, spacing, fills, gap, mounts; faces ignored */
 compat_level compat_face_on_core(const catalog *c, const wall *core, int side, const face *f);
 compat_level compat_pair(const catalog *c, const face *a, const face *b);  /* ordinary build: counts and kinds of both sides */

@@ -1,0 +1,76 @@
+#!/bin/sh
+# Every shipped file against the schema of its kind (docs/formats/<kind>.schema.json, JSON Schema 2020-12), and proof that the
+# schemas refuse: each file of tests/data/schemas/wrong must fail, each of good must pass.
+# Usage: check_schemas.sh SOURCE_DIR
+set -eu
+root=${1:?source directory}
+python=${PYTHON:-/usr/bin/python3}
+if ! "$python" -c 'import jsonschema' 2>/dev/null; then
+  if [ -n "${CI:-}${SEPTUM_CI:-}" ]; then
+    echo "python3 with jsonschema is needed here" >&2
+    exit 1
+  fi
+  echo "skipped: no python3 with jsonschema"
+  exit 0
+fi
+exec "$python" - "$root" <<'PY'
+import glob, json, os, sys
+from jsonschema import Draft202012Validator
+
+root = sys.argv[1]
+schemas, faults, counts = {}, [], {"shipped": 0, "good": 0, "wrong": 0}
+
+def say(path, message):
+    faults.append("%s: %s" % (os.path.relpath(path, root), message))
+
+def once(pairs):
+    keys = [k for k, _ in pairs]
+    twice = {k for k in keys if keys.count(k) > 1}
+    if twice:
+        raise ValueError("a key stands twice: %s" % ", ".join(sorted(twice)))
+    return dict(pairs)
+
+def load(path):
+    with open(path, encoding="utf-8") as f:
+        return json.load(f, object_pairs_hook=once)
+
+for path in sorted(glob.glob(root + "/docs/formats/*.schema.json")):
+    schema = load(path)
+    Draft202012Validator.check_schema(schema)
+    if schema.get("$schema") != "https://json-schema.org/draft/2020-12/schema":
+        say(path, "is not a 2020-12 schema")
+    schemas[os.path.basename(path)[: -len(".schema.json")]] = Draft202012Validator(schema)
+
+def errors(path):
+    """Messages of what the schema of the file's kind refuses; None without a kind."""
+    data = load(path)
+    kind = data.get("septum") if isinstance(data, dict) else None
+    if not isinstance(kind, str) or "/" not in kind:
+        return ["has no \"septum\": \"<kind>/1\""]
+    name = kind.split("/")[0]
+    if name not in schemas:
+        return ["no docs/formats/%s.schema.json for its kind" % name]
+    return ["%s: %s" % (e.json_path, e.message[:200]) for e in schemas[name].iter_errors(data)]
+
+for pattern in ("catalogs/*.json", "prices/*.json", "docs/examples/*.json", "docs/examples/*/*.json"):
+    for path in sorted(glob.glob(os.path.join(root, pattern))):
+        counts["shipped"] += 1
+        for message in errors(path):
+            say(path, message)
+for path in sorted(glob.glob(root + "/tests/data/schemas/good/*.json")):
+    counts["good"] += 1
+    for message in errors(path):
+        say(path, message)
+for path in sorted(glob.glob(root + "/tests/data/schemas/wrong/*.json")):
+    counts["wrong"] += 1
+    if not errors(path):
+        say(path, "should have been refused")
+
+for kind in ("boards", "frames", "fills", "mounts", "targets", "wall"):
+    if not any(os.path.basename(p).startswith(kind + "-") for p in glob.glob(root + "/tests/data/schemas/wrong/*.json")):
+        faults.append("no wrong file for kind %s" % kind)
+for fault in faults:
+    print(fault)
+print("%d shipped, %d good, %d wrong files; %d faults" % (counts["shipped"], counts["good"], counts["wrong"], len(faults)))
+sys.exit(1 if faults or counts["shipped"] == 0 else 0)
+PY
