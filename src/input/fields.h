@@ -26,13 +26,16 @@ typedef struct field {
   const char *key;
   field_kind kind;
   unsigned flags;
-  double min, max;            /* numbers and lengths, in the stored unit; both 0 = any */
+  double min, max;            /* numbers and lengths, in the stored unit; both 0 = any (with FIELD_ABOVE_MIN: above 0);
+                                 max below min = no maximum */
   double scale;               /* stored = number x scale; 0 means 1 */
   const char *const *choices; /* NULL-ended, for FIELD_CHOICE */
   size_t offset;              /* into `out` */
 } field;
 
-/* Fields that are absent (or null where FIELD_NULL_OK) leave `out` as it was, so fill in defaults first. True when no error. */
+/* Two rows with the same offset are two names of one thing: a file may use one of them, and one satisfies FIELD_REQUIRED. The
+ * key "septum" of a whole file is taken without a row (json_is reads it).
+ * Fields that are absent (or null where FIELD_NULL_OK) leave `out` as it was, so fill in defaults first. True when no error. */
 bool fields_read(arena *a, diag_list *d, const json_value *object, const field *table, size_t rows, void *out);
 
 #endif
