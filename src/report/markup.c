@@ -141,7 +141,8 @@ void markup_json_cents(markup_json *j, const char *key, long long cents) {
 void markup_csv_field(text *out, const char *value, bool first) {
   if (!first) text_char(out, ',');
   bool formula = strchr("=+-@\t\r", value[0]) != NULL && value[0] != '\0';
-  bool number = formula && strspn(value + 1, "0123456789.") == strlen(value + 1) && value[1] != '\0';
+  bool number =
+      formula && strspn(value + 1, "0123456789.") == strlen(value + 1) && value[1] != '\0';
   bool guard = formula && !(number && value[0] == '-');
   if (!guard && strpbrk(value, ",\"\r\n") == NULL) {
     text_put(out, value);
@@ -156,4 +157,6 @@ void markup_csv_field(text *out, const char *value, bool first) {
   text_char(out, '"');
 }
 
-void markup_csv_end(text *out) { text_put(out, "\r\n"); }
+void markup_csv_end(text *out) {
+  text_put(out, "\r\n");
+}

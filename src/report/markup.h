@@ -1,4 +1,5 @@
-/* All escaping and quoting of output formats: nothing else in the library writes a quote mark around a value. */
+/* All escaping and quoting of output formats: nothing else in the library writes a quote mark
+ * around a value. */
 #ifndef REPORT_MARKUP_H
 #define REPORT_MARKUP_H
 
@@ -6,9 +7,9 @@
 
 #include "base/text.h"
 
-/* JSON (RFC 8259), written front to back. Keys are NULL inside arrays. Objects and arrays stand over several lines, those
- * opened as `line` on one. Numbers go through text_number, so they do not depend on the host's locale; what is not finite
- * becomes null. */
+/* JSON (RFC 8259), written front to back. Keys are NULL inside arrays. Objects and arrays stand
+ * over several lines, those opened as `line` on one. Numbers go through text_number, so they do not
+ * depend on the host's locale; what is not finite becomes null. */
 enum { MARKUP_MAX_DEPTH = 32 };
 
 typedef struct markup_json {
@@ -34,8 +35,8 @@ void markup_json_null(markup_json *j, const char *key);
 /* Minor units as a number in the major unit, exactly: 1999 -> 19.99. */
 void markup_json_cents(markup_json *j, const char *key, long long cents);
 
-/* One field of a CSV line (RFC 4180): quoted where it must be. A field that a spreadsheet would take for a formula gets an
- * apostrophe in front. `first`: no comma before it. */
+/* One field of a CSV line (RFC 4180): quoted where it must be. A field that a spreadsheet would
+ * take for a formula gets an apostrophe in front. `first`: no comma before it. */
 void markup_csv_field(text *out, const char *value, bool first);
 /* Ends a CSV line: CR LF. */
 void markup_csv_end(text *out);

@@ -1,0 +1,188 @@
+/* `pick` for people: the wall, then why this one. */
+#include "report/page.h"
+#include "report/report_text.h"
+#include "report/view.h"
+#include "septum.h"
+
+static const char *per_area(const report *r) {
+  return r->units == UNITS_US ? "ft2" : "m2";
+}
+
+static double in_area(const report *r, double per_m2) {
+  return r->units == UNITS_US ? per_m2 * UNITS_M2_PER_FT2 : per_m2;
+}
+
+static const char *amount(const report *r, double value) {
+  text t;
+  text_init(&t, r->arena, 64);
+  double minor = value * 100.0;
+  text_cents(&t, (long long)(minor < 0.0 ? minor - 0.5 : minor + 0.5), true);
+  return t.data;
+}
+
+/* --- other walls -------------------------------------------------------------------------------
+ */
+
+enum { COST_COLUMNS = 9, FAIL_INDENT = PAGE_LABEL + COST_COLUMNS + 2 };
+
+static void put_other(const report *r, const char *label, const assessment *x, text *out) {
+  view_cost v = view_cost_of(r, x);
+  page_label(out, label);
+  page_right(out, PAGE_LABEL + COST_COLUMNS, v.costed ? amount(r, in_area(r, v.per_m2)) : "?");
+  text_put(out, "  ");
+  text t;
+  text_init(&t, r->arena, 2000);
+  text_putf(&t, "STC %d, ", x->ratings.stc);
+  units_put_thickness(&t, x->thickness_m, r->units);
+  text_putf(&t, ": %s", x->line);
+  page_words(out, FAIL_INDENT, t.data);
+}
+
+static void put_fails(const report *r, const assessment *x, text *out) {
+  for (int i = 0; i < x->broken_count; i++) {
+    const broken_rule *b = &x->broke[i];
+    text_pad(out, FAIL_INDENT);
+    page_words(out, FAIL_INDENT + 2,
+               text_format(r->arena, "fails %s: asks %s, has %s",
+                           rule_name(r->arena, r->brief, b->rule), b->limit, b->found));
+  }
+}
+
+static void put_others(const report *r, const char *label, const char *intro, assessment *const *x,
+                       int count, bool fails, text *out) {
+  if (count == 0) return;
+  page_line(out, label,
+            text_format(r->arena, "%s, in %s per %s:", intro,
+                        r->prices != NULL ? r->prices->currency : "", per_area(r)));
+  for (int i = 0; i < count; i++) {
+    put_other(r, "", x[i], out);
+    if (fails) put_fails(r, x[i], out);
+  }
+}
+
+/* --- prices of rules and break-even ------------------------------------------------------------
+ */
+
+static const explain_rule_price *dearest(const explanation *e) {
+  const explain_rule_price *best = NULL;
+  for (int i = 0; i < e->price_count; i++)
+    if (e->prices[i].price_total > 0.0 &&
+        (best == NULL || e->prices[i].price_total > best->price_total))
+      best = &e->prices[i];
+  return best;
+}
+
+static void put_decides(const report *r, const explanation *e, text *out) {
+  const explain_rule_price *p = dearest(e);
+  if (p == NULL) {
+    page_line(out, "Decided by",
+              "the sound target: no other rule, given up alone, would save anything.");
+    return;
+  }
+  page_line(out, "Decided by",
+            text_format(
+                r->arena,
+                "%s, beside the sound target: with %s in place of %s it would cost %s less.",
+                p->name, p->to, p->from, view_money(r, in_area(r, p->price_per_m2), per_area(r))));
+}
+
+static void put_rule_prices(const report *r, const explanation *e, text *out) {
+  if (e->price_count == 0) return;
+  page_line(out, "Rules cost",
+            text_format(r->arena, "What giving up one rule would save, in %s per %s:",
+                        r->prices != NULL ? r->prices->currency : "", per_area(r)));
+  for (int i = 0; i < e->price_count; i++) {
+    const explain_rule_price *p = &e->prices[i];
+    page_label(out, "");
+    page_right(out, PAGE_LABEL + COST_COLUMNS, amount(r, in_area(r, p->price_per_m2)));
+    text_put(out, "  ");
+    const char *then = p->price_total > 0.0 && p->wall != NULL
+                           ? text_format(r->arena, ", then %s", p->wall->line)
+                           : "";
+    page_words(out, FAIL_INDENT,
+               text_format(r->arena, "%s: %s in place of %s%s", p->name, p->to, p->from, then));
+  }
+}
+
+static const char *price_in(const report *r, const explain_break_even *b, double price) {
+  cost_line l = {.quantity = 0.0, .unit = b->unit, .rate = price};
+  view_quantity q = view_quantity_of(r, &l);
+  return text_format(r->arena, "%s", text_of(r->arena, q.rate, 2));
+}
+
+static void put_break_even(const report *r, const explanation *e, text *out) {
+  enum { ITEM_COLUMNS = 20 };
+  if (e->break_even_count == 0) return;
+  page_line(out, "Break-even", "How far one price may move before another wall is cheaper:");
+  for (int i = 0; i < e->break_even_count; i++) {
+    const explain_break_even *b = &e->break_even[i];
+    cost_line l = {.unit = b->unit};
+    text t;
+    text_init(&t, r->arena, 2000);
+    text_putf(&t, "%s per %s", price_in(r, b, b->price), view_quantity_of(r, &l).unit);
+    if (b->has_low) text_putf(&t, "; below %s: %s", price_in(r, b, b->low), b->low_line);
+    if (b->has_high) text_putf(&t, "; above %s: %s", price_in(r, b, b->high), b->high_line);
+    if (!b->has_low && !b->has_high) text_put(&t, "; no price of it changes the choice");
+    page_label(out, "");
+    page_cut(out, ITEM_COLUMNS, b->item);
+    text_pad(out, PAGE_LABEL + ITEM_COLUMNS + 1);
+    page_words(out, PAGE_LABEL + ITEM_COLUMNS + 1, t.data);
+  }
+}
+
+/* --- together ----------------------------------------------------------------------------------
+ */
+
+static void put_counts(const report *r, const explanation *e, text *out) {
+  text t;
+  text_init(&t, r->arena, 400);
+  text_putf(&t, "%lld walls judged, %d of them put to the solver", e->walls, e->frontier);
+  if (e->status == SOLVER_OPTIMAL)
+    text_put(&t, "; proven cheapest.");
+  else
+    text_put(&t, ".");
+  page_line(out, "", t.data);
+}
+
+static void put_infeasible(const report *r, const explanation *e, text *out) {
+  for (int i = 0; i < e->conflict_count; i++) {
+    text t;
+    text_init(&t, r->arena, 2000);
+    for (int k = 0; k < RULES_MAX; k++)
+      if ((e->conflicts[i] >> k) & 1u)
+        text_putf(&t, "%s%s", t.len ? " with " : "", rule_name(r->arena, r->brief, k));
+    page_line(
+        out, i == 0 ? "In the way" : "",
+        text_format(r->arena, "%s%s", t.data, i == 0 ? ": these cannot be had together" : ""));
+  }
+  put_others(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count, true, out);
+  page_line(out, "Made by", "septum " SEPTUM_VERSION);
+}
+
+void report_pick_text(const report *r, const explanation *e, text *out) {
+  if (r->brief->title != NULL) page_line(out, "Brief", r->brief->title);
+  if (e->chosen == NULL) {
+    page_line(out, "Answer",
+              e->status == SOLVER_INFEASIBLE
+                  ? "No wall fits this brief."
+                  : "No wall found within the time limit; one may exist.");
+    put_counts(r, e, out);
+    put_infeasible(r, e, out);
+    return;
+  }
+  page_line(out, "Answer",
+            e->status == SOLVER_OPTIMAL
+                ? "The cheapest wall that keeps every rule of the brief."
+                : "The cheapest wall found within the time limit; a cheaper one may exist.");
+  put_counts(r, e, out);
+  put_decides(r, e, out);
+  report_wall_text(r, e->chosen, out);
+  text_char(out, '\n');
+  put_others(r, "Next best", "Walls that keep every rule too", e->runners, e->runner_count, false,
+             out);
+  put_others(r, "Cheaper but", "Cheaper walls, and what they fail", e->cheaper, e->cheaper_count,
+             true, out);
+  put_rule_prices(r, e, out);
+  put_break_even(r, e, out);
+  page_line(out, "Made by", "septum " SEPTUM_VERSION);
+}

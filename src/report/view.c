@@ -1,0 +1,237 @@
+#include "report/view.h"
+
+#include <string.h>
+
+/* --- what it is --------------------------------------------------------------------------------
+ */
+
+static void add_part(view_parts *out, const char *where, const char *what, double thickness_m) {
+  if (out->count == VIEW_MAX_PARTS) return;
+  out->part[out->count++] = (view_part){where, what, thickness_m};
+}
+
+/* "24 in" or "610 mm": nominal spacings are whole inches. */
+static const char *spacing_words(const report *r, int spacing_mm) {
+  if (r->units == UNITS_SI) return text_format(r->arena, "%d mm", spacing_mm);
+  return text_format(r->arena, "%s in", text_of(r->arena, spacing_mm * 1e-3 / UNITS_M_PER_IN, 0));
+}
+
+/* Runs of equal layers, in the order of the room on side A: side B is written from its room, so it
+ * is walked backwards. */
+static void add_face(const report *r, view_parts *out, const char *where, const face *f,
+                     bool backwards) {
+  for (int i = 0; i < f->count;) {
+    int at = backwards ? f->count - 1 - i : i;
+    int index = f->layer[at], n = 1;
+    while (i + n < f->count && f->layer[backwards ? at - n : at + n] == index) n++;
+    const layer *l = &r->catalog->layers[index];
+    add_part(out, where, n == 1 ? l->name : text_format(r->arena, "%d x %s", n, l->name),
+             n * l->thickness_m);
+    i += n;
+  }
+}
+
+static void add_mount(const report *r, view_parts *out, const wall *w, int side) {
+  const wall_mount *m = &w->mount[side];
+  if (m->mount == CATALOG_NONE) return;
+  const mount *type = &r->catalog->mounts[m->mount];
+  const char *what = text_format(r->arena, "%s at %s", type->name, spacing_words(r, m->spacing_mm));
+  if (m->clip_spacing_mm > 0)
+    what = text_format(r->arena, "%s, a clip every %s", what, spacing_words(r, m->clip_spacing_mm));
+  add_part(out, side == SIDE_A ? "mount A" : "mount B", what, type->depth_m);
+}
+
+static void add_row(const report *r, view_parts *out, const wall *w, int row) {
+  const frame *f = &r->catalog->frames[w->frame];
+  const char *where = f->rows == 1 ? "frame" : row == 0 ? "row A" : "row B";
+  add_part(out, where,
+           text_format(r->arena, "%s at %s on centre", f->name, spacing_words(r, w->spacing_mm)),
+           f->row_depth_m);
+  int filled = w->fill[row];
+  add_part(out, "fill",
+           filled == CATALOG_NONE ? "none: the bays are empty" : r->catalog->fills[filled].name,
+           0.0);
+}
+
+void view_parts_of(const report *r, const wall *w, view_parts *out) {
+  out->count = 0;
+  add_face(r, out, "side A", &w->side[SIDE_A], false);
+  add_mount(r, out, w, SIDE_A);
+  add_face(r, out, "on studs A", &w->sheath[SIDE_A], false);
+  add_row(r, out, w, 0);
+  if (r->catalog->frames[w->frame].rows > 1) {
+    add_face(r, out, "inner A", &w->inner[SIDE_A], true);
+    add_part(out, "gap", "air between the rows, nothing across", w->gap_mm * 1e-3);
+    add_face(r, out, "inner B", &w->inner[SIDE_B], false);
+    add_row(r, out, w, 1);
+  }
+  add_face(r, out, "on studs B", &w->sheath[SIDE_B], true);
+  add_mount(r, out, w, SIDE_B);
+  add_face(r, out, "side B", &w->side[SIDE_B], true);
+}
+
+/* --- money -------------------------------------------------------------------------------------
+ */
+
+view_cost view_cost_of(const report *r, const assessment *x) {
+  view_cost v = {0};
+  v.load_kg_m = x->mass_kg_m2 * r->brief->height_m;
+  v.costed = r->prices != NULL && !x->takeoff.missing && x->cost.area_m2 > 0.0;
+  if (!v.costed) return v;
+  double total = (double)x->cost.total_cents / 100.0;
+  v.per_m2 = total / x->cost.area_m2;
+  v.per_ft2 = v.per_m2 * UNITS_M2_PER_FT2;
+  v.per_m = total / r->brief->length_m;
+  v.per_ft = v.per_m * UNITS_M_PER_FT;
+  v.hours_per_m2 = x->cost.hours / x->cost.area_m2;
+  v.hours_per_ft2 = v.hours_per_m2 * UNITS_M2_PER_FT2;
+  v.floor_per_m2 = (double)x->cost.floor_value_cents / 100.0 / x->cost.area_m2;
+  return v;
+}
+
+view_quantity view_quantity_of(const report *r, const cost_line *l) {
+  view_quantity q = {l->quantity, l->rate, l->unit};
+  double in_si = 1.0;
+  if (r->units == UNITS_SI) return q;
+  if (strcmp(l->unit, "m2") == 0) {
+    in_si = UNITS_M2_PER_FT2;
+    q.unit = "ft2";
+  } else if (strcmp(l->unit, "m") == 0) {
+    in_si = UNITS_M_PER_FT;
+    q.unit = "ft";
+  }
+  q.quantity /= in_si;
+  q.rate *= in_si;
+  return q;
+}
+
+const char *view_item(const report *r, const cost_line *l) {
+  return l->item == CATALOG_NONE ? l->name : r->prices->items[l->item].code;
+}
+
+const char *view_line_kind(const cost_line *l) {
+  static const char *const kinds[] = {"material", "labour", "markup"};
+  return kinds[l->kind];
+}
+
+const char *view_money(const report *r, double amount, const char *per) {
+  text t;
+  text_init(&t, r->arena, 200);
+  double minor = amount * 100.0;
+  text_cents(&t, (long long)(minor < 0.0 ? minor - 0.5 : minor + 0.5), true);
+  text_putf(&t, " %s", r->prices != NULL ? r->prices->currency : "");
+  if (per != NULL) text_putf(&t, " per %s", per);
+  return t.data;
+}
+
+/* --- sound -------------------------------------------------------------------------------------
+ */
+
+const char *view_target(const report *r, const target *t) {
+  text out;
+  text_init(&out, r->arena, 300);
+  text_putf(&out, "%s ", sound_metric_names[t->metric]);
+  text_number(&out, t->value, 1);
+  if (t->margin > 0.0) {
+    text_put(&out, " + ");
+    text_number(&out, t->margin, 1);
+    text_put(&out, " margin");
+  }
+  if (t->basis == BASIS_FIELD) {
+    text_put(&out, " in the field (+ ");
+    text_number(&out, r->brief->field_mean, 1);
+    text_put(&out, " in the laboratory)");
+  } else
+    text_put(&out, " in the laboratory");
+  if (t->composite) text_put(&out, ", openings included");
+  if (t->evidence == EVIDENCE_PUBLISHED) {
+    text_put(&out, ", published ratings only");
+    return out.data;
+  }
+  text_putf(&out, ", %s %% sure", text_of(r->arena, 100.0 * t->confidence, 0));
+  return out.data;
+}
+
+bool view_published(const assessment *x, sound_metric metric) {
+  return x->evidence.match != NULL && metric == METRIC_STC;
+}
+
+double view_confidence(const report *r) {
+  enum { USUAL_PERCENT = 80 }; /* the brief's default */
+  return r->brief->target_count > 0 ? r->brief->targets[0].confidence : USUAL_PERCENT / 100.0;
+}
+
+int view_assured(const report *r, const assessment *x, sound_metric metric, double confidence) {
+  int printed = rating_of(&x->ratings, metric);
+  if (view_published(x, metric)) return printed;
+  int least = printed - 30; /* beyond any standard deviation of the model */
+  for (int value = printed; value > least; value--) {
+    target t = {.metric = metric, .value = value, .basis = BASIS_LAB, .confidence = confidence};
+    double probability = 0.0;
+    if (judge_passes(&t, r->brief->field_mean, r->brief->field_sd, x->exact[metric], printed,
+                     x->sd[metric], false, confidence, &probability))
+      return value;
+  }
+  return least;
+}
+
+/* --- words -------------------------------------------------------------------------------------
+ */
+
+const char *view_code(const report *r) {
+  switch (r->brief->code) {
+  case CODE_IBC:
+    return "ibc";
+  case CODE_NBC:
+    return "nbc";
+  case CODE_NONE:
+    break;
+  }
+  return "none";
+}
+
+const char *view_status(const explanation *e) {
+  switch (e->status) {
+  case SOLVER_OPTIMAL:
+    return "optimal";
+  case SOLVER_INFEASIBLE:
+    return "infeasible";
+  case SOLVER_LIMIT:
+  case SOLVER_FAILED:
+    break; /* the API answers a failure itself */
+  }
+  return "limit";
+}
+
+static void add_caution(const char **caution, int *count, const char *words) {
+  for (int i = 0; i < *count; i++)
+    if (strcmp(caution[i], words) == 0) return;
+  if (*count < VIEW_MAX_CAUTIONS) caution[(*count)++] = words;
+}
+
+int view_cautions(const report *r, const assessment *x, const char *caution[VIEW_MAX_CAUTIONS]) {
+  /* From these ratings on, what surrounds a wall decides (common practice, no source). */
+  enum { CARE_FROM = 50, FLANKING_FROM = 60 };
+  int count = 0;
+  for (int i = 0; i < x->caution_count; i++) add_caution(caution, &count, x->caution[i]);
+  int best = x->ratings.stc;
+  for (int i = 0; i < r->brief->target_count; i++)
+    if (r->brief->targets[i].value > best) best = (int)r->brief->targets[i].value;
+  if (best >= CARE_FROM)
+    add_caution(caution, &count,
+                "From STC 50 on, workmanship decides: boxes never back to back in one bay and "
+                "padded, the perimeter of "
+                "every face sealed.");
+  if (best >= FLANKING_FROM)
+    add_caution(caution, &count,
+                "From STC 60 on, floors and walls that run through hold the field rating near 50 "
+                "to 55 whatever this "
+                "wall is.");
+  if (!view_published(x, METRIC_STC))
+    add_caution(caution, &count, "The sound rating is a prediction, not a test.");
+  add_caution(caution, &count,
+              "Fire, height and load are screened only: local code, the listed fire design and "
+              "licensed practice "
+              "decide.");
+  return count;
+}
