@@ -9,30 +9,51 @@
 
 typedef enum row_sense { ROW_LESS, ROW_EQUAL, ROW_GREATER } row_sense;
 
-typedef struct solver_row { const char *name; row_sense sense; double bound; } solver_row;
+/* Names: a letter first, then letters, digits and `_`; not `e` and a digit (CPLEX LP reads that as a number); no name
+ * twice. */
+typedef struct solver_row {
+  const char *name;
+  row_sense sense;
+  double bound;
+} solver_row;
+
 typedef struct solver_column {
-  const char *name; double cost; bool binary; double lower, upper; /* upper 0 on a binary fixes it at 0 */
+  const char *name;
+  double cost;
+  bool binary;
+  double lower, upper; /* upper 0 on a binary fixes it at 0 */
 } solver_column;
-typedef struct solver_entry { int row, column; double value; } solver_entry; /* from 0 */
+
+/* Counted from 0; each place of the matrix at most once. */
+typedef struct solver_entry {
+  int row, column;
+  double value;
+} solver_entry;
 
 typedef struct solver_model {
   const char *name;
-  solver_row *rows; int row_count;
-  solver_column *columns; int column_count;
-  solver_entry *entries; int entry_count;
+  solver_row *rows;
+  int row_count;
+  solver_column *columns;
+  int column_count;
+  solver_entry *entries;
+  int entry_count;
 } solver_model;
 
+/* LIMIT: time ran out; the result then holds the best found, if any. FAILED: a fault, in the diagnostics. */
 typedef enum solver_status { SOLVER_OPTIMAL, SOLVER_INFEASIBLE, SOLVER_LIMIT, SOLVER_FAILED } solver_status;
 
 typedef struct solver_result {
   solver_status status;
-  double objective, bound;
-  double *value;         /* column_count values */
+  bool found;       /* value[] and objective are a solution */
+  double objective; /* in the unit of the columns' costs */
+  double bound;     /* no solution is below it; -HUGE_VAL when nothing was proved */
+  double *value;    /* column_count values, in the arena given to solver_run */
 } solver_result;
 
-/* Minimises. `seconds` 0 = no limit. */
+/* Minimises. `seconds` 0 = no limit; without one the result is the same on every run. */
 void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, solver_result *out);
-/* Writes the exact model in CPLEX LP format, whole or not at all. */
+/* Writes the exact model in CPLEX LP format, whole or not at all. False and a diagnostic when that fails. */
 bool solver_save(arena *a, diag_list *d, const solver_model *m, const char *path);
 
 #endif

@@ -1,0 +1,278 @@
+/* The axes of the search.
+ *
+ * A leaf is one to three equal finish boards, or such boards over one other board, with at most one membrane; ordinary build
+ * has at most two boards and what compat_face finds nothing unusual in. A core is frame, spacing, gap, fills and mounts.
+ * What compat_check would say of the whole wall is the union of what its pieces say, so that a wall is legal when its core,
+ * its leaves, each leaf on its support and the pair are. */
+#include "search/space.h"
+
+enum { ORDINARY_BOARDS = 2, MOST_BOARDS = 3, DEFAULT_GAP_MM = 25, FILL_CHOICES = 3 };
+
+typedef struct builder {
+  arena *arena;
+  const catalog *catalog;
+  const brief *brief;
+  compat_level most;  /* what a finding may be at most */
+  space *out;
+  size_t face_cap, core_cap;
+} builder;
+
+/* ---- what may be used ---- */
+
+/* Named in full, a record may be used although ordinary build would not propose it. */
+static bool named(const brief *b, catalog_kind kind, const char *id) {
+  for (int i = 0; i < b->only_count; i++) {
+    bool pattern = false;
+    for (const char *s = b->only[i]; *s; s++) pattern = pattern || *s == '*' || *s == '?';
+    if (!pattern && rules_pattern_meets(b->only[i], kind, id)) return true;
+  }
+  return false;
+}
+
+static bool usable(const builder *u, catalog_kind kind, int index, bool ordinary) {
+  const char *id = catalog_id(u->catalog, (catalog_ref){kind, index});
+  if (!rules_only_allows(u->catalog, u->brief, kind, id)) return false;
+  return ordinary || u->brief->build == BUILD_ANY || named(u->brief, kind, id);
+}
+
+static bool layer_usable(const builder *u, int i) { return usable(u, CATALOG_LAYER, i, u->catalog->layers[i].ordinary); }
+static bool fill_usable(const builder *u, int i) { return usable(u, CATALOG_FILL, i, u->catalog->fills[i].ordinary); }
+static bool frame_usable(const builder *u, int i) { return usable(u, CATALOG_FRAME, i, u->catalog->frames[i].ordinary); }
+static bool mount_usable(const builder *u, int i) { return usable(u, CATALOG_MOUNT, i, true); }
+
+/* ---- leaves ---- */
+
+static void add_face(builder *u, const face *f) {
+  space *s = u->out;
+  if (compat_face(u->catalog, f) > u->most) return;
+  if ((size_t)s->face_count == u->face_cap) {
+    size_t cap = u->face_cap ? 2 * u->face_cap : 64;
+    s->faces = arena_grow(u->arena, s->faces, u->face_cap * sizeof *s->faces, cap * sizeof *s->faces);
+    u->face_cap = cap;
+  }
+  s->faces[s->face_count++] = *f;
+}
+
+/* The boards alone, then with one membrane behind each of them. */
+static void add_with_membranes(builder *u, const face *boards) {
+  add_face(u, boards);
+  for (int m = 0; m < (int)u->catalog->layer_count; m++) {
+    if (!u->catalog->layers[m].membrane || !layer_usable(u, m)) continue;
+    for (int at = 1; at <= boards->count; at++) {
+      face f = {.count = boards->count + 1};
+      for (int i = 0; i < f.count; i++) f.layer[i] = i < at ? boards->layer[i] : i == at ? m : boards->layer[i - 1];
+      add_face(u, &f);
+    }
+  }
+}
+
+/* Boards that may stand behind finish boards of another kind: backing boards, and plain boards behind those that only one
+ * room asks for. */
+static bool backs(const layer *l) { return !l->membrane && (l->backing || l->material == LAYER_CEMENT || l->material == LAYER_GYPSUM); }
+
+static void add_faces_of(builder *u, int board, int most) {
+  face f = {.count = 0};
+  for (int n = 1; n <= most; n++) {
+    f.layer[f.count++] = board;
+    add_with_membranes(u, &f);
+    if (n == most) break;
+    for (int back = 0; back < (int)u->catalog->layer_count; back++) {
+      const layer *l = &u->catalog->layers[back];
+      if (back == board || !backs(l) || !layer_usable(u, back)) continue;
+      bool particular = u->catalog->layers[board].abuse || u->catalog->layers[board].moisture;
+      if (l->material == LAYER_GYPSUM && !particular) continue;
+      face g = f;
+      g.layer[g.count++] = back;
+      add_with_membranes(u, &g);
+    }
+  }
+}
+
+static void build_faces(builder *u) {
+  bool any = u->brief->build == BUILD_ANY;
+  for (int i = 0; i < (int)u->catalog->layer_count; i++) {
+    const layer *l = &u->catalog->layers[i];
+    bool face_board = l->face || (any && l->face_if_asked);
+    if (face_board && layer_usable(u, i)) add_faces_of(u, i, any ? MOST_BOARDS : ORDINARY_BOARDS);
+  }
+}
+
+/* ---- cores ---- */
+
+static int compare_int(int x, int y) { return (x > y) - (x < y); }
+
+static int compare_mounts(const wall_mount *x, const wall_mount *y) {
+  int order = compare_int(y->mount, x->mount); /* a mount before none: of two mirror images the one mounted on A is kept */
+  if (order == 0) order = compare_int(x->spacing_mm, y->spacing_mm);
+  return order ? order : compare_int(x->clip_spacing_mm, y->clip_spacing_mm);
+}
+
+/* Order of a core and its mirror image. */
+static int compare_mirror(const wall *w, const wall *m) {
+  int order = compare_mounts(&w->mount[SIDE_A], &m->mount[SIDE_A]);
+  if (order == 0) order = compare_mounts(&w->mount[SIDE_B], &m->mount[SIDE_B]);
+  if (order == 0) order = compare_int(m->fill[0], w->fill[0]); /* a filled row before an empty one */
+  return order;
+}
+
+static void add_core(builder *u, const wall *w) {
+  space *s = u->out;
+  if (compat_core(u->catalog, w) > u->most) return;
+  int order = -1;
+  if (s->mirror_once) {
+    wall m = wall_mirrored(u->catalog, w);
+    order = compare_mirror(w, &m);
+    if (order > 0) return;
+  }
+  if ((size_t)s->core_count == u->core_cap) {
+    size_t cap = u->core_cap ? 2 * u->core_cap : 256;
+    s->cores = arena_grow(u->arena, s->cores, u->core_cap * sizeof *s->cores, cap * sizeof *s->cores);
+    s->own_mirror = arena_grow(u->arena, s->own_mirror, u->core_cap * sizeof *s->own_mirror, cap * sizeof *s->own_mirror);
+    u->core_cap = cap;
+  }
+  s->own_mirror[s->core_count] = order == 0;
+  s->cores[s->core_count++] = *w;
+}
+
+/* No mount, then each mount at each spacing on A, then on B. */
+static void add_mounts(builder *u, wall *w) {
+  add_core(u, w);
+  for (int side = SIDE_A; side <= SIDE_B; side++) {
+    for (int m = 0; m < (int)u->catalog->mount_count; m++) {
+      if (!mount_usable(u, m)) continue;
+      for (size_t i = 0; i < u->catalog->mount_spacing_count; i++) {
+        w->mount[side] = (wall_mount){m, u->catalog->mount_spacings_mm[i], u->catalog->mounts[m].clip_spacing_mm};
+        add_core(u, w);
+      }
+    }
+    w->mount[side] = (wall_mount){.mount = CATALOG_NONE};
+  }
+}
+
+/* Empty; then each fill: in the only row, or in both rows, in A's and in B's. */
+static void add_fills(builder *u, wall *w) {
+  static const bool filled[FILL_CHOICES][2] = {{true, true}, {true, false}, {false, true}};
+  bool two = u->catalog->frames[w->frame].rows == 2;
+  add_mounts(u, w);
+  for (int i = 0; i < (int)u->catalog->fill_count; i++) {
+    if (!fill_usable(u, i) || compat_fill(u->catalog, w->frame, i) > u->most) continue;
+    for (int k = 0; k < (two ? FILL_CHOICES : 1); k++) {
+      w->fill[0] = filled[k][0] ? i : CATALOG_NONE;
+      w->fill[1] = two && filled[k][1] ? i : CATALOG_NONE;
+      add_mounts(u, w);
+    }
+  }
+  w->fill[0] = w->fill[1] = CATALOG_NONE;
+}
+
+static void build_cores(builder *u) {
+  for (int i = 0; i < (int)u->catalog->frame_count; i++) {
+    if (!frame_usable(u, i)) continue;
+    wall w = wall_empty();
+    w.frame = i;
+    if (wall_is_double(u->catalog, &w)) w.gap_mm = DEFAULT_GAP_MM;
+    for (size_t k = 0; k < u->catalog->spacing_count; k++) {
+      w.spacing_mm = u->catalog->spacings_mm[k];
+      add_fills(u, &w);
+    }
+  }
+}
+
+/* ---- what meets ---- */
+
+static space_support support_of(const catalog *c, const wall *core, int side) {
+  space_support p = {.mount = core->mount[side]};
+  if (p.mount.mount == CATALOG_NONE) {
+    p.mount = (wall_mount){.mount = CATALOG_NONE};
+    p.spacing_mm = core->spacing_mm;
+    p.mil = c->frames[core->frame].mil;
+  }
+  return p;
+}
+
+static bool same_support(const space_support *x, const space_support *y) {
+  return x->spacing_mm == y->spacing_mm && x->mil == y->mil && compare_mounts(&x->mount, &y->mount) == 0;
+}
+
+static int support_index(const space *s, const space_support *p) {
+  int i = 0;
+  while (i < s->support_count && !same_support(&s->supports[i], p)) i++;
+  return i;
+}
+
+static void build_supports(builder *u) {
+  space *s = u->out;
+  size_t cores = (size_t)s->core_count, faces = (size_t)s->face_count, cap = 0;
+  int *example = NULL; /* a core and side of each support: 2 x core + side */
+  for (int side = 0; side < 2; side++) s->support[side] = arena_array(u->arena, cores, sizeof *s->support[side]);
+  for (int k = 0; k < 2 * s->core_count; k++) {
+    space_support p = support_of(u->catalog, &s->cores[k / 2], k % 2);
+    int i = support_index(s, &p);
+    s->support[k % 2][k / 2] = i;
+    if (i < s->support_count) continue;
+    if ((size_t)i == cap) {
+      size_t more = cap ? 2 * cap : 16;
+      s->supports = arena_grow(u->arena, s->supports, cap * sizeof *s->supports, more * sizeof *s->supports);
+      example = arena_grow(u->arena, example, cap * sizeof *example, more * sizeof *example);
+      cap = more;
+    }
+    example[i] = k;
+    s->supports[s->support_count++] = p;
+  }
+  s->on_support = arena_array(u->arena, (size_t)s->support_count * faces, sizeof *s->on_support);
+  for (int i = 0; i < s->support_count; i++)
+    for (int f = 0; f < s->face_count; f++)
+      s->on_support[(size_t)i * faces + (size_t)f] =
+          compat_face_on_core(u->catalog, &s->cores[example[i] / 2], example[i] % 2, &s->faces[f]) <= u->most;
+}
+
+static void build_pairs(builder *u) {
+  space *s = u->out;
+  size_t n = (size_t)s->face_count;
+  s->pair = arena_array(u->arena, n * n, sizeof *s->pair);
+  for (size_t i = 0; i < n; i++)
+    for (size_t j = 0; j < n; j++)
+      s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <= u->most;
+}
+
+/* ---- the whole ---- */
+
+static bool rooms_alike(const brief *b) {
+  const room_side *p = &b->side[SIDE_A], *q = &b->side[SIDE_B];
+  bool same_length = !(p->fastening_length_m < q->fastening_length_m) && !(p->fastening_length_m > q->fastening_length_m);
+  bool same_ceiling = !(b->ceiling_m[0] < b->ceiling_m[1]) && !(b->ceiling_m[0] > b->ceiling_m[1]);
+  return p->fastening == q->fastening && same_length && p->wet == q->wet && p->abuse == q->abuse &&
+         p->finish_level == q->finish_level && same_ceiling && b->shear_side == CATALOG_NONE;
+}
+
+void space_build(arena *a, const judge_context *x, space *out) {
+  *out = (space){.context = x, .mirror_once = rooms_alike(x->brief)};
+  builder u = {.arena = a, .catalog = x->catalog, .brief = x->brief, .out = out};
+  u.most = x->brief->build == BUILD_ANY ? COMPAT_UNUSUAL : COMPAT_FINE;
+  build_faces(&u);
+  build_cores(&u);
+  build_supports(&u);
+  build_pairs(&u);
+}
+
+bool space_legal(const space *s, int core, int face_a, int face_b) {
+  size_t n = (size_t)s->face_count, i = (size_t)face_a, j = (size_t)face_b;
+  if (s->own_mirror[core] && face_b < face_a) return false;
+  return s->on_support[(size_t)s->support[SIDE_A][core] * n + i] &&
+         s->on_support[(size_t)s->support[SIDE_B][core] * n + j] && s->pair[i * n + j];
+}
+
+wall space_wall(const space *s, int core, int face_a, int face_b) {
+  wall w = s->cores[core];
+  w.side[SIDE_A] = s->faces[face_a];
+  w.side[SIDE_B] = s->faces[face_b];
+  return w;
+}
+
+long long space_count(const space *s) {
+  long long count = 0;
+  for (int k = 0; k < s->core_count; k++)
+    for (int i = 0; i < s->face_count; i++)
+      for (int j = 0; j < s->face_count; j++) count += space_legal(s, k, i, j);
+  return count;
+}
