@@ -238,14 +238,23 @@ static void read_member(reader *r, const json_value *v) {
   read_value(r, &r->table[row], v);
 }
 
+/* One message for a place that may be filled under several names. */
+static void report_missing(reader *r, const json_value *object) {
+  for (size_t i = 0; i < r->rows; i++) {
+    if (!(r->table[i].flags & FIELD_REQUIRED) || filled_by(r, i)) continue;
+    bool said = false;
+    for (size_t k = 0; k < i; k++)
+      said = said || ((r->table[k].flags & FIELD_REQUIRED) && same_place(&r->table[k], &r->table[i]));
+    if (!said) fault(r, ERROR_FIELD_MISSING, object, text_format(r->arena, "the key \"%s\" is missing", r->table[i].key));
+  }
+}
+
 bool fields_read(arena *a, diag_list *d, const json_value *object, const field *table, size_t rows, void *out) {
   size_t before = d->errors;
   reader r = {.arena = a, .diags = d, .table = table, .rows = rows, .out = out};
   if (!is_kind(&r, object, JSON_OBJECT, "an object")) return false;
   r.seen = arena_array(a, rows, sizeof *r.seen);
   for (const json_value *v = object->first; v; v = v->next) read_member(&r, v);
-  for (size_t i = 0; i < rows; i++)
-    if ((table[i].flags & FIELD_REQUIRED) && !filled_by(&r, i))
-      fault(&r, ERROR_FIELD_MISSING, object, text_format(a, "the key \"%s\" is missing", table[i].key));
+  report_missing(&r, object);
   return d->errors == before;
 }

@@ -40,8 +40,9 @@ typedef struct room_side {
   int finish_level;           /* 0..5, default 4 */
 } room_side;
 
+/* A door or window: its rating, or its transmission loss per band. */
 typedef struct opening {
-  const char *kind;
+  const char *kind;           /* "" when not said */
   double area_m2;
   bool has_bands;
   double stc;
@@ -81,7 +82,12 @@ typedef struct brief {
 
 /* The defaults: 3.0 x 2.7 m, no target, ordinary build. */
 void job_defaults(brief *b);
-/* Reads brief/1 from parsed JSON. `target_required` false for trim and rate. Patterns of only/without are checked against the
+/* A kind of opening that may be named without a rating. */
+typedef struct opening_kind { const char *kind; double stc; const char *source; } opening_kind;
+extern const opening_kind job_opening_kinds[];
+extern const int job_opening_kind_count;
+
+/* Reads brief/1 from parsed JSON (docs/formats/brief.md). Without a catalog (NULL) patterns are not checked. `target_required` false for trim and rate. Patterns of only/without are checked against the
  * catalog's ids: one that matches nothing is a warning with the nearest id. */
 bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root, bool target_required, brief *out);
 
