@@ -1,0 +1,167 @@
+/* The public API: runs the stages of each call and hands out what they found. */
+#include <string.h>
+
+#include "api/call.h"
+#include "api/data.h"
+#include "api/request.h"
+#include "base/file.h"
+
+enum { ANSWER_MAX_BYTES = 64 << 20 };
+
+void septum_options_init(septum_options *options) {
+  memset(options, 0, sizeof *options);
+}
+
+const char *septum_version(void) {
+  return SEPTUM_VERSION;
+}
+
+const char *septum_nearest(const char *word, const char *const *names, size_t n) {
+  return text_nearest(word, names, n);
+}
+
+/* --- open and close ----------------------------------------------------------------------------
+ */
+
+typedef struct open_job {
+  const char *catalogs;
+  septum **out;
+} open_job;
+
+static status open_stage(call *k, void *given) {
+  open_job *job = given;
+  const char *folder = job->catalogs;
+  if (folder == NULL) {
+    const char *data = data_folder(k->memory, &k->diags);
+    if (data == NULL) return k->diags.worst;
+    folder = file_join(k->kept, data, "catalogs");
+  }
+  const catalog *c = catalog_load(k->kept, &k->diags, folder);
+  if (c == NULL) return k->diags.worst;
+  septum *handle = arena_alloc(k->kept, sizeof *handle);
+  *handle = (septum){.memory = k->kept, .catalog = c, .listener = k->listener, .user = k->user};
+  *job->out = handle;
+  k->kept = NULL;
+  return STATUS_OK;
+}
+
+septum_status septum_open(const char *catalogs_dir, septum_listener listener, void *user,
+                          septum **out) {
+  *out = NULL;
+  open_job job = {catalogs_dir, out};
+  return call_run(listener, user, open_stage, &job);
+}
+
+void septum_close(septum *handle) {
+  if (handle != NULL) arena_free(handle->memory);
+}
+
+/* --- rate and pick -----------------------------------------------------------------------------
+ */
+
+typedef struct answer_job {
+  const septum *handle;
+  const char *operand;
+  septum_options options;
+  septum_answer **out;
+} answer_job;
+
+/* Writes the takeoff to the file that the options name, if any, and hands the answer out. */
+static status hand_out(call *k, const answer_job *job, const text *words, const text *json,
+                       const text *csv, status when_done) {
+  const char *path = job->options.save_csv;
+  if (path != NULL && !file_write(k->memory, &k->diags, path, csv->data, csv->len))
+    return k->diags.worst;
+  if (words->cut || json->cut || csv->cut) {
+    diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
+    return STATUS_INTERNAL;
+  }
+  *job->out = call_answer(k, words->data, json->data, csv->data);
+  return when_done;
+}
+
+static void start_texts(call *k, text *words, text *json, text *csv) {
+  text_init(words, k->memory, ANSWER_MAX_BYTES);
+  text_init(json, k->memory, ANSWER_MAX_BYTES);
+  text_init(csv, k->memory, ANSWER_MAX_BYTES);
+}
+
+static status rate_stage(call *k, void *given) {
+  answer_job *job = given;
+  request *prepared = arena_alloc(k->memory, sizeof *prepared);
+  bool ready = request_prepare(k, job->handle, &job->options, job->options.brief, false, prepared);
+  wall w = wall_empty();
+  const char *name = NULL;
+  if (!request_wall(k, job->handle->catalog, job->operand, &w, &name) || !ready)
+    return k->diags.worst;
+  assessment *x = arena_alloc(k->memory, sizeof *x);
+  judge_wall(k->memory, &prepared->context, &w, x);
+  x->name = name;
+  text words, json, csv;
+  start_texts(k, &words, &json, &csv);
+  report_rate_text(&prepared->report, x, &words);
+  report_rate_json(&prepared->report, x, &json);
+  report_takeoff_csv(&prepared->report, x, &csv);
+  return hand_out(k, job, &words, &json, &csv, STATUS_OK);
+}
+
+static status pick_stage(call *k, void *given) {
+  answer_job *job = given;
+  request *prepared = arena_alloc(k->memory, sizeof *prepared);
+  if (!request_prepare(k, job->handle, &job->options, job->operand, true, prepared))
+    return k->diags.worst;
+  space *s = arena_alloc(k->memory, sizeof *s);
+  sweep_result *swept = arena_alloc(k->memory, sizeof *swept);
+  explanation *why = arena_alloc(k->memory, sizeof *why);
+  pick_choice choice;
+  memset(&choice, 0, sizeof choice);
+  space_build(k->memory, &prepared->context, s);
+  sweep_run(k->memory, s, swept);
+  if (!model_choose(k->memory, &k->diags, s, swept, job->options.time_limit_s,
+                    job->options.save_model, &choice))
+    return k->diags.worst == STATUS_OK ? STATUS_INTERNAL : k->diags.worst;
+  explain_pick(k->memory, s, swept, &choice, why);
+  text words, json, csv;
+  start_texts(k, &words, &json, &csv);
+  report_pick_text(&prepared->report, why, &words);
+  report_pick_json(&prepared->report, why, &json);
+  report_takeoff_csv(&prepared->report, why->chosen, &csv);
+  return hand_out(k, job, &words, &json, &csv, why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
+}
+
+static septum_status run(septum *handle, const char *operand, const septum_options *options,
+                         call_stage stage, septum_answer **out) {
+  *out = NULL;
+  answer_job job = {.handle = handle, .operand = operand, .out = out};
+  if (options != NULL) job.options = *options;
+  return call_run(handle->listener, handle->user, stage, &job);
+}
+
+septum_status septum_rate(septum *handle, const char *wall_words, const septum_options *options,
+                          septum_answer **out) {
+  return run(handle, wall_words, options, rate_stage, out);
+}
+
+septum_status septum_pick(septum *handle, const char *path, const septum_options *options,
+                          septum_answer **out) {
+  return run(handle, path, options, pick_stage, out);
+}
+
+/* --- answers -----------------------------------------------------------------------------------
+ */
+
+const char *septum_answer_text(const septum_answer *answer) {
+  return answer->text;
+}
+
+const char *septum_answer_json(const septum_answer *answer) {
+  return answer->json;
+}
+
+const char *septum_answer_csv(const septum_answer *answer) {
+  return answer->csv;
+}
+
+void septum_answer_free(septum_answer *answer) {
+  if (answer != NULL) arena_free(answer->memory);
+}

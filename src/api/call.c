@@ -1,0 +1,71 @@
+#include "api/call.h"
+
+#include <stddef.h>
+#include <string.h>
+
+enum { LINE_MAX_BYTES = 4000 };
+
+static void tell_item(call *k, const diag *item) {
+  text line;
+  text_init(&line, k->memory, LINE_MAX_BYTES);
+  diag_print(&line, item);
+  septum_message message = {
+      .severity = (int)item->level, .code = (int)item->code, .text = line.data};
+  k->listener(k->user, &message);
+}
+
+void call_tell(call *k) {
+  if (k->listener == NULL) return;
+  while (k->heard < k->diags.count) tell_item(k, &k->diags.items[k->heard++]);
+  if (k->diags.dropped == 0) return;
+  const char *more =
+      text_format(k->memory, "note: %zu further messages are not shown", k->diags.dropped);
+  k->diags.dropped = 0;
+  septum_message message = {.severity = DIAG_NOTE, .code = ERROR_NONE, .text = more};
+  k->listener(k->user, &message);
+}
+
+/* No allocation here: there is no memory for one. */
+static status out_of_memory(septum_listener listener, void *user) {
+  static const septum_message message = {
+      .severity = DIAG_ERROR, .code = ERROR_SYSTEM_MEMORY, .text = "error[E403]: memory ran out"};
+  if (listener != NULL) listener(user, &message);
+  return STATUS_SYSTEM;
+}
+
+/* The only setjmp: nothing local changes between it and the jump. */
+static status guarded(call *k, call_stage stage, void *job) {
+  if (setjmp(k->no_memory) != 0) return out_of_memory(k->listener, k->user);
+  status answer = stage(k, job);
+  call_tell(k);
+  return answer;
+}
+
+septum_status call_run(septum_listener listener, void *user, call_stage stage, void *job) {
+  call k;
+  memset(&k, 0, sizeof k);
+  k.listener = listener;
+  k.user = user;
+  k.memory = arena_create(0, &k.no_memory);
+  k.kept = arena_create(0, &k.no_memory);
+  status answer = STATUS_SYSTEM;
+  if (k.memory == NULL || k.kept == NULL) {
+    answer = out_of_memory(listener, user);
+  } else {
+    diag_init(&k.diags, k.memory);
+    answer = guarded(&k, stage, job);
+  }
+  arena_free(k.memory);
+  arena_free(k.kept);
+  return (septum_status)answer;
+}
+
+septum_answer *call_answer(call *k, const char *words, const char *json, const char *csv) {
+  septum_answer *answer = arena_alloc(k->kept, sizeof *answer);
+  answer->text = text_copy(k->kept, words);
+  answer->json = text_copy(k->kept, json);
+  answer->csv = text_copy(k->kept, csv);
+  answer->memory = k->kept;
+  k->kept = NULL;
+  return answer;
+}

@@ -1,0 +1,131 @@
+/* septum_check: any file that septum reads, by its key "septum". */
+#include <string.h>
+
+#include "api/call.h"
+#include "api/request.h"
+#include "input/rows.h"
+#include "wall/line.h"
+
+typedef struct check_job {
+  const septum *handle;
+  const char *const *paths;
+  size_t count;
+  septum_answer **out;
+} check_job;
+
+typedef bool (*check_reader)(call *k, const catalog *c, const json_value *root);
+
+static bool check_catalog(call *k, const catalog *c, const json_value *root) {
+  (void)c;
+  return catalog_check_file(k->memory, &k->diags, root);
+}
+
+static bool check_brief(call *k, const catalog *c, const json_value *root) {
+  brief *b = arena_alloc(k->memory, sizeof *b);
+  job_defaults(b);
+  return job_read(k->memory, &k->diags, c, root, false, b);
+}
+
+static bool check_prices(call *k, const catalog *c, const json_value *root) {
+  return prices_read(k->memory, &k->diags, c, root) != NULL;
+}
+
+static bool check_wall(call *k, const catalog *c, const json_value *root) {
+  wall w = wall_empty();
+  const char *name = NULL;
+  return line_from_json(k->memory, &k->diags, c, root, &w, &name) &&
+         request_buildable(k, c, root->file, &w);
+}
+
+/* A listing's boards are looked up in the catalog as they are when a brief names it. */
+static bool check_listing(call *k, const catalog *c, const json_value *root) {
+  catalog alone = *c;
+  alone.published_count = 0;
+  return rows_read(k->memory, &k->diags, root, "listing", &alone.fire, &alone.fire_count) &&
+         rows_check_ids(k->memory, &k->diags, &alone);
+}
+
+static const struct check_kind {
+  const char *kind;
+  check_reader reader; /* NULL: a kind of septum that this version does not read */
+} check_kinds[] = {
+    {"acoustics", check_catalog}, {"boards", check_catalog},
+    {"brief", check_brief},       {"fills", check_catalog},
+    {"fire", check_catalog},      {"frames", check_catalog},
+    {"listing", check_listing},   {"mounts", check_catalog},
+    {"price-book", check_prices}, {"project", NULL},
+    {"published", check_catalog}, {"report", NULL},
+    {"targets", check_catalog},   {"wall", check_wall},
+};
+enum { CHECK_KINDS = sizeof check_kinds / sizeof check_kinds[0] };
+
+static const struct check_kind *find_kind(const char *word) {
+  size_t n = strcspn(word, "/");
+  for (size_t i = 0; i < CHECK_KINDS; i++)
+    if (strlen(check_kinds[i].kind) == n && strncmp(check_kinds[i].kind, word, n) == 0)
+      return &check_kinds[i];
+  return NULL;
+}
+
+static void unknown_kind(call *k, const json_value *root, const json_value *said) {
+  const char *names[CHECK_KINDS];
+  for (size_t i = 0; i < CHECK_KINDS; i++) names[i] = check_kinds[i].kind;
+  const json_value *at = said != NULL ? said : root;
+  bool word = said != NULL && said->kind == JSON_STRING;
+  const char *near =
+      word ? text_nearest(text_copyn(k->memory, said->string, strcspn(said->string, "/")), names,
+                          CHECK_KINDS)
+           : NULL;
+  diag_add(&k->diags, DIAG_ERROR, ERROR_FILE_KIND, json_place(k->memory, at),
+           "expected an object with the key \"septum\" naming a kind of file that septum reads, "
+           "found %s%s%s%s%s",
+           word ? "\"" : "", word ? said->string : json_kind_name(at->kind), word ? "\"" : "",
+           near ? "; the nearest is " : "", near ? near : "");
+}
+
+static void check_root(call *k, const catalog *c, const json_value *root, checked_file *out) {
+  const json_value *said = json_get(root, "septum");
+  const struct check_kind *kind =
+      said != NULL && said->kind == JSON_STRING ? find_kind(said->string) : NULL;
+  if (kind == NULL) {
+    unknown_kind(k, root, said);
+    return;
+  }
+  out->kind = text_format(k->memory, "%s/1", kind->kind);
+  if (kind->reader == NULL)
+    diag_add(&k->diags, DIAG_ERROR, ERROR_FILE_KIND, json_place(k->memory, said),
+             "expected a kind that this version reads, found %s, which it does not read yet",
+             out->kind);
+  else if (json_is(k->memory, &k->diags, root, kind->kind))
+    (void)kind->reader(k, c, root);
+}
+
+static status check_stage(call *k, void *given) {
+  check_job *job = given;
+  checked_file *files = arena_array(k->memory, job->count, sizeof *files);
+  status worst = STATUS_OK;
+  for (size_t i = 0; i < job->count; i++) {
+    files[i].path = job->paths[i];
+    const json_value *root = json_load(k->memory, &k->diags, job->paths[i]);
+    if (root != NULL) check_root(k, job->handle->catalog, root, &files[i]);
+    files[i].errors = k->diags.errors;
+    if (k->diags.worst > worst) worst = k->diags.worst;
+    call_tell(k);
+    diag_init(&k->diags, k->memory);
+    k->heard = 0;
+  }
+  text words, json;
+  text_init(&words, k->memory, JSON_MAX_BYTES);
+  text_init(&json, k->memory, JSON_MAX_BYTES);
+  report_check_text(files, job->count, &words);
+  report_check_json(files, job->count, &json);
+  *job->out = call_answer(k, words.data, json.data, "");
+  return worst;
+}
+
+septum_status septum_check(septum *handle, const char *const *paths, size_t count,
+                           septum_answer **out) {
+  *out = NULL;
+  check_job job = {handle, paths, count, out};
+  return call_run(handle->listener, handle->user, check_stage, &job);
+}

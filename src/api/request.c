@@ -1,0 +1,119 @@
+#include "api/request.h"
+
+#include <string.h>
+
+#include "api/data.h"
+#include "base/file.h"
+#include "input/rows.h"
+#include "wall/compat.h"
+#include "wall/line.h"
+
+/* Rating without a brief: cost and height are those of this wall. */
+static const double REFERENCE_LENGTH_M = 10.0, REFERENCE_HEIGHT_M = 3.0;
+
+static bool read_brief(call *k, const catalog *c, const char *path, bool target_required,
+                       brief *out) {
+  job_defaults(out);
+  if (path == NULL) {
+    out->length_m = REFERENCE_LENGTH_M;
+    out->height_m = REFERENCE_HEIGHT_M;
+    return true;
+  }
+  const json_value *root = json_load(k->memory, &k->diags, path);
+  return root != NULL && json_is(k->memory, &k->diags, root, "brief") &&
+         job_read(k->memory, &k->diags, c, root, target_required, out);
+}
+
+static const price_book *read_prices(call *k, const septum_options *options, const request *q) {
+  const char *path = options->prices != NULL ? options->prices : q->brief.prices;
+  if (path == NULL) path = data_default_prices(k->memory, &k->diags);
+  return path == NULL ? NULL : prices_load(k->memory, &k->diags, &q->catalog, path);
+}
+
+static bool add_listing(call *k, catalog *c, const char *path) {
+  const json_value *root = json_load(k->memory, &k->diags, path);
+  if (root == NULL || !json_is(k->memory, &k->diags, root, "listing")) return false;
+  wall_row *rows = NULL;
+  size_t count = 0;
+  if (!rows_read(k->memory, &k->diags, root, "listing", &rows, &count)) return false;
+  wall_row *all = arena_array(k->memory, c->fire_count + count, sizeof *all);
+  if (c->fire_count > 0) memcpy(all, c->fire, c->fire_count * sizeof *all);
+  if (count > 0) memcpy(all + c->fire_count, rows, count * sizeof *all);
+  c->fire = all;
+  c->fire_count += count;
+  return true;
+}
+
+/* The user's fire listings stand beside the fire rows of the catalog, in a copy: the handle's rows
+ * stay as they are. */
+static bool add_listings(call *k, const brief *b, catalog *c) {
+  if (b->report_count > 0)
+    diag_add(&k->diags, DIAG_WARNING, ERROR_FILE_KIND,
+             (diag_place){.file = b->file, .path = "$.reports"},
+             "test reports (report/1) are not read by this version: they are left out");
+  if (b->listing_count == 0) return true;
+  wall_row *published = arena_array(k->memory, c->published_count, sizeof *published);
+  if (c->published_count > 0)
+    memcpy(published, c->published, c->published_count * sizeof *published);
+  c->published = published;
+  bool sound = true;
+  for (int i = 0; i < b->listing_count; i++) sound = add_listing(k, c, b->listings[i]) && sound;
+  return sound && rows_check_ids(k->memory, &k->diags, c);
+}
+
+static units_system text_units(const septum_options *options, const brief *b) {
+  if (options->units == SEPTUM_UNITS_US) return UNITS_US;
+  if (options->units == SEPTUM_UNITS_SI) return UNITS_SI;
+  return b->units;
+}
+
+bool request_prepare(call *k, const septum *handle, const septum_options *options,
+                     const char *brief_path, bool target_required, request *out) {
+  out->catalog = *handle->catalog;
+  bool sound = read_brief(k, handle->catalog, brief_path, target_required, &out->brief);
+  if (sound) sound = add_listings(k, &out->brief, &out->catalog);
+  out->prices = read_prices(k, options, out);
+  if (!sound || out->prices == NULL) return false;
+  out->context =
+      (judge_context){.catalog = &out->catalog, .prices = out->prices, .brief = &out->brief};
+  out->report = (report){.arena = k->memory,
+                         .catalog = &out->catalog,
+                         .prices = out->prices,
+                         .brief = &out->brief,
+                         .asked = brief_path != NULL,
+                         .units = text_units(options, &out->brief)};
+  return true;
+}
+
+bool request_buildable(call *k, const catalog *c, const char *file, const wall *w) {
+  compat_report found;
+  compat_check(c, w, &found);
+  bool buildable = true;
+  for (int i = 0; i < found.count; i++) {
+    const compat_finding *f = &found.finding[i];
+    if (f->level != COMPAT_ILLEGAL) continue;
+    diag_add(&k->diags, DIAG_ERROR, ERROR_WALL_ILLEGAL, (diag_place){.file = file}, "%s: %s (%s)",
+             f->rule, f->reason, f->source);
+    buildable = false;
+  }
+  return buildable;
+}
+
+/* A wall line holds bars; what holds none is a path when such a file is there or it looks like one.
+ */
+static bool is_path(const char *words) {
+  if (strchr(words, '|') != NULL) return false;
+  size_t n = strlen(words);
+  return file_exists(words) || strchr(words, '/') != NULL ||
+         (n > 5 && strcmp(words + n - 5, ".json") == 0);
+}
+
+bool request_wall(call *k, const catalog *c, const char *words, wall *out, const char **name) {
+  *name = NULL;
+  if (!is_path(words))
+    return line_parse(k->memory, &k->diags, c, words, out) && request_buildable(k, c, NULL, out);
+  const json_value *root = json_load(k->memory, &k->diags, words);
+  return root != NULL && json_is(k->memory, &k->diags, root, "wall") &&
+         line_from_json(k->memory, &k->diags, c, root, out, name) &&
+         request_buildable(k, c, words, out);
+}

@@ -1,0 +1,26 @@
+/* What rate and pick share: the brief, its price book and listings, the wall. */
+#ifndef API_REQUEST_H
+#define API_REQUEST_H
+
+#include "api/call.h"
+#include "report/report.h"
+#include "wall/wall.h"
+
+typedef struct request {
+  brief brief;
+  catalog catalog; /* the handle's, with the brief's listings among the fire rows */
+  const price_book *prices;
+  judge_context context;
+  report report;
+} request;
+
+/* Reads everything that the options and the brief name. `brief_path` NULL: the reference wall.
+ * False after messages. */
+bool request_prepare(call *k, const septum *handle, const septum_options *options,
+                     const char *brief_path, bool target_required, request *out);
+/* The wall of a wall line or wall/1 file, checked: it can be built. False after messages. */
+bool request_wall(call *k, const catalog *c, const char *words, wall *out, const char **name);
+/* One message for each reason why the wall cannot be built. True when there is none. */
+bool request_buildable(call *k, const catalog *c, const char *file, const wall *w);
+
+#endif
