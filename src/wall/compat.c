@@ -99,6 +99,11 @@ static void add(compat_report *r, rule which) {
   r->finding[r->count++] = *f;
 }
 
+const compat_finding *compat_rules(size_t *count) {
+  *count = RULES;
+  return rules;
+}
+
 static void start(compat_report *r) {
   r->count = 0;
   r->worst = COMPAT_FINE;

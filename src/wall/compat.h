@@ -31,4 +31,8 @@ compat_level compat_core(const catalog *c, const wall *core);              /* fr
 compat_level compat_face_on_core(const catalog *c, const wall *core, int side, const face *f);
 compat_level compat_pair(const catalog *c, const face *a, const face *b);  /* ordinary build: counts and kinds of both sides */
 
+
+/* Every rule with its level, reason and source: for tests and pages. */
+const compat_finding *compat_rules(size_t *count);
+
 #endif

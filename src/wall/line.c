@@ -127,7 +127,13 @@ static void read_face(parser *p, span s, face *out) {
   while (next_piece(p, &rest, '+', &item)) {
     catalog_ref ref;
     int n = read_repeat(p, &item);
-    if (!read_id(p, item, CATALOG_LAYER, "a board or membrane", &ref)) continue;
+    size_t end = item.from;
+    while (end < item.to && !strchr("@~,", p->line[end])) end++;
+    if (!read_id(p, trim(p, (span){item.from, end}), CATALOG_LAYER, "a board or membrane", &ref)) continue;
+    if (end < item.to) {
+      fault(p, ERROR_WALL_SYNTAX, end, "expected + or | after an item of a face");
+      continue;
+    }
     if (out->count + n > WALL_MAX_LAYERS) {
       fault(p, ERROR_WALL_SYNTAX, item.from, text_format(p->arena, "expected at most %d layers", (int)WALL_MAX_LAYERS));
       return;
