@@ -306,11 +306,11 @@ bool solver_save(arena *a, diag_list *d, const solver_model *m, const char *path
   bool sent = send(t);
   size_t len = 0;
   char *bytes = take_file(a, t->save_path, &len);
-  if (!sent || t->state != TASK_DONE) {
+  if (!sent) {
     report_fault(d, t, sent);
     return false;
   }
-  if (!bytes || !ends_well(bytes, len)) {
+  if (t->state != TASK_DONE || !bytes || !ends_well(bytes, len)) {
     diag_error(d, ERROR_SYSTEM_WRITE, "%s: the model could not be written whole", path);
     return false;
   }
