@@ -20,8 +20,7 @@ static bool read_brief(call *k, const catalog *c, const char *path, bool target_
     return true;
   }
   const json_value *root = json_load(k->memory, &k->diags, path);
-  return root != NULL && json_is(k->memory, &k->diags, root, "brief") &&
-         job_read(k->memory, &k->diags, c, root, target_required, out);
+  return root != NULL && job_read(k->memory, &k->diags, c, root, target_required, out);
 }
 
 static const price_book *read_prices(call *k, const septum_options *options, const request *q) {
@@ -32,10 +31,10 @@ static const price_book *read_prices(call *k, const septum_options *options, con
 
 static bool add_listing(call *k, catalog *c, const char *path) {
   const json_value *root = json_load(k->memory, &k->diags, path);
-  if (root == NULL || !json_is(k->memory, &k->diags, root, "listing")) return false;
   wall_row *rows = NULL;
   size_t count = 0;
-  if (!rows_read(k->memory, &k->diags, root, "listing", &rows, &count)) return false;
+  if (root == NULL || !rows_read(k->memory, &k->diags, root, "listing", &rows, &count))
+    return false;
   wall_row *all = arena_array(k->memory, c->fire_count + count, sizeof *all);
   if (c->fire_count > 0) memcpy(all, c->fire, c->fire_count * sizeof *all);
   if (count > 0) memcpy(all + c->fire_count, rows, count * sizeof *all);
@@ -113,7 +112,6 @@ bool request_wall(call *k, const catalog *c, const char *words, wall *out, const
   if (!is_path(words))
     return line_parse(k->memory, &k->diags, c, words, out) && request_buildable(k, c, NULL, out);
   const json_value *root = json_load(k->memory, &k->diags, words);
-  return root != NULL && json_is(k->memory, &k->diags, root, "wall") &&
-         line_from_json(k->memory, &k->diags, c, root, out, name) &&
+  return root != NULL && line_from_json(k->memory, &k->diags, c, root, out, name) &&
          request_buildable(k, c, words, out);
 }

@@ -295,7 +295,7 @@ void report_wall_text(const report *r, const assessment *x, text *out) {
 }
 
 void report_rate_text(const report *r, const assessment *x, text *out) {
-  if (r->asked && r->brief->title != NULL) page_line(out, "Brief", r->brief->title);
+  if (r->asked && r->brief->title[0] != '\0') page_line(out, "Brief", r->brief->title);
   report_wall_text(r, x, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }

@@ -160,7 +160,7 @@ static void put_infeasible(const report *r, const explanation *e, text *out) {
 }
 
 void report_pick_text(const report *r, const explanation *e, text *out) {
-  if (r->brief->title != NULL) page_line(out, "Brief", r->brief->title);
+  if (r->brief->title[0] != '\0') page_line(out, "Brief", r->brief->title);
   if (e->chosen == NULL) {
     page_line(out, "Answer",
               e->status == SOLVER_INFEASIBLE
