@@ -1,5 +1,5 @@
-/* A published rating stands for a wall that is that wall: same boards, framing, mount, fill. The rest are neighbours, ranked by
- * the sum of what their differences weigh. */
+/* A published rating stands for a wall that is that wall: same boards, framing, mount, fill. The
+ * rest are neighbours, ranked by the sum of what their differences weigh. */
 #include "checks/evidence.h"
 
 #include <math.h>
@@ -8,15 +8,19 @@
 #include "base/units.h"
 #include "wall/line.h"
 
-/* Boards of one kind and thickness count as the same up to this difference of mass: makes differ by so much, and a rating by
- * less than half a point (mass law: 20 lg 1.05 = 0.4 dB). */
+/* Boards of one kind and thickness count as the same up to this difference of mass: makes differ by
+ * so much, and a rating by less than half a point (mass law: 20 lg 1.05 = 0.4 dB). */
 #define SAME_MASS 0.05
 /* Gaps between rows, drawn to the nearest mm. */
 #define SAME_GAP_M 0.0011
 
-static bool lower_rating(int value, int old) { return value < old; }
+static bool lower_rating(int value, int old) {
+  return value < old;
+}
 
-static double apart(double x, double y) { return fabs(x - y); }
+static double apart(double x, double y) {
+  return fabs(x - y);
+}
 
 /* Matching */
 
@@ -34,7 +38,8 @@ uint64_t evidence_face(const catalog *c, const face *f) {
   for (size_t n = 0; n < c->published_need_count; n++) {
     const side_need *need = &c->published_needs[n];
     bool same = need->count == f->count;
-    for (int i = 0; same && i < f->count; i++) same = same_board(c, f->layer[i], need->item[i].layer);
+    for (int i = 0; same && i < f->count; i++)
+      same = same_board(c, f->layer[i], need->item[i].layer);
     if (same) bits |= UINT64_C(1) << n;
   }
   return bits;
@@ -48,15 +53,17 @@ static bool frame_is(const catalog *c, const wall *w, const wall_row *row) {
   const frame *f = &c->frames[w->frame];
   if (f->material != row->material || f->layout != row->layout) return false;
   if (apart(f->stud_depth_m, row->depth_m) > MATCH_TOLERANCE_M) return false;
-  if (f->material == FRAME_STEEL && (f->mil < row->mil_min || (row->mil_max > 0 && f->mil > row->mil_max))) return false;
+  if (f->material == FRAME_STEEL &&
+      (f->mil < row->mil_min || (row->mil_max > 0 && f->mil > row->mil_max)))
+    return false;
   if (row->gap_m > 0 && apart(w->gap_mm * 0.001, row->gap_m) > SAME_GAP_M) return false;
   return within(wall_spacing_m(w->spacing_mm), row->spacing_min_m, row->spacing_max_m);
 }
 
 static bool mount_is(const catalog *c, const wall *w, const wall_row *row, int side) {
   if (row->mount == ROW_MOUNT_NONE) return !wall_is_mounted(w);
-  return match_channel(c, w, side) &&
-         within(wall_spacing_m(w->mount[side].spacing_mm), row->mount_spacing_min_m, row->mount_spacing_max_m);
+  return match_channel(c, w, side) && within(wall_spacing_m(w->mount[side].spacing_mm),
+                                             row->mount_spacing_min_m, row->mount_spacing_max_m);
 }
 
 static bool fill_is(const catalog *c, const wall *w, const wall_row *row) {
@@ -84,11 +91,14 @@ void evidence_core_set(const catalog *c, const wall *core, match_list *out) {
   }
 }
 
-const wall_row *evidence_pair(const catalog *c, const match_list *core, uint64_t face_a, uint64_t face_b) {
+const wall_row *evidence_pair(const catalog *c, const match_list *core, uint64_t face_a,
+                              uint64_t face_b) {
   const match_entry *best = NULL;
   for (int i = 0; i < core->count; i++) {
     const match_entry *e = &core->entry[i];
-    if ((face_a >> e->need[SIDE_A] & 1u) && (face_b >> e->need[SIDE_B] & 1u) && (!best || e->value < best->value)) best = e;
+    if ((face_a >> e->need[SIDE_A] & 1u) && (face_b >> e->need[SIDE_B] & 1u) &&
+        (!best || e->value < best->value))
+      best = e;
   }
   return best ? &c->published[best->row] : NULL;
 }
@@ -97,22 +107,25 @@ const wall_row *evidence_match(const catalog *c, const wall *w) {
   match_list core;
   evidence_core_set(c, w, &core);
   if (core.count == 0) return NULL;
-  return evidence_pair(c, &core, evidence_face(c, &w->side[SIDE_A]), evidence_face(c, &w->side[SIDE_B]));
+  return evidence_pair(c, &core, evidence_face(c, &w->side[SIDE_A]),
+                       evidence_face(c, &w->side[SIDE_B]));
 }
 
 /* Distance: one walk adds up weights and, when asked, says each difference. */
 
 typedef struct walk {
-  arena *arena;         /* NULL: no words */
+  arena *arena; /* NULL: no words */
   const catalog *c;
   const wall *w;
   const wall_row *row;
-  int side;             /* of the wall, where the row's side A stands */
+  int side; /* of the wall, where the row's side A stands */
   double distance;
-  evidence_near *out;   /* NULL with the arena */
+  evidence_near *out; /* NULL with the arena */
 } walk;
 
-static char letter(int side) { return side == SIDE_A ? 'A' : 'B'; }
+static char letter(int side) {
+  return side == SIDE_A ? 'A' : 'B';
+}
 
 static void say(walk *k, double weight, const char *format, ...) TEXT_PRINTF(3, 4);
 
@@ -128,7 +141,9 @@ static void say(walk *k, double weight, const char *format, ...) {
   k->out->differs[k->out->differ_count++] = t.data;
 }
 
-static int nominal(double metres) { return (int)lround(metres * 1000); }
+static int nominal(double metres) {
+  return (int)lround(metres * 1000);
+}
 
 /* What is left of two leaves once equal layers are taken away in pairs, whatever their order. */
 static int unmatched(const catalog *c, const int *of, int n, const int *against, int m, int *left) {
@@ -137,8 +152,10 @@ static int unmatched(const catalog *c, const int *of, int n, const int *against,
   for (int i = 0; i < n; i++) {
     int j = 0;
     while (j < m && (used[j] || !same_board(c, of[i], against[j]))) j++;
-    if (j < m) used[j] = true;
-    else left[count++] = of[i];
+    if (j < m)
+      used[j] = true;
+    else
+      left[count++] = of[i];
   }
   return count;
 }
@@ -157,8 +174,8 @@ static void compare_leaf(walk *k, const row_side *published, const face *ours, i
   const evidence_weights *weight = &k->c->distance;
   int pairs = p < q ? p : q;
   for (int i = 0; i < pairs; i++)
-    say(k, weight->board, "%s for %s on side %c", k->c->layers[only_theirs[i]].id, k->c->layers[only_ours[i]].id,
-        letter(side));
+    say(k, weight->board, "%s for %s on side %c", k->c->layers[only_theirs[i]].id,
+        k->c->layers[only_ours[i]].id, letter(side));
   if (p == q) return;
   int extra = p > q ? p - q : q - p;
   const char *words = k->arena ? layers_word(k->arena, extra, p > q ? "more" : "fewer") : "";
@@ -171,23 +188,31 @@ static void compare_frame(walk *k) {
   const wall_row *row = k->row;
   const evidence_weights *weight = &k->c->distance;
   if (f->material != row->material)
-    say(k, weight->material, row->material == FRAME_STEEL ? "steel for wood studs" : "wood for steel studs");
-  if (f->layout != row->layout) say(k, weight->layout, "%s for %s", layouts[row->layout], layouts[f->layout]);
+    say(k, weight->material,
+        row->material == FRAME_STEEL ? "steel for wood studs" : "wood for steel studs");
+  if (f->layout != row->layout)
+    say(k, weight->layout, "%s for %s", layouts[row->layout], layouts[f->layout]);
   double depth = apart(f->stud_depth_m, row->depth_m);
   if (depth > MATCH_TOLERANCE_M)
-    say(k, weight->depth * depth / UNITS_M_PER_IN, "%d for %d mm studs", nominal(row->depth_m), nominal(f->stud_depth_m));
+    say(k, weight->depth * depth / UNITS_M_PER_IN, "%d for %d mm studs", nominal(row->depth_m),
+        nominal(f->stud_depth_m));
   if (f->material == FRAME_STEEL && row->material == FRAME_STEEL) {
-    int mil = f->mil < row->mil_min ? row->mil_min : row->mil_max > 0 && f->mil > row->mil_max ? row->mil_max : f->mil;
-    if (mil != f->mil) say(k, weight->steel * fabs(log2((double)f->mil / mil)), "%d for %d mil steel", mil, f->mil);
+    int mil = f->mil < row->mil_min                       ? row->mil_min
+              : row->mil_max > 0 && f->mil > row->mil_max ? row->mil_max
+                                                          : f->mil;
+    if (mil != f->mil)
+      say(k, weight->steel * fabs(log2((double)f->mil / mil)), "%d for %d mil steel", mil, f->mil);
   }
   if (f->layout == FRAME_DOUBLE && row->gap_m > 0) {
     double gap = apart(k->w->gap_mm * 0.001, row->gap_m);
     if (gap > SAME_GAP_M)
-      say(k, weight->gap * gap / UNITS_M_PER_IN, "gap of %d for %d mm", nominal(row->gap_m), k->w->gap_mm);
+      say(k, weight->gap * gap / UNITS_M_PER_IN, "gap of %d for %d mm", nominal(row->gap_m),
+          k->w->gap_mm);
   }
 }
 
-/* Steps of 8 in between spacings; 0 when the published range holds ours. *nearest is the published spacing nearest to ours. */
+/* Steps of 8 in between spacings; 0 when the published range holds ours. *nearest is the published
+ * spacing nearest to ours. */
 static double spacing_steps(double ours, double least, double most, double *nearest) {
   const double step = 8 * UNITS_M_PER_IN;
   *nearest = ours < least ? least : ours > most ? most : ours;
@@ -197,10 +222,11 @@ static double spacing_steps(double ours, double least, double most, double *near
 
 static void compare_spacing(walk *k) {
   double nearest;
-  double steps =
-      spacing_steps(wall_spacing_m(k->w->spacing_mm), k->row->spacing_min_m, k->row->spacing_max_m, &nearest);
+  double steps = spacing_steps(wall_spacing_m(k->w->spacing_mm), k->row->spacing_min_m,
+                               k->row->spacing_max_m, &nearest);
   if (steps > 0)
-    say(k, k->c->distance.spacing * steps, "studs at %d for %d mm", nominal(nearest), k->w->spacing_mm);
+    say(k, k->c->distance.spacing * steps, "studs at %d for %d mm", nominal(nearest),
+        k->w->spacing_mm);
 }
 
 static void compare_mount(walk *k) {
@@ -216,11 +242,12 @@ static void compare_mount(walk *k) {
     say(k, weight->mount, "channel on side %c", letter(k->side));
     return;
   }
-  if (ours != k->side) say(k, weight->mount_side, "channel on side %c for side %c", letter(k->side), letter(ours));
+  if (ours != k->side)
+    say(k, weight->mount_side, "channel on side %c for side %c", letter(k->side), letter(ours));
   if (clips) say(k, weight->mount_kind, "channel for clips");
   double nearest;
-  double steps = spacing_steps(wall_spacing_m(k->w->mount[ours].spacing_mm), k->row->mount_spacing_min_m,
-                               k->row->mount_spacing_max_m, &nearest);
+  double steps = spacing_steps(wall_spacing_m(k->w->mount[ours].spacing_mm),
+                               k->row->mount_spacing_min_m, k->row->mount_spacing_max_m, &nearest);
   if (steps > 0)
     say(k, weight->mount_spacing * steps, "channel at %d for %s at %d mm", nominal(nearest), kind,
         k->w->mount[ours].spacing_mm);
@@ -232,8 +259,10 @@ static void compare_fill(walk *k) {
   int ours = match_rows_with_fill(k->c, k->w);
   if (theirs > 0 && ours > 0) {
     if (theirs != ours && k->row->layout == k->c->frames[k->w->frame].layout)
-      say(k, weight->fill_row, theirs > ours ? "both rows filled for one" : "one row filled for both");
-    if (match_filled_rows(k->c, k->w, k->row) < ours) say(k, weight->partial_fill, "full for part-filled cavity");
+      say(k, weight->fill_row,
+          theirs > ours ? "both rows filled for one" : "one row filled for both");
+    if (match_filled_rows(k->c, k->w, k->row) < ours)
+      say(k, weight->partial_fill, "full for part-filled cavity");
     return;
   }
   if (theirs > 0) say(k, weight->fill, "filled for empty cavity");
@@ -243,11 +272,11 @@ static void compare_fill(walk *k) {
 static void compare_hidden(walk *k) {
   for (int s = 0; s < 2; s++) {
     for (int i = 0; i < k->w->sheath[s].count; i++)
-      say(k, k->c->distance.mount, "no %s behind the mount on side %c", k->c->layers[k->w->sheath[s].layer[i]].id,
-          letter(s));
+      say(k, k->c->distance.mount, "no %s behind the mount on side %c",
+          k->c->layers[k->w->sheath[s].layer[i]].id, letter(s));
     for (int i = 0; i < k->w->inner[s].count; i++)
-      say(k, k->c->distance.mount, "no %s on the inner face of side %c", k->c->layers[k->w->inner[s].layer[i]].id,
-          letter(s));
+      say(k, k->c->distance.mount, "no %s on the inner face of side %c",
+          k->c->layers[k->w->inner[s].layer[i]].id, letter(s));
   }
 }
 
@@ -284,7 +313,8 @@ static int frame_of(const catalog *c, const wall_row *row, const frame *ours) {
 static int nearest_of(const int *values, size_t count, double metres) {
   int best = values[0];
   for (size_t i = 1; i < count; i++)
-    if (apart(wall_spacing_m(values[i]), metres) < apart(wall_spacing_m(best), metres)) best = values[i];
+    if (apart(wall_spacing_m(values[i]), metres) < apart(wall_spacing_m(best), metres))
+      best = values[i];
   return best;
 }
 
@@ -294,7 +324,8 @@ static int fill_of(const catalog *c, const wall_row *row, double depth_m, int ou
   int best = CATALOG_NONE;
   for (size_t i = 0; i < c->fill_count; i++) {
     if ((int)c->fills[i].material != kind || c->fills[i].special) continue;
-    if (best == CATALOG_NONE || apart(c->fills[i].thickness_m, depth_m) < apart(c->fills[best].thickness_m, depth_m))
+    if (best == CATALOG_NONE ||
+        apart(c->fills[i].thickness_m, depth_m) < apart(c->fills[best].thickness_m, depth_m))
       best = (int)i;
   }
   return best;
@@ -322,17 +353,21 @@ static bool wall_of(const walk *k, wall *out) {
   if (out->frame == CATALOG_NONE) return false;
   out->side[k->side] = leaf_of(c, &row->side_a);
   out->side[1 - k->side] = leaf_of(c, &row->side_b);
-  (void)spacing_steps(wall_spacing_m(k->w->spacing_mm), row->spacing_min_m, row->spacing_max_m, &spacing);
+  (void)spacing_steps(wall_spacing_m(k->w->spacing_mm), row->spacing_min_m, row->spacing_max_m,
+                      &spacing);
   out->spacing_mm = nearest_of(c->spacings_mm, c->spacing_count, spacing);
   if (row->layout == FRAME_DOUBLE) out->gap_mm = row->gap_m > 0 ? nominal(row->gap_m) : 25;
-  double depth = row->fill_thickness_m > 0 ? row->fill_thickness_m : c->frames[out->frame].row_depth_m;
+  double depth =
+      row->fill_thickness_m > 0 ? row->fill_thickness_m : c->frames[out->frame].row_depth_m;
   for (int r = 0; r < row->filled_rows; r++) out->fill[r] = fill_of(c, row, depth, k->w->fill[0]);
   if (row->mount == ROW_MOUNT_CHANNEL) {
     int ours = match_mounted_side(k->w);
-    double wanted = ours != CATALOG_NONE ? wall_spacing_m(k->w->mount[ours].spacing_mm) : row->mount_spacing_max_m;
+    double wanted = ours != CATALOG_NONE ? wall_spacing_m(k->w->mount[ours].spacing_mm)
+                                         : row->mount_spacing_max_m;
     (void)spacing_steps(wanted, row->mount_spacing_min_m, row->mount_spacing_max_m, &spacing);
     out->mount[k->side].mount = channel_of(c);
-    out->mount[k->side].spacing_mm = nearest_of(c->mount_spacings_mm, c->mount_spacing_count, spacing);
+    out->mount[k->side].spacing_mm =
+        nearest_of(c->mount_spacings_mm, c->mount_spacing_count, spacing);
   }
   return true;
 }

@@ -1,18 +1,25 @@
-/* A row stands for a wall when the core is at least what it asks and each leaf holds the boards it asks. What a row still
- * holds for and what voids it: docs/methods/fire.md, after the general notes of GA-600 (from memory). */
+/* A row stands for a wall when the core is at least what it asks and each leaf holds the boards it
+ * asks. What a row still holds for and what voids it: docs/methods/fire.md, after the general notes
+ * of GA-600 (from memory). */
 #include "checks/fire.h"
 
-static bool more_minutes(int value, int old) { return value > old; }
+static bool more_minutes(int value, int old) {
+  return value > old;
+}
 
 /* Leaves */
 
 static bool serves(const layer *l, int index, const layer_need *n) {
   bool thick = l->thickness_m >= n->thickness_m - MATCH_TOLERANCE_M;
   switch (n->kind) {
-  case NEED_TYPE_X: return l->type_x && thick;
-  case NEED_GYPSUM: return l->material == LAYER_GYPSUM && (l->regular || l->type_x) && thick;
-  case NEED_WOOD: return l->material == LAYER_WOOD && thick;
-  case NEED_LAYER: return index == n->layer;
+  case NEED_TYPE_X:
+    return l->type_x && thick;
+  case NEED_GYPSUM:
+    return l->material == LAYER_GYPSUM && (l->regular || l->type_x) && thick;
+  case NEED_WOOD:
+    return l->material == LAYER_WOOD && thick;
+  case NEED_LAYER:
+    return index == n->layer;
   }
   return false;
 }
@@ -22,18 +29,22 @@ static bool neutral_inside(const layer *l) {
   return l->material == LAYER_WOOD || (l->material == LAYER_GYPSUM && !(l->loss_factor > 0));
 }
 
-/* Over the boards of the row other boards do no harm either; membranes and fibreboard always void it. */
+/* Over the boards of the row other boards do no harm either; membranes and fibreboard always void
+ * it. */
 static bool neutral_outside(const layer *l) {
   return neutral_inside(l) || l->material == LAYER_GYPSUM || l->material == LAYER_CEMENT;
 }
 
-/* Whether the leaf is at least `need`: its items found from the stud outwards, what is left over neutral. */
+/* Whether the leaf is at least `need`: its items found from the stud outwards, what is left over
+ * neutral. */
 static bool face_is(const catalog *c, const face *f, const side_need *need) {
   int item = need->count - 1;
   for (int i = f->count - 1; i >= 0; i--) {
     const layer *l = &c->layers[f->layer[i]];
-    if (item >= 0 && serves(l, f->layer[i], &need->item[item])) item--;
-    else if (item >= 0 ? !neutral_inside(l) : !neutral_outside(l)) return false;
+    if (item >= 0 && serves(l, f->layer[i], &need->item[item]))
+      item--;
+    else if (item >= 0 ? !neutral_inside(l) : !neutral_outside(l))
+      return false;
   }
   return item < 0;
 }
@@ -63,7 +74,8 @@ static int minutes_of(const wall_row *row, const brief *b) {
 }
 
 static bool beyond_scope(const catalog *c, const brief *b) {
-  return b->code == CODE_NBC && b->storeys_given && c->nbc_max_storeys > 0 && b->storeys > c->nbc_max_storeys;
+  return b->code == CODE_NBC && b->storeys_given && c->nbc_max_storeys > 0 &&
+         b->storeys > c->nbc_max_storeys;
 }
 
 static bool code_fits(const catalog *c, const brief *b, const wall_row *row) {
@@ -87,20 +99,24 @@ static bool mount_fits(const catalog *c, const wall *w, const wall_row *row, int
   return !(most > 0) || wall_spacing_m(w->mount[side].spacing_mm) <= most + MATCH_TOLERANCE_M;
 }
 
-/* Batts may be added to wood and to steel that carries no load; in load-bearing steel they heat the stud (NBC table). */
+/* Batts may be added to wood and to steel that carries no load; in load-bearing steel they heat the
+ * stud (NBC table). */
 static bool fill_fits(const catalog *c, const brief *b, const wall *w, const wall_row *row) {
   bool may_add = row->material == FRAME_WOOD || !b->loadbearing;
   int filled = match_rows_with_fill(c, w);
   switch (row->fill) {
-  case ROW_FILL_NONE: return filled == 0 || may_add;
-  case ROW_FILL_OPTIONAL: return filled == 0 || may_add || match_filled_rows(c, w, row) == filled;
-  case ROW_FILL_REQUIRED: break;
+  case ROW_FILL_NONE:
+    return filled == 0 || may_add;
+  case ROW_FILL_OPTIONAL:
+    return filled == 0 || may_add || match_filled_rows(c, w, row) == filled;
+  case ROW_FILL_REQUIRED:
+    break;
   }
   return match_filled_rows(c, w, row) >= row->filled_rows;
 }
 
-/* Layers that are neither leaf nor core: under a mount, or on the inner face of a row. The NBC table leaves its ratings
- * unchanged by a bracing sheet of any kind on an inner face. */
+/* Layers that are neither leaf nor core: under a mount, or on the inner face of a row. The NBC
+ * table leaves its ratings unchanged by a bracing sheet of any kind on an inner face. */
 static bool hidden_layers_fit(const catalog *c, const wall *w, bool sheets_free) {
   for (int s = 0; s < 2; s++) {
     for (int i = 0; i < w->sheath[s].count; i++)
@@ -114,11 +130,12 @@ static bool hidden_layers_fit(const catalog *c, const wall *w, bool sheets_free)
 }
 
 static bool row_fits(const catalog *c, const brief *b, const wall *w, const wall_row *row) {
-  return minutes_of(row, b) > 0 && code_fits(c, b, row) && frame_fits(c, w, row) && fill_fits(c, b, w, row) &&
-         hidden_layers_fit(c, w, row->code == CODE_NBC);
+  return minutes_of(row, b) > 0 && code_fits(c, b, row) && frame_fits(c, w, row) &&
+         fill_fits(c, b, w, row) && hidden_layers_fit(c, w, row->code == CODE_NBC);
 }
 
-/* IBC 722.6: wood studs at no more than 16 in, no mount; the fill earns its minutes only when dense and in every row. */
+/* IBC 722.6: wood studs at no more than 16 in, no mount; the fill earns its minutes only when dense
+ * and in every row. */
 static void set_additive(const catalog *c, const brief *b, const wall *w, fire_core *out) {
   const frame *f = &c->frames[w->frame];
   out->additive = b->code == CODE_IBC && f->material == FRAME_WOOD && !wall_is_mounted(w) &&
@@ -151,9 +168,12 @@ void fire_core_set(const catalog *c, const brief *b, const wall *core, fire_core
   set_additive(c, b, core, out);
 }
 
-static bool has(const fire_face *f, int need) { return (f->needs >> need) & 1u; }
+static bool has(const fire_face *f, int need) {
+  return (f->needs >> need) & 1u;
+}
 
-int fire_pair(const catalog *c, const fire_core *core, const fire_face *a, const fire_face *b, int *row) {
+int fire_pair(const catalog *c, const fire_core *core, const fire_face *a, const fire_face *b,
+              int *row) {
   int best = 0, best_row = CATALOG_NONE;
   for (int i = 0; i < core->rows.count; i++) {
     const match_entry *e = &core->rows.entry[i];
@@ -181,16 +201,19 @@ static void say_row(arena *a, const catalog *c, const brief *b, int row, fire_ve
   v->row_id = r->id;
   v->source = r->source;
   if (r->note[0]) v->note = r->note;
-  v->basis = text_format(a, "%s (%s)", r->name, b->loadbearing ? "load-bearing" : "non-load-bearing");
+  v->basis =
+      text_format(a, "%s (%s)", r->name, b->loadbearing ? "load-bearing" : "non-load-bearing");
 }
 
-static void say_additive(arena *a, const catalog *c, const fire_core *core, const fire_face leaf[2], fire_verdict *v) {
+static void say_additive(arena *a, const catalog *c, const fire_core *core, const fire_face leaf[2],
+                         fire_verdict *v) {
   int weak = leaf[SIDE_B].membrane < leaf[SIDE_A].membrane ? SIDE_B : SIDE_A;
-  bool even = !(leaf[SIDE_B].membrane < leaf[SIDE_A].membrane) && !(leaf[SIDE_A].membrane < leaf[SIDE_B].membrane);
+  bool even = !(leaf[SIDE_B].membrane < leaf[SIDE_A].membrane) &&
+              !(leaf[SIDE_A].membrane < leaf[SIDE_B].membrane);
   double dense = core->rest_minutes - c->additive_frame_minutes;
   v->source = c->additive_source;
-  v->basis = text_format(a, "component-additive: membrane %d + frame %d%s min, %s, at most %d", (int)leaf[weak].membrane,
-                         (int)c->additive_frame_minutes,
+  v->basis = text_format(a, "component-additive: membrane %d + frame %d%s min, %s, at most %d",
+                         (int)leaf[weak].membrane, (int)c->additive_frame_minutes,
                          dense > 0 ? text_format(a, " + dense fill %d", (int)dense) : "",
                          even             ? "either side"
                          : weak == SIDE_A ? "side A governs"
@@ -201,7 +224,8 @@ static void say_additive(arena *a, const catalog *c, const fire_core *core, cons
 static const char *why_not(const catalog *c, const brief *b, const wall *w) {
   if (b->code == CODE_NONE) return "the brief names no code: only listed fire designs count";
   if (beyond_scope(c, b)) return c->nbc_scope;
-  if (wall_is_mounted(w)) return "no row of this code covers the wall with its mount: a listed fire design is needed";
+  if (wall_is_mounted(w))
+    return "no row of this code covers the wall with its mount: a listed fire design is needed";
   return "no row or rule of this code covers the wall: a listed fire design or a test is needed";
 }
 
@@ -213,9 +237,13 @@ fire_verdict fire_judge(arena *a, const catalog *c, const brief *b, const wall *
   fire_core_set(c, b, w, &core);
   for (int s = 0; s < 2; s++) fire_face_set(c, &w->side[s], &leaf[s]);
   v.minutes = fire_pair(c, &core, &leaf[SIDE_A], &leaf[SIDE_B], &row);
-  if (v.minutes == 0) v.note = why_not(c, b, w);
-  else if (!a) v.basis = "shown";
-  else if (row != CATALOG_NONE) say_row(a, c, b, row, &v);
-  else say_additive(a, c, &core, leaf, &v);
+  if (v.minutes == 0)
+    v.note = why_not(c, b, w);
+  else if (!a)
+    v.basis = "shown";
+  else if (row != CATALOG_NONE)
+    say_row(a, c, b, row, &v);
+  else
+    say_additive(a, c, &core, leaf, &v);
   return v;
 }

@@ -1,6 +1,7 @@
 #include "checks/match.h"
 
-/* A mass that the goods meet to the figure printed on them counts as met (2.85 for 2.8 scaled by 92.1/92.1 and the like). */
+/* A mass that the goods meet to the figure printed on them counts as met (2.85 for 2.8 scaled
+ * by 92.1/92.1 and the like). */
 #define MASS_SLACK 0.995
 
 void match_add(match_list *list, match_entry e, bool (*better)(int value, int old)) {
@@ -10,7 +11,8 @@ void match_add(match_list *list, match_entry e, bool (*better)(int value, int ol
     if (better(e.value, old->value)) *old = e;
     return;
   }
-  if (list->count < MATCH_MAX_ENTRIES) list->entry[list->count++] = e; /* pairs are numbered, so there is always room */
+  if (list->count < MATCH_MAX_ENTRIES)
+    list->entry[list->count++] = e; /* pairs are numbered, so there is always room */
 }
 
 bool match_filled(const catalog *c, const wall *w, const wall_row *row, int r) {
@@ -20,7 +22,8 @@ bool match_filled(const catalog *c, const wall *w, const wall_row *row, int r) {
   double cavity = wall_cavity_m(c, w);
   double full = row->fill_thickness_m > 0 ? row->fill_thickness_m : cavity;
   if (f->thickness_m < MATCH_FULL * full) return false;
-  /* The mass is that of a full cavity of the row's own depth; a deeper one needs as much per depth. */
+  /* The mass is that of a full cavity of the row's own depth; a deeper one needs as much per depth.
+   */
   double depth_ratio = cavity > row->depth_m ? cavity / row->depth_m : 1;
   return f->mass_kg_m2 >= row->fill_kg_m2 * depth_ratio * MASS_SLACK;
 }
@@ -39,7 +42,8 @@ int match_rows_with_fill(const catalog *c, const wall *w) {
 
 bool match_channel(const catalog *c, const wall *w, int side) {
   int index = w->mount[side].mount;
-  return index != CATALOG_NONE && !c->mounts[index].clips && w->mount[1 - side].mount == CATALOG_NONE;
+  return index != CATALOG_NONE && !c->mounts[index].clips &&
+         w->mount[1 - side].mount == CATALOG_NONE;
 }
 
 int match_mounted_side(const wall *w) {

@@ -1,4 +1,5 @@
-/* What fire rows and published ratings have in common: is the wall's cavity filled, its mount fixed, as a row asks. */
+/* What fire rows and published ratings have in common: is the wall's cavity filled, its mount
+ * fixed, as a row asks. */
 #ifndef CHECKS_MATCH_H
 #define CHECKS_MATCH_H
 
@@ -13,18 +14,20 @@ enum { MATCH_MAX_ENTRIES = 2 * ROW_MAX_PAIRS };
 
 /* One way in which a row may stand for a core: what each side must then be. */
 typedef struct match_entry {
-  short row;              /* index in the catalog's rows */
-  short value;            /* minutes or rating */
-  unsigned char need[2];  /* side A's and side B's, among the needs of the file */
+  short row;             /* index in the catalog's rows */
+  short value;           /* minutes or rating */
+  unsigned char need[2]; /* side A's and side B's, among the needs of the file */
 } match_entry;
 
-/* The rows that a core (frame, spacing, gap, fills, mounts) satisfies. One entry for each pair of sides. */
+/* The rows that a core (frame, spacing, gap, fills, mounts) satisfies. One entry for each pair of
+ * sides. */
 typedef struct match_list {
   int count;
   match_entry entry[MATCH_MAX_ENTRIES];
 } match_list;
 
-/* Adds an entry, or replaces the one with the same sides where `better` (new value, old value) says so. */
+/* Adds an entry, or replaces the one with the same sides where `better` (new value, old value) says
+ * so. */
 void match_add(match_list *list, match_entry e, bool (*better)(int value, int old));
 
 /* Whether row `r` (0 or 1) of the frame is filled as `row` asks: kind, depth, mass. */

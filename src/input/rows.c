@@ -1,5 +1,6 @@
-/* Rows are read in two steps: words and numbers of a record by table, then the rules between them (what a kind of file must and
- * must not say). Looking up boards comes last, when the boards are known. */
+/* Rows are read in two steps: words and numbers of a record by table, then the rules between them
+ * (what a kind of file must and must not say). Looking up boards comes last, when the boards are
+ * known. */
 #include "input/rows.h"
 
 #include <string.h>
@@ -111,8 +112,8 @@ static bool wrong(arena *a, diag_list *d, const json_value *v, error_code code, 
 
 static bool array_of_words(arena *a, diag_list *d, const json_value *v, size_t max) {
   if (v->kind != JSON_ARRAY || v->count < 1 || v->count > max) {
-    diag_add(d, DIAG_ERROR, v->kind == JSON_ARRAY ? ERROR_FIELD_RANGE : ERROR_FIELD_TYPE, json_place(a, v),
-             "must be an array of 1 to %d words, found %s", (int)max,
+    diag_add(d, DIAG_ERROR, v->kind == JSON_ARRAY ? ERROR_FIELD_RANGE : ERROR_FIELD_TYPE,
+             json_place(a, v), "must be an array of 1 to %d words, found %s", (int)max,
              v->kind == JSON_ARRAY ? "another count" : json_kind_name(v->kind));
     return false;
   }
@@ -137,28 +138,36 @@ static bool read_fibres(arena *a, diag_list *d, const json_value *v, unsigned *b
   for (const json_value *e = v->first; e; e = e->next) {
     int kind = 0;
     while (fibres[kind] && !text_equal(fibres[kind], e->string)) kind++;
-    if (!fibres[kind]) return wrong(a, d, e, ERROR_FIELD_CHOICE, "must be glass, stone or cellulose");
+    if (!fibres[kind])
+      return wrong(a, d, e, ERROR_FIELD_CHOICE, "must be glass, stone or cellulose");
     *bits |= 1u << kind;
   }
   return true;
 }
 
 /* The rules of one kind of file. */
-static bool kind_rules(arena *a, diag_list *d, const json_value *v, const row_kind *k, const raw_row *r) {
+static bool kind_rules(arena *a, diag_list *d, const json_value *v, const row_kind *k,
+                       const raw_row *r) {
   if (k->published) {
     if (r->stc == 0 || !(r->stc_sd > 0) || !(r->spacing_min_m > 0))
-      return wrong(a, d, v, ERROR_FIELD_MISSING, "a published rating needs stc, stc_sd and spacing_min_mm");
-    if (r->minutes_bearing || r->minutes_nonbearing || r->code != UNSAID || r->mount == ROW_MOUNT_ANY ||
-        r->fill == ROW_FILL_OPTIONAL)
-      return wrong(a, d, v, ERROR_FIELD_CONFLICT,
-                   "a published rating has no code, no minutes, and says which mount and fill it has");
+      return wrong(a, d, v, ERROR_FIELD_MISSING,
+                   "a published rating needs stc, stc_sd and spacing_min_mm");
+    if (r->minutes_bearing || r->minutes_nonbearing || r->code != UNSAID ||
+        r->mount == ROW_MOUNT_ANY || r->fill == ROW_FILL_OPTIONAL)
+      return wrong(
+          a, d, v, ERROR_FIELD_CONFLICT,
+          "a published rating has no code, no minutes, and says which mount and fill it has");
+    if (r->mount == ROW_MOUNT_CHANNEL && (!(r->mount_min_m > 0) || !(r->mount_max_m > 0)))
+      return wrong(a, d, v, ERROR_FIELD_MISSING,
+                   "a channel needs mount_spacing_min_mm and mount_spacing_max_mm");
     return true;
   }
   if (r->stc != 0) return wrong(a, d, v, ERROR_FIELD_CONFLICT, "a fire row has no stc");
   if (k->listing && (!r->design || r->code != UNSAID))
     return wrong(a, d, v, ERROR_FIELD_MISSING, "a listing needs its design number and no code");
   if (k->listing && !r->minutes_bearing && !r->minutes_nonbearing)
-    return wrong(a, d, v, ERROR_FIELD_MISSING, "a listing needs minutes_loadbearing or minutes_nonloadbearing");
+    return wrong(a, d, v, ERROR_FIELD_MISSING,
+                 "a listing needs minutes_loadbearing or minutes_nonloadbearing");
   if (!k->listing && r->code != CODE_IBC && r->code != CODE_NBC)
     return wrong(a, d, v, ERROR_FIELD_MISSING, "a fire row needs code: ibc or nbc");
   return true;
@@ -206,28 +215,34 @@ static void convert(const raw_row *r, const json_value *v, const row_kind *k, wa
   out->json = v;
 }
 
-static bool read_row(arena *a, diag_list *d, const json_value *v, const row_kind *k, wall_row *out) {
+static bool read_row(arena *a, diag_list *d, const json_value *v, const row_kind *k,
+                     wall_row *out) {
   raw_row raw = {.code = UNSAID};
-  if (!fields_read(a, d, v, row_fields, sizeof row_fields / sizeof row_fields[0], &raw)) return false;
+  if (!fields_read(a, d, v, row_fields, sizeof row_fields / sizeof row_fields[0], &raw))
+    return false;
   bool ok = kind_rules(a, d, v, k, &raw);
   if (!common_rules(a, d, v, &raw)) ok = false;
   convert(&raw, v, k, out);
-  if (!read_side(a, d, raw.side_a, &out->side_a) || !read_side(a, d, raw.side_b, &out->side_b)) ok = false;
+  if (!read_side(a, d, raw.side_a, &out->side_a) || !read_side(a, d, raw.side_b, &out->side_b))
+    ok = false;
   out->fill_kinds = (1u << FILL_GLASS) | (1u << FILL_STONE) | (1u << FILL_CELLULOSE);
   if (raw.fill_kinds && !read_fibres(a, d, raw.fill_kinds, &out->fill_kinds)) ok = false;
   return ok;
 }
 
-static bool new_id(arena *a, diag_list *d, const wall_row *rows, size_t count, const wall_row *row) {
+static bool new_id(arena *a, diag_list *d, const wall_row *rows, size_t count,
+                   const wall_row *row) {
   for (size_t i = 0; i < count; i++)
     if (text_equal(rows[i].id, row->id)) {
-      diag_add(d, DIAG_ERROR, ERROR_CATALOG_DUPLICATE_ID, json_place(a, row->json), "id %s stands twice", row->id);
+      diag_add(d, DIAG_ERROR, ERROR_CATALOG_DUPLICATE_ID, json_place(a, row->json),
+               "id %s stands twice", row->id);
       return false;
     }
   return true;
 }
 
-bool rows_read(arena *a, diag_list *d, const json_value *root, const char *kind, wall_row **rows, size_t *count) {
+bool rows_read(arena *a, diag_list *d, const json_value *root, const char *kind, wall_row **rows,
+               size_t *count) {
   *rows = NULL;
   *count = 0;
   const row_kind *k = kind_of(kind);
@@ -235,8 +250,10 @@ bool rows_read(arena *a, diag_list *d, const json_value *root, const char *kind,
   const json_value *records = NULL;
   bool ok = fields_read(a, d, root, k->root, k->root_count, &records);
   if (!records) return false;
-  if (records->kind != JSON_ARRAY) return wrong(a, d, records, ERROR_FIELD_TYPE, "must be an array of records");
-  if (records->count > CATALOG_MAX_RECORDS) return wrong(a, d, records, ERROR_JSON_LIMIT, "too many records");
+  if (records->kind != JSON_ARRAY)
+    return wrong(a, d, records, ERROR_FIELD_TYPE, "must be an array of records");
+  if (records->count > CATALOG_MAX_RECORDS)
+    return wrong(a, d, records, ERROR_JSON_LIMIT, "too many records");
   *rows = arena_array(a, records->count, sizeof(wall_row));
   for (const json_value *v = records->first; v; v = v->next) {
     wall_row row = {.id = NULL};
@@ -258,7 +275,8 @@ static bool read_layer_need(arena *a, diag_list *d, const json_value *v, layer_n
   } raw_need;
   static const field table[] = {
       {"kind", FIELD_CHOICE, FIELD_REQUIRED, 0, 0, 0, need_kinds, offsetof(raw_need, kind)},
-      {"thickness_mm", FIELD_NUMBER, FIELD_REQUIRED, 0.001, 0.1, MM, NULL, offsetof(raw_need, thickness_m)},
+      {"thickness_mm", FIELD_NUMBER, FIELD_REQUIRED, 0.001, 0.1, MM, NULL,
+       offsetof(raw_need, thickness_m)},
   };
   raw_need raw = {0, 0};
   if (!fields_read(a, d, v, table, sizeof table / sizeof table[0], &raw)) return false;
@@ -305,7 +323,8 @@ static bool read_densities(arena *a, diag_list *d, const json_value *v, catalog 
   static const field table[] = {
       {"glass", FIELD_NUMBER, FIELD_REQUIRED, 1, 500, 0, NULL, offsetof(raw_density, glass)},
       {"stone", FIELD_NUMBER, FIELD_REQUIRED, 1, 500, 0, NULL, offsetof(raw_density, stone)},
-      {"cellulose", FIELD_NUMBER, FIELD_REQUIRED, 1, 500, 0, NULL, offsetof(raw_density, cellulose)},
+      {"cellulose", FIELD_NUMBER, FIELD_REQUIRED, 1, 500, 0, NULL,
+       offsetof(raw_density, cellulose)},
   };
   raw_density raw = {0, 0, 0};
   if (!fields_read(a, d, v, table, sizeof table / sizeof table[0], &raw)) return false;
@@ -338,7 +357,8 @@ static bool read_component_additive(arena *a, diag_list *d, const json_value *v,
   };
   raw_additive raw = {.source = NULL};
   if (!fields_read(a, d, v, table, sizeof table / sizeof table[0], &raw)) return false;
-  if (raw.code != CODE_IBC) return wrong(a, d, v, ERROR_FIELD_CHOICE, "the component-additive rule is that of code ibc");
+  if (raw.code != CODE_IBC)
+    return wrong(a, d, v, ERROR_FIELD_CHOICE, "the component-additive rule is that of code ibc");
   out->additive_source = raw.source;
   out->additive_frame_minutes = raw.frame_minutes;
   out->additive_fill_minutes = raw.fill_minutes;
@@ -362,7 +382,8 @@ static bool read_scope(arena *a, diag_list *d, const json_value *v, catalog *out
   };
   raw_scope raw = {0, 0, NULL, NULL};
   if (!fields_read(a, d, v, table, sizeof table / sizeof table[0], &raw)) return false;
-  if (raw.code != CODE_NBC) return wrong(a, d, v, ERROR_FIELD_CHOICE, "a scope is known for code nbc only");
+  if (raw.code != CODE_NBC)
+    return wrong(a, d, v, ERROR_FIELD_CHOICE, "a scope is known for code nbc only");
   out->nbc_max_storeys = raw.storeys;
   out->nbc_scope = text_format(a, "%s (%s)", raw.says, raw.source);
   return true;
@@ -377,18 +398,33 @@ bool rows_read_additive(arena *a, diag_list *d, const json_value *root, catalog 
   return read_scope(a, d, scope, out) && ok;
 }
 
-#define WEIGHT(key) {#key, FIELD_NUMBER, FIELD_REQUIRED, 0, 100, 0, NULL, offsetof(evidence_weights, key)}
+#define WEIGHT(key)                                                                                \
+  { #key, FIELD_NUMBER, FIELD_REQUIRED, 0, 100, 0, NULL, offsetof(evidence_weights, key) }
 
 bool rows_read_distance(arena *a, diag_list *d, const json_value *root, catalog *out) {
   static const field table[] = {
       {"source", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL, offsetof(evidence_weights, source)},
-      WEIGHT(layer), WEIGHT(board), WEIGHT(material), WEIGHT(layout), WEIGHT(mount), WEIGHT(mount_kind),
-      WEIGHT(mount_side), WEIGHT(mount_spacing), WEIGHT(spacing), WEIGHT(depth), WEIGHT(steel), WEIGHT(fill),
-      WEIGHT(partial_fill), WEIGHT(fill_row), WEIGHT(gap),
+      WEIGHT(layer),
+      WEIGHT(board),
+      WEIGHT(material),
+      WEIGHT(layout),
+      WEIGHT(mount),
+      WEIGHT(mount_kind),
+      WEIGHT(mount_side),
+      WEIGHT(mount_spacing),
+      WEIGHT(spacing),
+      WEIGHT(depth),
+      WEIGHT(steel),
+      WEIGHT(fill),
+      WEIGHT(partial_fill),
+      WEIGHT(fill_row),
+      WEIGHT(gap),
   };
   static const field sentences[] = {
-      {"light_board", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL, offsetof(catalog, caution_light_board)},
-      {"thin_steel", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL, offsetof(catalog, caution_thin_steel)},
+      {"light_board", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL,
+       offsetof(catalog, caution_light_board)},
+      {"thin_steel", FIELD_STRING, FIELD_REQUIRED, 0, 0, 0, NULL,
+       offsetof(catalog, caution_thin_steel)},
       {"source", FIELD_IGNORE, FIELD_REQUIRED, 0, 0, 0, NULL, 0},
   };
   const json_value *v = json_get(root, "distance"), *says = json_get(root, "cautions");
@@ -402,9 +438,12 @@ bool rows_read_distance(arena *a, diag_list *d, const json_value *root, catalog 
 
 static layer_need need_of(const catalog *c, const wall_row *row, int index) {
   const layer *l = &c->layers[index];
-  bool generic = row->code != CODE_NONE; /* a code table means any board to the standard, a listing that one */
-  if (generic && l->material == LAYER_GYPSUM && l->type_x) return (layer_need){NEED_TYPE_X, l->thickness_m, index};
-  if (generic && l->material == LAYER_GYPSUM && l->regular) return (layer_need){NEED_GYPSUM, l->thickness_m, index};
+  bool generic =
+      row->code != CODE_NONE; /* a code table means any board to the standard, a listing that one */
+  if (generic && l->material == LAYER_GYPSUM && l->type_x)
+    return (layer_need){NEED_TYPE_X, l->thickness_m, index};
+  if (generic && l->material == LAYER_GYPSUM && l->regular)
+    return (layer_need){NEED_GYPSUM, l->thickness_m, index};
   if (generic && l->material == LAYER_WOOD) return (layer_need){NEED_WOOD, l->thickness_m, index};
   return (layer_need){NEED_LAYER, 0, index};
 }
@@ -424,15 +463,17 @@ typedef struct row_set {
   int pairs;
 } row_set;
 
-static bool resolve_side(arena *a, diag_list *d, const catalog *c, row_set *s, const wall_row *row, row_side *side) {
+static bool resolve_side(arena *a, diag_list *d, const catalog *c, row_set *s, const wall_row *row,
+                         row_side *side) {
   side_need need = {.count = 0};
   bool ok = true;
   for (int i = 0; i < side->boards; i++) {
     int index = catalog_layer(c, side->board[i]);
     if (index == CATALOG_NONE) {
       const char *near = catalog_nearest(c, side->board[i]);
-      diag_add(d, DIAG_ERROR, ERROR_CATALOG_UNKNOWN_ID, json_place(a, row->json), "no board has the id %s%s%s",
-               side->board[i], near ? "; nearest: " : "", near ? near : "");
+      diag_add(d, DIAG_ERROR, ERROR_CATALOG_UNKNOWN_ID, json_place(a, row->json),
+               "no board has the id %s%s%s", side->board[i], near ? "; nearest: " : "",
+               near ? near : "");
       ok = false;
       continue;
     }
@@ -441,7 +482,8 @@ static bool resolve_side(arena *a, diag_list *d, const catalog *c, row_set *s, c
   if (!ok) return false;
   for (side->need = 0; (size_t)side->need < s->need_count; side->need++)
     if (same_need(&need, &s->needs[side->need])) return true;
-  if (s->need_count == ROW_MAX_NEEDS) return wrong(a, d, row->json, ERROR_JSON_LIMIT, "too many different sides");
+  if (s->need_count == ROW_MAX_NEEDS)
+    return wrong(a, d, row->json, ERROR_JSON_LIMIT, "too many different sides");
   s->needs[s->need_count++] = need;
   return true;
 }
@@ -454,7 +496,8 @@ static bool number_pairs(arena *a, diag_list *d, row_set *s) {
       if (s->rows[j].side_a.need == row->side_a.need && s->rows[j].side_b.need == row->side_b.need)
         row->pair = s->rows[j].pair;
     if (row->pair != CATALOG_NONE) continue;
-    if (s->pairs == ROW_MAX_PAIRS) return wrong(a, d, row->json, ERROR_JSON_LIMIT, "too many different pairs of sides");
+    if (s->pairs == ROW_MAX_PAIRS)
+      return wrong(a, d, row->json, ERROR_JSON_LIMIT, "too many different pairs of sides");
     row->pair = s->pairs++;
   }
   return true;

@@ -26,7 +26,9 @@ static void setup(void) {
   ck_assert_ptr_nonnull(shipped);
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static wall parsed(const char *line) {
   wall w;
@@ -47,17 +49,21 @@ static const wall_row *matched(const char *line) {
   return row;
 }
 
-static bool notes(int row, const char *words) { return strstr(table_get(&stc_table, row, "note"), words) != NULL; }
+static bool notes(int row, const char *words) {
+  return strstr(table_get(&stc_table, row, "note"), words) != NULL;
+}
 
 /* Every row is found, with any fibre, at every spacing and gauge that its note names. */
 START_TEST(test_table_row) {
   static const char *const fibres[] = {"glass", "stone"};
   static const int mils[] = {33, 43, 54};
-  int both = notes(_i, "; spacing: 400 or 600") || strncmp(table_get(&stc_table, _i, "note"), "spacing: 400 or 600", 19) == 0;
+  int both = notes(_i, "; spacing: 400 or 600") ||
+             strncmp(table_get(&stc_table, _i, "note"), "spacing: 400 or 600", 19) == 0;
   int both_channels = notes(_i, "RC spacing 400 or 600");
   int light = strcmp(table_get(&stc_table, _i, "steel_thickness_mm"), "0.46") == 0;
   int gauges = light || strstr(table_get(&stc_table, _i, "family"), "wood") ? 1 : 3;
-  if (strstr(table_get(&stc_table, _i, "family"), "steel-double")) gauges = 1; /* the catalog has 33 and 54 mil; 33 is tried */
+  if (strstr(table_get(&stc_table, _i, "family"), "steel-double"))
+    gauges = 1; /* the catalog has 33 and 54 mil; 33 is tried */
   for (int f = 0; f < 2; f++)
     for (int s = 0; s < 1 + both; s++)
       for (int m = 0; m < 1 + both_channels; m++)
@@ -81,7 +87,8 @@ typedef struct match_case {
 static const match_case cases[] = {
     {"2+1 is 1+2 without a mount", "typex-16 | steel-92-18@610, glass-89 | 2*typex-16", "NBC-S5a"},
     {"with a mount it is not", "typex-16 | rc@406 | wood-89@406, glass-89 | 2*typex-16", NULL},
-    {"the mount on side B is the same wall turned", "typex-16 | wood-89@406, glass-89 | rc@610 | 2*typex-16", "NBC-W4a"},
+    {"the mount on side B is the same wall turned",
+     "typex-16 | wood-89@406, glass-89 | rc@610 | 2*typex-16", "NBC-W4a"},
     {"board of Type C", "typec-16 | wood-89@610, glass-89 | typex-16", "NBC-W1a"},
     {"cellulose is a fibre too", "typex-16 | wood-89@610, cell-89 | typex-16", "NBC-W1a"},
     {"65 mm in 63.5 mm", "typex-16 | steel-64-18@406, stone-65 | typex-16", "NBC-S1b"},
@@ -95,38 +102,49 @@ static const match_case cases[] = {
     {"damped board", "damp-16 | wood-89@406, glass-89 | typex-16", NULL},
     {"membrane", "typex-16 + mlv-5 | wood-89@406, glass-89 | typex-16", NULL},
     {"clips", "2*typex-16 | clip@610 | wood-89@406, glass-89 | typex-16", NULL},
-    {"board behind the channel", "2*typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16", NULL},
+    {"board behind the channel",
+     "2*typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16", NULL},
     {"wider gap", "typex-16 | wood-89-double@406~50, glass-89 | typex-16", NULL},
-    {"one row filled, either one", "typex-16 | wood-89-double@406, -, glass-89 | typex-16", "NBC-W13c"},
-    {"board on an inner face", "typex-16 | wood-89-double@406, glass-89, inner-a osb-11 | typex-16", NULL},
+    {"one row filled, either one", "typex-16 | wood-89-double@406, -, glass-89 | typex-16",
+     "NBC-W13c"},
+    {"board on an inner face", "typex-16 | wood-89-double@406, glass-89, inner-a osb-11 | typex-16",
+     NULL},
     {"deeper stud", "typex-16 | wood-140@406, glass-140 | typex-16", NULL},
-    {"full common plate of staggered studs", "typex-16 | wood-89-stag-140@406, glass-140 | typex-16", "NBC-W7a"},
-    {"wood shear panel: S13a", "2*typex-13 | rc@406 | steel-92-43@610, glass-89 | typex-13 + osb-13", "NBC-S13a"},
+    {"full common plate of staggered studs",
+     "typex-16 | wood-89-stag-140@406, glass-140 | typex-16", "NBC-W7a"},
+    {"wood shear panel: S13a",
+     "2*typex-13 | rc@406 | steel-92-43@610, glass-89 | typex-13 + osb-13", "NBC-S13a"},
 };
 
 START_TEST(test_match) {
   const match_case *k = &cases[_i];
   const wall_row *row = matched(k->line);
-  if (k->id == NULL) ck_assert_msg(row == NULL, "%s: %s is taken for %s", k->name, k->line, row ? row->id : "");
-  else ck_assert_msg(row != NULL && strcmp(row->id, k->id) == 0, "%s: %s is %s, expected %s", k->name, k->line, row ? row->id : "no row", k->id);
+  if (k->id == NULL)
+    ck_assert_msg(row == NULL, "%s: %s is taken for %s", k->name, k->line, row ? row->id : "");
+  else
+    ck_assert_msg(row != NULL && strcmp(row->id, k->id) == 0, "%s: %s is %s, expected %s", k->name,
+                  k->line, row ? row->id : "no row", k->id);
 }
 END_TEST
 
 typedef struct near_case {
-  const char *line;   /* the wall judged */
-  const char *id;     /* nearest row, NULL = any */
+  const char *line;    /* the wall judged */
+  const char *id;      /* nearest row, NULL = any */
   const char *differs; /* joined with "; " */
 } near_case;
 
 static const near_case near_cases[] = {
     {"2*typex-16 | steel-92-18@610, stone-76 | typex-16", "NBC-S5a", "full for part-filled cavity"},
     {"typex-16 | steel-64-18@610, glass-65 | typex-16", "NBC-S1b", "studs at 406 for 610 mm"},
-    {"2*gyp-13-light | wood-89@406, glass-89 | 2*gyp-13", "NBC-W2c", "gyp-13 for gyp-13-light on side A; gyp-13 for gyp-13-light on side A"},
+    {"2*gyp-13-light | wood-89@406, glass-89 | 2*gyp-13", "NBC-W2c",
+     "gyp-13 for gyp-13-light on side A; gyp-13 for gyp-13-light on side A"},
     {"2*typex-16 | clip@406 | wood-89@406, glass-89 | typex-16", "NBC-W4a", "channel for clips"},
     {"typex-16 | wood-89-double@406~51, glass-89 | typex-16", "NBC-W13c", "gap of 25 for 51 mm"},
-    {"2*typex-16 | rc@610 | on gyp-13 | wood-89@406, glass-89 | typex-16", "NBC-W4a", "no gyp-13 behind the mount on side A"},
+    {"2*typex-16 | rc@610 | on gyp-13 | wood-89@406, glass-89 | typex-16", "NBC-W4a",
+     "no gyp-13 behind the mount on side A"},
     {"typex-16 | steel-92-18@305 | typex-16", "NBC-S4d", "studs at 406 for 305 mm"},
-    {"typex-16 | wood-89@406, glass-89 | rc@406 | 3*typex-16", "NBC-W4a", "one layer fewer on side B"},
+    {"typex-16 | wood-89@406, glass-89 | rc@406 | 3*typex-16", "NBC-W4a",
+     "one layer fewer on side B"},
     {"typex-16 | steel-102-18@406 | typex-16", "NBC-S4d", "92 for 102 mm studs"},
     {"2*typex-16 | steel-92-27@406, glass-89 | typex-16", "NBC-S5b", "18 for 27 mil steel"},
 };
@@ -137,12 +155,15 @@ START_TEST(test_nearest) {
   evidence e;
   evidence_find(memory, shipped, &w, &e);
   ck_assert_int_eq(e.nearest_count, EVIDENCE_NEAREST);
-  ck_assert_msg(strcmp(e.nearest[0].row->id, k->id) == 0, "%s: nearest is %s, expected %s", k->line, e.nearest[0].row->id, k->id);
+  ck_assert_msg(strcmp(e.nearest[0].row->id, k->id) == 0, "%s: nearest is %s, expected %s", k->line,
+                e.nearest[0].row->id, k->id);
   text t;
   text_init(&t, memory, 1000);
-  for (int i = 0; i < e.nearest[0].differ_count; i++) text_putf(&t, "%s%s", i ? "; " : "", e.nearest[0].differs[i]);
+  for (int i = 0; i < e.nearest[0].differ_count; i++)
+    text_putf(&t, "%s%s", i ? "; " : "", e.nearest[0].differs[i]);
   ck_assert_str_eq(t.data, k->differs);
-  for (int i = 1; i < e.nearest_count; i++) ck_assert(e.nearest[i].distance >= e.nearest[i - 1].distance);
+  for (int i = 1; i < e.nearest_count; i++)
+    ck_assert(e.nearest[i].distance >= e.nearest[i - 1].distance);
 }
 END_TEST
 
@@ -158,7 +179,8 @@ START_TEST(test_line_is_the_row) {
   for (int i = 0; i < e.nearest_count; i++) {
     ck_assert_ptr_nonnull(e.nearest[i].line);
     const wall_row *row = matched(e.nearest[i].line);
-    ck_assert_msg(row != NULL, "%s: the line of %s is no row: %s", line, e.nearest[i].row->id, e.nearest[i].line);
+    ck_assert_msg(row != NULL, "%s: the line of %s is no row: %s", line, e.nearest[i].row->id,
+                  e.nearest[i].line);
     ck_assert_int_eq(row->stc, e.nearest[i].row->stc);
     wall published = parsed(e.nearest[i].line);
     evidence same;
