@@ -1,11 +1,14 @@
 /* Answers as JSON: the keys of docs/formats/answers.md. SI; money in the book's currency. Decimals
  * are as many as the figures carry: quantities and rates with six, so that quantity x rate gives
  * the amount to the cent. */
+#include <math.h>
+
 #include "report/markup.h"
 #include "report/view.h"
 #include "septum.h"
 
 enum {
+  CENT_DIGITS = 2,
   DB_DIGITS = 1,
   SD_DIGITS = 2,
   SHARE_DIGITS = 3,
@@ -362,8 +365,8 @@ static void put_rule_prices(markup_json *j, const explanation *e) {
     markup_json_string(j, "rule", p->name);
     markup_json_string(j, "from", p->from);
     markup_json_string(j, "to", p->to);
-    markup_json_number(j, "price_per_m2", p->price_per_m2, MONEY_DIGITS);
-    markup_json_number(j, "price_total", p->price_total, 2);
+    markup_json_number(j, "price_per_m2", p->reachable ? p->price_per_m2 : NAN, MONEY_DIGITS);
+    markup_json_number(j, "price_total", p->reachable ? p->price_total : NAN, CENT_DIGITS);
     markup_json_string(j, "line", p->wall != NULL ? p->wall->line : NULL);
     markup_json_close(j);
   }

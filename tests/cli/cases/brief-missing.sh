@@ -1,0 +1,1 @@
+$SEPTUM pick nothing.json

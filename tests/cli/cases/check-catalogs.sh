@@ -1,0 +1,1 @@
+$SEPTUM check $EXAMPLES/../../catalogs/*.json $EXAMPLES/../../prices/*.json

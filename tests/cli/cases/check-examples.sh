@@ -1,0 +1,1 @@
+cd $EXAMPLES && $SEPTUM check *.json

@@ -1,0 +1,1 @@
+$SEPTUM check --json $EXAMPLES/one-hour.json | sed "s@\"/.*/@\"@"

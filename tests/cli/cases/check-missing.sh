@@ -1,0 +1,1 @@
+$SEPTUM check nothing.json

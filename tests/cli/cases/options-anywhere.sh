@@ -1,0 +1,1 @@
+$SEPTUM --json rate --units si '2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16' >a; $SEPTUM rate '2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16' --units=si --json >b; $SEPTUM rate --json -- '2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16' >c; cmp a b && cmp a c && grep -c '"septum": "rating/1"' a

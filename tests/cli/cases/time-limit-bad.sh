@@ -1,0 +1,1 @@
+$SEPTUM pick $EXAMPLES/party-wall.json --time-limit soon

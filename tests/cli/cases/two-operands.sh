@@ -1,0 +1,1 @@
+$SEPTUM pick a.json b.json

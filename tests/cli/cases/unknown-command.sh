@@ -1,0 +1,1 @@
+$SEPTUM picc x.json

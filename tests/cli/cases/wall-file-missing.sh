@@ -1,0 +1,1 @@
+$SEPTUM rate nothing.json

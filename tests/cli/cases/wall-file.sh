@@ -1,0 +1,1 @@
+$SEPTUM rate $EXAMPLES/corridor-wall.json
