@@ -1,6 +1,6 @@
 /* Rows: prescriptive fire walls (fire/1), published ratings (published/1) and the user's fire
  * listings (listing/1). A row says which walls it stands for; src/checks decides whether a wall is
- * one of them. Formats: docs/formats/fire.md, published.md. */
+ * one of them. Formats: docs/formats/fire.md. */
 #ifndef INPUT_ROWS_H
 #define INPUT_ROWS_H
 
