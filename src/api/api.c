@@ -20,8 +20,7 @@ const char *septum_nearest(const char *word, const char *const *names, size_t n)
   return text_nearest(word, names, n);
 }
 
-/* --- open and close ----------------------------------------------------------------------------
- */
+/* --- open and close -------------------------------------------------------------------------- */
 
 typedef struct open_job {
   const char *catalogs;
@@ -56,8 +55,7 @@ void septum_close(septum *handle) {
   if (handle != NULL) arena_free(handle->memory);
 }
 
-/* --- rate and pick -----------------------------------------------------------------------------
- */
+/* --- rate and pick --------------------------------------------------------------------------- */
 
 typedef struct answer_job {
   const septum *handle;
@@ -147,8 +145,7 @@ septum_status septum_pick(septum *handle, const char *path, const septum_options
   return run(handle, path, options, pick_stage, out);
 }
 
-/* --- answers -----------------------------------------------------------------------------------
- */
+/* --- answers --------------------------------------------------------------------------------- */
 
 const char *septum_answer_text(const septum_answer *answer) {
   return answer->text;

@@ -19,8 +19,7 @@ enum {
   HEIGHT_DIGITS = 2
 };
 
-/* --- wall/1 ------------------------------------------------------------------------------------
- */
+/* --- wall/1 ---------------------------------------------------------------------------------- */
 
 static void put_face(markup_json *j, const report *r, const char *key, const face *f) {
   markup_json_array(j, key, true);
@@ -73,8 +72,7 @@ static void put_wall(markup_json *j, const report *r, const assessment *x) {
   markup_json_close(j);
 }
 
-/* --- sound -------------------------------------------------------------------------------------
- */
+/* --- sound ----------------------------------------------------------------------------------- */
 
 static void put_bands(markup_json *j, const char *key, const double value[BANDS], int decimals) {
   markup_json_array(j, key, true);
@@ -189,8 +187,7 @@ static void put_other_sound(markup_json *j, const assessment *x) {
   markup_json_close(j);
 }
 
-/* --- other checks ------------------------------------------------------------------------------
- */
+/* --- other checks ---------------------------------------------------------------------------- */
 
 static void put_checks(markup_json *j, const report *r, const assessment *x) {
   markup_json_number(j, "thickness_mm", x->thickness_m * 1e3, MM_DIGITS);
@@ -240,8 +237,7 @@ static void put_rules(markup_json *j, const report *r, const assessment *x) {
   markup_json_close(j);
 }
 
-/* --- cost --------------------------------------------------------------------------------------
- */
+/* --- cost ------------------------------------------------------------------------------------ */
 
 static void put_lines(markup_json *j, const report *r, const takeoff *t) {
   markup_json_array(j, "lines", false);
@@ -297,8 +293,7 @@ static void put_cost(markup_json *j, const report *r, const assessment *x) {
   markup_json_close(j);
 }
 
-/* --- answers -----------------------------------------------------------------------------------
- */
+/* --- answers --------------------------------------------------------------------------------- */
 
 static void put_rating(markup_json *j, const report *r, const char *key, const assessment *x) {
   if (x == NULL) {

@@ -4,8 +4,7 @@
 #include "report/view.h"
 #include "septum.h"
 
-/* --- what it is --------------------------------------------------------------------------------
- */
+/* --- what it is ------------------------------------------------------------------------------ */
 
 enum { WHERE_COLUMNS = 13, SIZE_END = 92 };
 
@@ -37,8 +36,7 @@ static void put_parts(const report *r, const assessment *x, text *out) {
   page_words(out, PAGE_LABEL, all.data);
 }
 
-/* --- sound -------------------------------------------------------------------------------------
- */
+/* --- sound ----------------------------------------------------------------------------------- */
 
 static const char *ratings_words(const report *r, const ratings *v) {
   return text_format(r->arena, "STC %d, Rw %d (C %d, Ctr %d), OITC %d", v->stc, v->rw, v->c, v->ctr,
@@ -126,8 +124,7 @@ static void put_sound(const report *r, const assessment *x, text *out) {
   put_evidence(r, x, out);
 }
 
-/* --- other checks ------------------------------------------------------------------------------
- */
+/* --- other checks ---------------------------------------------------------------------------- */
 
 static void put_fire(const report *r, const assessment *x, text *out) {
   const char *asked =
@@ -171,8 +168,7 @@ static void put_rules(const report *r, const assessment *x, text *out) {
   }
 }
 
-/* --- cost --------------------------------------------------------------------------------------
- */
+/* --- cost ------------------------------------------------------------------------------------ */
 
 static void put_size(const report *r, text *out) {
   units_put_height(out, r->brief->length_m, r->units);
@@ -268,8 +264,7 @@ static void put_takeoff(const report *r, const assessment *x, text *out) {
   text_put(out, "\n\n");
 }
 
-/* --- together ----------------------------------------------------------------------------------
- */
+/* --- together -------------------------------------------------------------------------------- */
 
 static void put_cautions(const report *r, const assessment *x, text *out) {
   const char *caution[VIEW_MAX_CAUTIONS];

@@ -20,8 +20,7 @@ static const char *amount(const report *r, double value) {
   return t.data;
 }
 
-/* --- other walls -------------------------------------------------------------------------------
- */
+/* --- other walls ----------------------------------------------------------------------------- */
 
 enum { COST_COLUMNS = 9, FAIL_INDENT = PAGE_LABEL + COST_COLUMNS + 2 };
 
@@ -60,8 +59,7 @@ static void put_others(const report *r, const char *label, const char *intro, as
   }
 }
 
-/* --- prices of rules and break-even ------------------------------------------------------------
- */
+/* --- prices of rules and break-even ---------------------------------------------------------- */
 
 static const explain_rule_price *dearest(const explanation *e) {
   const explain_rule_price *best = NULL;
@@ -130,8 +128,7 @@ static void put_break_even(const report *r, const explanation *e, text *out) {
   }
 }
 
-/* --- together ----------------------------------------------------------------------------------
- */
+/* --- together -------------------------------------------------------------------------------- */
 
 static void put_counts(const report *r, const explanation *e, text *out) {
   text t;

@@ -2,8 +2,7 @@
 
 #include <string.h>
 
-/* --- what it is --------------------------------------------------------------------------------
- */
+/* --- what it is ------------------------------------------------------------------------------ */
 
 static void add_part(view_parts *out, const char *where, const char *what, double thickness_m) {
   if (out->count == VIEW_MAX_PARTS) return;
@@ -70,8 +69,7 @@ void view_parts_of(const report *r, const wall *w, view_parts *out) {
   add_face(r, out, "side B", &w->side[SIDE_B], true);
 }
 
-/* --- money -------------------------------------------------------------------------------------
- */
+/* --- money ----------------------------------------------------------------------------------- */
 
 view_cost view_cost_of(const report *r, const assessment *x) {
   view_cost v = {0};
@@ -124,8 +122,7 @@ const char *view_money(const report *r, double amount, const char *per) {
   return t.data;
 }
 
-/* --- sound -------------------------------------------------------------------------------------
- */
+/* --- sound ----------------------------------------------------------------------------------- */
 
 const char *view_target(const report *r, const target *t) {
   text out;
@@ -175,8 +172,7 @@ int view_assured(const report *r, const assessment *x, sound_metric metric, doub
   return least;
 }
 
-/* --- words -------------------------------------------------------------------------------------
- */
+/* --- words ----------------------------------------------------------------------------------- */
 
 const char *view_code(const report *r) {
   switch (r->brief->code) {

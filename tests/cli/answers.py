@@ -1,0 +1,194 @@
+"""Answers of the command checked as a program that reads them would: see check_answers.sh."""
+import csv, glob, io, json, os, subprocess, sys, tempfile
+from decimal import ROUND_HALF_UP, Decimal
+from jsonschema import Draft202012Validator
+
+source, build = sys.argv[1], sys.argv[2]
+PAGE = 100  # columns of a text answer
+# Keys that answers have had from the start (docs/formats/answers.md).
+RATING_KEYS = ("septum wall line bands_hz tl_db ratings stc_exact sd family evidence thickness_mm mass_kg_m2 fire height "
+               "short_circuit cost cautions").split()
+COST_KEYS = "currency per_m2 per_ft2 per_m hours_per_m2 lines".split()
+LINE_KEYS = "item section kind quantity unit rate amount".split()
+PICK_KEYS = "septum status chosen runners_up cheaper_but price_of_rules break_even".split()
+WALLS = [
+    "2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16",
+    "typex-16 | steel-92-18@610, glass-89 | typex-16",
+    "typex-16 | wood-89@406, glass-89 | typex-16",
+    "gyp-13 + mlv-5 | wood-89-double@406~25, glass-89, glass-89 | typex-16 + osb-11",
+    "typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16",
+    "2*typex-16 | clip@610 | wood-89-stag-140@406, glass-140 | 2*typex-16",
+    "damp-16 | steel-152-54@406 | 3*gyp-13",
+]
+faults = 0
+
+
+def say(where, message):
+    global faults
+    faults += 1
+    print("%s: %s" % (where, message))
+
+
+def run(*words):
+    done = subprocess.run([build + "/bin/septum", *words], capture_output=True)
+    return done.returncode, done.stdout.decode("utf-8"), done.stderr.decode("utf-8")
+
+
+def schema(kind):
+    with open("%s/docs/formats/%s.schema.json" % (source, kind), encoding="utf-8") as f:
+        loaded = json.load(f)
+    Draft202012Validator.check_schema(loaded)
+    return Draft202012Validator(loaded)
+
+
+schemas = {kind: schema(kind) for kind in ("rating", "pick", "wall")}
+
+
+def check_schema(where, kind, data):
+    for e in schemas[kind].iter_errors(data):
+        say(where, "%s %s: %s" % (kind, e.json_path, e.message[:200]))
+
+
+def check_cost(where, cost):
+    """Amounts are quantity x rate to the cent, half up; the total is their sum; per_m2 is the total over the area."""
+    for key in COST_KEYS:
+        if key not in cost:
+            say(where, "cost lacks " + key)
+    total = Decimal(0)
+    for line in cost["lines"]:
+        for key in LINE_KEYS:
+            if key not in line:
+                say(where, "line lacks " + key)
+        exact = Decimal(str(line["quantity"])) * Decimal(str(line["rate"]))
+        amount = Decimal(str(line["amount"]))
+        # figures are printed with six digits: half a cent may fall to either side only when they were cut there
+        if abs(exact - amount) > Decimal("0.0051"):
+            say(where, "%s: %s x %s is not %s" % (line["item"], line["quantity"], line["rate"], line["amount"]))
+        if line["kind"] != "markup" and not line["section"]:
+            say(where, "%s has no section" % line["item"])
+        total += amount
+    if total != Decimal(str(cost["total"])):
+        say(where, "lines add up to %s, total is %s" % (total, cost["total"]))
+    if abs(cost["total"] / cost["area_m2"] - cost["per_m2"]) > 0.0001:
+        say(where, "per_m2 is not total over area")
+    if abs(cost["per_m2"] * 0.09290304 - cost["per_ft2"]) > 0.0001:
+        say(where, "per_ft2 is not per_m2")
+
+
+def check_rating(where, data):
+    for key in RATING_KEYS:
+        if key not in data:
+            say(where, "rating lacks " + key)
+    check_schema(where, "wall", data["wall"])
+    if data["cost"] is None:
+        say(where, "no cost")
+    else:
+        check_cost(where, data["cost"])
+    mounted = data["wall"]["mount_a"] or data["wall"]["mount_b"]
+    if bool(mounted) != bool(data["short_circuit"]):
+        say(where, "short_circuit goes with mounted leaves")
+
+
+def check_text(where, text, data):
+    for line in text.splitlines():
+        if len(line) > PAGE and "|" not in line:
+            say(where, "%d columns: %s" % (len(line), line))
+    flat = " ".join(text.split())
+    wanted = [data["line"], "STC %d" % data["ratings"]["STC"], "OITC %d" % data["ratings"]["OITC"],
+              "{:,.2f} ".format(data["cost"]["per_ft2"]), "{:,.2f}".format(data["cost"]["total"])]
+    wanted += [" ".join(c.split()) for c in data["cautions"]]
+    wanted += [near["line"] for near in data["evidence"]["nearest"]]
+    wanted += ["{:,.2f}".format(line["amount"]) for line in data["cost"]["lines"]]
+    for words in wanted:
+        if words not in flat.replace(" - ", " "):
+            if words not in flat:
+                say(where, "text lacks: " + words)
+
+
+def check_csv(where, words, data):
+    rows = list(csv.DictReader(io.StringIO(words, newline="")))
+    lines = data["cost"]["lines"]
+    if [(r["item"], r["kind"], float(r["amount"])) for r in rows] != [(l["item"], l["kind"], l["amount"]) for l in lines]:
+        say(where, "CSV and JSON differ")
+
+
+def rate(wall, *more):
+    where = "rate %s" % wall
+    status, out, err = run("rate", wall, "--json", *more)
+    if status != 0:
+        say(where, "exit %d: %s" % (status, err.strip()))
+        return None
+    data = json.loads(out)
+    check_schema(where, "rating", data)
+    check_rating(where, data)
+    return data
+
+
+def check_wall(wall):
+    data = rate(wall)
+    if data is None:
+        return
+    where = "rate %s" % wall
+    if data["line"] != wall:
+        say(where, "printed as %s" % data["line"])
+    check_text(where, run("rate", wall)[1], data)
+    check_csv(where, run("rate", wall, "--csv", "-")[1], data)
+    with tempfile.NamedTemporaryFile("w", suffix=".json", delete=False) as f:
+        json.dump(data["wall"], f)
+    again = rate(f.name)
+    os.unlink(f.name)
+    if again != data:
+        say(where, "the wall of the answer, rated as a file, answers otherwise")
+
+
+def check_pick(path):
+    where = os.path.basename(path)
+    status, out, err = run("pick", path, "--json")
+    if status not in (0, 1):
+        say(where, "exit %d: %s" % (status, err.strip()))
+        return
+    data = json.loads(out)
+    check_schema(where, "pick", data)
+    for key in PICK_KEYS:
+        if key not in data:
+            say(where, "pick lacks " + key)
+    if (status == 1) != (data["status"] == "infeasible") or (status == 1) != (data["chosen"] is None):
+        say(where, "exit %d with status %s" % (status, data["status"]))
+    if run("pick", path, "--json")[1] != out:
+        say(where, "the second run answers otherwise")
+    if status == 1:
+        if not data["conflicts"] or not data["nearest"]:
+            say(where, "no wall fits, and no word why")
+        return
+    chosen = data["chosen"]
+    check_rating(where, chosen)
+    check_text(where, run("pick", path)[1], chosen)
+    if chosen["rules"]["broken"]:
+        say(where, "the chosen wall breaks a rule")
+    if not data["price_of_rules"] or not data["break_even"]:
+        say(where, "price_of_rules and break_even are always filled")
+    same = rate(chosen["line"], "--brief", path)
+    if same is not None and {**same, "wall": None} != {**chosen, "wall": None}:
+        say(where, "rate of the chosen wall answers otherwise")
+    least = chosen["cost"]["per_m2"]
+    for other in data["cheaper_but"]:
+        if other["cost_per_m2"] + other["floor_value_per_m2"] > least + 0.01:
+            say(where, "not cheaper: " + other["line"])
+        failing = rate(other["line"], "--brief", path)
+        if failing is not None and failing["rules"]["broken"] != other["fails"]:
+            say(where, "rate disagrees on what fails: " + other["line"])
+    for price in data["price_of_rules"]:
+        if price["rule"] == "target" or (price["price_total"] or 0) < 0:
+            say(where, "price of %s" % price["rule"])
+
+
+for wall_line in WALLS:
+    check_wall(wall_line)
+count = 0
+for brief in sorted(glob.glob(source + "/docs/examples/*.json")):
+    with open(brief, encoding="utf-8") as opened:
+        if json.load(opened)["septum"] == "brief/1":
+            check_pick(brief)
+            count += 1
+print("%d walls, %d briefs, %d faults" % (len(WALLS), count, faults))
+sys.exit(1 if faults or count == 0 else 0)

@@ -1,0 +1,12 @@
+#!/bin/sh
+# Writes the golden answers anew. Usage: sh tests/golden/rewrite.sh BUILD
+set -eu
+source=$(cd "$(dirname "$0")/../.." && pwd)
+build=$(cd "${1:-$source/build}" && pwd)
+. "$source/tests/golden/golden.sh"
+for brief in $briefs; do
+  for extension in txt json; do
+    answer "$brief" "$extension" >"$source/tests/golden/$brief.$extension.new"
+    mv "$source/tests/golden/$brief.$extension.new" "$source/tests/golden/$brief.$extension"
+  done
+done
