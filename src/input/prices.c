@@ -1,0 +1,443 @@
+#include "input/prices.h"
+
+#include <string.h>
+
+#include "base/text.h"
+#include "base/units.h"
+#include "input/fields.h"
+
+/* Reading goes in two steps: the records by table, then their codes are looked up for everything that a takeoff can ask for. */
+
+const char *const price_unit_names[UNIT_COUNT] = {"m2", "m", "each"};
+const char *const trade_names[TRADE_COUNT] = {"hanger", "taper", "insulator"};
+
+/* ---- records ---- */
+
+static const char *const unit_words[] = {"m2", "ft2", "m", "ft", "each", NULL};
+static const char *const trade_words[] = {"hanger", "taper", "insulator", NULL};
+/* What the words mean, in their order. */
+static const struct {
+  price_unit unit;
+  double si; /* one of it in the SI unit of takeoff */
+} units[] = {{UNIT_M2, 1}, {UNIT_M2, UNITS_M2_PER_FT2}, {UNIT_M, 1}, {UNIT_M, UNITS_M_PER_FT}, {UNIT_EACH, 1}};
+
+/* Wide guards against slips of a digit or a unit. */
+#define MAX_MONEY 1e6
+#define MAX_HOURS 1e3
+#define MAX_QUANTITY 1e7
+
+typedef struct raw_item {
+  price_item item;
+  int unit, trade;
+  double price_bought;
+  const json_value *breaks;
+} raw_item;
+
+typedef struct raw_book {
+  price_book book;
+  const json_value *rates, *heights, *short_wall, *tall_studs, *stock, *items;
+} raw_book;
+
+#define ITEM(member) offsetof(raw_item, member)
+#define BOOK(member) offsetof(raw_book, member)
+#define REQUIRED FIELD_REQUIRED
+
+static const field item_fields[] = {
+    {"code", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.code)},
+    {"name", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.name)},
+    {"section", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.section)},
+    {"unit", FIELD_CHOICE, REQUIRED, 0, 0, 0, unit_words, ITEM(unit)},
+    {"price", FIELD_NUMBER, 0, 0, MAX_MONEY, 0, NULL, ITEM(item.price)},
+    {"price_bought", FIELD_NUMBER, 0, 0, MAX_MONEY, 0, NULL, ITEM(price_bought)},
+    {"bought_as", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.bought_as)},
+    {"bought_quantity", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, MAX_QUANTITY, 0, NULL, ITEM(item.bought_quantity)},
+    {"waste", FIELD_NUMBER, 0, 0, 2, 0, NULL, ITEM(item.waste)},
+    {"hours", FIELD_NUMBER, 0, 0, MAX_HOURS, 0, NULL, ITEM(item.hours)},
+    {"hours_each", FIELD_NUMBER, 0, 0, MAX_HOURS, 0, NULL, ITEM(item.hours_each)},
+    {"trade", FIELD_CHOICE, REQUIRED, 0, 0, 0, trade_words, ITEM(trade)},
+    {"minimum_order", FIELD_NUMBER, 0, 0, MAX_QUANTITY, 0, NULL, ITEM(item.minimum_order)},
+    {"breaks", FIELD_VALUE, 0, 0, 0, 0, NULL, ITEM(breaks)},
+    {"source", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.source)},
+};
+
+static const field book_fields[] = {
+    {"about", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
+    {"name", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.name)},
+    {"currency", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.currency)},
+    {"place", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.place)},
+    {"date", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.date)},
+    {"source", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.source)},
+    {"labour_rates", FIELD_VALUE, REQUIRED, 0, 0, 0, NULL, BOOK(rates)},
+    {"overhead_profit", FIELD_NUMBER, REQUIRED, 0, 3, 0, NULL, BOOK(book.overhead_profit)},
+    {"sales_tax", FIELD_NUMBER, REQUIRED, 0, 1, 0, NULL, BOOK(book.sales_tax)},
+    {"heights", FIELD_VALUE, 0, 0, 0, 0, NULL, BOOK(heights)},
+    {"short_wall", FIELD_VALUE, 0, 0, 0, 0, NULL, BOOK(short_wall)},
+    {"tall_studs", FIELD_VALUE, 0, 0, 0, 0, NULL, BOOK(tall_studs)},
+    {"stock", FIELD_VALUE, 0, 0, 0, 0, NULL, BOOK(stock)},
+    {"items", FIELD_VALUE, REQUIRED, 0, 0, 0, NULL, BOOK(items)},
+};
+
+#define COUNT(table) (sizeof(table) / sizeof((table)[0]))
+
+/* What is kept of an item while its code is looked up. */
+typedef struct kept_item {
+  const json_value *json;
+  bool used, told; /* told: its unit was reported as wrong */
+} kept_item;
+
+typedef struct reader {
+  arena *arena;
+  diag_list *diags;
+  const catalog *catalog;
+  price_book *book;
+  kept_item *kept;
+} reader;
+
+static void fault(reader *r, error_code code, const json_value *v, const char *message) {
+  diag_add(r->diags, DIAG_ERROR, code, json_place(r->arena, v), "%s", message);
+}
+
+/* An array of 1 to `max` elements. */
+static bool is_array(reader *r, const json_value *v, size_t max) {
+  if (v->kind != JSON_ARRAY) {
+    fault(r, ERROR_FIELD_TYPE, v, text_format(r->arena, "expected an array, found %s", json_kind_name(v->kind)));
+    return false;
+  }
+  if (v->count >= 1 && v->count <= max) return true;
+  fault(r, ERROR_FIELD_RANGE, v, text_format(r->arena, "expected 1 to %zu elements, found %zu", max, v->count));
+  return false;
+}
+
+static void must_rise(reader *r, const json_value *v, double value, double before) {
+  if (value <= before) fault(r, ERROR_FIELD_RANGE, v, "must be more than the one before");
+}
+
+static void read_breaks(reader *r, const json_value *v, double si, price_item *out) {
+  static const field table[] = {
+      {"from", FIELD_NUMBER, REQUIRED | FIELD_ABOVE_MIN, 0, MAX_QUANTITY, 0, NULL, offsetof(price_break, from)},
+      {"price", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, offsetof(price_break, price)},
+  };
+  if (!is_array(r, v, PRICES_MAX_BREAKS)) return;
+  price_break *breaks = arena_array(r->arena, v->count, sizeof *breaks);
+  double before = 0;
+  for (const json_value *e = v->first; e; e = e->next) {
+    price_break *b = &breaks[out->break_count];
+    if (!fields_read(r->arena, r->diags, e, table, COUNT(table), b)) continue;
+    b->from *= si;
+    b->price /= si;
+    must_rise(r, e, b->from, before);
+    before = b->from;
+    out->break_count++;
+  }
+  out->breaks = breaks;
+}
+
+/* Price per unit, or per bought unit with its quantity: one of them. */
+static void settle_price(reader *r, const json_value *v, raw_item *raw) {
+  bool by_unit = json_get(v, "price") != NULL, by_bought = json_get(v, "price_bought") != NULL;
+  if (by_unit && by_bought) {
+    fault(r, ERROR_FIELD_CONFLICT, v, "has both \"price\" and \"price_bought\"; keep one of them");
+  } else if (!by_unit && !by_bought) {
+    fault(r, ERROR_FIELD_MISSING, v, "the key \"price\" (or \"price_bought\") is missing");
+  } else if (by_bought && !(raw->item.bought_quantity > 0)) {
+    fault(r, ERROR_FIELD_MISSING, v, "\"price_bought\" needs \"bought_quantity\"");
+  } else if (by_bought) {
+    raw->item.price = raw->price_bought / raw->item.bought_quantity;
+  }
+}
+
+static void read_item(reader *r, const json_value *v) {
+  raw_item raw;
+  memset(&raw, 0, sizeof raw);
+  raw.item.source = r->book->source;
+  if (!fields_read(r->arena, r->diags, v, item_fields, COUNT(item_fields), &raw)) return;
+  price_item *item = &raw.item;
+  settle_price(r, v, &raw);
+  double si = units[raw.unit].si;
+  item->unit = units[raw.unit].unit;
+  item->trade = (trade)raw.trade;
+  item->price /= si;
+  item->hours /= si;
+  item->bought_quantity *= si;
+  item->minimum_order *= si;
+  if (raw.breaks) read_breaks(r, raw.breaks, si, item);
+  int same = prices_item(r->book, item->code);
+  if (same != CATALOG_NONE) {
+    int line = r->kept[same].json->line;
+    fault(r, ERROR_FIELD_CONFLICT, v, text_format(r->arena, "the code \"%s\" stands already in line %d", item->code, line));
+    return;
+  }
+  r->kept[r->book->count].json = v;
+  r->book->items[r->book->count++] = *item;
+}
+
+static void read_items(reader *r, const json_value *v) {
+  if (!is_array(r, v, PRICES_MAX_ITEMS)) return;
+  r->book->items = arena_array(r->arena, v->count, sizeof *r->book->items);
+  r->kept = arena_array(r->arena, v->count, sizeof *r->kept);
+  for (const json_value *e = v->first; e; e = e->next) read_item(r, e);
+}
+
+static void read_rates(reader *r, const json_value *v) {
+  static const field table[] = {
+      {"hanger", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, TRADE_HANGER * sizeof(double)},
+      {"taper", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, TRADE_TAPER * sizeof(double)},
+      {"insulator", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, TRADE_INSULATOR * sizeof(double)},
+  };
+  (void)fields_read(r->arena, r->diags, v, table, COUNT(table), r->book->rate);
+}
+
+/* A length with what it does to labour: a factor, or hours. */
+typedef struct step { double length_m, value; } step;
+
+static void read_heights(reader *r, const json_value *v) {
+  static const field table[] = {
+      {"above_m", FIELD_LENGTH, REQUIRED, 0, 100, 0, NULL, offsetof(step, length_m)},
+      {"factor", FIELD_NUMBER, REQUIRED, 1, 10, 0, NULL, offsetof(step, value)},
+  };
+  price_book *b = r->book;
+  double before = -1;
+  if (!is_array(r, v, PRICES_MAX_HEIGHTS)) return;
+  for (const json_value *e = v->first; e; e = e->next) {
+    step s = {0, 0};
+    if (!fields_read(r->arena, r->diags, e, table, COUNT(table), &s)) continue;
+    must_rise(r, e, s.length_m, before);
+    before = s.length_m;
+    b->height_step_m[b->height_steps] = s.length_m;
+    b->height_factor[b->height_steps++] = s.value;
+  }
+}
+
+static void read_short_wall(reader *r, const json_value *v) {
+  static const field table[] = {
+      {"below_m", FIELD_LENGTH, REQUIRED, 0, 100, 0, NULL, offsetof(step, length_m)},
+      {"factor", FIELD_NUMBER, REQUIRED, 1, 10, 0, NULL, offsetof(step, value)},
+  };
+  step s = {0, 0};
+  if (!fields_read(r->arena, r->diags, v, table, COUNT(table), &s)) return;
+  r->book->short_wall_m = s.length_m;
+  r->book->short_wall_factor = s.value;
+}
+
+static void read_tall_studs(reader *r, const json_value *v) {
+  static const field table[] = {
+      {"above_m", FIELD_LENGTH, REQUIRED, 0, 100, 0, NULL, offsetof(step, length_m)},
+      {"hours_per_m", FIELD_NUMBER, REQUIRED, 0, MAX_HOURS, 0, NULL, offsetof(step, value)},
+      {"hours_per_ft", FIELD_NUMBER, REQUIRED, 0, MAX_HOURS, 1 / UNITS_M_PER_FT, NULL, offsetof(step, value)},
+  };
+  step s = {0, 0};
+  if (!fields_read(r->arena, r->diags, v, table, COUNT(table), &s)) return;
+  r->book->tall_stud_m = s.length_m;
+  r->book->tall_stud_hours_per_m = s.value;
+}
+
+static void read_lengths(reader *r, const json_value *v, stock_lengths *out) {
+  if (!is_array(r, v, PRICES_MAX_STOCK)) return;
+  double before = 0;
+  for (const json_value *e = v->first; e; e = e->next) {
+    const char *expected = "a length with its unit, such as \"9ft\"";
+    double metres = 0;
+    if (e->kind != JSON_STRING || !units_parse_length(e->string, 0, &metres, &expected)) {
+      fault(r, ERROR_FIELD_UNIT, e, text_format(r->arena, "expected %s", expected));
+      continue;
+    }
+    must_rise(r, e, metres, before);
+    before = metres;
+    out->metres[out->count++] = metres;
+  }
+}
+
+static void read_stock(reader *r, const json_value *v) {
+  typedef struct raw_stock { const json_value *of[FRAME_STEEL + 1]; } raw_stock;
+  static const field table[] = {
+      {"wood", FIELD_VALUE, 0, 0, 0, 0, NULL, FRAME_WOOD * sizeof(const json_value *)},
+      {"steel", FIELD_VALUE, 0, 0, 0, 0, NULL, FRAME_STEEL * sizeof(const json_value *)},
+  };
+  raw_stock raw = {{NULL, NULL}};
+  if (!fields_read(r->arena, r->diags, v, table, COUNT(table), &raw)) return;
+  for (int m = FRAME_WOOD; m <= FRAME_STEEL; m++) {
+    if (raw.of[m]) read_lengths(r, raw.of[m], &r->book->stock[m]);
+  }
+}
+
+/* ---- what a takeoff can ask for ---- */
+
+static const struct {
+  const char *code;
+  price_unit unit;
+} work_goods[WORK_COUNT] = {
+    [WORK_SCREW] = {"screw", UNIT_EACH},
+    [WORK_SEALANT] = {"sealant", UNIT_M},
+    [WORK_HEAD_JOINT] = {"head-joint", UNIT_M},
+    [WORK_BOX_PAD] = {"box-pad", UNIT_EACH},
+    [WORK_FINISH_1] = {"finish-1", UNIT_M2},
+    [WORK_FINISH_2] = {"finish-2", UNIT_M2},
+    [WORK_FINISH_3] = {"finish-3", UNIT_M2},
+    [WORK_FINISH_4] = {"finish-4", UNIT_M2},
+    [WORK_FINISH_5] = {"finish-5", UNIT_M2},
+    [WORK_BACKING_STEEL] = {"backing-strap", UNIT_M},
+    [WORK_BACKING_WOOD] = {"backing-2x8", UNIT_M},
+    [WORK_BACKING_FRT] = {"backing-ply-frt", UNIT_M},
+    [WORK_FIREBLOCK_WOOD] = {"fireblock-2x", UNIT_M},
+    [WORK_FIREBLOCK_BATT] = {"fireblock-batt", UNIT_M},
+    [WORK_BRIDGING] = {"bridging", UNIT_M},
+};
+
+static const char *const batt_suffixes[BATT_WIDTHS] = {"15in", "23in", "16in", "24in"};
+
+int prices_item(const price_book *b, const char *code) {
+  for (size_t i = 0; i < b->count; i++) {
+    if (text_equal(b->items[i].code, code)) return (int)i;
+  }
+  return CATALOG_NONE;
+}
+
+batt_width prices_batt_width(frame_material m, double spacing_m) {
+  /* Between the usual 16 and 24 in: 20 in. Bays at 12 in are cut from the narrow stock. */
+  bool wide = spacing_m > 20 * UNITS_M_PER_IN;
+  if (m == FRAME_WOOD) return wide ? BATT_23IN : BATT_15IN;
+  return wide ? BATT_24IN : BATT_16IN;
+}
+
+static const char *const unit_kinds[UNIT_COUNT] = {"area: m2 or ft2", "length: m or ft", "the piece: each"};
+
+static price_slot slot(reader *r, const char *code, price_unit unit) {
+  price_slot s = {code, prices_item(r->book, code)};
+  if (s.item == CATALOG_NONE) return s;
+  kept_item *kept = &r->kept[s.item];
+  kept->used = true;
+  if (r->book->items[s.item].unit != unit && !kept->told) {
+    kept->told = true;
+    fault(r, ERROR_FIELD_UNIT, json_get(kept->json, "unit"),
+          text_format(r->arena, "\"%s\" is taken off by %s", code, unit_kinds[unit]));
+  }
+  return s;
+}
+
+static void fill_slots(reader *r, const fill *f, price_slot out[BATT_WIDTHS]) {
+  price_slot any = slot(r, f->id, UNIT_M2);
+  for (int w = 0; w < BATT_WIDTHS; w++) {
+    out[w] = any;
+    if (f->material == FILL_CELLULOSE) continue;
+    price_slot own = slot(r, text_format(r->arena, "%s-%s", f->id, batt_suffixes[w]), UNIT_M2);
+    if (own.item != CATALOG_NONE || any.item == CATALOG_NONE) out[w] = own;
+  }
+}
+
+static void bind_frames(reader *r) {
+  const catalog *c = r->catalog;
+  price_book *b = r->book;
+  b->studs = arena_array(r->arena, c->frame_count, sizeof *b->studs);
+  b->runners = arena_array(r->arena, c->frame_count, sizeof *b->runners);
+  b->heads = arena_array(r->arena, c->frame_count, sizeof *b->heads);
+  for (size_t i = 0; i < c->frame_count; i++) {
+    const frame *f = &c->frames[i];
+    b->studs[i] = slot(r, f->stud, UNIT_M);
+    b->runners[i] = slot(r, f->runner, UNIT_M);
+    /* Studs slip in a deep-leg track; wood plates hang from clips that cost little. */
+    b->heads[i] = f->material == FRAME_STEEL ? slot(r, text_format(r->arena, "%s-deep", f->runner), UNIT_M) : b->runners[i];
+  }
+}
+
+static void bind(reader *r) {
+  const catalog *c = r->catalog;
+  price_book *b = r->book;
+  b->layers = arena_array(r->arena, c->layer_count, sizeof *b->layers);
+  for (size_t i = 0; i < c->layer_count; i++) b->layers[i] = slot(r, c->layers[i].id, UNIT_M2);
+  bind_frames(r);
+  b->fills = arena_array(r->arena, c->fill_count, sizeof *b->fills);
+  for (size_t i = 0; i < c->fill_count; i++) fill_slots(r, &c->fills[i], b->fills[i]);
+  b->rails = arena_array(r->arena, c->mount_count, sizeof *b->rails);
+  b->clips = arena_array(r->arena, c->mount_count, sizeof *b->clips);
+  for (size_t i = 0; i < c->mount_count; i++) {
+    const mount *m = &c->mounts[i];
+    b->rails[i] = slot(r, m->rail, UNIT_M);
+    b->clips[i] = m->clip ? slot(r, m->clip, UNIT_EACH) : (price_slot){NULL, CATALOG_NONE};
+  }
+  for (int i = 0; i < WORK_COUNT; i++) b->work[i] = slot(r, work_goods[i].code, work_goods[i].unit);
+}
+
+/* ---- all codes, once each ---- */
+
+typedef struct code_list {
+  const char **code;
+  bool *priced;
+  size_t count;
+} code_list;
+
+static void list_slot(code_list *l, price_slot s) {
+  if (!s.code) return;
+  for (size_t i = 0; i < l->count; i++) {
+    if (text_equal(l->code[i], s.code)) return;
+  }
+  l->code[l->count] = s.code;
+  l->priced[l->count++] = s.item != CATALOG_NONE;
+}
+
+static code_list all_codes(arena *a, const catalog *c, const price_book *b) {
+  size_t most = c->layer_count + 3 * c->frame_count + BATT_WIDTHS * c->fill_count + 2 * c->mount_count + WORK_COUNT;
+  code_list l = {arena_array(a, most, sizeof *l.code), arena_array(a, most, sizeof *l.priced), 0};
+  for (size_t i = 0; i < c->layer_count; i++) list_slot(&l, b->layers[i]);
+  for (size_t i = 0; i < c->frame_count; i++) {
+    list_slot(&l, b->studs[i]);
+    list_slot(&l, b->runners[i]);
+    list_slot(&l, b->heads[i]);
+  }
+  for (size_t i = 0; i < c->fill_count; i++) {
+    for (int w = 0; w < BATT_WIDTHS; w++) list_slot(&l, b->fills[i][w]);
+  }
+  for (size_t i = 0; i < c->mount_count; i++) {
+    list_slot(&l, b->rails[i]);
+    list_slot(&l, b->clips[i]);
+  }
+  for (int i = 0; i < WORK_COUNT; i++) list_slot(&l, b->work[i]);
+  return l;
+}
+
+int prices_report_missing(arena *a, diag_list *d, const catalog *c, const price_book *b) {
+  code_list l = all_codes(a, c, b);
+  int missing = 0;
+  for (size_t i = 0; i < l.count; i++) {
+    if (l.priced[i]) continue;
+    diag_place place = {b->file, 0, 0, NULL};
+    diag_add(d, DIAG_WARNING, ERROR_PRICE_MISSING, place, "no price for \"%s\": walls that need it cannot be costed", l.code[i]);
+    missing++;
+  }
+  return missing;
+}
+
+static void report_unused(reader *r) {
+  code_list l = all_codes(r->arena, r->catalog, r->book);
+  for (size_t i = 0; i < r->book->count; i++) {
+    if (r->kept[i].used) continue;
+    const char *code = r->book->items[i].code, *near = text_nearest(code, l.code, l.count);
+    const char *hint = near ? text_format(r->arena, "; did you mean \"%s\"?", near) : "";
+    diag_add(r->diags, DIAG_WARNING, ERROR_PRICE_UNKNOWN_ITEM, json_place(r->arena, json_get(r->kept[i].json, "code")),
+             "nothing is priced by the code \"%s\"%s", code, hint);
+  }
+}
+
+/* ---- the book ---- */
+
+price_book *prices_read(arena *a, diag_list *d, const catalog *c, const json_value *root) {
+  size_t before = d->errors;
+  if (!json_is(a, d, root, "price-book")) return NULL;
+  raw_book *raw = arena_alloc(a, sizeof *raw);
+  reader r = {a, d, c, &raw->book, NULL};
+  raw->book.file = root->file;
+  (void)fields_read(a, d, root, book_fields, COUNT(book_fields), raw);
+  if (raw->rates) read_rates(&r, raw->rates);
+  if (raw->heights) read_heights(&r, raw->heights);
+  if (raw->short_wall) read_short_wall(&r, raw->short_wall);
+  if (raw->tall_studs) read_tall_studs(&r, raw->tall_studs);
+  if (raw->stock) read_stock(&r, raw->stock);
+  if (raw->items) read_items(&r, raw->items);
+  bind(&r);
+  if (d->errors == before) report_unused(&r);
+  return d->errors == before ? r.book : NULL;
+}
+
+price_book *prices_load(arena *a, diag_list *d, const catalog *c, const char *path) {
+  const json_value *root = json_load(a, d, path);
+  return root ? prices_read(a, d, c, root) : NULL;
+}
