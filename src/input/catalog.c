@@ -17,7 +17,8 @@ static bool read_fire(catalog_reader *r, const json_value *root, catalog *out) {
 }
 
 static bool read_published(catalog_reader *r, const json_value *root, catalog *out) {
-  bool rows = rows_read(r->arena, r->diags, root, "published", &out->published, &out->published_count);
+  bool rows =
+      rows_read(r->arena, r->diags, root, "published", &out->published, &out->published_count);
   return rows_read_distance(r->arena, r->diags, root, out) && rows;
 }
 
@@ -31,10 +32,14 @@ static const struct catalog_file {
   const char *kind, *file;
   file_reader *read;
 } files[] = {
-    {"boards", "boards.json", catalog_read_layers},   {"frames", "frames.json", catalog_read_frames},
-    {"fills", "fills.json", catalog_read_fills},      {"mounts", "mounts.json", catalog_read_mounts},
-    {"fire", "fire.json", read_fire},                 {"targets", "targets.json", catalog_read_targets},
-    {"published", "published.json", read_published},  {"acoustics", "acoustics.json", read_acoustics},
+    {"boards", "boards.json", catalog_read_layers},
+    {"frames", "frames.json", catalog_read_frames},
+    {"fills", "fills.json", catalog_read_fills},
+    {"mounts", "mounts.json", catalog_read_mounts},
+    {"fire", "fire.json", read_fire},
+    {"targets", "targets.json", catalog_read_targets},
+    {"published", "published.json", read_published},
+    {"acoustics", "acoustics.json", read_acoustics},
 };
 
 enum { FILES = sizeof files / sizeof files[0] };
@@ -62,7 +67,8 @@ bool catalog_check_file(arena *a, diag_list *d, const json_value *root) {
     if (same) return files[i].read(&r, root, &nothing);
   }
   diag_add(d, DIAG_ERROR, ERROR_FILE_KIND, json_place(a, septum ? septum : root),
-           "expected a catalog file (\"septum\": \"boards/1\", frames, fills, mounts, fire, targets, published or acoustics)");
+           "expected a catalog file (\"septum\": \"boards/1\", frames, fills, mounts, fire, "
+           "targets, published or acoustics)");
   return false;
 }
 
@@ -72,28 +78,40 @@ const char *const catalog_kind_names[CATALOG_KINDS] = {"board", "frame", "fill",
 
 static size_t count_of(const catalog *c, catalog_kind kind) {
   switch (kind) {
-  case CATALOG_LAYER: return c->layer_count;
-  case CATALOG_FRAME: return c->frame_count;
-  case CATALOG_FILL: return c->fill_count;
-  default: return c->mount_count;
+  case CATALOG_LAYER:
+    return c->layer_count;
+  case CATALOG_FRAME:
+    return c->frame_count;
+  case CATALOG_FILL:
+    return c->fill_count;
+  default:
+    return c->mount_count;
   }
 }
 
 const char *catalog_id(const catalog *c, catalog_ref ref) {
   switch (ref.kind) {
-  case CATALOG_LAYER: return c->layers[ref.index].id;
-  case CATALOG_FRAME: return c->frames[ref.index].id;
-  case CATALOG_FILL: return c->fills[ref.index].id;
-  default: return c->mounts[ref.index].id;
+  case CATALOG_LAYER:
+    return c->layers[ref.index].id;
+  case CATALOG_FRAME:
+    return c->frames[ref.index].id;
+  case CATALOG_FILL:
+    return c->fills[ref.index].id;
+  default:
+    return c->mounts[ref.index].id;
   }
 }
 
 static said_words said_of(const catalog *c, catalog_ref ref) {
   switch (ref.kind) {
-  case CATALOG_LAYER: return c->layers[ref.index].said;
-  case CATALOG_FRAME: return c->frames[ref.index].said;
-  case CATALOG_FILL: return c->fills[ref.index].said;
-  default: return c->mounts[ref.index].said;
+  case CATALOG_LAYER:
+    return c->layers[ref.index].said;
+  case CATALOG_FRAME:
+    return c->frames[ref.index].said;
+  case CATALOG_FILL:
+    return c->fills[ref.index].said;
+  default:
+    return c->mounts[ref.index].said;
   }
 }
 
@@ -105,18 +123,33 @@ static int find_id(const catalog *c, catalog_kind kind, const char *id) {
   return CATALOG_NONE;
 }
 
-int catalog_layer(const catalog *c, const char *id) { return find_id(c, CATALOG_LAYER, id); }
-int catalog_frame(const catalog *c, const char *id) { return find_id(c, CATALOG_FRAME, id); }
-int catalog_fill(const catalog *c, const char *id) { return find_id(c, CATALOG_FILL, id); }
-int catalog_mount(const catalog *c, const char *id) { return find_id(c, CATALOG_MOUNT, id); }
+int catalog_layer(const catalog *c, const char *id) {
+  return find_id(c, CATALOG_LAYER, id);
+}
+int catalog_frame(const catalog *c, const char *id) {
+  return find_id(c, CATALOG_FRAME, id);
+}
+int catalog_fill(const catalog *c, const char *id) {
+  return find_id(c, CATALOG_FILL, id);
+}
+int catalog_mount(const catalog *c, const char *id) {
+  return find_id(c, CATALOG_MOUNT, id);
+}
 
-static bool is_letter(char ch) { return (ch >= 'a' && ch <= 'z') || (ch >= 'A' && ch <= 'Z'); }
-static bool is_digit(char ch) { return ch >= '0' && ch <= '9'; }
-static char lower(char ch) { return ch >= 'A' && ch <= 'Z' ? (char)(ch - 'A' + 'a') : ch; }
+static bool is_letter(char ch) {
+  return (ch >= 'a' && ch <= 'z') || (ch >= 'A' && ch <= 'Z');
+}
+static bool is_digit(char ch) {
+  return ch >= '0' && ch <= '9';
+}
+static char lower(char ch) {
+  return ch >= 'A' && ch <= 'Z' ? (char)(ch - 'A' + 'a') : ch;
+}
 
 enum { SPOKEN_MAX = 96 };
 
-/* Bytes of an inch word ("in", "inch", "inches") at s, 0 without; a word that merely starts so is none. */
+/* Bytes of an inch word ("in", "inch", "inches") at s, 0 without; a word that merely starts so is
+ * none. */
 static size_t inch_word(const char *s) {
   static const char *const words[] = {"inches", "inch", "in"};
   for (size_t i = 0; i < sizeof words / sizeof words[0]; i++) {
@@ -127,15 +160,16 @@ static size_t inch_word(const char *s) {
   return 0;
 }
 
-/* What is left of a spoken word when blanks, hyphens, case, inch marks and the long form of "ga" do not count. */
+/* What is left of a spoken word when blanks, hyphens, case, inch marks and the long form of "ga" do
+ * not count. */
 static bool spoken_form(const char *s, char out[SPOKEN_MAX]) {
   size_t n = 0;
   for (size_t i = 0; s[i] != '\0';) {
     size_t inch = n > 0 && is_digit(out[n - 1]) ? inch_word(s + i) : 0;
     if (inch > 0) {
       i += inch;
-    } else if (lower(s[i]) == 'g' && strlen(s + i) >= 5 && lower(s[i + 1]) == 'a' && lower(s[i + 2]) == 'u' &&
-               lower(s[i + 3]) == 'g' && lower(s[i + 4]) == 'e') {
+    } else if (lower(s[i]) == 'g' && strlen(s + i) >= 5 && lower(s[i + 1]) == 'a' &&
+               lower(s[i + 2]) == 'u' && lower(s[i + 3]) == 'g' && lower(s[i + 4]) == 'e') {
       if (n + 2 >= SPOKEN_MAX) return false;
       out[n++] = 'g';
       out[n++] = 'a';

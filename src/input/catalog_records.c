@@ -5,12 +5,13 @@
 #include "input/coefficients.h"
 #include "input/fields.h"
 
-/* Ranges are wide guards against slips of a digit or a unit, not rules of the trade. Lengths are read by FIELD_LENGTH, so
- * a file may say thickness_mm or thickness_m. */
+/* Ranges are wide guards against slips of a digit or a unit, not rules of the trade. Lengths are
+ * read by FIELD_LENGTH, so a file may say thickness_mm or thickness_m. */
 
 enum { ID_MAX = 40, SAID_MAX = 24 };
 
-static const char *const layer_materials[] = {"gypsum", "cement", "wood", "fibreboard", "limp", "damping", NULL};
+static const char *const layer_materials[] = {"gypsum", "cement",  "wood", "fibreboard",
+                                              "limp",   "damping", NULL};
 static const char *const frame_materials[] = {"wood", "steel", NULL};
 static const char *const frame_layouts[] = {"single", "staggered", "double", NULL};
 static const char *const fill_materials[] = {"glass", "stone", "cellulose", NULL};
@@ -20,15 +21,34 @@ static const char *const codes[] = {"none", "ibc", "nbc", NULL};
 static const char *const scopes[] = {"wall", "composite", NULL};
 
 /* A record while it is read: what the file says in other words than the catalog keeps. */
-typedef struct raw_layer { layer l; const json_value *said; int stock; } raw_layer;
-typedef struct raw_frame { frame f; const json_value *said; int stock; } raw_frame;
-typedef struct raw_fill { fill f; const json_value *said; int stock; } raw_fill;
-typedef struct raw_mount { mount m; const json_value *said; int kind; } raw_mount;
-typedef struct raw_target { target_row t; int code, scope; } raw_target;
+typedef struct raw_layer {
+  layer l;
+  const json_value *said;
+  int stock;
+} raw_layer;
+typedef struct raw_frame {
+  frame f;
+  const json_value *said;
+  int stock;
+} raw_frame;
+typedef struct raw_fill {
+  fill f;
+  const json_value *said;
+  int stock;
+} raw_fill;
+typedef struct raw_mount {
+  mount m;
+  const json_value *said;
+  int kind;
+} raw_mount;
+typedef struct raw_target {
+  target_row t;
+  int code, scope;
+} raw_target;
 
 #define AT(type, member) offsetof(type, member)
-#define REQUIRED FIELD_REQUIRED
-#define POSITIVE (FIELD_REQUIRED | FIELD_ABOVE_MIN)
+#define REQUIRED         FIELD_REQUIRED
+#define POSITIVE         (FIELD_REQUIRED | FIELD_ABOVE_MIN)
 
 static const field layer_fields[] = {
     {"id", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, AT(raw_layer, l.id)},
@@ -36,7 +56,8 @@ static const field layer_fields[] = {
     {"material", FIELD_CHOICE, REQUIRED, 0, 0, 0, layer_materials, AT(raw_layer, l.material)},
     {"thickness_m", FIELD_LENGTH, POSITIVE, 0, 0.1, 0, NULL, AT(raw_layer, l.thickness_m)},
     {"mass_kg_m2", FIELD_NUMBER, POSITIVE, 0, 100, 0, NULL, AT(raw_layer, l.mass_kg_m2)},
-    {"coincidence_m_s", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 500, 0, NULL, AT(raw_layer, l.coincidence_m_s)},
+    {"coincidence_m_s", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 500, 0, NULL,
+     AT(raw_layer, l.coincidence_m_s)},
     {"loss_factor", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1, 0, NULL, AT(raw_layer, l.loss_factor)},
     {"face", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_layer, l.face)},
     {"face_if_asked", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_layer, l.face_if_asked)},
@@ -52,7 +73,8 @@ static const field layer_fields[] = {
     {"ordinary", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_layer, l.ordinary)},
     {"stock", FIELD_CHOICE, 0, 0, 0, 0, stocks, AT(raw_layer, stock)},
     {"max_spacing_m", FIELD_LENGTH, 0, 0.1, 2, 0, NULL, AT(raw_layer, l.max_spacing_m)},
-    {"max_spacing_single_m", FIELD_LENGTH, 0, 0.1, 2, 0, NULL, AT(raw_layer, l.max_spacing_single_m)},
+    {"max_spacing_single_m", FIELD_LENGTH, 0, 0.1, 2, 0, NULL,
+     AT(raw_layer, l.max_spacing_single_m)},
     {"min_steel_mil", FIELD_INTEGER, 0, 10, 200, 0, NULL, AT(raw_layer, l.min_steel_mil)},
     {"fire_minutes", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 240, 0, NULL, AT(raw_layer, l.fire_minutes)},
     {"said", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(raw_layer, said)},
@@ -70,16 +92,19 @@ static const field frame_fields[] = {
     {"mil", FIELD_INTEGER, 0, 10, 200, 0, NULL, AT(raw_frame, f.mil)},
     {"stud_depth_m", FIELD_LENGTH, POSITIVE, 0, 0.5, 0, NULL, AT(raw_frame, f.stud_depth_m)},
     {"row_depth_m", FIELD_LENGTH, POSITIVE, 0, 0.5, 0, NULL, AT(raw_frame, f.row_depth_m)},
-    {"steel_thickness_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 0.01, 0, NULL, AT(raw_frame, f.steel_thickness_m)},
+    {"steel_thickness_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 0.01, 0, NULL,
+     AT(raw_frame, f.steel_thickness_m)},
     {"flange_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 0.2, 0, NULL, AT(raw_frame, f.flange_m)},
     {"stud_width_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 0.2, 0, NULL, AT(raw_frame, f.stud_width_m)},
     {"stud_mass_kg_m", FIELD_NUMBER, POSITIVE, 0, 50, 0, NULL, AT(raw_frame, f.stud_mass_kg_m)},
     {"runner_mass_kg_m", FIELD_NUMBER, POSITIVE, 0, 50, 0, NULL, AT(raw_frame, f.runner_mass_kg_m)},
     {"inertia_mm4", FIELD_NUMBER, POSITIVE, 0, 1e-3, 1e-12, NULL, AT(raw_frame, f.inertia_m4)},
-    {"inertia_effective_mm4", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e-3, 1e-12, NULL, AT(raw_frame, f.inertia_effective_m4)},
+    {"inertia_effective_mm4", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e-3, 1e-12, NULL,
+     AT(raw_frame, f.inertia_effective_m4)},
     {"moment_n_m", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e5, 0, NULL, AT(raw_frame, f.moment_n_m)},
     {"section_estimated", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.section_estimated)},
-    {"composite_inertia_mm4", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e-3, 1e-12, NULL, AT(raw_frame, f.composite_inertia_m4)},
+    {"composite_inertia_mm4", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e-3, 1e-12, NULL,
+     AT(raw_frame, f.composite_inertia_m4)},
     {"modulus_gpa", FIELD_NUMBER, POSITIVE, 0, 1e12, 1e9, NULL, AT(raw_frame, f.modulus_pa)},
     {"loadbearing", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.loadbearing)},
     {"noncombustible", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.noncombustible)},
@@ -87,7 +112,8 @@ static const field frame_fields[] = {
     {"ordinary", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.ordinary)},
     {"stock", FIELD_CHOICE, 0, 0, 0, 0, stocks, AT(raw_frame, stock)},
     {"max_height_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 30, 0, NULL, AT(raw_frame, f.max_height_m)},
-    {"max_height_bearing_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 30, 0, NULL, AT(raw_frame, f.max_height_bearing_m)},
+    {"max_height_bearing_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 30, 0, NULL,
+     AT(raw_frame, f.max_height_bearing_m)},
     {"knockout_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 0.5, 0, NULL, AT(raw_frame, f.knockout_m)},
     {"said", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(raw_frame, said)},
     {"source", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, AT(raw_frame, f.source)},
@@ -100,7 +126,8 @@ static const field fill_fields[] = {
     {"thickness_m", FIELD_LENGTH, POSITIVE, 0, 0.6, 0, NULL, AT(raw_fill, f.thickness_m)},
     {"density_kg_m3", FIELD_NUMBER, POSITIVE, 0, 500, 0, NULL, AT(raw_fill, f.density_kg_m3)},
     {"mass_kg_m2", FIELD_NUMBER, POSITIVE, 0, 100, 0, NULL, AT(raw_fill, f.mass_kg_m2)},
-    {"resistivity_pa_s_m2", FIELD_NUMBER, POSITIVE, 0, 1e6, 0, NULL, AT(raw_fill, f.resistivity_pa_s_m2)},
+    {"resistivity_pa_s_m2", FIELD_NUMBER, POSITIVE, 0, 1e6, 0, NULL,
+     AT(raw_fill, f.resistivity_pa_s_m2)},
     {"wood_only", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_fill, f.wood_only)},
     {"dense", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_fill, f.dense)},
     {"ordinary", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_fill, f.ordinary)},
@@ -116,10 +143,12 @@ static const field mount_fields[] = {
     {"depth_m", FIELD_LENGTH, POSITIVE, 0, 0.2, 0, NULL, AT(raw_mount, m.depth_m)},
     {"rail", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, AT(raw_mount, m.rail)},
     {"rail_mass_kg_m", FIELD_NUMBER, POSITIVE, 0, 20, 0, NULL, AT(raw_mount, m.rail_mass_kg_m)},
-    {"max_leaf_kg_m2", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 500, 0, NULL, AT(raw_mount, m.max_leaf_kg_m2)},
+    {"max_leaf_kg_m2", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 500, 0, NULL,
+     AT(raw_mount, m.max_leaf_kg_m2)},
     {"clip", FIELD_STRING, 0, 0, 0, 0, NULL, AT(raw_mount, m.clip)},
     {"clip_mass_kg", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 10, 0, NULL, AT(raw_mount, m.clip_mass_kg)},
-    {"clip_capacity_kg", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 500, 0, NULL, AT(raw_mount, m.clip_capacity_kg)},
+    {"clip_capacity_kg", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 500, 0, NULL,
+     AT(raw_mount, m.clip_capacity_kg)},
     {"max_clip_spacing_mm", FIELD_INTEGER, 0, 100, 3000, 0, NULL, AT(raw_mount, m.clip_spacing_mm)},
     {"said", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(raw_mount, said)},
     {"source", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, AT(raw_mount, m.source)},
@@ -136,8 +165,10 @@ static const field target_fields[] = {
     {"field_value", FIELD_INTEGER, 0, 15, 90, 0, NULL, AT(raw_target, t.field_value)},
     {"scope", FIELD_CHOICE, REQUIRED, 0, 0, 0, scopes, AT(raw_target, scope)},
     {"fire_minutes", FIELD_INTEGER, 0, 15, 240, 0, NULL, AT(raw_target, t.fire_minutes)},
-    {"fire_minutes_sprinklered", FIELD_INTEGER, 0, 15, 240, 0, NULL, AT(raw_target, t.fire_minutes_sprinklered)},
-    {"fire_minutes_from_4_storeys", FIELD_INTEGER, 0, 15, 240, 0, NULL, AT(raw_target, t.fire_minutes_from_4_storeys)},
+    {"fire_minutes_sprinklered", FIELD_INTEGER, 0, 15, 240, 0, NULL,
+     AT(raw_target, t.fire_minutes_sprinklered)},
+    {"fire_minutes_from_4_storeys", FIELD_INTEGER, 0, 15, 240, 0, NULL,
+     AT(raw_target, t.fire_minutes_from_4_storeys)},
     {"source", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, AT(raw_target, t.source)},
 };
 
@@ -169,7 +200,9 @@ static bool take_id(catalog_reader *r, const json_value *record, const char *id)
   const json_value *place = at_key(record, "id");
   if (!id_sound(id)) {
     diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, place),
-             "expected an id of small letters, digits and hyphens, at most %d, a letter first, found \"%s\"", (int)ID_MAX, id);
+             "expected an id of small letters, digits and hyphens, at most %d, a letter first, "
+             "found \"%s\"",
+             (int)ID_MAX, id);
     return false;
   }
   for (size_t i = 0; i < r->id_count; i++) {
@@ -197,7 +230,8 @@ static bool take_said(catalog_reader *r, const json_value *list, said_words *out
   size_t n = 0;
   bool sound = true;
   for (const json_value *v = list->first; v; v = v->next) {
-    if (v->kind == JSON_STRING && v->string[0] != '\0') words[n++] = v->string;
+    if (v->kind == JSON_STRING && v->string[0] != '\0')
+      words[n++] = v->string;
     else {
       fault(r, v, ERROR_FIELD_TYPE, "expected a word people say, as a string");
       sound = false;
@@ -207,10 +241,13 @@ static bool take_said(catalog_reader *r, const json_value *list, said_words *out
   return sound;
 }
 
-typedef struct head { const json_value *records, *spacings; } head;
+typedef struct head {
+  const json_value *records, *spacings;
+} head;
 
 /* The frame of every file: its kind, its records, and where it has them its spacings. */
-static bool read_head(catalog_reader *r, const json_value *root, const char *kind, bool with_spacings, head *out) {
+static bool read_head(catalog_reader *r, const json_value *root, const char *kind,
+                      bool with_spacings, head *out) {
   static const field table[] = {
       {"septum", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
       {"about", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
@@ -221,7 +258,8 @@ static bool read_head(catalog_reader *r, const json_value *root, const char *kin
   if (!json_is(r->arena, r->diags, root, kind)) return false;
   bool sound = fields_read(r->arena, r->diags, root, table, with_spacings ? 4 : 3, out);
   if (!out->records) return false;
-  if (out->records->kind != JSON_ARRAY || out->records->count == 0 || out->records->count > CATALOG_MAX_RECORDS) {
+  if (out->records->kind != JSON_ARRAY || out->records->count == 0 ||
+      out->records->count > CATALOG_MAX_RECORDS) {
     fault(r, out->records, ERROR_FIELD_TYPE, "expected an array of 1 to 1000 records");
     out->records = NULL;
     return false;
@@ -238,9 +276,11 @@ static bool read_spacings(catalog_reader *r, const json_value *list, int **out, 
   int *values = arena_array(r->arena, list->count, sizeof *values);
   size_t n = 0;
   for (const json_value *v = list->first; v; v = v->next) {
-    bool whole = v->kind == JSON_NUMBER && v->number >= 100 && v->number <= 2000 && v->number == (double)(int)v->number;
+    bool whole = v->kind == JSON_NUMBER && v->number >= 100 && v->number <= 2000 &&
+                 v->number == (double)(int)v->number;
     if (!whole || (n > 0 && (int)v->number <= values[n - 1])) {
-      fault(r, v, ERROR_FIELD_RANGE, "expected a whole number of mm from 100 to 2000, larger than the one before");
+      fault(r, v, ERROR_FIELD_RANGE,
+            "expected a whole number of mm from 100 to 2000, larger than the one before");
       return false;
     }
     values[n++] = (int)v->number;
@@ -250,7 +290,8 @@ static bool read_spacings(catalog_reader *r, const json_value *list, int **out, 
   return true;
 }
 
-/* Critical frequency x thickness gives the stiffness: fc = c^2 / (2 pi) sqrt(m / B) (any text on bending waves). */
+/* Critical frequency x thickness gives the stiffness: fc = c^2 / (2 pi) sqrt(m / B) (any text on
+ * bending waves). */
 static double bending_stiffness(const layer *l) {
   static const double pi = 3.14159265358979323846;
   static const double sound_speed = 343.0; /* m/s at 20 degrees C */
@@ -263,11 +304,13 @@ static double bending_stiffness(const layer *l) {
 static bool check_layer(catalog_reader *r, const json_value *record, const layer *l) {
   bool sound = true;
   if (!l->membrane && l->coincidence_m_s <= 0) {
-    fault(r, record, ERROR_FIELD_MISSING, "expected \"coincidence_m_s\": a board has a critical frequency");
+    fault(r, record, ERROR_FIELD_MISSING,
+          "expected \"coincidence_m_s\": a board has a critical frequency");
     sound = false;
   }
   if (l->membrane && (l->coincidence_m_s > 0 || l->face || l->face_if_asked || l->backing)) {
-    fault(r, record, ERROR_FIELD_CONFLICT, "a membrane has no critical frequency and is neither face nor backing");
+    fault(r, record, ERROR_FIELD_CONFLICT,
+          "a membrane has no critical frequency and is neither face nor backing");
     sound = false;
   }
   if (l->material == LAYER_DAMPING && l->loss_factor <= 0) {
@@ -275,7 +318,8 @@ static bool check_layer(catalog_reader *r, const json_value *record, const layer
     sound = false;
   }
   if ((l->type_c && !l->type_x) || (l->type_x && l->regular)) {
-    fault(r, record, ERROR_FIELD_CONFLICT, "Type C boards are Type X too, and regular boards are neither");
+    fault(r, record, ERROR_FIELD_CONFLICT,
+          "Type C boards are Type X too, and regular boards are neither");
     sound = false;
   }
   return sound;
@@ -304,14 +348,18 @@ bool catalog_read_layers(catalog_reader *r, const json_value *root, catalog *out
 
 static bool check_frame(catalog_reader *r, const json_value *record, const frame *f) {
   bool sound = true;
-  bool steel_parts = f->mil > 0 && f->steel_thickness_m > 0 && f->flange_m > 0 && f->inertia_effective_m4 > 0 && f->moment_n_m > 0;
+  bool steel_parts = f->mil > 0 && f->steel_thickness_m > 0 && f->flange_m > 0 &&
+                     f->inertia_effective_m4 > 0 && f->moment_n_m > 0;
   if (f->material == FRAME_STEEL && !steel_parts) {
     fault(r, record, ERROR_FIELD_MISSING,
-          "expected \"mil\", \"steel_thickness_mm\", \"flange_mm\", \"inertia_effective_mm4\" and \"moment_n_m\" for steel");
+          "expected \"mil\", \"steel_thickness_mm\", \"flange_mm\", \"inertia_effective_mm4\" and "
+          "\"moment_n_m\" for steel");
     sound = false;
   }
-  if (f->material == FRAME_WOOD && (f->stud_width_m <= 0 || f->mil > 0 || f->steel_thickness_m > 0)) {
-    fault(r, record, ERROR_FIELD_CONFLICT, "expected \"stud_width_mm\" and nothing of steel for wood");
+  if (f->material == FRAME_WOOD &&
+      (f->stud_width_m <= 0 || f->mil > 0 || f->steel_thickness_m > 0)) {
+    fault(r, record, ERROR_FIELD_CONFLICT,
+          "expected \"stud_width_mm\" and nothing of steel for wood");
     sound = false;
   }
   bool deeper = f->row_depth_m > f->stud_depth_m;
@@ -326,7 +374,8 @@ static bool check_frame(catalog_reader *r, const json_value *record, const frame
 bool catalog_read_frames(catalog_reader *r, const json_value *root, catalog *out) {
   head h;
   bool sound = read_head(r, root, "frames", true, &h);
-  if (h.spacings) sound = read_spacings(r, h.spacings, &out->spacings_mm, &out->spacing_count) && sound;
+  if (h.spacings)
+    sound = read_spacings(r, h.spacings, &out->spacings_mm, &out->spacing_count) && sound;
   if (!h.records) return false;
   out->frames = arena_array(r->arena, h.records->count, sizeof *out->frames);
   for (const json_value *v = h.records->first; v; v = v->next) {
@@ -349,7 +398,8 @@ static bool check_fill(catalog_reader *r, const json_value *record, const fill *
   static const double rounding = 0.02;
   double expected = f->density_kg_m3 * f->thickness_m;
   if (f->mass_kg_m2 > expected * (1 + rounding) || f->mass_kg_m2 < expected * (1 - rounding)) {
-    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_CONFLICT, json_place(r->arena, at_key(record, "mass_kg_m2")),
+    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_CONFLICT,
+             json_place(r->arena, at_key(record, "mass_kg_m2")),
              "expected density x thickness, %s kg/m2, found %s", text_of(r->arena, expected, 2),
              text_of(r->arena, f->mass_kg_m2, 2));
     return false;
@@ -376,11 +426,14 @@ bool catalog_read_fills(catalog_reader *r, const json_value *root, catalog *out)
 }
 
 static bool check_mount(catalog_reader *r, const json_value *record, const mount *m) {
-  bool clip_parts = m->clip && m->clip_mass_kg > 0 && m->clip_capacity_kg > 0 && m->clip_spacing_mm > 0;
-  bool any_part = m->clip || m->clip_mass_kg > 0 || m->clip_capacity_kg > 0 || m->clip_spacing_mm > 0;
+  bool clip_parts =
+      m->clip && m->clip_mass_kg > 0 && m->clip_capacity_kg > 0 && m->clip_spacing_mm > 0;
+  bool any_part =
+      m->clip || m->clip_mass_kg > 0 || m->clip_capacity_kg > 0 || m->clip_spacing_mm > 0;
   if (m->clips ? !clip_parts : any_part) {
     fault(r, record, ERROR_FIELD_CONFLICT,
-          "expected \"clip\", \"clip_mass_kg\", \"clip_capacity_kg\" and \"max_clip_spacing_mm\" for clips, none for a channel");
+          "expected \"clip\", \"clip_mass_kg\", \"clip_capacity_kg\" and \"max_clip_spacing_mm\" "
+          "for clips, none for a channel");
     return false;
   }
   return true;
@@ -389,7 +442,9 @@ static bool check_mount(catalog_reader *r, const json_value *record, const mount
 bool catalog_read_mounts(catalog_reader *r, const json_value *root, catalog *out) {
   head h;
   bool sound = read_head(r, root, "mounts", true, &h);
-  if (h.spacings) sound = read_spacings(r, h.spacings, &out->mount_spacings_mm, &out->mount_spacing_count) && sound;
+  if (h.spacings)
+    sound =
+        read_spacings(r, h.spacings, &out->mount_spacings_mm, &out->mount_spacing_count) && sound;
   if (!h.records) return false;
   out->mounts = arena_array(r->arena, h.records->count, sizeof *out->mounts);
   for (const json_value *v = h.records->first; v; v = v->next) {
@@ -407,10 +462,14 @@ bool catalog_read_mounts(catalog_reader *r, const json_value *root, catalog *out
 
 static bool check_target(catalog_reader *r, const json_value *record, const target_row *t) {
   bool known = false;
-  for (int i = 0; i < METRIC_COUNT; i++) known = known || text_equal(t->metric, sound_metric_names[i]);
-  if (!known) fault(r, at_key(record, "metric"), ERROR_FIELD_CHOICE, "expected STC, Rw, Rw+C, Rw+Ctr or OITC");
+  for (int i = 0; i < METRIC_COUNT; i++)
+    known = known || text_equal(t->metric, sound_metric_names[i]);
+  if (!known)
+    fault(r, at_key(record, "metric"), ERROR_FIELD_CHOICE,
+          "expected STC, Rw, Rw+C, Rw+Ctr or OITC");
   if (t->field_value > t->value) {
-    fault(r, at_key(record, "field_value"), ERROR_FIELD_RANGE, "expected at most the laboratory value");
+    fault(r, at_key(record, "field_value"), ERROR_FIELD_RANGE,
+          "expected at most the laboratory value");
     known = false;
   }
   return known;

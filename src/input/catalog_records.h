@@ -1,4 +1,5 @@
-/* Reads the records of one catalog file each: boards, frames, fills, mounts, targets. Part of catalog.c, split for size. */
+/* Reads the records of one catalog file each: boards, frames, fills, mounts, targets. Part of
+ * catalog.c, split for size. */
 #ifndef INPUT_CATALOG_RECORDS_H
 #define INPUT_CATALOG_RECORDS_H
 
@@ -12,7 +13,8 @@ typedef struct catalog_reader {
   size_t id_count, id_cap;
 } catalog_reader;
 
-/* Each reads the file `root` into `out` (its arrays and counts), reports every fault and goes on. True when sound. */
+/* Each reads the file `root` into `out` (its arrays and counts), reports every fault and goes on.
+ * True when sound. */
 bool catalog_read_layers(catalog_reader *r, const json_value *root, catalog *out);
 bool catalog_read_frames(catalog_reader *r, const json_value *root, catalog *out);
 bool catalog_read_fills(catalog_reader *r, const json_value *root, catalog *out);

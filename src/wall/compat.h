@@ -8,8 +8,8 @@ typedef enum compat_level { COMPAT_FINE, COMPAT_UNUSUAL, COMPAT_ILLEGAL } compat
 
 typedef struct compat_finding {
   compat_level level;
-  const char *rule;    /* short name: "batt-fit" */
-  const char *reason;  /* a sentence */
+  const char *rule;   /* short name: "batt-fit" */
+  const char *reason; /* a sentence */
   const char *source;
 } compat_finding;
 
@@ -20,17 +20,20 @@ typedef struct compat_report {
   compat_finding finding[COMPAT_MAX];
 } compat_report;
 
-/* All findings of a wall, each rule once. Unusual ones are cautions for rate and keep a wall out of ordinary enumeration; one of
- * level fine is a note only. The wall's indices must be of `c`, its frame included. */
+/* All findings of a wall, each rule once. Unusual ones are cautions for rate and keep a wall out of
+ * ordinary enumeration; one of level fine is a note only. The wall's indices must be of `c`, its
+ * frame included. */
 void compat_check(const catalog *c, const wall *w, compat_report *out);
-/* The pieces the enumeration uses, so that it never builds what compat_check would refuse. `rate` and `pick` agree by test:
- * every enumerated wall has no illegal finding, and in ordinary build no unusual one. */
-compat_level compat_face(const catalog *c, const face *f);                 /* a leaf on its own */
+/* The pieces the enumeration uses, so that it never builds what compat_check would refuse. `rate`
+ * and `pick` agree by test: every enumerated wall has no illegal finding, and in ordinary build no
+ * unusual one. */
+compat_level compat_face(const catalog *c, const face *f);                   /* a leaf on its own */
 compat_level compat_fill(const catalog *c, int frame_index, int fill_index); /* batt in a row */
-compat_level compat_core(const catalog *c, const wall *core);              /* frame, spacing, fills, gap, mounts; faces ignored */
+compat_level compat_core(const catalog *c,
+                         const wall *core); /* frame, spacing, fills, gap, mounts; faces ignored */
 compat_level compat_face_on_core(const catalog *c, const wall *core, int side, const face *f);
-compat_level compat_pair(const catalog *c, const face *a, const face *b);  /* ordinary build: counts and kinds of both sides */
-
+compat_level compat_pair(const catalog *c, const face *a,
+                         const face *b); /* ordinary build: counts and kinds of both sides */
 
 /* Every rule with its level, reason and source: for tests and pages. */
 const compat_finding *compat_rules(size_t *count);

@@ -5,13 +5,16 @@
 #include "base/units.h"
 #include "wall/parts.h"
 
-/* Grammar and meaning: docs/formats/wall.md. The line is cut at `|`, the segment that starts with a frame is found, and
- * the segments before and after it must be face, mount, on-face from the outside inwards. */
+/* Grammar and meaning: docs/formats/wall.md. The line is cut at `|`, the segment that starts with a
+ * frame is found, and the segments before and after it must be face, mount, on-face from the
+ * outside inwards. */
 
 enum { LINE_MAX = 2000, SEGMENTS_MIN = 3, SEGMENTS_MAX = 7, REPEAT_MAX = 3 };
 
 /* A stretch of the line: bytes [from, to). */
-typedef struct span { size_t from, to; } span;
+typedef struct span {
+  size_t from, to;
+} span;
 
 typedef struct parser {
   arena *arena;
@@ -27,7 +30,9 @@ static void fault(parser *p, error_code code, size_t at, const char *message) {
   p->sound = false;
 }
 
-static bool blank(char ch) { return ch == ' ' || ch == '\t'; }
+static bool blank(char ch) {
+  return ch == ' ' || ch == '\t';
+}
 
 static span trim(const parser *p, span s) {
   while (s.from < s.to && blank(p->line[s.from])) s.from++;
@@ -35,7 +40,9 @@ static span trim(const parser *p, span s) {
   return s;
 }
 
-static const char *word_of(const parser *p, span s) { return text_copyn(p->arena, p->line + s.from, s.to - s.from); }
+static const char *word_of(const parser *p, span s) {
+  return text_copyn(p->arena, p->line + s.from, s.to - s.from);
+}
 
 /* The first `ch` in s, or s.to. */
 static size_t find(const parser *p, span s, char ch) {
@@ -44,7 +51,8 @@ static size_t find(const parser *p, span s, char ch) {
   return i;
 }
 
-/* Cuts the next piece up to `ch` off *rest; false when nothing is left. An empty piece after the last `ch` counts. */
+/* Cuts the next piece up to `ch` off *rest; false when nothing is left. An empty piece after the
+ * last `ch` counts. */
 static bool next_piece(const parser *p, span *rest, char ch, span *piece) {
   if (rest->from > rest->to) return false;
   size_t end = find(p, *rest, ch);
@@ -55,10 +63,12 @@ static bool next_piece(const parser *p, span *rest, char ch, span *piece) {
 
 /* ---- ids ---- */
 
-/* The record that the words in s name, of `kind` (CATALOG_KINDS: any). Reports what it cannot find. */
+/* The record that the words in s name, of `kind` (CATALOG_KINDS: any). Reports what it cannot find.
+ */
 static bool read_id(parser *p, span s, catalog_kind kind, const char *expected, catalog_ref *out) {
   if (s.from >= s.to) {
-    fault(p, ERROR_WALL_SYNTAX, s.from, text_format(p->arena, "expected %s, found nothing", expected));
+    fault(p, ERROR_WALL_SYNTAX, s.from,
+          text_format(p->arena, "expected %s, found nothing", expected));
     return false;
   }
   part_answer answer = part_find(p->arena, p->catalog, word_of(p, s), kind, expected, out);
@@ -73,29 +83,37 @@ static int read_mm(parser *p, span s, const char *expected) {
   double metres = 0;
   const char *wanted = NULL;
   const char *word = word_of(p, s);
-  if (s.from < s.to && units_parse_length(word, 1e-3, &metres, &wanted) && metres > 0 && metres < 10) {
+  if (s.from < s.to && units_parse_length(word, 1e-3, &metres, &wanted) && metres > 0 &&
+      metres < 10) {
     return (int)(metres * 1e3 + 0.5);
   }
-  fault(p, ERROR_WALL_SYNTAX, s.from, text_format(p->arena, "expected %s, found \"%s\"", expected, word));
+  fault(p, ERROR_WALL_SYNTAX, s.from,
+        text_format(p->arena, "expected %s, found \"%s\"", expected, word));
   return -1;
 }
 
-static bool all_digits(const char *s) { return *s != '\0' && s[strspn(s, "0123456789")] == '\0'; }
+static bool all_digits(const char *s) {
+  return *s != '\0' && s[strspn(s, "0123456789")] == '\0';
+}
 
-/* A spacing of the list: its nominal mm, or that in inches (`16in`, or bare 12, 16, 24 as people say). */
+/* A spacing of the list: its nominal mm, or that in inches (`16in`, or bare 12, 16, 24 as people
+ * say). */
 static int read_spacing(parser *p, span s, const int *list, size_t count, const char *of) {
   double metres = 0;
   const char *wanted = NULL;
   const char *word = word_of(p, s);
   if (s.from < s.to && units_parse_length(word, 1e-3, &metres, &wanted)) {
     int nominal = part_spacing(metres, list, count);
-    if (nominal == 0 && all_digits(word)) nominal = part_spacing(metres * 1e3 * UNITS_M_PER_IN, list, count);
+    if (nominal == 0 && all_digits(word))
+      nominal = part_spacing(metres * 1e3 * UNITS_M_PER_IN, list, count);
     if (nominal != 0) return nominal;
   }
   text t;
   text_init(&t, p->arena, 200);
-  for (size_t i = 0; i < count; i++) text_putf(&t, "%s@%d", i == 0 ? "" : i + 1 == count ? " or " : ", ", list[i]);
-  fault(p, ERROR_WALL_SYNTAX, s.from, text_format(p->arena, "expected a spacing of %s, %s, found \"%s\"", of, t.data, word));
+  for (size_t i = 0; i < count; i++)
+    text_putf(&t, "%s@%d", i == 0 ? "" : i + 1 == count ? " or " : ", ", list[i]);
+  fault(p, ERROR_WALL_SYNTAX, s.from,
+        text_format(p->arena, "expected a spacing of %s, %s, found \"%s\"", of, t.data, word));
   return 0;
 }
 
@@ -114,7 +132,8 @@ static int read_repeat(parser *p, span *s) {
   }
   if (!number || n < 1 || n > REPEAT_MAX) {
     fault(p, ERROR_WALL_SYNTAX, s->from,
-          text_format(p->arena, "expected 2* or 3* before an item, found \"%s*\"", word_of(p, digits)));
+          text_format(p->arena, "expected 2* or 3* before an item, found \"%s*\"",
+                      word_of(p, digits)));
     n = 0;
   }
   *s = trim(p, (span){star + 1, s->to});
@@ -129,13 +148,15 @@ static void read_face(parser *p, span s, face *out) {
     int n = read_repeat(p, &item);
     size_t end = item.from;
     while (end < item.to && !strchr("@~,", p->line[end])) end++;
-    if (!read_id(p, trim(p, (span){item.from, end}), CATALOG_LAYER, "a board or membrane", &ref)) continue;
+    if (!read_id(p, trim(p, (span){item.from, end}), CATALOG_LAYER, "a board or membrane", &ref))
+      continue;
     if (end < item.to) {
       fault(p, ERROR_WALL_SYNTAX, end, "expected + or | after an item of a face");
       continue;
     }
     if (out->count + n > WALL_MAX_LAYERS) {
-      fault(p, ERROR_WALL_SYNTAX, item.from, text_format(p->arena, "expected at most %d layers", (int)WALL_MAX_LAYERS));
+      fault(p, ERROR_WALL_SYNTAX, item.from,
+            text_format(p->arena, "expected at most %d layers", (int)WALL_MAX_LAYERS));
       return;
     }
     while (n-- > 0) out->layer[out->count++] = ref.index;
@@ -152,7 +173,8 @@ static void read_mount(parser *p, span s, wall_mount *out) {
   out->mount = ref.index;
   out->clip_spacing_mm = type->clips ? type->clip_spacing_mm : 0;
   if (at == s.to) {
-    fault(p, ERROR_WALL_SYNTAX, s.to, text_format(p->arena, "expected the spacing of its rows, such as %s@610", type->id));
+    fault(p, ERROR_WALL_SYNTAX, s.to,
+          text_format(p->arena, "expected the spacing of its rows, such as %s@610", type->id));
     return;
   }
   span spacing = {at + 1, s.to};
@@ -172,7 +194,8 @@ static void read_mount(parser *p, span s, wall_mount *out) {
 
 static void read_gap(parser *p, span s, const frame *f, wall *out) {
   if (f->layout != FRAME_DOUBLE) {
-    fault(p, ERROR_WALL_SYNTAX, s.from - 1, text_format(p->arena, "expected no gap: %s has one row", f->id));
+    fault(p, ERROR_WALL_SYNTAX, s.from - 1,
+          text_format(p->arena, "expected no gap: %s has one row", f->id));
     return;
   }
   int mm = read_mm(p, trim(p, s), "the gap between the rows in mm");
@@ -190,10 +213,12 @@ static void read_frame(parser *p, span s, wall *out) {
   out->frame = ref.index;
   out->gap_mm = f->layout == FRAME_DOUBLE ? PART_GAP_DEFAULT_MM : 0;
   if (at == s.to) {
-    fault(p, ERROR_WALL_SYNTAX, end, text_format(p->arena, "expected the spacing of its studs, such as %s@406", f->id));
+    fault(p, ERROR_WALL_SYNTAX, end,
+          text_format(p->arena, "expected the spacing of its studs, such as %s@406", f->id));
   } else {
     span spacing = {at + 1, tilde > at ? tilde : s.to};
-    out->spacing_mm = read_spacing(p, trim(p, spacing), p->catalog->spacings_mm, p->catalog->spacing_count, "studs");
+    out->spacing_mm = read_spacing(p, trim(p, spacing), p->catalog->spacings_mm,
+                                   p->catalog->spacing_count, "studs");
   }
   if (tilde < s.to) read_gap(p, (span){tilde + 1, at > tilde ? at : s.to}, f, out);
 }
@@ -207,7 +232,8 @@ static bool starts_with(const parser *p, span s, const char *word, span *after) 
   return true;
 }
 
-static void read_inner(parser *p, span item, span faces, int side, const frame *f, bool seen[2], wall *out) {
+static void read_inner(parser *p, span item, span faces, int side, const frame *f, bool seen[2],
+                       wall *out) {
   if (f && f->layout != FRAME_DOUBLE) {
     fault(p, ERROR_WALL_SYNTAX, item.from, "expected inner faces on frames of two rows only");
   } else if (seen[side] || (side == SIDE_A && seen[SIDE_B])) {
@@ -222,10 +248,12 @@ static void read_fill(parser *p, span item, int row, int rows, wall *out) {
   bool dash = item.to - item.from == 1 && p->line[item.from] == '-';
   if (row >= rows) {
     fault(p, ERROR_WALL_SYNTAX, item.from,
-          rows == 1 ? "expected one fill at most: the frame has one row" : "expected two fills at most: the frame has two rows");
+          rows == 1 ? "expected one fill at most: the frame has one row"
+                    : "expected two fills at most: the frame has two rows");
     return;
   }
-  if (!dash && read_id(p, item, CATALOG_FILL, "a fill, or - for an empty row", &ref)) out->fill[row] = ref.index;
+  if (!dash && read_id(p, item, CATALOG_FILL, "a fill, or - for an empty row", &ref))
+    out->fill[row] = ref.index;
 }
 
 /* `frame [, fill]... [, inner-a face] [, inner-b face]` */
@@ -237,16 +265,26 @@ static void read_core(parser *p, span s, wall *out) {
   read_frame(p, item, out);
   const frame *f = out->frame == CATALOG_NONE ? NULL : &p->catalog->frames[out->frame];
   while (next_piece(p, &rest, ',', &item)) {
-    if (starts_with(p, item, "inner-a", &faces)) read_inner(p, item, faces, SIDE_A, f, seen, out);
-    else if (starts_with(p, item, "inner-b", &faces)) read_inner(p, item, faces, SIDE_B, f, seen, out);
-    else if (seen[SIDE_A] || seen[SIDE_B]) fault(p, ERROR_WALL_SYNTAX, item.from, "expected fills before inner faces");
-    else read_fill(p, item, row++, f ? f->rows : 2, out);
+    if (starts_with(p, item, "inner-a", &faces))
+      read_inner(p, item, faces, SIDE_A, f, seen, out);
+    else if (starts_with(p, item, "inner-b", &faces))
+      read_inner(p, item, faces, SIDE_B, f, seen, out);
+    else if (seen[SIDE_A] || seen[SIDE_B])
+      fault(p, ERROR_WALL_SYNTAX, item.from, "expected fills before inner faces");
+    else
+      read_fill(p, item, row++, f ? f->rows : 2, out);
   }
 }
 
 /* ---- the line ---- */
 
-typedef enum segment_kind { SEGMENT_UNKNOWN, SEGMENT_FACE, SEGMENT_MOUNT, SEGMENT_ON, SEGMENT_FRAME } segment_kind;
+typedef enum segment_kind {
+  SEGMENT_UNKNOWN,
+  SEGMENT_FACE,
+  SEGMENT_MOUNT,
+  SEGMENT_ON,
+  SEGMENT_FRAME
+} segment_kind;
 
 /* What a segment is, from the catalog that its first id stands in. */
 static segment_kind classify(const parser *p, span s) {
@@ -256,14 +294,17 @@ static segment_kind classify(const parser *p, span s) {
   while (end < s.to && !strchr("+,@~", p->line[end])) end++;
   span first = trim(p, (span){star < end ? star + 1 : s.from, end});
   catalog_ref ref[1];
-  if (first.from >= first.to || catalog_find(p->catalog, word_of(p, first), ref, 1) == 0) return SEGMENT_UNKNOWN;
+  if (first.from >= first.to || catalog_find(p->catalog, word_of(p, first), ref, 1) == 0)
+    return SEGMENT_UNKNOWN;
   if (ref[0].kind == CATALOG_FRAME) return SEGMENT_FRAME;
   if (ref[0].kind == CATALOG_MOUNT) return SEGMENT_MOUNT;
   return ref[0].kind == CATALOG_LAYER ? SEGMENT_FACE : SEGMENT_UNKNOWN;
 }
 
-/* The segments of one side, from the room inwards: seg[first], then in steps of `step`, n of them. */
-static void read_side(parser *p, const span *seg, const segment_kind *kind, int first, int step, int n, int side, wall *out) {
+/* The segments of one side, from the room inwards: seg[first], then in steps of `step`, n of them.
+ */
+static void read_side(parser *p, const span *seg, const segment_kind *kind, int first, int step,
+                      int n, int side, wall *out) {
   int next = 0;
   read_face(p, seg[first], &out->side[side]);
   next = 1;
@@ -273,22 +314,28 @@ static void read_side(parser *p, const span *seg, const segment_kind *kind, int 
   }
   if (next < n) {
     span s = seg[first + next * step], after = s;
-    if (next < 2) fault(p, ERROR_WALL_SYNTAX, s.from, "expected a mount before \"on\": boards on the stud under a mount");
-    if (!starts_with(p, s, "on", &after)) fault(p, ERROR_WALL_SYNTAX, s.from, "expected \"on\" and a face here");
+    if (next < 2)
+      fault(p, ERROR_WALL_SYNTAX, s.from,
+            "expected a mount before \"on\": boards on the stud under a mount");
+    if (!starts_with(p, s, "on", &after))
+      fault(p, ERROR_WALL_SYNTAX, s.from, "expected \"on\" and a face here");
     read_face(p, after, &out->sheath[side]);
     next++;
   }
-  if (next < n) fault(p, ERROR_WALL_SYNTAX, seg[first + next * step].from, "expected face, mount, on-face, then the frame");
+  if (next < n)
+    fault(p, ERROR_WALL_SYNTAX, seg[first + next * step].from,
+          "expected face, mount, on-face, then the frame");
 }
 
 static void check_side(parser *p, span face_span, int side, const wall *w) {
   if (w->side[side].count + w->sheath[side].count > WALL_MAX_LAYERS) {
-    fault(p, ERROR_WALL_SYNTAX, face_span.from, text_format(p->arena, "expected at most %d layers a side", (int)WALL_MAX_LAYERS));
+    fault(p, ERROR_WALL_SYNTAX, face_span.from,
+          text_format(p->arena, "expected at most %d layers a side", (int)WALL_MAX_LAYERS));
   }
 }
 
-/* Where the frame is: the segment that starts with one. Without any, the one the order leaves over when all others are
- * known; else none. */
+/* Where the frame is: the segment that starts with one. Without any, the one the order leaves over
+ * when all others are known; else none. */
 static int frame_segment(parser *p, const span *seg, const segment_kind *kind, int n) {
   int found = -1, unknown = -1, unknowns = 0;
   for (int i = 0; i < n; i++) {
@@ -297,8 +344,10 @@ static int frame_segment(parser *p, const span *seg, const segment_kind *kind, i
       unknowns++;
     }
     if (kind[i] != SEGMENT_FRAME) continue;
-    if (found >= 0) fault(p, ERROR_WALL_SYNTAX, seg[i].from, "expected one frame, found a second");
-    else found = i;
+    if (found >= 0)
+      fault(p, ERROR_WALL_SYNTAX, seg[i].from, "expected one frame, found a second");
+    else
+      found = i;
   }
   if (found < 0 && unknowns == 1 && unknown > 0 && unknown < n - 1) return unknown;
   return found;
@@ -321,7 +370,8 @@ static void read_line(parser *p, wall *out) {
   int n = 0;
   while (next_piece(p, &rest, '|', &piece)) {
     if (n == SEGMENTS_MAX) {
-      fault(p, ERROR_WALL_SYNTAX, piece.from, "expected 3 to 5 parts between |, 7 with a mount over boards on both sides");
+      fault(p, ERROR_WALL_SYNTAX, piece.from,
+            "expected 3 to 5 parts between |, 7 with a mount over boards on both sides");
       return;
     }
     seg[n++] = piece;
@@ -334,8 +384,10 @@ static void read_line(parser *p, wall *out) {
   int at = frame_segment(p, seg, kind, n);
   if (at <= 0 || at == n - 1) {
     report_unknown(p, seg, kind, n);
-    if (at >= 0) fault(p, ERROR_WALL_SYNTAX, seg[at].from, "expected a face on each side of the frame");
-    else if (p->sound) fault(p, ERROR_WALL_SYNTAX, 0, "expected a frame between the faces, found none");
+    if (at >= 0)
+      fault(p, ERROR_WALL_SYNTAX, seg[at].from, "expected a face on each side of the frame");
+    else if (p->sound)
+      fault(p, ERROR_WALL_SYNTAX, 0, "expected a frame between the faces, found none");
     return;
   }
   read_side(p, seg, kind, 0, 1, at, SIDE_A, out);
@@ -372,7 +424,8 @@ static void put_face(text *t, const catalog *c, const face *f) {
 static void put_mount(text *t, const catalog *c, const wall_mount *m) {
   const mount *type = &c->mounts[m->mount];
   text_putf(t, "%s@%d", type->id, m->spacing_mm);
-  if (type->clips && m->clip_spacing_mm != type->clip_spacing_mm) text_putf(t, "x%d", m->clip_spacing_mm);
+  if (type->clips && m->clip_spacing_mm != type->clip_spacing_mm)
+    text_putf(t, "x%d", m->clip_spacing_mm);
 }
 
 static void put_core(text *t, const catalog *c, const wall *w) {
@@ -381,7 +434,8 @@ static void put_core(text *t, const catalog *c, const wall *w) {
   if (f->layout == FRAME_DOUBLE && w->gap_mm != PART_GAP_DEFAULT_MM) text_putf(t, "~%d", w->gap_mm);
   int last = f->rows;
   while (last > 0 && w->fill[last - 1] == CATALOG_NONE) last--;
-  for (int r = 0; r < last; r++) text_putf(t, ", %s", w->fill[r] == CATALOG_NONE ? "-" : c->fills[w->fill[r]].id);
+  for (int r = 0; r < last; r++)
+    text_putf(t, ", %s", w->fill[r] == CATALOG_NONE ? "-" : c->fills[w->fill[r]].id);
   for (int s = 0; s < 2; s++) {
     if (w->inner[s].count == 0) continue;
     text_put(t, s == SIDE_A ? ", inner-a " : ", inner-b ");

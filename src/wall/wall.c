@@ -10,7 +10,10 @@ wall wall_empty(void) {
 
 double wall_spacing_m(int nominal_mm) {
   /* Metric names of spacings that are laid out in inches. */
-  static const struct { int nominal_mm; double inches; } inch_goods[] = {{305, 12}, {406, 16}, {610, 24}, {813, 32}, {1219, 48}};
+  static const struct {
+    int nominal_mm;
+    double inches;
+  } inch_goods[] = {{305, 12}, {406, 16}, {610, 24}, {813, 32}, {1219, 48}};
   for (size_t i = 0; i < sizeof inch_goods / sizeof inch_goods[0]; i++) {
     if (inch_goods[i].nominal_mm == nominal_mm) return inch_goods[i].inches * UNITS_M_PER_IN;
   }
@@ -35,13 +38,17 @@ int face_boards(const catalog *c, const face *f) {
   return boards;
 }
 
-bool wall_is_double(const catalog *c, const wall *w) { return c->frames[w->frame].layout == FRAME_DOUBLE; }
+bool wall_is_double(const catalog *c, const wall *w) {
+  return c->frames[w->frame].layout == FRAME_DOUBLE;
+}
 
 bool wall_is_mounted(const wall *w) {
   return w->mount[SIDE_A].mount != CATALOG_NONE || w->mount[SIDE_B].mount != CATALOG_NONE;
 }
 
-double wall_cavity_m(const catalog *c, const wall *w) { return c->frames[w->frame].row_depth_m; }
+double wall_cavity_m(const catalog *c, const wall *w) {
+  return c->frames[w->frame].row_depth_m;
+}
 
 double wall_thickness_m(const catalog *c, const wall *w) {
   const frame *f = &c->frames[w->frame];
@@ -73,7 +80,8 @@ double wall_mass_kg_m2(const catalog *c, const wall *w, double height_m) {
     if (w->fill[r] != CATALOG_NONE) mass += c->fills[w->fill[r]].mass_kg_m2;
   }
   for (int s = 0; s < 2; s++) {
-    mass += face_mass_kg_m2(c, &w->side[s]) + face_mass_kg_m2(c, &w->sheath[s]) + face_mass_kg_m2(c, &w->inner[s]);
+    mass += face_mass_kg_m2(c, &w->side[s]) + face_mass_kg_m2(c, &w->sheath[s]) +
+            face_mass_kg_m2(c, &w->inner[s]);
     mass += mount_mass_kg_m2(c, &w->mount[s]);
   }
   return mass;
@@ -122,14 +130,17 @@ static bool same_face(const face *a, const face *b) {
 
 static bool same_mount(const wall_mount *a, const wall_mount *b) {
   if (a->mount != b->mount) return false;
-  return a->mount == CATALOG_NONE || (a->spacing_mm == b->spacing_mm && a->clip_spacing_mm == b->clip_spacing_mm);
+  return a->mount == CATALOG_NONE ||
+         (a->spacing_mm == b->spacing_mm && a->clip_spacing_mm == b->clip_spacing_mm);
 }
 
 bool wall_same(const wall *a, const wall *b) {
-  if (a->frame != b->frame || a->spacing_mm != b->spacing_mm || a->gap_mm != b->gap_mm) return false;
+  if (a->frame != b->frame || a->spacing_mm != b->spacing_mm || a->gap_mm != b->gap_mm)
+    return false;
   for (int s = 0; s < 2; s++) {
     if (a->fill[s] != b->fill[s] || !same_mount(&a->mount[s], &b->mount[s])) return false;
-    if (!same_face(&a->side[s], &b->side[s]) || !same_face(&a->sheath[s], &b->sheath[s])) return false;
+    if (!same_face(&a->side[s], &b->side[s]) || !same_face(&a->sheath[s], &b->sheath[s]))
+      return false;
     if (!same_face(&a->inner[s], &b->inner[s])) return false;
   }
   return true;

@@ -15,25 +15,27 @@ typedef struct face {
 } face;
 
 typedef struct wall_mount {
-  int mount;           /* CATALOG_NONE without */
+  int mount; /* CATALOG_NONE without */
   int spacing_mm;
   int clip_spacing_mm; /* clips: along the row, default 1219; 0 for channel */
 } wall_mount;
 
 typedef struct wall {
-  face side[2];        /* the leaf at the room */
-  face sheath[2];      /* on the stud, under a mount */
-  face inner[2];       /* on the inner face of a row of a double frame */
+  face side[2];   /* the leaf at the room */
+  face sheath[2]; /* on the stud, under a mount */
+  face inner[2];  /* on the inner face of a row of a double frame */
   int frame;
-  int spacing_mm;      /* nominal: 305 406 610 */
-  int gap_mm;          /* between the rows of a double frame, else 0 */
-  int fill[2];         /* per row, A's first; CATALOG_NONE = empty. Single and staggered frames use [0] only */
+  int spacing_mm; /* nominal: 305 406 610 */
+  int gap_mm;     /* between the rows of a double frame, else 0 */
+  int fill[2]; /* per row, A's first; CATALOG_NONE = empty. Single and staggered frames use [0] only
+                */
   wall_mount mount[2];
 } wall;
 
 /* An empty wall: no layers, no fills, no mounts. */
 wall wall_empty(void);
-/* Metres for a nominal spacing: 305 -> 0.3048, 406 -> 0.4064, 610 -> 0.6096 (inch goods are exact). */
+/* Metres for a nominal spacing: 305 -> 0.3048, 406 -> 0.4064, 610 -> 0.6096 (inch goods are exact).
+ */
 double wall_spacing_m(int nominal_mm);
 double wall_thickness_m(const catalog *c, const wall *w);
 /* Depth of one row's cavity (stud depth, or common plate). */
@@ -48,7 +50,8 @@ bool wall_is_double(const catalog *c, const wall *w);
 bool wall_is_mounted(const wall *w);
 /* The wall seen from the other room. */
 wall wall_mirrored(const catalog *c, const wall *w);
-/* The wall without its mounts: leaf screwed to the stud (a mounted leaf with a sheath keeps both). */
+/* The wall without its mounts: leaf screwed to the stud (a mounted leaf with a sheath keeps both).
+ */
 wall wall_short_circuited(const wall *w);
 bool wall_same(const wall *a, const wall *b);
 

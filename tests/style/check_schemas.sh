@@ -14,7 +14,7 @@ if ! "$python" -c 'import jsonschema' 2>/dev/null; then
   exit 0
 fi
 exec "$python" - "$root" <<'PY'
-import glob, json, os, sys
+import glob, json, os, re, sys
 from jsonschema import Draft202012Validator
 
 root = sys.argv[1]
@@ -65,6 +65,17 @@ for path in sorted(glob.glob(root + "/tests/data/schemas/wrong/*.json")):
     counts["wrong"] += 1
     if not errors(path):
         say(path, "should have been refused")
+
+# The keys that the reader knows are the keys that the schema knows (lengths: _m in the table, _mm in the files).
+reader = open(root + "/src/input/catalog_records.c", encoding="utf-8").read()
+tables = {"layer": "boards", "frame": "frames", "fill": "fills", "mount": "mounts", "target": "targets"}
+for table, kind in tables.items():
+    body = re.search(r"static const field %s_fields\[\] = \{(.*?)\n\};" % table, reader, re.S).group(1)
+    rows = re.findall(r"\{\"([a-z0-9_]+)\", (FIELD_[A-Z]+)", body)
+    read = {key[:-1] + "mm" if how == "FIELD_LENGTH" and not key.startswith("max_height") else key for key, how in rows}
+    known = set(schemas[kind].schema["$defs"]["record"]["properties"])
+    if read != known:
+        faults.append("%s: reader and schema differ in %s" % (kind, ", ".join(sorted(read ^ known))))
 
 for kind in ("boards", "frames", "fills", "mounts", "targets", "wall"):
     if not any(os.path.basename(p).startswith(kind + "-") for p in glob.glob(root + "/tests/data/schemas/wrong/*.json")):

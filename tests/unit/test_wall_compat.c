@@ -1,4 +1,5 @@
-/* What may meet: a row a rule, walls that nothing is said about, and the pieces against the whole. */
+/* What may meet: a row a rule, walls that nothing is said about, and the pieces against the whole.
+ */
 #include "wall/compat.h"
 
 #include <check.h>
@@ -21,7 +22,9 @@ static void setup(void) {
   ck_assert_msg(shop != NULL, "the shipped catalogs load");
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static wall parse(const char *line) {
   wall w;
@@ -38,21 +41,46 @@ static bool has(const compat_report *r, const char *rule, compat_level level) {
 
 /* What a line cannot say is changed in the wall after reading. */
 typedef enum change {
-  AS_READ, SECOND_FILL, SPACING_500, ROWS_500, CLIPS_2000, SHEATH, INNER, GAP, NO_GAP
+  AS_READ,
+  SECOND_FILL,
+  SPACING_500,
+  ROWS_500,
+  CLIPS_2000,
+  SHEATH,
+  INNER,
+  GAP,
+  NO_GAP
 } change;
 
 static void apply(wall *w, change what) {
   int osb = catalog_layer(shop, "osb-11");
   switch (what) {
-  case SECOND_FILL: w->fill[1] = w->fill[0]; break;
-  case SPACING_500: w->spacing_mm = 500; break;
-  case ROWS_500: w->mount[SIDE_A].spacing_mm = 500; break;
-  case CLIPS_2000: w->mount[SIDE_A].clip_spacing_mm = 2000; break;
-  case SHEATH: w->sheath[SIDE_A] = (face){1, {osb}}; break;
-  case INNER: w->inner[SIDE_A] = (face){1, {osb}}; break;
-  case GAP: w->gap_mm = 25; break;
-  case NO_GAP: w->gap_mm = 0; break;
-  default: break;
+  case SECOND_FILL:
+    w->fill[1] = w->fill[0];
+    break;
+  case SPACING_500:
+    w->spacing_mm = 500;
+    break;
+  case ROWS_500:
+    w->mount[SIDE_A].spacing_mm = 500;
+    break;
+  case CLIPS_2000:
+    w->mount[SIDE_A].clip_spacing_mm = 2000;
+    break;
+  case SHEATH:
+    w->sheath[SIDE_A] = (face){1, {osb}};
+    break;
+  case INNER:
+    w->inner[SIDE_A] = (face){1, {osb}};
+    break;
+  case GAP:
+    w->gap_mm = 25;
+    break;
+  case NO_GAP:
+    w->gap_mm = 0;
+    break;
+  default:
+    break;
   }
 }
 
@@ -63,32 +91,41 @@ static const struct rule_row {
   change change;
 } rule_rows[] = {
     {"no-board", COMPAT_ILLEGAL, "mlv-5 | wood-89@406 | typex-16", AS_READ},
-    {"damping-between-boards", COMPAT_ILLEGAL, "typex-16 + damp-layer | wood-89@406 | typex-16", AS_READ},
-    {"damping-between-boards", COMPAT_ILLEGAL, "damp-layer + typex-16 | wood-89@406 | typex-16", AS_READ},
-    {"damping-between-boards", COMPAT_ILLEGAL, "typex-16 + damp-layer + mlv-5 + typex-16 | wood-89@406 | typex-16", AS_READ},
+    {"damping-between-boards", COMPAT_ILLEGAL, "typex-16 + damp-layer | wood-89@406 | typex-16",
+     AS_READ},
+    {"damping-between-boards", COMPAT_ILLEGAL, "damp-layer + typex-16 | wood-89@406 | typex-16",
+     AS_READ},
+    {"damping-between-boards", COMPAT_ILLEGAL,
+     "typex-16 + damp-layer + mlv-5 + typex-16 | wood-89@406 | typex-16", AS_READ},
     {"batt-fit", COMPAT_ILLEGAL, "typex-16 | wood-64@406, glass-89 | typex-16", AS_READ},
-    {"batt-fit", COMPAT_ILLEGAL, "typex-16 | wood-89-double@406, glass-89, glass-140 | typex-16", AS_READ},
+    {"batt-fit", COMPAT_ILLEGAL, "typex-16 | wood-89-double@406, glass-89, glass-140 | typex-16",
+     AS_READ},
     {"batt-squeezed", COMPAT_ILLEGAL, "typex-16 | steel-64-18@406, stone-76 | typex-16", AS_READ},
     {"batt-squeezed", COMPAT_ILLEGAL, "typex-16 | steel-41-18@406, stone-50 | typex-16", AS_READ},
     {"fill-rows", COMPAT_ILLEGAL, "typex-16 | wood-89@406, glass-89 | typex-16", SECOND_FILL},
     {"stud-spacing", COMPAT_ILLEGAL, "typex-16 | wood-89@406 | typex-16", SPACING_500},
     {"mount-spacing", COMPAT_ILLEGAL, "typex-16 | rc@610 | wood-89@406 | typex-16", ROWS_500},
     {"clip-spacing", COMPAT_ILLEGAL, "typex-16 | clip@610 | wood-89@406 | typex-16", CLIPS_2000},
-    {"mount-both-sides", COMPAT_ILLEGAL, "typex-16 | rc@610 | wood-89@406 | rc@610 | typex-16", AS_READ},
+    {"mount-both-sides", COMPAT_ILLEGAL, "typex-16 | rc@610 | wood-89@406 | rc@610 | typex-16",
+     AS_READ},
     {"sheath-without-mount", COMPAT_ILLEGAL, "typex-16 | wood-89@406 | typex-16", SHEATH},
     {"inner-single", COMPAT_ILLEGAL, "typex-16 | wood-89@406 | typex-16", INNER},
-    {"inner-full", COMPAT_ILLEGAL, "typex-16 | wood-89-double@406~20, inner-a osb-11, inner-b osb-11 | typex-16", AS_READ},
+    {"inner-full", COMPAT_ILLEGAL,
+     "typex-16 | wood-89-double@406~20, inner-a osb-11, inner-b osb-11 | typex-16", AS_READ},
     {"gap-single", COMPAT_ILLEGAL, "typex-16 | wood-89-stag-140@406 | typex-16", GAP},
     {"gap-missing", COMPAT_ILLEGAL, "typex-16 | wood-89-double@406 | typex-16", NO_GAP},
     {"face-board", COMPAT_UNUSUAL, "fibreboard-13 + typex-16 | wood-89@406 | typex-16", AS_READ},
     {"face-board", COMPAT_UNUSUAL, "mlv-5 + typex-16 | wood-89@406 | typex-16", AS_READ},
     {"face-board", COMPAT_UNUSUAL, "shaft-25 | wood-89@406 | shaft-25", AS_READ},
     {"wood-face", COMPAT_UNUSUAL, "osb-11 | wood-89@406 | osb-11", AS_READ},
-    {"fibreboard-cover", COMPAT_UNUSUAL, "osb-11 + fibreboard-13 | wood-89@406 | typex-16", AS_READ},
+    {"fibreboard-cover", COMPAT_UNUSUAL, "osb-11 + fibreboard-13 | wood-89@406 | typex-16",
+     AS_READ},
     {"cement-behind", COMPAT_UNUSUAL, "typex-16 + cement-13 | wood-89@406 | typex-16", AS_READ},
     {"limp-membrane", COMPAT_UNUSUAL, "typex-16 + mlv-5 | wood-89@406 | typex-16", AS_READ},
-    {"membranes", COMPAT_UNUSUAL, "typex-16 + mlv-5 + typex-16 + mlv-2 | wood-89@406 | typex-16", AS_READ},
-    {"damping-mixed", COMPAT_UNUSUAL, "typex-16 + damp-layer + osb-11 | wood-89@406 | typex-16", AS_READ},
+    {"membranes", COMPAT_UNUSUAL, "typex-16 + mlv-5 + typex-16 + mlv-2 | wood-89@406 | typex-16",
+     AS_READ},
+    {"damping-mixed", COMPAT_UNUSUAL, "typex-16 + damp-layer + osb-11 | wood-89@406 | typex-16",
+     AS_READ},
     {"layers", COMPAT_UNUSUAL, "3*typex-16 | wood-89@406 | 2*typex-16", AS_READ},
     {"mixed-leaf", COMPAT_UNUSUAL, "typec-16 + typex-16 | wood-89@406 | typec-16", AS_READ},
     {"special-board", COMPAT_UNUSUAL, "typec-13 | wood-89@406 | typec-13", AS_READ},
@@ -105,14 +142,20 @@ static const struct rule_row {
     {"batt-loose", COMPAT_UNUSUAL, "typex-16 | wood-140@406, stone-65 | typex-16", AS_READ},
     {"batt-pressed", COMPAT_UNUSUAL, "a thinner stud, see pressed_batt", AS_READ},
     {"cellulose-steel", COMPAT_UNUSUAL, "typex-16 | steel-92-18@406, cell-89 | typex-16", AS_READ},
-    {"rows-differ", COMPAT_UNUSUAL, "typex-16 | wood-89-double@406, glass-89, stone-89 | typex-16", AS_READ},
-    {"mount-light-steel", COMPAT_UNUSUAL, "typex-16 | rc@610 | steel-92-18@610 | typex-16", AS_READ},
+    {"rows-differ", COMPAT_UNUSUAL, "typex-16 | wood-89-double@406, glass-89, stone-89 | typex-16",
+     AS_READ},
+    {"mount-light-steel", COMPAT_UNUSUAL, "typex-16 | rc@610 | steel-92-18@610 | typex-16",
+     AS_READ},
     {"mount-double", COMPAT_UNUSUAL, "typex-16 | rc@610 | wood-89-double@406 | typex-16", AS_READ},
-    {"mount-staggered", COMPAT_FINE, "typex-16 | rc@610 | wood-89-stag-140@406 | typex-16", AS_READ},
+    {"mount-staggered", COMPAT_FINE, "typex-16 | rc@610 | wood-89-stag-140@406 | typex-16",
+     AS_READ},
     {"mount-rows", COMPAT_UNUSUAL, "typex-16 | rc@305 | wood-89@406 | typex-16", AS_READ},
-    {"trapped-layer", COMPAT_UNUSUAL, "typex-16 | rc@610 | on osb-11 | wood-89@406 | typex-16", AS_READ},
-    {"inner-one", COMPAT_UNUSUAL, "typex-16 | wood-89-double@406, inner-a osb-11 | typex-16", AS_READ},
-    {"inner-both", COMPAT_UNUSUAL, "typex-16 | wood-89-double@406, inner-a osb-11, inner-b osb-11 | typex-16", AS_READ},
+    {"trapped-layer", COMPAT_UNUSUAL, "typex-16 | rc@610 | on osb-11 | wood-89@406 | typex-16",
+     AS_READ},
+    {"inner-one", COMPAT_UNUSUAL, "typex-16 | wood-89-double@406, inner-a osb-11 | typex-16",
+     AS_READ},
+    {"inner-both", COMPAT_UNUSUAL,
+     "typex-16 | wood-89-double@406, inner-a osb-11, inner-b osb-11 | typex-16", AS_READ},
     {"gap-narrow", COMPAT_UNUSUAL, "typex-16 | wood-89-double@406~10 | typex-16", AS_READ},
     {"layer-balance", COMPAT_UNUSUAL, "3*typex-16 | wood-89@406 | typex-16", AS_READ},
     {"board-kinds", COMPAT_UNUSUAL, "typex-16 + osb-11 | wood-89@406 | typex-16 + ply-13", AS_READ},
@@ -122,7 +165,8 @@ static const struct rule_row {
 
 #define ROWS(table) (int)(sizeof(table) / sizeof(table)[0])
 
-/* No stud and glass batt of the shipped catalogs meet between 1.10 and 1.25 x the cavity: a catalog with a thinner stud. */
+/* No stud and glass batt of the shipped catalogs meet between 1.10 and 1.25 x the cavity: a catalog
+ * with a thinner stud. */
 static wall pressed_batt(void) {
   catalog *other = arena_alloc(memory, sizeof *other);
   *other = *shop;
@@ -142,7 +186,8 @@ START_TEST(a_row_a_rule) {
   compat_check(shop, &w, &r);
   ck_assert_msg(has(&r, row->rule, row->level), "%s: %s is found", row->line, row->rule);
   ck_assert_int_ge(r.worst, row->level);
-  /* Illegal is only what cannot be built: everything else is a verdict or caution in a normal answer. */
+  /* Illegal is only what cannot be built: everything else is a verdict or caution in a normal
+   * answer. */
   if (row->level != COMPAT_ILLEGAL) ck_assert_int_ne(r.worst, COMPAT_ILLEGAL);
   for (int i = 0; i < r.count; i++) {
     ck_assert(r.finding[i].reason && strlen(r.finding[i].reason) > 20);
@@ -158,9 +203,11 @@ START_TEST(every_rule_has_a_row_and_stands_in_the_page) {
   ck_assert_ptr_nonnull(page);
   for (size_t k = 0; k < count; k++) {
     bool found = false;
-    for (int i = 0; i < ROWS(rule_rows); i++) found = found || strcmp(rule_rows[i].rule, rules[k].rule) == 0;
+    for (int i = 0; i < ROWS(rule_rows); i++)
+      found = found || strcmp(rule_rows[i].rule, rules[k].rule) == 0;
     ck_assert_msg(found, "%s has a row", rules[k].rule);
-    ck_assert_msg(strstr(page, text_format(memory, "`%s`", rules[k].rule)) != NULL, "%s stands in wall.md", rules[k].rule);
+    ck_assert_msg(strstr(page, text_format(memory, "`%s`", rules[k].rule)) != NULL,
+                  "%s stands in wall.md", rules[k].rule);
   }
 }
 END_TEST
@@ -226,7 +273,9 @@ static wall draw_wall(void) {
   return w;
 }
 
-static compat_level worse(compat_level a, compat_level b) { return a > b ? a : b; }
+static compat_level worse(compat_level a, compat_level b) {
+  return a > b ? a : b;
+}
 
 /* The pieces that the enumeration uses say together what the whole says. */
 START_TEST(pieces_make_the_whole) {
@@ -246,7 +295,8 @@ START_TEST(pieces_make_the_whole) {
     wall m = wall_mirrored(shop, &w);
     compat_report mirrored;
     compat_check(shop, &m, &mirrored);
-    ck_assert_msg(mirrored.worst == r.worst && mirrored.count == r.count, "mirrored: %s", line_print(memory, shop, &w));
+    ck_assert_msg(mirrored.worst == r.worst && mirrored.count == r.count, "mirrored: %s",
+                  line_print(memory, shop, &w));
     levels[r.worst]++;
   }
   ck_assert_int_gt(levels[COMPAT_FINE], 0);
@@ -255,7 +305,8 @@ START_TEST(pieces_make_the_whole) {
 }
 END_TEST
 
-/* A batt fits when it is no more than a tenth thicker than the cavity (common practice, no source): every pair by arithmetic. */
+/* A batt fits when it is no more than a tenth thicker than the cavity (common practice, no source):
+ * every pair by arithmetic. */
 START_TEST(fits_of_batts) {
   static const double rounding = 1e-4; /* sizes are given to 0.1 mm */
   for (size_t f = 0; f < shop->frame_count; f++) {
@@ -263,8 +314,10 @@ START_TEST(fits_of_batts) {
       double ratio = shop->fills[b].thickness_m / shop->frames[f].row_depth_m;
       bool illegal = compat_fill(shop, (int)f, (int)b) == COMPAT_ILLEGAL;
       double limit = shop->fills[b].material == FILL_GLASS ? 1.25 : 1.10;
-      if (ratio > limit + rounding / 0.04) ck_assert_msg(illegal, "%s in %s", shop->fills[b].id, shop->frames[f].id);
-      if (ratio < limit - rounding / 0.04) ck_assert_msg(!illegal, "%s in %s", shop->fills[b].id, shop->frames[f].id);
+      if (ratio > limit + rounding / 0.04)
+        ck_assert_msg(illegal, "%s in %s", shop->fills[b].id, shop->frames[f].id);
+      if (ratio < limit - rounding / 0.04)
+        ck_assert_msg(!illegal, "%s in %s", shop->fills[b].id, shop->frames[f].id);
     }
   }
 }

@@ -18,7 +18,9 @@ static void setup(void) {
   ck_assert_msg(shop != NULL, "the shipped catalogs load");
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static const char *first_fault(void) {
   text t;
@@ -39,15 +41,18 @@ static const struct line_row {
     {"typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16", NULL},
     {"typex-16 | wood-89@406 | on osb-11 | rc@406 | 2*typex-16", NULL},
     {"typex-16|wood-89@406|typex-16", "typex-16 | wood-89@406 | typex-16"},
-    {"  typex-16\t| wood-89 @ 406 ,glass-89 |  typex-16 ", "typex-16 | wood-89@406, glass-89 | typex-16"},
+    {"  typex-16\t| wood-89 @ 406 ,glass-89 |  typex-16 ",
+     "typex-16 | wood-89@406, glass-89 | typex-16"},
     {"1*typex-16 | wood-89@406 | typex-16 + typex-16", "typex-16 | wood-89@406 | 2*typex-16"},
-    {"typex-16+2*typex-16 | wood-89@406 | 2*typex-16+2*typex-16", "3*typex-16 | wood-89@406 | 3*typex-16 + typex-16"},
+    {"typex-16+2*typex-16 | wood-89@406 | 2*typex-16+2*typex-16",
+     "3*typex-16 | wood-89@406 | 3*typex-16 + typex-16"},
     {"typex-16 + gyp-16 + typex-16 | wood-89@406 | gyp-13", NULL},
     {"typex-16 | wood-89@16in | typex-16", "typex-16 | wood-89@406 | typex-16"},
     {"typex-16 | rc@24in | wood-89@12in | typex-16", "typex-16 | rc@610 | wood-89@305 | typex-16"},
     {"typex-16 | wood-89@406mm | typex-16", "typex-16 | wood-89@406 | typex-16"},
     {"typex-16 | wood-89-double@406, -, glass-89 | typex-16", NULL},
-    {"typex-16 | wood-89-double@406, glass-89, - | typex-16", "typex-16 | wood-89-double@406, glass-89 | typex-16"},
+    {"typex-16 | wood-89-double@406, glass-89, - | typex-16",
+     "typex-16 | wood-89-double@406, glass-89 | typex-16"},
     {"typex-16 | wood-89-double@406, -, - | typex-16", "typex-16 | wood-89-double@406 | typex-16"},
     {"typex-16 | wood-89@406, - | typex-16", "typex-16 | wood-89@406 | typex-16"},
     {"typex-16 | wood-89-double@406~50 | typex-16", NULL},
@@ -55,18 +60,23 @@ static const struct line_row {
     {"typex-16 | wood-89-double@406~1in | typex-16", "typex-16 | wood-89-double@406 | typex-16"},
     {"typex-16 | wood-89-double@406, glass-89, glass-89, inner-a osb-11 | typex-16", NULL},
     {"typex-16 | wood-89-double@406, inner-b osb-11 | typex-16", NULL},
-    {"typex-16 | wood-89-double@406, -, glass-89, inner-a 2*gyp-6, inner-b osb-11 + mlv-2 | typex-16", NULL},
+    {"typex-16 | wood-89-double@406, -, glass-89, inner-a 2*gyp-6, inner-b osb-11 + mlv-2 | "
+     "typex-16",
+     NULL},
     {"2*typex-16 | clip@610 | wood-89@406 | typex-16", NULL},
     {"2*typex-16 | clip@610x813 | wood-89@406 | typex-16", NULL},
-    {"2*typex-16 | clip@610x1219 | wood-89@406 | typex-16", "2*typex-16 | clip@610 | wood-89@406 | typex-16"},
+    {"2*typex-16 | clip@610x1219 | wood-89@406 | typex-16",
+     "2*typex-16 | clip@610 | wood-89@406 | typex-16"},
     {"typex-16 | rc@610 | on osb-11 | wood-89@406 | on ply-13 | rc@610 | typex-16", NULL},
     /* what people say */
     {"5/8X | 3-5/8 25ga @24, R13 | 5/8 type x", "typex-16 | steel-92-18@610, glass-89 | typex-16"},
     {"1/2 regular | 2x4@16 | 1/2 regular", "gyp-13 | wood-89@406 | gyp-13"},
-    {"2*5/8X | RC@24 | 2x4@16, 3in mineral wool | 5/8X", "2*typex-16 | rc@610 | wood-89@406, stone-76 | typex-16"},
+    {"2*5/8X | RC@24 | 2x4@16, 3in mineral wool | 5/8X",
+     "2*typex-16 | rc@610 | wood-89@406, stone-76 | typex-16"},
     {"5/8X | 6 in 20ga structural@16 | 5/8X", "typex-16 | steel-152-33@406 | typex-16"},
     {"5/8X | 3-5/8\" 20 gauge drywall@16 | TypeX-16", "typex-16 | steel-92-30@406 | typex-16"},
-    {"5/8X + 7/16 OSB | double 2x4@16, R13, R13 | 5/8X", "typex-16 + osb-11 | wood-89-double@406, glass-89, glass-89 | typex-16"},
+    {"5/8X + 7/16 OSB | double 2x4@16, R13, R13 | 5/8X",
+     "typex-16 + osb-11 | wood-89-double@406, glass-89, glass-89 | typex-16"},
     {"5/8X | 362S125-18@24 | 5/8X", "typex-16 | steel-92-18@610 | typex-16"},
 };
 
@@ -74,7 +84,8 @@ START_TEST(reads) {
   const struct line_row *row = &line_rows[_i];
   const char *expected = row->printed ? row->printed : row->line;
   wall w, again;
-  ck_assert_msg(line_parse(memory, &faults, shop, row->line, &w), "%s: %s", row->line, first_fault());
+  ck_assert_msg(line_parse(memory, &faults, shop, row->line, &w), "%s: %s", row->line,
+                first_fault());
   ck_assert_str_eq(line_print(memory, shop, &w), expected);
   ck_assert(line_parse(memory, &faults, shop, expected, &again));
   ck_assert(wall_same(&w, &again));
@@ -84,7 +95,8 @@ END_TEST
 /* Side B is written from its room inwards too: Type X at the room, OSB on the stud. */
 START_TEST(side_b_from_its_room) {
   wall w;
-  ck_assert(line_parse(memory, &faults, shop, "gyp-13 + mlv-5 | wood-89@406 | typex-16 + osb-11", &w));
+  ck_assert(
+      line_parse(memory, &faults, shop, "gyp-13 + mlv-5 | wood-89@406 | typex-16 + osb-11", &w));
   ck_assert_str_eq(shop->layers[w.side[SIDE_B].layer[0]].id, "typex-16");
   ck_assert_str_eq(shop->layers[w.side[SIDE_B].layer[1]].id, "osb-11");
   ck_assert_int_eq(w.fill[0], CATALOG_NONE);
@@ -105,7 +117,8 @@ static const struct error_row {
     {"typex-16 | wood-98@406 | typex-16", 12, ERROR_WALL_UNKNOWN_ID, "wood-89"},
     {"typex-16 | wood-89@406, glas-89 | typex-16", 25, ERROR_WALL_UNKNOWN_ID, "glass-89"},
     {"typex-16 | rx@610 | wood-89@406 | typex-16", 12, ERROR_WALL_UNKNOWN_ID, "expected a mount"},
-    {"typex-16 | wood-89@406 | typex-16 + zzzzzzzzzzzz", 37, ERROR_WALL_UNKNOWN_ID, "unknown id \"zzzzzzzzzzzz\""},
+    {"typex-16 | wood-89@406 | typex-16 + zzzzzzzzzzzz", 37, ERROR_WALL_UNKNOWN_ID,
+     "unknown id \"zzzzzzzzzzzz\""},
     {"typex-16 | wood-89@407 | typex-16", 20, ERROR_WALL_SYNTAX, "@305, @406 or @610"},
     {"typex-16 | wood-89@600 | typex-16", 20, ERROR_WALL_SYNTAX, "found \"600\""},
     {"typex-16 | wood-89@12mm | typex-16", 20, ERROR_WALL_SYNTAX, "found \"12mm\""},
@@ -121,23 +134,33 @@ static const struct error_row {
     {"typex-16 + | wood-89@406 | typex-16", 11, ERROR_WALL_SYNTAX, "found nothing"},
     {" | wood-89@406 | typex-16", 2, ERROR_WALL_SYNTAX, "found nothing"},
     {"typex-16 | wood-89@406, | typex-16", 24, ERROR_WALL_SYNTAX, "found nothing"},
-    {"typex-16 | wood-89@406, glass-89, glass-89 | typex-16", 35, ERROR_WALL_SYNTAX, "one fill at most"},
-    {"typex-16 | wood-89-stag-140@406, glass-89, glass-89 | typex-16", 44, ERROR_WALL_SYNTAX, "one fill at most"},
-    {"typex-16 | wood-89-double@406, glass-89, -, glass-89 | typex-16", 45, ERROR_WALL_SYNTAX, "two fills at most"},
+    {"typex-16 | wood-89@406, glass-89, glass-89 | typex-16", 35, ERROR_WALL_SYNTAX,
+     "one fill at most"},
+    {"typex-16 | wood-89-stag-140@406, glass-89, glass-89 | typex-16", 44, ERROR_WALL_SYNTAX,
+     "one fill at most"},
+    {"typex-16 | wood-89-double@406, glass-89, -, glass-89 | typex-16", 45, ERROR_WALL_SYNTAX,
+     "two fills at most"},
     {"typex-16 | wood-89@406~25 | typex-16", 23, ERROR_WALL_SYNTAX, "one row"},
     {"typex-16 | wood-89-stag-140@406~25 | typex-16", 32, ERROR_WALL_SYNTAX, "one row"},
     {"typex-16 | wood-89-double@406~0 | typex-16", 31, ERROR_WALL_SYNTAX, "gap"},
     {"typex-16 | wood-89-double@406~x | typex-16", 31, ERROR_WALL_SYNTAX, "gap"},
     {"typex-16 | wood-89-double@406~4000 | typex-16", 31, ERROR_WALL_SYNTAX, "5 to 1000"},
     {"typex-16 | wood-89@406, inner-a osb-11 | typex-16", 25, ERROR_WALL_SYNTAX, "two rows only"},
-    {"typex-16 | wood-89-double@406, inner-b osb-11, inner-a osb-11 | typex-16", 48, ERROR_WALL_SYNTAX, "inner-a once"},
-    {"typex-16 | wood-89-double@406, inner-a osb-11, inner-a osb-11 | typex-16", 48, ERROR_WALL_SYNTAX, "inner-a once"},
-    {"typex-16 | wood-89-double@406, inner-a osb-11, glass-89 | typex-16", 48, ERROR_WALL_SYNTAX, "before inner faces"},
+    {"typex-16 | wood-89-double@406, inner-b osb-11, inner-a osb-11 | typex-16", 48,
+     ERROR_WALL_SYNTAX, "inner-a once"},
+    {"typex-16 | wood-89-double@406, inner-a osb-11, inner-a osb-11 | typex-16", 48,
+     ERROR_WALL_SYNTAX, "inner-a once"},
+    {"typex-16 | wood-89-double@406, inner-a osb-11, glass-89 | typex-16", 48, ERROR_WALL_SYNTAX,
+     "before inner faces"},
     {"typex-16 | wood-89-double@406, inner-a | typex-16", 39, ERROR_WALL_SYNTAX, "found nothing"},
-    {"typex-16 | on osb-11 | wood-89@406 | typex-16", 12, ERROR_WALL_SYNTAX, "expected a mount before \"on\""},
-    {"typex-16 | rc@610 | osb-11 | wood-89@406 | typex-16", 21, ERROR_WALL_SYNTAX, "expected \"on\""},
-    {"typex-16 | osb-11 | wood-89@406 | typex-16", 12, ERROR_WALL_SYNTAX, "found the board \"osb-11\""},
-    {"rc@610 | typex-16 | wood-89@406 | typex-16", 1, ERROR_WALL_SYNTAX, "expected a board or membrane"},
+    {"typex-16 | on osb-11 | wood-89@406 | typex-16", 12, ERROR_WALL_SYNTAX,
+     "expected a mount before \"on\""},
+    {"typex-16 | rc@610 | osb-11 | wood-89@406 | typex-16", 21, ERROR_WALL_SYNTAX,
+     "expected \"on\""},
+    {"typex-16 | osb-11 | wood-89@406 | typex-16", 12, ERROR_WALL_SYNTAX,
+     "found the board \"osb-11\""},
+    {"rc@610 | typex-16 | wood-89@406 | typex-16", 1, ERROR_WALL_SYNTAX,
+     "expected a board or membrane"},
     {"typex-16@406 | wood-89@406 | typex-16", 9, ERROR_WALL_SYNTAX, "+ or |"},
     {"wood-89@406 | typex-16 | typex-16", 1, ERROR_WALL_SYNTAX, "a face on each side"},
     {"typex-16 | wood-89@406 | wood-89@406 | typex-16", 26, ERROR_WALL_SYNTAX, "found a second"},
@@ -148,10 +171,13 @@ static const struct error_row {
     {"typex-16 | rc@610x400 | wood-89@406 | typex-16", 15, ERROR_WALL_SYNTAX, "found \"610x400\""},
     {"typex-16 | clip@610x2000 | wood-89@406 | typex-16", 21, ERROR_WALL_SYNTAX, "200 to 1219"},
     {"typex-16 | clip@610xtwo | wood-89@406 | typex-16", 21, ERROR_WALL_SYNTAX, "found \"two\""},
-    {"3*typex-16 + 3*typex-16 + typex-16 | wood-89@406 | typex-16", 27, ERROR_WALL_SYNTAX, "at most 6"},
-    {"3*typex-16 + typex-16 | rc@610 | on 3*osb-11 | wood-89@406 | typex-16", 1, ERROR_WALL_SYNTAX, "at most 6"},
+    {"3*typex-16 + 3*typex-16 + typex-16 | wood-89@406 | typex-16", 27, ERROR_WALL_SYNTAX,
+     "at most 6"},
+    {"3*typex-16 + typex-16 | rc@610 | on 3*osb-11 | wood-89@406 | typex-16", 1, ERROR_WALL_SYNTAX,
+     "at most 6"},
     {"5/8 | 2x4@16 | 5/8X", 1, ERROR_WALL_UNKNOWN_ID, "may mean gyp-16 or typex-16"},
-    {"5/8X | 3-5/8 20ga@16 | 5/8X", 8, ERROR_WALL_UNKNOWN_ID, "may mean steel-92-30 or steel-92-33"},
+    {"5/8X | 3-5/8 20ga@16 | 5/8X", 8, ERROR_WALL_UNKNOWN_ID,
+     "may mean steel-92-30 or steel-92-33"},
     {"5/8X | 2x4@16, mineral wool | 5/8X", 16, ERROR_WALL_UNKNOWN_ID, "stone-50"},
 };
 
@@ -163,7 +189,8 @@ START_TEST(refuses) {
   const diag *f = &faults.items[0];
   ck_assert_ptr_null(f->place.file);
   ck_assert_int_eq(f->place.line, 1);
-  ck_assert_msg(f->place.column == row->column, "%s: column %d, %s", row->line, f->place.column, first_fault());
+  ck_assert_msg(f->place.column == row->column, "%s: column %d, %s", row->line, f->place.column,
+                first_fault());
   ck_assert_msg(f->code == row->code, "%s: %s", row->line, first_fault());
   ck_assert_msg(strstr(f->message, row->says) != NULL, "%s: %s", row->line, first_fault());
 }
@@ -171,12 +198,14 @@ END_TEST
 
 START_TEST(all_faults_show_at_once) {
   wall w;
-  ck_assert(!line_parse(memory, &faults, shop, "typx-16 | rc@600 | wood-89@406, glas-89 | 4*typex-16 + foo", &w));
+  ck_assert(!line_parse(memory, &faults, shop,
+                        "typx-16 | rc@600 | wood-89@406, glas-89 | 4*typex-16 + foo", &w));
   static const int columns[] = {1, 14, 33, 43, 56};
   ck_assert_int_eq((int)faults.count, 5);
   for (int i = 0; i < 5; i++) {
     bool found = false;
-    for (size_t k = 0; k < faults.count; k++) found = found || faults.items[k].place.column == columns[i];
+    for (size_t k = 0; k < faults.count; k++)
+      found = found || faults.items[k].place.column == columns[i];
     ck_assert_msg(found, "a fault at column %d", columns[i]);
   }
 }
@@ -209,7 +238,8 @@ static int draw(int n) {
 
 static face draw_face(int most) {
   face f = {.count = 1 + draw(most)};
-  for (int i = 0; i < f.count; i++) f.layer[i] = i > 0 && draw(2) ? f.layer[i - 1] : draw((int)shop->layer_count);
+  for (int i = 0; i < f.count; i++)
+    f.layer[i] = i > 0 && draw(2) ? f.layer[i - 1] : draw((int)shop->layer_count);
   return f;
 }
 
@@ -244,8 +274,10 @@ static const char *squeezed(const char *line) {
   text t;
   text_init(&t, memory, 4000);
   for (size_t i = 0; line[i]; i++) {
-    bool word = (i >= 2 && strncmp(line + i - 2, "on ", 3) == 0 && (i == 2 || line[i - 3] == ' ')) ||
-                (i >= 7 && (strncmp(line + i - 7, "inner-a ", 8) == 0 || strncmp(line + i - 7, "inner-b ", 8) == 0));
+    bool word =
+        (i >= 2 && strncmp(line + i - 2, "on ", 3) == 0 && (i == 2 || line[i - 3] == ' ')) ||
+        (i >= 7 &&
+         (strncmp(line + i - 7, "inner-a ", 8) == 0 || strncmp(line + i - 7, "inner-b ", 8) == 0));
     if (line[i] != ' ' || word) text_char(&t, line[i]);
   }
   return t.data;
@@ -260,13 +292,15 @@ START_TEST(round_trip) {
     ck_assert_msg(line_parse(memory, &faults, shop, line, &again), "%s: %s", line, first_fault());
     ck_assert_msg(wall_same(&w, &again), "%s", line);
     ck_assert_str_eq(line_print(memory, shop, &again), line);
-    ck_assert_msg(line_parse(memory, &faults, shop, squeezed(line), &tight), "%s: %s", squeezed(line), first_fault());
+    ck_assert_msg(line_parse(memory, &faults, shop, squeezed(line), &tight), "%s: %s",
+                  squeezed(line), first_fault());
     ck_assert_msg(wall_same(&w, &tight), "%s", line);
   }
 }
 END_TEST
 
-/* Bytes changed at random: nothing crashes, faults come with a column inside the line, what reads prints and reads again. */
+/* Bytes changed at random: nothing crashes, faults come with a column inside the line, what reads
+ * prints and reads again. */
 START_TEST(slips) {
   enum { SLIPS = 5000 };
   static const char bytes[] = "|+*@~,- x0123456789abcdefghijklmnopqrstuvwxyz/\"\t\n\x80\xff";
@@ -277,7 +311,8 @@ START_TEST(slips) {
     const char *line = line_print(memory, shop, &w);
     char *slip = arena_alloc(memory, strlen(line) + 1);
     memcpy(slip, line, strlen(line) + 1);
-    for (int k = 0; k < 1 + draw(3); k++) slip[draw((int)strlen(line))] = bytes[draw((int)sizeof bytes - 1)];
+    for (int k = 0; k < 1 + draw(3); k++)
+      slip[draw((int)strlen(line))] = bytes[draw((int)sizeof bytes - 1)];
     diag_init(&faults, memory);
     if (!line_parse(memory, &faults, shop, slip, &w)) {
       ck_assert_int_ge((int)faults.errors, 1);
@@ -287,7 +322,8 @@ START_TEST(slips) {
     }
     read++;
     const char *printed = line_print(memory, shop, &w);
-    ck_assert_msg(line_parse(memory, &faults, shop, printed, &again) && wall_same(&w, &again), "%s / %s", slip, printed);
+    ck_assert_msg(line_parse(memory, &faults, shop, printed, &again) && wall_same(&w, &again),
+                  "%s / %s", slip, printed);
   }
   ck_assert_int_gt(read, 0);
 }
@@ -303,17 +339,24 @@ static bool from_json(const char *json, wall *w, const char **name) {
 static const struct json_row {
   const char *json, *line;
 } json_rows[] = {
-    {"{\"septum\":\"wall/1\",\"name\":\"corridor wall\",\"side_a\":[\"typex-16\",\"typex-16\"],\"side_b\":[\"typex-16\"],"
+    {"{\"septum\":\"wall/1\",\"name\":\"corridor "
+     "wall\",\"side_a\":[\"typex-16\",\"typex-16\"],\"side_b\":[\"typex-16\"],"
      "\"frame\":{\"id\":\"steel-92-18\",\"spacing_mm\":610},\"fill\":[\"glass-89\"],"
      "\"mount_a\":{\"id\":\"rc\",\"spacing_mm\":610},\"mount_b\":null}",
      "2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16"},
-    {"{\"septum\":\"wall/1\",\"side_a\":[\"gyp-13\",\"mlv-5\"],\"side_b\":[\"typex-16\",\"osb-11\"],"
-     "\"frame\":{\"id\":\"wood-89-double\",\"spacing_in\":16},\"fill\":[null,\"glass-89\"],\"gap_mm\":50}",
+    {"{\"septum\":\"wall/"
+     "1\",\"side_a\":[\"gyp-13\",\"mlv-5\"],\"side_b\":[\"typex-16\",\"osb-11\"],"
+     "\"frame\":{\"id\":\"wood-89-double\",\"spacing_in\":16},\"fill\":[null,\"glass-89\"],\"gap_"
+     "mm\":50}",
      "gyp-13 + mlv-5 | wood-89-double@406~50, -, glass-89 | typex-16 + osb-11"},
-    {"{\"septum\":\"wall/1\",\"side_a\":[\"typex-16\"],\"sheath_a\":[\"osb-11\"],\"side_b\":[\"5/8X\"],"
-     "\"frame\":{\"id\":\"2x4\",\"spacing_mm\":\"16in\"},\"mount_a\":{\"id\":\"clip\",\"spacing_mm\":610,\"clip_spacing_mm\":813}}",
+    {"{\"septum\":\"wall/1\",\"side_a\":[\"typex-16\"],\"sheath_a\":[\"osb-11\"],\"side_b\":[\"5/"
+     "8X\"],"
+     "\"frame\":{\"id\":\"2x4\",\"spacing_mm\":\"16in\"},\"mount_a\":{\"id\":\"clip\",\"spacing_"
+     "mm\":610,\"clip_spacing_mm\":813}}",
      "typex-16 | clip@610x813 | on osb-11 | wood-89@406 | typex-16"},
-    {"{\"septum\":\"wall/1\",\"side_a\":[\"typex-16\"],\"side_b\":[\"typex-16\"],\"inner_a\":[\"osb-11\"],\"inner_b\":[],"
+    {"{\"septum\":\"wall/"
+     "1\",\"side_a\":[\"typex-16\"],\"side_b\":[\"typex-16\"],\"inner_a\":[\"osb-11\"],\"inner_b\":"
+     "[],"
      "\"frame\":{\"id\":\"wood-89-double\",\"spacing_mm\":610},\"fill\":[\"glass-89\"]}",
      "typex-16 | wood-89-double@610, glass-89, inner-a osb-11 | typex-16"},
 };
@@ -324,13 +367,15 @@ START_TEST(json_reads) {
   ck_assert_msg(from_json(json_rows[_i].json, &w, &name), "%s", first_fault());
   ck_assert_str_eq(line_print(memory, shop, &w), json_rows[_i].line);
   ck_assert(line_parse(memory, &faults, shop, json_rows[_i].line, &same) && wall_same(&w, &same));
-  if (_i == 0) ck_assert_str_eq(name, "corridor wall");
-  else ck_assert_ptr_null(name);
+  if (_i == 0)
+    ck_assert_str_eq(name, "corridor wall");
+  else
+    ck_assert_ptr_null(name);
 }
 END_TEST
 
 #define SIDES "\"side_a\":[\"typex-16\"],\"side_b\":[\"typex-16\"]"
-#define WOOD "\"frame\":{\"id\":\"wood-89\",\"spacing_mm\":406}"
+#define WOOD  "\"frame\":{\"id\":\"wood-89\",\"spacing_mm\":406}"
 
 static const struct json_error_row {
   const char *json;
@@ -340,21 +385,32 @@ static const struct json_error_row {
     {"{\"septum\":\"wall/2\"," SIDES "," WOOD "}", ERROR_FILE_KIND, "$.septum"},
     {"{\"septum\":\"wall/1\"," SIDES "}", ERROR_FIELD_MISSING, "$"},
     {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"fills\":[]}", ERROR_FIELD_UNKNOWN, "$.fills"},
-    {"{\"septum\":\"wall/1\",\"side_a\":[\"typex-61\"],\"side_b\":[\"typex-16\"]," WOOD "}", ERROR_WALL_UNKNOWN_ID, "$.side_a[0]"},
-    {"{\"septum\":\"wall/1\",\"side_a\":[],\"side_b\":[\"typex-16\"]," WOOD "}", ERROR_FIELD_TYPE, "$.side_a"},
-    {"{\"septum\":\"wall/1\",\"side_a\":\"typex-16\",\"side_b\":[\"typex-16\"]," WOOD "}", ERROR_FIELD_TYPE, "$.side_a"},
-    {"{\"septum\":\"wall/1\",\"side_a\":[16],\"side_b\":[\"typex-16\"]," WOOD "}", ERROR_FIELD_TYPE, "$.side_a[0]"},
-    {"{\"septum\":\"wall/1\"," SIDES ",\"frame\":{\"id\":\"wood-89\",\"spacing_mm\":400}}", ERROR_FIELD_RANGE, "$.frame.spacing_mm"},
-    {"{\"septum\":\"wall/1\"," SIDES ",\"frame\":{\"id\":\"glass-89\",\"spacing_mm\":406}}", ERROR_WALL_SYNTAX, "$.frame.id"},
-    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"fill\":[\"glass-89\",\"glass-89\"]}", ERROR_FIELD_TYPE, "$.fill"},
+    {"{\"septum\":\"wall/1\",\"side_a\":[\"typex-61\"],\"side_b\":[\"typex-16\"]," WOOD "}",
+     ERROR_WALL_UNKNOWN_ID, "$.side_a[0]"},
+    {"{\"septum\":\"wall/1\",\"side_a\":[],\"side_b\":[\"typex-16\"]," WOOD "}", ERROR_FIELD_TYPE,
+     "$.side_a"},
+    {"{\"septum\":\"wall/1\",\"side_a\":\"typex-16\",\"side_b\":[\"typex-16\"]," WOOD "}",
+     ERROR_FIELD_TYPE, "$.side_a"},
+    {"{\"septum\":\"wall/1\",\"side_a\":[16],\"side_b\":[\"typex-16\"]," WOOD "}", ERROR_FIELD_TYPE,
+     "$.side_a[0]"},
+    {"{\"septum\":\"wall/1\"," SIDES ",\"frame\":{\"id\":\"wood-89\",\"spacing_mm\":400}}",
+     ERROR_FIELD_RANGE, "$.frame.spacing_mm"},
+    {"{\"septum\":\"wall/1\"," SIDES ",\"frame\":{\"id\":\"glass-89\",\"spacing_mm\":406}}",
+     ERROR_WALL_SYNTAX, "$.frame.id"},
+    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"fill\":[\"glass-89\",\"glass-89\"]}",
+     ERROR_FIELD_TYPE, "$.fill"},
     {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"gap_mm\":25}", ERROR_FIELD_CONFLICT, "$.gap_mm"},
-    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"inner_a\":[\"osb-11\"]}", ERROR_FIELD_CONFLICT, "$.inner_a"},
-    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"sheath_a\":[\"osb-11\"]}", ERROR_FIELD_CONFLICT, "$.sheath_a"},
-    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"mount_a\":{\"id\":\"rc\",\"spacing_mm\":500}}", ERROR_FIELD_RANGE,
-     "$.mount_a.spacing_mm"},
-    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"mount_b\":{\"id\":\"rc\",\"spacing_mm\":610,\"clip_spacing_mm\":610}}",
+    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"inner_a\":[\"osb-11\"]}", ERROR_FIELD_CONFLICT,
+     "$.inner_a"},
+    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"sheath_a\":[\"osb-11\"]}", ERROR_FIELD_CONFLICT,
+     "$.sheath_a"},
+    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"mount_a\":{\"id\":\"rc\",\"spacing_mm\":500}}",
+     ERROR_FIELD_RANGE, "$.mount_a.spacing_mm"},
+    {"{\"septum\":\"wall/1\"," SIDES "," WOOD
+     ",\"mount_b\":{\"id\":\"rc\",\"spacing_mm\":610,\"clip_spacing_mm\":610}}",
      ERROR_FIELD_CONFLICT, "$.mount_b.clip_spacing_mm"},
-    {"{\"septum\":\"wall/1\"," SIDES "," WOOD ",\"mount_b\":{\"id\":\"clip\",\"spacing_mm\":610,\"clip_spacing_mm\":1500}}",
+    {"{\"septum\":\"wall/1\"," SIDES "," WOOD
+     ",\"mount_b\":{\"id\":\"clip\",\"spacing_mm\":610,\"clip_spacing_mm\":1500}}",
      ERROR_FIELD_RANGE, "$.mount_b.clip_spacing_mm"},
 };
 
@@ -365,7 +421,8 @@ START_TEST(json_refuses) {
   ck_assert_msg(!from_json(row->json, &w, &name), "%s is refused", row->json);
   const diag *f = &faults.items[0];
   ck_assert_msg(f->code == row->code, "%s: %s", row->json, first_fault());
-  ck_assert_msg(f->place.path && strcmp(f->place.path, row->path) == 0, "%s: %s", row->json, first_fault());
+  ck_assert_msg(f->place.path && strcmp(f->place.path, row->path) == 0, "%s: %s", row->json,
+                first_fault());
 }
 END_TEST
 
