@@ -24,7 +24,7 @@ const char *septum_nearest(const char *word, const char *const *names, size_t n)
 
 typedef struct open_job {
   const char *catalogs;
-  septum **out;
+  septum *made;
 } open_job;
 
 static status open_stage(call *k, void *given) {
@@ -39,16 +39,18 @@ static status open_stage(call *k, void *given) {
   if (c == NULL) return k->diags.worst;
   septum *handle = arena_alloc(k->kept, sizeof *handle);
   *handle = (septum){.memory = k->kept, .catalog = c, .listener = k->listener, .user = k->user};
-  *job->out = handle;
-  k->kept = NULL;
+  job->made = handle;
+  k->keep = true;
   return STATUS_OK;
 }
 
 septum_status septum_open(const char *catalogs_dir, septum_listener listener, void *user,
                           septum **out) {
-  *out = NULL;
-  open_job job = {catalogs_dir, out};
-  return call_run(listener, user, open_stage, &job);
+  open_job job = {.catalogs = catalogs_dir};
+  bool made = false;
+  septum_status answer = call_run(listener, user, open_stage, &job, &made);
+  *out = made ? job.made : NULL;
+  return answer;
 }
 
 void septum_close(septum *handle) {
@@ -61,11 +63,11 @@ typedef struct answer_job {
   const septum *handle;
   const char *operand;
   septum_options options;
-  septum_answer **out;
+  septum_answer *made;
 } answer_job;
 
 /* Writes the takeoff to the file that the options name, if any, and hands the answer out. */
-static status hand_out(call *k, const answer_job *job, const text *words, const text *json,
+static status hand_out(call *k, answer_job *job, const text *words, const text *json,
                        const text *csv, status when_done) {
   const char *path = job->options.save_csv;
   if (path != NULL && !file_write(k->memory, &k->diags, path, csv->data, csv->len))
@@ -74,7 +76,7 @@ static status hand_out(call *k, const answer_job *job, const text *words, const 
     diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
     return STATUS_INTERNAL;
   }
-  *job->out = call_answer(k, words->data, json->data, csv->data);
+  job->made = call_answer(k, words->data, json->data, csv->data);
   return when_done;
 }
 
@@ -129,10 +131,12 @@ static status pick_stage(call *k, void *given) {
 
 static septum_status run(septum *handle, const char *operand, const septum_options *options,
                          call_stage stage, septum_answer **out) {
-  *out = NULL;
-  answer_job job = {.handle = handle, .operand = operand, .out = out};
+  answer_job job = {.handle = handle, .operand = operand};
   if (options != NULL) job.options = *options;
-  return call_run(handle->listener, handle->user, stage, &job);
+  bool made = false;
+  septum_status answer = call_run(handle->listener, handle->user, stage, &job, &made);
+  *out = made ? job.made : NULL;
+  return answer;
 }
 
 septum_status septum_rate(septum *handle, const char *wall_words, const septum_options *options,

@@ -38,10 +38,12 @@ static status guarded(call *k, call_stage stage, void *job) {
   if (setjmp(k->no_memory) != 0) return out_of_memory(k->listener, k->user);
   status answer = stage(k, job);
   call_tell(k);
+  k->complete = true;
   return answer;
 }
 
-septum_status call_run(septum_listener listener, void *user, call_stage stage, void *job) {
+septum_status call_run(septum_listener listener, void *user, call_stage stage, void *job,
+                       bool *made) {
   call k;
   memset(&k, 0, sizeof k);
   k.listener = listener;
@@ -55,8 +57,9 @@ septum_status call_run(septum_listener listener, void *user, call_stage stage, v
     diag_init(&k.diags, k.memory);
     answer = guarded(&k, stage, job);
   }
+  *made = k.complete && k.keep;
   arena_free(k.memory);
-  arena_free(k.kept);
+  if (!*made) arena_free(k.kept);
   return (septum_status)answer;
 }
 
@@ -66,6 +69,6 @@ septum_answer *call_answer(call *k, const char *words, const char *json, const c
   answer->json = text_copy(k->kept, json);
   answer->csv = text_copy(k->kept, csv);
   answer->memory = k->kept;
-  k->kept = NULL;
+  k->keep = true;
   return answer;
 }

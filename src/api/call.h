@@ -24,7 +24,9 @@ struct septum_answer {
 typedef struct call {
   jmp_buf no_memory;
   arena *memory; /* freed at the end of the call */
-  arena *kept;   /* lives on in the handle or the answer when the call succeeds */
+  arena *kept;   /* holds what the call makes: a handle or an answer */
+  bool keep;     /* set by the stage: `kept` lives on */
+  bool complete; /* the stage and its messages are done */
   diag_list diags;
   size_t heard; /* messages of `diags` already told */
   septum_listener listener;
@@ -34,12 +36,14 @@ typedef struct call {
 /* Work of a call. It may jump out of any allocation. */
 typedef status (*call_stage)(call *k, void *job);
 
-/* Runs `stage`, tells the listener all messages, frees the call's memory, and `kept` too unless the
- * stage handed it on (set k->kept to NULL). Memory that ran out is STATUS_SYSTEM with a message. */
-septum_status call_run(septum_listener listener, void *user, call_stage stage, void *job);
+/* Runs `stage`, tells the listener all messages, and frees the call's memory. *made says whether
+ * the stage made something that lives on in `kept`; otherwise that is freed too. Memory that ran
+ * out is STATUS_SYSTEM with a message, and nothing made. */
+septum_status call_run(septum_listener listener, void *user, call_stage stage, void *job,
+                       bool *made);
 /* Tells the messages so far. */
 void call_tell(call *k);
-/* An answer in `kept` with copies of the texts; takes `kept` over. */
+/* An answer in `kept` with copies of the texts; it lives on. */
 septum_answer *call_answer(call *k, const char *text, const char *json, const char *csv);
 
 #endif

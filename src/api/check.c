@@ -10,7 +10,7 @@ typedef struct check_job {
   const septum *handle;
   const char *const *paths;
   size_t count;
-  septum_answer **out;
+  septum_answer *made;
 } check_job;
 
 typedef bool (*check_reader)(call *k, const catalog *c, const json_value *root);
@@ -119,13 +119,15 @@ static status check_stage(call *k, void *given) {
   text_init(&json, k->memory, JSON_MAX_BYTES);
   report_check_text(files, job->count, &words);
   report_check_json(files, job->count, &json);
-  *job->out = call_answer(k, words.data, json.data, "");
+  job->made = call_answer(k, words.data, json.data, "");
   return worst;
 }
 
 septum_status septum_check(septum *handle, const char *const *paths, size_t count,
                            septum_answer **out) {
-  *out = NULL;
-  check_job job = {handle, paths, count, out};
-  return call_run(handle->listener, handle->user, check_stage, &job);
+  check_job job = {.handle = handle, .paths = paths, .count = count};
+  bool made = false;
+  septum_status answer = call_run(handle->listener, handle->user, check_stage, &job, &made);
+  *out = made ? job.made : NULL;
+  return answer;
 }

@@ -15,7 +15,9 @@ static void set_up(void) {
   ck_assert_ptr_nonnull(memory);
 }
 
-static void tear_down(void) { arena_free(memory); }
+static void tear_down(void) {
+  arena_free(memory);
+}
 
 static text fresh(void) {
   text t;

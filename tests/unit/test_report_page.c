@@ -14,7 +14,9 @@ static void set_up(void) {
   ck_assert_ptr_nonnull(memory);
 }
 
-static void tear_down(void) { arena_free(memory); }
+static void tear_down(void) {
+  arena_free(memory);
+}
 
 static text fresh(void) {
   text t;
@@ -53,7 +55,10 @@ static const struct put_row {
     {"plain", "5/8 in", "5/8 in"},
     {"escape sequence", "\x1b[2J", "\\u001b[2J"},
     {"line end", "a\nb", "a\\u000ab"},
-    {"C1 control as UTF-8", "\xC2\x9B" "1m", "\\u009b1m"},
+    {"C1 control as UTF-8",
+     "\xC2\x9B"
+     "1m",
+     "\\u009b1m"},
     {"letters beyond ASCII", "\xC3\xA9", "\xC3\xA9"},
 };
 
@@ -73,8 +78,11 @@ START_TEST(columns) {
   out = fresh();
   page_cut(&out, 6, "abcdef");
   text_char(&out, ' ');
-  page_cut(&out, 4, "d\xC3\xA9" "cidedly");
-  ck_assert_str_eq(out.data, "abcdef d\xC3\xA9" "c.");
+  page_cut(&out, 4,
+           "d\xC3\xA9"
+           "cidedly");
+  ck_assert_str_eq(out.data, "abcdef d\xC3\xA9"
+                             "c.");
 }
 END_TEST
 
@@ -84,7 +92,8 @@ int main(void) {
   tcase_add_checked_fixture(cases, set_up, tear_down);
   tcase_add_test(cases, words_stay_within_the_width);
   tcase_add_test(cases, a_word_longer_than_the_width_stays_whole);
-  tcase_add_loop_test(cases, nothing_steers_a_terminal, 0, (int)(sizeof put_rows / sizeof put_rows[0]));
+  tcase_add_loop_test(cases, nothing_steers_a_terminal, 0,
+                      (int)(sizeof put_rows / sizeof put_rows[0]));
   tcase_add_test(cases, columns);
   suite_add_tcase(suite, cases);
   SRunner *runner = srunner_create(suite);

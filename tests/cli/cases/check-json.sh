@@ -1,1 +1,1 @@
-$SEPTUM check --json $EXAMPLES/one-hour.json | sed "s@\"/.*/@\"@"
+cd $EXAMPLES && $SEPTUM check --json one-hour.json

@@ -1,0 +1,172 @@
+/* The public API as a client sees it: answers, messages, and memory that runs out anywhere. */
+#include <check.h>
+#include <stdbool.h>
+#include <stdlib.h>
+#include <string.h>
+
+#include "base/arena.h"
+#include "septum.h"
+
+#define CATALOGS TEST_ROOT "/catalogs"
+#define PRICES   TEST_ROOT "/prices/kestrel-yard.json"
+#define BRIEF    TEST_ROOT "/docs/examples/one-hour.json"
+#define WALL     "2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16"
+
+typedef struct heard {
+  int errors, messages;
+  int last_code;
+  char last[400];
+} heard;
+
+static void listen(void *user, const septum_message *message) {
+  heard *h = user;
+  h->messages++;
+  if (message->severity != 0) return;
+  h->errors++;
+  h->last_code = message->code;
+  strncpy(h->last, message->text, sizeof h->last - 1);
+}
+
+static septum_options usual(void) {
+  septum_options options;
+  septum_options_init(&options);
+  options.prices = PRICES;
+  return options;
+}
+
+static septum *open_usual(heard *h) {
+  septum *handle = NULL;
+  ck_assert_int_eq(septum_open(CATALOGS, listen, h, &handle), SEPTUM_OK);
+  ck_assert_ptr_nonnull(handle);
+  return handle;
+}
+
+START_TEST(answers_outlive_their_handle) {
+  heard h = {0};
+  septum *handle = open_usual(&h);
+  septum_options options = usual();
+  septum_answer *answer = NULL;
+  ck_assert_int_eq(septum_rate(handle, WALL, &options, &answer), SEPTUM_OK);
+  septum_close(handle);
+  ck_assert_ptr_nonnull(strstr(septum_answer_text(answer), WALL));
+  ck_assert_ptr_nonnull(strstr(septum_answer_json(answer), "\"rating/1\""));
+  ck_assert_ptr_nonnull(strstr(septum_answer_csv(answer), "section,item"));
+  ck_assert_int_eq(h.errors, 0);
+  septum_answer_free(answer);
+}
+END_TEST
+
+static const struct bad_row {
+  const char *name, *wall;
+  septum_status status;
+  int code; /* docs/errors.md */
+} bad_rows[] = {
+    {"not a wall", "typex-16 |", SEPTUM_DATA, 301},
+    {"unknown id", "typex-16 | steel-92-81@610 | typex-16", SEPTUM_DATA, 302},
+    {"channels on both sides", "typex-16 | rc@610 | wood-89@406 | rc@610 | typex-16", SEPTUM_DATA,
+     303},
+    {"no such file", "no/such/wall.json", SEPTUM_SYSTEM, 401},
+    {"a brief for a wall", BRIEF, SEPTUM_DATA, 217},
+};
+
+START_TEST(bad_walls) {
+  const struct bad_row *row = &bad_rows[_i];
+  heard h = {0};
+  septum *handle = open_usual(&h);
+  septum_options options = usual();
+  septum_answer *answer = NULL;
+  ck_assert_msg(septum_rate(handle, row->wall, &options, &answer) == row->status, "%s: %s",
+                row->name, h.last);
+  ck_assert_ptr_null(answer);
+  ck_assert_msg(h.last_code == row->code, "%s: %s", row->name, h.last);
+  septum_close(handle);
+}
+END_TEST
+
+START_TEST(a_faulty_folder_opens_nothing) {
+  heard h = {0};
+  septum *handle = NULL;
+  ck_assert_int_eq(septum_open(TEST_ROOT "/no-such-folder", listen, &h, &handle), SEPTUM_SYSTEM);
+  ck_assert_ptr_null(handle);
+  ck_assert_int_gt(h.errors, 0);
+  septum_close(handle);
+  ck_assert_int_eq(septum_open(TEST_ROOT "/no-such-folder", NULL, NULL, &handle), SEPTUM_SYSTEM);
+}
+END_TEST
+
+START_TEST(pick_answers_as_text_and_json) {
+  heard h = {0};
+  septum *handle = open_usual(&h);
+  septum_options options = usual();
+  septum_answer *answer = NULL;
+  ck_assert_int_eq(septum_pick(handle, BRIEF, &options, &answer), SEPTUM_OK);
+  ck_assert_ptr_nonnull(strstr(septum_answer_json(answer), "\"status\": \"optimal\""));
+  septum_answer_free(answer);
+  septum_close(handle);
+}
+END_TEST
+
+START_TEST(null_is_fine) {
+  septum_close(NULL);
+  septum_answer_free(NULL);
+  ck_assert_str_eq(septum_version(), SEPTUM_VERSION);
+}
+END_TEST
+
+/* One try of everything with the n-th allocation failing; true when nothing failed. */
+static bool try_all(long n) {
+  heard h = {0};
+  septum *handle = NULL;
+  septum_answer *answer = NULL;
+  septum_options options = usual();
+  options.brief = BRIEF;
+  arena_fail_at(n);
+  septum_status status = septum_open(CATALOGS, listen, &h, &handle);
+  if (status == SEPTUM_OK) status = septum_rate(handle, WALL, &options, &answer);
+  arena_fail_at(0);
+  bool failed = h.errors > 0;
+  if (failed) {
+    ck_assert_int_eq(status, SEPTUM_SYSTEM);
+    ck_assert_int_eq(h.last_code, 403);
+    ck_assert_ptr_null(answer);
+  } else
+    ck_assert_int_eq(status, SEPTUM_OK);
+  septum_answer_free(answer);
+  septum_close(handle);
+  return !failed;
+}
+
+/* Every one of the first allocations fails once, then ever fewer of the many that follow. */
+START_TEST(memory_runs_out_anywhere) {
+  enum { EACH = 100, GROWTH_PERCENT = 8, MANY = 100000000 };
+  long n = 1;
+  int failures = 0;
+  while (n < MANY && !try_all(n)) {
+    failures++;
+    n = n < EACH ? n + 1 : n + n * GROWTH_PERCENT / 100;
+  }
+  ck_assert_int_gt(failures, EACH);
+  ck_assert_int_lt((int)n, MANY);
+}
+END_TEST
+
+int main(void) {
+  Suite *suite = suite_create("api");
+  TCase *cases = tcase_create("api");
+  tcase_set_timeout(cases, 300);
+  tcase_add_test(cases, answers_outlive_their_handle);
+  tcase_add_loop_test(cases, bad_walls, 0, (int)(sizeof bad_rows / sizeof bad_rows[0]));
+  tcase_add_test(cases, a_faulty_folder_opens_nothing);
+  tcase_add_test(cases, pick_answers_as_text_and_json);
+  tcase_add_test(cases, null_is_fine);
+  suite_add_tcase(suite, cases);
+  TCase *memory = tcase_create("memory");
+  tcase_set_timeout(memory, 300);
+  tcase_add_test(memory, memory_runs_out_anywhere);
+  suite_add_tcase(suite, memory);
+  SRunner *runner = srunner_create(suite);
+  srunner_run_all(runner, CK_NORMAL);
+  int failed = srunner_ntests_failed(runner);
+  srunner_free(runner);
+  return failed == 0 ? EXIT_SUCCESS : EXIT_FAILURE;
+}
