@@ -34,8 +34,9 @@ typedef struct assessment {
   bool mounted;
   wall short_wall; const char *short_line; prediction short_predicted; /* when mounted */
   bool has_composite; ratings composite; double composite_exact[METRIC_COUNT];
-  double composite_ceiling;    /* rating beyond which a better wall is pointless */
+  double composite_ceiling;    /* STC that no wall gets past with these openings */
   takeoff takeoff; cost_total cost;
+  wall_numbers numbers;
   rule_mask broken; int broken_count; broken_rule broke[RULES_MAX];
   compat_report compat;
   const char *caution[JUDGE_MAX_CAUTIONS]; int caution_count;
@@ -47,9 +48,34 @@ typedef struct judge_context {
   const brief *brief;
 } judge_context;
 
+/* `out` is filled whole; words live in `a`. out->name is left to the caller. */
 void judge_wall(arena *a, const judge_context *x, const wall *w, assessment *out);
-/* The part that decides: promised rating (exact - z sd, or published), probability. Shared with the sweep. */
+
+/* ---- what decides about sound; shared with the sweep ---- */
+
+/* z with Phi(z) = confidence, 0 < confidence < 1. */
+double judge_z(double confidence);
+/* What a rating has to reach in the laboratory: value, margin, and the field allowance where the target is one of the field. */
+double judge_needed(const target *t, double field_mean);
+/* The standard deviation that counts for a target: the field's scatter is added where it is one of the field. */
+double judge_spread(const target *t, double field_sd, double sd);
+/* Passes when P(rating >= needed) >= confidence and the printed integer reaches it too; a published rating when it does. */
 bool judge_passes(const target *t, double field_mean, double field_sd, double exact, int printed, double sd, bool published,
                   double confidence, double *probability);
+
+typedef struct judge_sound {
+  int promised_hundredth; /* see wall_numbers */
+  rule_mask broken;       /* target, confidence, evidence, composite */
+  rule_mask instead;      /* another smallest set without which the wall would pass as well; 0 = none. With openings a wall may
+                             be saved by giving up the confidence or by leaving the openings out */
+} judge_sound;
+
+/* All targets of the brief. `match` NULL: predicted only. `probability` (BRIEF_MAX_TARGETS values) may be NULL. */
+judge_sound judge_targets(const judge_context *x, const prediction *p, const wall_row *match, double *probability);
+/* The wall's curve moved by `shift_db`, together with the brief's openings; a published wall's curve is the predicted one moved
+ * to the published rating. */
+void judge_composite(const brief *b, const prediction *p, const wall_row *match, double shift_db, double tl_db[BANDS]);
+/* The STC of the openings beside a wall that lets nothing through. */
+double judge_composite_ceiling(const brief *b);
 
 #endif
