@@ -49,6 +49,22 @@ void diag_error(diag_list *d, error_code code, const char *format, ...) {
   va_end(args);
 }
 
+static bool stands_behind(const diag *a, const diag *b) {
+  if (a->place.line != b->place.line) return a->place.line > b->place.line;
+  return a->place.column > b->place.column;
+}
+
+void diag_sort(diag_list *d, size_t from) {
+  for (size_t i = from + 1; i < d->count; i++) {
+    diag moved = d->items[i];
+    size_t k = i;
+    for (; k > from && stands_behind(&d->items[k - 1], &moved); k--) d->items[k] = d->items[k - 1];
+    d->items[k] = moved;
+  }
+}
+
+bool diag_is_full(const diag_list *d) { return d->count == KEPT; }
+
 /* Text from files may hold line ends, terminal escapes (C0, DEL, and C1 as UTF-8) and bytes that are no UTF-8: shown as \u00XX
  * and \xXX, so that a message stays one harmless line of UTF-8. */
 static void put_visible(text *out, const char *s) {

@@ -254,7 +254,10 @@ bool fields_read(arena *a, diag_list *d, const json_value *object, const field *
   reader r = {.arena = a, .diags = d, .table = table, .rows = rows, .out = out};
   if (!is_kind(&r, object, JSON_OBJECT, "an object")) return false;
   r.seen = arena_array(a, rows, sizeof *r.seen);
-  for (const json_value *v = object->first; v; v = v->next) read_member(&r, v);
+  for (const json_value *v = object->first; v; v = v->next) {
+    if (d->errors > before && diag_is_full(d)) return false;
+    read_member(&r, v);
+  }
   report_missing(&r, object);
   return d->errors == before;
 }

@@ -152,8 +152,10 @@ static bool read_bound(reader *r, const json_value *v, const char *unit, double 
     return false;
   }
   if (v->number < 0) {
-    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v), "must be at least 0, found %s",
-             text_of(r->arena, v->number, 3));
+    text found;
+    text_init(&found, r->arena, 400);
+    text_number(&found, v->number, 3);
+    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v), "must be at least 0, found %s", found.data);
     return false;
   }
   if (unit) return units_to_metres(unit, v->number, out);
@@ -511,7 +513,7 @@ static void check_whole(reader *r, const json_value *root, const brief *b) {
 }
 
 bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root, bool target_required, brief *out) {
-  size_t before = d->errors;
+  size_t before = d->errors, first = d->count;
   reader r = {a, d, c};
   job_defaults(out);
   if (!json_is(a, d, root, "brief")) return false;
@@ -531,5 +533,6 @@ bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root, 
   read_allowance(&r, raw->allowance, out);
   read_lists(&r, root, raw, out);
   check_whole(&r, root, out);
+  diag_sort(d, first);
   return d->errors == before;
 }

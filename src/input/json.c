@@ -67,7 +67,7 @@ static int by_key(const void *x, const void *y) {
 
 /* Reports keys that stand twice in `object`; sorted, because a file may have objects of a million keys. */
 static void check_keys(arena *a, diag_list *d, const json_value *object) {
-  size_t n = 0;
+  size_t n = 0, before = d->errors;
   const json_value **all = arena_array(a, object->count, sizeof *all);
   const json_value **earlier = arena_array(a, object->count, sizeof *earlier);
   for (const json_value *v = object->first; v; v = v->next) all[n++] = v;
@@ -76,6 +76,7 @@ static void check_keys(arena *a, diag_list *d, const json_value *object) {
     if (text_equal(all[i]->key, all[i - 1]->key)) earlier[all[i]->index] = all[i - 1];
   for (const json_value *v = object->first; v; v = v->next) {
     if (!earlier[v->index]) continue;
+    if (d->errors > before && diag_is_full(d)) return;
     diag_place place = {v->file, v->key_line, v->key_column, json_path(a, v)};
     diag_add(d, DIAG_ERROR, ERROR_JSON_DUPLICATE_KEY, place, "the key \"%s\" stands already in line %d", v->key,
              earlier[v->index]->key_line);
@@ -121,6 +122,15 @@ static bool is_plain_key(const char *key) {
   return *key != '\0';
 }
 
+static void put_quoted(text *out, const char *key) {
+  text_put(out, "[\"");
+  for (; *key; key++) {
+    if (*key == '"' || *key == '\\') text_char(out, '\\');
+    text_char(out, *key);
+  }
+  text_put(out, "\"]");
+}
+
 static void put_path(text *out, const json_value *v) {
   if (!v->parent) {
     text_char(out, '$');
@@ -129,7 +139,7 @@ static void put_path(text *out, const json_value *v) {
   put_path(out, v->parent);
   if (!v->key) text_putf(out, "[%zu]", v->index);
   else if (is_plain_key(v->key)) text_putf(out, ".%s", v->key);
-  else text_putf(out, "[\"%s\"]", v->key);
+  else put_quoted(out, v->key);
 }
 
 const char *json_path(arena *a, const json_value *v) {

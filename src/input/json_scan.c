@@ -18,7 +18,7 @@ typedef struct scanner {
   int depth;
   size_t values;
   size_t string_bytes;
-  bool stopped; /* a fault that cannot be passed over */
+  bool stopped; /* a fault that cannot be passed over, or more faults than are kept */
 } scanner;
 
 static int column_of(const scanner *s, const char *where) { return (int)(where - s->line_start) + 1; }
@@ -26,6 +26,7 @@ static int column_of(const scanner *s, const char *where) { return (int)(where -
 static void fault(scanner *s, error_code code, const char *where, const char *message) {
   diag_place place = {.file = s->file, .line = s->line, .column = column_of(s, where)};
   diag_add(s->diags, DIAG_ERROR, code, place, "%s", message);
+  if (diag_is_full(s->diags)) s->stopped = true;
 }
 
 static void stop(scanner *s, error_code code, const char *where, const char *message) {
@@ -127,7 +128,7 @@ static bool scan_character(scanner *s, bool *bad_before) {
   }
   if (c == '\\') {
     scan_escape(s);
-    return true;
+    return !s->stopped;
   }
   if (c < 0x20) fault(s, ERROR_JSON_SYNTAX, s->at, text_format(s->arena, "a raw control character; write \\u%04x", c));
   size_t n = text_utf8(s->at, s->end);
@@ -136,7 +137,7 @@ static bool scan_character(scanner *s, bool *bad_before) {
     *bad_before = true; /* once a string is enough */
   }
   s->at += n ? n : 1;
-  return true;
+  return !s->stopped;
 }
 
 /* At the opening quote. The raw text lies between *from and *to. */
