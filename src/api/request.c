@@ -73,6 +73,7 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
   if (sound) sound = add_listings(k, &out->brief, &out->catalog);
   out->prices = read_prices(k, options, out);
   if (!sound || out->prices == NULL) return false;
+  out->brief.units = text_units(options, &out->brief); /* limits and findings are words too */
   out->context =
       (judge_context){.catalog = &out->catalog, .prices = out->prices, .brief = &out->brief};
   out->report = (report){.arena = k->memory,
@@ -80,7 +81,7 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
                          .prices = out->prices,
                          .brief = &out->brief,
                          .asked = brief_path != NULL,
-                         .units = text_units(options, &out->brief)};
+                         .units = out->brief.units};
   return true;
 }
 

@@ -232,7 +232,7 @@ static void put_mask(markup_json *j, const report *r, const char *key, rule_mask
 
 static void put_rules(markup_json *j, const report *r, const assessment *x) {
   markup_json_object(j, "rules", false);
-  put_mask(j, r, "in_force", r->asked ? rules_in_force(r->brief) : 0);
+  put_mask(j, r, "in_force", rules_in_force(r->brief));
   put_broken(j, r, "broken", x);
   markup_json_close(j);
 }

@@ -1,5 +1,8 @@
 /* `rate` for people: reads without a manual. */
 #include "report/report_text.h"
+
+#include <math.h>
+
 #include "report/page.h"
 #include "report/view.h"
 #include "septum.h"
@@ -47,6 +50,12 @@ static const char *percent(const report *r, double share) {
   return text_of(r->arena, 100.0 * share, 0);
 }
 
+/* A probability, never rounded up: 79.9 % is not 80 %. */
+static const char *sureness(const report *r, double probability) {
+  const double last_bits = 1e-9;
+  return text_of(r->arena, floor(100.0 * probability + last_bits), 0);
+}
+
 static void put_basis(const report *r, const assessment *x, text *out) {
   const prediction *p = &x->predicted;
   double confidence = view_confidence(r);
@@ -66,9 +75,6 @@ static void put_basis(const report *r, const assessment *x, text *out) {
                           exact, sd, percent(r, confidence),
                           view_assured(r, x, METRIC_STC, confidence),
                           sound_family_names[p->family]));
-  for (int i = 0; i < p->outside && i < PREDICT_MAX_REASONS; i++)
-    page_line(out, "",
-              text_format(r->arena, "Outside the fitted range: %s.", p->outside_reason[i]));
 }
 
 static bool breaks_sound(const assessment *x) {
@@ -82,7 +88,7 @@ static void put_targets(const report *r, const assessment *x, text *out) {
     const target *t = &r->brief->targets[i];
     const char *found = view_published(x, t->metric)
                             ? text_format(r->arena, "published STC %d", x->ratings.stc)
-                            : text_format(r->arena, "%s %% sure", percent(r, x->probability[i]));
+                            : text_format(r->arena, "%s %% sure", sureness(r, x->probability[i]));
     page_line(out, "", text_format(r->arena, "Target %s: %s.", view_target(r, t), found));
   }
   if (r->brief->target_count > 0) page_line(out, "", breaks_sound(x) ? "Not reached." : "Reached.");
@@ -151,8 +157,7 @@ static void put_height(const report *r, const assessment *x, text *out) {
   page_line(out, "Height", t.data);
 }
 
-static void put_rules(const report *r, const assessment *x, text *out) {
-  if (!r->asked) return;
+static void put_kept(const report *r, const assessment *x, text *out) {
   text kept;
   text_init(&kept, r->arena, 4000);
   rule_mask mask = rules_in_force(r->brief) & ~x->broken;
@@ -160,9 +165,13 @@ static void put_rules(const report *r, const assessment *x, text *out) {
     if ((mask >> i) & 1u)
       text_putf(&kept, "%s%s", kept.len ? ", " : "", rule_name(r->arena, r->brief, i));
   page_line(out, "Rules", text_format(r->arena, "Kept: %s.", kept.len ? kept.data : "none"));
+}
+
+static void put_rules(const report *r, const assessment *x, text *out) {
+  if (r->asked) put_kept(r, x, out);
   for (int i = 0; i < x->broken_count; i++) {
     const broken_rule *b = &x->broke[i];
-    page_line(out, "",
+    page_line(out, r->asked || i > 0 ? "" : "Rules",
               text_format(r->arena, "Broken: %s: asks %s, has %s.",
                           rule_name(r->arena, r->brief, b->rule), b->limit, b->found));
   }
