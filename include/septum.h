@@ -30,7 +30,7 @@ typedef struct septum septum;
 /* What a call found. Freed by septum_answer_free. */
 typedef struct septum_answer septum_answer;
 
-/* Units of the text answer. JSON and CSV are always SI (and per ft2 where the key says so). */
+/* Units of text and CSV. JSON is always SI (and per ft2 where the key says so). */
 typedef enum septum_units {
   SEPTUM_UNITS_BRIEF = 0, /* as the brief says, else US */
   SEPTUM_UNITS_US = 1,
@@ -56,7 +56,7 @@ typedef struct septum_options {
   const char *save_model; /* pick: path for the 0-1 model in CPLEX LP format; NULL = none */
   const char *save_csv;   /* rate, pick: path for the takeoff as CSV; NULL = none */
   double time_limit_s;    /* pick: seconds for the solver; 0 = no limit */
-  septum_units units;     /* of the text answer */
+  septum_units units;     /* of text and CSV */
 } septum_options;
 
 /* Sets every field to its default. */

@@ -39,7 +39,7 @@ static const option_row option_rows[] = {
     {"save-model", "FILE", OPTION_SAVE_MODEL, CLI_PICK, "write the 0-1 model in CPLEX LP format"},
     {"time-limit", "S", OPTION_TIME_LIMIT, CLI_PICK, "seconds for the solver; the gap is printed"},
     {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK,
-     "units of the text; default: the brief's, else us"},
+     "units of text and CSV; default: the brief's, else us"},
     {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
 };
 enum { OPTION_COUNT = sizeof option_rows / sizeof option_rows[0] };

@@ -11,6 +11,7 @@ static void put_number(const report *r, text *out, double value) {
 }
 
 static void put_line(const report *r, const cost_line *l, text *out) {
+  view_quantity q = view_quantity_of(r, l);
   text amount;
   text_init(&amount, r->arena, 64);
   text_cents(&amount, l->cents, false);
@@ -18,9 +19,9 @@ static void put_line(const report *r, const cost_line *l, text *out) {
   markup_csv_field(out, view_item(r, l), false);
   markup_csv_field(out, l->name, false);
   markup_csv_field(out, view_line_kind(l), false);
-  put_number(r, out, l->quantity);
-  markup_csv_field(out, l->unit, false);
-  put_number(r, out, l->rate);
+  put_number(r, out, q.quantity);
+  markup_csv_field(out, q.unit, false);
+  put_number(r, out, q.rate);
   markup_csv_field(out, amount.data, false);
   markup_csv_field(out, r->prices->currency, false);
   markup_csv_end(out);

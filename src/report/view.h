@@ -30,7 +30,7 @@ typedef struct view_cost {
 
 view_cost view_cost_of(const report *r, const assessment *x);
 
-/* Quantity and rate of a takeoff line in the units of the text. */
+/* Quantity and rate of a takeoff line in the units of text and CSV. */
 typedef struct view_quantity {
   double quantity, rate;
   const char *unit;
