@@ -1,8 +1,8 @@
-/* Takeoff and cost of one wall of the brief's length and height.
+/* Takeoff and cost of one wall of the brief's length and height (docs/methods/cost.md).
  * Money rule: each line is quantity (fractional, waste included) x rate, rounded to the cent half-up; the total is the sum
- * of rounded lines; per_m2 = total / area. Lines of the core (framing, fills, mounts, sealant, backing) and of the leaves
- * (boards, membranes, their labour, tape and finish) never share an item, so cost = core + leaves, exactly, in cents, before markups,
- * and markups depend only on the summed material and labour cents. */
+ * of rounded lines; per_m2 = total / area. Lines of the core (framing, fills, mounts, boards that are no room-side leaf, sealant,
+ * backing) are summed and rounded apart from those of the leaves (boards, membranes, screws, tape and finish), so cost = core +
+ * leaves, exactly, in cents, before markups, and markups depend only on the summed material and labour cents. */
 #ifndef CHECKS_COST_H
 #define CHECKS_COST_H
 
@@ -12,6 +12,7 @@
 
 typedef enum line_kind { LINE_MATERIAL, LINE_LABOUR, LINE_MARKUP } line_kind;
 
+/* An item may stand on two lines of a kind: once in the core (a board under a mount), once in the leaves. */
 typedef struct cost_line {
   int item;             /* in the price book; CATALOG_NONE for markups */
   const char *name;     /* item name */
@@ -23,7 +24,7 @@ typedef struct cost_line {
   long long cents;
 } cost_line;
 
-enum { COST_MAX_LINES = 96 };
+enum { COST_MAX_LINES = 144 }; /* more than the items of a wall with all its faces full and different */
 typedef struct takeoff {
   int count;
   cost_line line[COST_MAX_LINES];
@@ -44,10 +45,12 @@ typedef struct cost_total {
   double area_m2, hours;
 } cost_total;
 
-/* The full takeoff with markup lines. */
+/* The height that is built: to the ceiling (plus what stands above it) where the wall stops there, else the brief's. */
+double cost_built_height_m(const brief *b);
+/* The full takeoff with markup lines. `book` was read with `c`. */
 void cost_takeoff(const price_book *book, const catalog *c, const brief *b, const wall *w, takeoff *out, cost_total *total);
-/* The two parts, for the sweep. core: faces ignored. leaves: uses of the core only what leaf lines depend on (frame material and mil,
- * support spacing of each side, mounts). */
+/* The two parts, for the sweep. core: room-side faces ignored. leaves: of the core only its frame's record, spacing and mounts
+ * matter, and of these only the spacing of each side's supports. */
 cost_parts cost_core(const price_book *book, const catalog *c, const brief *b, const wall *core);
 cost_parts cost_leaves(const price_book *book, const catalog *c, const brief *b, const wall *w);
 /* Markups and total from summed parts; the same arithmetic that cost_takeoff uses. */
