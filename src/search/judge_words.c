@@ -167,7 +167,7 @@ void judge_say_cautions(arena *a, const judge_context *x, assessment *out) {
   if (out->mounted)
     add_caution(out, "A screw, box or fixture that reaches from the mounted leaf to a stud takes the gain of the mount away: "
                      "no fastening but to the leaf itself on that side.");
-  for (int s = 0; s < 2; s++)
-    if (x->brief->side[s].fastening == FASTENING_HEAVY)
-      add_caution(out, "Heavy fastening needs backing let in between the studs: its place must be on the drawings.");
+  const char *structure[STRUCTURE_MAX_CAUTIONS];
+  int count = structure_cautions(x->catalog, x->brief, &out->wall, structure);
+  for (int i = 0; i < count; i++) add_caution(out, structure[i]);
 }

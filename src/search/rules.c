@@ -4,6 +4,7 @@
 #include <math.h>
 #include <string.h>
 
+#include "checks/cost.h"
 #include "wall/wall.h"
 
 /* A thickness limit is kept by a wall up to 1/32 in beyond it (common practice, no source: prints go to 1/16 in). */
@@ -185,7 +186,7 @@ rule_limits rules_limits(const brief *b) {
   if (b->mass_kg_m2.has_max) l.mass_max = (int)floor(b->mass_kg_m2.max * 100 + last_bits);
   if (b->mass_kg_m2.has_min) l.mass_min = (int)ceil(b->mass_kg_m2.min * 100 - last_bits);
   if (b->cost_per_m2.has_max)
-    l.total_max = (long long)floor(b->cost_per_m2.max * b->length_m * b->height_m * 100 + last_bits);
+    l.total_max = (long long)floor(b->cost_per_m2.max * b->length_m * cost_built_height_m(b) * 100 + last_bits);
   l.height_mm = rules_height(b->height_m);
   l.fire_min = b->fire_min;
   return l;

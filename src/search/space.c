@@ -1,10 +1,14 @@
 /* The axes of the search.
  *
- * A leaf is one to three equal finish boards, or such boards over one other board, with at most one membrane; ordinary build
- * has at most two boards and what compat_face finds nothing unusual in. A core is frame, spacing, gap, fills and mounts.
- * What compat_check would say of the whole wall is the union of what its pieces say, so that a wall is legal when its core,
- * its leaves, each leaf on its support and the pair are. */
+ * A leaf is equal finish boards, alone, over one other board, or with one membrane: in ordinary build at most two boards and
+ * nothing that compat_face calls unusual, in any build up to three. A core is frame, spacing, gap, fills and mounts. What
+ * compat_check would say of the whole wall is the union of what its pieces say, so that a wall is legal when its core, its
+ * leaves, each leaf on its support and the pair are. Why these axes: docs/design/search.md. */
 #include "search/space.h"
+
+#include <string.h>
+
+#include "wall/line.h"
 
 enum { ORDINARY_BOARDS = 2, MOST_BOARDS = 3, DEFAULT_GAP_MM = 25, FILL_CHOICES = 3 };
 
@@ -32,10 +36,15 @@ static bool named(const brief *b, catalog_kind kind, const char *id) {
 static bool usable(const builder *u, catalog_kind kind, int index, bool ordinary) {
   const char *id = catalog_id(u->catalog, (catalog_ref){kind, index});
   if (!rules_only_allows(u->catalog, u->brief, kind, id)) return false;
-  return ordinary || u->brief->build == BUILD_ANY || named(u->brief, kind, id);
+  return ordinary || named(u->brief, kind, id);
 }
 
-static bool layer_usable(const builder *u, int i) { return usable(u, CATALOG_LAYER, i, u->catalog->layers[i].ordinary); }
+static bool any_build(const builder *u) { return u->brief->build == BUILD_ANY; }
+
+static bool layer_usable(const builder *u, int i) {
+  const layer *l = &u->catalog->layers[i];
+  return usable(u, CATALOG_LAYER, i, l->ordinary || (any_build(u) && l->membrane));
+}
 static bool fill_usable(const builder *u, int i) { return usable(u, CATALOG_FILL, i, u->catalog->fills[i].ordinary); }
 static bool frame_usable(const builder *u, int i) { return usable(u, CATALOG_FRAME, i, u->catalog->frames[i].ordinary); }
 static bool mount_usable(const builder *u, int i) { return usable(u, CATALOG_MOUNT, i, true); }
@@ -53,12 +62,12 @@ static void add_face(builder *u, const face *f) {
   s->faces[s->face_count++] = *f;
 }
 
-/* The boards alone, then with one membrane behind each of them. */
+/* Boards with one membrane: damping between any two of them, a limp one next to the studs. */
 static void add_with_membranes(builder *u, const face *boards) {
-  add_face(u, boards);
   for (int m = 0; m < (int)u->catalog->layer_count; m++) {
-    if (!u->catalog->layers[m].membrane || !layer_usable(u, m)) continue;
-    for (int at = 1; at <= boards->count; at++) {
+    const layer *l = &u->catalog->layers[m];
+    if (!l->membrane || !layer_usable(u, m)) continue;
+    for (int at = l->material == LAYER_DAMPING ? 1 : boards->count; at <= boards->count; at++) {
       face f = {.count = boards->count + 1};
       for (int i = 0; i < f.count; i++) f.layer[i] = i < at ? boards->layer[i] : i == at ? m : boards->layer[i - 1];
       add_face(u, &f);
@@ -66,34 +75,47 @@ static void add_with_membranes(builder *u, const face *boards) {
   }
 }
 
-/* Boards that may stand behind finish boards of another kind: backing boards, and plain boards behind those that only one
- * room asks for. */
-static bool backs(const layer *l) { return !l->membrane && (l->backing || l->material == LAYER_CEMENT || l->material == LAYER_GYPSUM); }
+/* Ordinary build mixes finish boards only for a wet or an abused room, and gives the sides different ones only where their
+ * rooms differ in that (common practice, no source). */
+static bool rooms_particular(const brief *b) {
+  return b->side[SIDE_A].wet || b->side[SIDE_B].wet || b->side[SIDE_A].abuse || b->side[SIDE_B].abuse;
+}
+
+static bool rooms_differ(const brief *b) {
+  return b->side[SIDE_A].wet != b->side[SIDE_B].wet || b->side[SIDE_A].abuse != b->side[SIDE_B].abuse;
+}
+
+/* Whether a board may stand behind finish boards of another kind: a backing board may, and a plain board behind those of wet and
+ * abused rooms. */
+static bool backs(const builder *u, int finish, int back) {
+  const layer *f = &u->catalog->layers[finish], *l = &u->catalog->layers[back];
+  if (back == finish || l->membrane || !layer_usable(u, back)) return false;
+  if (l->backing || l->material == LAYER_CEMENT) return true;
+  bool asked = any_build(u) || rooms_particular(u->brief);
+  return l->material == LAYER_GYPSUM && (f->abuse || f->moisture) && asked;
+}
 
 static void add_faces_of(builder *u, int board, int most) {
   face f = {.count = 0};
   for (int n = 1; n <= most; n++) {
     f.layer[f.count++] = board;
+    add_face(u, &f);
     add_with_membranes(u, &f);
     if (n == most) break;
     for (int back = 0; back < (int)u->catalog->layer_count; back++) {
-      const layer *l = &u->catalog->layers[back];
-      if (back == board || !backs(l) || !layer_usable(u, back)) continue;
-      bool particular = u->catalog->layers[board].abuse || u->catalog->layers[board].moisture;
-      if (l->material == LAYER_GYPSUM && !particular) continue;
+      if (!backs(u, board, back)) continue;
       face g = f;
       g.layer[g.count++] = back;
-      add_with_membranes(u, &g);
+      add_face(u, &g);
     }
   }
 }
 
 static void build_faces(builder *u) {
-  bool any = u->brief->build == BUILD_ANY;
   for (int i = 0; i < (int)u->catalog->layer_count; i++) {
     const layer *l = &u->catalog->layers[i];
-    bool face_board = l->face || (any && l->face_if_asked);
-    if (face_board && layer_usable(u, i)) add_faces_of(u, i, any ? MOST_BOARDS : ORDINARY_BOARDS);
+    bool face_board = l->face || (any_build(u) && l->face_if_asked);
+    if (face_board && layer_usable(u, i)) add_faces_of(u, i, any_build(u) ? MOST_BOARDS : ORDINARY_BOARDS);
   }
 }
 
@@ -229,10 +251,58 @@ static void build_supports(builder *u) {
 static void build_pairs(builder *u) {
   space *s = u->out;
   size_t n = (size_t)s->face_count;
+  bool may_differ = rooms_differ(u->brief);
   s->pair = arena_array(u->arena, n * n, sizeof *s->pair);
   for (size_t i = 0; i < n; i++)
-    for (size_t j = 0; j < n; j++)
-      s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <= u->most;
+    for (size_t j = 0; j < n; j++) {
+      bool same_board = s->faces[i].layer[0] == s->faces[j].layer[0];
+      if (!same_board && !may_differ) continue;
+      s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <= (same_board ? u->most : COMPAT_FINE);
+    }
+}
+
+/* ---- wall lines in pieces ---- */
+
+/* The line of core `k` between leaves `i` and `j`. */
+static const char *line_of(builder *u, int k, int i, int j) {
+  wall w = space_wall(u->out, k, i, j);
+  return line_print(u->arena, u->catalog, &w);
+}
+
+/* A line is face, core, face; no face holds a bar. */
+static void build_texts(builder *u) {
+  space *s = u->out;
+  if (s->core_count == 0 || s->face_count == 0) return;
+  s->face_text = arena_array(u->arena, (size_t)s->face_count, sizeof *s->face_text);
+  s->core_text = arena_array(u->arena, (size_t)s->core_count, sizeof *s->core_text);
+  for (int i = 0; i < s->face_count; i++) {
+    const char *line = line_of(u, 0, i, i);
+    s->face_text[i] = text_copyn(u->arena, line, (size_t)(strchr(line, '|') - line) - 1);
+  }
+  size_t edge = strlen(s->face_text[0]);
+  for (int k = 0; k < s->core_count; k++) {
+    const char *line = line_of(u, k, 0, 0);
+    s->core_text[k] = text_copyn(u->arena, line + edge, strlen(line) - 2 * edge);
+  }
+}
+
+/* Compares two texts given in three pieces each. */
+static int compare_pieces(const char *const x[3], const char *const y[3]) {
+  int i = 0, j = 0;
+  const char *p = x[0], *q = y[0];
+  for (;;) {
+    while (*p == '\0' && i < 2) p = x[++i];
+    while (*q == '\0' && j < 2) q = y[++j];
+    if (*p != *q || *p == '\0') return compare_int((unsigned char)*p, (unsigned char)*q);
+    p++;
+    q++;
+  }
+}
+
+int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core, int other_a, int other_b) {
+  const char *const x[3] = {s->face_text[face_a], s->core_text[core], s->face_text[face_b]};
+  const char *const y[3] = {s->face_text[other_a], s->core_text[other_core], s->face_text[other_b]};
+  return compare_pieces(x, y);
 }
 
 /* ---- the whole ---- */
@@ -253,6 +323,7 @@ void space_build(arena *a, const judge_context *x, space *out) {
   build_cores(&u);
   build_supports(&u);
   build_pairs(&u);
+  build_texts(&u);
 }
 
 bool space_legal(const space *s, int core, int face_a, int face_b) {

@@ -21,6 +21,7 @@ typedef struct space {
   space_support *supports; int support_count;
   bool *on_support;                     /* support_count x face_count */
   bool *pair;                           /* face_count x face_count: may stand opposite */
+  const char **face_text, **core_text;  /* pieces of the wall line: a face; what stands between the faces */
 } space;
 
 /* Builds the axes after `only`, `without` (kept, as rules), build and compatibility. */
@@ -28,6 +29,8 @@ void space_build(arena *a, const judge_context *x, space *out);
 /* Whether face i on A and j on B may stand on core k. */
 bool space_legal(const space *s, int core, int face_a, int face_b);
 wall space_wall(const space *s, int core, int face_a, int face_b);
+/* Order of two walls' lines, as strings. */
+int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core, int other_a, int other_b);
 /* How many legal walls. */
 long long space_count(const space *s);
 

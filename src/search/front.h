@@ -1,0 +1,31 @@
+/* The walls that no other beats: what a choice under the brief, under any of its limits moved and under any of its rules given
+ * up can need. See docs/design/search.md for why nothing is lost. */
+#ifndef SEARCH_FRONT_H
+#define SEARCH_FRONT_H
+
+#include "search/candidate.h"
+
+/* A candidate whose promised rating is known only within bounds while the kernel's figure stands: is.promised_hundredth is the
+ * lower one. */
+typedef struct front_member {
+  candidate wall;
+  int promised_most;
+  bool exact;              /* rated by the reference */
+} front_member;
+
+typedef struct front {
+  arena *arena;
+  const space *space;
+  rule_mask in_force;      /* a coordinate that no rule reads decides nothing */
+  bool floor_value;        /* cost and total differ */
+  front_member *item;
+  int count, cap;
+} front;
+
+void front_init(front *f, arena *a, const space *s);
+/* Whether some member is no worse in everything that counts, whatever the bounds turn out to be. */
+bool front_beats(front *f, const front_member *m);
+/* Adds a member that front_beats refused nothing of, and drops those that it beats. */
+void front_add(front *f, const front_member *m);
+
+#endif
