@@ -11,29 +11,39 @@
 #define FOOT UNITS_M_PER_FT
 
 static const struct {
-  double studs_added;        /* share for corners, tees and free ends: common practice, no source */
-  double studs_an_opening;   /* two jambs and the header cut from a stud: common practice, no source */
-  double stud_short_m;       /* a stud so much short of the clear height still serves: precut lengths are made for three plates and
-                                stand with two (92-5/8 in under 8 ft): common practice, no source */
+  double studs_added; /* share for corners, tees and free ends: common practice, no source */
+  double
+      studs_an_opening; /* two jambs and the header cut from a stud: common practice, no source */
+  double stud_short_m;  /* a stud so much short of the clear height still serves: precut lengths are
+                           made for three plates and  stand with two (92-5/8 in under 8 ft): common
+                           practice, no source */
   int plates, plates_bearing; /* wood, a row: common practice, no source */
-  int tracks;                /* steel, a row */
-  double bridging_m;         /* load-bearing steel: rows of bridging no further apart (48 in): common practice, no source */
-  double channel_ends_m;     /* first row <= 50 mm from the floor, last <= 150 mm from the ceiling: common practice, no source */
-  double clip_ends_m;        /* <= 75 mm and <= 150 mm: from memory: instructions for isolation clips */
-  double cut_below_m;        /* bays narrower than this are filled from the 16 in stock (12 in centres) */
-  double cut_waste;          /* and so much of it is lost: common practice, no source */
-  double opening_kept_m2;    /* board is deducted only for openings above 32 ft2: common practice, no source */
-  double fireblock_m;        /* IBC 718.2.1, from memory: every 10 ft of height, and of length between rows */
-  double boxes_per_10m;      /* of wall and side, where the brief does not say: common practice, no source */
-  double finish_above_m;     /* finish goes so far above the ceiling: common practice, no source */
-  int finish_hidden;         /* Level 1 above it (ASTM C840, GA-214, from memory) */
-  int finish_tile;           /* Level 2 under tile (GA-214, from memory) */
-  double screws_m;           /* between screws at edges and in the field (12 in): ASTM C840, from memory */
-  double sheet_m;            /* width of sheets, 48 in */
-} rules = {0.10, 3, 0.010, 2, 3, 2, 48 * INCH, 0.200, 0.225, 14 * INCH, 0.25, 32 * UNITS_M2_PER_FT2, 10 * FOOT, 3, 0.100, 1, 2,
-           12 * INCH, 48 * INCH};
+  int tracks;                 /* steel, a row */
+  double bridging_m;     /* load-bearing steel: rows of bridging no further apart (48 in): common
+                            practice, no source */
+  double channel_ends_m; /* first row <= 50 mm from the floor, last <= 150 mm from the ceiling:
+                            common practice, no source */
+  double clip_ends_m;    /* <= 75 mm and <= 150 mm: from memory: instructions for isolation clips */
+  double cut_below_m; /* bays narrower than this are filled from the 16 in stock (12 in centres) */
+  double cut_waste;   /* and so much of it is lost: common practice, no source */
+  double opening_kept_m2; /* board is deducted only for openings above 32 ft2: common practice, no
+                             source */
+  double
+      fireblock_m; /* IBC 718.2.1, from memory: every 10 ft of height, and of length between rows */
+  double boxes_per_10m;  /* of wall and side, where the brief does not say: common practice, no
+                            source */
+  double finish_above_m; /* finish goes so far above the ceiling: common practice, no source */
+  int finish_hidden;     /* Level 1 above it (ASTM C840, GA-214, from memory) */
+  int finish_tile;       /* Level 2 under tile (GA-214, from memory) */
+  double screws_m; /* between screws at edges and in the field (12 in): ASTM C840, from memory */
+  double sheet_m;  /* width of sheets, 48 in */
+} rules = {0.10,      3,     0.010, 2,         3,    2,
+           48 * INCH, 0.200, 0.225, 14 * INCH, 0.25, 32 * UNITS_M2_PER_FT2,
+           10 * FOOT, 3,     0.100, 1,         2,    12 * INCH,
+           48 * INCH};
 
-static const double count_slack = 1e-6; /* lengths in inches are not exact in metres: 24 ft is 12 spaces of 24 in, not 13 */
+static const double count_slack =
+    1e-6; /* lengths in inches are not exact in metres: 24 ft is 12 spaces of 24 in, not 13 */
 
 static const char bearing_steel_section[] = "05 40 00"; /* MasterFormat, from memory */
 
@@ -74,7 +84,8 @@ static double labour_factor(const price_book *book, const extent *e) {
 }
 
 /* ---- a bag of items ----
- * Quantities are summed per item before anything is rounded, for the full takeoff and for the parts alike. */
+ * Quantities are summed per item before anything is rounded, for the full takeoff and for the parts
+ * alike. */
 
 enum { BAG_MAX = 56, NET_WASTE = -1 };
 
@@ -109,7 +120,8 @@ static bag_entry *entry_of(bag *g, int item, const char *section) {
 }
 
 /* `net` takeoff units, and `hours` of labour besides those of the item's own rate. */
-static void put_all(bag *g, price_slot slot, double net, double waste, double hours, const char *section) {
+static void put_all(bag *g, price_slot slot, double net, double waste, double hours,
+                    const char *section) {
   if (!(net > 0)) return;
   if (slot.item == CATALOG_NONE) {
     if (!g->missing) g->missing = slot.code;
@@ -148,7 +160,8 @@ static int runner_count(const brief *b, const frame *f) {
   return b->loadbearing ? rules.plates_bearing : rules.plates;
 }
 
-static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w, const char *section) {
+static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w,
+                      const char *section) {
   const frame *f = &c->frames[w->frame];
   double spacing = wall_spacing_m(w->spacing_mm);
   double run = (ceil(e->length_m / spacing - count_slack) + 1) * (1 + rules.studs_added);
@@ -160,7 +173,8 @@ static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c,
   double hours = 0;
   if (stud.item != CATALOG_NONE) {
     double above = fmax(0, length - g->book->tall_stud_m - rules.stud_short_m);
-    hours = pieces * (g->book->items[stud.item].hours_each + g->book->tall_stud_hours_per_m * above);
+    hours =
+        pieces * (g->book->items[stud.item].hours_each + g->book->tall_stud_hours_per_m * above);
   }
   put_all(g, stud, pieces * length, NET_WASTE, hours, section);
 }
@@ -182,7 +196,8 @@ static void put_frame(bag *g, const brief *b, const extent *e, const catalog *c,
   }
 }
 
-/* Plates close the bays of wood studs at floor and ceiling; more stands between, and between two rows also along the wall. */
+/* Plates close the bays of wood studs at floor and ceiling; more stands between, and between two
+ * rows also along the wall. */
 static void put_fireblocking(bag *g, const extent *e, const frame *f) {
   if (f->material != FRAME_WOOD) return;
   bool apart = f->layout != FRAME_SINGLE;
@@ -222,8 +237,10 @@ static void put_seals(bag *g, const brief *b, const extent *e) {
   double beads = 2 * 2 * (e->length_m + e->height_m); /* round each face, under the base layer */
   if (b->head == HEAD_SLIP) {
     double joint = 2 * e->length_m;
-    if (b->fire_min > 0) put_work(g, WORK_HEAD_JOINT, joint);
-    else beads += joint;
+    if (b->fire_min > 0)
+      put_work(g, WORK_HEAD_JOINT, joint);
+    else
+      beads += joint;
   }
   put_work(g, WORK_SEALANT, beads);
   double boxes = b->boxes_given ? b->boxes_per_10m : rules.boxes_per_10m;
@@ -231,7 +248,9 @@ static void put_seals(bag *g, const brief *b, const extent *e) {
 }
 
 static void put_backing(bag *g, const brief *b, const extent *e, const frame *f) {
-  work_item work = f->material == FRAME_STEEL ? WORK_BACKING_STEEL : f->frt ? WORK_BACKING_FRT : WORK_BACKING_WOOD;
+  work_item work = f->material == FRAME_STEEL ? WORK_BACKING_STEEL
+                   : f->frt                   ? WORK_BACKING_FRT
+                                              : WORK_BACKING_WOOD;
   for (int s = 0; s < 2; s++) {
     const room_side *side = &b->side[s];
     if (side->fastening != FASTENING_HEAVY) continue;
@@ -242,7 +261,8 @@ static void put_backing(bag *g, const brief *b, const extent *e, const frame *f)
 
 /* ---- boards ---- */
 
-/* Screws of a layer per m2: two edges and the field of a sheet of full height on supports `spacing` apart. */
+/* Screws of a layer per m2: two edges and the field of a sheet of full height on supports `spacing`
+ * apart. */
 static double screws_per_m2(const extent *e, double spacing) {
   double lines = 2 + (rules.sheet_m / spacing - 1);
   return lines * (e->height_m / rules.screws_m + 1) / (rules.sheet_m * e->height_m);
@@ -264,7 +284,8 @@ static void put_level(bag *g, int level, double area_m2) {
 }
 
 /* Only the face layer is finished; base layers and wood panels are left as they are. */
-static void put_finish(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w, int s) {
+static void put_finish(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w,
+                       int s) {
   const face *f = &w->side[s];
   if (f->count == 0) return;
   layer_material m = c->layers[f->layer[0]].material;
@@ -306,7 +327,8 @@ static void fill_leaves(bag *g, const brief *b, const extent *e, const catalog *
 
 /* ---- money ---- */
 
-/* To the cent, half-up. The little more than a half lifts amounts that are half a cent in decimals but a hair less in binary. */
+/* To the cent, half-up. The little more than a half lifts amounts that are half a cent in decimals
+ * but a hair less in binary. */
 static long long cents_of(double amount) {
   return (long long)floor(amount * 100 + 0.5 + 1e-7);
 }
@@ -353,7 +375,8 @@ static long long profit_cents(const price_book *book, long long base) {
   return cents_of((double)base * book->overhead_profit / 100);
 }
 
-cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, cost_parts core, cost_parts leaves) {
+cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, cost_parts core,
+                    cost_parts leaves) {
   cost_total t;
   t.material_cents = core.material_cents + leaves.material_cents;
   t.labour_cents = core.labour_cents + leaves.labour_cents;
@@ -376,8 +399,10 @@ static void add_lines(takeoff *out, const bag *g) {
   for (int i = 0; i < g->count; i++) {
     const bag_entry *e = &g->entry[i];
     const price_item *item = &g->book->items[e->item];
-    cost_line line = {e->item, item->name, e->section, LINE_MATERIAL, e->bought, price_unit_names[item->unit], item->price,
-                      material_cents(g->book, e)};
+    cost_line line = {e->item,     item->name,
+                      e->section,  LINE_MATERIAL,
+                      e->bought,   price_unit_names[item->unit],
+                      item->price, material_cents(g->book, e)};
     if (item->price > 0) add_line(out, line);
     line.kind = LINE_LABOUR;
     line.quantity = e->hours;
@@ -393,8 +418,11 @@ static void add_lines(takeoff *out, const bag *g) {
 }
 
 static void add_markups(takeoff *out, const price_book *book, const cost_total *t) {
-  long long tax = tax_cents(book, t->material_cents), base = t->material_cents + t->labour_cents + tax;
-  cost_line line = {CATALOG_NONE, "sales tax on material", "", LINE_MARKUP, (double)t->material_cents / 100, "", book->sales_tax, tax};
+  long long tax = tax_cents(book, t->material_cents),
+            base = t->material_cents + t->labour_cents + tax;
+  cost_line line = {
+      CATALOG_NONE, "sales tax on material", "", LINE_MARKUP, (double)t->material_cents / 100,
+      "",           book->sales_tax,         tax};
   add_line(out, line);
   line.name = "overhead and profit";
   line.quantity = (double)base / 100;
@@ -403,7 +431,8 @@ static void add_markups(takeoff *out, const price_book *book, const cost_total *
   add_line(out, line);
 }
 
-void cost_takeoff(const price_book *book, const catalog *c, const brief *b, const wall *w, takeoff *out, cost_total *total) {
+void cost_takeoff(const price_book *book, const catalog *c, const brief *b, const wall *w,
+                  takeoff *out, cost_total *total) {
   extent e = extent_of(b);
   bag g;
   out->count = 0;

@@ -76,6 +76,7 @@ typedef struct frame {
   double inertia_effective_m4, moment_n_m; /* steel: effective I; allowable moment. Wood: 0 */
   bool section_estimated;   /* these two are estimated from a tabulated neighbour, not tabulated (source says how) */
   double composite_inertia_m4; /* with one board each side full height (limiting-height table); 0 = not tabulated */
+  double composite_moment_n_m; /* strength that table shows where it falls short of that stiffness; 0 = it does not */
   double modulus_pa;
   bool loadbearing;         /* may carry load (subject to the rules of checks/structure) */
   bool noncombustible, frt;

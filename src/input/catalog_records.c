@@ -105,6 +105,8 @@ static const field frame_fields[] = {
     {"section_estimated", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.section_estimated)},
     {"composite_inertia_mm4", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e-3, 1e-12, NULL,
      AT(raw_frame, f.composite_inertia_m4)},
+    {"composite_moment_n_m", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 1e5, 0, NULL,
+     AT(raw_frame, f.composite_moment_n_m)},
     {"modulus_gpa", FIELD_NUMBER, POSITIVE, 0, 1e12, 1e9, NULL, AT(raw_frame, f.modulus_pa)},
     {"loadbearing", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.loadbearing)},
     {"noncombustible", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_frame, f.noncombustible)},

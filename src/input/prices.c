@@ -6,7 +6,8 @@
 #include "base/units.h"
 #include "input/fields.h"
 
-/* Reading goes in two steps: the records by table, then their codes are looked up for everything that a takeoff can ask for. */
+/* Reading goes in two steps: the records by table, then their codes are looked up for everything
+ * that a takeoff can ask for. */
 
 const char *const price_unit_names[UNIT_COUNT] = {"m2", "m", "each"};
 const char *const trade_names[TRADE_COUNT] = {"hanger", "taper", "insulator"};
@@ -19,11 +20,15 @@ static const char *const trade_words[] = {"hanger", "taper", "insulator", NULL};
 static const struct {
   price_unit unit;
   double si; /* one of it in the SI unit of takeoff */
-} units[] = {{UNIT_M2, 1}, {UNIT_M2, UNITS_M2_PER_FT2}, {UNIT_M, 1}, {UNIT_M, UNITS_M_PER_FT}, {UNIT_EACH, 1}};
+} units[] = {{UNIT_M2, 1},
+             {UNIT_M2, UNITS_M2_PER_FT2},
+             {UNIT_M, 1},
+             {UNIT_M, UNITS_M_PER_FT},
+             {UNIT_EACH, 1}};
 
 /* Wide guards against slips of a digit or a unit. */
-#define MAX_MONEY 1e6
-#define MAX_HOURS 1e3
+#define MAX_MONEY    1e6
+#define MAX_HOURS    1e3
 #define MAX_QUANTITY 1e7
 
 typedef struct raw_item {
@@ -40,7 +45,7 @@ typedef struct raw_book {
 
 #define ITEM(member) offsetof(raw_item, member)
 #define BOOK(member) offsetof(raw_book, member)
-#define REQUIRED FIELD_REQUIRED
+#define REQUIRED     FIELD_REQUIRED
 
 static const field item_fields[] = {
     {"code", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.code)},
@@ -50,7 +55,8 @@ static const field item_fields[] = {
     {"price", FIELD_NUMBER, 0, 0, MAX_MONEY, 0, NULL, ITEM(item.price)},
     {"price_bought", FIELD_NUMBER, 0, 0, MAX_MONEY, 0, NULL, ITEM(price_bought)},
     {"bought_as", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.bought_as)},
-    {"bought_quantity", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, MAX_QUANTITY, 0, NULL, ITEM(item.bought_quantity)},
+    {"bought_quantity", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, MAX_QUANTITY, 0, NULL,
+     ITEM(item.bought_quantity)},
     {"waste", FIELD_NUMBER, 0, 0, 2, 0, NULL, ITEM(item.waste)},
     {"hours", FIELD_NUMBER, 0, 0, MAX_HOURS, 0, NULL, ITEM(item.hours)},
     {"hours_each", FIELD_NUMBER, 0, 0, MAX_HOURS, 0, NULL, ITEM(item.hours_each)},
@@ -100,11 +106,13 @@ static void fault(reader *r, error_code code, const json_value *v, const char *m
 /* An array of 1 to `max` elements. */
 static bool is_array(reader *r, const json_value *v, size_t max) {
   if (v->kind != JSON_ARRAY) {
-    fault(r, ERROR_FIELD_TYPE, v, text_format(r->arena, "expected an array, found %s", json_kind_name(v->kind)));
+    fault(r, ERROR_FIELD_TYPE, v,
+          text_format(r->arena, "expected an array, found %s", json_kind_name(v->kind)));
     return false;
   }
   if (v->count >= 1 && v->count <= max) return true;
-  fault(r, ERROR_FIELD_RANGE, v, text_format(r->arena, "expected 1 to %zu elements, found %zu", max, v->count));
+  fault(r, ERROR_FIELD_RANGE, v,
+        text_format(r->arena, "expected 1 to %zu elements, found %zu", max, v->count));
   return false;
 }
 
@@ -114,7 +122,8 @@ static void must_rise(reader *r, const json_value *v, double value, double befor
 
 static void read_breaks(reader *r, const json_value *v, double si, price_item *out) {
   static const field table[] = {
-      {"from", FIELD_NUMBER, REQUIRED | FIELD_ABOVE_MIN, 0, MAX_QUANTITY, 0, NULL, offsetof(price_break, from)},
+      {"from", FIELD_NUMBER, REQUIRED | FIELD_ABOVE_MIN, 0, MAX_QUANTITY, 0, NULL,
+       offsetof(price_break, from)},
       {"price", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, offsetof(price_break, price)},
   };
   if (!is_array(r, v, PRICES_MAX_BREAKS)) return;
@@ -164,7 +173,8 @@ static void read_item(reader *r, const json_value *v) {
   int same = prices_item(r->book, item->code);
   if (same != CATALOG_NONE) {
     int line = r->kept[same].json->line;
-    fault(r, ERROR_FIELD_CONFLICT, v, text_format(r->arena, "the code \"%s\" stands already in line %d", item->code, line));
+    fault(r, ERROR_FIELD_CONFLICT, v,
+          text_format(r->arena, "the code \"%s\" stands already in line %d", item->code, line));
     return;
   }
   r->kept[r->book->count].json = v;
@@ -182,13 +192,16 @@ static void read_rates(reader *r, const json_value *v) {
   static const field table[] = {
       {"hanger", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, TRADE_HANGER * sizeof(double)},
       {"taper", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, TRADE_TAPER * sizeof(double)},
-      {"insulator", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL, TRADE_INSULATOR * sizeof(double)},
+      {"insulator", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL,
+       TRADE_INSULATOR * sizeof(double)},
   };
   (void)fields_read(r->arena, r->diags, v, table, COUNT(table), r->book->rate);
 }
 
 /* A length with what it does to labour: a factor, or hours. */
-typedef struct step { double length_m, value; } step;
+typedef struct step {
+  double length_m, value;
+} step;
 
 static void read_heights(reader *r, const json_value *v) {
   static const field table[] = {
@@ -223,7 +236,8 @@ static void read_tall_studs(reader *r, const json_value *v) {
   static const field table[] = {
       {"above_m", FIELD_LENGTH, REQUIRED, 0, 100, 0, NULL, offsetof(step, length_m)},
       {"hours_per_m", FIELD_NUMBER, REQUIRED, 0, MAX_HOURS, 0, NULL, offsetof(step, value)},
-      {"hours_per_ft", FIELD_NUMBER, REQUIRED, 0, MAX_HOURS, 1 / UNITS_M_PER_FT, NULL, offsetof(step, value)},
+      {"hours_per_ft", FIELD_NUMBER, REQUIRED, 0, MAX_HOURS, 1 / UNITS_M_PER_FT, NULL,
+       offsetof(step, value)},
   };
   step s = {0, 0};
   if (!fields_read(r->arena, r->diags, v, table, COUNT(table), &s)) return;
@@ -248,7 +262,9 @@ static void read_lengths(reader *r, const json_value *v, stock_lengths *out) {
 }
 
 static void read_stock(reader *r, const json_value *v) {
-  typedef struct raw_stock { const json_value *of[FRAME_STEEL + 1]; } raw_stock;
+  typedef struct raw_stock {
+    const json_value *of[FRAME_STEEL + 1];
+  } raw_stock;
   static const field table[] = {
       {"wood", FIELD_VALUE, 0, 0, 0, 0, NULL, FRAME_WOOD * sizeof(const json_value *)},
       {"steel", FIELD_VALUE, 0, 0, 0, 0, NULL, FRAME_STEEL * sizeof(const json_value *)},
@@ -299,7 +315,8 @@ batt_width prices_batt_width(frame_material m, double spacing_m) {
   return wide ? BATT_24IN : BATT_16IN;
 }
 
-static const char *const unit_kinds[UNIT_COUNT] = {"area: m2 or ft2", "length: m or ft", "the piece: each"};
+static const char *const unit_kinds[UNIT_COUNT] = {"area: m2 or ft2", "length: m or ft",
+                                                   "the piece: each"};
 
 static price_slot slot(reader *r, const char *code, price_unit unit) {
   price_slot s = {code, prices_item(r->book, code)};
@@ -335,7 +352,9 @@ static void bind_frames(reader *r) {
     b->studs[i] = slot(r, f->stud, UNIT_M);
     b->runners[i] = slot(r, f->runner, UNIT_M);
     /* Studs slip in a deep-leg track; wood plates hang from clips that cost little. */
-    b->heads[i] = f->material == FRAME_STEEL ? slot(r, text_format(r->arena, "%s-deep", f->runner), UNIT_M) : b->runners[i];
+    b->heads[i] = f->material == FRAME_STEEL
+                      ? slot(r, text_format(r->arena, "%s-deep", f->runner), UNIT_M)
+                      : b->runners[i];
   }
 }
 
@@ -375,7 +394,8 @@ static void list_slot(code_list *l, price_slot s) {
 }
 
 static code_list all_codes(arena *a, const catalog *c, const price_book *b) {
-  size_t most = c->layer_count + 3 * c->frame_count + BATT_WIDTHS * c->fill_count + 2 * c->mount_count + WORK_COUNT;
+  size_t most = c->layer_count + 3 * c->frame_count + BATT_WIDTHS * c->fill_count +
+                2 * c->mount_count + WORK_COUNT;
   code_list l = {arena_array(a, most, sizeof *l.code), arena_array(a, most, sizeof *l.priced), 0};
   for (size_t i = 0; i < c->layer_count; i++) list_slot(&l, b->layers[i]);
   for (size_t i = 0; i < c->frame_count; i++) {
@@ -400,7 +420,8 @@ int prices_report_missing(arena *a, diag_list *d, const catalog *c, const price_
   for (size_t i = 0; i < l.count; i++) {
     if (l.priced[i]) continue;
     diag_place place = {b->file, 0, 0, NULL};
-    diag_add(d, DIAG_WARNING, ERROR_PRICE_MISSING, place, "no price for \"%s\": walls that need it cannot be costed", l.code[i]);
+    diag_add(d, DIAG_WARNING, ERROR_PRICE_MISSING, place,
+             "no price for \"%s\": walls that need it cannot be costed", l.code[i]);
     missing++;
   }
   return missing;
@@ -412,7 +433,8 @@ static void report_unused(reader *r) {
     if (r->kept[i].used) continue;
     const char *code = r->book->items[i].code, *near = text_nearest(code, l.code, l.count);
     const char *hint = near ? text_format(r->arena, "; did you mean \"%s\"?", near) : "";
-    diag_add(r->diags, DIAG_WARNING, ERROR_PRICE_UNKNOWN_ITEM, json_place(r->arena, json_get(r->kept[i].json, "code")),
+    diag_add(r->diags, DIAG_WARNING, ERROR_PRICE_UNKNOWN_ITEM,
+             json_place(r->arena, json_get(r->kept[i].json, "code")),
              "nothing is priced by the code \"%s\"%s", code, hint);
   }
 }

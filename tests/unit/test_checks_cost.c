@@ -1,4 +1,5 @@
-/* Takeoff and money: a wall worked by hand, proportions of the trade, the parts of the sweep, single rules. */
+/* Takeoff and money: a wall worked by hand, proportions of the trade, the parts of the sweep,
+ * single rules. */
 #include <check.h>
 #include <math.h>
 #include <setjmp.h>
@@ -28,7 +29,9 @@ static void setup(void) {
   ck_assert_msg(book != NULL, "the shipped price book loads");
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static wall parsed(const char *line) {
   wall w;
@@ -67,24 +70,25 @@ static cost_line line_of(const takeoff *t, const char *code, line_kind kind) {
 }
 
 /* ---- by hand, to the cent ----
- * 12 ft x 9 ft, 25 gauge studs at 24 in, one 5/8 in Type X board a side, 3-1/2 in glass, Level 4 both sides; prices of
- * prices/kestrel-yard.json; quantities by the rules of docs/methods/cost.md. Area 108 ft2; labour factor 1 (9 ft high, 12 ft long).
+ * 12 ft x 9 ft, 25 gauge studs at 24 in, one 5/8 in Type X board a side, 3-1/2 in glass, Level 4
+ * both sides; prices of prices/kestrel-yard.json; quantities by the rules of docs/methods/cost.md.
+ * Area 108 ft2; labour factor 1 (9 ft high, 12 ft long).
  *
- * studs      n = 12/2 + 1 = 7, + 10 % = 7.7 of 9 ft = 69.3 ft x 0.78           = 54.054     -> 54.05
- *            7.7 x 0.11 h = 0.847 h x 62                                       = 52.514     -> 52.51
- * track      2 x 12 = 24 ft, + 4 % = 24.96 ft x 0.718                          = 17.92128   -> 17.92
- *            24 x 0.025 = 0.6 h x 62                                           = 37.20      -> 37.20
- * batts      108 ft2 + 3 % = 111.24 ft2 x 0.56 (24 in wide)                    = 62.2944    -> 62.29
- *            108 x 0.006 = 0.648 h x 48                                        = 31.104     -> 31.10
- * sealant    2 faces x 2 (12 + 9) = 84 ft, + 15 % = 96.6 ft x 9/85             = 10.228235  -> 10.23
- *            84 x 0.015 = 1.26 h x 62                                          = 78.12      -> 78.12
- * box pads   2 sides x 3 x 3.6576 m / 10 m = 2.19456, + 3 % = 2.2603968 x 5.50 = 12.432182  -> 12.43
- *            2.19456 x 0.10 = 0.219456 h x 62                                  = 13.606272  -> 13.61
- * boards     2 x 108 = 216 ft2, + 10 % = 237.6 ft2 x 0.52                      = 123.552    -> 123.55
- *            216 x 0.0145 = 3.132 h x 62                                       = 194.184    -> 194.18
- * screws     a sheet 4 x 9 ft on studs at 2 ft: 3 lines x 10 screws / 36 ft2 x 216 ft2 = 180, + 5 % = 189 x 0.012 = 2.268 -> 2.27
- * finish     2 x 108 = 216 ft2 x 0.075                                         = 16.20      -> 16.20
- *            216 x 0.0125 = 2.7 h x 60                                         = 162.00     -> 162.00
+ * studs      n = 12/2 + 1 = 7, + 10 % = 7.7 of 9 ft = 69.3 ft x 0.78           = 54.054 -> 54.05
+ *            7.7 x 0.11 h = 0.847 h x 62                                       = 52.514 -> 52.51
+ * track      2 x 12 = 24 ft, + 4 % = 24.96 ft x 0.718                          = 17.92128 -> 17.92
+ *            24 x 0.025 = 0.6 h x 62                                           = 37.20 -> 37.20
+ * batts      108 ft2 + 3 % = 111.24 ft2 x 0.56 (24 in wide)                    = 62.2944 -> 62.29
+ *            108 x 0.006 = 0.648 h x 48                                        = 31.104 -> 31.10
+ * sealant    2 faces x 2 (12 + 9) = 84 ft, + 15 % = 96.6 ft x 9/85             = 10.228235 -> 10.23
+ *            84 x 0.015 = 1.26 h x 62                                          = 78.12 -> 78.12 box
+ * pads   2 sides x 3 x 3.6576 m / 10 m = 2.19456, + 3 % = 2.2603968 x 5.50 = 12.432182  -> 12.43
+ *            2.19456 x 0.10 = 0.219456 h x 62                                  = 13.606272 -> 13.61
+ * boards     2 x 108 = 216 ft2, + 10 % = 237.6 ft2 x 0.52                      = 123.552    ->
+ * 123.55 216 x 0.0145 = 3.132 h x 62                                       = 194.184    -> 194.18
+ * screws     a sheet 4 x 9 ft on studs at 2 ft: 3 lines x 10 screws / 36 ft2 x 216 ft2 = 180, + 5 %
+ * = 189 x 0.012 = 2.268 -> 2.27 finish     2 x 108 = 216 ft2 x 0.075 = 16.20      -> 16.20 216 x
+ * 0.0125 = 2.7 h x 60                                         = 162.00     -> 162.00
  *
  * material   54.05 + 17.92 + 62.29 + 10.23 + 12.43 + 123.55 + 2.27 + 16.20     = 298.94
  * labour     52.51 + 37.20 + 31.10 + 78.12 + 13.61 + 194.18 + 162.00           = 568.72
@@ -98,14 +102,21 @@ static const struct hand_row {
   long long cents;
   const char *section;
 } hand_rows[] = {
-    {"steel-92-18", LINE_MATERIAL, 5405, "09 22 16"}, {"steel-92-18", LINE_LABOUR, 5251, "09 22 16"},
-    {"track-92-18", LINE_MATERIAL, 1792, "09 22 16"}, {"track-92-18", LINE_LABOUR, 3720, "09 22 16"},
-    {"glass-89-24in", LINE_MATERIAL, 6229, "09 81 16"}, {"glass-89-24in", LINE_LABOUR, 3110, "09 81 16"},
-    {"sealant", LINE_MATERIAL, 1023, "07 92 19"}, {"sealant", LINE_LABOUR, 7812, "07 92 19"},
-    {"box-pad", LINE_MATERIAL, 1243, "07 84 13"}, {"box-pad", LINE_LABOUR, 1361, "07 84 13"},
-    {"typex-16", LINE_MATERIAL, 12355, "09 29 00"}, {"typex-16", LINE_LABOUR, 19418, "09 29 00"},
+    {"steel-92-18", LINE_MATERIAL, 5405, "09 22 16"},
+    {"steel-92-18", LINE_LABOUR, 5251, "09 22 16"},
+    {"track-92-18", LINE_MATERIAL, 1792, "09 22 16"},
+    {"track-92-18", LINE_LABOUR, 3720, "09 22 16"},
+    {"glass-89-24in", LINE_MATERIAL, 6229, "09 81 16"},
+    {"glass-89-24in", LINE_LABOUR, 3110, "09 81 16"},
+    {"sealant", LINE_MATERIAL, 1023, "07 92 19"},
+    {"sealant", LINE_LABOUR, 7812, "07 92 19"},
+    {"box-pad", LINE_MATERIAL, 1243, "07 84 13"},
+    {"box-pad", LINE_LABOUR, 1361, "07 84 13"},
+    {"typex-16", LINE_MATERIAL, 12355, "09 29 00"},
+    {"typex-16", LINE_LABOUR, 19418, "09 29 00"},
     {"screw", LINE_MATERIAL, 227, "09 29 00"},
-    {"finish-4", LINE_MATERIAL, 1620, "09 29 00"}, {"finish-4", LINE_LABOUR, 16200, "09 29 00"},
+    {"finish-4", LINE_MATERIAL, 1620, "09 29 00"},
+    {"finish-4", LINE_LABOUR, 16200, "09 29 00"},
 };
 
 enum { HAND_ROWS = sizeof hand_rows / sizeof hand_rows[0], HAND_MARKUPS = 2 };
@@ -117,7 +128,8 @@ START_TEST(by_hand) {
   for (int i = 0; i < HAND_ROWS; i++) {
     const struct hand_row *row = &hand_rows[i];
     cost_line l = line_of(&t, row->code, row->kind);
-    ck_assert_msg(l.cents == row->cents, "%s: %lld cents, by hand %lld", row->code, l.cents, row->cents);
+    ck_assert_msg(l.cents == row->cents, "%s: %lld cents, by hand %lld", row->code, l.cents,
+                  row->cents);
     ck_assert_str_eq(l.section, row->section);
   }
   ck_assert_int_eq(t.count, HAND_ROWS + HAND_MARKUPS);
@@ -130,8 +142,9 @@ START_TEST(by_hand) {
 END_TEST
 
 /* ---- proportions ----
- * What such walls cost installed, $/ft2 of wall, 9 ft high, long, Level 4, at these prices: an estimator's sheet with the
- * quantities of common practice (computed, not published), itself good to 15 %. */
+ * What such walls cost installed, $/ft2 of wall, 9 ft high, long, Level 4, at these prices: an
+ * estimator's sheet with the quantities of common practice (computed, not published), itself good
+ * to 15 %. */
 #define PROPORTION_SHARE 0.15
 #define LONG_WALL_FT     100 /* long enough for the ends not to count */
 
@@ -161,23 +174,46 @@ START_TEST(proportions) {
   takeoff t;
   cost_total total = cost_of(&b, row->line, &t);
   double per_ft2 = (double)total.total_cents / 100 / (total.area_m2 / UNITS_M2_PER_FT2);
-  ck_assert_msg(fabs(per_ft2 / row->per_ft2 - 1) <= PROPORTION_SHARE, "%s: %.2f, expected about %.2f", row->line, per_ft2, row->per_ft2);
+  ck_assert_msg(fabs(per_ft2 / row->per_ft2 - 1) <= PROPORTION_SHARE,
+                "%s: %.2f, expected about %.2f", row->line, per_ft2, row->per_ft2);
 }
 END_TEST
 
 /* ---- single rules: the quantity of one item, waste included ---- */
 #define QUANTITY_SHARE 1e-9 /* equal but for rounding in doubles */
 
-static void plain(brief *b) { (void)b; }
-static void bearing(brief *b) { b->loadbearing = true; }
-static void slip(brief *b) { b->head = HEAD_SLIP; }
-static void slip_rated(brief *b) { b->head = HEAD_SLIP; b->fire_min = 60; }
-static void heavy_a(brief *b) { b->side[0].fastening = FASTENING_HEAVY; }
-static void heavy_stretch(brief *b) { heavy_a(b); b->side[0].fastening_length_m = 5 * UNITS_M_PER_FT; }
-static void no_boxes(brief *b) { b->boxes_given = true; }
-static void ceiling_8ft(brief *b) { b->ceiling_m[0] = 8 * UNITS_M_PER_FT - 0.1; }
-static void wet_a(brief *b) { b->side[0].wet = true; }
-static void bare(brief *b) { b->side[0].finish_level = 0; }
+static void plain(brief *b) {
+  (void)b;
+}
+static void bearing(brief *b) {
+  b->loadbearing = true;
+}
+static void slip(brief *b) {
+  b->head = HEAD_SLIP;
+}
+static void slip_rated(brief *b) {
+  b->head = HEAD_SLIP;
+  b->fire_min = 60;
+}
+static void heavy_a(brief *b) {
+  b->side[0].fastening = FASTENING_HEAVY;
+}
+static void heavy_stretch(brief *b) {
+  heavy_a(b);
+  b->side[0].fastening_length_m = 5 * UNITS_M_PER_FT;
+}
+static void no_boxes(brief *b) {
+  b->boxes_given = true;
+}
+static void ceiling_8ft(brief *b) {
+  b->ceiling_m[0] = 8 * UNITS_M_PER_FT - 0.1;
+}
+static void wet_a(brief *b) {
+  b->side[0].wet = true;
+}
+static void bare(brief *b) {
+  b->side[0].finish_level = 0;
+}
 static void door(brief *b) {
   b->opening_count = 1;
   b->openings[0] = (opening){.kind = "door", .area_m2 = 21 * UNITS_M2_PER_FT2};
@@ -187,13 +223,13 @@ static void large_opening(brief *b) {
   b->openings[0] = (opening){.kind = "glazing", .area_m2 = 40 * UNITS_M2_PER_FT2};
 }
 
-#define STEEL_LINE  "typex-16 | steel-92-18@610, glass-89 | typex-16"
+#define STEEL_LINE   "typex-16 | steel-92-18@610, glass-89 | typex-16"
 #define BEARING_LINE "typex-16 | steel-92-33@406, glass-89 | typex-16"
-#define WOOD_LINE   "typex-16 | wood-89@406, glass-89 | typex-16"
-#define DOUBLE_LINE "typex-16 | wood-89-double@406, glass-89, glass-89 | typex-16"
-#define STAG_LINE   "typex-16 | wood-89-stag-140@406, glass-89 | typex-16"
-#define RC_LINE     "typex-16 | rc@610 | wood-89@406, glass-89 | typex-16"
-#define CLIP_LINE   "typex-16 | clip@610 | wood-89@406, glass-89 | typex-16"
+#define WOOD_LINE    "typex-16 | wood-89@406, glass-89 | typex-16"
+#define DOUBLE_LINE  "typex-16 | wood-89-double@406, glass-89, glass-89 | typex-16"
+#define STAG_LINE    "typex-16 | wood-89-stag-140@406, glass-89 | typex-16"
+#define RC_LINE      "typex-16 | rc@610 | wood-89@406, glass-89 | typex-16"
+#define CLIP_LINE    "typex-16 | clip@610 | wood-89@406, glass-89 | typex-16"
 
 /* Quantities in the unit of the item: ft, ft2 or each. Sources: CP = common practice, no source. */
 static const struct rule_row {
@@ -203,48 +239,78 @@ static const struct rule_row {
   const char *code;
   double quantity;
 } rule_rows[] = {
-    {"studs at 24 in in 24 ft", "CP: n = ceil(L/s) + 1, + 10 %", STEEL_LINE, 24, 9, plain, "steel-92-18", 13 * 1.1 * 9},
+    {"studs at 24 in in 24 ft", "CP: n = ceil(L/s) + 1, + 10 %", STEEL_LINE, 24, 9, plain,
+     "steel-92-18", 13 * 1.1 * 9},
     {"a foot more is a stud more", "CP", STEEL_LINE, 25, 9, plain, "steel-92-18", 14 * 1.1 * 9},
-    {"next stock length", "CP: steel 8 9 10 12 14 16 ft", STEEL_LINE, 24, 10.5, plain, "steel-92-18", 13 * 1.1 * 12},
-    {"precut wood under 8 ft", "CP: 92-5/8 in", WOOD_LINE, 24, 8, plain, "wood-89", 19 * 1.1 * 92.625 / 12},
-    {"wood beyond precut", "CP: then 2 ft steps", WOOD_LINE, 24, 11, plain, "wood-89", 19 * 1.1 * 12},
-    {"staggered: each face its studs", "CP", STAG_LINE, 24, 8, plain, "wood-89", 2 * 19 * 1.1 * 92.625 / 12},
+    {"next stock length", "CP: steel 8 9 10 12 14 16 ft", STEEL_LINE, 24, 10.5, plain,
+     "steel-92-18", 13 * 1.1 * 12},
+    {"precut wood under 8 ft", "CP: 92-5/8 in", WOOD_LINE, 24, 8, plain, "wood-89",
+     19 * 1.1 * 92.625 / 12},
+    {"wood beyond precut", "CP: then 2 ft steps", WOOD_LINE, 24, 11, plain, "wood-89",
+     19 * 1.1 * 12},
+    {"staggered: each face its studs", "CP", STAG_LINE, 24, 8, plain, "wood-89",
+     2 * 19 * 1.1 * 92.625 / 12},
     {"staggered: one wide plate", "CP: 2 L", STAG_LINE, 24, 8, plain, "plate-140", 2 * 24 * 1.05},
-    {"double: twice the studs", "CP", DOUBLE_LINE, 24, 8, plain, "wood-89", 2 * 19 * 1.1 * 92.625 / 12},
+    {"double: twice the studs", "CP", DOUBLE_LINE, 24, 8, plain, "wood-89",
+     2 * 19 * 1.1 * 92.625 / 12},
     {"double: twice the plates", "CP", DOUBLE_LINE, 24, 8, plain, "plate-89", 4 * 24 * 1.05},
     {"plates, load-bearing", "CP: 3 L", WOOD_LINE, 24, 8, bearing, "plate-89", 3 * 24 * 1.05},
-    {"bridging of bearing steel", "CP: rows 48 in apart or closer", BEARING_LINE, 24, 9, bearing, "bridging", 2 * 24 * 1.04},
-    {"door: two jambs and a header", "CP", STEEL_LINE, 24, 9, door, "steel-92-18", (13 * 1.1 + 3) * 9},
-    {"door: board is not deducted", "CP: only above 32 ft2", STEEL_LINE, 24, 9, door, "typex-16", 2 * 216 * 1.1},
+    {"bridging of bearing steel", "CP: rows 48 in apart or closer", BEARING_LINE, 24, 9, bearing,
+     "bridging", 2 * 24 * 1.04},
+    {"door: two jambs and a header", "CP", STEEL_LINE, 24, 9, door, "steel-92-18",
+     (13 * 1.1 + 3) * 9},
+    {"door: board is not deducted", "CP: only above 32 ft2", STEEL_LINE, 24, 9, door, "typex-16",
+     2 * 216 * 1.1},
     {"door: batts are deducted", "CP", STEEL_LINE, 24, 9, door, "glass-89-24in", (216 - 21) * 1.03},
-    {"large opening: board is deducted", "CP: only above 32 ft2", STEEL_LINE, 24, 9, large_opening, "typex-16", 2 * (216 - 40) * 1.1},
-    {"channel rows", "CP: ceil((H - 50 - 150 mm)/s) + 1: 9 ft at 24 in is 6", RC_LINE, 24, 9, plain, "channel", 6 * 24 * 1.05},
-    {"channel rows at 8 ft", "CP: ceil(3.67) + 1 = 5", RC_LINE, 24, 8, plain, "channel", 5 * 24 * 1.05},
-    {"furring rows", "CP: ceil((2743 - 225)/610) + 1", CLIP_LINE, 24, 9, plain, "furring", 6 * 24 * 1.05},
+    {"large opening: board is deducted", "CP: only above 32 ft2", STEEL_LINE, 24, 9, large_opening,
+     "typex-16", 2 * (216 - 40) * 1.1},
+    {"channel rows", "CP: ceil((H - 50 - 150 mm)/s) + 1: 9 ft at 24 in is 6", RC_LINE, 24, 9, plain,
+     "channel", 6 * 24 * 1.05},
+    {"channel rows at 8 ft", "CP: ceil(3.67) + 1 = 5", RC_LINE, 24, 8, plain, "channel",
+     5 * 24 * 1.05},
+    {"furring rows", "CP: ceil((2743 - 225)/610) + 1", CLIP_LINE, 24, 9, plain, "furring",
+     6 * 24 * 1.05},
     {"clips", "CP: every 1219 mm: 6 rows of 6", CLIP_LINE, 24, 9, plain, "clip", 36 * 1.03},
-    {"batts of wood bays at 16 in", "CP: 15 in wide", WOOD_LINE, 24, 9, plain, "glass-89-15in", 216 * 1.03},
-    {"batts of wood bays at 24 in", "CP: 23 in wide", "typex-16 | wood-89@610, glass-89 | typex-16", 24, 9, plain, "glass-89-23in", 216 * 1.03},
-    {"batts of steel bays at 16 in", "CP: 16 in wide", "typex-16 | steel-92-18@406, glass-89 | typex-16", 24, 9, plain, "glass-89-16in", 216 * 1.03},
-    {"batts of bays at 12 in are cut", "CP: 25 % waste", "typex-16 | steel-92-18@305, glass-89 | typex-16", 24, 9, plain, "glass-89-16in", 216 * 1.25},
+    {"batts of wood bays at 16 in", "CP: 15 in wide", WOOD_LINE, 24, 9, plain, "glass-89-15in",
+     216 * 1.03},
+    {"batts of wood bays at 24 in", "CP: 23 in wide", "typex-16 | wood-89@610, glass-89 | typex-16",
+     24, 9, plain, "glass-89-23in", 216 * 1.03},
+    {"batts of steel bays at 16 in", "CP: 16 in wide",
+     "typex-16 | steel-92-18@406, glass-89 | typex-16", 24, 9, plain, "glass-89-16in", 216 * 1.03},
+    {"batts of bays at 12 in are cut", "CP: 25 % waste",
+     "typex-16 | steel-92-18@305, glass-89 | typex-16", 24, 9, plain, "glass-89-16in", 216 * 1.25},
     {"both rows filled", "CP", DOUBLE_LINE, 24, 9, plain, "glass-89-15in", 2 * 216 * 1.03},
-    {"sealant round each face", "CP: one bead, + 15 %", STEEL_LINE, 24, 9, plain, "sealant", 2 * 2 * (24 + 9) * 1.15},
+    {"sealant round each face", "CP: one bead, + 15 %", STEEL_LINE, 24, 9, plain, "sealant",
+     2 * 2 * (24 + 9) * 1.15},
     {"slip head: deep-leg track", "CP", STEEL_LINE, 24, 9, slip, "track-92-18-deep", 24 * 1.04},
     {"slip head: one plain track", "CP", STEEL_LINE, 24, 9, slip, "track-92-18", 24 * 1.04},
     {"slip head: sealant", "CP", STEEL_LINE, 24, 9, slip, "sealant", (132 + 48) * 1.15},
-    {"rated slip head: listed joint", "CP: both sides", STEEL_LINE, 24, 9, slip_rated, "head-joint", 48 * 1.05},
-    {"backing of a heavy side", "CP", "typex-16 | steel-92-30@406 | typex-16", 24, 9, heavy_a, "backing-strap", 24 * 1.05},
+    {"rated slip head: listed joint", "CP: both sides", STEEL_LINE, 24, 9, slip_rated, "head-joint",
+     48 * 1.05},
+    {"backing of a heavy side", "CP", "typex-16 | steel-92-30@406 | typex-16", 24, 9, heavy_a,
+     "backing-strap", 24 * 1.05},
     {"backing of a stretch", "CP", WOOD_LINE, 24, 9, heavy_stretch, "backing-2x8", 5 * 1.1},
     {"no boxes", "the brief's count stands", STEEL_LINE, 24, 9, no_boxes, "box-pad", 0},
-    {"no fireblocking below 10 ft", "IBC 718.2.1, from memory", WOOD_LINE, 24, 10, plain, "fireblock-2x", 0},
-    {"fireblocking every 10 ft of height", "IBC 718.2.1, from memory", WOOD_LINE, 24, 11, plain, "fireblock-2x", 24 * 1.1},
-    {"fireblocking every 10 ft of length", "IBC 718.2.1, from memory: two rows", DOUBLE_LINE, 24, 9, plain, "fireblock-batt", 2 * 9 * 1.05},
-    {"finish to 100 mm above the ceiling", "ASTM C840, GA-214, from memory", STEEL_LINE, 24, 12, ceiling_8ft, "finish-4", 24 * 8 + 24 * 12},
-    {"Level 1 above the ceiling", "ASTM C840, GA-214, from memory", STEEL_LINE, 24, 12, ceiling_8ft, "finish-1", 24 * 4},
-    {"Level 2 on a cement board face", "GA-214, from memory", "cement-13 | wood-89@406 | typex-16", 24, 9, wet_a, "finish-2", 216},
+    {"no fireblocking below 10 ft", "IBC 718.2.1, from memory", WOOD_LINE, 24, 10, plain,
+     "fireblock-2x", 0},
+    {"fireblocking every 10 ft of height", "IBC 718.2.1, from memory", WOOD_LINE, 24, 11, plain,
+     "fireblock-2x", 24 * 1.1},
+    {"fireblocking every 10 ft of length", "IBC 718.2.1, from memory: two rows", DOUBLE_LINE, 24, 9,
+     plain, "fireblock-batt", 2 * 9 * 1.05},
+    {"finish to 100 mm above the ceiling", "ASTM C840, GA-214, from memory", STEEL_LINE, 24, 12,
+     ceiling_8ft, "finish-4", 24 * 8 + 24 * 12},
+    {"Level 1 above the ceiling", "ASTM C840, GA-214, from memory", STEEL_LINE, 24, 12, ceiling_8ft,
+     "finish-1", 24 * 4},
+    {"Level 2 on a cement board face", "GA-214, from memory", "cement-13 | wood-89@406 | typex-16",
+     24, 9, wet_a, "finish-2", 216},
     {"no finish asked", "the brief's level", STEEL_LINE, 24, 9, bare, "finish-4", 216},
-    {"base layers are not finished", "GA-214, from memory", "2*typex-16 | steel-92-18@610 | 2*typex-16", 24, 9, plain, "finish-4", 432},
-    {"screws at 16 in", "computed: 1.11 a ft2 of layer at 12/12 in, 9 ft", WOOD_LINE, 24, 9, plain, "screw", 432 * 40 / 36.0 * 1.05},
-    {"board under a mount", "both lines of the item", "typex-16 | rc@610 | on typex-16 | wood-89@406 | typex-16", 24, 9, plain, "typex-16", 3 * 216 * 1.1},
+    {"base layers are not finished", "GA-214, from memory",
+     "2*typex-16 | steel-92-18@610 | 2*typex-16", 24, 9, plain, "finish-4", 432},
+    {"screws at 16 in", "computed: 1.11 a ft2 of layer at 12/12 in, 9 ft", WOOD_LINE, 24, 9, plain,
+     "screw", 432 * 40 / 36.0 * 1.05},
+    {"board under a mount", "both lines of the item",
+     "typex-16 | rc@610 | on typex-16 | wood-89@406 | typex-16", 24, 9, plain, "typex-16",
+     3 * 216 * 1.1},
 };
 
 START_TEST(single_rule) {
@@ -258,19 +324,26 @@ START_TEST(single_rule) {
   price_unit u = book->items[item].unit;
   double unit = u == UNIT_M2 ? UNITS_M2_PER_FT2 : u == UNIT_M ? UNITS_M_PER_FT : 1;
   double found = line_of(&t, row->code, LINE_MATERIAL).quantity / unit;
-  ck_assert_msg(fabs(found - row->quantity) <= QUANTITY_SHARE * (1 + row->quantity), "%s (%s): %s %.6f, expected %.6f", row->name,
-                row->source, row->code, found, row->quantity);
+  ck_assert_msg(fabs(found - row->quantity) <= QUANTITY_SHARE * (1 + row->quantity),
+                "%s (%s): %s %.6f, expected %.6f", row->name, row->source, row->code, found,
+                row->quantity);
 }
 END_TEST
 
 /* ---- labour ---- */
-/* Hours of an item against those at 9 ft and the same count of pieces; factors of the price book (common practice, no source). */
+/* Hours of an item against those at 9 ft and the same count of pieces; factors of the price book
+ * (common practice, no source). */
 static const struct labour_row {
   const char *name;
   double length_ft, height_ft, factor;
 } labour_rows[] = {
-    {"to 10 ft", 24, 10, 1}, {"above 10 ft", 24, 10.5, 1.15}, {"to 12 ft", 24, 12, 1.15}, {"above 12 ft", 24, 12.5, 1.25},
-    {"above 14 ft", 24, 15, 1.4}, {"short wall", 3, 9, 1.3}, {"short and high", 3, 13, 1.3 * 1.25},
+    {"to 10 ft", 24, 10, 1},
+    {"above 10 ft", 24, 10.5, 1.15},
+    {"to 12 ft", 24, 12, 1.15},
+    {"above 12 ft", 24, 12.5, 1.25},
+    {"above 14 ft", 24, 15, 1.4},
+    {"short wall", 3, 9, 1.3},
+    {"short and high", 3, 13, 1.3 * 1.25},
 };
 
 START_TEST(labour) {
@@ -278,8 +351,10 @@ START_TEST(labour) {
   brief b = brief_of(row->length_ft, row->height_ft);
   takeoff t;
   (void)cost_of(&b, STEEL_LINE, &t);
-  double boards = line_of(&t, "typex-16", LINE_LABOUR).quantity / (2 * row->length_ft * row->height_ft);
-  ck_assert_msg(fabs(boards / (0.0145 * row->factor) - 1) <= QUANTITY_SHARE, "%s: %.6f h/ft2", row->name, boards);
+  double boards =
+      line_of(&t, "typex-16", LINE_LABOUR).quantity / (2 * row->length_ft * row->height_ft);
+  ck_assert_msg(fabs(boards / (0.0145 * row->factor) - 1) <= QUANTITY_SHARE, "%s: %.6f h/ft2",
+                row->name, boards);
 }
 END_TEST
 
@@ -290,16 +365,24 @@ START_TEST(tall_studs) {
   (void)cost_of(&b, STEEL_LINE, &t);
   double each = line_of(&t, "steel-92-18", LINE_LABOUR).quantity / (13 * 1.1) / 1.4;
   /* stock lengths stand 10 mm short of the clear height, so tall begins 10 mm later */
-  ck_assert_msg(fabs(each - (0.11 + 0.008 * (6 - 0.010 / UNITS_M_PER_FT))) < 1e-9, "%.6f h a stud", each);
+  ck_assert_msg(fabs(each - (0.11 + 0.008 * (6 - 0.010 / UNITS_M_PER_FT))) < 1e-9, "%.6f h a stud",
+                each);
 }
 END_TEST
 
 /* ---- parts and sums ---- */
 
 static const char *const part_lines[] = {
-    STEEL_LINE, WOOD_LINE, DOUBLE_LINE, STAG_LINE, RC_LINE, CLIP_LINE, BEARING_LINE,
+    STEEL_LINE,
+    WOOD_LINE,
+    DOUBLE_LINE,
+    STAG_LINE,
+    RC_LINE,
+    CLIP_LINE,
+    BEARING_LINE,
     "moist-16 + typex-16 | rc@406 | on osb-11 | wood-140@610, stone-140 | abuse-16 + mlv-5",
-    "damp-16 | wood-89-double@406~50, cell-89, inner-a osb-11, inner-b typex-16 | cement-13 + typex-16",
+    "damp-16 | wood-89-double@406~50, cell-89, inner-a osb-11, inner-b typex-16 | cement-13 + "
+    "typex-16",
     "gyp-13 + damp-layer + gyp-13 | steel-64-18-double@305, glass-65, stone-65 | 3*gyp-13",
 };
 enum { PART_LINES = sizeof part_lines / sizeof part_lines[0], SEEDED = 400 };
@@ -330,7 +413,8 @@ static brief seeded_brief(uint64_t *s) {
   return b;
 }
 
-/* The sum of the parts is the takeoff, its lines add up to its total, and each line is quantity x rate to the cent. */
+/* The sum of the parts is the takeoff, its lines add up to its total, and each line is quantity x
+ * rate to the cent. */
 START_TEST(parts) {
   uint64_t seed = 20310301u + (uint64_t)_i;
   for (int n = 0; n < SEEDED; n++) {
@@ -350,7 +434,8 @@ START_TEST(parts) {
     for (int i = 0; i < t.count; i++) {
       cents += t.line[i].cents;
       double exact = t.line[i].quantity * t.line[i].rate * 100;
-      ck_assert_msg(fabs((double)t.line[i].cents - exact) <= 0.5 + 1e-6, "%s: %f rounds to %lld", t.line[i].name, exact, t.line[i].cents);
+      ck_assert_msg(fabs((double)t.line[i].cents - exact) <= 0.5 + 1e-6, "%s: %f rounds to %lld",
+                    t.line[i].name, exact, t.line[i].cents);
     }
     ck_assert_int_eq(cents, full.total_cents);
   }
@@ -364,7 +449,8 @@ START_TEST(leaves_apart) {
   wall y = parsed("2*typex-16 | wood-89-double@610, cell-89 | typex-16");
   wall z = parsed("2*typex-16 | rc@610 | wood-89@610 | typex-16");
   wall other = parsed("2*typex-16 | steel-92-18@406, glass-89 | typex-16");
-  cost_parts p = cost_leaves(book, shop, &b, &x), q = cost_leaves(book, shop, &b, &y), r = cost_leaves(book, shop, &b, &z);
+  cost_parts p = cost_leaves(book, shop, &b, &x), q = cost_leaves(book, shop, &b, &y),
+             r = cost_leaves(book, shop, &b, &z);
   ck_assert_int_eq(p.material_cents, q.material_cents);
   ck_assert_int_eq(p.labour_cents, q.labour_cents);
   ck_assert_int_eq(p.material_cents, r.material_cents);
@@ -372,7 +458,8 @@ START_TEST(leaves_apart) {
 }
 END_TEST
 
-/* Twice the hourly rates are twice the labour; a dearer board adds its quantity x the rise: each line is linear in its price. */
+/* Twice the hourly rates are twice the labour; a dearer board adds its quantity x the rise: each
+ * line is linear in its price. */
 START_TEST(linear_in_prices) {
   brief b = brief_of(24, 9);
   takeoff t, u;
@@ -384,7 +471,8 @@ START_TEST(linear_in_prices) {
   cost_total after;
   cost_takeoff(dear, shop, &b, &w, &u, &after);
   ck_assert_int_eq(after.material_cents, before.material_cents);
-  ck_assert_msg(llabs(after.labour_cents - 2 * before.labour_cents) <= t.count, "each line is off by a cent at most");
+  ck_assert_msg(llabs(after.labour_cents - 2 * before.labour_cents) <= t.count,
+                "each line is off by a cent at most");
   dear->rate[TRADE_HANGER] = book->rate[TRADE_HANGER];
   dear->items = arena_array(memory, book->count, sizeof *dear->items);
   memcpy(dear->items, book->items, book->count * sizeof *dear->items);
@@ -396,7 +484,8 @@ START_TEST(linear_in_prices) {
 }
 END_TEST
 
-/* A wall of twice the length costs twice as much but for its ends: one stud and the height of its seals. */
+/* A wall of twice the length costs twice as much but for its ends: one stud and the height of its
+ * seals. */
 START_TEST(linear_in_length) {
   brief b = brief_of(40, 9), twice = brief_of(80, 9);
   takeoff t, u;
@@ -408,7 +497,8 @@ START_TEST(linear_in_length) {
     const char *code = book->items[t.line[i].item].code;
     bool ends = strcmp(code, "sealant") == 0 || strcmp(code, "wood-89") == 0;
     double ratio = u.line[i].quantity / t.line[i].quantity;
-    ck_assert_msg(ends ? ratio < 2 && ratio > 1.8 : fabs(ratio - 2) < QUANTITY_SHARE, "%s: %.6f times as much", code, ratio);
+    ck_assert_msg(ends ? ratio < 2 && ratio > 1.8 : fabs(ratio - 2) < QUANTITY_SHARE,
+                  "%s: %.6f times as much", code, ratio);
   }
 }
 END_TEST
@@ -419,7 +509,8 @@ START_TEST(stops_at_ceiling) {
   takeoff t, u;
   b.top = TOP_CEILING;
   b.ceiling_m[0] = b.ceiling_m[1] = 9 * UNITS_M_PER_FT - 0.1;
-  ck_assert_int_eq(cost_of(&b, STEEL_LINE, &t).total_cents, cost_of(&low, STEEL_LINE, &u).total_cents);
+  ck_assert_int_eq(cost_of(&b, STEEL_LINE, &t).total_cents,
+                   cost_of(&low, STEEL_LINE, &u).total_cents);
 }
 END_TEST
 
@@ -435,7 +526,8 @@ START_TEST(floor_value) {
 }
 END_TEST
 
-/* Whatever the catalog holds has a price in the shipped book, and a missing one is told by its code. */
+/* Whatever the catalog holds has a price in the shipped book, and a missing one is told by its
+ * code. */
 START_TEST(missing) {
   ck_assert_int_eq(prices_report_missing(memory, &diags, shop, book), 0);
   price_book *poor = arena_alloc(memory, sizeof *poor);
