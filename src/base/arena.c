@@ -28,7 +28,8 @@ struct arena {
   jmp_buf *on_fail;
 };
 
-/* Test hook only: allocations left until one fails; 0 = off. Atomic, because arenas of several threads count here. */
+/* Test hook only: allocations left until one fails; 0 = off. Atomic, because arenas of several
+ * threads count here. */
 static atomic_long fail_countdown;
 
 static bool must_fail(void) {
@@ -36,7 +37,9 @@ static bool must_fail(void) {
   return atomic_fetch_sub(&fail_countdown, 1) == 1;
 }
 
-void arena_fail_at(long n) { atomic_store(&fail_countdown, n > 0 ? n : 0); }
+void arena_fail_at(long n) {
+  atomic_store(&fail_countdown, n > 0 ? n : 0);
+}
 
 arena *arena_create(size_t limit_bytes, jmp_buf *on_fail) {
   if (must_fail()) return NULL;
@@ -57,7 +60,9 @@ void arena_free(arena *a) {
   free(a);
 }
 
-void arena_on_fail(arena *a, jmp_buf *on_fail) { a->on_fail = on_fail; }
+void arena_on_fail(arena *a, jmp_buf *on_fail) {
+  a->on_fail = on_fail;
+}
 
 _Noreturn void arena_fail(arena *a) {
   if (!a->on_fail) abort();
@@ -71,8 +76,8 @@ static unsigned char *place_in(const block *b, size_t size, size_t align) {
   return pad <= room && size <= room - pad ? b->at + pad : NULL;
 }
 
-/* A zeroed block with room for `size` bytes at any alignment used here. A large request gets a block of its own behind the
- * one being filled, so that the rest of that one is not lost. */
+/* A zeroed block with room for `size` bytes at any alignment used here. A large request gets a
+ * block of its own behind the one being filled, so that the rest of that one is not lost. */
 static block *add_block(arena *a, size_t size) {
   size_t overhead = sizeof(block) + LINE_ALIGN;
   if (size > SIZE_MAX - overhead) return NULL;
@@ -128,4 +133,6 @@ void *arena_grow(arena *a, const void *old, size_t old_bytes, size_t new_bytes) 
   return p;
 }
 
-size_t arena_used(const arena *a) { return a->used; }
+size_t arena_used(const arena *a) {
+  return a->used;
+}

@@ -14,8 +14,8 @@ static void count_error(diag_list *d, error_code code) {
   if (s > d->worst) d->worst = s;
 }
 
-static void add(diag_list *d, diag_level level, error_code code, diag_place place, const char *format,
-                va_list args) {
+static void add(diag_list *d, diag_level level, error_code code, diag_place place,
+                const char *format, va_list args) {
   if (level == DIAG_ERROR) count_error(d, code);
   if (d->count == KEPT) {
     d->dropped++;
@@ -35,7 +35,8 @@ static void add(diag_list *d, diag_level level, error_code code, diag_place plac
       (diag){.level = level, .code = code, .place = place, .message = message.data};
 }
 
-void diag_add(diag_list *d, diag_level level, error_code code, diag_place place, const char *format, ...) {
+void diag_add(diag_list *d, diag_level level, error_code code, diag_place place, const char *format,
+              ...) {
   va_list args;
   va_start(args, format);
   add(d, level, code, place, format, args);
@@ -63,19 +64,24 @@ void diag_sort(diag_list *d, size_t from) {
   }
 }
 
-bool diag_is_full(const diag_list *d) { return d->count == KEPT; }
+bool diag_is_full(const diag_list *d) {
+  return d->count == KEPT;
+}
 
-/* Text from files may hold line ends, terminal escapes (C0, DEL, and C1 as UTF-8) and bytes that are no UTF-8: shown as \u00XX
- * and \xXX, so that a message stays one harmless line of UTF-8. */
+/* Text from files may hold line ends, terminal escapes (C0, DEL, and C1 as UTF-8) and bytes that
+ * are no UTF-8: shown as \u00XX and \xXX, so that a message stays one harmless line of UTF-8. */
 static void put_visible(text *out, const char *s) {
   const char *end = s + strlen(s);
   while (s < end) {
     size_t n = text_utf8(s, end);
     const unsigned char *u = (const unsigned char *)s;
     bool c1 = n == 2 && u[0] == 0xC2 && u[1] < 0xA0;
-    if (n == 0) text_putf(out, "\\x%02x", u[0]);
-    else if (u[0] < 0x20 || u[0] == 0x7F || c1) text_putf(out, "\\u%04x", u[n - 1]);
-    else text_putn(out, s, n);
+    if (n == 0)
+      text_putf(out, "\\x%02x", u[0]);
+    else if (u[0] < 0x20 || u[0] == 0x7F || c1)
+      text_putf(out, "\\u%04x", u[n - 1]);
+    else
+      text_putn(out, s, n);
     s += n ? n : 1;
   }
 }

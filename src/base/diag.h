@@ -12,9 +12,9 @@
 typedef enum diag_level { DIAG_ERROR, DIAG_WARNING, DIAG_NOTE } diag_level;
 
 typedef struct diag_place {
-  const char *file;  /* NULL when the fault has no file */
-  int line, column;  /* from 1; 0 = unknown. Column in bytes */
-  const char *path;  /* JSON path or CSV cell, NULL when none */
+  const char *file; /* NULL when the fault has no file */
+  int line, column; /* from 1; 0 = unknown. Column in bytes */
+  const char *path; /* JSON path or CSV cell, NULL when none */
 } diag_place;
 
 typedef struct diag {
@@ -34,13 +34,15 @@ typedef struct diag_list {
 } diag_list;
 
 void diag_init(diag_list *d, arena *a);
-void diag_add(diag_list *d, diag_level level, error_code code, diag_place place, const char *format, ...)
-    TEXT_PRINTF(5, 6);
+void diag_add(diag_list *d, diag_level level, error_code code, diag_place place, const char *format,
+              ...) TEXT_PRINTF(5, 6);
 /* An error without a place. */
 void diag_error(diag_list *d, error_code code, const char *format, ...) TEXT_PRINTF(3, 4);
-/* Orders what was kept from index `from` on by line and column; equal places keep their order. For one file's messages. */
+/* Orders what was kept from index `from` on by line and column; equal places keep their order. For
+ * one file's messages. */
 void diag_sort(diag_list *d, size_t from);
-/* Whether the list is full: what is found from here on is counted and not kept, so that reading may stop. */
+/* Whether the list is full: what is found from here on is counted and not kept, so that reading may
+ * stop. */
 bool diag_is_full(const diag_list *d);
 /* One diagnostic as one line without newline: `file:line:column: error[E214] $.path: message`. */
 void diag_print(text *out, const diag *item);

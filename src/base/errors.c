@@ -2,9 +2,11 @@
 
 const char *error_text(error_code code) {
   switch (code) {
-    case ERROR_NONE: return "no error";
-#define ERROR_CASE(number, name, text) \
-    case ERROR_##name: return text;
+  case ERROR_NONE:
+    return "no error";
+#define ERROR_CASE(number, name, text)                                                             \
+  case ERROR_##name:                                                                               \
+    return text;
     ERROR_LIST(ERROR_CASE)
 #undef ERROR_CASE
   }

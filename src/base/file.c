@@ -10,13 +10,15 @@
 enum { FIRST_READ = 16 << 10, TEMPORARY_NAMES = 100, LINKS_MAX = 8, PATH_BYTES = 4096 };
 static const mode_t new_file_mode = 0666; /* less the user's umask */
 
-static diag_place place_of(const char *path) { return (diag_place){.file = path}; }
+static diag_place place_of(const char *path) {
+  return (diag_place){.file = path};
+}
 
 static void report(diag_list *d, error_code code, const char *path, const char *what, int error) {
   diag_add(d, DIAG_ERROR, code, place_of(path), "%s: %s", what, strerror(error));
 }
 
-/* --- reading --------------------------------------------------------------------------------------------------------- */
+/* ---- reading ---- */
 
 typedef enum read_end { READ_DONE, READ_ERROR, READ_TOO_LARGE, READ_NO_MEMORY } read_end;
 
@@ -64,7 +66,8 @@ static read_end read_open(arena *a, reading *r, size_t max_bytes, int *error) {
   }
   if (S_ISREG(info.st_mode) && info.st_size > 0) {
     if ((unsigned long long)info.st_size > max_bytes) return READ_TOO_LARGE;
-    r->cap = (size_t)info.st_size + 2; /* the NUL, and one byte to see the end of the file without growing */
+    r->cap = (size_t)info.st_size +
+             2; /* the NUL, and one byte to see the end of the file without growing */
     r->bytes = arena_try(a, r->cap);
     if (!r->bytes) return READ_NO_MEMORY;
   }
@@ -85,13 +88,14 @@ char *file_read(arena *a, diag_list *d, const char *path, size_t max_bytes, size
   if (end == READ_NO_MEMORY) arena_fail(a);
   if (end == READ_ERROR) report(d, ERROR_SYSTEM_READ, path, "cannot be read", error);
   if (end == READ_TOO_LARGE)
-    diag_add(d, DIAG_ERROR, ERROR_JSON_LIMIT, place_of(path), "must have at most %zu bytes", max_bytes);
+    diag_add(d, DIAG_ERROR, ERROR_JSON_LIMIT, place_of(path), "must have at most %zu bytes",
+             max_bytes);
   if (end != READ_DONE) return NULL;
   *len = r.len;
   return r.bytes;
 }
 
-/* --- writing --------------------------------------------------------------------------------------------------------- */
+/* ---- writing ---- */
 
 static bool write_all(int descriptor, const char *bytes, size_t len) {
   while (len > 0) {
@@ -116,7 +120,8 @@ static const char *follow_links(arena *a, const char *path) {
   return path;
 }
 
-/* Devices, pipes and the names that stand for open files (/dev/stdout) cannot be replaced: the bytes go straight into them. */
+/* Devices, pipes and the names that stand for open files (/dev/stdout) cannot be replaced: the
+ * bytes go straight into them. */
 static bool is_stream(const char *path, const struct stat *info) {
   return !S_ISREG(info->st_mode) || text_starts(path, "/dev/") || text_starts(path, "/proc/");
 }
@@ -141,9 +146,10 @@ static int open_temporary(char *name, size_t size, const char *path) {
   return -1;
 }
 
-/* `old` is the file that will be replaced, NULL when there is none: the new one keeps its permissions. */
-static bool replace(const char *path, char *temporary, size_t size, const struct stat *old, const char *bytes,
-                    size_t len) {
+/* `old` is the file that will be replaced, NULL when there is none: the new one keeps its
+ * permissions. */
+static bool replace(const char *path, char *temporary, size_t size, const struct stat *old,
+                    const char *bytes, size_t len) {
   int descriptor = open_temporary(temporary, size, path);
   if (descriptor < 0) return false;
   bool good = write_all(descriptor, bytes, len);
@@ -182,7 +188,7 @@ bool file_write(arena *a, diag_list *d, const char *path, const char *bytes, siz
   return good;
 }
 
-/* --- names ----------------------------------------------------------------------------------------------------------- */
+/* ---- names ---- */
 
 bool file_exists(const char *path) {
   struct stat info;

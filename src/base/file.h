@@ -7,11 +7,12 @@
 
 #include "base/diag.h"
 
-/* The file's bytes with a NUL behind, in `a`; *len without it. NULL and a diagnostic when it cannot be read, is a
- * directory, or is larger than `max_bytes`. "-" is not special. */
+/* The file's bytes with a NUL behind, in `a`; *len without it. NULL and a diagnostic when it cannot
+ * be read, is a directory, or is larger than `max_bytes`. "-" is not special. */
 char *file_read(arena *a, diag_list *d, const char *path, size_t max_bytes, size_t *len);
-/* Writes `len` bytes to a temporary neighbour, flushes, renames. A symbolic link stays and its target is replaced; devices,
- * pipes and names below /dev are written to directly. False and a diagnostic when that fails. */
+/* Writes `len` bytes to a temporary neighbour, flushes, renames. A symbolic link stays and its
+ * target is replaced; devices, pipes and names below /dev are written to directly. False and a
+ * diagnostic when that fails. */
 bool file_write(arena *a, diag_list *d, const char *path, const char *bytes, size_t len);
 bool file_exists(const char *path);
 /* `relative` seen from the folder of `file`; absolute paths stay. */

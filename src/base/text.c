@@ -8,14 +8,14 @@
 
 enum {
   FIRST_CAP = 64,
-  NUMBER_MAX = 340,    /* sign, 309 digits, point, 9 decimals, NUL */
+  NUMBER_MAX = 340, /* sign, 309 digits, point, 9 decimals, NUL */
   MAX_DECIMALS = 9,
   SHORTEST_FIRST = 15, /* every decimal of so many digits survives a double */
   SHORTEST_LAST = 17,  /* so many tell any two doubles apart */
   WORD_MAX = 80        /* longer words have no near name */
 };
 
-/* --- the buffer ------------------------------------------------------------------------------------------------------ */
+/* ---- the buffer ---- */
 
 void text_init(text *t, arena *a, size_t max_bytes) {
   *t = (text){.arena = a, .max = max_bytes};
@@ -55,9 +55,13 @@ void text_putn(text *t, const char *s, size_t n) {
   t->data[t->len] = '\0';
 }
 
-void text_put(text *t, const char *s) { text_putn(t, s, strlen(s)); }
+void text_put(text *t, const char *s) {
+  text_putn(t, s, strlen(s));
+}
 
-void text_char(text *t, char c) { text_putn(t, &c, 1); }
+void text_char(text *t, char c) {
+  text_putn(t, &c, 1);
+}
 
 void text_vputf(text *t, const char *format, va_list args) {
   va_list again;
@@ -90,7 +94,7 @@ void text_pad(text *t, size_t column) {
   for (; points < column && !t->cut; points++) text_char(t, ' ');
 }
 
-/* --- numbers --------------------------------------------------------------------------------------------------------- */
+/* ---- numbers ---- */
 
 typedef struct decimal {
   bool negative;
@@ -99,7 +103,8 @@ typedef struct decimal {
   char digit[SHORTEST_LAST + 1];
 } decimal;
 
-/* Reads what printf %e wrote, whatever the locale's decimal point: only digits, sign and exponent count. */
+/* Reads what printf %e wrote, whatever the locale's decimal point: only digits, sign and exponent
+ * count. */
 static decimal read_scientific(const char *s) {
   decimal x = {0};
   if (*s == '-') x.negative = true;
@@ -193,7 +198,8 @@ void text_number(text *t, double value, int decimals) {
 }
 
 void text_cents(text *t, long long cents, bool thousands) {
-  unsigned long long left = cents < 0 ? 0ULL - (unsigned long long)cents : (unsigned long long)cents;
+  unsigned long long left =
+      cents < 0 ? 0ULL - (unsigned long long)cents : (unsigned long long)cents;
   char s[40];
   size_t at = sizeof s;
   int digits = 0;
@@ -209,7 +215,7 @@ void text_cents(text *t, long long cents, bool thousands) {
   text_putn(t, s + at, sizeof s - at);
 }
 
-/* --- copies ---------------------------------------------------------------------------------------------------------- */
+/* ---- copies ---- */
 
 const char *text_copyn(arena *a, const char *s, size_t n) {
   char *copy = arena_alloc(a, n + 1);
@@ -217,7 +223,9 @@ const char *text_copyn(arena *a, const char *s, size_t n) {
   return copy;
 }
 
-const char *text_copy(arena *a, const char *s) { return text_copyn(a, s, strlen(s)); }
+const char *text_copy(arena *a, const char *s) {
+  return text_copyn(a, s, strlen(s));
+}
 
 const char *text_format(arena *a, const char *format, ...) {
   text t;
@@ -236,7 +244,7 @@ const char *text_of(arena *a, double value, int decimals) {
   return t.data;
 }
 
-/* --- words ----------------------------------------------------------------------------------------------------------- */
+/* ---- words ---- */
 
 bool text_match(const char *pattern, const char *name) {
   const char *star = NULL, *retry = NULL; /* last * met, and where its match would go on */
@@ -258,7 +266,9 @@ bool text_match(const char *pattern, const char *name) {
   return *pattern == '\0';
 }
 
-static size_t least(size_t a, size_t b) { return a < b ? a : b; }
+static size_t least(size_t a, size_t b) {
+  return a < b ? a : b;
+}
 
 /* Edit distance where two swapped neighbours count once (the commonest slip of typing). */
 static size_t distance(const char *a, size_t n, const char *b, size_t m) {
@@ -298,7 +308,12 @@ const char *text_nearest(const char *word, const char *const *names, size_t n) {
 
 size_t text_utf8(const char *p, const char *end) {
   const unsigned char *u = (const unsigned char *)p;
-  size_t n = u[0] < 0x80 ? 1 : u[0] < 0xC2 ? 0 : u[0] < 0xE0 ? 2 : u[0] < 0xF0 ? 3 : u[0] < 0xF5 ? 4 : 0;
+  size_t n = u[0] < 0x80   ? 1
+             : u[0] < 0xC2 ? 0
+             : u[0] < 0xE0 ? 2
+             : u[0] < 0xF0 ? 3
+             : u[0] < 0xF5 ? 4
+                           : 0;
   if (n == 0 || (size_t)(end - p) < n) return 0;
   for (size_t i = 1; i < n; i++)
     if ((u[i] & 0xC0) != 0x80) return 0;
@@ -309,6 +324,10 @@ size_t text_utf8(const char *p, const char *end) {
   return n;
 }
 
-bool text_equal(const char *a, const char *b) { return strcmp(a, b) == 0; }
+bool text_equal(const char *a, const char *b) {
+  return strcmp(a, b) == 0;
+}
 
-bool text_starts(const char *s, const char *prefix) { return strncmp(s, prefix, strlen(prefix)) == 0; }
+bool text_starts(const char *s, const char *prefix) {
+  return strncmp(s, prefix, strlen(prefix)) == 0;
+}

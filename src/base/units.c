@@ -3,28 +3,43 @@
 #include <math.h>
 #include <string.h>
 
-/* How a unit of length is written; a quotient of whole numbers keeps 610 mm the double nearest to 0.61 and 12 in that nearest to
- * 0.3048. */
+/* How a unit of length is written; a quotient of whole numbers keeps 610 mm the double nearest to
+ * 0.61 and 12 in that nearest to 0.3048. */
 typedef struct length_unit {
   const char *word;
   double factor, divisor; /* metres = value x factor / divisor */
 } length_unit;
 
-enum { INCH = 254, FOOT = 3048, PER_METRE = 10000 }; /* tenths of a millimetre: international inch and foot, exact */
+enum {
+  INCH = 254,
+  FOOT = 3048,
+  PER_METRE = 10000
+}; /* tenths of a millimetre: international inch and foot, exact */
 
 /* Longer words first where one begins another. */
 static const length_unit length_units[] = {
-    {"inches", INCH, PER_METRE},   {"inch", INCH, PER_METRE}, {"in", INCH, PER_METRE},       {"\"", INCH, PER_METRE},
-    {"''", INCH, PER_METRE},       {"\xE2\x80\xB3", INCH, PER_METRE}, {"feet", FOOT, PER_METRE}, {"foot", FOOT, PER_METRE},
-    {"ft", FOOT, PER_METRE},      {"'", FOOT, PER_METRE},   {"\xE2\x80\xB2", FOOT, PER_METRE}, {"mm", 1, 1000},
-    {"cm", 1, 100},           {"m", 1, 1},
+    {"inches", INCH, PER_METRE},
+    {"inch", INCH, PER_METRE},
+    {"in", INCH, PER_METRE},
+    {"\"", INCH, PER_METRE},
+    {"''", INCH, PER_METRE},
+    {"\xE2\x80\xB3", INCH, PER_METRE},
+    {"feet", FOOT, PER_METRE},
+    {"foot", FOOT, PER_METRE},
+    {"ft", FOOT, PER_METRE},
+    {"'", FOOT, PER_METRE},
+    {"\xE2\x80\xB2", FOOT, PER_METRE},
+    {"mm", 1, 1000},
+    {"cm", 1, 100},
+    {"m", 1, 1},
 };
 enum { LENGTH_UNITS = sizeof length_units / sizeof length_units[0], MAX_DIGITS = 15 };
 
-static const char *const length_wanted =
-    "a length such as 16in, 3-5/8in, 9ft-6in, 610mm or 3.6m";
+static const char *const length_wanted = "a length such as 16in, 3-5/8in, 9ft-6in, 610mm or 3.6m";
 
-static double in_metres(const length_unit *u, double value) { return value * u->factor / u->divisor; }
+static double in_metres(const length_unit *u, double value) {
+  return value * u->factor / u->divisor;
+}
 
 bool units_to_metres(const char *unit, double value, double *metres) {
   for (int i = 0; i < LENGTH_UNITS; i++) {
@@ -40,7 +55,9 @@ static const char *skip_blanks(const char *s) {
   return s;
 }
 
-static bool is_digit(char c) { return c >= '0' && c <= '9'; }
+static bool is_digit(char c) {
+  return c >= '0' && c <= '9';
+}
 
 /* Digits with at most one point; exact up to 15 digits, refused beyond. */
 static bool read_decimal(const char **at, double *value, bool *whole) {
@@ -108,7 +125,8 @@ static const length_unit *read_unit(const char **at) {
   return NULL;
 }
 
-/* Inches behind feet: `-6in`, ` 6in`, `6"`. True with nothing there too; *at moves behind what was read. */
+/* Inches behind feet: `-6in`, ` 6in`, `6"`. True with nothing there too; *at moves behind what was
+ * read. */
 static bool read_inches(const char **at, double *metres) {
   const char *s = skip_blanks(*at);
   if (*s == '\0') return true;
@@ -137,7 +155,8 @@ static bool parse(const char *s, double default_unit_m, double *metres) {
   return *skip_blanks(s) == '\0';
 }
 
-bool units_parse_length(const char *s, double default_unit_m, double *metres, const char **expected) {
+bool units_parse_length(const char *s, double default_unit_m, double *metres,
+                        const char **expected) {
   double found = 0;
   *expected = length_wanted;
   if (!parse(s, default_unit_m, &found)) return false;
@@ -145,7 +164,7 @@ bool units_parse_length(const char *s, double default_unit_m, double *metres, co
   return true;
 }
 
-/* --- printing -------------------------------------------------------------------------------------------------------- */
+/* ---- printing ---- */
 
 static const double mm_per_m = 1000;
 static const double sixteenths_per_in = 16;

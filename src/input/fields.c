@@ -25,7 +25,7 @@ static void fault(reader *r, error_code code, const json_value *v, const char *m
   diag_add(r->diags, DIAG_ERROR, code, json_place(r->arena, v), "%s", message);
 }
 
-/* --- keys ------------------------------------------------------------------------------------------------------------ */
+/* ---- keys ---- */
 
 /* The unit at the end of a key (`m` in `height_m`), NULL when it has none of length. */
 static const char *key_unit(const char *key) {
@@ -76,27 +76,33 @@ static void report_unknown(reader *r, const json_value *v) {
   text message;
   text_init(&message, r->arena, LIST_BYTES);
   text_putf(&message, "unknown key \"%s\"", v->key);
-  if (near) text_putf(&message, "; did you mean \"%s\"?", near);
-  else text_put(&message, "; known here:");
+  if (near)
+    text_putf(&message, "; did you mean \"%s\"?", near);
+  else
+    text_put(&message, "; known here:");
   for (size_t i = 0; !near && i < r->rows; i++)
     text_putf(&message, "%s %s", i ? "," : "", r->table[i].key);
   diag_place place = {v->file, v->key_line, v->key_column, json_path(r->arena, v)};
   diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_UNKNOWN, place, "%s", message.data);
 }
 
-/* --- values ---------------------------------------------------------------------------------------------------------- */
+/* ---- values ---- */
 
 static void store(const reader *r, const field *f, const void *value, size_t size) {
   memcpy(r->out + f->offset, value, size);
 }
 
 static void put_shown(text *out, double x) {
-  if (x > longest_shown) text_put(out, "a number above 1e15");
-  else if (x < -longest_shown) text_put(out, "a number below -1e15");
-  else text_number(out, x, SHOWN_DECIMALS);
+  if (x > longest_shown)
+    text_put(out, "a number above 1e15");
+  else if (x < -longest_shown)
+    text_put(out, "a number below -1e15");
+  else
+    text_number(out, x, SHOWN_DECIMALS);
 }
 
-/* What range a row asks for, the limits divided by `per_unit` so that they read in the unit of the file. */
+/* What range a row asks for, the limits divided by `per_unit` so that they read in the unit of the
+ * file. */
 static void put_range(text *out, const field *f, double per_unit, bool has_max) {
   bool above = (f->flags & FIELD_ABOVE_MIN) != 0;
   text_put(out, above ? "above " : has_max ? "from " : "at least ");
@@ -107,7 +113,8 @@ static void put_range(text *out, const field *f, double per_unit, bool has_max) 
 }
 
 /* Whether `stored` is in the row's range; reports it in units of `per_unit` otherwise. */
-static bool in_range(reader *r, const field *f, const json_value *v, double stored, double per_unit) {
+static bool in_range(reader *r, const field *f, const json_value *v, double stored,
+                     double per_unit) {
   bool above = (f->flags & FIELD_ABOVE_MIN) != 0;
   bool limited = f->min < 0 || f->min > 0 || f->max < 0 || f->max > 0;
   bool has_max = limited && f->max >= f->min;
@@ -140,7 +147,8 @@ static void read_number(reader *r, const field *f, const json_value *v) {
 
 static void read_integer(reader *r, const field *f, const json_value *v) {
   if (!is_kind(r, v, JSON_NUMBER, "a whole number")) return;
-  if (v->number < INT_MIN || v->number > INT_MAX || v->number < floor(v->number) || v->number > floor(v->number)) {
+  if (v->number < INT_MIN || v->number > INT_MAX || v->number < floor(v->number) ||
+      v->number > floor(v->number)) {
     text message;
     text_init(&message, r->arena, LIST_BYTES);
     text_put(&message, "must be a whole number, found ");
@@ -168,20 +176,23 @@ static void read_choice(reader *r, const field *f, const json_value *v) {
 }
 
 static void read_length(reader *r, const field *f, const json_value *v) {
-  const char *unit = key_unit(v->key), *expected = "a length with its unit, such as \"16in\" or \"610mm\"";
+  const char *unit = key_unit(v->key),
+             *expected = "a length with its unit, such as \"16in\" or \"610mm\"";
   double per_unit = 0, metres = 0;
   if (unit) (void)units_to_metres(unit, 1, &per_unit);
   if (v->kind == JSON_NUMBER && unit) {
     (void)units_to_metres(unit, v->number, &metres);
   } else if (v->kind == JSON_STRING) {
     if (!units_parse_length(v->string, per_unit, &metres, &expected)) {
-      fault(r, ERROR_FIELD_UNIT, v, text_format(r->arena, "expected %s; found \"%s\"", expected, v->string));
+      fault(r, ERROR_FIELD_UNIT, v,
+            text_format(r->arena, "expected %s; found \"%s\"", expected, v->string));
       return;
     }
   } else {
     error_code code = v->kind == JSON_NUMBER ? ERROR_FIELD_UNIT : ERROR_FIELD_TYPE;
     fault(r, code, v,
-          text_format(r->arena, "expected %s, found %s", unit ? "a number or a length with its unit" : expected,
+          text_format(r->arena, "expected %s, found %s",
+                      unit ? "a number or a length with its unit" : expected,
                       v->kind == JSON_NUMBER ? "a bare number" : json_kind_name(v->kind)));
     return;
   }
@@ -191,22 +202,33 @@ static void read_length(reader *r, const field *f, const json_value *v) {
 static void read_value(reader *r, const field *f, const json_value *v) {
   if (v->kind == JSON_NULL && (f->flags & FIELD_NULL_OK)) return;
   switch (f->kind) {
-    case FIELD_NUMBER: read_number(r, f, v); break;
-    case FIELD_INTEGER: read_integer(r, f, v); break;
-    case FIELD_BOOL:
-      if (is_kind(r, v, JSON_BOOL, "true or false")) store(r, f, &v->boolean, sizeof v->boolean);
-      break;
-    case FIELD_STRING:
-      if (is_kind(r, v, JSON_STRING, "a string")) store(r, f, &v->string, sizeof v->string);
-      break;
-    case FIELD_CHOICE: read_choice(r, f, v); break;
-    case FIELD_LENGTH: read_length(r, f, v); break;
-    case FIELD_VALUE: store(r, f, &v, sizeof v); break;
-    case FIELD_IGNORE: break;
+  case FIELD_NUMBER:
+    read_number(r, f, v);
+    break;
+  case FIELD_INTEGER:
+    read_integer(r, f, v);
+    break;
+  case FIELD_BOOL:
+    if (is_kind(r, v, JSON_BOOL, "true or false")) store(r, f, &v->boolean, sizeof v->boolean);
+    break;
+  case FIELD_STRING:
+    if (is_kind(r, v, JSON_STRING, "a string")) store(r, f, &v->string, sizeof v->string);
+    break;
+  case FIELD_CHOICE:
+    read_choice(r, f, v);
+    break;
+  case FIELD_LENGTH:
+    read_length(r, f, v);
+    break;
+  case FIELD_VALUE:
+    store(r, f, &v, sizeof v);
+    break;
+  case FIELD_IGNORE:
+    break;
   }
 }
 
-/* --- the object ------------------------------------------------------------------------------------------------------ */
+/* ---- the object ---- */
 
 /* Whether two rows fill the same place: one thing under two names, of which a file may use one. */
 static bool same_place(const field *a, const field *b) {
@@ -230,8 +252,9 @@ static void read_member(reader *r, const json_value *v) {
   }
   const json_value *other = filled_by(r, row);
   if (other) {
-    fault(r, ERROR_FIELD_CONFLICT, v, text_format(r->arena, "says the same as \"%s\" in line %d; keep one of them",
-                                                  other->key, other->key_line));
+    fault(r, ERROR_FIELD_CONFLICT, v,
+          text_format(r->arena, "says the same as \"%s\" in line %d; keep one of them", other->key,
+                      other->key_line));
     return;
   }
   r->seen[row] = v;
@@ -244,12 +267,16 @@ static void report_missing(reader *r, const json_value *object) {
     if (!(r->table[i].flags & FIELD_REQUIRED) || filled_by(r, i)) continue;
     bool said = false;
     for (size_t k = 0; k < i; k++)
-      said = said || ((r->table[k].flags & FIELD_REQUIRED) && same_place(&r->table[k], &r->table[i]));
-    if (!said) fault(r, ERROR_FIELD_MISSING, object, text_format(r->arena, "the key \"%s\" is missing", r->table[i].key));
+      said =
+          said || ((r->table[k].flags & FIELD_REQUIRED) && same_place(&r->table[k], &r->table[i]));
+    if (!said)
+      fault(r, ERROR_FIELD_MISSING, object,
+            text_format(r->arena, "the key \"%s\" is missing", r->table[i].key));
   }
 }
 
-bool fields_read(arena *a, diag_list *d, const json_value *object, const field *table, size_t rows, void *out) {
+bool fields_read(arena *a, diag_list *d, const json_value *object, const field *table, size_t rows,
+                 void *out) {
   size_t before = d->errors;
   reader r = {.arena = a, .diags = d, .table = table, .rows = rows, .out = out};
   if (!is_kind(&r, object, JSON_OBJECT, "an object")) return false;

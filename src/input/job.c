@@ -46,22 +46,24 @@ static void contradiction(reader *r, const json_value *v, const char *message) {
 }
 
 static void caution(reader *r, const json_value *v, const char *message) {
-  diag_add(r->diags, DIAG_WARNING, ERROR_BRIEF_CONTRADICTION, json_place(r->arena, v), "%s", message);
+  diag_add(r->diags, DIAG_WARNING, ERROR_BRIEF_CONTRADICTION, json_place(r->arena, v), "%s",
+           message);
 }
 
-static void read_object(reader *r, const json_value *v, const field *table, size_t rows, void *out) {
+static void read_object(reader *r, const json_value *v, const field *table, size_t rows,
+                        void *out) {
   if (v) (void)fields_read(r->arena, r->diags, v, table, rows, out);
 }
 
 static bool is_array(reader *r, const json_value *v, size_t max) {
   if (v->kind != JSON_ARRAY) {
-    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_TYPE, json_place(r->arena, v), "expected an array, found %s",
-             json_kind_name(v->kind));
+    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_TYPE, json_place(r->arena, v),
+             "expected an array, found %s", json_kind_name(v->kind));
     return false;
   }
   if (v->count <= max) return true;
-  diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v), "must have at most %zu entries, found %zu",
-           max, v->count);
+  diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v),
+           "must have at most %zu entries, found %zu", max, v->count);
   return false;
 }
 
@@ -82,7 +84,7 @@ void job_defaults(brief *b) {
   for (int i = 0; i < 2; i++) b->side[i] = (room_side){.room = "", .finish_level = 4};
 }
 
-/* --- targets --------------------------------------------------------------------------------------------------------- */
+/* ---- targets ---- */
 
 typedef struct raw_target {
   target t;
@@ -110,8 +112,8 @@ static void read_target(reader *r, const json_value *v, brief *out) {
 }
 #undef AT
 
-static void read_targets(reader *r, const json_value *root, const json_value *one, const json_value *many, bool required,
-                         brief *out) {
+static void read_targets(reader *r, const json_value *root, const json_value *one,
+                         const json_value *many, bool required, brief *out) {
   if (one && many) {
     diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_CONFLICT, json_place(r->arena, many),
              "\"target\" stands in line %d; keep one of them", one->key_line);
@@ -125,7 +127,7 @@ static void read_targets(reader *r, const json_value *root, const json_value *on
              "a target is needed: \"target\": {\"metric\": \"STC\", \"value\": 50}");
 }
 
-/* --- limits ---------------------------------------------------------------------------------------------------------- */
+/* ---- limits ---- */
 
 typedef struct raw_bounds {
   const json_value *min, *max;
@@ -135,27 +137,31 @@ typedef struct raw_limits {
   const json_value *thickness, *mass, *cost;
 } raw_limits;
 
-/* A bound in SI. `unit` is a unit of length, for which text with units serves too, or NULL: number x scale. */
-static bool read_bound(reader *r, const json_value *v, const char *unit, double scale, double *out) {
+/* A bound in SI. `unit` is a unit of length, for which text with units serves too, or NULL: number
+ * x scale. */
+static bool read_bound(reader *r, const json_value *v, const char *unit, double scale,
+                       double *out) {
   const char *expected = NULL;
   double per_unit = 0;
   if (unit) (void)units_to_metres(unit, 1, &per_unit);
   if (v->kind == JSON_STRING && unit) {
     if (units_parse_length(v->string, per_unit, out, &expected)) return true;
-    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_UNIT, json_place(r->arena, v), "expected %s; found \"%s\"", expected,
-             v->string);
+    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_UNIT, json_place(r->arena, v),
+             "expected %s; found \"%s\"", expected, v->string);
     return false;
   }
   if (v->kind != JSON_NUMBER) {
-    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_TYPE, json_place(r->arena, v), "expected %s, found %s",
-             unit ? "a number or a length with its unit" : "a number", json_kind_name(v->kind));
+    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_TYPE, json_place(r->arena, v),
+             "expected %s, found %s", unit ? "a number or a length with its unit" : "a number",
+             json_kind_name(v->kind));
     return false;
   }
   if (v->number < 0) {
     text found;
     text_init(&found, r->arena, 400);
     text_number(&found, v->number, 3);
-    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v), "must be at least 0, found %s", found.data);
+    diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v),
+             "must be at least 0, found %s", found.data);
     return false;
   }
   if (unit) return units_to_metres(unit, v->number, out);
@@ -188,31 +194,38 @@ static void read_limits(reader *r, const json_value *v, brief *out) {
   };
   raw_limits raw = {NULL, NULL, NULL};
   read_object(r, v, table, COUNT(table), &raw);
-  if (raw.thickness) read_limit(r, raw.thickness, strrchr(raw.thickness->key, '_') + 1, 1, &out->thickness_m);
+  if (raw.thickness)
+    read_limit(r, raw.thickness, strrchr(raw.thickness->key, '_') + 1, 1, &out->thickness_m);
   if (raw.mass)
-    read_limit(r, raw.mass, NULL, text_equal(raw.mass->key, "mass_psf") ? UNITS_KG_M2_PER_PSF : 1, &out->mass_kg_m2);
+    read_limit(r, raw.mass, NULL, text_equal(raw.mass->key, "mass_psf") ? UNITS_KG_M2_PER_PSF : 1,
+               &out->mass_kg_m2);
   if (raw.cost)
-    read_limit(r, raw.cost, NULL, text_equal(raw.cost->key, "cost_per_ft2") ? 1 / UNITS_M2_PER_FT2 : 1,
+    read_limit(r, raw.cost, NULL,
+               text_equal(raw.cost->key, "cost_per_ft2") ? 1 / UNITS_M2_PER_FT2 : 1,
                &out->cost_per_m2);
 }
 
-/* --- wall, building, structure, sides, services ---------------------------------------------------------------------- */
+/* --- wall, building, structure, sides, services
+ * ---------------------------------------------------------------------- */
 
 #define AT(member) offsetof(brief, member)
 static void read_wall(reader *r, const json_value *v, brief *out) {
   static const field table[] = {
       {"length_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 1000, 0, NULL, AT(length_m)},
       {"height_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 30, 0, NULL, AT(height_m)},
-      {"ceiling_a_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL, AT(ceiling_m[0])},
-      {"ceiling_b_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL, AT(ceiling_m[1])},
+      {"ceiling_a_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL,
+       AT(ceiling_m[0])},
+      {"ceiling_b_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL,
+       AT(ceiling_m[1])},
       {"top", FIELD_CHOICE, 0, 0, 0, 0, top_words, AT(top)},
       {"head", FIELD_CHOICE, 0, 0, 0, 0, head_words, AT(head)},
   };
   read_object(r, v, table, COUNT(table), out);
   for (int i = 0; v && i < 2; i++)
     if (out->ceiling_m[i] > out->height_m)
-      contradiction(r, v, i == 0 ? "the ceiling of side a is above the top of the wall"
-                                 : "the ceiling of side b is above the top of the wall");
+      contradiction(r, v,
+                    i == 0 ? "the ceiling of side a is above the top of the wall"
+                           : "the ceiling of side b is above the top of the wall");
 }
 
 static void read_building(reader *r, const json_value *v, brief *out) {
@@ -255,7 +268,8 @@ static void read_deflection(reader *r, const json_value *v, brief *out) {
   static const double least = 60, most = 2000;
   double span = v->kind == JSON_NUMBER ? v->number : 0;
   if (v->kind == JSON_STRING && text_starts(v->string, "L/"))
-    for (const char *p = v->string + 2; *p; p++) span = *p >= '0' && *p <= '9' && span < most ? span * 10 + (*p - '0') : most + 1;
+    for (const char *p = v->string + 2; *p; p++)
+      span = *p >= '0' && *p <= '9' && span < most ? span * 10 + (*p - '0') : most + 1;
   if (span >= least && span <= most) {
     out->deflection = span;
     return;
@@ -272,7 +286,8 @@ static void read_structure(reader *r, const json_value *v, brief *out) {
       {"noncombustible", FIELD_CHOICE, 0, 0, 0, 0, noncombustible_words, AT(noncombustible)},
       {"shear_side", FIELD_CHOICE, 0, 0, 0, 0, shear_words, AT(shear)},
       {"lateral_pa", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 10000, 0, NULL, AT(lateral_pa)},
-      {"lateral_psf", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 10000, UNITS_PA_PER_PSF, NULL, AT(lateral_pa)},
+      {"lateral_psf", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 10000, UNITS_PA_PER_PSF, NULL,
+       AT(lateral_pa)},
       {"deflection", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(deflection)},
   };
   raw_structure raw = {.floors_above = out->floors_above, .lateral_pa = out->lateral_pa};
@@ -303,7 +318,8 @@ static void read_side(reader *r, const json_value *v, const brief *b, room_side 
       {"finish_level", FIELD_INTEGER, 0, 0, MAX_FINISH_LEVEL, 0, NULL, AT(finish_level)},
   };
   read_object(r, v, table, COUNT(table), out);
-  if (v && out->fastening_length_m > b->length_m) contradiction(r, v, "the fastening is longer than the wall");
+  if (v && out->fastening_length_m > b->length_m)
+    contradiction(r, v, "the fastening is longer than the wall");
   if (v && out->fastening_length_m > 0 && out->fastening == FASTENING_NONE)
     caution(r, v, "a fastening length without a fastening has no effect");
 }
@@ -319,7 +335,7 @@ static void read_sides(reader *r, const json_value *v, brief *out) {
   for (int i = 0; i < 2; i++) read_side(r, raw.side[i], out, &out->side[i]);
 }
 
-/* --- openings -------------------------------------------------------------------------------------------------------- */
+/* ---- openings ---- */
 
 typedef struct raw_opening {
   const char *kind;
@@ -331,11 +347,13 @@ static void read_bands(reader *r, const json_value *v, opening *out) {
   if (!is_array(r, v, BANDS)) return;
   if (v->count != BANDS) {
     diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, v),
-             "expected %d values, the third octaves from 50 to 5000 Hz, found %zu", BANDS, v->count);
+             "expected %d values, the third octaves from 50 to 5000 Hz, found %zu", BANDS,
+             v->count);
     return;
   }
   for (const json_value *x = v->first; x; x = x->next) {
-    if (x->kind == JSON_NUMBER && x->number >= 0 && x->number <= 150) out->tl_db[x->index] = x->number;
+    if (x->kind == JSON_NUMBER && x->number >= 0 && x->number <= 150)
+      out->tl_db[x->index] = x->number;
     else
       diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, x),
                "expected a transmission loss from 0 to 150 dB");
@@ -361,7 +379,8 @@ static void read_opening(reader *r, const json_value *v, brief *out) {
   static const field table[] = {
       {"kind", FIELD_STRING, 0, 0, 0, 0, NULL, AT(kind)},
       {"area_m2", FIELD_NUMBER, FIELD_REQUIRED | FIELD_ABOVE_MIN, 0, 1000, 0, NULL, AT(area_m2)},
-      {"area_ft2", FIELD_NUMBER, FIELD_REQUIRED | FIELD_ABOVE_MIN, 0, 1000, UNITS_M2_PER_FT2, NULL, AT(area_m2)},
+      {"area_ft2", FIELD_NUMBER, FIELD_REQUIRED | FIELD_ABOVE_MIN, 0, 1000, UNITS_M2_PER_FT2, NULL,
+       AT(area_m2)},
       {"stc", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 100, 0, NULL, AT(stc)},
       {"tl_db", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(bands)},
   };
@@ -372,8 +391,10 @@ static void read_opening(reader *r, const json_value *v, brief *out) {
   if (raw.bands && raw.stc > 0)
     diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_CONFLICT, json_place(r->arena, raw.bands),
              "\"stc\" stands here too; keep one of them");
-  if (raw.bands) read_bands(r, raw.bands, o);
-  else if (!(raw.stc > 0)) o->stc = kind_stc(r, v, raw.kind);
+  if (raw.bands)
+    read_bands(r, raw.bands, o);
+  else if (!(raw.stc > 0))
+    o->stc = kind_stc(r, v, raw.kind);
 }
 #undef AT
 
@@ -383,12 +404,14 @@ static void read_openings(reader *r, const json_value *v, brief *out) {
   for (const json_value *x = v->first; x; x = x->next) read_opening(r, x, out);
   for (int i = 0; i < out->opening_count; i++) area += out->openings[i].area_m2;
   if (area >= out->length_m * out->height_m)
-    contradiction(r, v, text_format(r->arena, "the openings (%s m2) leave nothing of the wall (%s m2)",
-                                    text_of(r->arena, area, 2),
-                                    text_of(r->arena, out->length_m * out->height_m, 2)));
+    contradiction(r, v,
+                  text_format(r->arena, "the openings (%s m2) leave nothing of the wall (%s m2)",
+                              text_of(r->arena, area, 2),
+                              text_of(r->arena, out->length_m * out->height_m, 2)));
 }
 
-/* --- patterns and paths ---------------------------------------------------------------------------------------------- */
+/* --- patterns and paths
+ * ---------------------------------------------------------------------------------------------- */
 
 /* Whether `pattern`, less its prefix, matches an id of the kinds that the prefix names. */
 static bool matches_any(const catalog *c, const char *kind, const char *pattern) {
@@ -419,13 +442,14 @@ static void check_pattern(reader *r, const json_value *v) {
   if (!r->catalog || matches_any(r->catalog, kind, pattern)) return;
   const char *near = catalog_nearest(r->catalog, pattern);
   diag_add(r->diags, DIAG_WARNING, ERROR_CATALOG_UNKNOWN_ID, json_place(r->arena, v),
-           "\"%s\" matches nothing in the catalogs%s%s%s", v->string, near ? "; did you mean \"" : "", near ? near : "",
-           near ? "\"?" : "");
+           "\"%s\" matches nothing in the catalogs%s%s%s", v->string,
+           near ? "; did you mean \"" : "", near ? near : "", near ? "\"?" : "");
 }
 
 static bool is_text(reader *r, const json_value *v) {
   if (v->kind == JSON_STRING && v->string[0]) return true;
-  diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_TYPE, json_place(r->arena, v), "expected a string, found %s",
+  diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_TYPE, json_place(r->arena, v),
+           "expected a string, found %s",
            v->kind == JSON_STRING ? "an empty one" : json_kind_name(v->kind));
   return false;
 }
@@ -459,14 +483,17 @@ static int read_paths(reader *r, const json_value *v, const char *file, const ch
   return count;
 }
 
-/* --- the brief ------------------------------------------------------------------------------------------------------- */
+/* ---- the brief ---- */
 
 typedef struct raw_brief {
   brief b;
-  const json_value *building, *wall, *target, *targets, *limits, *structure, *sides, *services, *openings, *allowance;
+  const json_value *building, *wall, *target, *targets, *limits, *structure, *sides, *services,
+      *openings, *allowance;
   const json_value *only, *without, *listings, *reports;
 } raw_brief;
-_Static_assert(COUNT(((brief *)0)->listings) == MAX_PATHS && COUNT(((brief *)0)->reports) == MAX_PATHS, "places for paths");
+_Static_assert(COUNT(((brief *)0)->listings) == MAX_PATHS &&
+                   COUNT(((brief *)0)->reports) == MAX_PATHS,
+               "places for paths");
 
 #define AT(member) offsetof(raw_brief, member)
 static const field brief_fields[] = {
@@ -487,7 +514,8 @@ static const field brief_fields[] = {
     {"openings", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(openings)},
     {"field_allowance", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(allowance)},
     {"floor_area_value_per_m2", FIELD_NUMBER, 0, 0, 1e6, 0, NULL, AT(b.floor_area_value_per_m2)},
-    {"floor_area_value_per_ft2", FIELD_NUMBER, 0, 0, 1e6, 1 / UNITS_M2_PER_FT2, NULL, AT(b.floor_area_value_per_m2)},
+    {"floor_area_value_per_ft2", FIELD_NUMBER, 0, 0, 1e6, 1 / UNITS_M2_PER_FT2, NULL,
+     AT(b.floor_area_value_per_m2)},
     {"build", FIELD_CHOICE, 0, 0, 0, 0, build_words, AT(b.build)},
     {"only", FIELD_VALUE, FIELD_NULL_OK, 0, 0, 0, NULL, AT(only)},
     {"without", FIELD_VALUE, FIELD_NULL_OK, 0, 0, 0, NULL, AT(without)},
@@ -509,10 +537,12 @@ static void read_lists(reader *r, const json_value *root, const raw_brief *raw, 
 static void check_whole(reader *r, const json_value *root, const brief *b) {
   const json_value *fire = json_get(root, "fire_min");
   if (b->fire_min > 0 && b->code == CODE_NONE && b->listing_count == 0)
-    caution(r, fire, "without a code and without listings no wall can be shown to have a fire rating");
+    caution(r, fire,
+            "without a code and without listings no wall can be shown to have a fire rating");
 }
 
-bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root, bool target_required, brief *out) {
+bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root,
+              bool target_required, brief *out) {
   size_t before = d->errors, first = d->count;
   reader r = {a, d, c};
   job_defaults(out);

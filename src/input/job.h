@@ -14,7 +14,11 @@ enum { BRIEF_MAX_TARGETS = 5, BRIEF_MAX_OPENINGS = 16, BRIEF_MAX_PATTERNS = 64 }
 typedef enum basis { BASIS_LAB, BASIS_FIELD } basis;
 typedef enum evidence_wanted { EVIDENCE_ANY, EVIDENCE_PUBLISHED } evidence_wanted;
 typedef enum fastening { FASTENING_NONE, FASTENING_LIGHT, FASTENING_HEAVY } fastening;
-typedef enum noncombustible { NONCOMBUSTIBLE_NO, NONCOMBUSTIBLE_STRICT, NONCOMBUSTIBLE_FRT_OK } noncombustible;
+typedef enum noncombustible {
+  NONCOMBUSTIBLE_NO,
+  NONCOMBUSTIBLE_STRICT,
+  NONCOMBUSTIBLE_FRT_OK
+} noncombustible;
 typedef enum wall_top { TOP_DECK, TOP_CEILING } wall_top;
 typedef enum wall_head { HEAD_RIGID, HEAD_SLIP } wall_head;
 typedef enum build { BUILD_ORDINARY, BUILD_ANY } build;
@@ -23,26 +27,29 @@ typedef struct target {
   sound_metric metric;
   double value;
   basis basis;
-  double confidence;          /* default 0.8 */
+  double confidence; /* default 0.8 */
   evidence_wanted evidence;
-  bool composite;             /* scope */
+  bool composite; /* scope */
   bool scope_given;
-  double margin;              /* points added by hand */
+  double margin; /* points added by hand */
 } target;
 
-typedef struct limit { bool has_min, has_max; double min, max; } limit;
+typedef struct limit {
+  bool has_min, has_max;
+  double min, max;
+} limit;
 
 typedef struct room_side {
   const char *room;
   fastening fastening;
-  double fastening_length_m;  /* 0 = the whole side */
+  double fastening_length_m; /* 0 = the whole side */
   bool wet, abuse;
-  int finish_level;           /* 0..5, default 4 */
+  int finish_level; /* 0..5, default 4 */
 } room_side;
 
 /* A door or window: its rating, or its transmission loss per band. */
 typedef struct opening {
-  const char *kind;           /* "" when not said */
+  const char *kind; /* "" when not said */
   double area_m2;
   bool has_bands;
   double stc;
@@ -50,45 +57,61 @@ typedef struct opening {
 } opening;
 
 typedef struct brief {
-  const char *file;           /* NULL for the default brief */
+  const char *file; /* NULL for the default brief */
   const char *title;
   units_system units;
   fire_code code;
-  int storeys; bool storeys_given, sprinklered;
-  double length_m, height_m;  /* default 3.0 x 2.7 in a brief; 10 x 3 when rating without one */
-  double ceiling_m[2];        /* 0 = none: boards to the deck */
-  wall_top top; wall_head head;
-  target targets[BRIEF_MAX_TARGETS]; int target_count;
+  int storeys;
+  bool storeys_given, sprinklered;
+  double length_m, height_m; /* default 3.0 x 2.7 in a brief; 10 x 3 when rating without one */
+  double ceiling_m[2];       /* 0 = none: boards to the deck */
+  wall_top top;
+  wall_head head;
+  target targets[BRIEF_MAX_TARGETS];
+  int target_count;
   limit thickness_m, mass_kg_m2, cost_per_m2;
-  int fire_min;               /* minutes, 0 = none asked */
-  bool loadbearing; int floors_above; /* floors_above -1 = not said */
+  int fire_min; /* minutes, 0 = none asked */
+  bool loadbearing;
+  int floors_above; /* floors_above -1 = not said */
   noncombustible noncombustible;
-  int shear_side;             /* CATALOG_NONE, SIDE_A, SIDE_B */
-  double lateral_pa;          /* default 240 */
-  double deflection;          /* span over this: default 240 */
+  int shear_side;    /* CATALOG_NONE, SIDE_A, SIDE_B */
+  double lateral_pa; /* default 240 */
+  double deflection; /* span over this: default 240 */
   room_side side[2];
-  double riser_m, run_m;      /* clear pipe in the stud depth; through holes */
-  double boxes_per_10m; bool boxes_given;
-  opening openings[BRIEF_MAX_OPENINGS]; int opening_count;
+  double riser_m, run_m; /* clear pipe in the stud depth; through holes */
+  double boxes_per_10m;
+  bool boxes_given;
+  opening openings[BRIEF_MAX_OPENINGS];
+  int opening_count;
   double field_mean, field_sd; /* default 5, 2 */
   double floor_area_value_per_m2;
   build build;
-  const char *only[BRIEF_MAX_PATTERNS]; int only_count;
-  const char *without[BRIEF_MAX_PATTERNS]; int without_count;
-  const char *prices;         /* path, resolved beside the brief; NULL = the default book */
-  const char *listings[16]; int listing_count;
-  const char *reports[16]; int report_count;
+  const char *only[BRIEF_MAX_PATTERNS];
+  int only_count;
+  const char *without[BRIEF_MAX_PATTERNS];
+  int without_count;
+  const char *prices; /* path, resolved beside the brief; NULL = the default book */
+  const char *listings[16];
+  int listing_count;
+  const char *reports[16];
+  int report_count;
 } brief;
 
 /* The defaults: 3.0 x 2.7 m, no target, ordinary build. */
 void job_defaults(brief *b);
 /* A kind of opening that may be named without a rating. */
-typedef struct opening_kind { const char *kind; double stc; const char *source; } opening_kind;
+typedef struct opening_kind {
+  const char *kind;
+  double stc;
+  const char *source;
+} opening_kind;
 extern const opening_kind job_opening_kinds[];
 extern const int job_opening_kind_count;
 
-/* Reads brief/1 from parsed JSON (docs/formats/brief.md). Without a catalog (NULL) patterns are not checked. `target_required` false for trim and rate. Patterns of only/without are checked against the
- * catalog's ids: one that matches nothing is a warning with the nearest id. */
-bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root, bool target_required, brief *out);
+/* Reads brief/1 from parsed JSON (docs/formats/brief.md). Without a catalog (NULL) patterns are not
+ * checked. `target_required` false for trim and rate. Patterns of only/without are checked against
+ * the catalog's ids: one that matches nothing is a warning with the nearest id. */
+bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root,
+              bool target_required, brief *out);
 
 #endif

@@ -21,7 +21,9 @@ typedef struct scanner {
   bool stopped; /* a fault that cannot be passed over, or more faults than are kept */
 } scanner;
 
-static int column_of(const scanner *s, const char *where) { return (int)(where - s->line_start) + 1; }
+static int column_of(const scanner *s, const char *where) {
+  return (int)(where - s->line_start) + 1;
+}
 
 static void fault(scanner *s, error_code code, const char *where, const char *message) {
   diag_place place = {.file = s->file, .line = s->line, .column = column_of(s, where)};
@@ -34,9 +36,15 @@ static void stop(scanner *s, error_code code, const char *where, const char *mes
   s->stopped = true;
 }
 
-static bool is_digit(char c) { return c >= '0' && c <= '9'; }
-static bool is_letter(char c) { return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') || c == '_'; }
-static bool is_number_part(char c) { return is_digit(c) || c == '+' || c == '-' || c == '.'; }
+static bool is_digit(char c) {
+  return c >= '0' && c <= '9';
+}
+static bool is_letter(char c) {
+  return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') || c == '_';
+}
+static bool is_number_part(char c) {
+  return is_digit(c) || c == '+' || c == '-' || c == '.';
+}
 
 static void skip_space(scanner *s) {
   for (; s->at < s->end; s->at++) {
@@ -53,14 +61,16 @@ static void skip_space(scanner *s) {
 static const char *found(const scanner *s) {
   const char *p = s->at;
   if (p >= s->end) return "the end of the file";
-  if (p + 1 < s->end && p[0] == '/' && (p[1] == '/' || p[1] == '*')) return "a comment (JSON has none)";
+  if (p + 1 < s->end && p[0] == '/' && (p[1] == '/' || p[1] == '*'))
+    return "a comment (JSON has none)";
   if (is_letter(*p) || is_number_part(*p)) {
     size_t n = 0;
     while (p + n < s->end && n < SHOWN && (is_letter(p[n]) || is_number_part(p[n]))) n++;
     return text_format(s->arena, "%.*s", (int)n, p);
   }
   size_t n = text_utf8(p, s->end);
-  if (n == 0 || (unsigned char)*p < 0x20) return text_format(s->arena, "the byte 0x%02x", (unsigned char)*p);
+  if (n == 0 || (unsigned char)*p < 0x20)
+    return text_format(s->arena, "the byte 0x%02x", (unsigned char)*p);
   return *p == '"' ? "a string" : text_format(s->arena, "\"%.*s\"", (int)n, p);
 }
 
@@ -71,7 +81,7 @@ static void stop_unexpected(scanner *s, const char *expected) {
        text_format(s->arena, "expected %s, found %s", expected, found(s)));
 }
 
-/* --- strings --------------------------------------------------------------------------------------------------------- */
+/* ---- strings ---- */
 
 static int hex_digit(char c) {
   if (is_digit(c)) return c - '0';
@@ -103,7 +113,8 @@ static void scan_unicode_escape(scanner *s) {
   int second = high ? escaped_unit(s->at + 6, s->end) : -1;
   bool pair = second >= 0xDC00 && second < 0xE000;
   if (unit == 0) fault(s, ERROR_JSON_ENCODING, s->at, "the character \\u0000 is refused in text");
-  if (low || (high && !pair)) fault(s, ERROR_JSON_ENCODING, s->at, "half a surrogate pair is no character");
+  if (low || (high && !pair))
+    fault(s, ERROR_JSON_ENCODING, s->at, "half a surrogate pair is no character");
   s->at += pair ? 12 : 6;
 }
 
@@ -130,10 +141,13 @@ static bool scan_character(scanner *s, bool *bad_before) {
     scan_escape(s);
     return !s->stopped;
   }
-  if (c < 0x20) fault(s, ERROR_JSON_SYNTAX, s->at, text_format(s->arena, "a raw control character; write \\u%04x", c));
+  if (c < 0x20)
+    fault(s, ERROR_JSON_SYNTAX, s->at,
+          text_format(s->arena, "a raw control character; write \\u%04x", c));
   size_t n = text_utf8(s->at, s->end);
   if (n == 0 && !*bad_before) {
-    fault(s, ERROR_JSON_ENCODING, s->at, text_format(s->arena, "the byte 0x%02x is not UTF-8 here", c));
+    fault(s, ERROR_JSON_ENCODING, s->at,
+          text_format(s->arena, "the byte 0x%02x is not UTF-8 here", c));
     *bad_before = true; /* once a string is enough */
   }
   s->at += n ? n : 1;
@@ -156,7 +170,7 @@ static bool scan_string(scanner *s, const char **from, const char **to) {
   return true;
 }
 
-/* --- numbers and words ----------------------------------------------------------------------------------------------- */
+/* ---- numbers and words ---- */
 
 static size_t count_digits(const char *p, const char *end) {
   size_t n = 0;
@@ -185,8 +199,8 @@ static bool is_number(const char *p, const char *end) {
   return p == end;
 }
 
-/* Whether a well-formed number surely exceeds a double: its first digit that is not 0 stands above 10^308. What lies between
- * the largest double and 10^309 is left to the check after conversion. */
+/* Whether a well-formed number surely exceeds a double: its first digit that is not 0 stands above
+ * 10^308. What lies between the largest double and 10^309 is left to the check after conversion. */
 static bool is_beyond_double(const char *p, const char *end) {
   long before_point = 0, place = 0, exponent = 0;
   bool point = false, leading = false, negative = false;
@@ -216,12 +230,15 @@ static void scan_number(scanner *s) {
   int shown = n > SHOWN ? SHOWN : (int)n;
   const char *more = n > SHOWN ? "..." : "";
   if (!is_number(from, s->at))
-    fault(s, ERROR_JSON_NUMBER, from, text_format(s->arena, "malformed number %.*s%s", shown, from, more));
+    fault(s, ERROR_JSON_NUMBER, from,
+          text_format(s->arena, "malformed number %.*s%s", shown, from, more));
   else if (n > NUMBER_CHARACTERS)
     fault(s, ERROR_JSON_NUMBER, from,
-          text_format(s->arena, "a number of %zu characters; at most %d are read", n, NUMBER_CHARACTERS));
+          text_format(s->arena, "a number of %zu characters; at most %d are read", n,
+                      NUMBER_CHARACTERS));
   else if (is_beyond_double(from, s->at))
-    fault(s, ERROR_JSON_NUMBER, from, text_format(s->arena, "must be a finite number, found %.*s", shown, from));
+    fault(s, ERROR_JSON_NUMBER, from,
+          text_format(s->arena, "must be a finite number, found %.*s", shown, from));
 }
 
 static bool is_word(const char *from, const char *to, const char *word) {
@@ -241,12 +258,15 @@ static void scan_word(scanner *s, json_value *v) {
   } else if (!is_word(from, s->at, "null")) {
     int n = s->at - from > SHOWN ? SHOWN : (int)(s->at - from);
     fault(s, ERROR_JSON_SYNTAX, from,
-          text_format(s->arena, "expected a value, found %.*s; text stands in double quotes, and the words are true, "
-                                "false, null", n, from));
+          text_format(
+              s->arena,
+              "expected a value, found %.*s; text stands in double quotes, and the words are true, "
+              "false, null",
+              n, from));
   }
 }
 
-/* --- values ---------------------------------------------------------------------------------------------------------- */
+/* ---- values ---- */
 
 static json_value *scan_value(scanner *s, json_value *parent);
 
@@ -254,7 +274,8 @@ static bool starts_value(char c) {
   return c == '"' || c == '{' || c == '[' || is_letter(c) || is_number_part(c);
 }
 
-/* Behind a child: whether another follows. Passes over a missing or a needless comma, reporting it. */
+/* Behind a child: whether another follows. Passes over a missing or a needless comma, reporting it.
+ */
 static bool another_follows(scanner *s, char close) {
   const char *close_name = close == '}' ? "a comma or }" : "a comma or ]";
   const char *behind = s->at;
@@ -268,8 +289,10 @@ static bool another_follows(scanner *s, char close) {
     const char *comma_start = s->line_start;
     skip_space(s);
     if (s->at >= s->end || *s->at != close) return true;
-    diag_place place = {.file = s->file, .line = comma_line, .column = (int)(comma - comma_start) + 1};
-    diag_add(s->diags, DIAG_ERROR, ERROR_JSON_SYNTAX, place, "a comma before the closing %c", close);
+    diag_place place = {
+        .file = s->file, .line = comma_line, .column = (int)(comma - comma_start) + 1};
+    diag_add(s->diags, DIAG_ERROR, ERROR_JSON_SYNTAX, place, "a comma before the closing %c",
+             close);
     return false;
   }
   if (c == close) return false;
@@ -329,8 +352,10 @@ static void scan_children(scanner *s, json_value *parent) {
     json_value *child = close == '}' ? scan_member(s, parent) : scan_value(s, parent);
     if (!child) return;
     child->index = parent->count++;
-    if (last) last->next = child;
-    else parent->first = child;
+    if (last)
+      last->next = child;
+    else
+      parent->first = child;
     last = child;
     if (s->stopped) return;
     more = another_follows(s, close);
@@ -349,11 +374,16 @@ static json_value *scan_value(scanner *s, json_value *parent) {
     return NULL;
   }
   if (++s->values > JSON_MAX_VALUES) {
-    stop(s, ERROR_JSON_LIMIT, s->at, text_format(s->arena, "at most %d values are read", JSON_MAX_VALUES));
+    stop(s, ERROR_JSON_LIMIT, s->at,
+         text_format(s->arena, "at most %d values are read", JSON_MAX_VALUES));
     return NULL;
   }
   json_value *v = arena_alloc(s->arena, sizeof *v);
-  *v = (json_value){.kind = JSON_NULL, .line = s->line, .column = column_of(s, s->at), .file = s->file, .parent = parent};
+  *v = (json_value){.kind = JSON_NULL,
+                    .line = s->line,
+                    .column = column_of(s, s->at),
+                    .file = s->file,
+                    .parent = parent};
   if (c == '{' || c == '[') {
     v->kind = c == '{' ? JSON_OBJECT : JSON_ARRAY;
     scan_children(s, v);
@@ -374,15 +404,23 @@ static json_value *scan_value(scanner *s, json_value *parent) {
 static void scan_mark(scanner *s) {
   size_t n = (size_t)(s->end - s->at);
   if (n >= 3 && memcmp(s->at, "\xEF\xBB\xBF", 3) == 0) {
-    fault(s, ERROR_JSON_ENCODING, s->at, "a byte order mark is refused; save the file as plain UTF-8");
+    fault(s, ERROR_JSON_ENCODING, s->at,
+          "a byte order mark is refused; save the file as plain UTF-8");
     s->at += 3;
   } else if (n >= 2 && (memcmp(s->at, "\xFF\xFE", 2) == 0 || memcmp(s->at, "\xFE\xFF", 2) == 0)) {
     stop(s, ERROR_JSON_ENCODING, s->at, "the file is UTF-16; save it as plain UTF-8");
   }
 }
 
-json_value *json_scan(arena *a, diag_list *d, const char *file, const char *bytes, size_t len, size_t *string_bytes) {
-  scanner s = {.arena = a, .diags = d, .file = file, .at = bytes, .end = bytes + len, .line_start = bytes, .line = 1};
+json_value *json_scan(arena *a, diag_list *d, const char *file, const char *bytes, size_t len,
+                      size_t *string_bytes) {
+  scanner s = {.arena = a,
+               .diags = d,
+               .file = file,
+               .at = bytes,
+               .end = bytes + len,
+               .line_start = bytes,
+               .line = 1};
   *string_bytes = 0;
   if (len > JSON_MAX_BYTES) {
     stop(&s, ERROR_JSON_LIMIT, s.at, text_format(a, "must have at most %d bytes", JSON_MAX_BYTES));
@@ -397,6 +435,7 @@ json_value *json_scan(arena *a, diag_list *d, const char *file, const char *byte
   if (s.stopped) return root;
   skip_space(&s);
   if (s.at < s.end)
-    fault(&s, ERROR_JSON_TRAILING, s.at, text_format(a, "expected the end of the file, found %s", found(&s)));
+    fault(&s, ERROR_JSON_TRAILING, s.at,
+          text_format(a, "expected the end of the file, found %s", found(&s)));
   return root;
 }

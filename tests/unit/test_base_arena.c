@@ -14,7 +14,8 @@ static bool is_zero(const unsigned char *p, size_t n) {
 }
 
 /* Sizes around the alignment step, the first block and the largest block. */
-static const size_t sizes[] = {0, 1, 15, 16, 63, 64, 65, 1000, 4096, 16384, 16385, 100000, 1048576, 3000000};
+static const size_t sizes[] = {0,    1,    15,    16,    63,     64,      65,
+                               1000, 4096, 16384, 16385, 100000, 1048576, 3000000};
 
 START_TEST(memory_is_zeroed_and_aligned) {
   size_t size = sizes[_i], align = size >= 64 ? 64 : _Alignof(max_align_t);

@@ -16,20 +16,31 @@ static void setup(void) {
   memory = arena_create(0, &out_of_memory);
   diag_init(&list, memory);
 }
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static const struct print_row {
   diag item;
   const char *line;
 } print_rows[] = {
-    {{DIAG_ERROR, ERROR_FIELD_RANGE, {"catalogs/boards.json", 41, 18, "$.boards[3].mass_kg_m2"}, "must be above 0, found -8.5"},
+    {{DIAG_ERROR,
+      ERROR_FIELD_RANGE,
+      {"catalogs/boards.json", 41, 18, "$.boards[3].mass_kg_m2"},
+      "must be above 0, found -8.5"},
      "catalogs/boards.json:41:18: error[E214] $.boards[3].mass_kg_m2: must be above 0, found -8.5"},
-    {{DIAG_WARNING, ERROR_CATALOG_UNKNOWN_ID, {"a.json", 3, 0, NULL}, "no match"}, "a.json:3: warning[E222]: no match"},
+    {{DIAG_WARNING, ERROR_CATALOG_UNKNOWN_ID, {"a.json", 3, 0, NULL}, "no match"},
+     "a.json:3: warning[E222]: no match"},
     {{DIAG_NOTE, ERROR_SYSTEM_READ, {"a.json", 0, 0, NULL}, "gone"}, "a.json: note[E401]: gone"},
-    {{DIAG_ERROR, ERROR_WALL_SYNTAX, {NULL, 1, 8, NULL}, "expected |"}, "1:8: error[E301]: expected |"},
-    {{DIAG_ERROR, ERROR_USAGE, {NULL, 0, 0, NULL}, "no such option"}, "error[E101]: no such option"},
+    {{DIAG_ERROR, ERROR_WALL_SYNTAX, {NULL, 1, 8, NULL}, "expected |"},
+     "1:8: error[E301]: expected |"},
+    {{DIAG_ERROR, ERROR_USAGE, {NULL, 0, 0, NULL}, "no such option"},
+     "error[E101]: no such option"},
     /* what a file smuggles in stays one harmless line */
-    {{DIAG_ERROR, ERROR_FIELD_CHOICE, {"a.json", 1, 1, NULL}, "found \"x\ny\x1B[31m\x7F\xC2\x9B\xC3\xA9\xFF\""},
+    {{DIAG_ERROR,
+      ERROR_FIELD_CHOICE,
+      {"a.json", 1, 1, NULL},
+      "found \"x\ny\x1B[31m\x7F\xC2\x9B\xC3\xA9\xFF\""},
      "a.json:1:1: error[E215]: found \"x\\u000ay\\u001b[31m\\u007f\\u009b\xC3\xA9\\xff\""},
 };
 
@@ -45,16 +56,15 @@ static const struct status_row {
   error_code code;
   status status;
 } status_rows[] = {
-    {ERROR_NONE, STATUS_OK},
-    {ERROR_USAGE, STATUS_USAGE},
-    {ERROR_JSON_SYNTAX, STATUS_DATA},
-    {ERROR_BRIEF_CONTRADICTION, STATUS_DATA},
-    {ERROR_WALL_ILLEGAL, STATUS_DATA},
-    {ERROR_SYSTEM_READ, STATUS_SYSTEM},
+    {ERROR_NONE, STATUS_OK},           {ERROR_USAGE, STATUS_USAGE},
+    {ERROR_JSON_SYNTAX, STATUS_DATA},  {ERROR_BRIEF_CONTRADICTION, STATUS_DATA},
+    {ERROR_WALL_ILLEGAL, STATUS_DATA}, {ERROR_SYSTEM_READ, STATUS_SYSTEM},
     {ERROR_INTERNAL, STATUS_INTERNAL},
 };
 
-START_TEST(statuses) { ck_assert_int_eq(error_status(status_rows[_i].code), status_rows[_i].status); }
+START_TEST(statuses) {
+  ck_assert_int_eq(error_status(status_rows[_i].code), status_rows[_i].status);
+}
 END_TEST
 
 START_TEST(errors_are_counted_and_the_worst_remembered) {
@@ -115,7 +125,8 @@ static char *page(void) {
 /* Each number has a section with its name and text, and in it a cause and what to do. */
 START_TEST(the_page_explains_every_error) {
   const struct error_row *row = &error_rows[_i];
-  const char *heading = text_format(memory, "\n### E%d %s: %s\n", row->number, row->name, row->text);
+  const char *heading =
+      text_format(memory, "\n### E%d %s: %s\n", row->number, row->name, row->text);
   const char *section = strstr(page(), heading);
   ck_assert_msg(section != NULL, "docs/errors.md lacks the heading%s", heading);
   const char *cause = strstr(section, "\nCause: "), *remedy = strstr(section, "\nWhat to do: ");

@@ -42,7 +42,9 @@ static void teardown(void) {
   arena_free(memory);
 }
 
-static const char *in_folder(const char *name) { return file_join(memory, folder, name); }
+static const char *in_folder(const char *name) {
+  return file_join(memory, folder, name);
+}
 
 static const size_t lengths[] = {0, 1, 100, 16383, 16384, 16385, 300000};
 
@@ -124,7 +126,9 @@ START_TEST(what_cannot_be_written_is_reported) {
 }
 END_TEST
 
-START_TEST(devices_are_written_to) { ck_assert(file_write(memory, &list, "/dev/null", "x", 1)); }
+START_TEST(devices_are_written_to) {
+  ck_assert(file_write(memory, &list, "/dev/null", "x", 1));
+}
 END_TEST
 
 START_TEST(a_link_stays_and_its_target_is_replaced) {
@@ -152,9 +156,12 @@ END_TEST
 static const struct name_row {
   const char *file, *relative, *beside;
 } name_rows[] = {
-    {"a/b/brief.json", "prices.json", "a/b/prices.json"}, {"brief.json", "prices.json", "prices.json"},
-    {"/brief.json", "p.json", "/p.json"},                 {"a/brief.json", "/x/p.json", "/x/p.json"},
-    {NULL, "p.json", "p.json"},                           {"a/b.json", "../p.json", "a/../p.json"},
+    {"a/b/brief.json", "prices.json", "a/b/prices.json"},
+    {"brief.json", "prices.json", "prices.json"},
+    {"/brief.json", "p.json", "/p.json"},
+    {"a/brief.json", "/x/p.json", "/x/p.json"},
+    {NULL, "p.json", "p.json"},
+    {"a/b.json", "../p.json", "a/../p.json"},
 };
 
 START_TEST(names_beside) {

@@ -12,8 +12,12 @@
 static jmp_buf out_of_memory;
 static arena *memory;
 
-static void setup(void) { memory = arena_create(0, &out_of_memory); }
-static void teardown(void) { arena_free(memory); }
+static void setup(void) {
+  memory = arena_create(0, &out_of_memory);
+}
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static text buffer(size_t max) {
   text t;
@@ -21,7 +25,8 @@ static text buffer(size_t max) {
   return t;
 }
 
-/* Half away from zero on the decimal that a person would write: 2.675 is 2.68, though the nearest double lies below it. */
+/* Half away from zero on the decimal that a person would write: 2.675 is 2.68, though the nearest
+ * double lies below it. */
 static const struct fixed_row {
   double value;
   int decimals;
@@ -71,7 +76,9 @@ static void check_fixed(const struct fixed_row *row) {
   ck_assert_str_eq(text_of(memory, row->value, row->decimals), row->fixed);
 }
 
-START_TEST(numbers) { check_fixed(&fixed_rows[_i]); }
+START_TEST(numbers) {
+  check_fixed(&fixed_rows[_i]);
+}
 END_TEST
 
 START_TEST(numbers_that_are_none) {
@@ -95,13 +102,15 @@ START_TEST(the_largest_number_fits) {
 }
 END_TEST
 
-/* The host may run under a locale with a decimal comma. Where the C library's tools can make one, all rows are read again under
- * it; the library itself never sets a locale. */
+/* The host may run under a locale with a decimal comma. Where the C library's tools can make one,
+ * all rows are read again under it; the library itself never sets a locale. */
 START_TEST(numbers_under_a_decimal_comma) {
   const char *folder = TEST_BINARY_DIR "/test-locale";
-  const char *command = "mkdir -p '" TEST_BINARY_DIR "/test-locale' && localedef -i de_DE -f UTF-8 '" TEST_BINARY_DIR
-                        "/test-locale/de_DE.UTF-8' >/dev/null 2>&1";
-  bool made = system(command) == 0 && setenv("LOCPATH", folder, 1) == 0 && setlocale(LC_ALL, "de_DE.UTF-8") != NULL;
+  const char *command =
+      "mkdir -p '" TEST_BINARY_DIR "/test-locale' && localedef -i de_DE -f UTF-8 '" TEST_BINARY_DIR
+      "/test-locale/de_DE.UTF-8' >/dev/null 2>&1";
+  bool made = system(command) == 0 && setenv("LOCPATH", folder, 1) == 0 &&
+              setlocale(LC_ALL, "de_DE.UTF-8") != NULL;
   if (!made) {
     (void)fprintf(stderr, "note: no locale with a decimal comma can be made here; skipped\n");
     return;
@@ -113,7 +122,8 @@ START_TEST(numbers_under_a_decimal_comma) {
 }
 END_TEST
 
-/* A slow check of the rounding: 3-digit decimals k/1000 to 2 digits, with the answer from whole numbers. */
+/* A slow check of the rounding: 3-digit decimals k/1000 to 2 digits, with the answer from whole
+ * numbers. */
 START_TEST(every_thousandth_rounds_half_away) {
   for (int k = 0; k < 20000; k++) {
     int cents = (k + 5) / 10;
@@ -191,17 +201,28 @@ static const struct match_row {
   const char *pattern, *name;
   bool matches;
 } match_rows[] = {
-    {"typex-16", "typex-16", true},   {"typex-16", "typex-1", false},    {"typex-*", "typex-16", true},
-    {"*", "", true},                  {"*", "anything", true},           {"", "", true},
-    {"", "a", false},                 {"*-16", "typex-16", true},        {"*-16", "typex-16b", false},
-    {"a*b*c", "aXbYbZc", true},       {"a*b*c", "aXbYbZ", false},        {"steel-?\?-18", "steel-92-18", true},
-    {"steel-?\?-18", "steel-152-18", false}, {"?", "", false},            {"**", "x", true},
+    {"typex-16", "typex-16", true},
+    {"typex-16", "typex-1", false},
+    {"typex-*", "typex-16", true},
+    {"*", "", true},
+    {"*", "anything", true},
+    {"", "", true},
+    {"", "a", false},
+    {"*-16", "typex-16", true},
+    {"*-16", "typex-16b", false},
+    {"a*b*c", "aXbYbZc", true},
+    {"a*b*c", "aXbYbZ", false},
+    {"steel-?\?-18", "steel-92-18", true},
+    {"steel-?\?-18", "steel-152-18", false},
+    {"?", "", false},
+    {"**", "x", true},
     {"[ab]", "a", false},
 };
 
 START_TEST(patterns) {
   const struct match_row *row = &match_rows[_i];
-  ck_assert_msg(text_match(row->pattern, row->name) == row->matches, "%s on %s", row->pattern, row->name);
+  ck_assert_msg(text_match(row->pattern, row->name) == row->matches, "%s on %s", row->pattern,
+                row->name);
 }
 END_TEST
 
@@ -217,20 +238,29 @@ START_TEST(a_hostile_pattern_ends) {
 }
 END_TEST
 
-static const char *const names[] = {"height_m", "length_m", "typex-16", "typex-13", "rc", "clip", "steel-92-18"};
+static const char *const names[] = {"height_m", "length_m", "typex-16",   "typex-13",
+                                    "rc",       "clip",     "steel-92-18"};
 static const struct near_row {
   const char *word, *nearest;
 } near_rows[] = {
-    {"heigth_m", "height_m"}, {"height", "height_m"}, {"typex16", "typex-16"},  {"tpyex-13", "typex-13"},
-    {"rx", NULL},             {"clips", "clip"},      {"banana", NULL},         {"", NULL},
+    {"heigth_m", "height_m"},
+    {"height", "height_m"},
+    {"typex16", "typex-16"},
+    {"tpyex-13", "typex-13"},
+    {"rx", NULL},
+    {"clips", "clip"},
+    {"banana", NULL},
+    {"", NULL},
     {"steel-92-81", "steel-92-18"},
 };
 
 START_TEST(near_names) {
   const struct near_row *row = &near_rows[_i];
   const char *found = text_nearest(row->word, names, sizeof names / sizeof names[0]);
-  if (row->nearest) ck_assert_pstr_eq(found, row->nearest);
-  else ck_assert_msg(!found, "%s is near %s", row->word, found ? found : "");
+  if (row->nearest)
+    ck_assert_pstr_eq(found, row->nearest);
+  else
+    ck_assert_msg(!found, "%s is near %s", row->word, found ? found : "");
 }
 END_TEST
 
@@ -260,7 +290,7 @@ static const struct utf8_row {
     {"\xF0\x8F\xBF\xBF", 0}, /* overlong */
     {"\xF4\x90\x80\x80", 0}, /* beyond U+10FFFF */
     {"\xF5\x80\x80\x80", 0},
-    {"\xE2\x82", 0},         /* cut off */
+    {"\xE2\x82", 0}, /* cut off */
     {"\xFF", 0},
 };
 

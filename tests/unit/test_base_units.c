@@ -1,5 +1,5 @@
-/* Units: what people write for lengths, and how lengths and masses are printed. Factors: NIST SP 811 appendix B (inch and foot
- * 0.0254 m and 0.3048 m, pound 0.45359237 kg, all exact). */
+/* Units: what people write for lengths, and how lengths and masses are printed. Factors: NIST SP
+ * 811 appendix B (inch and foot 0.0254 m and 0.3048 m, pound 0.45359237 kg, all exact). */
 #include "base/units.h"
 
 #include <check.h>
@@ -8,14 +8,18 @@
 
 #include "base/bands.h"
 
-#define LENGTH_M 1e-15   /* one rounding of a sum of a few metres */
-#define FACTOR_SHARE 1e-9 /* the header gives ten digits */
+#define LENGTH_M     1e-15 /* one rounding of a sum of a few metres */
+#define FACTOR_SHARE 1e-9  /* the header gives ten digits */
 
 static jmp_buf out_of_memory;
 static arena *memory;
 
-static void setup(void) { memory = arena_create(0, &out_of_memory); }
-static void teardown(void) { arena_free(memory); }
+static void setup(void) {
+  memory = arena_create(0, &out_of_memory);
+}
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static const struct length_row {
   const char *written;
@@ -81,15 +85,19 @@ START_TEST(lengths) {
   double metres = -7;
   bool read = units_parse_length(row->written, row->unit_m, &metres, &expected);
   ck_assert_msg(read == (row->metres >= 0), "%s: read %d", row->written, read);
-  if (read) ck_assert_msg(fabs(metres - row->metres) <= LENGTH_M, "%s: %.17g", row->written, metres);
-  else ck_assert_msg(metres < -6 && expected && expected[0], "%s: untouched, with what was wanted", row->written);
+  if (read)
+    ck_assert_msg(fabs(metres - row->metres) <= LENGTH_M, "%s: %.17g", row->written, metres);
+  else
+    ck_assert_msg(metres < -6 && expected && expected[0], "%s: untouched, with what was wanted",
+                  row->written);
 }
 END_TEST
 
 static const struct named_row {
   const char *unit;
   double value, metres;
-} named_rows[] = {{"m", 2.7, 2.7}, {"mm", 610, 0.61}, {"cm", 61, 0.61}, {"in", 12, 0.3048}, {"ft", 9.5, 2.8956}};
+} named_rows[] = {
+    {"m", 2.7, 2.7}, {"mm", 610, 0.61}, {"cm", 61, 0.61}, {"in", 12, 0.3048}, {"ft", 9.5, 2.8956}};
 
 START_TEST(named_units) {
   double metres = 0;
@@ -105,7 +113,8 @@ static const struct print_row {
   double value;
   const char *us, *si;
 } print_rows[] = {
-    {units_put_thickness, 0.123825, "4-7/8 in", "123.8 mm"}, /* 3-5/8 in stud and two 5/8 in boards */
+    {units_put_thickness, 0.123825, "4-7/8 in",
+     "123.8 mm"}, /* 3-5/8 in stud and two 5/8 in boards */
     {units_put_thickness, 0.0127, "1/2 in", "12.7 mm"},
     {units_put_thickness, 0.1016, "4 in", "101.6 mm"},
     {units_put_thickness, 0, "0 in", "0.0 mm"},

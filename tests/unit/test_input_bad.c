@@ -1,6 +1,7 @@
-/* Bad files: every tests/bad/NAME.json is read as what it claims to be (a brief when it claims nothing), and its messages must be
- * the lines of NAME.expect. A new case needs two files and no compiler. With SEPTUM_REWRITE set in the environment the .expect
- * files are written instead; look at the difference before keeping it. */
+/* Bad files: every tests/bad/NAME.json is read as what it claims to be (a brief when it claims
+ * nothing), and its messages must be the lines of NAME.expect. A new case needs two files and no
+ * compiler. With SEPTUM_REWRITE set in the environment the .expect files are written instead; look
+ * at the difference before keeping it. */
 #include <check.h>
 #include <dirent.h>
 #include <setjmp.h>
@@ -18,7 +19,9 @@ static jmp_buf out_of_memory;
 static const char *names[CASES_MAX];
 static int count;
 
-static int by_name(const void *a, const void *b) { return strcmp(*(const char *const *)a, *(const char *const *)b); }
+static int by_name(const void *a, const void *b) {
+  return strcmp(*(const char *const *)a, *(const char *const *)b);
+}
 
 /* Names less `.json`, sorted. */
 static void find_cases(arena *a) {
@@ -26,7 +29,8 @@ static void find_cases(arena *a) {
   if (!folder) return;
   for (struct dirent *e; (e = readdir(folder)) != NULL && count < CASES_MAX;) {
     size_t n = strlen(e->d_name);
-    if (n > 5 && text_equal(e->d_name + n - 5, ".json")) names[count++] = text_copyn(a, e->d_name, n - 5);
+    if (n > 5 && text_equal(e->d_name + n - 5, ".json"))
+      names[count++] = text_copyn(a, e->d_name, n - 5);
   }
   (void)closedir(folder);
   qsort(names, (size_t)count, sizeof *names, by_name);
@@ -78,12 +82,14 @@ START_TEST(the_messages_are_those_expected) {
   if (getenv("SEPTUM_REWRITE")) ck_assert(file_write(a, &faults, expect, found, strlen(found)));
   const char *expected = file_read(a, &faults, expect, FILE_BYTES, &len);
   ck_assert_msg(expected != NULL, "%s.expect can be read", names[_i]);
-  ck_assert_msg(text_equal(found, expected), "%s\nexpected:\n%sfound:\n%s", names[_i], expected, found);
+  ck_assert_msg(text_equal(found, expected), "%s\nexpected:\n%sfound:\n%s", names[_i], expected,
+                found);
   arena_free(a);
 }
 END_TEST
 
-/* Memory may run out anywhere while a bad file is read: each time the jump is taken, and nothing else is touched. */
+/* Memory may run out anywhere while a bad file is read: each time the jump is taken, and nothing
+ * else is touched. */
 START_TEST(memory_may_run_out_anywhere) {
   volatile long n = 1;
   for (;; n++) {
@@ -105,7 +111,8 @@ END_TEST
 /* A file cut off anywhere, or with one byte changed, is read or refused, never more. */
 START_TEST(damaged_files_are_refused_or_read) {
   static const char whole[] =
-      "{\"septum\": \"brief/1\", \"title\": \"caf\xC3\xA9 \\ud83d\\ude00\", \"target\": {\"value\": 5.0e1, \"margin\": -0},\n"
+      "{\"septum\": \"brief/1\", \"title\": \"caf\xC3\xA9 \\ud83d\\ude00\", \"target\": "
+      "{\"value\": 5.0e1, \"margin\": -0},\n"
       "\"only\": [\"rc\", \"wood-*\"], \"building\": {\"sprinklered\": true}, \"prices\": null}";
   static const char bytes[] = "{}[]\",:\\u0e-9.tn \n\x01\x80\xC3\xFF";
   for (size_t i = 0; i < sizeof whole; i++) {
@@ -119,7 +126,8 @@ START_TEST(damaged_files_are_refused_or_read) {
       if (k > 0) damaged[i] = bytes[k - 1];
       const json_value *root = json_parse(a, &faults, "f", damaged, k > 0 ? sizeof whole - 1 : i);
       if (root) (void)job_read(a, &faults, NULL, root, true, &b);
-      if (!root && faults.errors == 0) ck_abort_msg("place %zu byte %zu: refused without a message", i, k);
+      if (!root && faults.errors == 0)
+        ck_abort_msg("place %zu byte %zu: refused without a message", i, k);
       arena_free(a);
     }
   }

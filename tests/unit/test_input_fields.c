@@ -16,7 +16,9 @@ static void setup(void) {
   memory = arena_create(0, &out_of_memory);
   diag_init(&faults, memory);
 }
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static const char *const colours[] = {"red", "green", NULL};
 
@@ -52,8 +54,11 @@ static bool read(const char *s, thing *out) {
 
 START_TEST(every_kind_is_stored) {
   thing t = {.any = 7};
-  ck_assert(read("{\"septum\": \"thing/1\", \"number\": 2.5, \"scaled_gpa\": 2, \"size_mm\": 610, \"any\": null, \"area_ft2\": 100, "
-                 "\"whole\": -5, \"colour\": \"green\", \"flag\": true, \"name\": \"n\", \"list\": [1], \"note\": {}}", &t));
+  ck_assert(read("{\"septum\": \"thing/1\", \"number\": 2.5, \"scaled_gpa\": 2, \"size_mm\": 610, "
+                 "\"any\": null, \"area_ft2\": 100, "
+                 "\"whole\": -5, \"colour\": \"green\", \"flag\": true, \"name\": \"n\", \"list\": "
+                 "[1], \"note\": {}}",
+                 &t));
   ck_assert_double_eq(t.number, 2.5);
   ck_assert_double_eq(t.scaled, 2e9);
   ck_assert_double_eq_tol(t.length, 0.61, LENGTH_M);
@@ -81,9 +86,14 @@ static const struct length_row {
   const char *member;
   double metres;
 } length_rows[] = {
-    {"\"size_mm\": 610", 0.61},           {"\"size_in\": 24", 0.6096},     {"\"size_ft\": 2", 0.6096},
-    {"\"size_m\": 0.61", 0.61},           {"\"size_mm\": \"24in\"", 0.6096}, {"\"size_in\": \"3-5/8\"", 0.092075},
-    {"\"size_ft\": \"5'-6\\\"\"", 1.6764}, {"\"size_m\": \"61 cm\"", 0.61},
+    {"\"size_mm\": 610", 0.61},
+    {"\"size_in\": 24", 0.6096},
+    {"\"size_ft\": 2", 0.6096},
+    {"\"size_m\": 0.61", 0.61},
+    {"\"size_mm\": \"24in\"", 0.6096},
+    {"\"size_in\": \"3-5/8\"", 0.092075},
+    {"\"size_ft\": \"5'-6\\\"\"", 1.6764},
+    {"\"size_m\": \"61 cm\"", 0.61},
 };
 
 START_TEST(lengths_in_any_unit) {
@@ -103,7 +113,8 @@ static const struct fault_row {
     {"{}", ERROR_FIELD_MISSING, "the key \"number\" is missing"},
     {"{\"number\": 0}", ERROR_FIELD_RANGE, "must be above 0 and at most 10, found 0"},
     {"{\"number\": 10.5}", ERROR_FIELD_RANGE, "must be above 0 and at most 10, found 10.5"},
-    {"{\"number\": 1e300}", ERROR_FIELD_RANGE, "must be above 0 and at most 10, found a number above 1e15"},
+    {"{\"number\": 1e300}", ERROR_FIELD_RANGE,
+     "must be above 0 and at most 10, found a number above 1e15"},
     {"{\"number\": null}", ERROR_FIELD_TYPE, "expected a number, found null"},
     {"{\"number\": 1, \"scaled_gpa\": 6}", ERROR_FIELD_RANGE, "must be from 1 to 5, found 6"},
     {"{\"number\": 1, \"area_m2\": 0.5}", ERROR_FIELD_RANGE, "must be at least 1, found 0.5"},
@@ -111,18 +122,26 @@ static const struct fault_row {
      "says the same as \"area_m2\" in line 1; keep one of them"},
     {"{\"number\": 1, \"size_in\": 2, \"size_ft\": 3}", ERROR_FIELD_CONFLICT,
      "says the same as \"size_in\" in line 1; keep one of them"},
-    {"{\"number\": 1, \"size_mm\": 2500}", ERROR_FIELD_RANGE, "must be above 0 and at most 2000, found 2500"},
-    {"{\"number\": 1, \"size_in\": \"9ft\"}", ERROR_FIELD_RANGE, "must be above 0 and at most 78.740157, found 108"},
+    {"{\"number\": 1, \"size_mm\": 2500}", ERROR_FIELD_RANGE,
+     "must be above 0 and at most 2000, found 2500"},
+    {"{\"number\": 1, \"size_in\": \"9ft\"}", ERROR_FIELD_RANGE,
+     "must be above 0 and at most 78.740157, found 108"},
     {"{\"number\": 1, \"whole\": 1.5}", ERROR_FIELD_RANGE, "must be a whole number, found 1.5"},
-    {"{\"number\": 1, \"whole\": 1e10}", ERROR_FIELD_RANGE, "must be a whole number, found 10000000000"},
+    {"{\"number\": 1, \"whole\": 1e10}", ERROR_FIELD_RANGE,
+     "must be a whole number, found 10000000000"},
     {"{\"number\": 1, \"whole\": 6}", ERROR_FIELD_RANGE, "must be from -5 to 5, found 6"},
-    {"{\"number\": 1, \"colour\": \"blue\"}", ERROR_FIELD_CHOICE, "expected one of \"red\", \"green\"; found \"blue\""},
-    {"{\"number\": 1, \"colour\": 1}", ERROR_FIELD_TYPE, "expected one of \"red\", \"green\", found a number"},
+    {"{\"number\": 1, \"colour\": \"blue\"}", ERROR_FIELD_CHOICE,
+     "expected one of \"red\", \"green\"; found \"blue\""},
+    {"{\"number\": 1, \"colour\": 1}", ERROR_FIELD_TYPE,
+     "expected one of \"red\", \"green\", found a number"},
     {"{\"number\": 1, \"flag\": 1}", ERROR_FIELD_TYPE, "expected true or false, found a number"},
     {"{\"number\": 1, \"name\": []}", ERROR_FIELD_TYPE, "expected a string, found an array"},
-    {"{\"number\": 1, \"nmae\": \"x\"}", ERROR_FIELD_UNKNOWN, "unknown key \"nmae\"; did you mean \"name\"?"},
-    {"{\"number\": 1, \"siez_ft\": 1}", ERROR_FIELD_UNKNOWN, "unknown key \"siez_ft\"; did you mean \"size_ft\"?"},
-    {"{\"number\": 1, \"size_km\": 1}", ERROR_FIELD_UNKNOWN, "unknown key \"size_km\"; did you mean \"size_m\"?"},
+    {"{\"number\": 1, \"nmae\": \"x\"}", ERROR_FIELD_UNKNOWN,
+     "unknown key \"nmae\"; did you mean \"name\"?"},
+    {"{\"number\": 1, \"siez_ft\": 1}", ERROR_FIELD_UNKNOWN,
+     "unknown key \"siez_ft\"; did you mean \"size_ft\"?"},
+    {"{\"number\": 1, \"size_km\": 1}", ERROR_FIELD_UNKNOWN,
+     "unknown key \"size_km\"; did you mean \"size_m\"?"},
 };
 
 START_TEST(faults_are_reported) {
@@ -147,7 +166,9 @@ END_TEST
 
 START_TEST(all_faults_show_at_once_and_sound_fields_are_read) {
   thing t = {0};
-  ck_assert(!read("{\"nmae\": 1, \"whole\": \"x\", \"colour\": \"red\", \"flag\": 2, \"name\": \"sound\"}", &t));
+  ck_assert(!read(
+      "{\"nmae\": 1, \"whole\": \"x\", \"colour\": \"red\", \"flag\": 2, \"name\": \"sound\"}",
+      &t));
   ck_assert_uint_eq(faults.errors, 4);
   ck_assert_str_eq(t.name, "sound");
 }
@@ -155,7 +176,8 @@ END_TEST
 
 START_TEST(a_full_list_of_messages_hides_nothing) {
   thing t = {0};
-  for (int i = 0; i < 300; i++) diag_add(&faults, DIAG_WARNING, ERROR_FIELD_RANGE, (diag_place){0}, "w");
+  for (int i = 0; i < 300; i++)
+    diag_add(&faults, DIAG_WARNING, ERROR_FIELD_RANGE, (diag_place){0}, "w");
   ck_assert(read("{\"number\": 1, \"name\": \"read\"}", &t));
   ck_assert_str_eq(t.name, "read");
   ck_assert(!read("{\"number\": 1, \"x\": 1, \"y\": 1}", &t));

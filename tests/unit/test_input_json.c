@@ -14,17 +14,31 @@ static void setup(void) {
   memory = arena_create(0, &out_of_memory);
   diag_init(&faults, memory);
 }
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
-static const json_value *parse(const char *s) { return json_parse(memory, &faults, "f.json", s, strlen(s)); }
+static const json_value *parse(const char *s) {
+  return json_parse(memory, &faults, "f.json", s, strlen(s));
+}
 
 static const struct number_row {
   const char *written;
   double value;
 } number_rows[] = {
-    {"0", 0},       {"-0", 0},         {"7", 7},      {"-12.5", -12.5},   {"1e3", 1000},
-    {"1E+3", 1000}, {"25e-1", 2.5},    {"0.1", 0.1},  {"0.0000001", 1e-7}, {"1e-400", 0},
-    {"0e999", 0},   {"1.7976931348623157e308", 1.7976931348623157e308},   {"0.00001e312", 1e307},
+    {"0", 0},
+    {"-0", 0},
+    {"7", 7},
+    {"-12.5", -12.5},
+    {"1e3", 1000},
+    {"1E+3", 1000},
+    {"25e-1", 2.5},
+    {"0.1", 0.1},
+    {"0.0000001", 1e-7},
+    {"1e-400", 0},
+    {"0e999", 0},
+    {"1.7976931348623157e308", 1.7976931348623157e308},
+    {"0.00001e312", 1e307},
     {"123456789012345678", 123456789012345678.0},
 };
 
@@ -74,7 +88,8 @@ START_TEST(words_and_empty_containers) {
 }
 END_TEST
 
-static const char sample[] = "{\n  \"a\": [1,\n    {\"b c\": \"x\"}],\n\t\"\\u0064\": {\"e\": true}, \"q\\\"\": 5\n}\n";
+static const char sample[] =
+    "{\n  \"a\": [1,\n    {\"b c\": \"x\"}],\n\t\"\\u0064\": {\"e\": true}, \"q\\\"\": 5\n}\n";
 
 START_TEST(places_and_paths) {
   const json_value *root = parse(sample);
@@ -151,7 +166,8 @@ END_TEST
 
 /* A list that is full of warnings hides no fault. */
 START_TEST(a_full_list_of_messages_hides_nothing) {
-  for (int i = 0; i < 300; i++) diag_add(&faults, DIAG_WARNING, ERROR_FIELD_RANGE, (diag_place){0}, "w");
+  for (int i = 0; i < 300; i++)
+    diag_add(&faults, DIAG_WARNING, ERROR_FIELD_RANGE, (diag_place){0}, "w");
   ck_assert_ptr_null(parse("{\"a\": 1, \"a\": 2}"));
   ck_assert_ptr_null(parse("{\"a\": 01}"));
   ck_assert_uint_eq(faults.errors, 2);
