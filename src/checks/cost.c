@@ -11,39 +11,43 @@
 #define FOOT UNITS_M_PER_FT
 
 static const struct {
-  double studs_added; /* share for corners, tees and free ends: common practice, no source */
-  double
-      studs_an_opening; /* two jambs and the header cut from a stud: common practice, no source */
-  double stud_short_m;  /* a stud so much short of the clear height still serves: precut lengths are
-                           made for three plates and  stand with two (92-5/8 in under 8 ft): common
-                           practice, no source */
-  int plates, plates_bearing; /* wood, a row: common practice, no source */
-  int tracks;                 /* steel, a row */
-  double bridging_m;     /* load-bearing steel: rows of bridging no further apart (48 in): common
-                            practice, no source */
-  double channel_ends_m; /* first row <= 50 mm from the floor, last <= 150 mm from the ceiling:
-                            common practice, no source */
-  double clip_ends_m;    /* <= 75 mm and <= 150 mm: from memory: instructions for isolation clips */
-  double cut_below_m; /* bays narrower than this are filled from the 16 in stock (12 in centres) */
-  double cut_waste;   /* and so much of it is lost: common practice, no source */
-  double opening_kept_m2; /* board is deducted only for openings above 32 ft2: common practice, no
-                             source */
-  double
-      fireblock_m; /* IBC 718.2.1, from memory: every 10 ft of height, and of length between rows */
-  double boxes_per_10m;  /* of wall and side, where the brief does not say: common practice, no
-                            source */
-  double finish_above_m; /* finish goes so far above the ceiling: common practice, no source */
-  int finish_hidden;     /* Level 1 above it (ASTM C840, GA-214, from memory) */
-  int finish_tile;       /* Level 2 under tile (GA-214, from memory) */
-  double screws_m; /* between screws at edges and in the field (12 in): ASTM C840, from memory */
-  double sheet_m;  /* width of sheets, 48 in */
-} rules = {0.10,      3,     0.010, 2,         3,    2,
-           48 * INCH, 0.200, 0.225, 14 * INCH, 0.25, 32 * UNITS_M2_PER_FT2,
-           10 * FOOT, 3,     0.100, 1,         2,    12 * INCH,
-           48 * INCH};
+  double studs_added, studs_an_opening, stud_short_m, bridging_m;
+  int plates, plates_bearing, tracks;
+  double channel_ends_m, clip_ends_m, cut_below_m, cut_waste, opening_kept_m2, fireblock_m;
+  double boxes_per_10m, finish_above_m, screws_m, sheet_m;
+  int finish_hidden, finish_tile;
+} rules = {
+    /* framing: common practice, no source */
+    .studs_added = 0.10,     /* share for corners, tees and free ends */
+    .studs_an_opening = 3,   /* two jambs, and the header cut from a stud */
+    .stud_short_m = 0.010,   /* precut studs, made for three plates, stand with two */
+    .bridging_m = 48 * INCH, /* load-bearing steel: rows no further apart */
+    .plates = 2,             /* wood, a row */
+    .plates_bearing = 3,
+    .tracks = 2, /* steel, a row */
+    /* mounts: what first and last row leave of the height. Channel 50 and 150 mm: common practice,
+     * no source; clips 75 and 150 mm: from memory: instructions for isolation clips */
+    .channel_ends_m = 0.200,
+    .clip_ends_m = 0.225,
+    /* bays at 12 in are filled from the 16 in stock, and a quarter is lost: common practice, no
+     * source */
+    .cut_below_m = 14 * INCH,
+    .cut_waste = 0.25,
+    /* board is deducted for larger openings only, batts for all: common practice, no source */
+    .opening_kept_m2 = 32 * UNITS_M2_PER_FT2,
+    .fireblock_m = 10 * FOOT, /* of height, and of length between rows: IBC 718.2.1, from memory */
+    .boxes_per_10m = 3,       /* a side, where the brief is silent: common practice, no source */
+    /* finish: to so much above the ceiling, Level 1 beyond: ASTM C840 and GA-214, from memory;
+     * Level 2 under tile: GA-214, from memory */
+    .finish_above_m = 0.100,
+    .finish_hidden = 1,
+    .finish_tile = 2,
+    .screws_m = 12 * INCH, /* at edges and in the field: ASTM C840, from memory */
+    .sheet_m = 48 * INCH,
+};
 
-static const double count_slack =
-    1e-6; /* lengths in inches are not exact in metres: 24 ft is 12 spaces of 24 in, not 13 */
+/* Lengths in inches are not exact in metres: 24 ft is 12 spaces of 24 in, not 13. */
+static const double count_slack = 1e-6;
 
 static const char bearing_steel_section[] = "05 40 00"; /* MasterFormat, from memory */
 

@@ -12,12 +12,14 @@
 static const double size_slack_m = 0.5e-3;
 
 static const struct {
-  double board_m; /* composite: a gypsum board at least so thick (5/8 in) on both flanges; the
-                     table's specimens */
-  double load_pa, deflection; /* load (5 psf) and span over deflection of that table */
-  double widest_m;            /* and its widest spacing (24 in) */
-  double tile_deflection;     /* L/360 behind tile: ANSI A108.11, from memory */
-} height_rules = {15.9e-3, 240, 240, 24 * INCH, 360};
+  double board_m, load_pa, deflection, widest_m, tile_deflection;
+} height_rules = {
+    /* the composite table: 5/8 in board on both flanges, 5 psf, L/240, spacings up to 24 in */
+    .board_m = 15.9e-3,                            /* the boards of its specimens */
+    .load_pa = 240,                                /* 239.4, rounded as briefs round it */
+    .deflection = 240,                             /* L/240 */
+    .widest_m = 24 * INCH, .tile_deflection = 360, /* ANSI A108.11, from memory */
+};
 
 static const char composite_source[] = "a maker's composite limiting heights: 25 gauge studs, one "
                                        "5/8 in Type X board upright on each side, L/240 at 5 psf";
@@ -40,16 +42,22 @@ static const struct bearing_row {
 enum { BEARING_ROWS = sizeof bearing_table / sizeof bearing_table[0] };
 
 static const struct {
-  int bearing_mil;         /* load-bearing steel: common practice, no source */
-  double bearing_flange_m; /* 1-5/8 in: common practice, no source */
-  int floors_unsaid;       /* taken where a brief does not say how many floors stand above: common
-                              practice, no source */
-  int shear_mil;           /* wood panels on steel as shear: common practice, no source */
-  int heavy_mil; /* heavy fastening: 30 mil at 406 mm or closer: common practice, no source */
-  double heavy_spacing_m;
-  int frt_minutes; /* treated wood in non-bearing walls up to 2 h: IBC 603.1, from memory */
-  double hole_bearing, hole; /* holes in wood studs, share of the depth: IRC R602.6, from memory */
-} rules = {33, 41e-3, 1, 33, 30, 16 * INCH, 120, 0.40, 0.60};
+  int bearing_mil, floors_unsaid, shear_mil, heavy_mil, frt_minutes;
+  double bearing_flange_m, heavy_spacing_m, hole_bearing, hole;
+} rules = {
+    /* load-bearing steel: common practice, no source */
+    .bearing_mil = 33,
+    .bearing_flange_m = 41e-3, /* 1-5/8 in */
+    .floors_unsaid = 1,        /* taken where a brief is silent: common practice, no source */
+    .shear_mil = 33,           /* wood panels on steel: common practice, no source */
+    /* heavy fastening on steel: common practice, no source */
+    .heavy_mil = 30,
+    .heavy_spacing_m = 16 * INCH,
+    .frt_minutes = 120, /* treated wood in non-bearing walls up to 2 h: IBC 603.1, from memory */
+    /* holes in wood studs, share of the depth: IRC R602.6, from memory */
+    .hole_bearing = 0.40,
+    .hole = 0.60,
+};
 
 static const frame *frame_of(const catalog *c, const wall *w) {
   return &c->frames[w->frame];
