@@ -25,7 +25,9 @@ static void judge_sound_of(const judge_context *x, assessment *out) {
   judge_composite(x->brief, p, match, 0, tl_db);
   out->composite = rating_all(tl_db);
   for (int m = 0; m < METRIC_COUNT; m++) out->composite_exact[m] = rating_exact(tl_db, (sound_metric)m);
-  out->composite_ceiling = judge_composite_ceiling(x->brief);
+  double most[METRIC_COUNT];
+  judge_composite_most(x->brief, most);
+  out->composite_ceiling = most[METRIC_STC];
 }
 
 static void judge_short_circuit(arena *a, const judge_context *x, assessment *out) {

@@ -70,12 +70,22 @@ typedef struct judge_sound {
                              be saved by giving up the confidence or by leaving the openings out */
 } judge_sound;
 
+/* Whether a wall passes at the confidence asked and at the bare prediction, with its openings and alone. */
+typedef struct judge_reach {
+  bool with, with_bare, alone, alone_bare;
+} judge_reach;
+
+/* The smallest sets of rules without which the wall would pass: *instead as in judge_sound. */
+void judge_name_reach(const judge_reach *r, rule_mask *broken, rule_mask *instead);
+/* What is promised above `needed`, dB: least of exact - z spread and printed, or the published rating. */
+double judge_margin(double exact, double printed, double spread, bool published, double needed, double z);
+
 /* All targets of the brief. `match` NULL: predicted only. `probability` (BRIEF_MAX_TARGETS values) may be NULL. */
 judge_sound judge_targets(const judge_context *x, const prediction *p, const wall_row *match, double *probability);
 /* The wall's curve moved by `shift_db`, together with the brief's openings; a published wall's curve is the predicted one moved
  * to the published rating. */
 void judge_composite(const brief *b, const prediction *p, const wall_row *match, double shift_db, double tl_db[BANDS]);
-/* The STC of the openings beside a wall that lets nothing through. */
-double judge_composite_ceiling(const brief *b);
+/* The exact ratings (METRIC_COUNT values) of the openings beside a wall that lets nothing through. */
+void judge_composite_most(const brief *b, double *exact);
 
 #endif

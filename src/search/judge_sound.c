@@ -37,9 +37,13 @@ typedef struct standing {
   bool published;
 } standing;
 
+double judge_margin(double exact, double printed, double spread, bool published, double needed, double z) {
+  if (published) return printed - needed;
+  return fmin(exact - z * spread, printed) - needed;
+}
+
 static double margin_at(const standing *s, double needed, double confidence) {
-  if (s->published) return s->printed - needed;
-  return fmin(s->exact - judge_z(confidence) * s->sd, s->printed) - needed;
+  return judge_margin(s->exact, s->printed, s->sd, s->published, needed, judge_z(confidence));
 }
 
 bool judge_passes(const target *t, double field_mean, double field_sd, double exact, int printed, double sd, bool published,
@@ -81,11 +85,11 @@ void judge_composite(const brief *b, const prediction *p, const wall_row *match,
   with_openings(b, moved, tl_db);
 }
 
-double judge_composite_ceiling(const brief *b) {
+void judge_composite_most(const brief *b, double *exact) {
   double wall_db[BANDS], tl_db[BANDS];
   for (int i = 0; i < BANDS; i++) wall_db[i] = silent_db;
   with_openings(b, wall_db, tl_db);
-  return rating_exact(tl_db, METRIC_STC);
+  for (int m = 0; m < METRIC_COUNT; m++) exact[m] = rating_exact(tl_db, (sound_metric)m);
 }
 
 /* ---- targets ---- */
@@ -125,14 +129,9 @@ static double composite_probability(const brief *b, const target *t, const predi
   return phi(-high / s->sd);
 }
 
-/* Whether a wall passes at the confidence asked and at the bare prediction, with its openings and alone. */
-typedef struct passes {
-  bool with, with_bare, alone, alone_bare;
-} passes;
-
 /* Adds what one target says; returns the margin that is promised for it. */
 static int judge_target(const brief *b, const target *t, const prediction *p, const wall_row *match, const standing *s,
-                        passes *all) {
+                        judge_reach *all) {
   double needed = judge_needed(t, b->field_mean);
   int promised = rules_promised(margin_at(s, needed, t->confidence));
   bool alone = promised >= 0;
@@ -153,23 +152,23 @@ static int judge_target(const brief *b, const target *t, const prediction *p, co
 }
 
 static double probability_of(const brief *b, const target *t, const prediction *p, const wall_row *match, const standing *s) {
-  passes one = {true, true, true, true};
+  judge_reach one = {true, true, true, true};
   if (s->published && judge_target(b, t, p, match, s, &one) >= 0 && one.with) return 1;
   if (t->composite && b->opening_count > 0) return composite_probability(b, t, p, match, s);
   return phi((s->exact - judge_needed(t, b->field_mean)) / s->sd);
 }
 
-/* The smallest sets of rules without which the wall would pass. */
-static void name_broken(const passes *all, judge_sound *out) {
+void judge_name_reach(const judge_reach *r, rule_mask *broken, rule_mask *instead) {
   const rule_mask confidence = rule_bit(RULE_CONFIDENCE), composite = rule_bit(RULE_COMPOSITE);
-  if (all->with) return;
-  if (all->alone) {
-    out->broken |= composite;
-    if (all->with_bare) out->instead = confidence;
-  } else if (all->with_bare) {
-    out->broken |= confidence;
+  *broken = *instead = 0;
+  if (r->with) return;
+  if (r->alone) {
+    *broken = composite;
+    if (r->with_bare) *instead = confidence;
+  } else if (r->with_bare) {
+    *broken = confidence;
   } else {
-    out->broken |= all->alone_bare ? confidence | composite : rule_bit(RULE_TARGET);
+    *broken = r->alone_bare ? confidence | composite : rule_bit(RULE_TARGET);
   }
 }
 
@@ -177,7 +176,7 @@ judge_sound judge_targets(const judge_context *x, const prediction *p, const wal
   const brief *b = x->brief;
   judge_sound out = {0, 0, 0};
   rule_mask unpublished = 0;
-  passes all = {true, true, true, true};
+  judge_reach all = {true, true, true, true};
   for (int i = 0; i < b->target_count; i++) {
     const target *t = &b->targets[i];
     standing s = standing_of(b, t, p, match);
@@ -186,7 +185,7 @@ judge_sound judge_targets(const judge_context *x, const prediction *p, const wal
     if (t->evidence == EVIDENCE_PUBLISHED && !s.published) unpublished = rule_bit(RULE_EVIDENCE);
     if (probability) probability[i] = probability_of(b, t, p, match, &s);
   }
-  name_broken(&all, &out);
+  judge_name_reach(&all, &out.broken, &out.instead);
   if (out.instead) out.instead |= unpublished;
   out.broken |= unpublished;
   return out;

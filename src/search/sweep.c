@@ -1,0 +1,230 @@
+#include "search/sweep.h"
+
+#include <stdlib.h>
+
+#include "acoustics/kernel.h"
+#include "acoustics/predict.h"
+#include "search/front.h"
+#include "search/sound.h"
+#include "search/tables.h"
+#include "wall/line.h"
+
+typedef struct sweep {
+  arena *arena;
+  const space *space;
+  tables *tables;
+  kernel_core *kernel;
+  kernel_leaves *leaves;
+  sound_aims aims;
+  core_facts core;
+  double *exact;         /* METRIC_COUNT x face_count: ratings of one leaf on A with all leaves on B */
+  front front;
+  masks masks;
+  sweep_result *out;
+} sweep;
+
+/* ---- the reference ---- */
+
+/* Replaces what the kernel said of a wall's sound by what the reference says. */
+static void rate_exactly(sweep *s, candidate *c, rule_mask other_rules) {
+  const judge_context *x = s->space->context;
+  wall w = space_wall(s->space, c->core, c->face_a, c->face_b);
+  prediction p;
+  predict_wall(x->catalog, &w, &p);
+  judge_sound v = judge_targets(x, &p, evidence_match(x->catalog, &w), NULL);
+  c->is.promised_hundredth = v.promised_hundredth;
+  c->broken = other_rules | v.broken;
+  c->instead = v.instead ? other_rules | v.instead : 0;
+  s->out->rated++;
+}
+
+static const rule_mask sound_rules = UINT64_C(1) << RULE_TARGET | UINT64_C(1) << RULE_CONFIDENCE |
+                                     UINT64_C(1) << RULE_EVIDENCE | UINT64_C(1) << RULE_COMPOSITE;
+
+/* ---- what is kept ---- */
+
+static bool runners_want(const sweep *s, const candidate *c) {
+  const sweep_result *r = s->out;
+  return r->runner_count < SWEEP_RUNNERS || candidate_compare(s->space, c, &r->runners[SWEEP_RUNNERS - 1]) < 0;
+}
+
+static void runners_keep(sweep *s, const candidate *c) {
+  sweep_result *r = s->out;
+  if (c->broken || !runners_want(s, c)) return;
+  int at = r->runner_count < SWEEP_RUNNERS ? r->runner_count++ : SWEEP_RUNNERS - 1;
+  for (; at > 0 && candidate_compare(s->space, c, &r->runners[at - 1]) < 0; at--) r->runners[at] = r->runners[at - 1];
+  r->runners[at] = *c;
+}
+
+/* Whether a wall may change anything that is kept, whatever its sound turns out to be. */
+static bool wanted(sweep *s, const front_member *m, const sound_bounds *b) {
+  rule_mask set[SOUND_MAX_OUTCOMES];
+  int n = sound_outcomes(b, set);
+  for (int i = 0; i < n; i++) {
+    rule_mask broken = m->wall.broken | set[i];
+    if (masks_wants(&s->masks, broken, &m->wall)) return true;
+    if (broken == 0 && runners_want(s, &m->wall)) return true;
+  }
+  front_member best = *m;
+  rule_mask instead;
+  judge_name_reach(&b->most, &best.wall.broken, &instead);
+  best.wall.broken |= m->wall.broken | b->evidence;
+  best.wall.instead = instead ? instead | m->wall.broken | b->evidence : 0;
+  return !front_beats(&s->front, &best);
+}
+
+static void keep(sweep *s, const front_member *m) {
+  masks_offer(&s->masks, m->wall.broken, &m->wall);
+  if (m->wall.instead) masks_offer(&s->masks, m->wall.instead, &m->wall);
+  runners_keep(s, &m->wall);
+  if (!front_beats(&s->front, m)) front_add(&s->front, m);
+}
+
+/* ---- one wall, one row of walls, one core ---- */
+
+static void sweep_wall(sweep *s, int face_a, int face_b, const double *exact) {
+  const judge_context *x = s->space->context;
+  front_member m;
+  s->out->walls++;
+  if (!tables_wall(s->tables, &s->core, face_a, face_b, &m.wall)) {
+    wall w = space_wall(s->space, s->core.core, face_a, face_b);
+    if (!s->out->unpriced) s->out->unpriced = line_print(s->arena, x->catalog, &w);
+    return;
+  }
+  double sd[METRIC_COUNT] = {0};
+  const wall_row *match = NULL;
+  if (s->aims.count > 0) {
+    wall w = space_wall(s->space, s->core.core, face_a, face_b);
+    (void)predict_sd(x->catalog, &w, sd, NULL);
+    match = evidence_pair(x->catalog, &s->core.published, tables_face(s->tables, face_a)->published,
+                          tables_face(s->tables, face_b)->published);
+  }
+  sound_bounds b;
+  sound_bound(&s->aims, exact, sd, match, &b);
+  m.wall.is.promised_hundredth = b.promised_least;
+  m.promised_most = b.promised_most;
+  m.exact = false;
+  if (!wanted(s, &m, &b)) return;
+  rule_mask others = m.wall.broken;
+  if (b.certain) {
+    judge_name_reach(&b.most, &m.wall.broken, &m.wall.instead);
+    m.wall.broken |= others | b.evidence;
+    if (m.wall.instead) m.wall.instead |= others | b.evidence;
+  } else {
+    rate_exactly(s, &m.wall, others);
+    m.promised_most = m.wall.is.promised_hundredth;
+    m.exact = true;
+  }
+  keep(s, &m);
+}
+
+/* Rates one leaf on A with the leaves first..last on B, in every metric asked for: exact[metric] at the leaf's own place. */
+static void rate_row(sweep *s, int face_a, int first, int last) {
+  size_t faces = (size_t)s->space->face_count;
+  for (int i = 0; i < s->aims.metrics; i++) {
+    sound_metric m = s->aims.metric[i];
+    kernel_rate(s->kernel, s->leaves, face_a, first, last - first + 1, m, s->exact + (size_t)m * faces + first);
+  }
+}
+
+static void sweep_row(sweep *s, int face_a) {
+  int core = s->core.core, faces = s->space->face_count, first = faces, last = -1;
+  for (int j = 0; j < faces; j++) {
+    if (!space_legal(s->space, core, face_a, j)) continue;
+    if (first == faces) first = j;
+    last = j;
+  }
+  if (last < 0) return;
+  rate_row(s, face_a, first, last);
+  for (int j = first; j <= last; j++) {
+    if (!space_legal(s->space, core, face_a, j)) continue;
+    double exact[METRIC_COUNT];
+    for (int m = 0; m < METRIC_COUNT; m++) exact[m] = s->exact[(size_t)m * (size_t)faces + (size_t)j];
+    sweep_wall(s, face_a, j, exact);
+  }
+}
+
+/* Cheap cores first: what they leave refuses most of the rest at once. */
+typedef struct ordered_core {
+  long long cents;
+  int core;
+} ordered_core;
+
+static int compare_cores(const void *x, const void *y) {
+  const ordered_core *p = x, *q = y;
+  if (p->cents != q->cents) return p->cents < q->cents ? -1 : 1;
+  return (p->core > q->core) - (p->core < q->core);
+}
+
+static void sweep_cores(sweep *s) {
+  const judge_context *x = s->space->context;
+  int n = s->space->core_count;
+  ordered_core *order = arena_array(s->arena, (size_t)n, sizeof *order);
+  for (int k = 0; k < n; k++) {
+    cost_parts p = cost_core(x->prices, x->catalog, x->brief, &s->space->cores[k]);
+    order[k] = (ordered_core){p.material_cents + p.labour_cents, k};
+  }
+  qsort(order, (size_t)n, sizeof *order, compare_cores);
+  for (int k = 0; k < n; k++) {
+    tables_core(s->tables, order[k].core, &s->core);
+    if (s->aims.count > 0) kernel_core_set(s->kernel, &s->space->cores[order[k].core]);
+    for (int i = 0; i < s->space->face_count; i++) sweep_row(s, i);
+  }
+}
+
+/* ---- the whole ---- */
+
+/* The walls of the front as the reference rates them, again without those that another beats. */
+static void finish_front(sweep *s) {
+  const space *space_of = s->space;
+  front kept = s->front;
+  front_init(&s->front, s->arena, space_of);
+  for (int i = 0; i < kept.count; i++) {
+    front_member m = kept.item[i];
+    if (!m.exact) rate_exactly(s, &m.wall, m.wall.broken & ~sound_rules);
+    m.promised_most = m.wall.is.promised_hundredth;
+    m.exact = true;
+    if (!front_beats(&s->front, &m)) front_add(&s->front, &m);
+  }
+  sweep_result *r = s->out;
+  r->frontier_count = s->front.count;
+  r->frontier = arena_array(s->arena, (size_t)s->front.count, sizeof *r->frontier);
+  for (int i = 0; i < s->front.count; i++) { /* in tie order, by insertion */
+    int at = i;
+    for (; at > 0 && candidate_compare(space_of, &s->front.item[i].wall, &r->frontier[at - 1]) < 0; at--)
+      r->frontier[at] = r->frontier[at - 1];
+    r->frontier[at] = s->front.item[i].wall;
+  }
+}
+
+static int compare_masks(const void *x, const void *y) {
+  const mask_best *p = x, *q = y;
+  return (p->broken > q->broken) - (p->broken < q->broken);
+}
+
+static void finish_masks(sweep *s) {
+  sweep_result *r = s->out;
+  r->mask_count = s->masks.count;
+  r->masks = s->masks.item;
+  if (r->mask_count > 0) qsort(r->masks, (size_t)r->mask_count, sizeof *r->masks, compare_masks);
+  for (int i = 0; i < r->mask_count; i++)
+    rate_exactly(s, &r->masks[i].best, r->masks[i].best.broken & ~sound_rules);
+  for (int i = 0; i < r->runner_count; i++) rate_exactly(s, &r->runners[i], 0);
+}
+
+void sweep_run(arena *a, const space *sp, sweep_result *out) {
+  const judge_context *x = sp->context;
+  *out = (sweep_result){0};
+  sweep s = {.arena = a, .space = sp, .out = out};
+  if (sp->core_count == 0 || sp->face_count == 0) return;
+  s.tables = tables_create(a, sp);
+  sound_aims_set(x->brief, &s.aims);
+  s.kernel = kernel_core_create(a, x->catalog);
+  s.leaves = kernel_leaves_create(a, x->catalog, sp->faces, sp->face_count);
+  s.exact = arena_array(a, (size_t)METRIC_COUNT * (size_t)sp->face_count, sizeof *s.exact);
+  front_init(&s.front, a, sp);
+  masks_init(&s.masks, a, sp);
+  sweep_cores(&s);
+  finish_front(&s);
+  finish_masks(&s);
+}
