@@ -205,8 +205,7 @@ static void read_limits(reader *r, const json_value *v, brief *out) {
                &out->cost_per_m2);
 }
 
-/* --- wall, building, structure, sides, services
- * ---------------------------------------------------------------------- */
+/* ---- wall, building, structure, sides, services ---- */
 
 #define AT(member) offsetof(brief, member)
 static void read_wall(reader *r, const json_value *v, brief *out) {
@@ -410,8 +409,7 @@ static void read_openings(reader *r, const json_value *v, brief *out) {
                               text_of(r->arena, out->length_m * out->height_m, 2)));
 }
 
-/* --- patterns and paths
- * ---------------------------------------------------------------------------------------------- */
+/* ---- patterns and paths ---- */
 
 /* Whether `pattern`, less its prefix, matches an id of the kinds that the prefix names. */
 static bool matches_any(const catalog *c, const char *kind, const char *pattern) {

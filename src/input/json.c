@@ -10,8 +10,7 @@
 
 enum { PATH_MAX_BYTES = 1000 };
 
-/* --- pairing the scanner's tree with cJSON's
- * ------------------------------------------------------------------------- */
+/* ---- pairing the scanner's tree with cJSON's ---- */
 
 static const char *pool_copy(char **pool, const char *s) {
   size_t n = strlen(s) + 1;
@@ -68,8 +67,7 @@ static bool read_values(arena *a, diag_list *d, json_value *root, const char *by
   return agreed;
 }
 
-/* --- checks on the tree
- * ---------------------------------------------------------------------------------------------- */
+/* ---- checks on the tree ---- */
 
 static int by_key(const void *x, const void *y) {
   const json_value *const *a = x, *const *b = y;
