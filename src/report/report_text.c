@@ -84,14 +84,18 @@ static bool breaks_sound(const assessment *x) {
 }
 
 static void put_targets(const report *r, const assessment *x, text *out) {
-  for (int i = 0; i < r->brief->target_count; i++) {
+  int count = r->brief->target_count;
+  const char *verdict = breaks_sound(x) ? " Not reached." : " Reached.";
+  for (int i = 0; i < count; i++) {
     const target *t = &r->brief->targets[i];
     const char *found = view_published(x, t->metric)
                             ? text_format(r->arena, "published STC %d", x->ratings.stc)
                             : text_format(r->arena, "%s %% sure", sureness(r, x->probability[i]));
-    page_line(out, "", text_format(r->arena, "Target %s: %s.", view_target(r, t), found));
+    page_line(out, "",
+              text_format(r->arena, "Target %s: %s.%s", view_target(r, t), found,
+                          count == 1 ? verdict : ""));
   }
-  if (r->brief->target_count > 0) page_line(out, "", breaks_sound(x) ? "Not reached." : "Reached.");
+  if (count > 1) page_line(out, "", breaks_sound(x) ? "Not all reached." : "All reached.");
 }
 
 static void put_near(const report *r, const evidence_near *n, text *out) {
@@ -133,16 +137,18 @@ static void put_sound(const report *r, const assessment *x, text *out) {
 /* --- other checks ---------------------------------------------------------------------------- */
 
 static void put_fire(const report *r, const assessment *x, text *out) {
+  bool code = r->brief->code != CODE_NONE;
+  const char *under = code ? text_format(r->arena, " under code %s", view_code(r)) : "";
   const char *asked =
       r->brief->fire_min > 0 ? text_format(r->arena, "; asked %d min", r->brief->fire_min) : "";
   const char *words;
   if (x->fire.minutes > 0)
-    words = text_format(r->arena, "%d min under code %s%s: %s. Source: %s.", x->fire.minutes,
-                        view_code(r), asked, x->fire.basis, x->fire.source);
+    words = text_format(r->arena, "%d min%s%s: %s. Source: %s.", x->fire.minutes, under, asked,
+                        x->fire.basis, x->fire.source);
   else
-    words = text_format(r->arena,
-                        "not shown under code %s%s: no rule, row or listing covers this wall.",
-                        view_code(r), asked);
+    words = text_format(r->arena, "not shown%s%s: %s.", under, asked,
+                        code ? "no rule, row or listing covers this wall"
+                             : "no code is named, and no listing covers this wall");
   page_line(out, "Fire", words);
 }
 
@@ -153,7 +159,7 @@ static void put_height(const report *r, const assessment *x, text *out) {
   units_put_height(&t, x->height.limit_m, r->units);
   text_put(&t, r->asked ? "; asked " : "; reference wall ");
   units_put_height(&t, r->brief->height_m, r->units);
-  text_putf(&t, ". %s (%s governs).", x->height.basis, x->height.governs);
+  text_putf(&t, ". Basis: %s (%s governs).", x->height.basis, x->height.governs);
   page_line(out, "Height", t.data);
 }
 
@@ -172,8 +178,9 @@ static void put_rules(const report *r, const assessment *x, text *out) {
   for (int i = 0; i < x->broken_count; i++) {
     const broken_rule *b = &x->broke[i];
     page_line(out, r->asked || i > 0 ? "" : "Rules",
-              text_format(r->arena, "Broken: %s: asks %s, has %s.",
-                          rule_name(r->arena, r->brief, b->rule), b->limit, b->found));
+              text_format(r->arena, "Broken: %s: asks %s; has: %s.",
+                          rule_name(r->arena, r->brief, b->rule), b->limit,
+                          view_clause(r, b->found)));
   }
 }
 
@@ -217,7 +224,7 @@ static void put_cost(const report *r, const assessment *x, text *out) {
               text_format(r->arena, "Value of the floor under it: %s, apart from the cost.",
                           view_money(r, (double)x->cost.floor_value_cents / 100.0, NULL)));
   page_line(out, "",
-            text_format(r->arena, "Prices: %s, %s, %s. %s", r->prices->name, r->prices->place,
+            text_format(r->arena, "Price book: %s; %s; %s; %s.", r->prices->name, r->prices->place,
                         r->prices->date, r->prices->source));
 }
 

@@ -42,8 +42,9 @@ static void put_fails(const report *r, const assessment *x, text *out) {
     const broken_rule *b = &x->broke[i];
     text_pad(out, FAIL_INDENT);
     page_words(out, FAIL_INDENT + 2,
-               text_format(r->arena, "fails %s: asks %s, has %s",
-                           rule_name(r->arena, r->brief, b->rule), b->limit, b->found));
+               text_format(r->arena, "fails %s: asks %s; has: %s",
+                           rule_name(r->arena, r->brief, b->rule), b->limit,
+                           view_clause(r, b->found)));
   }
 }
 

@@ -43,8 +43,10 @@ static void add_mount(const report *r, view_parts *out, const wall *w, int side)
 static void add_row(const report *r, view_parts *out, const wall *w, int row) {
   const frame *f = &r->catalog->frames[w->frame];
   const char *where = f->rows == 1 ? "frame" : row == 0 ? "row A" : "row B";
+  int single = f->rows == 1 ? CATALOG_NONE : catalog_frame(r->catalog, f->stud);
+  const char *name = single == CATALOG_NONE ? f->name : r->catalog->frames[single].name;
   add_part(out, where,
-           text_format(r->arena, "%s at %s on centre", f->name, spacing_words(r, w->spacing_mm)),
+           text_format(r->arena, "%s at %s on centre", name, spacing_words(r, w->spacing_mm)),
            f->row_depth_m);
   int filled = w->fill[row];
   add_part(out, "fill",
@@ -199,6 +201,23 @@ const char *view_status(const explanation *e) {
   return "limit";
 }
 
+const char *view_clause(const report *r, const char *sentence) {
+  size_t n = strlen(sentence);
+  return n > 0 && sentence[n - 1] == '.' ? text_copyn(r->arena, sentence, n - 1) : sentence;
+}
+
+/* With a capital letter and a full stop. */
+static const char *as_sentence(const report *r, const char *words) {
+  if (words[0] == '\0') return words;
+  text t;
+  text_init(&t, r->arena, 4000);
+  bool small = words[0] >= 'a' && words[0] <= 'z';
+  text_char(&t, small ? (char)(words[0] - 'a' + 'A') : words[0]);
+  text_put(&t, view_clause(r, words + 1));
+  text_char(&t, '.');
+  return t.data;
+}
+
 static void add_caution(const char **caution, int *count, const char *words) {
   for (int i = 0; i < *count; i++)
     if (strcmp(caution[i], words) == 0) return;
@@ -209,7 +228,8 @@ int view_cautions(const report *r, const assessment *x, const char *caution[VIEW
   /* From these ratings on, what surrounds a wall decides (common practice, no source). */
   enum { CARE_FROM = 50, FLANKING_FROM = 60 };
   int count = 0;
-  for (int i = 0; i < x->caution_count; i++) add_caution(caution, &count, x->caution[i]);
+  for (int i = 0; i < x->caution_count; i++)
+    add_caution(caution, &count, as_sentence(r, x->caution[i]));
   int best = x->ratings.stc;
   for (int i = 0; i < r->brief->target_count; i++)
     if (r->brief->targets[i].value > best) best = (int)r->brief->targets[i].value;

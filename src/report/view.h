@@ -54,7 +54,10 @@ bool view_published(const assessment *x, sound_metric metric);
 const char *view_status(const explanation *e);
 /* "ibc" */
 const char *view_code(const report *r);
-/* The standing cautions of every answer, then those of the wall. At most `max`; returns how many.
+/* A sentence as the end of another: without its full stop. */
+const char *view_clause(const report *r, const char *sentence);
+/* The cautions of the wall, then the standing ones of every answer, as sentences. At most `max`;
+ * returns how many.
  */
 enum { VIEW_MAX_CAUTIONS = JUDGE_MAX_CAUTIONS + 8 };
 int view_cautions(const report *r, const assessment *x, const char *caution[VIEW_MAX_CAUTIONS]);
