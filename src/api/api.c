@@ -123,8 +123,8 @@ static status pick_stage(call *k, void *given) {
   explain_pick(k->memory, s, swept, &choice, why);
   text words, json, csv;
   start_texts(k, &words, &json, &csv);
-  report_pick_text(&prepared->report, why, &words);
-  report_pick_json(&prepared->report, why, &json);
+  report_pick_text(&prepared->report, why, &choice, &words);
+  report_pick_json(&prepared->report, why, &choice, &json);
   report_takeoff_csv(&prepared->report, why->chosen, &csv);
   return hand_out(k, job, &words, &json, &csv, why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
 }

@@ -18,8 +18,8 @@ typedef struct report {
 void report_rate_text(const report *r, const assessment *x, text *out);
 void report_rate_json(const report *r, const assessment *x, text *out);
 
-void report_pick_text(const report *r, const explanation *e, text *out);
-void report_pick_json(const report *r, const explanation *e, text *out);
+void report_pick_text(const report *r, const explanation *e, const pick_choice *proof, text *out);
+void report_pick_json(const report *r, const explanation *e, const pick_choice *proof, text *out);
 /* The takeoff of a wall, one line a line (RFC 4180), with a header. NULL: the header alone. */
 void report_takeoff_csv(const report *r, const assessment *x, text *out);
 

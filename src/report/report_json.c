@@ -391,7 +391,7 @@ static void put_break_even(markup_json *j, const explanation *e) {
   markup_json_close(j);
 }
 
-void report_pick_json(const report *r, const explanation *e, text *out) {
+void report_pick_json(const report *r, const explanation *e, const pick_choice *proof, text *out) {
   markup_json j;
   markup_json_init(&j, out);
   markup_json_object(&j, NULL, false);
@@ -399,6 +399,8 @@ void report_pick_json(const report *r, const explanation *e, text *out) {
   markup_json_string(&j, "version", SEPTUM_VERSION);
   markup_json_string(&j, "title", r->brief->title);
   markup_json_string(&j, "status", view_status(e));
+  markup_json_number(&j, "objective", proof->found ? proof->objective : NAN, CENT_DIGITS);
+  markup_json_number(&j, "bound", proof->found ? proof->bound : NAN, CENT_DIGITS);
   markup_json_integer(&j, "walls", e->walls);
   markup_json_integer(&j, "candidates", e->frontier);
   put_mask(&j, r, "rules", rules_in_force(r->brief));

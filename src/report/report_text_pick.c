@@ -131,12 +131,15 @@ static void put_break_even(const report *r, const explanation *e, text *out) {
 
 /* --- together -------------------------------------------------------------------------------- */
 
-static void put_counts(const report *r, const explanation *e, text *out) {
+static void put_counts(const report *r, const explanation *e, const pick_choice *proof, text *out) {
   text t;
   text_init(&t, r->arena, 400);
   text_putf(&t, "%lld walls judged, %d of them put to the solver", e->walls, e->frontier);
   if (e->status == SOLVER_OPTIMAL)
     text_put(&t, "; proven cheapest.");
+  else if (proof->found)
+    text_putf(&t, "; it costs %s, no wall less than %s.", view_money(r, proof->objective, NULL),
+              view_money(r, proof->bound, NULL));
   else
     text_put(&t, ".");
   page_line(out, "", t.data);
@@ -157,14 +160,14 @@ static void put_infeasible(const report *r, const explanation *e, text *out) {
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }
 
-void report_pick_text(const report *r, const explanation *e, text *out) {
+void report_pick_text(const report *r, const explanation *e, const pick_choice *proof, text *out) {
   if (r->brief->title[0] != '\0') page_line(out, "Brief", r->brief->title);
   if (e->chosen == NULL) {
     page_line(out, "Answer",
               e->status == SOLVER_INFEASIBLE
                   ? "No wall fits this brief."
                   : "No wall found within the time limit; one may exist.");
-    put_counts(r, e, out);
+    put_counts(r, e, proof, out);
     put_infeasible(r, e, out);
     return;
   }
@@ -172,7 +175,7 @@ void report_pick_text(const report *r, const explanation *e, text *out) {
             e->status == SOLVER_OPTIMAL
                 ? "The cheapest wall that keeps every rule of the brief."
                 : "The cheapest wall found within the time limit; a cheaper one may exist.");
-  put_counts(r, e, out);
+  put_counts(r, e, proof, out);
   put_decides(r, e, out);
   report_wall_text(r, e->chosen, out);
   text_char(out, '\n');
