@@ -15,10 +15,11 @@ static const struct {
   double board_m, load_pa, deflection, widest_m, tile_deflection;
 } height_rules = {
     /* the composite table: 5/8 in board on both flanges, 5 psf, L/240, spacings up to 24 in */
-    .board_m = 15.9e-3,                            /* the boards of its specimens */
-    .load_pa = 240,                                /* 239.4, rounded as briefs round it */
-    .deflection = 240,                             /* L/240 */
-    .widest_m = 24 * INCH, .tile_deflection = 360, /* ANSI A108.11, from memory */
+    .board_m = 15.9e-3,     /* the boards of its specimens */
+    .load_pa = 240,         /* 239.4, rounded as briefs round it */
+    .deflection = 240,      /* L/240 */
+    .widest_m = 24 * INCH,  /* its widest spacing */
+    .tile_deflection = 360, /* ANSI A108.11, from memory */
 };
 
 static const char composite_source[] = "a maker's composite limiting heights: 25 gauge studs, one "
