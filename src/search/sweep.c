@@ -20,6 +20,7 @@ typedef struct sweep {
   double *exact;         /* METRIC_COUNT x face_count: ratings of one leaf on A with all leaves on B */
   front front;
   masks masks;
+  struct masks kinds;    /* cheapest wall that breaks nothing, by kind_of */
   sweep_result *out;
 } sweep;
 
@@ -43,17 +44,14 @@ static const rule_mask sound_rules = UINT64_C(1) << RULE_TARGET | UINT64_C(1) <<
 
 /* ---- what is kept ---- */
 
-static bool runners_want(const sweep *s, const candidate *c) {
-  const sweep_result *r = s->out;
-  return r->runner_count < SWEEP_RUNNERS || candidate_compare(s->space, c, &r->runners[SWEEP_RUNNERS - 1]) < 0;
-}
-
-static void runners_keep(sweep *s, const candidate *c) {
-  sweep_result *r = s->out;
-  if (c->broken || !runners_want(s, c)) return;
-  int at = r->runner_count < SWEEP_RUNNERS ? r->runner_count++ : SWEEP_RUNNERS - 1;
-  for (; at > 0 && candidate_compare(s->space, c, &r->runners[at - 1]) < 0; at--) r->runners[at] = r->runners[at - 1];
-  r->runners[at] = *c;
+/* Walls of one kind differ in small things: spacing, fill, boards of other sorts. */
+static uint64_t kind_of(const sweep *s, const candidate *c) {
+  const catalog *cat = s->space->context->catalog;
+  const wall *core = &s->space->cores[c->core];
+  uint64_t a = (uint64_t)face_boards(cat, &s->space->faces[c->face_a]);
+  uint64_t b = (uint64_t)face_boards(cat, &s->space->faces[c->face_b]);
+  uint64_t mount_a = (uint64_t)(core->mount[SIDE_A].mount + 1), mount_b = (uint64_t)(core->mount[SIDE_B].mount + 1);
+  return (uint64_t)core->frame << 32 | mount_a << 20 | mount_b << 8 | (a < b ? a << 4 | b : b << 4 | a);
 }
 
 /* Whether a wall may change anything that is kept, whatever its sound turns out to be. */
@@ -63,7 +61,7 @@ static bool wanted(sweep *s, const front_member *m, const sound_bounds *b) {
   for (int i = 0; i < n; i++) {
     rule_mask broken = m->wall.broken | set[i];
     if (masks_wants(&s->masks, broken, &m->wall)) return true;
-    if (broken == 0 && runners_want(s, &m->wall)) return true;
+    if (broken == 0 && masks_wants(&s->kinds, kind_of(s, &m->wall), &m->wall)) return true;
   }
   front_member best = *m;
   rule_mask instead;
@@ -76,7 +74,7 @@ static bool wanted(sweep *s, const front_member *m, const sound_bounds *b) {
 static void keep(sweep *s, const front_member *m) {
   masks_offer(&s->masks, m->wall.broken, &m->wall);
   if (m->wall.instead) masks_offer(&s->masks, m->wall.instead, &m->wall);
-  runners_keep(s, &m->wall);
+  if (m->wall.broken == 0) masks_offer(&s->kinds, kind_of(s, &m->wall), &m->wall);
   if (!front_beats(&s->front, m)) front_add(&s->front, m);
 }
 
@@ -144,30 +142,11 @@ static void sweep_row(sweep *s, int face_a) {
   }
 }
 
-/* Cheap cores first: what they leave refuses most of the rest at once. */
-typedef struct ordered_core {
-  long long cents;
-  int core;
-} ordered_core;
-
-static int compare_cores(const void *x, const void *y) {
-  const ordered_core *p = x, *q = y;
-  if (p->cents != q->cents) return p->cents < q->cents ? -1 : 1;
-  return (p->core > q->core) - (p->core < q->core);
-}
-
 static void sweep_cores(sweep *s) {
-  const judge_context *x = s->space->context;
-  int n = s->space->core_count;
-  ordered_core *order = arena_array(s->arena, (size_t)n, sizeof *order);
-  for (int k = 0; k < n; k++) {
-    cost_parts p = cost_core(x->prices, x->catalog, x->brief, &s->space->cores[k]);
-    order[k] = (ordered_core){p.material_cents + p.labour_cents, k};
-  }
-  qsort(order, (size_t)n, sizeof *order, compare_cores);
-  for (int k = 0; k < n; k++) {
-    tables_core(s->tables, order[k].core, &s->core);
-    if (s->aims.count > 0) kernel_core_set(s->kernel, &s->space->cores[order[k].core]);
+  const int *order = tables_cores_by_cost(s->arena, s->space);
+  for (int k = 0; k < s->space->core_count; k++) {
+    tables_core(s->tables, order[k], &s->core);
+    if (s->aims.count > 0) kernel_core_set(s->kernel, &s->space->cores[order[k]]);
     for (int i = 0; i < s->space->face_count; i++) sweep_row(s, i);
   }
 }
@@ -209,6 +188,17 @@ static void finish_masks(sweep *s) {
   if (r->mask_count > 0) qsort(r->masks, (size_t)r->mask_count, sizeof *r->masks, compare_masks);
   for (int i = 0; i < r->mask_count; i++)
     rate_exactly(s, &r->masks[i].best, r->masks[i].best.broken & ~sound_rules);
+}
+
+static void finish_runners(sweep *s) {
+  sweep_result *r = s->out;
+  for (int i = 0; i < s->kinds.count; i++) {
+    const candidate *c = &s->kinds.item[i].best;
+    int at = r->runner_count < SWEEP_RUNNERS ? r->runner_count++ : SWEEP_RUNNERS;
+    for (; at > 0 && candidate_compare(s->space, c, &r->runners[at - 1]) < 0; at--)
+      if (at < SWEEP_RUNNERS) r->runners[at] = r->runners[at - 1];
+    if (at < SWEEP_RUNNERS) r->runners[at] = *c;
+  }
   for (int i = 0; i < r->runner_count; i++) rate_exactly(s, &r->runners[i], 0);
 }
 
@@ -224,7 +214,9 @@ void sweep_run(arena *a, const space *sp, sweep_result *out) {
   s.exact = arena_array(a, (size_t)METRIC_COUNT * (size_t)sp->face_count, sizeof *s.exact);
   front_init(&s.front, a, sp);
   masks_init(&s.masks, a, sp);
+  masks_init(&s.kinds, a, sp);
   sweep_cores(&s);
   finish_front(&s);
   finish_masks(&s);
+  finish_runners(&s);
 }

@@ -15,7 +15,8 @@ typedef struct sweep_result {
   candidate *frontier; int frontier_count; /* in tie order; what no other wall beats in any number that a rule in force reads, in
                                               broken rules, and in cost and ties */
   mask_best *masks; int mask_count;        /* cheapest wall per set of broken rules, by set */
-  candidate runners[SWEEP_RUNNERS]; int runner_count; /* cheapest walls that break nothing, in tie order */
+  candidate runners[SWEEP_RUNNERS]; int runner_count; /* of the walls that break nothing the cheapest of each kind (frame,
+                                                         number of boards, mounts), in tie order */
   const char *unpriced;      /* the line of some wall left out because an item of it has no price; NULL when there is none */
 } sweep_result;
 

@@ -1,5 +1,7 @@
 #include "search/tables.h"
 
+#include <stdlib.h>
+
 #include "search/judge_words.h"
 
 enum {
@@ -217,4 +219,31 @@ bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candida
   if (t->fire_asked) out->is.fire_min = fire_pair(t->context->catalog, &k->fire, &a->fire, &b->fire, NULL);
   out->broken = k->broken | a->broken[SIDE_A] | b->broken[SIDE_B] | rules_broken_by(&t->limits, &out->is);
   return !k->cost.missing && !leaves.missing;
+}
+
+/* ---- order ---- */
+
+typedef struct ordered_core {
+  long long cents;
+  int core;
+} ordered_core;
+
+static int compare_cores(const void *x, const void *y) {
+  const ordered_core *p = x, *q = y;
+  if (p->cents != q->cents) return p->cents < q->cents ? -1 : 1;
+  return (p->core > q->core) - (p->core < q->core);
+}
+
+const int *tables_cores_by_cost(arena *a, const space *s) {
+  const judge_context *x = s->context;
+  size_t n = (size_t)s->core_count;
+  ordered_core *order = arena_array(a, n, sizeof *order);
+  int *index = arena_array(a, n, sizeof *index);
+  for (size_t k = 0; k < n; k++) {
+    cost_parts p = cost_core(x->prices, x->catalog, x->brief, &s->cores[k]);
+    order[k] = (ordered_core){p.material_cents + p.labour_cents, (int)k};
+  }
+  if (n > 0) qsort(order, n, sizeof *order, compare_cores);
+  for (size_t k = 0; k < n; k++) index[k] = order[k].core;
+  return index;
 }

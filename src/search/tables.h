@@ -33,5 +33,7 @@ const face_facts *tables_face(const tables *t, int index);
 void tables_core(tables *t, int core, core_facts *out);
 /* The numbers and rules of a wall but its sound. False when an item has no price: then its cost is not known. */
 bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candidate *out);
+/* The cores of a space, cheapest first: what they leave refuses most of the rest at once. */
+const int *tables_cores_by_cost(arena *a, const space *s);
 
 #endif
