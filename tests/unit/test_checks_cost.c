@@ -381,8 +381,7 @@ static const char *const part_lines[] = {
     CLIP_LINE,
     BEARING_LINE,
     "moist-16 + typex-16 | rc@406 | on osb-11 | wood-140@610, stone-140 | abuse-16 + mlv-5",
-    "damp-16 | wood-89-double@406~50, cell-89, inner-a osb-11, inner-b typex-16 | cement-13 + "
-    "typex-16",
+    "damp-16 | wood-89-double@406~50, cell-89, inner-a osb-11 | cement-13 + typex-16",
     "gyp-13 + damp-layer + gyp-13 | steel-64-18-double@305, glass-65, stone-65 | 3*gyp-13",
 };
 enum { PART_LINES = sizeof part_lines / sizeof part_lines[0], SEEDED = 400 };
