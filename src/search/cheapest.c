@@ -40,10 +40,8 @@ static int open_row(finder *f, int face_a, int *first, int *last) {
 static bool passes(finder *f, const candidate *c) {
   const judge_context *x = f->space->context;
   wall w = space_wall(f->space, c->core, c->face_a, c->face_b);
-  double sd[METRIC_COUNT] = {0}, exact[METRIC_COUNT];
-  (void)predict_sd(x->catalog, &w, sd, NULL);
-  const wall_row *match = evidence_pair(x->catalog, &f->core.published, tables_face(f->tables, c->face_a)->published,
-                                        tables_face(f->tables, c->face_b)->published);
+  double sd[METRIC_COUNT], exact[METRIC_COUNT];
+  const wall_row *match = tables_sound(f->tables, &f->core, c->face_a, c->face_b, sd);
   for (int m = 0; m < METRIC_COUNT; m++) exact[m] = f->exact[m * f->space->face_count + c->face_b];
   sound_bounds b;
   sound_bound(&f->aims, exact, sd, match, &b);

@@ -21,6 +21,7 @@ typedef struct sweep {
   front front;
   masks masks;
   struct masks kinds;    /* cheapest wall that breaks nothing, by kind_of */
+  feasible_block *last;
   sweep_result *out;
 } sweep;
 
@@ -78,6 +79,23 @@ static void keep(sweep *s, const front_member *m) {
   if (!front_beats(&s->front, m)) front_add(&s->front, m);
 }
 
+static void note_feasible(sweep *s, const candidate *c, bool certain) {
+  if (!s->last || s->last->count == SWEEP_BLOCK) {
+    feasible_block *block = arena_alloc(s->arena, sizeof *block);
+    if (s->last) s->last->next = block;
+    else s->out->feasible = block;
+    s->last = block;
+  }
+  s->last->wall[s->last->count++] = (feasible_wall){c->core, (unsigned short)c->face_a, (unsigned short)c->face_b, certain};
+}
+
+bool sweep_confirms(const space *s, const feasible_wall *f) {
+  wall w = space_wall(s, f->core, f->face_a, f->face_b);
+  prediction p;
+  predict_wall(s->context->catalog, &w, &p);
+  return judge_targets(s->context, &p, evidence_match(s->context->catalog, &w), NULL).broken == 0;
+}
+
 /* ---- one wall, one row of walls, one core ---- */
 
 static void sweep_wall(sweep *s, int face_a, int face_b, const double *exact) {
@@ -89,19 +107,14 @@ static void sweep_wall(sweep *s, int face_a, int face_b, const double *exact) {
     if (!s->out->unpriced) s->out->unpriced = line_print(s->arena, x->catalog, &w);
     return;
   }
-  double sd[METRIC_COUNT] = {0};
-  const wall_row *match = NULL;
-  if (s->aims.count > 0) {
-    wall w = space_wall(s->space, s->core.core, face_a, face_b);
-    (void)predict_sd(x->catalog, &w, sd, NULL);
-    match = evidence_pair(x->catalog, &s->core.published, tables_face(s->tables, face_a)->published,
-                          tables_face(s->tables, face_b)->published);
-  }
+  double sd[METRIC_COUNT];
+  const wall_row *match = tables_sound(s->tables, &s->core, face_a, face_b, sd);
   sound_bounds b;
   sound_bound(&s->aims, exact, sd, match, &b);
   m.wall.is.promised_hundredth = b.promised_least;
   m.promised_most = b.promised_most;
   m.exact = false;
+  if (m.wall.broken == 0 && b.most.with && !b.evidence) note_feasible(s, &m.wall, b.least.with);
   if (!wanted(s, &m, &b)) return;
   rule_mask others = m.wall.broken;
   if (b.certain) {

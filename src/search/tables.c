@@ -102,6 +102,7 @@ static void set_face(const tables *t, int i, face_facts *f) {
   f->height_key = structure_height_key(c, leaf);
   fire_face_set(c, leaf, &f->fire);
   f->published = evidence_face(c, leaf);
+  f->outside = predict_outside_face(c, leaf);
   for (int side = 0; side < 2; side++) f->broken[side] = face_bits(t, i, side);
 }
 
@@ -169,6 +170,8 @@ void tables_core(tables *t, int core, core_facts *out) {
   else out->published.count = 0;
   set_heights(t, w, out);
   out->broken = core_bits(t, w);
+  out->family = predict_family(x->catalog, w);
+  out->outside = predict_outside_core(x->catalog, w);
   out->cost = cost_core(x->prices, x->catalog, x->brief, w);
 }
 
@@ -219,6 +222,13 @@ bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candida
   if (t->fire_asked) out->is.fire_min = fire_pair(t->context->catalog, &k->fire, &a->fire, &b->fire, NULL);
   out->broken = k->broken | a->broken[SIDE_A] | b->broken[SIDE_B] | rules_broken_by(&t->limits, &out->is);
   return !k->cost.missing && !leaves.missing;
+}
+
+const wall_row *tables_sound(const tables *t, const core_facts *k, int face_a, int face_b, double *sd) {
+  const catalog *c = t->context->catalog;
+  const face_facts *a = &t->face[face_a], *b = &t->face[face_b];
+  predict_sd_of(c, k->family, k->outside | a->outside | b->outside, sd);
+  return k->published.count > 0 ? evidence_pair(c, &k->published, a->published, b->published) : NULL;
 }
 
 /* ---- order ---- */
