@@ -1,6 +1,8 @@
 /* Many walls at once: for one core (frame, spacing, gap, fills, mounts) and one leaf on side A, all leaves of side B in
- * contiguous lanes. Same model as model.h, arranged so that everything with a logarithm, power or division by a
- * component is in tables. Agrees with the reference within KERNEL_ERROR_DB. */
+ * contiguous lanes. Same model as model.h in double precision, arranged so that everything with a logarithm, a power or a
+ * division by a component is in tables; derivation in docs/methods/kernel.md. Agrees with the reference (predict_wall) within
+ * KERNEL_ERROR_DB before the step down to 0.1 dB; a value right at a step may come out one step off. For walls without
+ * sheaths and inner faces. */
 #ifndef ACOUSTICS_KERNEL_H
 #define ACOUSTICS_KERNEL_H
 
@@ -12,15 +14,24 @@
 typedef struct kernel_core kernel_core;
 typedef struct kernel_leaves kernel_leaves;
 
-/* Tables of `n` faces (leaf scalars are per face; support spacing enters by the core). Lives in `a`. */
+/* Tables of `n` faces, n >= 1, none empty (leaf scalars are per face; support spacing enters by the core). Lives in `a`; only
+ * read afterwards, so that threads may share it. */
 kernel_leaves *kernel_leaves_create(arena *a, const catalog *c, const face *faces, int n);
-/* Tables of one core; its faces, sheaths and inner faces are ignored (they must be empty). Scratch for one thread. */
+/* Tables of one core; its faces, sheaths and inner faces are ignored (they must be empty). Scratch for one thread, about 100 KiB
+ * in `a`. */
 kernel_core *kernel_core_create(arena *a, const catalog *c);
+/* Makes `k` the tables of `core`. Costs the time of some hundred walls. */
 void kernel_core_set(kernel_core *k, const wall *core);
-/* exact[j] = exact rating in `metric` of face `side_a` on A and face first_b + j on B, j < n. */
+/* exact[j] = exact rating in `metric` (as rating_exact) of face `side_a` on A and face first_b + j on B, j < n. A new side_a
+ * costs the time of some tens of walls. Lanes are filled in blocks of 64 faces counted from face 0. */
 void kernel_rate(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n, sound_metric metric,
                  double *exact);
-/* As above, for all five metrics and the integer STC etc. when a brief has several targets: exact is METRIC_COUNT x n. */
+/* As above, for all five metrics: exact[metric * n + j], METRIC_COUNT x n. */
 void kernel_rate_all(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n, double *exact);
+/* stc_at_most[j] >= the exact STC that kernel_rate gives for the same wall, from the band at 125 Hz alone: no contour passes a
+ * curve by more than 8 dB. At a small part of the time of kernel_rate. */
+void kernel_bound(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n, double *stc_at_most);
+/* Which vectors the lanes run in on this machine: "avx512", "avx2" or "portable". All give the same bits. */
+const char *kernel_vectors(void);
 
 #endif
