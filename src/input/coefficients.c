@@ -41,6 +41,7 @@ static const field coefficient_fields[] = {
     {.key = "max", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, max)},
     {.key = "prior", .kind = FIELD_NUMBER, .offset = offsetof(coefficient_record, prior)},
     {.key = "prior_sd", .kind = FIELD_NUMBER, .offset = offsetof(coefficient_record, prior_sd)},
+    {.key = "scale", .kind = FIELD_IGNORE},
     {.key = "fitted", .kind = FIELD_BOOL, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, fitted)},
     {.key = "source", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, source)},
 };
@@ -55,6 +56,8 @@ static const field family_fields[] = {
     {.key = "id", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(spread_record, id)},
     {.key = "rows", .kind = FIELD_INTEGER, .flags = FIELD_REQUIRED, .min = 0, .max = 1e6, .offset = offsetof(spread_record, rows)},
     {.key = "bias", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .min = -20, .max = 20, .offset = offsetof(spread_record, bias)},
+    {.key = "rms", .kind = FIELD_IGNORE},
+    {.key = "worst", .kind = FIELD_IGNORE},
     {.key = "sd", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED | FIELD_ABOVE_MIN, .min = 0, .max = 20, .offset = offsetof(spread_record, sd)},
     {.key = "source", .kind = FIELD_STRING, .offset = offsetof(spread_record, source)},
 };
