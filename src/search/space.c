@@ -171,14 +171,16 @@ static void add_mounts(builder *u, wall *w) {
   }
 }
 
-/* Empty; then each fill: in the only row, or in both rows, in A's and in B's. */
+/* Empty; then each fill: in the only row, or in both rows, in A's and in B's. Ordinary build fills A's row first: the two rows
+ * are alike, so B's alone is the mirror image of a core that stands in the list already. */
 static void add_fills(builder *u, wall *w) {
   static const bool filled[FILL_CHOICES][2] = {{true, true}, {true, false}, {false, true}};
   bool two = u->catalog->frames[w->frame].rows == 2;
+  int choices = !two ? 1 : any_build(u) ? FILL_CHOICES : FILL_CHOICES - 1;
   add_mounts(u, w);
   for (int i = 0; i < (int)u->catalog->fill_count; i++) {
     if (!fill_usable(u, i) || compat_fill(u->catalog, w->frame, i) > u->most) continue;
-    for (int k = 0; k < (two ? FILL_CHOICES : 1); k++) {
+    for (int k = 0; k < choices; k++) {
       w->fill[0] = filled[k][0] ? i : CATALOG_NONE;
       w->fill[1] = two && filled[k][1] ? i : CATALOG_NONE;
       add_mounts(u, w);
