@@ -3,7 +3,7 @@
 #include <stdint.h>
 #include <string.h>
 
-/* Lanes are the innermost loops: contiguous, no branch, no libm, constant trip count. The same text
+/* Lanes are the innermost loops: contiguous, no branch, no libm. The same text
  * is compiled for wider vectors too and picked at run time; without contraction every width gives
  * the same bits. Plain attributes rather than target_clones: those crash under the thread
  * sanitizer, and with clang 14 do not link across files. */
@@ -15,58 +15,113 @@
 
 _Static_assert(MODEL_ANGLES == 4, "tone_add spells out four angles");
 
-/* ------------------------------------------------------------------ one tone */
+/* Lanes of a block, from .. to - 1: multiples of KERNEL_STEP. */
+typedef struct lanes {
+  int from, to;
+} lanes;
 
-/* Numerator and denominator of the air path at one point. */
-INLINE void point_tau(const kernel_point *p, double m, double v, double u, double t, double *num,
-                      double *den) {
-  double y_re = p->g * u, y_im = m - p->g * v;
-  double r_re = p->r_re + y_re, r_im = p->r_im + y_im;
-  double q_re = p->q_re + y_re, q_im = p->q_im + y_im;
-  double re = t * r_re + (p->k_re * q_re - p->k_im * q_im);
-  double im = t * r_im + (p->k_re * q_im + p->k_im * q_re);
-  *num = (p->w2 * t + p->w1) * t + p->w0;
-  *den = re * re + im * im;
-}
+/* ------------------------------------------------------------------ leaf on side A */
 
-/* Denominator of the bridged path. */
-INLINE double bridge_den(const kernel_tone *t, const kernel_block *b, const kernel_pair *p, int j) {
-  double near = 1.0 - t->f2 * b->fc_minus2[j];
-  near = near > 0.0 ? near : 0.0;
-  double radiation = t->below * (near * near) + t->above * b->radiation[j];
-  double heave = p->heave_square[j] + t->reach * (t->reach - p->twice_heave[j]);
-  return radiation * heave * (1.0 + t->roll * p->resonance[j]);
-}
-
-/* Adds n/d to *num / *den. */
-INLINE void add_fraction(double n, double d, double *num, double *den) {
-  *num = *num * d + n * *den;
-  *den *= d;
-}
-
-/* Adds the transmission of one tone: all its fractions over one division. */
-INLINE void tone_add(const kernel_tone *restrict t, const kernel_block *restrict b,
-                     const kernel_pair *restrict p, double *restrict tau) {
-  for (int j = 0; j < KERNEL_LANES; j++) {
-    double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j];
-    double soft = t->soft_a + t->soft_b * b->slack[j];
-    double n0, n1, n2, n3, d0, d1, d2, d3;
-    point_tau(&t->at[0], m, v, u, soft, &n0, &d0);
-    point_tau(&t->at[1], m, v, u, soft, &n1, &d1);
-    point_tau(&t->at[2], m, v, u, soft, &n2, &d2);
-    point_tau(&t->at[3], m, v, u, soft, &n3, &d3);
-    add_fraction(n1, d1, &n0, &d0);
-    add_fraction(n3, d3, &n2, &d2);
-    add_fraction(n2, d2, &n0, &d0);
-    add_fraction(t->bridge * p->mass_minus2[j], bridge_den(t, b, p, j), &n0, &d0);
-    tau[j] += n0 / d0;
+/* Points of bands first .. last with the leaf on side A, lane `at` of its block. */
+INLINE void side_points(kernel_core *k, const kernel_block *a, int at, int first, int last) {
+  const kernel_cavity *c = &k->cavity;
+  kernel_points *p = &k->point;
+  double m = a->mass[at], v = a->mass_fc2[at], u = a->loss_fc2[at];
+  for (int i = first * KERNEL_BAND_POINTS; i < (last + 1) * KERNEL_BAND_POINTS; i++) {
+    double z_re = 1.0 + c->alpha[i] * (c->g[i] * u), z_im = c->alpha[i] * (m - c->g[i] * v);
+    double x_re = c->a_re[i] + (c->c_re[i] * z_re - c->c_im[i] * z_im);
+    double x_im = c->a_im[i] + (c->c_re[i] * z_im + c->c_im[i] * z_re);
+    double u_re = c->b_re[i] + (c->d_re[i] * z_re - c->d_im[i] * z_im);
+    double u_im = c->b_im[i] + (c->d_re[i] * z_im + c->d_im[i] * z_re);
+    double over = 1.0 / (x_re * x_re + x_im * x_im), own_re = c->own_re[i], own_im = c->own_im[i];
+    double alpha1 = c->alpha_minus1[i], w = c->weight[i] * over;
+    p->r_re[i] = alpha1 * (1.0 + over * (u_re * x_re + u_im * x_im));
+    p->r_im[i] = alpha1 * (over * (u_im * x_re - u_re * x_im));
+    p->k_re[i] = over * (own_re * x_re + own_im * x_im);
+    p->k_im[i] = over * (own_im * x_re - own_re * x_im);
+    p->q_re[i] = alpha1 * z_re + c->e_re[i];
+    p->q_im[i] = alpha1 * z_im + c->e_im[i];
+    p->w2[i] = w;
+    p->w1[i] = 2.0 * w * own_re;
+    p->w0[i] = w * (own_re * own_re + own_im * own_im);
   }
 }
 
-INLINE void pair_set(const kernel_core *k, const kernel_block *b, kernel_pair *restrict p) {
-  for (int j = 0; j < KERNEL_LANES; j++) {
-    double heave = k->heave_a + b->heave[j];
-    double f0_2 = k->resonance_k * (k->mass_minus1_a + b->mass_minus1[j]);
+INLINE void side_tones(kernel_core *k, const kernel_block *a, int at, int first, int last) {
+  kernel_tones *t = &k->tone;
+  double slack = a->slack[at], fc_minus2 = a->fc_minus2[at], radiation = a->radiation[at];
+  double mass_minus2 = a->mass_minus1[at] * a->mass_minus1[at];
+  for (int i = first * MODEL_SUBBANDS; i < (last + 1) * MODEL_SUBBANDS; i++) {
+    double near = 1.0 - t->f2[i] * fc_minus2;
+    near = near > 0.0 ? near : 0.0;
+    t->soft_a[i] = t->soft[i] + t->bay[SIDE_A][i] * slack;
+    t->bridge[i] = t->bridge_k[i] * mass_minus2;
+    t->below[i] = near * near / 2.0;
+    t->above[i] = t->above_k[i] * radiation;
+  }
+}
+
+INLINE void side_any(kernel_core *k, const kernel_block *a, int at, int first, int last) {
+  side_points(k, a, at, first, last);
+  side_tones(k, a, at, first, last);
+}
+
+/* ------------------------------------------------------------------ one tone */
+
+/* A fraction under way: num / den. */
+typedef struct fraction {
+  double num, den;
+} fraction;
+
+INLINE fraction fraction_sum(fraction x, fraction y) {
+  return (fraction){x.num * y.den + y.num * x.den, x.den * y.den};
+}
+
+/* Air path at point i for one lane. */
+INLINE fraction air_path(const kernel_core *k, int i, double m, double v, double u, double t) {
+  const kernel_points *p = &k->point;
+  double g = k->cavity.g[i], y_re = g * u, y_im = m - g * v;
+  double r_re = p->r_re[i] + y_re, r_im = p->r_im[i] + y_im;
+  double q_re = p->q_re[i] + y_re, q_im = p->q_im[i] + y_im;
+  double re = t * r_re + (p->k_re[i] * q_re - p->k_im[i] * q_im);
+  double im = t * r_im + (p->k_re[i] * q_im + p->k_im[i] * q_re);
+  return (fraction){(p->w2[i] * t + p->w1[i]) * t + p->w0[i], re * re + im * im};
+}
+
+/* Bridged path at tone i for lane j. */
+INLINE fraction bridged_path(const kernel_core *k, int i, const kernel_block *b, int j) {
+  const kernel_tones *t = &k->tone;
+  const kernel_pair *p = &k->pair;
+  double near = 1.0 - t->f2[i] * b->fc_minus2[j];
+  near = near > 0.0 ? near : 0.0;
+  double radiation = t->below[i] * (near * near) + t->above[i] * b->radiation[j];
+  double heave = p->heave_square[j] + t->reach[i] * (t->reach[i] - p->twice_heave[j]);
+  return (fraction){t->bridge[i] * p->mass_minus2[j],
+                    radiation * heave * (1.0 + t->roll[i] * p->resonance[j])};
+}
+
+/* Adds the transmission of tone i: all its fractions over one division. */
+INLINE void tone_add(const kernel_core *k, int i, const kernel_block *restrict b, lanes l,
+                     double *restrict tau) {
+  const int p = i * MODEL_ANGLES;
+  for (int j = l.from; j < l.to; j++) {
+    double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j];
+    double t = k->tone.soft_a[i] + k->tone.bay[SIDE_B][i] * b->slack[j];
+    fraction x = fraction_sum(air_path(k, p, m, v, u, t), air_path(k, p + 1, m, v, u, t));
+    fraction y = fraction_sum(air_path(k, p + 2, m, v, u, t), air_path(k, p + 3, m, v, u, t));
+    fraction all = fraction_sum(fraction_sum(x, y), bridged_path(k, i, b, j));
+    tau[j] += all.num / all.den;
+  }
+}
+
+INLINE void pair_set(kernel_core *k, const kernel_block *b, lanes l) {
+  const kernel_block *a = &k->leaves->block[k->side_a / KERNEL_LANES];
+  kernel_pair *p = &k->pair;
+  double heave_a = a->heave[k->side_a % KERNEL_LANES];
+  double mass_minus1_a = a->mass_minus1[k->side_a % KERNEL_LANES];
+  for (int j = l.from; j < l.to; j++) {
+    double heave = heave_a + b->heave[j];
+    double f0_2 = k->resonance_k * (mass_minus1_a + b->mass_minus1[j]);
     p->twice_heave[j] = 2.0 * heave;
     p->heave_square[j] = 2.0 * heave * heave;
     p->resonance[j] = f0_2 * f0_2;
@@ -75,13 +130,12 @@ INLINE void pair_set(const kernel_core *k, const kernel_block *b, kernel_pair *r
 }
 
 /* Transmission factors of bands first .. last into k->level. */
-INLINE void bands_tau(kernel_core *k, const kernel_block *b, int first, int last) {
-  pair_set(k, b, &k->pair);
+INLINE void bands_tau(kernel_core *k, const kernel_block *b, lanes l, int first, int last) {
+  pair_set(k, b, l);
   for (int band = first; band <= last; band++) {
     double *tau = k->level[band];
-    for (int j = 0; j < KERNEL_LANES; j++) tau[j] = k->ceiling_tau;
-    for (int i = 0; i < MODEL_SUBBANDS; i++)
-      tone_add(&k->tone[band * MODEL_SUBBANDS + i], b, &k->pair, tau);
+    for (int j = l.from; j < l.to; j++) tau[j] = k->ceiling_tau;
+    for (int i = 0; i < MODEL_SUBBANDS; i++) tone_add(k, band * MODEL_SUBBANDS + i, b, l, tau);
   }
 }
 
@@ -125,132 +179,135 @@ INLINE double lane_step_down(double db) {
   return (near > x ? near - 1.0 : near) / 10.0;
 }
 
-INLINE void lanes_order(double *restrict low, double *restrict high) {
-  for (int j = 0; j < KERNEL_LANES; j++) {
+INLINE void lanes_order(double *restrict low, double *restrict high, lanes l) {
+  for (int j = l.from; j < l.to; j++) {
     double x = low[j], y = high[j];
     low[j] = x < y ? x : y;
     high[j] = x < y ? y : x;
   }
 }
 
-/* Batcher's merge exchange: sorts the 16 rows upwards, lane by lane. */
-INLINE void lanes_sort(double x[RATING_FIT_BANDS][KERNEL_LANES]) {
-  const int n = RATING_FIT_BANDS;
-  for (int p = 1; p < n; p *= 2)
-    for (int q = p; q >= 1; q /= 2)
-      for (int j = q % p; j + q < n; j += 2 * q)
-        for (int i = j; i < j + q && i + q < n; i++)
-          if (i / (2 * p) == (i + q) / (2 * p)) lanes_order(x[i], x[i + q]);
-}
-
 /* Highest contour on the 16 bands of TL from `first`, as in rating.c: least of (32 + x_1 + ... +
  * x_i)/i and x_1 + `most`. */
-INLINE void lanes_fit(kernel_core *k, int first, const double *contour, double most,
+INLINE void lanes_fit(kernel_core *k, lanes l, int first, const double *contour, double most,
                       double *restrict out) {
   double total[KERNEL_LANES];
   for (int i = 0; i < RATING_FIT_BANDS; i++)
-    for (int j = 0; j < KERNEL_LANES; j++) k->fit[i][j] = k->level[first + i][j] - contour[i];
-  lanes_sort(k->fit);
-  for (int j = 0; j < KERNEL_LANES; j++) {
+    for (int j = l.from; j < l.to; j++) k->fit[i][j] = k->level[first + i][j] - contour[i];
+  for (int i = 0; i < KERNEL_SORT_STEPS; i++)
+    lanes_order(k->fit[k->order[i].low], k->fit[k->order[i].high], l);
+  for (int j = l.from; j < l.to; j++) {
     total[j] = RATING_SUM_LIMIT_DB;
     out[j] = k->fit[0][j] + most;
   }
   for (int i = 0; i < RATING_FIT_BANDS; i++) {
     double share = 1.0 / (i + 1);
-    for (int j = 0; j < KERNEL_LANES; j++) {
+    for (int j = l.from; j < l.to; j++) {
       total[j] += k->fit[i][j];
       double at_most = total[j] * share;
       out[j] = at_most < out[j] ? at_most : out[j];
     }
   }
-  for (int j = 0; j < KERNEL_LANES; j++) out[j] = lane_step_down(out[j]);
+  for (int j = l.from; j < l.to; j++) out[j] = lane_step_down(out[j]);
 }
 
-INLINE void lanes_weighted(const kernel_core *k, const kernel_sum *s, double *restrict out) {
-  for (int j = 0; j < KERNEL_LANES; j++) out[j] = 0.0;
+INLINE void lanes_weighted(const kernel_core *k, lanes l, const kernel_sum *s,
+                           double *restrict out) {
+  for (int j = l.from; j < l.to; j++) out[j] = 0.0;
   for (int band = s->first; band <= s->last; band++)
-    for (int j = 0; j < KERNEL_LANES; j++) out[j] += s->weight[band] * k->level[band][j];
-  for (int j = 0; j < KERNEL_LANES; j++) out[j] = lane_step_down(s->offset_db + lane_db(out[j]));
+    for (int j = l.from; j < l.to; j++) out[j] += s->weight[band] * k->level[band][j];
+  for (int j = l.from; j < l.to; j++) out[j] = lane_step_down(s->offset_db + lane_db(out[j]));
 }
 
-INLINE void bands_db(kernel_core *k, int first, int last) {
+INLINE void bands_db(kernel_core *k, lanes l, int first, int last) {
   for (int band = first; band <= last; band++)
-    for (int j = 0; j < KERNEL_LANES; j++) k->level[band][j] = lane_db(k->level[band][j]);
+    for (int j = l.from; j < l.to; j++) k->level[band][j] = lane_db(k->level[band][j]);
 }
 
 /* ------------------------------------------------------------------ one block */
 
-/* What a call wants of the blocks it goes over. */
+/* What a call wants of the blocks it goes over: metrics, or the bound from 125 Hz as result of
+ * METRIC_STC. */
 typedef struct kernel_job {
   bool want[METRIC_COUNT];
-  bool bound; /* the bound from 125 Hz instead, as result of METRIC_STC */
+  bool bound;
+  int first, last; /* bands */
 } kernel_job;
 
-INLINE void block_bound(kernel_core *k, const kernel_block *b) {
+INLINE void block_bound(kernel_core *k, const kernel_block *b, lanes l) {
   const double contour = rating_stc_contour[BAND_125 - RATING_STC_FIRST];
   double *restrict out = k->result[METRIC_STC];
-  bands_tau(k, b, BAND_125, BAND_125);
-  for (int j = 0; j < KERNEL_LANES; j++) {
+  bands_tau(k, b, l, BAND_125, BAND_125);
+  for (int j = l.from; j < l.to; j++) {
     double shift = lane_db(k->level[BAND_125][j]) - contour;
     out[j] = lane_step_down(shift + RATING_STC_LIMIT_DB);
   }
 }
 
-INLINE void block_rate(kernel_core *k, const kernel_block *b, const kernel_job *job) {
+INLINE void block_rate(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job) {
   const bool *want = job->want;
-  int first = BANDS, last = 0;
-  for (int metric = 0; metric < METRIC_COUNT; metric++) {
-    if (!want[metric]) continue;
-    first = k->sum[metric].first < first ? k->sum[metric].first : first;
-    last = k->sum[metric].last > last ? k->sum[metric].last : last;
-  }
-  bands_tau(k, b, first, last);
+  bands_tau(k, b, l, job->first, job->last);
   for (int metric = METRIC_RW_C; metric < METRIC_COUNT; metric++)
-    if (want[metric]) lanes_weighted(k, &k->sum[metric], k->result[metric]);
-  if (want[METRIC_STC] || want[METRIC_RW]) bands_db(k, first, last);
+    if (want[metric]) lanes_weighted(k, l, &k->sum[metric], k->result[metric]);
+  if (want[METRIC_STC] || want[METRIC_RW]) bands_db(k, l, job->first, job->last);
   if (want[METRIC_STC])
-    lanes_fit(k, RATING_STC_FIRST, rating_stc_contour, RATING_STC_LIMIT_DB, k->result[METRIC_STC]);
-  if (want[METRIC_RW])
-    lanes_fit(k, RATING_RW_FIRST, rating_rw_contour, RATING_SUM_LIMIT_DB, k->result[METRIC_RW]);
+    lanes_fit(k, l, RATING_STC_FIRST, rating_stc_contour, RATING_STC_LIMIT_DB,
+              k->result[METRIC_STC]);
+  if (want[METRIC_RW]) /* no rule of 8 dB: the sum alone never lets one band lack more than 32 */
+    lanes_fit(k, l, RATING_RW_FIRST, rating_rw_contour, RATING_SUM_LIMIT_DB, k->result[METRIC_RW]);
 }
 
-INLINE void block_any(kernel_core *k, const kernel_block *b, const kernel_job *job) {
+INLINE void block_any(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job) {
   if (job->bound)
-    block_bound(k, b);
+    block_bound(k, b, l);
   else
-    block_rate(k, b, job);
+    block_rate(k, b, l, job);
 }
 
-static void block_portable(kernel_core *k, const kernel_block *b, const kernel_job *job) {
-  block_any(k, b, job);
-}
+/* ------------------------------------------------------------------ widths */
 
+/* One compilation of the loops above. */
 typedef struct kernel_build {
   const char *vectors;
-  void (*block)(kernel_core *k, const kernel_block *b, const kernel_job *job);
+  void (*side)(kernel_core *k, const kernel_block *a, int at, int first, int last);
+  void (*block)(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job);
 } kernel_build;
 
-#if defined(SEPTUM_SIMD) && defined(__GNUC__) && defined(__x86_64__)
-__attribute__((target("avx2"))) static void block_avx2(kernel_core *k, const kernel_block *b,
-                                                       const kernel_job *job) {
-  block_any(k, b, job);
+static void side_portable(kernel_core *k, const kernel_block *a, int at, int first, int last) {
+  side_any(k, a, at, first, last);
+}
+static void block_portable(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job) {
+  block_any(k, b, l, job);
 }
 
-__attribute__((target("avx512f,avx512dq,avx512bw,avx512vl"))) static void
-block_avx512(kernel_core *k, const kernel_block *b, const kernel_job *job) {
-  block_any(k, b, job);
+#if defined(SEPTUM_SIMD) && defined(__GNUC__) && defined(__x86_64__)
+#define AVX2   __attribute__((target("avx2")))
+#define AVX512 __attribute__((target("avx512f,avx512dq,avx512bw,avx512vl")))
+
+AVX2 static void side_avx2(kernel_core *k, const kernel_block *a, int at, int first, int last) {
+  side_any(k, a, at, first, last);
+}
+AVX2 static void block_avx2(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job) {
+  block_any(k, b, l, job);
+}
+AVX512 static void side_avx512(kernel_core *k, const kernel_block *a, int at, int first, int last) {
+  side_any(k, a, at, first, last);
+}
+AVX512 static void block_avx512(kernel_core *k, const kernel_block *b, lanes l,
+                                const kernel_job *job) {
+  block_any(k, b, l, job);
 }
 
 static kernel_build widest(void) {
-  if (__builtin_cpu_supports("avx512f") && __builtin_cpu_supports("avx512dq") &&
-      __builtin_cpu_supports("avx512bw") && __builtin_cpu_supports("avx512vl"))
-    return (kernel_build){"avx512", block_avx512};
-  if (__builtin_cpu_supports("avx2")) return (kernel_build){"avx2", block_avx2};
-  return (kernel_build){"portable", block_portable};
+  bool wide = __builtin_cpu_supports("avx512f") && __builtin_cpu_supports("avx512dq") &&
+              __builtin_cpu_supports("avx512bw") && __builtin_cpu_supports("avx512vl");
+  if (wide) return (kernel_build){"avx512", side_avx512, block_avx512};
+  if (__builtin_cpu_supports("avx2")) return (kernel_build){"avx2", side_avx2, block_avx2};
+  return (kernel_build){"portable", side_portable, block_portable};
 }
 #else
 static kernel_build widest(void) {
-  return (kernel_build){"portable", block_portable};
+  return (kernel_build){"portable", side_portable, block_portable};
 }
 #endif
 
@@ -258,20 +315,42 @@ const char *kernel_vectors(void) {
   return widest().vectors;
 }
 
+/* ------------------------------------------------------------------ calls */
+
+/* Makes the tables of bands first .. last that are not there yet. */
+static void prepare(kernel_core *k, const kernel_build *build, const kernel_leaves *leaves,
+                    int side_a, int first, int last) {
+  if (k->leaves != leaves || k->side_a != side_a) memset(k->side_ready, 0, sizeof k->side_ready);
+  k->leaves = leaves;
+  k->side_a = side_a;
+  while (first <= last && k->side_ready[first]) first++;
+  if (first > last) return;
+  for (int band = first; band <= last; band++) {
+    if (!k->core_ready[band]) kernel_core_band(k, band);
+    k->side_ready[band] = true;
+  }
+  build->side(k, &leaves->block[side_a / KERNEL_LANES], side_a % KERNEL_LANES, first, last);
+}
+
+static int step_up(int lane) {
+  return (lane + KERNEL_STEP - 1) / KERNEL_STEP * KERNEL_STEP;
+}
+
 /* Goes over the blocks that hold faces first_b .. first_b + n - 1; wanted metrics one after another
  * in `out`. */
 static void sweep(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                   const kernel_job *job, double *out) {
   kernel_build build = widest();
-  kernel_core_side(k, leaves, side_a);
-  for (int done = 0, lanes; done < n; done += lanes) {
+  prepare(k, &build, leaves, side_a, job->first, job->last);
+  for (int done = 0, count; done < n; done += count) {
     int block = (first_b + done) / KERNEL_LANES, lane = (first_b + done) % KERNEL_LANES;
+    count = KERNEL_LANES - lane < n - done ? KERNEL_LANES - lane : n - done;
+    lanes l = {lane / KERNEL_STEP * KERNEL_STEP, step_up(lane + count)};
+    build.block(k, &leaves->block[block], l, job);
     double *to = out + done;
-    lanes = KERNEL_LANES - lane < n - done ? KERNEL_LANES - lane : n - done;
-    build.block(k, &leaves->block[block], job);
     for (int metric = 0; metric < METRIC_COUNT; metric++) {
       if (!job->want[metric]) continue;
-      memcpy(to, &k->result[metric][lane], (size_t)lanes * sizeof *to);
+      memcpy(to, &k->result[metric][lane], (size_t)count * sizeof *to);
       to += n;
     }
   }
@@ -279,20 +358,25 @@ static void sweep(kernel_core *k, const kernel_leaves *leaves, int side_a, int f
 
 void kernel_rate(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                  sound_metric metric, double *exact) {
-  kernel_job job = {{false}, false};
+  kernel_job job = {.first = k->sum[metric].first, .last = k->sum[metric].last};
   job.want[metric] = true;
   sweep(k, leaves, side_a, first_b, n, &job, exact);
 }
 
 void kernel_rate_all(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                      double *exact) {
-  kernel_job job = {{true, true, true, true, true}, false};
+  kernel_job job = {.first = k->sum[METRIC_OITC].first, .last = k->sum[METRIC_OITC].last};
+  for (int metric = 0; metric < METRIC_COUNT; metric++) {
+    job.want[metric] = true;
+    job.first = k->sum[metric].first < job.first ? k->sum[metric].first : job.first;
+    job.last = k->sum[metric].last > job.last ? k->sum[metric].last : job.last;
+  }
   sweep(k, leaves, side_a, first_b, n, &job, exact);
 }
 
 void kernel_bound(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                   double *stc_at_most) {
-  kernel_job job = {{false}, true};
+  kernel_job job = {.bound = true, .first = BAND_125, .last = BAND_125};
   job.want[METRIC_STC] = true;
   sweep(k, leaves, side_a, first_b, n, &job, stc_at_most);
 }

@@ -43,9 +43,9 @@ typedef enum rating_range {
 double rating_adapted(const double r_db[BANDS], int spectrum, rating_range range);
 /* ASTM E1332 from 80 to 4000 Hz, unrounded; OITC = round half up. */
 double rating_oitc(const double tl_db[BANDS]);
-/* Levels of the weighted sums, dB, 0 bands outside the range marked by *first and *count: X_A and
- * OITC are `offset - 10 lg sum 10^((level_i - TL_i)/10)`. For kernels that sum transmission
- * factors. */
+/* Levels of the weighted sums, dB, in *count bands from *first: X_A and OITC are offset - 10 lg sum
+ * 10^((level - TL)/10), the offset of X_A being 0. For those who sum transmission factors
+ * themselves. */
 const double *rating_adapted_levels(int spectrum, rating_range range, int *first, int *count);
 const double *rating_oitc_levels(int *first, int *count, double *offset_db);
 
