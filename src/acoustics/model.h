@@ -32,7 +32,8 @@ typedef struct model_gap {
 typedef enum model_bridge { BRIDGE_NONE, BRIDGE_LINE } model_bridge;
 
 /* Between two leaves there is a cavity of gaps. A wall is a chain of leaves: two, or more with a trapped board. */
-enum { MODEL_MAX_GAPS = 4, MODEL_MAX_LEAVES = 5 };
+/* Most gaps: two rows with a part fill each (air, fill, air between, fill, air). */
+enum { MODEL_MAX_GAPS = 5, MODEL_MAX_LEAVES = 5 };
 
 typedef struct model_cavity {
   int gaps;
