@@ -5,14 +5,18 @@ void front_init(front *f, arena *a, const space *s) {
   f->floor_value = s->context->brief->floor_area_value_per_m2 > 0;
 }
 
+front_member front_exact(const candidate *c) {
+  return (front_member){*c, c->is.promised_hundredth, c->broken, c->instead, true};
+}
+
 static bool counts(const front *f, int rule) { return (f->in_force & rule_bit(rule)) != 0; }
 
-/* Whether `x` can stand for `y` everywhere: cheaper, or as dear and earlier in the order of ties, and no worse in any number
+/* Whether `x` at its worst can stand for `y` at its best everywhere: cheaper, or as dear and earlier in the order of ties, and no worse in any number
  * that a rule in force reads, nor in any rule. */
 static bool beats(const front *f, const front_member *x, const front_member *y) {
   const wall_numbers *p = &x->wall.is, *q = &y->wall.is;
   if (p->cost_cents > q->cost_cents) return false;
-  if (counts(f, RULE_TARGET) && p->promised_hundredth < y->promised_most) return false;
+  if (counts(f, RULE_TARGET) && x->promised_least < q->promised_hundredth) return false;
   if (counts(f, RULE_HEIGHT) && p->height_mm < q->height_mm) return false;
   if (counts(f, RULE_FIRE) && p->fire_min < q->fire_min) return false;
   if (counts(f, RULE_THICKNESS_MAX) && p->thickness_tenth_mm > q->thickness_tenth_mm) return false;
@@ -20,7 +24,8 @@ static bool beats(const front *f, const front_member *x, const front_member *y) 
   if (counts(f, RULE_MASS_MAX) && p->mass_hundredth > q->mass_hundredth) return false;
   if (counts(f, RULE_MASS_MIN) && p->mass_hundredth < q->mass_hundredth) return false;
   if (counts(f, RULE_COST_MAX) && f->floor_value && p->total_cents > q->total_cents) return false;
-  if (!candidate_passes_where(&x->wall, &y->wall)) return false;
+  candidate worst = {.broken = x->broken_most, .instead = x->instead_most};
+  if (!candidate_passes_where(&worst, &y->wall)) return false;
   return candidate_compare(f->space, &x->wall, &y->wall) < 0;
 }
 

@@ -5,13 +5,17 @@
 
 #include "search/candidate.h"
 
-/* A candidate whose promised rating is known only within bounds while the kernel's figure stands: is.promised_hundredth is the
- * lower one. */
+/* A candidate whose sound is known only within bounds while the kernel's figure stands: `wall` is the best that it may turn out
+ * to be, the rest the worst. */
 typedef struct front_member {
   candidate wall;
-  int promised_most;
-  bool exact;              /* rated by the reference */
+  int promised_least;
+  rule_mask broken_most, instead_most;
+  bool exact;              /* rated by the reference: best and worst are the same */
 } front_member;
+
+/* A member whose figures are those of the reference. */
+front_member front_exact(const candidate *c);
 
 typedef struct front {
   arena *arena;

@@ -19,6 +19,7 @@ static void judge_sound_of(const judge_context *x, assessment *out) {
   judge_sound v = judge_targets(x, p, match, out->probability);
   out->numbers.promised_hundredth = v.promised_hundredth;
   out->broken |= v.broken;
+  out->instead = v.instead;
   out->has_composite = x->brief->opening_count > 0;
   if (!out->has_composite) return;
   double tl_db[BANDS];
@@ -106,6 +107,8 @@ void judge_wall(arena *a, const judge_context *x, const wall *w, assessment *out
   judge_records(w, note_rules, &ids);
   rule_limits limits = rules_limits(x->brief);
   out->broken |= ids.broken | rules_broken_by(&limits, &out->numbers);
+  const rule_mask sound = rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) | rule_bit(RULE_EVIDENCE) | rule_bit(RULE_COMPOSITE);
+  if (out->instead) out->instead |= out->broken & ~sound;
   judge_say_broken(a, x, why, out);
   judge_say_cautions(a, x, out);
 }

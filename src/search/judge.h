@@ -38,6 +38,7 @@ typedef struct assessment {
   takeoff takeoff; cost_total cost;
   wall_numbers numbers;
   rule_mask broken; int broken_count; broken_rule broke[RULES_MAX];
+  rule_mask instead;           /* another set without which it would pass (see judge_sound); 0 = none */
   compat_report compat;
   const char *caution[JUDGE_MAX_CAUTIONS]; int caution_count;
 } assessment;

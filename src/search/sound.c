@@ -4,8 +4,9 @@
 
 #include "acoustics/kernel.h"
 
-/* Exact ratings are stepped by 0.1 dB: a difference within the kernel's error may move one by a whole step. */
-static const double stray_db = KERNEL_ERROR_DB + 0.1;
+/* The kernel's ratings and the reference's are steps of 0.1 dB, so that within the kernel's error they are the same: that is relied
+ * on to compare walls. What falls so near a limit is decided by the reference all the same. */
+static const double stray_db = KERNEL_ERROR_DB;
 /* The printed rating comes from the curve rounded to whole dB, which moves no band by more than 0.5 dB, and so the contour
  * neither; the exact one is stepped down by less than 0.1 dB. */
 static const double printed_below_db = 0.5, printed_above_db = 0.6;
@@ -37,20 +38,21 @@ void sound_aims_set(const brief *b, sound_aims *out) {
 
 /* What is known of one target's rating. */
 typedef struct range {
-  double low, high, printed_low, printed_high, spread;
+  double exact, low, high, printed_low, printed_high, spread;
   bool published;
 } range;
 
 static range range_of(const sound_aims *g, const sound_aim *a, const double *exact, const double *sd, const wall_row *match) {
   range r = {.spread = sd[a->metric], .published = match && a->metric == METRIC_STC};
   if (r.published) {
-    r.low = r.high = r.printed_low = r.printed_high = match->stc;
+    r.exact = r.low = r.high = r.printed_low = r.printed_high = match->stc;
     r.spread = match->stc_sd;
   } else {
-    r.low = exact[a->metric] - stray_db;
-    r.high = exact[a->metric] + stray_db;
-    r.printed_low = floor(r.low - printed_below_db);
-    r.printed_high = floor(r.high + printed_above_db);
+    r.exact = exact[a->metric];
+    r.low = r.exact - stray_db;
+    r.high = r.exact + stray_db;
+    r.printed_low = floor(r.exact - printed_below_db);
+    r.printed_high = floor(r.exact + printed_above_db);
   }
   if (a->field) r.spread = sqrt(r.spread * r.spread + g->field_sd * g->field_sd);
   return r;
@@ -85,6 +87,7 @@ void sound_bound(const sound_aims *g, const double *exact, const double *sd, con
     const sound_aim *a = &g->aim[i];
     range r = range_of(g, a, exact, sd, match);
     int low = promise(r.low, r.printed_low, &r, a->needed, a->z), high = promise(r.high, r.printed_high, &r, a->needed, a->z);
+    int most = promise(r.exact, r.printed_high, &r, a->needed, a->z);
     bool bare_low = low >= 0 || promise(r.low, r.printed_low, &r, a->needed, 0) >= 0;
     bool bare_high = high >= 0 || promise(r.high, r.printed_high, &r, a->needed, 0) >= 0;
     out->least.alone = out->least.alone && low >= 0;
@@ -92,15 +95,16 @@ void sound_bound(const sound_aims *g, const double *exact, const double *sd, con
     out->least.alone_bare = out->least.alone_bare && bare_low;
     out->most.alone_bare = out->most.alone_bare && bare_high;
     if (a->composite) {
-      bound_composite(g, a, &r, out, &high);
+      bound_composite(g, a, &r, out, &most);
     } else {
       out->least.with = out->least.with && low >= 0;
       out->most.with = out->most.with && high >= 0;
       out->least.with_bare = out->least.with_bare && bare_low;
       out->most.with_bare = out->most.with_bare && bare_high;
     }
-    if (i == 0 || low < out->promised_least) out->promised_least = low;
-    if (i == 0 || high < out->promised_most) out->promised_most = high;
+    int least = promise(r.exact, r.printed_low, &r, a->needed, a->z);
+    if (i == 0 || least < out->promised_least) out->promised_least = least;
+    if (i == 0 || most < out->promised_most) out->promised_most = most;
     if (a->published_only && !r.published) out->evidence = rule_bit(RULE_EVIDENCE);
   }
   out->certain = same_reach(&out->least, &out->most);

@@ -55,28 +55,45 @@ static uint64_t kind_of(const sweep *s, const candidate *c) {
   return (uint64_t)core->frame << 32 | mount_a << 20 | mount_b << 8 | (a < b ? a << 4 | b : b << 4 | a);
 }
 
-/* Whether a wall may change anything that is kept, whatever its sound turns out to be. */
-static bool wanted(sweep *s, const front_member *m, const sound_bounds *b) {
+/* Whether a wall may be the cheapest of its kind or of its set of broken rules, whatever its sound turns out to be. */
+static bool may_be_cheapest(const sweep *s, const candidate *c, const sound_bounds *b) {
   rule_mask set[SOUND_MAX_OUTCOMES];
   int n = sound_outcomes(b, set);
   for (int i = 0; i < n; i++) {
-    rule_mask broken = m->wall.broken | set[i];
-    if (masks_wants(&s->masks, broken, &m->wall)) return true;
-    if (broken == 0 && masks_wants(&s->kinds, kind_of(s, &m->wall), &m->wall)) return true;
+    rule_mask broken = c->broken | set[i];
+    if (masks_wants(&s->masks, broken, c)) return true;
+    if (broken == 0 && masks_wants(&s->kinds, kind_of(s, c), c)) return true;
   }
-  front_member best = *m;
-  rule_mask instead;
-  judge_name_reach(&b->most, &best.wall.broken, &instead);
-  best.wall.broken |= m->wall.broken | b->evidence;
-  best.wall.instead = instead ? instead | m->wall.broken | b->evidence : 0;
-  return !front_beats(&s->front, &best);
+  return false;
 }
 
-static void keep(sweep *s, const front_member *m) {
-  masks_offer(&s->masks, m->wall.broken, &m->wall);
-  if (m->wall.instead) masks_offer(&s->masks, m->wall.instead, &m->wall);
-  if (m->wall.broken == 0) masks_offer(&s->kinds, kind_of(s, &m->wall), &m->wall);
-  if (!front_beats(&s->front, m)) front_add(&s->front, m);
+static void name_rules(const judge_reach *reach, rule_mask others, rule_mask *broken, rule_mask *instead) {
+  judge_name_reach(reach, broken, instead);
+  *broken |= others;
+  if (*instead) *instead |= others;
+}
+
+static void keep_cheapest(sweep *s, const candidate *c) {
+  masks_offer(&s->masks, c->broken, c);
+  if (c->instead) masks_offer(&s->masks, c->instead, c);
+  if (c->broken == 0) masks_offer(&s->kinds, kind_of(s, c), c);
+}
+
+/* Keeps a wall, rules of sound not yet in c->broken, wherever it may be needed. */
+static void keep(sweep *s, const candidate *c, const sound_bounds *b) {
+  front_member m = {.wall = *c, .promised_least = b->promised_least};
+  m.wall.is.promised_hundredth = b->promised_most;
+  name_rules(&b->most, c->broken | b->evidence, &m.wall.broken, &m.wall.instead);
+  name_rules(&b->least, c->broken | b->evidence, &m.broken_most, &m.instead_most);
+  if (may_be_cheapest(s, c, b)) {
+    candidate sure = m.wall;
+    if (!b->certain) {
+      rate_exactly(s, &sure, c->broken);
+      m = front_exact(&sure);
+    }
+    keep_cheapest(s, &sure);
+  }
+  if (!front_beats(&s->front, &m)) front_add(&s->front, &m);
 }
 
 static void note_feasible(sweep *s, const candidate *c, bool certain) {
@@ -99,34 +116,19 @@ bool sweep_confirms(const space *s, const feasible_wall *f) {
 /* ---- one wall, one row of walls, one core ---- */
 
 static void sweep_wall(sweep *s, int face_a, int face_b, const double *exact) {
-  const judge_context *x = s->space->context;
-  front_member m;
+  candidate c;
   s->out->walls++;
-  if (!tables_wall(s->tables, &s->core, face_a, face_b, &m.wall)) {
+  if (!tables_wall(s->tables, &s->core, face_a, face_b, &c)) {
     wall w = space_wall(s->space, s->core.core, face_a, face_b);
-    if (!s->out->unpriced) s->out->unpriced = line_print(s->arena, x->catalog, &w);
+    if (!s->out->unpriced) s->out->unpriced = line_print(s->arena, s->space->context->catalog, &w);
     return;
   }
   double sd[METRIC_COUNT];
   const wall_row *match = tables_sound(s->tables, &s->core, face_a, face_b, sd);
   sound_bounds b;
   sound_bound(&s->aims, exact, sd, match, &b);
-  m.wall.is.promised_hundredth = b.promised_least;
-  m.promised_most = b.promised_most;
-  m.exact = false;
-  if (m.wall.broken == 0 && b.most.with && !b.evidence) note_feasible(s, &m.wall, b.least.with);
-  if (!wanted(s, &m, &b)) return;
-  rule_mask others = m.wall.broken;
-  if (b.certain) {
-    judge_name_reach(&b.most, &m.wall.broken, &m.wall.instead);
-    m.wall.broken |= others | b.evidence;
-    if (m.wall.instead) m.wall.instead |= others | b.evidence;
-  } else {
-    rate_exactly(s, &m.wall, others);
-    m.promised_most = m.wall.is.promised_hundredth;
-    m.exact = true;
-  }
-  keep(s, &m);
+  if (c.broken == 0 && b.most.with && !b.evidence) note_feasible(s, &c, b.least.with);
+  keep(s, &c, &b);
 }
 
 /* Rates one leaf on A with the leaves first..last on B, in every metric asked for: exact[metric] at the leaf's own place. */
@@ -173,9 +175,10 @@ static void finish_front(sweep *s) {
   front_init(&s->front, s->arena, space_of);
   for (int i = 0; i < kept.count; i++) {
     front_member m = kept.item[i];
-    if (!m.exact) rate_exactly(s, &m.wall, m.wall.broken & ~sound_rules);
-    m.promised_most = m.wall.is.promised_hundredth;
-    m.exact = true;
+    if (!m.exact) {
+      rate_exactly(s, &m.wall, m.wall.broken & ~sound_rules);
+      m = front_exact(&m.wall);
+    }
     if (!front_beats(&s->front, &m)) front_add(&s->front, &m);
   }
   sweep_result *r = s->out;
