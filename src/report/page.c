@@ -63,7 +63,7 @@ void page_line(text *out, const char *label, const char *words) {
 
 void page_right(text *out, size_t end, const char *word) {
   size_t width = columns_of(word, strlen(word));
-  text_char(out, ' ');
+  text_char(out, column(out) + 1 + width > PAGE_WIDTH ? '\n' : ' ');
   if (end > width) text_pad(out, end - width);
   page_put(out, word);
 }

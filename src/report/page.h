@@ -16,7 +16,8 @@ void page_put(text *out, const char *s);
 void page_words(text *out, size_t indent, const char *words);
 /* Label, words, in one. */
 void page_line(text *out, const char *label, const char *words);
-/* Blanks, so that `word` ends before column `end`; at least one blank. */
+/* Blanks, so that `word` ends before column `end`; at least one blank, or on the next line where it
+ * would pass the width. */
 void page_right(text *out, size_t end, const char *word);
 /* `word` cut to `columns` display columns, the last a full stop when something was cut. */
 void page_cut(text *out, size_t columns, const char *word);

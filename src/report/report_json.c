@@ -284,9 +284,9 @@ static void put_cost(markup_json *j, const report *r, const assessment *x) {
   markup_json_cents(j, "markup", x->cost.markup_cents);
   markup_json_cents(j, "total", x->cost.total_cents);
   markup_json_cents(j, "floor_value", x->cost.floor_value_cents);
-  markup_json_number(j, "area_m2", x->cost.area_m2, MONEY_DIGITS);
-  markup_json_number(j, "length_m", r->brief->length_m, MONEY_DIGITS);
-  markup_json_number(j, "height_m", r->brief->height_m, MONEY_DIGITS);
+  markup_json_number(j, "area_m2", x->cost.area_m2, QUANTITY_DIGITS);
+  markup_json_number(j, "length_m", r->brief->length_m, QUANTITY_DIGITS);
+  markup_json_number(j, "height_m", r->brief->height_m, QUANTITY_DIGITS);
   markup_json_number(j, "dead_load_kg_m", v.load_kg_m, MASS_DIGITS);
   put_book(j, r->prices);
   put_lines(j, r, &x->takeoff);

@@ -9,7 +9,7 @@
 
 /* --- what it is ------------------------------------------------------------------------------ */
 
-enum { WHERE_COLUMNS = 13, SIZE_END = 92 };
+enum { WHERE_COLUMNS = 11, SIZE_END = PAGE_WIDTH };
 
 static void put_parts(const report *r, const assessment *x, text *out) {
   view_parts parts;
@@ -114,7 +114,7 @@ static void put_near(const report *r, const evidence_near *n, text *out) {
 static void put_evidence(const report *r, const assessment *x, text *out) {
   const evidence *e = &x->evidence;
   if (e->nearest_count > 0)
-    page_line(out, "Evidence", "Nearest published walls, and what this wall has otherwise:");
+    page_line(out, "Evidence", "Nearest published walls, and what they have otherwise:");
   for (int i = 0; i < e->nearest_count; i++) put_near(r, &e->nearest[i], out);
 }
 

@@ -78,15 +78,16 @@ static void put_decides(const report *r, const explanation *e, text *out) {
               "the sound target: no other rule, given up alone, would save anything.");
     return;
   }
-  page_line(out, "Decided by",
-            text_format(
-                r->arena,
-                "%s, beside the sound target: with %s in place of %s it would cost %s less.",
-                p->name, p->to, p->from, view_money(r, in_area(r, p->price_per_m2), per_area(r))));
+  page_line(
+      out, "Decided by",
+      text_format(
+          r->arena,
+          "%s (%s), beside the sound target. With \"%s\" instead the wall would cost %s less.",
+          p->name, p->from, p->to, view_money(r, in_area(r, p->price_per_m2), per_area(r))));
 }
 
 static void put_rule_prices(const report *r, const explanation *e, text *out) {
-  if (e->price_count == 0) return;
+  if (e->price_count == 0 || e->chosen == NULL) return;
   page_line(out, "Rules cost",
             text_format(r->arena, "What giving up one rule would save, in %s per %s:",
                         r->prices != NULL ? r->prices->currency : "", per_area(r)));
@@ -95,38 +96,52 @@ static void put_rule_prices(const report *r, const explanation *e, text *out) {
     page_label(out, "");
     page_right(out, PAGE_LABEL + COST_COLUMNS, amount(r, in_area(r, p->price_per_m2)));
     text_put(out, "  ");
-    const char *then = p->price_total > 0.0 && p->wall != NULL
-                           ? text_format(r->arena, ", then %s", p->wall->line)
-                           : "";
+    const char *then = "";
+    if (p->price_total > 0.0 && p->wall != NULL)
+      then =
+          text_format(r->arena, "; then %s",
+                      text_equal(p->wall->line, e->chosen->line) ? "the same wall" : p->wall->line);
     page_words(out, FAIL_INDENT,
                text_format(r->arena, "%s: %s in place of %s%s", p->name, p->to, p->from, then));
   }
 }
 
+/* Small prices keep a third digit. */
 static const char *price_in(const report *r, const explain_break_even *b, double price) {
-  cost_line l = {.quantity = 0.0, .unit = b->unit, .rate = price};
-  view_quantity q = view_quantity_of(r, &l);
-  return text_format(r->arena, "%s", text_of(r->arena, q.rate, 2));
+  cost_line l = {.unit = b->unit, .rate = price};
+  double rate = view_quantity_of(r, &l).rate;
+  return text_of(r->arena, rate, rate < 1.0 ? 3 : 2);
+}
+
+static void put_limits(const report *r, const explain_break_even *b, text *out) {
+  enum { ITEM_COLUMNS = 18, INDENT = PAGE_LABEL + ITEM_COLUMNS + 1 };
+  cost_line l = {.unit = b->unit};
+  const char *unit = view_quantity_of(r, &l).unit;
+  text t;
+  text_init(&t, r->arena, 2000);
+  text_putf(&t, "%s %s%s", price_in(r, b, b->price), text_equal(unit, "each") ? "" : "per ", unit);
+  if (b->has_low) text_putf(&t, "; below %s: %s", price_in(r, b, b->low), b->low_line);
+  if (b->has_high) text_putf(&t, "; above %s: %s", price_in(r, b, b->high), b->high_line);
+  page_label(out, "");
+  page_cut(out, ITEM_COLUMNS, b->item);
+  text_pad(out, INDENT);
+  page_words(out, INDENT, t.data);
 }
 
 static void put_break_even(const report *r, const explanation *e, text *out) {
-  enum { ITEM_COLUMNS = 20 };
   if (e->break_even_count == 0) return;
+  text idle;
+  text_init(&idle, r->arena, 4000);
   page_line(out, "Break-even", "How far one price may move before another wall is cheaper:");
   for (int i = 0; i < e->break_even_count; i++) {
     const explain_break_even *b = &e->break_even[i];
-    cost_line l = {.unit = b->unit};
-    text t;
-    text_init(&t, r->arena, 2000);
-    text_putf(&t, "%s per %s", price_in(r, b, b->price), view_quantity_of(r, &l).unit);
-    if (b->has_low) text_putf(&t, "; below %s: %s", price_in(r, b, b->low), b->low_line);
-    if (b->has_high) text_putf(&t, "; above %s: %s", price_in(r, b, b->high), b->high_line);
-    if (!b->has_low && !b->has_high) text_put(&t, "; no price of it changes the choice");
-    page_label(out, "");
-    page_cut(out, ITEM_COLUMNS, b->item);
-    text_pad(out, PAGE_LABEL + ITEM_COLUMNS + 1);
-    page_words(out, PAGE_LABEL + ITEM_COLUMNS + 1, t.data);
+    if (b->has_low || b->has_high)
+      put_limits(r, b, out);
+    else
+      text_putf(&idle, "%s%s", idle.len ? ", " : "", b->item);
   }
+  if (idle.len > 0)
+    page_line(out, "", text_format(r->arena, "At any price of these it stays: %s.", idle.data));
 }
 
 /* --- together -------------------------------------------------------------------------------- */
@@ -134,7 +149,10 @@ static void put_break_even(const report *r, const explanation *e, text *out) {
 static void put_counts(const report *r, const explanation *e, const pick_choice *proof, text *out) {
   text t;
   text_init(&t, r->arena, 400);
-  text_putf(&t, "%lld walls judged, %d of them put to the solver", e->walls, e->frontier);
+  view_count(&t, e->walls);
+  text_put(&t, " walls judged, ");
+  view_count(&t, e->frontier);
+  text_put(&t, " of them put to the solver");
   if (e->status == SOLVER_OPTIMAL)
     text_put(&t, "; proven cheapest.");
   else if (proof->found)
@@ -148,13 +166,13 @@ static void put_counts(const report *r, const explanation *e, const pick_choice 
 static void put_infeasible(const report *r, const explanation *e, text *out) {
   for (int i = 0; i < e->conflict_count; i++) {
     text t;
+    int rules = 0;
     text_init(&t, r->arena, 2000);
     for (int k = 0; k < RULES_MAX; k++)
       if ((e->conflicts[i] >> k) & 1u)
-        text_putf(&t, "%s%s", t.len ? " with " : "", rule_name(r->arena, r->brief, k));
-    page_line(
-        out, i == 0 ? "In the way" : "",
-        text_format(r->arena, "%s%s", t.data, i == 0 ? ": these cannot be had together" : ""));
+        text_putf(&t, "%s%s", rules++ ? " and " : "", rule_name(r->arena, r->brief, k));
+    text_put(&t, rules > 1 ? " cannot be had together." : " cannot be had at all.");
+    page_line(out, i == 0 ? "In the way" : "", t.data);
   }
   put_others(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count, true, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);

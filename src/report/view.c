@@ -36,7 +36,7 @@ static void add_mount(const report *r, view_parts *out, const wall *w, int side)
   const mount *type = &r->catalog->mounts[m->mount];
   const char *what = text_format(r->arena, "%s at %s", type->name, spacing_words(r, m->spacing_mm));
   if (m->clip_spacing_mm > 0)
-    what = text_format(r->arena, "%s, a clip every %s", what, spacing_words(r, m->clip_spacing_mm));
+    what = text_format(r->arena, "%s, clips at %s", what, spacing_words(r, m->clip_spacing_mm));
   add_part(out, side == SIDE_A ? "mount A" : "mount B", what, type->depth_m);
 }
 
@@ -122,6 +122,14 @@ const char *view_money(const report *r, double amount, const char *per) {
   text_putf(&t, " %s", r->prices != NULL ? r->prices->currency : "");
   if (per != NULL) text_putf(&t, " per %s", per);
   return t.data;
+}
+
+void view_count(text *out, long long count) {
+  if (count >= 1000) {
+    view_count(out, count / 1000);
+    text_putf(out, ",%03d", (int)(count % 1000));
+  } else
+    text_putf(out, "%d", (int)count);
 }
 
 /* --- sound ----------------------------------------------------------------------------------- */

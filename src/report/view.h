@@ -42,6 +42,8 @@ const char *view_item(const report *r, const cost_line *l);
 const char *view_line_kind(const cost_line *l);
 /* "2,430.10 USD" without, "9.00 USD per ft2" with a unit. */
 const char *view_money(const report *r, double amount, const char *per);
+/* "183,456" */
+void view_count(text *out, long long count);
 /* "STC 50 in the laboratory, 80 % sure" */
 const char *view_target(const report *r, const target *t);
 /* The highest whole rating that the wall reaches in the laboratory with the brief's confidence (0.8

@@ -15,7 +15,7 @@ WALLS = [
     "2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16",
     "typex-16 | steel-92-18@610, glass-89 | typex-16",
     "typex-16 | wood-89@406, glass-89 | typex-16",
-    "gyp-13 + mlv-5 | wood-89-double@406~25, glass-89, glass-89 | typex-16 + osb-11",
+    "gyp-13 + mlv-5 | wood-89-double@406~50, glass-89, glass-89 | typex-16 + osb-11",
     "typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16",
     "2*typex-16 | clip@610 | wood-89-stag-140@406, glass-140 | 2*typex-16",
     "damp-16 | steel-152-54@406 | 3*gyp-13",
