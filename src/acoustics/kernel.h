@@ -14,7 +14,7 @@
 typedef struct kernel_core kernel_core;
 typedef struct kernel_leaves kernel_leaves;
 
-/* Tables of `n` faces, n >= 1, none empty (leaf scalars are per face; support spacing enters by the core). Lives in `a`; only
+/* Tables of `n` faces, none empty (leaf scalars are per face; support spacing enters by the core). Lives in `a`; only
  * read afterwards, so that threads may share it. */
 kernel_leaves *kernel_leaves_create(arena *a, const catalog *c, const face *faces, int n);
 /* Tables of one core; its faces, sheaths and inner faces are ignored (they must be empty). Scratch for one thread, about 100 KiB
@@ -23,7 +23,7 @@ kernel_core *kernel_core_create(arena *a, const catalog *c);
 /* Makes `k` the tables of `core`. Costs the time of some hundred walls. */
 void kernel_core_set(kernel_core *k, const wall *core);
 /* exact[j] = exact rating in `metric` (as rating_exact) of face `side_a` on A and face first_b + j on B, j < n. A new side_a
- * costs the time of some tens of walls. Lanes are filled in blocks of 64 faces counted from face 0. */
+ * costs the time of a few walls. Lanes are filled in blocks of 64 faces counted from face 0. */
 void kernel_rate(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n, sound_metric metric,
                  double *exact);
 /* As above, for all five metrics: exact[metric * n + j], METRIC_COUNT x n. */
