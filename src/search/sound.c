@@ -8,8 +8,9 @@
  * on to compare walls. What falls so near a limit is decided by the reference all the same. */
 static const double stray_db = KERNEL_ERROR_DB;
 /* The printed rating comes from the curve rounded to whole dB, which moves no band by more than 0.5 dB, and so the contour
- * neither; the exact one is stepped down by less than 0.1 dB. */
-static const double printed_below_db = 0.5, printed_above_db = 0.6;
+ * neither; the exact one is stepped down by less than 0.1 dB. OITC is rounded half up once more. */
+static const double printed_below_db = 0.5;
+static double printed_above(sound_metric m) { return m == METRIC_OITC ? 1.1 : 0.6; }
 
 static void add_metric(sound_aims *g, sound_metric m) {
   for (int i = 0; i < g->metrics; i++)
@@ -31,7 +32,7 @@ void sound_aims_set(const brief *b, sound_aims *out) {
     a->field = t->basis == BASIS_FIELD;
     a->published_only = t->evidence == EVIDENCE_PUBLISHED;
     a->composite = t->composite && b->opening_count > 0;
-    a->shut = a->composite && fmax(most[t->metric], floor(most[t->metric] + printed_above_db)) < a->needed;
+    a->shut = a->composite && fmax(most[t->metric], floor(most[t->metric] + printed_above(t->metric))) < a->needed;
     add_metric(out, t->metric);
   }
 }
@@ -52,7 +53,7 @@ static range range_of(const sound_aims *g, const sound_aim *a, const double *exa
     r.low = r.exact - stray_db;
     r.high = r.exact + stray_db;
     r.printed_low = floor(r.exact - printed_below_db);
-    r.printed_high = floor(r.exact + printed_above_db);
+    r.printed_high = floor(r.exact + printed_above(a->metric));
   }
   if (a->field) r.spread = sqrt(r.spread * r.spread + g->field_sd * g->field_sd);
   return r;
@@ -69,7 +70,7 @@ static void bound_composite(const sound_aims *g, const sound_aim *a, const range
     out->most.with = out->most.with_bare = false;
     return;
   }
-  double printed = floor(r->high + g->lift_db + printed_above_db);
+  double printed = floor(r->high + g->lift_db + printed_above(a->metric));
   if (r->published) printed = fmax(printed, r->printed_high);
   int with = promise(r->high + g->lift_db, printed, r, a->needed, a->z);
   out->most.with = out->most.with && with >= 0;
