@@ -259,6 +259,28 @@ START_TEST(exact_is_the_highest_contour) {
 }
 END_TEST
 
+/* How far the printed number may stand from the exact one: rounding the curve moves it by half a dB
+ * (STC, OITC) or 0.05 dB, the exact one is stepped down by less than 0.1 dB, and sums are rounded
+ * half up at the end. Searches rely on these bounds. */
+START_TEST(printed_near_exact) {
+  enum { ROUNDS = 5000 };
+  static const double below[METRIC_COUNT] = {1.5, 1.05, 0.55, 0.55, 1.0};
+  static const double above[METRIC_COUNT] = {0.6, 0.15, 0.65, 0.65, 1.1};
+  unsigned state = 5;
+  for (int round = 0; round < ROUNDS; round++) {
+    double tl[BANDS];
+    for (int i = 0; i < BANDS; i++) tl[i] = 25 + i + (next_random(&state) % 15000) / 1000.0;
+    ratings r = rating_all(tl);
+    for (int m = 0; m < METRIC_COUNT; m++) {
+      double exact = rating_exact(tl, (sound_metric)m), printed = rating_of(&r, (sound_metric)m);
+      ck_assert_msg(printed >= exact - below[m] - EXACT_STEP &&
+                        printed <= exact + above[m] + EXACT_STEP,
+                    "%s: %.0f printed, %.1f exact", sound_metric_names[m], printed, exact);
+    }
+  }
+}
+END_TEST
+
 START_TEST(exact_values) {
   double tl[BANDS];
   curve_bands(&curves[1], tl); /* ISO 12999-1:2020 Annex B: 57.4 */
@@ -355,6 +377,7 @@ int main(void) {
   tcase_add_loop_test(t, spectra_sum, 0, 4);
   tcase_add_test(t, oitc);
   tcase_add_test(t, exact_is_the_highest_contour);
+  tcase_add_test(t, printed_near_exact);
   tcase_add_test(t, exact_values);
   tcase_add_test(t, rounding_switch);
   tcase_add_loop_test(t, contour_curve_has_its_rating, 0, 60);
