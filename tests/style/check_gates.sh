@@ -16,6 +16,7 @@ only() {
 }
 only 'cJSON_|<cjson/' 'src/input/json\.c:'
 only '\bglp_[a-z]|<glpk' 'src/select/solver_glpk\.c:'
+only '\b(lxw|workbook|worksheet|format)_[a-z]+\(|xlsxwriter\.h' 'src/report/report_xlsx\.c:'
 only '\b(malloc|calloc|realloc|free)\(' 'src/base/arena\.c:|src/select/solver_glpk\.c:|src/input/json\.c:'
 only '\b(sprintf|vsprintf|strcpy|strcat|atoi|atof|gets|setlocale)\(' 'nowhere'
 only "\\b(printf|puts|putchar|fprintf|exit)\\(" "src/cli/"
