@@ -19,7 +19,7 @@ typedef struct bench {
 
 static bench shop;
 
-static void open_shop(void) {
+static inline void open_shop(void) {
   diag_list d;
   shop.memory = arena_create(0, &shop.out_of_memory);
   ck_assert_ptr_nonnull(shop.memory);
@@ -30,22 +30,22 @@ static void open_shop(void) {
   ck_assert_ptr_nonnull(shop.prices);
 }
 
-static void close_shop(void) { arena_free(shop.memory); }
+static inline void close_shop(void) { arena_free(shop.memory); }
 
 /* ---- dice ---- */
 
 static uint32_t dice_state;
-static unsigned dice(unsigned below) {
+static inline unsigned dice(unsigned below) {
   dice_state = dice_state * 1664525u + 1013904223u;
   return (dice_state >> 8) % below;
 }
-static bool chance(unsigned percent) { return dice(100) < percent; }
+static inline bool chance(unsigned percent) { return dice(100) < percent; }
 
 /* ---- briefs ---- */
 
-static void add_only(brief *b, const char *pattern) { b->only[b->only_count++] = pattern; }
+static inline void add_only(brief *b, const char *pattern) { b->only[b->only_count++] = pattern; }
 
-static void choose_parts(brief *b) {
+static inline void choose_parts(brief *b) {
   static const char *const boards[] = {"gyp-13", "gyp-13-light", "typex-13", "typex-16", "typec-16", "abuse-16", "moist-16"};
   static const char *const backings[] = {"osb-11", "ply-13-frt", "damp-layer"};
   static const char *const frames[] = {"wood-64", "wood-89", "wood-140", "steel-64-18", "steel-92-18", "steel-92-33", "steel-152-30",
@@ -61,7 +61,7 @@ static void choose_parts(brief *b) {
   add_only(b, chance(30) ? "rc" : chance(30) ? "clip" : "mount:none-of-them");
 }
 
-static void choose_target(target *t, const brief *b) {
+static inline void choose_target(target *t, const brief *b) {
   static const double confidences[] = {0.5, 0.8, 0.9, 0.4};
   *t = (target){.metric = METRIC_STC, .value = 30 + dice(18), .confidence = confidences[dice(4)]};
   if (chance(25)) t->metric = (sound_metric)dice(METRIC_COUNT);
@@ -72,7 +72,7 @@ static void choose_target(target *t, const brief *b) {
   t->composite = b->opening_count > 0 && chance(70);
 }
 
-static void choose_sides(brief *b) {
+static inline void choose_sides(brief *b) {
   for (int s = 0; s < 2; s++) {
     if (chance(20)) b->side[s].fastening = chance(50) ? FASTENING_HEAVY : FASTENING_LIGHT;
     b->side[s].wet = chance(6);
@@ -81,7 +81,7 @@ static void choose_sides(brief *b) {
   }
 }
 
-static void choose_limits(brief *b) {
+static inline void choose_limits(brief *b) {
   if (chance(35)) b->thickness_m = (limit){false, true, 0, 0.11 + 0.005 * dice(34)};
   if (chance(8)) b->thickness_m.has_min = true, b->thickness_m.min = 0.09 + 0.005 * dice(5);
   if (chance(20)) b->mass_kg_m2 = (limit){false, true, 0, 25 + dice(45)};
@@ -91,7 +91,7 @@ static void choose_limits(brief *b) {
 }
 
 /* A brief that depends on `seed` alone. */
-static brief random_brief(unsigned seed) {
+static inline brief random_brief(unsigned seed) {
   static const char *const withouts[] = {"steel-*", "typex-16", "fill:glass-*", "osb-*", "wood-89*", "rc"};
   static const int minutes[] = {30, 45, 60};
   brief b;
@@ -124,14 +124,14 @@ typedef struct brute {
   candidate *wall;
 } brute;
 
-static candidate judged(arena *a, const space *s, int core, int face_a, int face_b) {
+static inline candidate judged(arena *a, const space *s, int core, int face_a, int face_b) {
   assessment *x = arena_alloc(a, sizeof *x);
   wall w = space_wall(s, core, face_a, face_b);
   judge_wall(a, s->context, &w, x);
   return (candidate){core, face_a, face_b, x->numbers, x->broken, x->instead};
 }
 
-static brute judge_all(const space *s) {
+static inline brute judge_all(const space *s) {
   brute all = {0, arena_array(shop.memory, (size_t)space_count(s), sizeof *all.wall)};
   for (int k = 0; k < s->core_count; k++)
     for (int i = 0; i < s->face_count; i++)
@@ -146,7 +146,7 @@ static brute judge_all(const space *s) {
 }
 
 /* The first in tie order that breaks nothing but what is given up; NULL when there is none. */
-static const candidate *brute_cheapest(const space *s, const brute *all, rule_mask given_up) {
+static inline const candidate *brute_cheapest(const space *s, const brute *all, rule_mask given_up) {
   const candidate *best = NULL;
   for (int i = 0; i < all->count; i++) {
     const candidate *c = &all->wall[i];
