@@ -40,7 +40,7 @@ septum_status commands_run(const cli_line *line) {
   septum_answer *answer = NULL;
   status = run(handle, line, &answer);
   if (answer != NULL) show(line, answer);
-  if (status == SEPTUM_NO_WALL) fputs("septum: no wall fits\n", stderr);
+  if (status == SEPTUM_NO_WALL) fputs("septum: no wall; the answer says why\n", stderr);
   septum_answer_free(answer);
   septum_close(handle);
   return status;

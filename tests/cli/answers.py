@@ -1,5 +1,5 @@
 """Answers of the command checked as a program that reads them would: see check_answers.sh."""
-import csv, glob, io, json, os, subprocess, sys, tempfile
+import csv, glob, io, json, os, re, shutil, subprocess, sys, tempfile
 from decimal import ROUND_HALF_UP, Decimal
 from jsonschema import Draft202012Validator
 
@@ -182,6 +182,24 @@ def check_pick(path):
             say(where, "price of %s" % price["rule"])
 
 
+def check_model(path):
+    """The saved 0-1 model, solved by GLPK's own program, costs what pick says, to the cent."""
+    where = "model of " + os.path.basename(path)
+    with tempfile.TemporaryDirectory() as folder:
+        model, report = folder + "/model.lp", folder + "/report"
+        data = json.loads(run("pick", path, "--json", "--save-model", model)[1])
+        subprocess.run(["glpsol", "--lp", model, "-o", report], capture_output=True, check=True)
+        with open(report, encoding="utf-8") as f:
+            words = f.read()
+    solved = re.search(r"Status: +INTEGER OPTIMAL", words) is not None
+    if solved != (data["status"] == "optimal"):
+        say(where, "pick says %s" % data["status"])
+    elif solved:
+        found = float(re.search(r"Objective: .* = +(\S+)", words).group(1))
+        if abs(found - data["objective"]) > 0.005:
+            say(where, "costs %s, pick says %s" % (found, data["objective"]))
+
+
 for wall_line in WALLS:
     check_wall(wall_line)
 count = 0
@@ -189,6 +207,8 @@ for brief in sorted(glob.glob(source + "/docs/examples/*.json")):
     with open(brief, encoding="utf-8") as opened:
         if json.load(opened)["septum"] == "brief/1":
             check_pick(brief)
+            if shutil.which("glpsol"):
+                check_model(brief)
             count += 1
 print("%d walls, %d briefs, %d faults" % (len(WALLS), count, faults))
 sys.exit(1 if faults or count == 0 else 0)

@@ -113,16 +113,28 @@ START_TEST(null_is_fine) {
 }
 END_TEST
 
-/* One try of everything with the n-th allocation failing; true when nothing failed. */
-static bool try_all(long n) {
+typedef septum_status (*try_call)(septum *handle, const septum_options *options,
+                                  septum_answer **out);
+
+static septum_status try_rate(septum *handle, const septum_options *options, septum_answer **out) {
+  septum_options judged = *options;
+  judged.brief = BRIEF;
+  return septum_rate(handle, WALL, &judged, out);
+}
+
+static septum_status try_pick(septum *handle, const septum_options *options, septum_answer **out) {
+  return septum_pick(handle, BRIEF, options, out);
+}
+
+/* Opens and calls with the n-th allocation failing; true when nothing failed. */
+static bool try_all(try_call try, long n) {
   heard h = {0};
   septum *handle = NULL;
   septum_answer *answer = NULL;
   septum_options options = usual();
-  options.brief = BRIEF;
   arena_fail_at(n);
   septum_status status = septum_open(CATALOGS, listen, &h, &handle);
-  if (status == SEPTUM_OK) status = septum_rate(handle, WALL, &options, &answer);
+  if (status == SEPTUM_OK) status = try(handle, &options, &answer);
   arena_fail_at(0);
   bool failed = h.errors > 0;
   if (failed) {
@@ -136,17 +148,26 @@ static bool try_all(long n) {
   return !failed;
 }
 
-/* Every one of the first allocations fails once, then ever fewer of the many that follow. */
-START_TEST(memory_runs_out_anywhere) {
-  enum { EACH = 100, GROWTH_PERCENT = 8, MANY = 100000000 };
+/* Every one of the first `each` allocations fails once, then ever fewer of the many that follow. */
+static void fail_anywhere(try_call try, long each, long growth_percent) {
+  enum { MANY = 100000000 };
   long n = 1;
-  int failures = 0;
-  while (n < MANY && !try_all(n)) {
+  long failures = 0;
+  while (n < MANY && !try_all(try, n)) {
     failures++;
-    n = n < EACH ? n + 1 : n + n * GROWTH_PERCENT / 100;
+    n = n < each ? n + 1 : n + n * growth_percent / 100;
   }
-  ck_assert_int_gt(failures, EACH);
+  ck_assert_int_gt((int)failures, (int)each);
   ck_assert_int_lt((int)n, MANY);
+}
+
+START_TEST(memory_runs_out_in_rate) {
+  fail_anywhere(try_rate, 100, 8);
+}
+END_TEST
+
+START_TEST(memory_runs_out_in_pick) {
+  fail_anywhere(try_pick, 20, 20);
 }
 END_TEST
 
@@ -162,7 +183,8 @@ int main(void) {
   suite_add_tcase(suite, cases);
   TCase *memory = tcase_create("memory");
   tcase_set_timeout(memory, 300);
-  tcase_add_test(memory, memory_runs_out_anywhere);
+  tcase_add_test(memory, memory_runs_out_in_rate);
+  tcase_add_test(memory, memory_runs_out_in_pick);
   suite_add_tcase(suite, memory);
   SRunner *runner = srunner_create(suite);
   srunner_run_all(runner, CK_NORMAL);

@@ -1,0 +1,1 @@
+$SEPTUM pick $EXAMPLES/impossible.json

@@ -1,0 +1,1 @@
+$SEPTUM pick $EXAMPLES/one-hour.json --save-model nowhere/m.lp
