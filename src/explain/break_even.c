@@ -1,20 +1,22 @@
-/* How far one price may move before another wall is cheaper. Before rounding, cost is linear in every price: a wall that takes q of
- * an item costs d f q more when its price rises by d, f being the markups. So the chosen wall is passed by wall j at
- * d = (c_j - c) / (f (q - q_j)). All walls that keep the rules are tried: one that another beats today may win tomorrow. */
+/* How far one price may move before another wall is cheaper. Before rounding, cost is linear in
+ * every price: a wall that takes q of an item costs d f q more when its price rises by d, f being
+ * the markups. So the chosen wall is passed by wall j at d = (c_j - c) / (f (q - q_j)). All walls
+ * that keep the rules are tried: one that another beats today may win tomorrow. */
 #include <math.h>
 
 #include "explain/explain.h"
 #include "wall/line.h"
 
 enum { ITEMS_MAX = COST_MAX_LINES / 2 + TRADE_COUNT };
-static const double same_quantity = 1e-9; /* relative: what sums of products differ by in the last bits */
+static const double same_quantity =
+    1e-9; /* relative: what sums of products differ by in the last bits */
 
 /* A price that is watched: an item of the chosen wall, or a labour rate. */
 typedef struct watched {
-  int item;            /* CATALOG_NONE for a labour rate */
-  trade trade;         /* of a labour rate */
+  int item;                       /* CATALOG_NONE for a labour rate */
+  trade trade;                    /* of a labour rate */
   double markup, price, quantity; /* of the chosen wall; hours for a rate */
-  double up, down;     /* least moves found; HUGE_VAL = none */
+  double up, down;                /* least moves found; HUGE_VAL = none */
   candidate up_wall, down_wall;
 } watched;
 
@@ -31,15 +33,19 @@ typedef struct scan {
   const judge_context *context;
   int count;
   watched price[ITEMS_MAX];
-  double cost;                 /* of the chosen wall */
-  part **core;                 /* per core, made when needed */
-  size_t spacings;             /* of studs and mounts in the catalog */
-  part ***leaves;              /* spacings x spacings, each face_count x face_count, made when needed */
-  takeoff lines;               /* scratch */
+  double cost;     /* of the chosen wall */
+  part **core;     /* per core, made when needed */
+  size_t spacings; /* of studs and mounts in the catalog */
+  part ***leaves;  /* spacings x spacings, each face_count x face_count, made when needed */
+  takeoff lines;   /* scratch */
 } scan;
 
-static double material_markup(const price_book *b) { return (1 + b->sales_tax) * (1 + b->overhead_profit); }
-static double labour_markup(const price_book *b) { return 1 + b->overhead_profit; }
+static double material_markup(const price_book *b) {
+  return (1 + b->sales_tax) * (1 + b->overhead_profit);
+}
+static double labour_markup(const price_book *b) {
+  return 1 + b->overhead_profit;
+}
 
 /* ---- what a wall takes ---- */
 
@@ -58,7 +64,8 @@ static void sum_lines(scan *s, int first, int last, part *out) {
   for (int k = first; k < last; k++) {
     const cost_line *l = &s->lines.line[k];
     if (l->kind == LINE_MARKUP) continue;
-    out->cost += l->quantity * l->rate * (l->kind == LINE_MATERIAL ? material_markup(book) : labour_markup(book));
+    out->cost += l->quantity * l->rate *
+                 (l->kind == LINE_MATERIAL ? material_markup(book) : labour_markup(book));
     for (int i = 0; i < s->count; i++)
       if (is_of(s, &s->price[i], l)) out->quantity[i] += l->quantity;
   }
@@ -90,11 +97,13 @@ static size_t spacing_index(const scan *s, const wall *core, int side) {
   return c->spacing_count + i;
 }
 
-/* Leaf lines follow those of the core; what they take depends on the spacing of the leaves' supports only. */
+/* Leaf lines follow those of the core; what they take depends on the spacing of the leaves'
+ * supports only. */
 static const part *leaves_part(scan *s, const feasible_wall *f) {
   const wall *core = &s->space->cores[f->core];
   size_t n = (size_t)s->space->face_count;
-  part ***table = &s->leaves[spacing_index(s, core, SIDE_A) * s->spacings + spacing_index(s, core, SIDE_B)];
+  part ***table =
+      &s->leaves[spacing_index(s, core, SIDE_A) * s->spacings + spacing_index(s, core, SIDE_B)];
   if (!*table) *table = arena_array(s->arena, n * n, sizeof **table);
   part **place = &(*table)[(size_t)f->face_a * n + f->face_b];
   if (!*place) {
@@ -138,7 +147,10 @@ static void watch_chosen(scan *s, const wall *w) {
       watch(s, (watched){.item = l->item, .markup = material_markup(book), .price = l->rate});
   }
   for (int t = 0; t < TRADE_COUNT; t++)
-    watch(s, (watched){.item = CATALOG_NONE, .trade = (trade)t, .markup = labour_markup(book), .price = book->rate[t]});
+    watch(s, (watched){.item = CATALOG_NONE,
+                       .trade = (trade)t,
+                       .markup = labour_markup(book),
+                       .price = book->rate[t]});
   part whole;
   sum_lines(s, 0, s->lines.count, &whole);
   s->cost = whole.cost;
@@ -148,7 +160,8 @@ static void watch_chosen(scan *s, const wall *w) {
 /* ---- the walls ---- */
 
 /* Whether a wall would pass the chosen one sooner than what is known. */
-static bool sooner(const scan *s, const watched *w, double cost, double quantity, double *move, bool *up) {
+static bool sooner(const scan *s, const watched *w, double cost, double quantity, double *move,
+                   bool *up) {
   double less = w->quantity - quantity;
   if (fabs(less) <= same_quantity * fmax(w->quantity, quantity)) return false;
   *up = less > 0;
@@ -168,8 +181,10 @@ static void try_wall(scan *s, const feasible_wall *f) {
     if (!sure && !sweep_confirms(s->space, f)) return;
     sure = true;
     candidate c = {.core = f->core, .face_a = f->face_a, .face_b = f->face_b};
-    if (up) w->up = move, w->up_wall = c;
-    else w->down = move, w->down_wall = c;
+    if (up)
+      w->up = move, w->up_wall = c;
+    else
+      w->down = move, w->down_wall = c;
   }
 }
 
@@ -181,7 +196,8 @@ static const char *line_of(const scan *s, const candidate *c) {
 }
 
 static void answer(const scan *s, const watched *w, explain_break_even *out) {
-  static const char *const trades[TRADE_COUNT] = {"labour hanger", "labour taper", "labour insulator"};
+  static const char *const trades[TRADE_COUNT] = {"labour hanger", "labour taper",
+                                                  "labour insulator"};
   const price_book *book = s->context->prices;
   bool labour = w->item == CATALOG_NONE;
   *out = (explain_break_even){.price = w->price};
@@ -199,7 +215,8 @@ static void answer(const scan *s, const watched *w, explain_break_even *out) {
   }
 }
 
-void explain_break_evens(arena *a, const space *sp, const sweep_result *r, const candidate *chosen, explanation *out) {
+void explain_break_evens(arena *a, const space *sp, const sweep_result *r, const candidate *chosen,
+                         explanation *out) {
   scan *s = arena_alloc(a, sizeof *s);
   s->arena = a;
   s->space = sp;
@@ -214,5 +231,6 @@ void explain_break_evens(arena *a, const space *sp, const sweep_result *r, const
     for (int i = 0; i < b->count; i++) try_wall(s, &b->wall[i]);
   out->break_even = arena_array(a, (size_t)s->count, sizeof *out->break_even);
   for (int i = 0; i < s->count; i++)
-    if (s->price[i].quantity > 0) answer(s, &s->price[i], &out->break_even[out->break_even_count++]);
+    if (s->price[i].quantity > 0)
+      answer(s, &s->price[i], &out->break_even[out->break_even_count++]);
 }

@@ -1,5 +1,6 @@
-/* A set of rules cannot hold together when every wall breaks one of them. With the sets of rules that walls break given, the
- * smallest such sets are their minimal hitting sets, built up one broken set after the other (Berge, Hypergraphs, 1989). */
+/* A set of rules cannot hold together when every wall breaks one of them. With the sets of rules
+ * that walls break given, the smallest such sets are their minimal hitting sets, built up one
+ * broken set after the other (Berge, Hypergraphs, 1989). */
 #include <stdlib.h>
 #include <string.h>
 

@@ -17,10 +17,12 @@ static bool same_wall(const candidate *x, const candidate *y) {
 
 /* ---- beside the chosen wall ---- */
 
-static void list_runners(arena *a, const space *s, const sweep_result *r, const candidate *chosen, explanation *out) {
+static void list_runners(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
+                         explanation *out) {
   out->runners = arena_array(a, RUNNERS_SHOWN, sizeof *out->runners);
   for (int i = 0; i < r->runner_count && out->runner_count < RUNNERS_SHOWN; i++)
-    if (!same_wall(&r->runners[i], chosen)) out->runners[out->runner_count++] = judge(a, s, &r->runners[i]);
+    if (!same_wall(&r->runners[i], chosen))
+      out->runners[out->runner_count++] = judge(a, s, &r->runners[i]);
 }
 
 typedef struct ranked {
@@ -46,14 +48,19 @@ static int fewest_rules(const void *x, const void *y) {
 static int nearest_first(const void *x, const void *y) {
   const ranked *p = x, *q = y;
   if (p->rules != q->rules) return p->rules - q->rules;
-  if (p->shortfall < q->shortfall || p->shortfall > q->shortfall) return p->shortfall < q->shortfall ? -1 : 1;
+  if (p->shortfall < q->shortfall || p->shortfall > q->shortfall)
+    return p->shortfall < q->shortfall ? -1 : 1;
   return compare_cost(p, q);
 }
 
-static int cheapest_first(const void *x, const void *y) { return compare_cost(x, y); }
+static int cheapest_first(const void *x, const void *y) {
+  return compare_cost(x, y);
+}
 
-/* Of the cheaper walls those that fail the fewest rules, cheapest last: what a little more money brings comes last. */
-static void list_cheaper(arena *a, const space *s, const sweep_result *r, const candidate *chosen, explanation *out) {
+/* Of the cheaper walls those that fail the fewest rules, cheapest last: what a little more money
+ * brings comes last. */
+static void list_cheaper(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
+                         explanation *out) {
   ranked *rank = arena_array(a, (size_t)r->mask_count, sizeof *rank);
   int n = 0;
   for (int i = 0; i < r->mask_count; i++) {
@@ -71,9 +78,12 @@ static void list_cheaper(arena *a, const space *s, const sweep_result *r, const 
 
 /* ---- when nothing fits ---- */
 
-static double part(double over, double of) { return over > 0 && of > 0 ? over / of : 0; }
+static double part(double over, double of) {
+  return over > 0 && of > 0 ? over / of : 0;
+}
 
-/* How far a wall is from what it breaks, relative and summed; a rule that is kept or broken as a whole counts one. */
+/* How far a wall is from what it breaks, relative and summed; a rule that is kept or broken as a
+ * whole counts one. */
 static double shortfall_of(const brief *b, const candidate *c) {
   rule_limits l = rules_limits(b);
   double needed = b->target_count > 0 ? judge_needed(&b->targets[0], b->field_mean) : 0;
@@ -82,15 +92,33 @@ static double shortfall_of(const brief *b, const candidate *c) {
     if (!(c->broken & rule_bit(rule))) continue;
     switch (rule) {
     case RULE_TARGET:
-    case RULE_CONFIDENCE: sum += part(-c->is.promised_hundredth * 0.01, needed); break;
-    case RULE_THICKNESS_MAX: sum += part(c->is.thickness_tenth_mm - l.thickness_max, l.thickness_max); break;
-    case RULE_THICKNESS_MIN: sum += part(l.thickness_min - c->is.thickness_tenth_mm, l.thickness_min); break;
-    case RULE_MASS_MAX: sum += part(c->is.mass_hundredth - l.mass_max, l.mass_max); break;
-    case RULE_MASS_MIN: sum += part(l.mass_min - c->is.mass_hundredth, l.mass_min); break;
-    case RULE_COST_MAX: sum += part((double)(c->is.total_cents - l.total_max), (double)l.total_max); break;
-    case RULE_FIRE: sum += part(l.fire_min - c->is.fire_min, l.fire_min); break;
-    case RULE_HEIGHT: sum += part(l.height_mm - c->is.height_mm, l.height_mm); break;
-    default: sum += 1; break;
+    case RULE_CONFIDENCE:
+      sum += part(-c->is.promised_hundredth * 0.01, needed);
+      break;
+    case RULE_THICKNESS_MAX:
+      sum += part(c->is.thickness_tenth_mm - l.thickness_max, l.thickness_max);
+      break;
+    case RULE_THICKNESS_MIN:
+      sum += part(l.thickness_min - c->is.thickness_tenth_mm, l.thickness_min);
+      break;
+    case RULE_MASS_MAX:
+      sum += part(c->is.mass_hundredth - l.mass_max, l.mass_max);
+      break;
+    case RULE_MASS_MIN:
+      sum += part(l.mass_min - c->is.mass_hundredth, l.mass_min);
+      break;
+    case RULE_COST_MAX:
+      sum += part((double)(c->is.total_cents - l.total_max), (double)l.total_max);
+      break;
+    case RULE_FIRE:
+      sum += part(l.fire_min - c->is.fire_min, l.fire_min);
+      break;
+    case RULE_HEIGHT:
+      sum += part(l.height_mm - c->is.height_mm, l.height_mm);
+      break;
+    default:
+      sum += 1;
+      break;
     }
   }
   return sum;
@@ -102,7 +130,8 @@ static bool listed(const ranked *rank, int count, rule_mask broken) {
   return false;
 }
 
-/* The nearest wall of each set of broken rules stands in the frontier: what beats it is no further away. */
+/* The nearest wall of each set of broken rules stands in the frontier: what beats it is no further
+ * away. */
 static void list_nearest(arena *a, const space *s, const sweep_result *r, explanation *out) {
   ranked *rank = arena_array(a, (size_t)r->frontier_count, sizeof *rank);
   for (int i = 0; i < r->frontier_count; i++) {
@@ -127,7 +156,8 @@ static void list_conflicts(arena *a, const sweep_result *r, explanation *out) {
 
 /* ---- the whole ---- */
 
-void explain_pick(arena *a, const space *s, const sweep_result *r, const pick_choice *p, explanation *out) {
+void explain_pick(arena *a, const space *s, const sweep_result *r, const pick_choice *p,
+                  explanation *out) {
   *out = (explanation){.walls = r->walls, .frontier = r->frontier_count, .status = p->status};
   if (p->found) {
     out->chosen = judge(a, s, &p->chosen);

@@ -1,4 +1,5 @@
-/* What one rule costs: the chosen wall against the cheapest that may break that rule and no other. */
+/* What one rule costs: the chosen wall against the cheapest that may break that rule and no other.
+ */
 #include "explain/explain.h"
 #include "search/cheapest.h"
 
@@ -29,10 +30,15 @@ static void relax_side(brief *b, int rule) {
     b->side[rule - RULE_FASTENING_A].fastening_length_m = 0;
     break;
   case RULE_WET_A:
-  case RULE_WET_B: b->side[rule - RULE_WET_A].wet = false; break;
+  case RULE_WET_B:
+    b->side[rule - RULE_WET_A].wet = false;
+    break;
   case RULE_ABUSE_A:
-  case RULE_ABUSE_B: b->side[rule - RULE_ABUSE_A].abuse = false; break;
-  default: break;
+  case RULE_ABUSE_B:
+    b->side[rule - RULE_ABUSE_A].abuse = false;
+    break;
+  default:
+    break;
   }
 }
 
@@ -45,29 +51,54 @@ bool explain_relax(const brief *b, int rule, brief *out) {
   switch (rule) {
   case RULE_CONFIDENCE:
   case RULE_EVIDENCE:
-  case RULE_COMPOSITE: relax_targets(out, rule); return true;
-  case RULE_THICKNESS_MAX: out->thickness_m.has_max = false; return true;
-  case RULE_THICKNESS_MIN: out->thickness_m.has_min = false; return true;
-  case RULE_MASS_MAX: out->mass_kg_m2.has_max = false; return true;
-  case RULE_MASS_MIN: out->mass_kg_m2.has_min = false; return true;
-  case RULE_COST_MAX: out->cost_per_m2.has_max = false; return true;
-  case RULE_FIRE: out->fire_min = 0; return true;
-  case RULE_LOADBEARING: out->loadbearing = false; return true;
-  case RULE_NONCOMBUSTIBLE: out->noncombustible = NONCOMBUSTIBLE_NO; return true;
-  case RULE_SHEAR: out->shear_side = CATALOG_NONE; return true;
-  case RULE_SERVICES: out->riser_m = out->run_m = 0; return true;
+  case RULE_COMPOSITE:
+    relax_targets(out, rule);
+    return true;
+  case RULE_THICKNESS_MAX:
+    out->thickness_m.has_max = false;
+    return true;
+  case RULE_THICKNESS_MIN:
+    out->thickness_m.has_min = false;
+    return true;
+  case RULE_MASS_MAX:
+    out->mass_kg_m2.has_max = false;
+    return true;
+  case RULE_MASS_MIN:
+    out->mass_kg_m2.has_min = false;
+    return true;
+  case RULE_COST_MAX:
+    out->cost_per_m2.has_max = false;
+    return true;
+  case RULE_FIRE:
+    out->fire_min = 0;
+    return true;
+  case RULE_LOADBEARING:
+    out->loadbearing = false;
+    return true;
+  case RULE_NONCOMBUSTIBLE:
+    out->noncombustible = NONCOMBUSTIBLE_NO;
+    return true;
+  case RULE_SHEAR:
+    out->shear_side = CATALOG_NONE;
+    return true;
+  case RULE_SERVICES:
+    out->riser_m = out->run_m = 0;
+    return true;
   case RULE_FASTENING_A:
   case RULE_FASTENING_B:
   case RULE_WET_A:
   case RULE_WET_B:
   case RULE_ABUSE_A:
-  case RULE_ABUSE_B: relax_side(out, rule); return true;
-  default: return false;
+  case RULE_ABUSE_B:
+    relax_side(out, rule);
+    return true;
+  default:
+    return false;
   }
 }
 
-/* Rules that do more than refuse walls: with them goes backing or a third plate, fire rows change, other leaves are
- * enumerated. What they cost is found by picking anew. */
+/* Rules that do more than refuse walls: with them goes backing or a third plate, fire rows change,
+ * other leaves are enumerated. What they cost is found by picking anew. */
 static bool changes_walls(int rule) {
   switch (rule) {
   case RULE_FIRE:
@@ -77,8 +108,10 @@ static bool changes_walls(int rule) {
   case RULE_WET_A:
   case RULE_WET_B:
   case RULE_ABUSE_A:
-  case RULE_ABUSE_B: return true;
-  default: return false;
+  case RULE_ABUSE_B:
+    return true;
+  default:
+    return false;
   }
 }
 
@@ -124,8 +157,8 @@ static const char *words_after(const brief *b, int rule) {
   return "not asked";
 }
 
-static void price(arena *a, const space *s, const sweep_result *r, const candidate *chosen, int rule,
-                  explain_rule_price *out) {
+static void price(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
+                  int rule, explain_rule_price *out) {
   const brief *b = s->context->brief;
   relaxed best = without_rule(a, s, r, rule);
   *out = (explain_rule_price){.rule = rule, .reachable = best.found};
@@ -140,7 +173,8 @@ static void price(arena *a, const space *s, const sweep_result *r, const candida
   judge_wall(a, s->context, &best.wall, out->wall);
 }
 
-void explain_prices(arena *a, const space *s, const sweep_result *r, const candidate *chosen, explanation *out) {
+void explain_prices(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
+                    explanation *out) {
   const rule_mask never = rule_bit(RULE_TARGET) | rule_bit(RULE_ONLY) | rule_bit(RULE_PRICE);
   rule_mask on = rules_in_force(s->context->brief) & ~never;
   out->prices = arena_array(a, (size_t)rules_count(on), sizeof *out->prices);

@@ -8,12 +8,14 @@ typedef struct candidate {
   int core, face_a, face_b; /* of the space */
   wall_numbers is;
   rule_mask broken;
-  rule_mask instead;        /* see judge_sound: another set without which it would pass; 0 = none */
+  rule_mask instead; /* see judge_sound: another set without which it would pass; 0 = none */
 } candidate;
 
-/* Tie order: cost, thickness, mass, wall line. Below 0 when `x` comes first; 0 only for the same wall. */
+/* Tie order: cost, thickness, mass, wall line. Below 0 when `x` comes first; 0 only for the same
+ * wall. */
 int candidate_compare(const space *s, const candidate *x, const candidate *y);
-/* Whether `x` passes wherever `y` does when rules are given up: each set that saves `y` saves `x`. */
+/* Whether `x` passes wherever `y` does when rules are given up: each set that saves `y` saves `x`.
+ */
 bool candidate_passes_where(const candidate *x, const candidate *y);
 
 #endif

@@ -23,13 +23,14 @@ static bool better(const finder *f, const candidate *c) {
   return !f->found || candidate_compare(f->space, c, &f->best) < 0;
 }
 
-/* Walls of one row that keep every rule but perhaps those of sound. Returns how many; *first and *last span them. */
+/* Walls of one row that keep every rule but perhaps those of sound. Returns how many; *first and
+ * *last span them. */
 static int open_row(finder *f, int face_a, int *first, int *last) {
   int count = 0;
   for (int j = 0; j < f->space->face_count; j++) {
     candidate *c = &f->wall[j];
-    f->open[j] = space_legal(f->space, f->core.core, face_a, j) && tables_wall(f->tables, &f->core, face_a, j, c) &&
-                 c->broken == 0 && better(f, c);
+    f->open[j] = space_legal(f->space, f->core.core, face_a, j) &&
+                 tables_wall(f->tables, &f->core, face_a, j, c) && c->broken == 0 && better(f, c);
     if (!f->open[j]) continue;
     if (count++ == 0) *first = j;
     *last = j;

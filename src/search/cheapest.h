@@ -1,5 +1,6 @@
-/* The cheapest wall of a space that breaks nothing, and no more than that: rates only what is cheaper than the best so far. What a
- * rule costs is found this way where giving it up changes the takeoff; tests hold it against the 0-1 model. */
+/* The cheapest wall of a space that breaks nothing, and no more than that: rates only what is
+ * cheaper than the best so far. What a rule costs is found this way where giving it up changes the
+ * takeoff; tests hold it against the 0-1 model. */
 #ifndef SEARCH_CHEAPEST_H
 #define SEARCH_CHEAPEST_H
 

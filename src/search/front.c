@@ -9,10 +9,13 @@ front_member front_exact(const candidate *c) {
   return (front_member){*c, c->is.promised_hundredth, c->broken, c->instead, true};
 }
 
-static bool counts(const front *f, int rule) { return (f->in_force & rule_bit(rule)) != 0; }
+static bool counts(const front *f, int rule) {
+  return (f->in_force & rule_bit(rule)) != 0;
+}
 
-/* Whether `x` at its worst can stand for `y` at its best everywhere: cheaper, or as dear and earlier in the order of ties, and no worse in any number
- * that a rule in force reads, nor in any rule. */
+/* Whether `x` at its worst can stand for `y` at its best everywhere: cheaper, or as dear and
+ * earlier in the order of ties, and no worse in any number that a rule in force reads, nor in any
+ * rule. */
 static bool beats(const front *f, const front_member *x, const front_member *y) {
   const wall_numbers *p = &x->wall.is, *q = &y->wall.is;
   if (p->cost_cents > q->cost_cents) return false;
@@ -49,7 +52,8 @@ void front_add(front *f, const front_member *m) {
   f->count = kept;
   if (f->count == f->cap) {
     int cap = f->cap ? 2 * f->cap : 256;
-    f->item = arena_grow(f->arena, f->item, (size_t)f->cap * sizeof *f->item, (size_t)cap * sizeof *f->item);
+    f->item = arena_grow(f->arena, f->item, (size_t)f->cap * sizeof *f->item,
+                         (size_t)cap * sizeof *f->item);
     f->cap = cap;
   }
   f->item[f->count++] = *m;

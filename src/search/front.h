@@ -1,17 +1,17 @@
-/* The walls that no other beats: what a choice under the brief, under any of its limits moved and under any of its rules given
- * up can need. See docs/design/search.md for why nothing is lost. */
+/* The walls that no other beats: what a choice under the brief, under any of its limits moved and
+ * under any of its rules given up can need. See docs/design/search.md for why nothing is lost. */
 #ifndef SEARCH_FRONT_H
 #define SEARCH_FRONT_H
 
 #include "search/candidate.h"
 
-/* A candidate whose sound is known only within bounds while the kernel's figure stands: `wall` is the best that it may turn out
- * to be, the rest the worst. */
+/* A candidate whose sound is known only within bounds while the kernel's figure stands: `wall` is
+ * the best that it may turn out to be, the rest the worst. */
 typedef struct front_member {
   candidate wall;
   int promised_least;
   rule_mask broken_most, instead_most;
-  bool exact;              /* rated by the reference: best and worst are the same */
+  bool exact; /* rated by the reference: best and worst are the same */
 } front_member;
 
 /* A member whose figures are those of the reference. */
@@ -20,8 +20,8 @@ front_member front_exact(const candidate *c);
 typedef struct front {
   arena *arena;
   const space *space;
-  rule_mask in_force;      /* a coordinate that no rule reads decides nothing */
-  bool floor_value;        /* cost and total differ */
+  rule_mask in_force; /* a coordinate that no rule reads decides nothing */
+  bool floor_value;   /* cost and total differ */
   front_member *item;
   int count, cap;
 } front;

@@ -25,7 +25,8 @@ static void judge_sound_of(const judge_context *x, assessment *out) {
   double tl_db[BANDS];
   judge_composite(x->brief, p, match, 0, tl_db);
   out->composite = rating_all(tl_db);
-  for (int m = 0; m < METRIC_COUNT; m++) out->composite_exact[m] = rating_exact(tl_db, (sound_metric)m);
+  for (int m = 0; m < METRIC_COUNT; m++)
+    out->composite_exact[m] = rating_exact(tl_db, (sound_metric)m);
   double most[METRIC_COUNT];
   judge_composite_most(x->brief, most);
   out->composite_ceiling = most[METRIC_STC];
@@ -58,25 +59,35 @@ static void judge_numbers(arena *a, const judge_context *x, assessment *out) {
 }
 
 typedef bool (*whole_check)(const catalog *c, const brief *b, const wall *w, const char **why);
-typedef bool (*side_check)(const catalog *c, const brief *b, const wall *w, int side, const char **why);
+typedef bool (*side_check)(const catalog *c, const brief *b, const wall *w, int side,
+                           const char **why);
 
-static void judge_structure(const judge_context *x, const char *why[RULE_FIXED_COUNT], assessment *out) {
-  static const struct { int rule; whole_check ok; } whole[] = {
+static void judge_structure(const judge_context *x, const char *why[RULE_FIXED_COUNT],
+                            assessment *out) {
+  static const struct {
+    int rule;
+    whole_check ok;
+  } whole[] = {
       {RULE_LOADBEARING, structure_bearing_ok},
       {RULE_NONCOMBUSTIBLE, structure_noncombustible_ok},
       {RULE_SHEAR, structure_shear_ok},
       {RULE_SERVICES, structure_services_ok},
   };
-  static const struct { int rule; side_check ok; } sides[] = {
+  static const struct {
+    int rule;
+    side_check ok;
+  } sides[] = {
       {RULE_FASTENING_A, structure_fastening_ok},
       {RULE_WET_A, structure_wet_ok},
       {RULE_ABUSE_A, structure_abuse_ok},
   };
   for (size_t i = 0; i < sizeof whole / sizeof whole[0]; i++)
-    if (!whole[i].ok(x->catalog, x->brief, &out->wall, &why[whole[i].rule])) out->broken |= rule_bit(whole[i].rule);
+    if (!whole[i].ok(x->catalog, x->brief, &out->wall, &why[whole[i].rule]))
+      out->broken |= rule_bit(whole[i].rule);
   for (size_t i = 0; i < sizeof sides / sizeof sides[0]; i++)
     for (int s = 0; s < 2; s++) /* B's rule follows A's */
-      if (!sides[i].ok(x->catalog, x->brief, &out->wall, s, &why[sides[i].rule + s])) out->broken |= rule_bit(sides[i].rule + s);
+      if (!sides[i].ok(x->catalog, x->brief, &out->wall, s, &why[sides[i].rule + s]))
+        out->broken |= rule_bit(sides[i].rule + s);
 }
 
 typedef struct id_rules {
@@ -107,7 +118,8 @@ void judge_wall(arena *a, const judge_context *x, const wall *w, assessment *out
   judge_records(w, note_rules, &ids);
   rule_limits limits = rules_limits(x->brief);
   out->broken |= ids.broken | rules_broken_by(&limits, &out->numbers);
-  const rule_mask sound = rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) | rule_bit(RULE_EVIDENCE) | rule_bit(RULE_COMPOSITE);
+  const rule_mask sound = rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) |
+                          rule_bit(RULE_EVIDENCE) | rule_bit(RULE_COMPOSITE);
   if (out->instead) out->instead |= out->broken & ~sound;
   judge_say_broken(a, x, why, out);
   judge_say_cautions(a, x, out);

@@ -35,7 +35,8 @@ typedef struct culprits {
 } culprits;
 
 static bool is_culprit(const culprits *u, catalog_kind kind, const char *id) {
-  if (u->rule == RULE_ONLY) return !rules_only_allows(u->context->catalog, u->context->brief, kind, id);
+  if (u->rule == RULE_ONLY)
+    return !rules_only_allows(u->context->catalog, u->context->brief, kind, id);
   return (rules_without(u->context->brief, kind, id) & rule_bit(u->rule)) != 0;
 }
 
@@ -44,7 +45,8 @@ static bool note_culprit(void *user, catalog_kind kind, int index) {
   const char *id = catalog_id(u->context->catalog, (catalog_ref){kind, index});
   for (int i = 0; i < u->count; i++)
     if (u->seen[i].kind == kind && u->seen[i].index == index) return true;
-  if (u->count == (int)(sizeof u->seen / sizeof u->seen[0]) || !is_culprit(u, kind, id)) return true;
+  if (u->count == (int)(sizeof u->seen / sizeof u->seen[0]) || !is_culprit(u, kind, id))
+    return true;
   u->seen[u->count++] = (catalog_ref){kind, index};
   text_putf(&u->words, "%s%s", u->words.len ? ", " : "", id);
   return true;
@@ -67,14 +69,16 @@ static int worst_target(const judge_context *x, const assessment *w) {
   return worst;
 }
 
-static const char *rating_words(arena *a, const judge_context *x, const assessment *w, bool composite) {
+static const char *rating_words(arena *a, const judge_context *x, const assessment *w,
+                                bool composite) {
   sound_metric m = x->brief->targets[worst_target(x, w)].metric;
   int printed = rating_of(composite ? &w->composite : &w->ratings, m);
   double exact = composite ? w->composite_exact[m] : w->exact[m];
   return text_format(a, "%s %d (%s)", sound_metric_names[m], printed, text_of(a, exact, 1));
 }
 
-static const char *put_words(arena *a, void (*put)(text *, double, units_system), double value, units_system u) {
+static const char *put_words(arena *a, void (*put)(text *, double, units_system), double value,
+                             units_system u) {
   text t;
   text_init(&t, a, 100);
   put(&t, value, u);
@@ -84,27 +88,44 @@ static const char *put_words(arena *a, void (*put)(text *, double, units_system)
 static const char *found_words(arena *a, const judge_context *x, const assessment *w, int rule) {
   const brief *b = x->brief;
   switch (rule) {
-  case RULE_TARGET: return rating_words(a, x, w, false);
-  case RULE_COMPOSITE: return rating_words(a, x, w, true);
-  case RULE_CONFIDENCE: return text_format(a, "%s %%", text_of(a, floor(100 * w->probability[worst_target(x, w)]), 0));
-  case RULE_EVIDENCE: return "a prediction";
+  case RULE_TARGET:
+    return rating_words(a, x, w, false);
+  case RULE_COMPOSITE:
+    return rating_words(a, x, w, true);
+  case RULE_CONFIDENCE:
+    return text_format(a, "%s %%", text_of(a, floor(100 * w->probability[worst_target(x, w)]), 0));
+  case RULE_EVIDENCE:
+    return "a prediction";
   case RULE_THICKNESS_MAX:
-  case RULE_THICKNESS_MIN: return put_words(a, units_put_thickness, w->thickness_m, b->units);
+  case RULE_THICKNESS_MIN:
+    return put_words(a, units_put_thickness, w->thickness_m, b->units);
   case RULE_MASS_MAX:
-  case RULE_MASS_MIN: return put_words(a, units_put_surface_mass, w->mass_kg_m2, b->units);
-  case RULE_COST_MAX: return text_format(a, "%s per m2", text_of(a, (double)w->cost.total_cents / 100 / w->cost.area_m2, 2));
-  case RULE_FIRE: return w->fire.minutes > 0 ? text_format(a, "%d min", w->fire.minutes) : "not shown";
-  case RULE_HEIGHT: return put_words(a, units_put_height, w->height.limit_m, b->units);
-  case RULE_PRICE: return text_format(a, "none for %s", w->takeoff.missing_code);
-  case RULE_ONLY: return culprit_ids(a, x, &w->wall, rule);
-  default: return rule >= RULE_WITHOUT ? culprit_ids(a, x, &w->wall, rule) : "it is not";
+  case RULE_MASS_MIN:
+    return put_words(a, units_put_surface_mass, w->mass_kg_m2, b->units);
+  case RULE_COST_MAX:
+    return text_format(a, "%s per m2",
+                       text_of(a, (double)w->cost.total_cents / 100 / w->cost.area_m2, 2));
+  case RULE_FIRE:
+    return w->fire.minutes > 0 ? text_format(a, "%d min", w->fire.minutes) : "not shown";
+  case RULE_HEIGHT:
+    return put_words(a, units_put_height, w->height.limit_m, b->units);
+  case RULE_PRICE:
+    return text_format(a, "none for %s", w->takeoff.missing_code);
+  case RULE_ONLY:
+    return culprit_ids(a, x, &w->wall, rule);
+  default:
+    return rule >= RULE_WITHOUT ? culprit_ids(a, x, &w->wall, rule) : "it is not";
   }
 }
 
 /* ---- by how much ---- */
 
-static double over(double found, double asked) { return asked > 0 ? fmax(0, found / asked - 1) : 1; }
-static double under(double found, double asked) { return asked > 0 ? fmax(0, 1 - found / asked) : 1; }
+static double over(double found, double asked) {
+  return asked > 0 ? fmax(0, found / asked - 1) : 1;
+}
+static double under(double found, double asked) {
+  return asked > 0 ? fmax(0, 1 - found / asked) : 1;
+}
 
 static double sound_shortfall(const judge_context *x, const assessment *w) {
   const target *t = &x->brief->targets[worst_target(x, w)];
@@ -121,20 +142,31 @@ static double shortfall(const judge_context *x, const assessment *w, int rule) {
   const brief *b = x->brief;
   switch (rule) {
   case RULE_TARGET:
-  case RULE_CONFIDENCE: return sound_shortfall(x, w);
-  case RULE_COMPOSITE: return composite_shortfall(x, w);
-  case RULE_THICKNESS_MAX: return over(w->thickness_m, b->thickness_m.max);
-  case RULE_THICKNESS_MIN: return under(w->thickness_m, b->thickness_m.min);
-  case RULE_MASS_MAX: return over(w->mass_kg_m2, b->mass_kg_m2.max);
-  case RULE_MASS_MIN: return under(w->mass_kg_m2, b->mass_kg_m2.min);
-  case RULE_COST_MAX: return over((double)w->cost.total_cents / 100 / w->cost.area_m2, b->cost_per_m2.max);
-  case RULE_FIRE: return under(w->fire.minutes, b->fire_min);
-  case RULE_HEIGHT: return under(w->height.limit_m, b->height_m);
-  default: return 1;
+  case RULE_CONFIDENCE:
+    return sound_shortfall(x, w);
+  case RULE_COMPOSITE:
+    return composite_shortfall(x, w);
+  case RULE_THICKNESS_MAX:
+    return over(w->thickness_m, b->thickness_m.max);
+  case RULE_THICKNESS_MIN:
+    return under(w->thickness_m, b->thickness_m.min);
+  case RULE_MASS_MAX:
+    return over(w->mass_kg_m2, b->mass_kg_m2.max);
+  case RULE_MASS_MIN:
+    return under(w->mass_kg_m2, b->mass_kg_m2.min);
+  case RULE_COST_MAX:
+    return over((double)w->cost.total_cents / 100 / w->cost.area_m2, b->cost_per_m2.max);
+  case RULE_FIRE:
+    return under(w->fire.minutes, b->fire_min);
+  case RULE_HEIGHT:
+    return under(w->height.limit_m, b->height_m);
+  default:
+    return 1;
   }
 }
 
-void judge_say_broken(arena *a, const judge_context *x, const char *const why[RULE_FIXED_COUNT], assessment *out) {
+void judge_say_broken(arena *a, const judge_context *x, const char *const why[RULE_FIXED_COUNT],
+                      assessment *out) {
   out->broken_count = 0;
   for (int rule = 0; rule < RULES_MAX; rule++) {
     if (!(out->broken & rule_bit(rule))) continue;
@@ -161,11 +193,13 @@ void judge_say_cautions(arena *a, const judge_context *x, assessment *out) {
   out->caution_count = 0;
   for (int i = 0; i < out->compat.count; i++) add_caution(out, out->compat.finding[i].reason);
   for (int i = 0; i < out->predicted.outside; i++)
-    add_caution(out, text_format(a, "The prediction goes beyond the walls it was fitted to: %s.", out->predicted.outside_reason[i]));
+    add_caution(out, text_format(a, "The prediction goes beyond the walls it was fitted to: %s.",
+                                 out->predicted.outside_reason[i]));
   for (int i = 0; i < out->evidence.caution_count; i++) add_caution(out, out->evidence.caution[i]);
   add_caution(out, out->fire.note);
   if (out->mounted)
-    add_caution(out, "A screw, box or fixture that reaches from the mounted leaf to a stud takes the gain of the mount away: "
+    add_caution(out, "A screw, box or fixture that reaches from the mounted leaf to a stud takes "
+                     "the gain of the mount away: "
                      "no fastening but to the leaf itself on that side.");
   const char *structure[STRUCTURE_MAX_CAUTIONS];
   int count = structure_cautions(x->catalog, x->brief, &out->wall, structure);

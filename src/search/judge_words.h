@@ -4,9 +4,10 @@
 
 #include "search/judge.h"
 
-/* Fills out->broke from out->broken; everything else of `out` must stand. `why` holds a sentence per fixed rule, NULL where
- * there is none. */
-void judge_say_broken(arena *a, const judge_context *x, const char *const why[RULE_FIXED_COUNT], assessment *out);
+/* Fills out->broke from out->broken; everything else of `out` must stand. `why` holds a sentence
+ * per fixed rule, NULL where there is none. */
+void judge_say_broken(arena *a, const judge_context *x, const char *const why[RULE_FIXED_COUNT],
+                      assessment *out);
 /* Fills out->caution. */
 void judge_say_cautions(arena *a, const judge_context *x, assessment *out);
 /* Every record that a wall uses, each once, with `visit`; stops when it answers false. */

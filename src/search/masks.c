@@ -21,7 +21,8 @@ void masks_init(masks *m, arena *a, const space *s) {
 /* Where the set stands, or would stand. */
 static size_t place_of(const masks *m, rule_mask broken) {
   size_t at = hash_of(broken, m->slots);
-  while (m->slot[at] >= 0 && m->item[m->slot[at]].broken != broken) at = (at + 1) & (size_t)(m->slots - 1);
+  while (m->slot[at] >= 0 && m->item[m->slot[at]].broken != broken)
+    at = (at + 1) & (size_t)(m->slots - 1);
   return at;
 }
 
@@ -37,7 +38,8 @@ bool masks_wants(const masks *m, rule_mask broken, const candidate *c) {
 
 static void grow(masks *m) {
   int cap = m->cap ? 2 * m->cap : FIRST_SLOTS / 2;
-  m->item = arena_grow(m->arena, m->item, (size_t)m->cap * sizeof *m->item, (size_t)cap * sizeof *m->item);
+  m->item = arena_grow(m->arena, m->item, (size_t)m->cap * sizeof *m->item,
+                       (size_t)cap * sizeof *m->item);
   m->cap = cap;
   if (2 * cap <= m->slots) return;
   make_slots(m, 2 * cap);

@@ -14,8 +14,8 @@ typedef struct masks {
   const space *space;
   mask_best *item; /* in order of first sight */
   int count, cap;
-  int *slot;       /* hash table of indices into item, -1 = free */
-  int slots;       /* a power of two */
+  int *slot; /* hash table of indices into item, -1 = free */
+  int slots; /* a power of two */
 } masks;
 
 void masks_init(masks *m, arena *a, const space *s);

@@ -7,7 +7,8 @@
 #include "checks/cost.h"
 #include "wall/wall.h"
 
-/* A thickness limit is kept by a wall up to 1/32 in beyond it (common practice, no source: prints go to 1/16 in). */
+/* A thickness limit is kept by a wall up to 1/32 in beyond it (common practice, no source: prints
+ * go to 1/16 in). */
 static const double thickness_slack_m = UNITS_M_PER_IN / 32;
 /* What sums of records may be off in the last bits, in units of the integer. */
 static const double last_bits = 1e-6;
@@ -56,7 +57,8 @@ const char *rule_name(arena *a, const brief *b, int rule) {
 
 typedef void (*put_length)(text *out, double metres, units_system u);
 
-static const char *length_words(arena *a, const char *sense, put_length put, double metres, units_system u) {
+static const char *length_words(arena *a, const char *sense, put_length put, double metres,
+                                units_system u) {
   text t;
   text_init(&t, a, 100);
   text_putf(&t, "%s ", sense);
@@ -64,7 +66,8 @@ static const char *length_words(arena *a, const char *sense, put_length put, dou
   return t.data;
 }
 
-/* "STC 50" or "STC 50, Rw 52": what has to be reached in the laboratory, margin and field allowance included. */
+/* "STC 50" or "STC 50, Rw 52": what has to be reached in the laboratory, margin and field allowance
+ * included. */
 static const char *target_words(arena *a, const brief *b, bool composite) {
   text t;
   text_init(&t, a, 300);
@@ -87,7 +90,8 @@ static const char *services_words(arena *a, const brief *b) {
   if (!(b->run_m > 0)) return length_words(a, "riser", units_put_thickness, b->riser_m, b->units);
   const char *run = length_words(a, "run", units_put_thickness, b->run_m, b->units);
   if (!(b->riser_m > 0)) return run;
-  return text_format(a, "%s, %s", length_words(a, "riser", units_put_thickness, b->riser_m, b->units), run);
+  return text_format(a, "%s, %s",
+                     length_words(a, "riser", units_put_thickness, b->riser_m, b->units), run);
 }
 
 static const char *mass_words(arena *a, const brief *b, const char *sense, double kg_m2) {
@@ -105,44 +109,70 @@ static const char *cost_words(arena *a, const brief *b) {
 static const char *fixed_words(const brief *b, int rule) {
   static const char *const fastenings[] = {"none", "light", "heavy"};
   switch (rule) {
-  case RULE_EVIDENCE: return "published ratings";
-  case RULE_LOADBEARING: return "carries load";
+  case RULE_EVIDENCE:
+    return "published ratings";
+  case RULE_LOADBEARING:
+    return "carries load";
   case RULE_NONCOMBUSTIBLE:
-    return b->noncombustible == NONCOMBUSTIBLE_STRICT ? "no combustible part" : "no combustible part but fire-retardant wood";
-  case RULE_SHEAR: return b->shear_side == SIDE_A ? "a shear panel on side A" : "a shear panel on side B";
-  case RULE_FASTENING_A: return fastenings[b->side[SIDE_A].fastening];
-  case RULE_FASTENING_B: return fastenings[b->side[SIDE_B].fastening];
+    return b->noncombustible == NONCOMBUSTIBLE_STRICT
+               ? "no combustible part"
+               : "no combustible part but fire-retardant wood";
+  case RULE_SHEAR:
+    return b->shear_side == SIDE_A ? "a shear panel on side A" : "a shear panel on side B";
+  case RULE_FASTENING_A:
+    return fastenings[b->side[SIDE_A].fastening];
+  case RULE_FASTENING_B:
+    return fastenings[b->side[SIDE_B].fastening];
   case RULE_WET_A:
-  case RULE_WET_B: return "a board for wet rooms";
+  case RULE_WET_B:
+    return "a board for wet rooms";
   case RULE_ABUSE_A:
-  case RULE_ABUSE_B: return "an abuse-resistant board";
-  case RULE_ONLY: return "the ids of `only`";
-  case RULE_PRICE: return "a price for every item";
-  default: return "none of these";
+  case RULE_ABUSE_B:
+    return "an abuse-resistant board";
+  case RULE_ONLY:
+    return "the ids of `only`";
+  case RULE_PRICE:
+    return "a price for every item";
+  default:
+    return "none of these";
   }
 }
 
 const char *rule_limit(arena *a, const brief *b, int rule) {
   if (!(rules_in_force(b) & rule_bit(rule))) return "";
   switch (rule) {
-  case RULE_TARGET: return target_words(a, b, false);
-  case RULE_COMPOSITE: return target_words(a, b, true);
-  case RULE_CONFIDENCE: return confidence_words(a, b);
-  case RULE_THICKNESS_MAX: return length_words(a, "<=", units_put_thickness, b->thickness_m.max, b->units);
-  case RULE_THICKNESS_MIN: return length_words(a, ">=", units_put_thickness, b->thickness_m.min, b->units);
-  case RULE_MASS_MAX: return mass_words(a, b, "<=", b->mass_kg_m2.max);
-  case RULE_MASS_MIN: return mass_words(a, b, ">=", b->mass_kg_m2.min);
-  case RULE_COST_MAX: return cost_words(a, b);
-  case RULE_FIRE: return text_format(a, ">= %d min", b->fire_min);
-  case RULE_HEIGHT: return length_words(a, ">=", units_put_height, b->height_m, b->units);
-  case RULE_SERVICES: return services_words(a, b);
-  default: return fixed_words(b, rule);
+  case RULE_TARGET:
+    return target_words(a, b, false);
+  case RULE_COMPOSITE:
+    return target_words(a, b, true);
+  case RULE_CONFIDENCE:
+    return confidence_words(a, b);
+  case RULE_THICKNESS_MAX:
+    return length_words(a, "<=", units_put_thickness, b->thickness_m.max, b->units);
+  case RULE_THICKNESS_MIN:
+    return length_words(a, ">=", units_put_thickness, b->thickness_m.min, b->units);
+  case RULE_MASS_MAX:
+    return mass_words(a, b, "<=", b->mass_kg_m2.max);
+  case RULE_MASS_MIN:
+    return mass_words(a, b, ">=", b->mass_kg_m2.min);
+  case RULE_COST_MAX:
+    return cost_words(a, b);
+  case RULE_FIRE:
+    return text_format(a, ">= %d min", b->fire_min);
+  case RULE_HEIGHT:
+    return length_words(a, ">=", units_put_height, b->height_m, b->units);
+  case RULE_SERVICES:
+    return services_words(a, b);
+  default:
+    return fixed_words(b, rule);
   }
 }
 
 /* ---- in force ---- */
 
-static rule_mask bit_if(bool asked, int rule) { return asked ? rule_bit(rule) : 0; }
+static rule_mask bit_if(bool asked, int rule) {
+  return asked ? rule_bit(rule) : 0;
+}
 
 static rule_mask targets_in_force(const brief *b) {
   rule_mask m = bit_if(b->target_count > 0, RULE_TARGET);
@@ -156,37 +186,54 @@ static rule_mask targets_in_force(const brief *b) {
 
 rule_mask rules_in_force(const brief *b) {
   rule_mask m = targets_in_force(b) | rule_bit(RULE_HEIGHT) | rule_bit(RULE_PRICE);
-  m |= bit_if(b->thickness_m.has_max, RULE_THICKNESS_MAX) | bit_if(b->thickness_m.has_min, RULE_THICKNESS_MIN);
+  m |= bit_if(b->thickness_m.has_max, RULE_THICKNESS_MAX) |
+       bit_if(b->thickness_m.has_min, RULE_THICKNESS_MIN);
   m |= bit_if(b->mass_kg_m2.has_max, RULE_MASS_MAX) | bit_if(b->mass_kg_m2.has_min, RULE_MASS_MIN);
   m |= bit_if(b->cost_per_m2.has_max, RULE_COST_MAX) | bit_if(b->fire_min > 0, RULE_FIRE);
-  m |= bit_if(b->loadbearing, RULE_LOADBEARING) | bit_if(b->noncombustible != NONCOMBUSTIBLE_NO, RULE_NONCOMBUSTIBLE);
-  m |= bit_if(b->shear_side != CATALOG_NONE, RULE_SHEAR) | bit_if(b->riser_m > 0 || b->run_m > 0, RULE_SERVICES);
+  m |= bit_if(b->loadbearing, RULE_LOADBEARING) |
+       bit_if(b->noncombustible != NONCOMBUSTIBLE_NO, RULE_NONCOMBUSTIBLE);
+  m |= bit_if(b->shear_side != CATALOG_NONE, RULE_SHEAR) |
+       bit_if(b->riser_m > 0 || b->run_m > 0, RULE_SERVICES);
   for (int s = 0; s < 2; s++) {
     m |= bit_if(b->side[s].fastening != FASTENING_NONE, RULE_FASTENING_A + s);
     m |= bit_if(b->side[s].wet, RULE_WET_A + s) | bit_if(b->side[s].abuse, RULE_ABUSE_A + s);
   }
   m |= bit_if(b->only_count > 0, RULE_ONLY);
-  for (int i = 0; i < b->without_count && i < RULES_MAX_WITHOUT; i++) m |= rule_bit(RULE_WITHOUT + i);
+  for (int i = 0; i < b->without_count && i < RULES_MAX_WITHOUT; i++)
+    m |= rule_bit(RULE_WITHOUT + i);
   return m;
 }
 
 /* ---- numbers ---- */
 
-static int nearest(double value) { return (int)floor(value + 0.5 + last_bits); }
+static int nearest(double value) {
+  return (int)floor(value + 0.5 + last_bits);
+}
 
-int rules_thickness(double metres) { return nearest(metres * 1e4); }
-int rules_mass(double kg_m2) { return nearest(kg_m2 * 100); }
-int rules_height(double metres) { return metres < INT_MAX * 1e-3 - 1 ? nearest(metres * 1e3) : INT_MAX; }
-int rules_promised(double margin_db) { return (int)floor(margin_db * 100 + last_bits); }
+int rules_thickness(double metres) {
+  return nearest(metres * 1e4);
+}
+int rules_mass(double kg_m2) {
+  return nearest(kg_m2 * 100);
+}
+int rules_height(double metres) {
+  return metres < INT_MAX * 1e-3 - 1 ? nearest(metres * 1e3) : INT_MAX;
+}
+int rules_promised(double margin_db) {
+  return (int)floor(margin_db * 100 + last_bits);
+}
 
 rule_limits rules_limits(const brief *b) {
   rule_limits l = {.total_max = LLONG_MAX, .thickness_max = INT_MAX, .mass_max = INT_MAX};
-  if (b->thickness_m.has_max) l.thickness_max = (int)floor((b->thickness_m.max + thickness_slack_m) * 1e4 + last_bits);
-  if (b->thickness_m.has_min) l.thickness_min = (int)ceil((b->thickness_m.min - thickness_slack_m) * 1e4 - last_bits);
+  if (b->thickness_m.has_max)
+    l.thickness_max = (int)floor((b->thickness_m.max + thickness_slack_m) * 1e4 + last_bits);
+  if (b->thickness_m.has_min)
+    l.thickness_min = (int)ceil((b->thickness_m.min - thickness_slack_m) * 1e4 - last_bits);
   if (b->mass_kg_m2.has_max) l.mass_max = (int)floor(b->mass_kg_m2.max * 100 + last_bits);
   if (b->mass_kg_m2.has_min) l.mass_min = (int)ceil(b->mass_kg_m2.min * 100 - last_bits);
   if (b->cost_per_m2.has_max)
-    l.total_max = (long long)floor(b->cost_per_m2.max * b->length_m * cost_built_height_m(b) * 100 + last_bits);
+    l.total_max = (long long)floor(b->cost_per_m2.max * b->length_m * cost_built_height_m(b) * 100 +
+                                   last_bits);
   l.height_mm = rules_height(b->height_m);
   l.fire_min = b->fire_min;
   return l;
@@ -195,8 +242,10 @@ rule_limits rules_limits(const brief *b) {
 rule_mask rules_broken_by(const rule_limits *l, const wall_numbers *n) {
   return bit_if(n->thickness_tenth_mm > l->thickness_max, RULE_THICKNESS_MAX) |
          bit_if(n->thickness_tenth_mm < l->thickness_min, RULE_THICKNESS_MIN) |
-         bit_if(n->mass_hundredth > l->mass_max, RULE_MASS_MAX) | bit_if(n->mass_hundredth < l->mass_min, RULE_MASS_MIN) |
-         bit_if(n->total_cents > l->total_max, RULE_COST_MAX) | bit_if(n->fire_min < l->fire_min, RULE_FIRE) |
+         bit_if(n->mass_hundredth > l->mass_max, RULE_MASS_MAX) |
+         bit_if(n->mass_hundredth < l->mass_min, RULE_MASS_MIN) |
+         bit_if(n->total_cents > l->total_max, RULE_COST_MAX) |
+         bit_if(n->fire_min < l->fire_min, RULE_FIRE) |
          bit_if(n->height_mm < l->height_mm, RULE_HEIGHT);
 }
 
@@ -222,11 +271,16 @@ rule_mask rules_without(const brief *b, catalog_kind kind, const char *id) {
 
 static size_t kind_count(const catalog *c, catalog_kind kind) {
   switch (kind) {
-  case CATALOG_LAYER: return c->layer_count;
-  case CATALOG_FRAME: return c->frame_count;
-  case CATALOG_FILL: return c->fill_count;
-  case CATALOG_MOUNT: return c->mount_count;
-  case CATALOG_KINDS: break;
+  case CATALOG_LAYER:
+    return c->layer_count;
+  case CATALOG_FRAME:
+    return c->frame_count;
+  case CATALOG_FILL:
+    return c->fill_count;
+  case CATALOG_MOUNT:
+    return c->mount_count;
+  case CATALOG_KINDS:
+    break;
   }
   return 0;
 }

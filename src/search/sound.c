@@ -4,13 +4,17 @@
 
 #include "acoustics/kernel.h"
 
-/* The kernel's ratings and the reference's are steps of 0.1 dB, so that within the kernel's error they are the same: that is relied
- * on to compare walls. What falls so near a limit is decided by the reference all the same. */
+/* The kernel's ratings and the reference's are steps of 0.1 dB, so that within the kernel's error
+ * they are the same: that is relied on to compare walls. What falls so near a limit is decided by
+ * the reference all the same. */
 static const double stray_db = KERNEL_ERROR_DB;
-/* The printed rating comes from the curve rounded to whole dB, which moves no band by more than 0.5 dB, and so the contour
- * neither; the exact one is stepped down by less than 0.1 dB. OITC is rounded half up once more. */
+/* The printed rating comes from the curve rounded to whole dB, which moves no band by more than 0.5
+ * dB, and so the contour neither; the exact one is stepped down by less than 0.1 dB. OITC is
+ * rounded half up once more. */
 static const double printed_below_db = 0.5;
-static double printed_above(sound_metric m) { return m == METRIC_OITC ? 1.1 : 0.6; }
+static double printed_above(sound_metric m) {
+  return m == METRIC_OITC ? 1.1 : 0.6;
+}
 
 static void add_metric(sound_aims *g, sound_metric m) {
   for (int i = 0; i < g->metrics; i++)
@@ -28,11 +32,13 @@ void sound_aims_set(const brief *b, sound_aims *out) {
   for (int i = 0; i < b->target_count; i++) {
     const target *t = &b->targets[i];
     sound_aim *a = &out->aim[i];
-    *a = (sound_aim){.metric = t->metric, .needed = judge_needed(t, b->field_mean), .z = judge_z(t->confidence)};
+    *a = (sound_aim){
+        .metric = t->metric, .needed = judge_needed(t, b->field_mean), .z = judge_z(t->confidence)};
     a->field = t->basis == BASIS_FIELD;
     a->published_only = t->evidence == EVIDENCE_PUBLISHED;
     a->composite = t->composite && b->opening_count > 0;
-    a->shut = a->composite && fmax(most[t->metric], floor(most[t->metric] + printed_above(t->metric))) < a->needed;
+    a->shut = a->composite &&
+              fmax(most[t->metric], floor(most[t->metric] + printed_above(t->metric))) < a->needed;
     add_metric(out, t->metric);
   }
 }
@@ -43,7 +49,8 @@ typedef struct range {
   bool published;
 } range;
 
-static range range_of(const sound_aims *g, const sound_aim *a, const double *exact, const double *sd, const wall_row *match) {
+static range range_of(const sound_aims *g, const sound_aim *a, const double *exact,
+                      const double *sd, const wall_row *match) {
   range r = {.spread = sd[a->metric], .published = match && a->metric == METRIC_STC};
   if (r.published) {
     r.exact = r.low = r.high = r.printed_low = r.printed_high = match->stc;
@@ -63,8 +70,10 @@ static int promise(double exact, double printed, const range *r, double needed, 
   return rules_promised(judge_margin(exact, printed, r->spread, r->published, needed, z));
 }
 
-/* The widest that openings make of it: nothing is sure, and the composite may lie above the wall. */
-static void bound_composite(const sound_aims *g, const sound_aim *a, const range *r, sound_bounds *out, int *most) {
+/* The widest that openings make of it: nothing is sure, and the composite may lie above the wall.
+ */
+static void bound_composite(const sound_aims *g, const sound_aim *a, const range *r,
+                            sound_bounds *out, int *most) {
   out->least.with = out->least.with_bare = false;
   if (a->shut) {
     out->most.with = out->most.with_bare = false;
@@ -74,20 +83,24 @@ static void bound_composite(const sound_aims *g, const sound_aim *a, const range
   if (r->published) printed = fmax(printed, r->printed_high);
   int with = promise(r->high + g->lift_db, printed, r, a->needed, a->z);
   out->most.with = out->most.with && with >= 0;
-  out->most.with_bare = out->most.with_bare && (with >= 0 || promise(r->high + g->lift_db, printed, r, a->needed, 0) >= 0);
+  out->most.with_bare = out->most.with_bare &&
+                        (with >= 0 || promise(r->high + g->lift_db, printed, r, a->needed, 0) >= 0);
   if (with > *most) *most = with;
 }
 
 static bool same_reach(const judge_reach *x, const judge_reach *y) {
-  return x->with == y->with && x->with_bare == y->with_bare && x->alone == y->alone && x->alone_bare == y->alone_bare;
+  return x->with == y->with && x->with_bare == y->with_bare && x->alone == y->alone &&
+         x->alone_bare == y->alone_bare;
 }
 
-void sound_bound(const sound_aims *g, const double *exact, const double *sd, const wall_row *match, sound_bounds *out) {
+void sound_bound(const sound_aims *g, const double *exact, const double *sd, const wall_row *match,
+                 sound_bounds *out) {
   *out = (sound_bounds){.least = {true, true, true, true}, .most = {true, true, true, true}};
   for (int i = 0; i < g->count; i++) {
     const sound_aim *a = &g->aim[i];
     range r = range_of(g, a, exact, sd, match);
-    int low = promise(r.low, r.printed_low, &r, a->needed, a->z), high = promise(r.high, r.printed_high, &r, a->needed, a->z);
+    int low = promise(r.low, r.printed_low, &r, a->needed, a->z),
+        high = promise(r.high, r.printed_high, &r, a->needed, a->z);
     int most = promise(r.exact, r.printed_high, &r, a->needed, a->z);
     bool bare_low = low >= 0 || promise(r.low, r.printed_low, &r, a->needed, 0) >= 0;
     bool bare_high = high >= 0 || promise(r.high, r.printed_high, &r, a->needed, 0) >= 0;

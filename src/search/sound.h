@@ -1,5 +1,5 @@
-/* What the kernel's rating of a wall says about the targets: within bounds, because the kernel is near the reference but not the
- * same, and gives no printed integer. */
+/* What the kernel's rating of a wall says about the targets: within bounds, because the kernel is
+ * near the reference but not the same, and gives no printed integer. */
 #ifndef SEARCH_SOUND_H
 #define SEARCH_SOUND_H
 
@@ -10,7 +10,7 @@ typedef struct sound_aim {
   sound_metric metric;
   double needed, z;
   bool field, composite, published_only;
-  bool shut;             /* composite: the openings alone keep every wall from it */
+  bool shut; /* composite: the openings alone keep every wall from it */
 } sound_aim;
 
 typedef struct sound_aims {
@@ -19,7 +19,8 @@ typedef struct sound_aims {
   sound_metric metric[METRIC_COUNT]; /* those that are asked for, each once */
   int metrics;
   double field_sd;
-  double lift_db;        /* what a composite may be above the wall itself: openings that let nothing through */
+  double lift_db; /* what a composite may be above the wall itself: openings that let nothing
+                     through */
 } sound_aims;
 
 typedef struct sound_bounds {
@@ -30,8 +31,10 @@ typedef struct sound_bounds {
 } sound_bounds;
 
 void sound_aims_set(const brief *b, sound_aims *out);
-/* `exact` by metric (METRIC_COUNT values, those asked for are set), from the kernel; `sd` of the wall; `match` or NULL. */
-void sound_bound(const sound_aims *g, const double *exact, const double *sd, const wall_row *match, sound_bounds *out);
+/* `exact` by metric (METRIC_COUNT values, those asked for are set), from the kernel; `sd` of the
+ * wall; `match` or NULL. */
+void sound_bound(const sound_aims *g, const double *exact, const double *sd, const wall_row *match,
+                 sound_bounds *out);
 
 enum { SOUND_MAX_OUTCOMES = 5 };
 /* The sets of broken rules of sound that a wall may turn out to have. Returns how many. */

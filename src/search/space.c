@@ -1,9 +1,10 @@
 /* The axes of the search.
  *
- * A leaf is equal finish boards, alone, over one other board, or with one membrane: in ordinary build at most two boards and
- * nothing that compat_face calls unusual, in any build up to three. A core is frame, spacing, gap, fills and mounts. What
- * compat_check would say of the whole wall is the union of what its pieces say, so that a wall is legal when its core, its
- * leaves, each leaf on its support and the pair are. Why these axes: docs/design/search.md. */
+ * A leaf is equal finish boards, alone, over one other board, or with one membrane: in ordinary
+ * build at most two boards and nothing that compat_face calls unusual, in any build up to three. A
+ * core is frame, spacing, gap, fills and mounts. What compat_check would say of the whole wall is
+ * the union of what its pieces say, so that a wall is legal when its core, its leaves, each leaf on
+ * its support and the pair are. Why these axes: docs/design/search.md. */
 #include "search/space.h"
 
 #include <string.h>
@@ -16,7 +17,7 @@ typedef struct builder {
   arena *arena;
   const catalog *catalog;
   const brief *brief;
-  compat_level most;  /* what a finding may be at most */
+  compat_level most; /* what a finding may be at most */
   space *out;
   size_t face_cap, core_cap;
 } builder;
@@ -39,15 +40,23 @@ static bool usable(const builder *u, catalog_kind kind, int index, bool ordinary
   return ordinary || named(u->brief, kind, id);
 }
 
-static bool any_build(const builder *u) { return u->brief->build == BUILD_ANY; }
+static bool any_build(const builder *u) {
+  return u->brief->build == BUILD_ANY;
+}
 
 static bool layer_usable(const builder *u, int i) {
   const layer *l = &u->catalog->layers[i];
   return usable(u, CATALOG_LAYER, i, l->ordinary || (any_build(u) && l->membrane));
 }
-static bool fill_usable(const builder *u, int i) { return usable(u, CATALOG_FILL, i, u->catalog->fills[i].ordinary); }
-static bool frame_usable(const builder *u, int i) { return usable(u, CATALOG_FRAME, i, u->catalog->frames[i].ordinary); }
-static bool mount_usable(const builder *u, int i) { return usable(u, CATALOG_MOUNT, i, true); }
+static bool fill_usable(const builder *u, int i) {
+  return usable(u, CATALOG_FILL, i, u->catalog->fills[i].ordinary);
+}
+static bool frame_usable(const builder *u, int i) {
+  return usable(u, CATALOG_FRAME, i, u->catalog->frames[i].ordinary);
+}
+static bool mount_usable(const builder *u, int i) {
+  return usable(u, CATALOG_MOUNT, i, true);
+}
 
 /* ---- leaves ---- */
 
@@ -56,7 +65,8 @@ static void add_face(builder *u, const face *f) {
   if (compat_face(u->catalog, f) > u->most) return;
   if ((size_t)s->face_count == u->face_cap) {
     size_t cap = u->face_cap ? 2 * u->face_cap : 64;
-    s->faces = arena_grow(u->arena, s->faces, u->face_cap * sizeof *s->faces, cap * sizeof *s->faces);
+    s->faces =
+        arena_grow(u->arena, s->faces, u->face_cap * sizeof *s->faces, cap * sizeof *s->faces);
     u->face_cap = cap;
   }
   s->faces[s->face_count++] = *f;
@@ -69,24 +79,27 @@ static void add_with_membranes(builder *u, const face *boards) {
     if (!l->membrane || !layer_usable(u, m)) continue;
     for (int at = l->material == LAYER_DAMPING ? 1 : boards->count; at <= boards->count; at++) {
       face f = {.count = boards->count + 1};
-      for (int i = 0; i < f.count; i++) f.layer[i] = i < at ? boards->layer[i] : i == at ? m : boards->layer[i - 1];
+      for (int i = 0; i < f.count; i++)
+        f.layer[i] = i < at ? boards->layer[i] : i == at ? m : boards->layer[i - 1];
       add_face(u, &f);
     }
   }
 }
 
-/* Ordinary build mixes finish boards only for a wet or an abused room, and gives the sides different ones only where their
- * rooms differ in that (common practice, no source). */
+/* Ordinary build mixes finish boards only for a wet or an abused room, and gives the sides
+ * different ones only where their rooms differ in that (common practice, no source). */
 static bool rooms_particular(const brief *b) {
-  return b->side[SIDE_A].wet || b->side[SIDE_B].wet || b->side[SIDE_A].abuse || b->side[SIDE_B].abuse;
+  return b->side[SIDE_A].wet || b->side[SIDE_B].wet || b->side[SIDE_A].abuse ||
+         b->side[SIDE_B].abuse;
 }
 
 static bool rooms_differ(const brief *b) {
-  return b->side[SIDE_A].wet != b->side[SIDE_B].wet || b->side[SIDE_A].abuse != b->side[SIDE_B].abuse;
+  return b->side[SIDE_A].wet != b->side[SIDE_B].wet ||
+         b->side[SIDE_A].abuse != b->side[SIDE_B].abuse;
 }
 
-/* Whether a board may stand behind finish boards of another kind: a backing board may, and a plain board behind those of wet and
- * abused rooms. */
+/* Whether a board may stand behind finish boards of another kind: a backing board may, and a plain
+ * board behind those of wet and abused rooms. */
 static bool backs(const builder *u, int finish, int back) {
   const layer *f = &u->catalog->layers[finish], *l = &u->catalog->layers[back];
   if (back == finish || l->membrane || !layer_usable(u, back)) return false;
@@ -115,16 +128,21 @@ static void build_faces(builder *u) {
   for (int i = 0; i < (int)u->catalog->layer_count; i++) {
     const layer *l = &u->catalog->layers[i];
     bool face_board = l->face || (any_build(u) && l->face_if_asked);
-    if (face_board && layer_usable(u, i)) add_faces_of(u, i, any_build(u) ? MOST_BOARDS : ORDINARY_BOARDS);
+    if (face_board && layer_usable(u, i))
+      add_faces_of(u, i, any_build(u) ? MOST_BOARDS : ORDINARY_BOARDS);
   }
 }
 
 /* ---- cores ---- */
 
-static int compare_int(int x, int y) { return (x > y) - (x < y); }
+static int compare_int(int x, int y) {
+  return (x > y) - (x < y);
+}
 
 static int compare_mounts(const wall_mount *x, const wall_mount *y) {
-  int order = compare_int(y->mount, x->mount); /* a mount before none: of two mirror images the one mounted on A is kept */
+  int order = compare_int(
+      y->mount,
+      x->mount); /* a mount before none: of two mirror images the one mounted on A is kept */
   if (order == 0) order = compare_int(x->spacing_mm, y->spacing_mm);
   return order ? order : compare_int(x->clip_spacing_mm, y->clip_spacing_mm);
 }
@@ -133,7 +151,8 @@ static int compare_mounts(const wall_mount *x, const wall_mount *y) {
 static int compare_mirror(const wall *w, const wall *m) {
   int order = compare_mounts(&w->mount[SIDE_A], &m->mount[SIDE_A]);
   if (order == 0) order = compare_mounts(&w->mount[SIDE_B], &m->mount[SIDE_B]);
-  if (order == 0) order = compare_int(m->fill[0], w->fill[0]); /* a filled row before an empty one */
+  if (order == 0)
+    order = compare_int(m->fill[0], w->fill[0]); /* a filled row before an empty one */
   return order;
 }
 
@@ -148,8 +167,10 @@ static void add_core(builder *u, const wall *w) {
   }
   if ((size_t)s->core_count == u->core_cap) {
     size_t cap = u->core_cap ? 2 * u->core_cap : 256;
-    s->cores = arena_grow(u->arena, s->cores, u->core_cap * sizeof *s->cores, cap * sizeof *s->cores);
-    s->own_mirror = arena_grow(u->arena, s->own_mirror, u->core_cap * sizeof *s->own_mirror, cap * sizeof *s->own_mirror);
+    s->cores =
+        arena_grow(u->arena, s->cores, u->core_cap * sizeof *s->cores, cap * sizeof *s->cores);
+    s->own_mirror = arena_grow(u->arena, s->own_mirror, u->core_cap * sizeof *s->own_mirror,
+                               cap * sizeof *s->own_mirror);
     u->core_cap = cap;
   }
   s->own_mirror[s->core_count] = order == 0;
@@ -163,7 +184,8 @@ static void add_mounts(builder *u, wall *w) {
     for (int m = 0; m < (int)u->catalog->mount_count; m++) {
       if (!mount_usable(u, m)) continue;
       for (size_t i = 0; i < u->catalog->mount_spacing_count; i++) {
-        w->mount[side] = (wall_mount){m, u->catalog->mount_spacings_mm[i], u->catalog->mounts[m].clip_spacing_mm};
+        w->mount[side] = (wall_mount){m, u->catalog->mount_spacings_mm[i],
+                                      u->catalog->mounts[m].clip_spacing_mm};
         add_core(u, w);
       }
     }
@@ -171,8 +193,9 @@ static void add_mounts(builder *u, wall *w) {
   }
 }
 
-/* Empty; then each fill: in the only row, or in both rows, in A's and in B's. Ordinary build fills A's row first: the two rows
- * are alike, so B's alone is the mirror image of a core that stands in the list already. */
+/* Empty; then each fill: in the only row, or in both rows, in A's and in B's. Ordinary build fills
+ * A's row first: the two rows are alike, so B's alone is the mirror image of a core that stands in
+ * the list already. */
 static void add_fills(builder *u, wall *w) {
   static const bool filled[FILL_CHOICES][2] = {{true, true}, {true, false}, {false, true}};
   bool two = u->catalog->frames[w->frame].rows == 2;
@@ -215,7 +238,8 @@ static space_support support_of(const catalog *c, const wall *core, int side) {
 }
 
 static bool same_support(const space_support *x, const space_support *y) {
-  return x->spacing_mm == y->spacing_mm && x->mil == y->mil && compare_mounts(&x->mount, &y->mount) == 0;
+  return x->spacing_mm == y->spacing_mm && x->mil == y->mil &&
+         compare_mounts(&x->mount, &y->mount) == 0;
 }
 
 static int support_index(const space *s, const space_support *p) {
@@ -228,7 +252,8 @@ static void build_supports(builder *u) {
   space *s = u->out;
   size_t cores = (size_t)s->core_count, faces = (size_t)s->face_count, cap = 0;
   int *example = NULL; /* a core and side of each support: 2 x core + side */
-  for (int side = 0; side < 2; side++) s->support[side] = arena_array(u->arena, cores, sizeof *s->support[side]);
+  for (int side = 0; side < 2; side++)
+    s->support[side] = arena_array(u->arena, cores, sizeof *s->support[side]);
   for (int k = 0; k < 2 * s->core_count; k++) {
     space_support p = support_of(u->catalog, &s->cores[k / 2], k % 2);
     int i = support_index(s, &p);
@@ -236,7 +261,8 @@ static void build_supports(builder *u) {
     if (i < s->support_count) continue;
     if ((size_t)i == cap) {
       size_t more = cap ? 2 * cap : 16;
-      s->supports = arena_grow(u->arena, s->supports, cap * sizeof *s->supports, more * sizeof *s->supports);
+      s->supports =
+          arena_grow(u->arena, s->supports, cap * sizeof *s->supports, more * sizeof *s->supports);
       example = arena_grow(u->arena, example, cap * sizeof *example, more * sizeof *example);
       cap = more;
     }
@@ -247,7 +273,8 @@ static void build_supports(builder *u) {
   for (int i = 0; i < s->support_count; i++)
     for (int f = 0; f < s->face_count; f++)
       s->on_support[(size_t)i * faces + (size_t)f] =
-          compat_face_on_core(u->catalog, &s->cores[example[i] / 2], example[i] % 2, &s->faces[f]) <= u->most;
+          compat_face_on_core(u->catalog, &s->cores[example[i] / 2], example[i] % 2,
+                              &s->faces[f]) <= u->most;
 }
 
 static void build_pairs(builder *u) {
@@ -259,7 +286,8 @@ static void build_pairs(builder *u) {
     for (size_t j = 0; j < n; j++) {
       bool same_board = s->faces[i].layer[0] == s->faces[j].layer[0];
       if (!same_board && !may_differ) continue;
-      s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <= (same_board ? u->most : COMPAT_FINE);
+      s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <=
+                           (same_board ? u->most : COMPAT_FINE);
     }
 }
 
@@ -301,7 +329,8 @@ static int compare_pieces(const char *const x[3], const char *const y[3]) {
   }
 }
 
-int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core, int other_a, int other_b) {
+int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core,
+                        int other_a, int other_b) {
   const char *const x[3] = {s->face_text[face_a], s->core_text[core], s->face_text[face_b]};
   const char *const y[3] = {s->face_text[other_a], s->core_text[other_core], s->face_text[other_b]};
   return compare_pieces(x, y);
@@ -311,7 +340,8 @@ int space_compare_lines(const space *s, int core, int face_a, int face_b, int ot
 
 static bool rooms_alike(const brief *b) {
   const room_side *p = &b->side[SIDE_A], *q = &b->side[SIDE_B];
-  bool same_length = !(p->fastening_length_m < q->fastening_length_m) && !(p->fastening_length_m > q->fastening_length_m);
+  bool same_length = !(p->fastening_length_m < q->fastening_length_m) &&
+                     !(p->fastening_length_m > q->fastening_length_m);
   bool same_ceiling = !(b->ceiling_m[0] < b->ceiling_m[1]) && !(b->ceiling_m[0] > b->ceiling_m[1]);
   return p->fastening == q->fastening && same_length && p->wet == q->wet && p->abuse == q->abuse &&
          p->finish_level == q->finish_level && same_ceiling && b->shear_side == CATALOG_NONE;

@@ -6,22 +6,26 @@
 
 /* The support of a leaf: what decides whether a leaf may be screwed there. */
 typedef struct space_support {
-  int spacing_mm, mil;     /* studs: 0 under a mount */
+  int spacing_mm, mil; /* studs: 0 under a mount */
   wall_mount mount;
 } space_support;
 
 typedef struct space {
   const judge_context *context;
-  face *faces; int face_count;          /* leaves that may stand at a room, those with the same face board together */
-  wall *cores; int core_count;          /* frame, spacing, gap, fills, mounts */
-  bool mirror_once;                     /* both rooms ask the same: one of two mirror images is enumerated */
-  bool *own_mirror;                     /* per core, with mirror_once: its mirror image is itself, so of two leaves the first
-                                           stands on A */
-  int *support[2];                      /* per core and side: index into supports */
-  space_support *supports; int support_count;
-  bool *on_support;                     /* support_count x face_count */
-  bool *pair;                           /* face_count x face_count: may stand opposite */
-  const char **face_text, **core_text;  /* pieces of the wall line: a face; what stands between the faces */
+  face *faces;
+  int face_count; /* leaves that may stand at a room, those with the same face board together */
+  wall *cores;
+  int core_count;   /* frame, spacing, gap, fills, mounts */
+  bool mirror_once; /* both rooms ask the same: one of two mirror images is enumerated */
+  bool *own_mirror; /* per core, with mirror_once: its mirror image is itself, so of two leaves the
+                       first stands on A */
+  int *support[2];  /* per core and side: index into supports */
+  space_support *supports;
+  int support_count;
+  bool *on_support; /* support_count x face_count */
+  bool *pair;       /* face_count x face_count: may stand opposite */
+  const char **face_text,
+      **core_text; /* pieces of the wall line: a face; what stands between the faces */
 } space;
 
 /* Builds the axes after `only`, `without` (kept, as rules), build and compatibility. */
@@ -30,7 +34,8 @@ void space_build(arena *a, const judge_context *x, space *out);
 bool space_legal(const space *s, int core, int face_a, int face_b);
 wall space_wall(const space *s, int core, int face_a, int face_b);
 /* Order of two walls' lines, as strings. */
-int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core, int other_a, int other_b);
+int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core,
+                        int other_a, int other_b);
 /* How many legal walls. */
 long long space_count(const space *s);
 

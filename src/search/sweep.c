@@ -17,10 +17,10 @@ typedef struct sweep {
   kernel_leaves *leaves;
   sound_aims aims;
   core_facts core;
-  double *exact;         /* METRIC_COUNT x face_count: ratings of one leaf on A with all leaves on B */
+  double *exact; /* METRIC_COUNT x face_count: ratings of one leaf on A with all leaves on B */
   front front;
   masks masks;
-  struct masks kinds;    /* cheapest wall that breaks nothing, by kind_of */
+  struct masks kinds; /* cheapest wall that breaks nothing, by kind_of */
   feasible_block *last;
   sweep_result *out;
 } sweep;
@@ -51,11 +51,14 @@ static uint64_t kind_of(const sweep *s, const candidate *c) {
   const wall *core = &s->space->cores[c->core];
   uint64_t a = (uint64_t)face_boards(cat, &s->space->faces[c->face_a]);
   uint64_t b = (uint64_t)face_boards(cat, &s->space->faces[c->face_b]);
-  uint64_t mount_a = (uint64_t)(core->mount[SIDE_A].mount + 1), mount_b = (uint64_t)(core->mount[SIDE_B].mount + 1);
-  return (uint64_t)core->frame << 32 | mount_a << 20 | mount_b << 8 | (a < b ? a << 4 | b : b << 4 | a);
+  uint64_t mount_a = (uint64_t)(core->mount[SIDE_A].mount + 1),
+           mount_b = (uint64_t)(core->mount[SIDE_B].mount + 1);
+  return (uint64_t)core->frame << 32 | mount_a << 20 | mount_b << 8 |
+         (a < b ? a << 4 | b : b << 4 | a);
 }
 
-/* Whether a wall may be the cheapest of its kind or of its set of broken rules, whatever its sound turns out to be. */
+/* Whether a wall may be the cheapest of its kind or of its set of broken rules, whatever its sound
+ * turns out to be. */
 static bool may_be_cheapest(const sweep *s, const candidate *c, const sound_bounds *b) {
   rule_mask set[SOUND_MAX_OUTCOMES];
   int n = sound_outcomes(b, set);
@@ -67,7 +70,8 @@ static bool may_be_cheapest(const sweep *s, const candidate *c, const sound_boun
   return false;
 }
 
-static void name_rules(const judge_reach *reach, rule_mask others, rule_mask *broken, rule_mask *instead) {
+static void name_rules(const judge_reach *reach, rule_mask others, rule_mask *broken,
+                       rule_mask *instead) {
   judge_name_reach(reach, broken, instead);
   *broken |= others;
   if (*instead) *instead |= others;
@@ -99,11 +103,14 @@ static void keep(sweep *s, const candidate *c, const sound_bounds *b) {
 static void note_feasible(sweep *s, const candidate *c, bool certain) {
   if (!s->last || s->last->count == SWEEP_BLOCK) {
     feasible_block *block = arena_alloc(s->arena, sizeof *block);
-    if (s->last) s->last->next = block;
-    else s->out->feasible = block;
+    if (s->last)
+      s->last->next = block;
+    else
+      s->out->feasible = block;
     s->last = block;
   }
-  s->last->wall[s->last->count++] = (feasible_wall){c->core, (unsigned short)c->face_a, (unsigned short)c->face_b, certain};
+  s->last->wall[s->last->count++] =
+      (feasible_wall){c->core, (unsigned short)c->face_a, (unsigned short)c->face_b, certain};
 }
 
 bool sweep_confirms(const space *s, const feasible_wall *f) {
@@ -131,12 +138,14 @@ static void sweep_wall(sweep *s, int face_a, int face_b, const double *exact) {
   keep(s, &c, &b);
 }
 
-/* Rates one leaf on A with the leaves first..last on B, in every metric asked for: exact[metric] at the leaf's own place. */
+/* Rates one leaf on A with the leaves first..last on B, in every metric asked for: exact[metric] at
+ * the leaf's own place. */
 static void rate_row(sweep *s, int face_a, int first, int last) {
   size_t faces = (size_t)s->space->face_count;
   for (int i = 0; i < s->aims.metrics; i++) {
     sound_metric m = s->aims.metric[i];
-    kernel_rate(s->kernel, s->leaves, face_a, first, last - first + 1, m, s->exact + (size_t)m * faces + first);
+    kernel_rate(s->kernel, s->leaves, face_a, first, last - first + 1, m,
+                s->exact + (size_t)m * faces + first);
   }
 }
 
@@ -152,7 +161,8 @@ static void sweep_row(sweep *s, int face_a) {
   for (int j = first; j <= last; j++) {
     if (!space_legal(s->space, core, face_a, j)) continue;
     double exact[METRIC_COUNT];
-    for (int m = 0; m < METRIC_COUNT; m++) exact[m] = s->exact[(size_t)m * (size_t)faces + (size_t)j];
+    for (int m = 0; m < METRIC_COUNT; m++)
+      exact[m] = s->exact[(size_t)m * (size_t)faces + (size_t)j];
     sweep_wall(s, face_a, j, exact);
   }
 }
@@ -186,7 +196,8 @@ static void finish_front(sweep *s) {
   r->frontier = arena_array(s->arena, (size_t)s->front.count, sizeof *r->frontier);
   for (int i = 0; i < s->front.count; i++) { /* in tie order, by insertion */
     int at = i;
-    for (; at > 0 && candidate_compare(space_of, &s->front.item[i].wall, &r->frontier[at - 1]) < 0; at--)
+    for (; at > 0 && candidate_compare(space_of, &s->front.item[i].wall, &r->frontier[at - 1]) < 0;
+         at--)
       r->frontier[at] = r->frontier[at - 1];
     r->frontier[at] = s->front.item[i].wall;
   }

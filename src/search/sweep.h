@@ -1,5 +1,6 @@
-/* The sweep: judges every wall of the space by tables and keeps what a choice can need. Deterministic. Memory grows with what is
- * kept: the walls that break nothing at 12 bytes each, and a few hundred bytes for each of the frontier. Why nothing is lost: docs/design/search.md. */
+/* The sweep: judges every wall of the space by tables and keeps what a choice can need.
+ * Deterministic. Memory grows with what is kept: the walls that break nothing at 12 bytes each, and
+ * a few hundred bytes for each of the frontier. Why nothing is lost: docs/design/search.md. */
 #ifndef SEARCH_SWEEP_H
 #define SEARCH_SWEEP_H
 
@@ -8,7 +9,8 @@
 
 enum { SWEEP_RUNNERS = 24, SWEEP_BLOCK = 4096 };
 
-/* A wall that breaks nothing. Not certain: its sound is so near a limit that the reference has to be asked. */
+/* A wall that breaks nothing. Not certain: its sound is so near a limit that the reference has to
+ * be asked. */
 typedef struct feasible_wall {
   int core;
   unsigned short face_a, face_b;
@@ -23,15 +25,20 @@ typedef struct feasible_block {
 
 /* Every wall that is kept has been rated by the reference: its numbers are those of judge_wall. */
 typedef struct sweep_result {
-  long long walls;           /* judged */
-  long long rated;           /* of these, rated by the reference */
-  candidate *frontier; int frontier_count; /* in tie order; what no other wall beats in any number that a rule in force reads, in
-                                              broken rules, and in cost and ties */
-  mask_best *masks; int mask_count;        /* cheapest wall per set of broken rules, by set */
-  candidate runners[SWEEP_RUNNERS]; int runner_count; /* of the walls that break nothing the cheapest of each kind (frame,
-                                                         number of boards, mounts), in tie order */
-  feasible_block *feasible;  /* every wall that breaks nothing, in the order of the sweep; NULL when there is none */
-  const char *unpriced;      /* the line of some wall left out because an item of it has no price; NULL when there is none */
+  long long walls; /* judged */
+  long long rated; /* of these, rated by the reference */
+  candidate *frontier;
+  int frontier_count; /* in tie order; what no other wall beats in any number that a rule in force
+                         reads, in broken rules, and in cost and ties */
+  mask_best *masks;
+  int mask_count; /* cheapest wall per set of broken rules, by set */
+  candidate runners[SWEEP_RUNNERS];
+  int runner_count;         /* of the walls that break nothing the cheapest of each kind (frame,
+                               number of boards, mounts), in tie order */
+  feasible_block *feasible; /* every wall that breaks nothing, in the order of the sweep; NULL when
+                               there is none */
+  const char *unpriced; /* the line of some wall left out because an item of it has no price; NULL
+                           when there is none */
 } sweep_result;
 
 /* Needs prices in the context. */

@@ -5,11 +5,12 @@
 #include "search/judge_words.h"
 
 enum {
-  SPACINGS_MAX = 8,      /* different support spacings whose leaf costs are kept */
-  CACHED_FACES = 512     /* with more leaves their costs are worked out anew for every wall */
+  SPACINGS_MAX = 8,  /* different support spacings whose leaf costs are kept */
+  CACHED_FACES = 512 /* with more leaves their costs are worked out anew for every wall */
 };
 
-/* Where a rule of the leaf alone can be seen: a core that keeps it with the right leaf. CATALOG_NONE: no core does. */
+/* Where a rule of the leaf alone can be seen: a core that keeps it with the right leaf.
+ * CATALOG_NONE: no core does. */
 typedef struct examples {
   int noncombustible;
   int shear, shear_face; /* a core and the leaf that make a shear panel */
@@ -24,7 +25,8 @@ struct tables {
   face_facts *face;
   examples example;
   int spacing[SPACINGS_MAX], spacing_count;
-  cost_parts *leaves[SPACINGS_MAX][SPACINGS_MAX]; /* face_count x face_count; hours below 0 = not worked out yet */
+  cost_parts *leaves[SPACINGS_MAX][SPACINGS_MAX]; /* face_count x face_count; hours below 0 = not
+                                                     worked out yet */
 };
 
 /* ---- rules by their pieces ---- */
@@ -43,7 +45,9 @@ static bool note_id(void *user, catalog_kind kind, int index) {
   return true;
 }
 
-static rule_mask bit_unless(bool ok, int rule) { return ok ? 0 : rule_bit(rule); }
+static rule_mask bit_unless(bool ok, int rule) {
+  return ok ? 0 : rule_bit(rule);
+}
 
 static bool burns_not(const tables *t, const wall *w) {
   return structure_noncombustible_ok(t->context->catalog, t->context->brief, w, NULL);
@@ -59,7 +63,8 @@ static void find_examples(tables *t) {
   t->example = (examples){CATALOG_NONE, CATALOG_NONE, CATALOG_NONE};
   for (int k = 0; k < s->core_count && t->example.noncombustible == CATALOG_NONE; k++)
     if (burns_not(t, &s->cores[k])) t->example.noncombustible = k;
-  for (int k = 0; side != CATALOG_NONE && k < s->core_count && t->example.shear == CATALOG_NONE; k++)
+  for (int k = 0; side != CATALOG_NONE && k < s->core_count && t->example.shear == CATALOG_NONE;
+       k++)
     for (int i = 0; i < s->face_count && t->example.shear == CATALOG_NONE; i++) {
       wall w = s->cores[k];
       w.side[side] = s->faces[i];
@@ -90,7 +95,8 @@ static rule_mask face_bits(const tables *t, int index, int side) {
     m |= bit_unless(shear(t, &w), RULE_SHEAR);
   }
   id_bits ids = {t->context, 0};
-  for (int i = 0; i < s->faces[index].count; i++) note_id(&ids, CATALOG_LAYER, s->faces[index].layer[i]);
+  for (int i = 0; i < s->faces[index].count; i++)
+    note_id(&ids, CATALOG_LAYER, s->faces[index].layer[i]);
   return m | ids.broken;
 }
 
@@ -119,7 +125,9 @@ tables *tables_create(arena *a, const space *s) {
   return t;
 }
 
-const face_facts *tables_face(const tables *t, int index) { return &t->face[index]; }
+const face_facts *tables_face(const tables *t, int index) {
+  return &t->face[index];
+}
 
 /* ---- cores ---- */
 
@@ -129,10 +137,12 @@ static rule_mask core_bits(const tables *t, const wall *core) {
   rule_mask m = bit_unless(structure_bearing_ok(c, b, core, NULL), RULE_LOADBEARING) |
                 bit_unless(structure_services_ok(c, b, core, NULL), RULE_SERVICES) |
                 bit_unless(burns_not(t, core), RULE_NONCOMBUSTIBLE);
-  for (int s = 0; s < 2; s++) m |= bit_unless(structure_fastening_ok(c, b, core, s, NULL), RULE_FASTENING_A + s);
+  for (int s = 0; s < 2; s++)
+    m |= bit_unless(structure_fastening_ok(c, b, core, s, NULL), RULE_FASTENING_A + s);
   if (b->shear_side != CATALOG_NONE) {
     wall w = *core;
-    if (t->example.shear != CATALOG_NONE) w.side[b->shear_side] = t->space->faces[t->example.shear_face];
+    if (t->example.shear != CATALOG_NONE)
+      w.side[b->shear_side] = t->space->faces[t->example.shear_face];
     m |= bit_unless(shear(t, &w), RULE_SHEAR);
   }
   id_bits ids = {t->context, 0};
@@ -155,7 +165,8 @@ static void set_heights(const tables *t, const wall *core, core_facts *out) {
       wall w = *core;
       w.side[SIDE_A] = t->space->faces[example[i]];
       w.side[SIDE_B] = t->space->faces[example[j]];
-      out->height_mm[i][j] = rules_height(structure_height(NULL, t->context->catalog, t->context->brief, &w).limit_m);
+      out->height_mm[i][j] =
+          rules_height(structure_height(NULL, t->context->catalog, t->context->brief, &w).limit_m);
     }
 }
 
@@ -166,8 +177,10 @@ void tables_core(tables *t, int core, core_facts *out) {
   out->thickness_m = wall_thickness_m(x->catalog, w);
   out->mass_kg_m2 = wall_mass_kg_m2(x->catalog, w, x->brief->height_m);
   if (t->fire_asked) fire_core_set(x->catalog, x->brief, w, &out->fire);
-  if (t->published_asked) evidence_core_set(x->catalog, w, &out->published);
-  else out->published.count = 0;
+  if (t->published_asked)
+    evidence_core_set(x->catalog, w, &out->published);
+  else
+    out->published.count = 0;
   set_heights(t, w, out);
   out->broken = core_bits(t, w);
   out->family = predict_family(x->catalog, w);
@@ -192,7 +205,8 @@ static cost_parts leaf_cost(const tables *t, int core, int face_a, int face_b) {
   return cost_leaves(t->context->prices, t->context->catalog, t->context->brief, &w);
 }
 
-/* What two leaves cost depends on the spacing of their supports only: each pair is worked out once. */
+/* What two leaves cost depends on the spacing of their supports only: each pair is worked out once.
+ */
 static cost_parts cached_cost(tables *t, int core, int face_a, int face_b) {
   const wall *k = &t->space->cores[core];
   size_t n = (size_t)t->space->face_count;
@@ -219,16 +233,20 @@ bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candida
   out->is.thickness_tenth_mm = rules_thickness(thickness_m);
   out->is.mass_hundredth = rules_mass(k->mass_kg_m2 + a->mass_kg_m2 + b->mass_kg_m2);
   out->is.height_mm = k->height_mm[a->height_key][b->height_key];
-  if (t->fire_asked) out->is.fire_min = fire_pair(t->context->catalog, &k->fire, &a->fire, &b->fire, NULL);
-  out->broken = k->broken | a->broken[SIDE_A] | b->broken[SIDE_B] | rules_broken_by(&t->limits, &out->is);
+  if (t->fire_asked)
+    out->is.fire_min = fire_pair(t->context->catalog, &k->fire, &a->fire, &b->fire, NULL);
+  out->broken =
+      k->broken | a->broken[SIDE_A] | b->broken[SIDE_B] | rules_broken_by(&t->limits, &out->is);
   return !k->cost.missing && !leaves.missing;
 }
 
-const wall_row *tables_sound(const tables *t, const core_facts *k, int face_a, int face_b, double *sd) {
+const wall_row *tables_sound(const tables *t, const core_facts *k, int face_a, int face_b,
+                             double *sd) {
   const catalog *c = t->context->catalog;
   const face_facts *a = &t->face[face_a], *b = &t->face[face_b];
   predict_sd_of(c, k->family, k->outside | a->outside | b->outside, sd);
-  return k->published.count > 0 ? evidence_pair(c, &k->published, a->published, b->published) : NULL;
+  return k->published.count > 0 ? evidence_pair(c, &k->published, a->published, b->published)
+                                : NULL;
 }
 
 /* ---- order ---- */

@@ -65,7 +65,8 @@ static void add_row(builder *u, const char *name, row_sense sense, double bound,
 
 /* One target: promised and needed as ratings. Several: the least of what is promised above them. */
 static void add_promised(builder *u, const brief *b) {
-  double offset = b->target_count == 1 ? floor(100 * judge_needed(&b->targets[0], b->field_mean) + 0.5) : 0;
+  double offset =
+      b->target_count == 1 ? floor(100 * judge_needed(&b->targets[0], b->field_mean) + 0.5) : 0;
   add_row(u, "promised", ROW_GREATER, offset, (row_plan){RULE_TARGET, value_promised, offset});
 }
 
@@ -74,7 +75,8 @@ static const char *categorical_name(builder *u, const brief *b, int rule) {
   text t;
   text_init(&t, u->arena, 100);
   text_put(&t, "rule_");
-  for (const char *s = rule_name(u->arena, b, rule); *s; s++) text_char(&t, isalnum((unsigned char)*s) ? *s : '_');
+  for (const char *s = rule_name(u->arena, b, rule); *s; s++)
+    text_char(&t, isalnum((unsigned char)*s) ? *s : '_');
   return t.data;
 }
 
@@ -93,7 +95,8 @@ static bool is_categorical(int rule) {
   case RULE_ONLY:  /* what it leaves out is no candidate */
   case RULE_PRICE: /* nor is what has no price */
     return false;
-  default: return true;
+  default:
+    return true;
   }
 }
 
@@ -103,7 +106,13 @@ static void add_rows(builder *u) {
   rule_mask on = rules_in_force(b);
   add_row(u, "one", ROW_EQUAL, 1, (row_plan){0, value_one, 0});
   if (on & rule_bit(RULE_TARGET)) add_promised(u, b);
-  const struct { int rule; const char *name; row_sense sense; double bound; row_value value; } limits[] = {
+  const struct {
+    int rule;
+    const char *name;
+    row_sense sense;
+    double bound;
+    row_value value;
+  } limits[] = {
       {RULE_THICKNESS_MAX, "thickness_max", ROW_LESS, l.thickness_max, value_thickness},
       {RULE_THICKNESS_MIN, "thickness_min", ROW_GREATER, l.thickness_min, value_thickness},
       {RULE_MASS_MAX, "mass_max", ROW_LESS, l.mass_max, value_mass},
@@ -114,7 +123,8 @@ static void add_rows(builder *u) {
   };
   for (size_t i = 0; i < sizeof limits / sizeof limits[0]; i++)
     if (on & rule_bit(limits[i].rule))
-      add_row(u, limits[i].name, limits[i].sense, limits[i].bound, (row_plan){limits[i].rule, limits[i].value, 0});
+      add_row(u, limits[i].name, limits[i].sense, limits[i].bound,
+              (row_plan){limits[i].rule, limits[i].value, 0});
   for (int rule = 0; rule < RULES_MAX; rule++)
     if ((on & rule_bit(rule)) && is_categorical(rule))
       add_row(u, categorical_name(u, b, rule), ROW_LESS, 0, (row_plan){rule, value_broken, 0});
@@ -122,12 +132,15 @@ static void add_rows(builder *u) {
 
 /* ---- the model ---- */
 
-static double money(long long cents) { return (double)cents / 100; }
+static double money(long long cents) {
+  return (double)cents / 100;
+}
 
 static void add_column(builder *u, int j) {
   solver_model *m = u->model;
   const candidate *c = &u->sweep->frontier[j];
-  m->columns[j] = (solver_column){text_format(u->arena, "x%d", j + 1), money(c->is.cost_cents), true, 0, 1};
+  m->columns[j] =
+      (solver_column){text_format(u->arena, "x%d", j + 1), money(c->is.cost_cents), true, 0, 1};
   for (int i = 0; i < m->row_count; i++) {
     double value = u->plan[i].value(c, u->plan[i].rule, u->plan[i].offset);
     if (value < 0 || value > 0) m->entries[m->entry_count++] = (solver_entry){i, j, value};
@@ -152,8 +165,8 @@ void model_pick(arena *a, const space *s, const sweep_result *r, solver_model *o
 
 /* ---- the choice ---- */
 
-/* A column that breaks a row by itself cannot be chosen. With these at 0 the linear relaxation has whole solutions: nothing is
- * left but to take one column. */
+/* A column that breaks a row by itself cannot be chosen. With these at 0 the linear relaxation has
+ * whole solutions: nothing is left but to take one column. */
 static void fix_broken(const sweep_result *r, solver_model *m) {
   for (int j = 0; j < r->frontier_count; j++)
     if (r->frontier[j].broken) m->columns[j].upper = 0;
@@ -165,24 +178,29 @@ static bool keeps_all(const brief *b, const candidate *c) {
   return c->broken == 0 && reached && rules_broken_by(&l, &c->is) == 0;
 }
 
-static bool same_cents(double amount, long long cents) { return fabs(amount * 100 - (double)cents) < 0.5; }
+static bool same_cents(double amount, long long cents) {
+  return fabs(amount * 100 - (double)cents) < 0.5;
+}
 
 /* GLPK proves the least cost; of the walls that cost it the first in tie order is taken. */
-static bool take_answer(diag_list *d, const space *s, const sweep_result *r, const solver_result *found, pick_choice *out) {
+static bool take_answer(diag_list *d, const space *s, const sweep_result *r,
+                        const solver_result *found, pick_choice *out) {
   for (int j = 0; j < r->frontier_count; j++) {
     const candidate *c = &r->frontier[j];
-    if (!same_cents(found->objective, c->is.cost_cents) || !keeps_all(s->context->brief, c)) continue;
+    if (!same_cents(found->objective, c->is.cost_cents) || !keeps_all(s->context->brief, c))
+      continue;
     out->found = true;
     out->chosen = *c;
     out->objective = money(c->is.cost_cents);
     return true;
   }
-  diag_error(d, ERROR_INTERNAL_SOLVER, "the solver's answer breaks a rule when it is checked in integers");
+  diag_error(d, ERROR_INTERNAL_SOLVER,
+             "the solver's answer breaks a rule when it is checked in integers");
   return false;
 }
 
-bool model_choose(arena *a, diag_list *d, const space *s, const sweep_result *r, double seconds, const char *save_path,
-                  pick_choice *out) {
+bool model_choose(arena *a, diag_list *d, const space *s, const sweep_result *r, double seconds,
+                  const char *save_path, pick_choice *out) {
   solver_model m;
   *out = (pick_choice){.status = SOLVER_FAILED, .bound = -HUGE_VAL};
   model_pick(a, s, r, &m);

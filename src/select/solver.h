@@ -1,4 +1,5 @@
-/* A small 0-1 linear model and its solution: what GLPK is asked, in our words. Only solver_glpk.c sees GLPK. */
+/* A small 0-1 linear model and its solution: what GLPK is asked, in our words. Only solver_glpk.c
+ * sees GLPK. */
 #ifndef SELECT_SOLVER_H
 #define SELECT_SOLVER_H
 
@@ -9,8 +10,8 @@
 
 typedef enum row_sense { ROW_LESS, ROW_EQUAL, ROW_GREATER } row_sense;
 
-/* Names: a letter first, then letters, digits and `_`; not `e` and a digit (CPLEX LP reads that as a number); no name
- * twice. */
+/* Names: a letter first, then letters, digits and `_`; not `e` and a digit (CPLEX LP reads that as
+ * a number); no name twice. */
 typedef struct solver_row {
   const char *name;
   row_sense sense;
@@ -40,8 +41,14 @@ typedef struct solver_model {
   int entry_count;
 } solver_model;
 
-/* LIMIT: time ran out; the result then holds the best found, if any. FAILED: a fault, in the diagnostics. */
-typedef enum solver_status { SOLVER_OPTIMAL, SOLVER_INFEASIBLE, SOLVER_LIMIT, SOLVER_FAILED } solver_status;
+/* LIMIT: time ran out; the result then holds the best found, if any. FAILED: a fault, in the
+ * diagnostics. */
+typedef enum solver_status {
+  SOLVER_OPTIMAL,
+  SOLVER_INFEASIBLE,
+  SOLVER_LIMIT,
+  SOLVER_FAILED
+} solver_status;
 
 typedef struct solver_result {
   solver_status status;
@@ -53,7 +60,8 @@ typedef struct solver_result {
 
 /* Minimises. `seconds` 0 = no limit; without one the result is the same on every run. */
 void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, solver_result *out);
-/* Writes the exact model in CPLEX LP format, whole or not at all. False and a diagnostic when that fails. */
+/* Writes the exact model in CPLEX LP format, whole or not at all. False and a diagnostic when that
+ * fails. */
 bool solver_save(arena *a, diag_list *d, const solver_model *m, const char *path);
 
 #endif

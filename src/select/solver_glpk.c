@@ -1,11 +1,13 @@
 /* The gate to GLPK.
  *
- * GLPK aborts the process on a fault unless its error hook jumps away, and after such a jump its environment can only be
- * freed as a whole. So each call runs in a thread of its own: GLPK keeps one environment a thread, ours can be freed
- * without touching one that the host program may hold. All memory of the library is taken before that thread starts
- * and after it ended, because an arena that runs out jumps past whoever holds GLPK objects.
+ * GLPK aborts the process on a fault unless its error hook jumps away, and after such a jump its
+ * environment can only be freed as a whole. So each call runs in a thread of its own: GLPK keeps
+ * one environment a thread, ours can be freed without touching one that the host program may hold.
+ * All memory of the library is taken before that thread starts and after it ended, because an arena
+ * that runs out jumps past whoever holds GLPK objects.
  *
- * GLPK counts rows, columns and entries from 1 and takes NaN without a word: everything is checked first. */
+ * GLPK counts rows, columns and entries from 1 and takes NaN without a word: everything is checked
+ * first. */
 #include <ctype.h>
 #include <glpk.h>
 #include <limits.h>
@@ -22,8 +24,8 @@
 
 enum { TALK_MAX = 512, MILLISECONDS = 1000, NAME_MAX_BYTES = 255 };
 
-/* GLPK's own default for the objective, 1e-7, is relative: with an objective near a million it called plans optimal that
- * were 0.10 too dear. */
+/* GLPK's own default for the objective, 1e-7, is relative: with an objective near a million it
+ * called plans optimal that were 0.10 too dear. */
 static const double objective_tolerance = 1e-9;
 static const double integer_tolerance = 1e-7;
 
@@ -35,11 +37,11 @@ typedef struct task {
   int *row_of, *column_of; /* entries as GLPK wants them, from 1 */
   double *value_of;
   int limit_ms;
-  const char *save_path;   /* NULL: solve */
-  solver_result *result;   /* NULL: save */
+  const char *save_path; /* NULL: solve */
+  solver_result *result; /* NULL: save */
   task_state state;
   jmp_buf escape;
-  char talk[TALK_MAX];     /* the last words of GLPK, for the diagnostic */
+  char talk[TALK_MAX]; /* the last words of GLPK, for the diagnostic */
   size_t talk_len;
 } task;
 
@@ -101,7 +103,8 @@ static glp_prob *load(const task *t) {
   return p;
 }
 
-/* The first linear relaxation: branch and bound needs its optimum. True when the search may go on. */
+/* The first linear relaxation: branch and bound needs its optimum. True when the search may go on.
+ */
 static bool relax(glp_prob *p, const task *t) {
   glp_smcp how;
   glp_init_smcp(&how);
@@ -142,10 +145,10 @@ static void branch(glp_prob *p, task *t) {
   int found = glp_mip_status(p);
   solver_result *r = t->result;
   if (code != 0 && code != GLP_ETMLIM) return;
-  r->status = code == GLP_ETMLIM     ? SOLVER_LIMIT
-              : found == GLP_OPT     ? SOLVER_OPTIMAL
-              : found == GLP_NOFEAS  ? SOLVER_INFEASIBLE
-                                     : SOLVER_FAILED;
+  r->status = code == GLP_ETMLIM    ? SOLVER_LIMIT
+              : found == GLP_OPT    ? SOLVER_OPTIMAL
+              : found == GLP_NOFEAS ? SOLVER_INFEASIBLE
+                                    : SOLVER_FAILED;
   r->found = found == GLP_OPT || found == GLP_FEAS;
   if (!r->found) return;
   r->objective = glp_mip_obj_val(p);
@@ -167,7 +170,8 @@ static void *errand(void *info) {
       t->state = TASK_DONE;
     }
   }
-  /* after a fault the environment still holds what was allocated; this frees everything of this thread */
+  /* after a fault the environment still holds what was allocated; this frees everything of this
+   * thread */
   glp_error_hook(NULL, NULL);
   glp_term_hook(NULL, NULL);
   glp_free_env();
@@ -193,7 +197,8 @@ static const char *model_fault(const solver_model *m) {
   for (int j = 0; j < m->column_count; j++) {
     const solver_column *c = &m->columns[j];
     if (!isfinite(c->cost)) return "a column's cost is not finite";
-    if (!isfinite(c->lower) || isnan(c->upper) || c->lower > c->upper) return "a column's bounds are wrong";
+    if (!isfinite(c->lower) || isnan(c->upper) || c->lower > c->upper)
+      return "a column's bounds are wrong";
     if (c->binary && (c->lower < 0 || c->upper > 1)) return "a binary column's bounds are wrong";
     if (!name_ok(c->name)) return "a column's name cannot be written to a file";
   }
@@ -235,7 +240,8 @@ static void report_fault(diag_list *d, task *t, bool sent) {
   for (size_t i = 0; i < t->talk_len; i++)
     if (t->talk[i] == '\n') t->talk[i] = ' ';
   while (t->talk_len > 0 && t->talk[t->talk_len - 1] == ' ') t->talk[--t->talk_len] = '\0';
-  diag_error(d, ERROR_INTERNAL_SOLVER, "the solver gave no answer: %s", t->talk_len ? t->talk : "no reason given");
+  diag_error(d, ERROR_INTERNAL_SOLVER, "the solver gave no answer: %s",
+             t->talk_len ? t->talk : "no reason given");
 }
 
 void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, solver_result *out) {
@@ -256,7 +262,8 @@ void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, s
   if (out->status == SOLVER_FAILED) report_fault(d, t, sent);
 }
 
-/* The bytes of GLPK's file, which is gone afterwards. NULL when it cannot be read; never jumps while the file is open. */
+/* The bytes of GLPK's file, which is gone afterwards. NULL when it cannot be read; never jumps
+ * while the file is open. */
 static char *take_file(arena *a, const char *path, size_t *len) {
   FILE *f = fopen(path, "rb");
   (void)unlink(path);
@@ -277,7 +284,8 @@ static bool ends_well(const char *bytes, size_t len) {
   return len >= n && memcmp(bytes + len - n, end, n) == 0;
 }
 
-/* An empty file beside `path` for GLPK to write, for it takes only names. NULL when none can be made. */
+/* An empty file beside `path` for GLPK to write, for it takes only names. NULL when none can be
+ * made. */
 static char *make_part(arena *a, const char *path) {
   static const char ending[] = ".XXXXXX";
   size_t n = strlen(path);

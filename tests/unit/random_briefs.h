@@ -1,5 +1,5 @@
-/* Seeded briefs over small parts of the shipped catalog, and every wall of such a part judged in full: what the search, the
- * selection and the explanations are held against. */
+/* Seeded briefs over small parts of the shipped catalog, and every wall of such a part judged in
+ * full: what the search, the selection and the explanations are held against. */
 #ifndef TESTS_RANDOM_BRIEFS_H
 #define TESTS_RANDOM_BRIEFS_H
 
@@ -30,7 +30,9 @@ static inline void open_shop(void) {
   ck_assert_ptr_nonnull(shop.prices);
 }
 
-static inline void close_shop(void) { arena_free(shop.memory); }
+static inline void close_shop(void) {
+  arena_free(shop.memory);
+}
 
 /* ---- dice ---- */
 
@@ -39,19 +41,29 @@ static inline unsigned dice(unsigned below) {
   dice_state = dice_state * 1664525u + 1013904223u;
   return (dice_state >> 8) % below;
 }
-static inline bool chance(unsigned percent) { return dice(100) < percent; }
+static inline bool chance(unsigned percent) {
+  return dice(100) < percent;
+}
 
 /* ---- briefs ---- */
 
-static inline void add_only(brief *b, const char *pattern) { b->only[b->only_count++] = pattern; }
+static inline void add_only(brief *b, const char *pattern) {
+  b->only[b->only_count++] = pattern;
+}
 
 static inline void choose_parts(brief *b) {
-  static const char *const boards[] = {"gyp-13", "gyp-13-light", "typex-13", "typex-16", "typec-16", "abuse-16", "moist-16"};
+  static const char *const boards[] = {"gyp-13",   "gyp-13-light", "typex-13", "typex-16",
+                                       "typec-16", "abuse-16",     "moist-16"};
   static const char *const backings[] = {"osb-11", "ply-13-frt", "damp-layer"};
-  static const char *const frames[] = {"wood-64", "wood-89", "wood-140", "steel-64-18", "steel-92-18", "steel-92-33", "steel-152-30",
-                                       "steel-92-54", "wood-89-stag-140", "steel-64-18-stag-102", "wood-89-double", "steel-92-18-double",
+  static const char *const frames[] = {"wood-64",          "wood-89",
+                                       "wood-140",         "steel-64-18",
+                                       "steel-92-18",      "steel-92-33",
+                                       "steel-152-30",     "steel-92-54",
+                                       "wood-89-stag-140", "steel-64-18-stag-102",
+                                       "wood-89-double",   "steel-92-18-double",
                                        "wood-89-frt"};
-  static const char *const fills[] = {"glass-65", "glass-89", "stone-89", "stone-76", "cell-89", "glass-140"};
+  static const char *const fills[] = {"glass-65", "glass-89", "stone-89",
+                                      "stone-76", "cell-89",  "glass-140"};
   add_only(b, boards[dice(7)]);
   add_only(b, boards[dice(7)]);
   if (chance(40)) add_only(b, backings[dice(3)]);
@@ -92,7 +104,8 @@ static inline void choose_limits(brief *b) {
 
 /* A brief that depends on `seed` alone. */
 static inline brief random_brief(unsigned seed) {
-  static const char *const withouts[] = {"steel-*", "typex-16", "fill:glass-*", "osb-*", "wood-89*", "rc"};
+  static const char *const withouts[] = {"steel-*", "typex-16", "fill:glass-*",
+                                         "osb-*",   "wood-89*", "rc"};
   static const int minutes[] = {30, 45, 60};
   brief b;
   dice_state = seed * 2654435761u + 12345;
@@ -101,7 +114,9 @@ static inline brief random_brief(unsigned seed) {
   b.length_m = 3 + 0.5 * dice(15);
   b.height_m = 2.4 + 0.3 * dice(4);
   choose_parts(&b);
-  if (chance(25)) b.openings[b.opening_count++] = (opening){.kind = "door", .area_m2 = 0.5 + 0.5 * dice(4), .stc = 28 + 4 * dice(5)};
+  if (chance(25))
+    b.openings[b.opening_count++] =
+        (opening){.kind = "door", .area_m2 = 0.5 + 0.5 * dice(4), .stc = 28 + 4 * dice(5)};
   b.target_count = chance(20) ? 2 : 1;
   for (int i = 0; i < b.target_count; i++) choose_target(&b.targets[i], &b);
   choose_sides(&b);
@@ -137,7 +152,8 @@ static inline brute judge_all(const space *s) {
     for (int i = 0; i < s->face_count; i++)
       for (int j = 0; j < s->face_count; j++) {
         if (!space_legal(s, k, i, j)) continue;
-        arena *a = arena_create(0, &shop.out_of_memory); /* a judged wall is some hundred KiB of words */
+        arena *a =
+            arena_create(0, &shop.out_of_memory); /* a judged wall is some hundred KiB of words */
         ck_assert_ptr_nonnull(a);
         all.wall[all.count++] = judged(a, s, k, i, j);
         arena_free(a);
@@ -146,7 +162,8 @@ static inline brute judge_all(const space *s) {
 }
 
 /* The first in tie order that breaks nothing but what is given up; NULL when there is none. */
-static inline const candidate *brute_cheapest(const space *s, const brute *all, rule_mask given_up) {
+static inline const candidate *brute_cheapest(const space *s, const brute *all,
+                                              rule_mask given_up) {
   const candidate *best = NULL;
   for (int i = 0; i < all->count; i++) {
     const candidate *c = &all->wall[i];

@@ -1,5 +1,5 @@
-/* Prices of rules against picking anew without the rule, conflicts and near misses against every wall, break-even prices against
- * picking anew with the price moved. */
+/* Prices of rules against picking anew without the rule, conflicts and near misses against every
+ * wall, break-even prices against picking anew with the price moved. */
 #include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -62,8 +62,8 @@ START_TEST(a_rule_costs_what_a_fresh_pick_without_it_saves) {
     ck_assert_double_ge(p->price_total, 0);
     if (!explain_relax(&x.brief, p->rule, &relaxed)) continue; /* height: no brief is without it */
     long long saved = x.choice.chosen.is.cost_cents - fresh_pick(&relaxed);
-    ck_assert_msg(llround(p->price_total * 100) == saved, "brief %d, %s: %.2f for %.2f", _i, p->name, p->price_total,
-                  (double)saved / 100);
+    ck_assert_msg(llround(p->price_total * 100) == saved, "brief %d, %s: %.2f for %.2f", _i,
+                  p->name, p->price_total, (double)saved / 100);
   }
 }
 END_TEST
@@ -76,7 +76,8 @@ START_TEST(height_costs_what_lower_walls_save) {
   const candidate *best = brute_cheapest(&x.space, &all, rule_bit(RULE_HEIGHT));
   for (int i = 0; i < x.why.price_count; i++)
     if (x.why.prices[i].rule == RULE_HEIGHT)
-      ck_assert_int_eq(llround(x.why.prices[i].price_total * 100), x.choice.chosen.is.cost_cents - best->is.cost_cents);
+      ck_assert_int_eq(llround(x.why.prices[i].price_total * 100),
+                       x.choice.chosen.is.cost_cents - best->is.cost_cents);
 }
 END_TEST
 
@@ -93,8 +94,10 @@ START_TEST(heavy_fastening_pays_for_its_backing) {
   b->side[SIDE_A].fastening = FASTENING_HEAVY;
   explain_brief(&x);
   ck_assert(x.choice.found);
-  for (int i = 0; i < x.why.price_count; i++) /* on wood no wall is refused for it: what it costs is the backing */
-    if (x.why.prices[i].rule == RULE_FASTENING_A) ck_assert_double_gt(x.why.prices[i].price_total, 0);
+  for (int i = 0; i < x.why.price_count;
+       i++) /* on wood no wall is refused for it: what it costs is the backing */
+    if (x.why.prices[i].rule == RULE_FASTENING_A)
+      ck_assert_double_gt(x.why.prices[i].price_total, 0);
 }
 END_TEST
 
@@ -181,7 +184,8 @@ START_TEST(conflicts_and_near_misses_of_briefs) {
   for (int i = 0; i < x.why.conflict_count; i++) {
     rule_mask set = x.why.conflicts[i];
     ck_assert(all_walls_break(&all, set));
-    for (rule_mask rest = set; rest; rest &= rest - 1) ck_assert(!all_walls_break(&all, set & ~(rest & (~rest + 1))));
+    for (rule_mask rest = set; rest; rest &= rest - 1)
+      ck_assert(!all_walls_break(&all, set & ~(rest & (~rest + 1))));
   }
   int fewest = RULES_MAX;
   for (int i = 0; i < all.count; i++)
@@ -195,8 +199,9 @@ END_TEST
 
 /* ---- break-even ---- */
 
-/* The chosen wall's cost before rounding, and that of the wall that a fresh pick takes, at a moved price. Rounding to cents line by
- * line may name another wall as cheapest when two are within it: so many lines of half a cent. */
+/* The chosen wall's cost before rounding, and that of the wall that a fresh pick takes, at a moved
+ * price. Rounding to cents line by line may name another wall as cheapest when two are within it:
+ * so many lines of half a cent. */
 static const double rounding = 0.005 * COST_MAX_LINES;
 
 static price_book moved_prices(const char *item, double price) {
@@ -205,7 +210,8 @@ static price_book moved_prices(const char *item, double price) {
   memcpy(b.items, shop.prices->items, b.count * sizeof *b.items);
   for (size_t i = 0; i < b.count; i++)
     if (text_equal(b.items[i].code, item)) b.items[i].price = price;
-  static const char *const trades[TRADE_COUNT] = {"labour hanger", "labour taper", "labour insulator"};
+  static const char *const trades[TRADE_COUNT] = {"labour hanger", "labour taper",
+                                                  "labour insulator"};
   for (int t = 0; t < TRADE_COUNT; t++)
     if (text_equal(trades[t], item)) b.rate[t] = price;
   return b;
@@ -224,7 +230,8 @@ static double beaten_by(const scene *x, const char *item, double price) {
   return (double)(chosen->numbers.cost_cents - best.is.cost_cents) / 100;
 }
 
-/* With a cost limit the feasible walls change with prices: then break-even says nothing that a fresh pick could check. */
+/* With a cost limit the feasible walls change with prices: then break-even says nothing that a
+ * fresh pick could check. */
 START_TEST(at_a_break_even_price_another_wall_takes_over) {
   scene x;
   x.brief = random_brief((unsigned)_i);

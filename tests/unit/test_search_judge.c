@@ -6,13 +6,17 @@
 #include "random_briefs.h"
 #include "wall/line.h"
 
-static const double z_digits = 5e-5;   /* the tables of the normal distribution give four decimals */
-static const double tenth_db = 0.1;    /* exact ratings are stepped down to 0.1 dB */
-static const double points = 0.015;    /* probabilities given in per cent */
+static const double z_digits = 5e-5; /* the tables of the normal distribution give four decimals */
+static const double tenth_db = 0.1;  /* exact ratings are stepped down to 0.1 dB */
+static const double points = 0.015;  /* probabilities given in per cent */
 
 /* ---- integers ---- */
 
-static const struct { const char *name; double metres; int tenth_mm; } thicknesses[] = {
+static const struct {
+  const char *name;
+  double metres;
+  int tenth_mm;
+} thicknesses[] = {
     {"3-5/8 in stud with two 5/8 in boards", 0.0921 + 0.0159 + 0.0159, 1239},
     {"a half is rounded up", 0.09525 + 0.0, 953},
     {"a half whatever the order of its sum", 0.015875 + 0.0635 + 0.015875, 953},
@@ -20,7 +24,8 @@ static const struct { const char *name; double metres; int tenth_mm; } thickness
 };
 
 START_TEST(thickness_in_tenths_of_a_millimetre) {
-  ck_assert_msg(rules_thickness(thicknesses[_i].metres) == thicknesses[_i].tenth_mm, "%s", thicknesses[_i].name);
+  ck_assert_msg(rules_thickness(thicknesses[_i].metres) == thicknesses[_i].tenth_mm, "%s",
+                thicknesses[_i].name);
 }
 END_TEST
 
@@ -45,7 +50,10 @@ START_TEST(each_limit_breaks_its_own_rule) {
   b.mass_kg_m2 = (limit){true, true, 20, 40};
   b.cost_per_m2 = (limit){false, true, 0, 100};
   b.fire_min = 60;
-  const struct { wall_numbers n; int rule; } rows[] = {
+  const struct {
+    wall_numbers n;
+    int rule;
+  } rows[] = {
       {{.total_cents = 100001}, RULE_COST_MAX},
       {{.thickness_tenth_mm = 2009}, RULE_THICKNESS_MAX},
       {{.thickness_tenth_mm = 991}, RULE_THICKNESS_MIN},
@@ -72,7 +80,12 @@ END_TEST
 
 /* ---- patterns ---- */
 
-static const struct { const char *pattern; catalog_kind kind; const char *id; bool meets; } patterns[] = {
+static const struct {
+  const char *pattern;
+  catalog_kind kind;
+  const char *id;
+  bool meets;
+} patterns[] = {
     {"wood-*", CATALOG_FRAME, "wood-89", true},
     {"frame:wood-*", CATALOG_FRAME, "wood-89", true},
     {"board:wood-*", CATALOG_FRAME, "wood-89", false},
@@ -85,23 +98,28 @@ static const struct { const char *pattern; catalog_kind kind; const char *id; bo
 };
 
 START_TEST(patterns_meet_ids) {
-  ck_assert_int_eq(rules_pattern_meets(patterns[_i].pattern, patterns[_i].kind, patterns[_i].id), patterns[_i].meets);
+  ck_assert_int_eq(rules_pattern_meets(patterns[_i].pattern, patterns[_i].kind, patterns[_i].id),
+                   patterns[_i].meets);
 }
 END_TEST
 
 START_TEST(more_patterns_than_bits) {
   brief b;
   job_defaults(&b);
-  for (int i = 0; i < BRIEF_MAX_PATTERNS; i++) b.without[b.without_count++] = i == BRIEF_MAX_PATTERNS - 1 ? "rc" : "no-such-*";
+  for (int i = 0; i < BRIEF_MAX_PATTERNS; i++)
+    b.without[b.without_count++] = i == BRIEF_MAX_PATTERNS - 1 ? "rc" : "no-such-*";
   ck_assert_uint_eq(rules_without(&b, CATALOG_MOUNT, "rc"), rule_bit(RULES_MAX - 1));
-  ck_assert_int_eq(rules_count(rules_in_force(&b) & ~(rule_bit(RULE_WITHOUT) - 1)), RULES_MAX_WITHOUT);
+  ck_assert_int_eq(rules_count(rules_in_force(&b) & ~(rule_bit(RULE_WITHOUT) - 1)),
+                   RULES_MAX_WITHOUT);
 }
 END_TEST
 
 /* ---- targets ---- */
 
 /* Standard normal distribution, from any table. */
-static const struct { double confidence, z; } normal[] = {
+static const struct {
+  double confidence, z;
+} normal[] = {
     {0.5, 0}, {0.8, 0.8416}, {0.9, 1.2816}, {0.95, 1.6449}, {0.975, 1.9600}, {0.2, -0.8416},
 };
 
@@ -135,16 +153,21 @@ START_TEST(passing_a_target) {
   target t = {.metric = METRIC_STC, .value = ratings_at[_i].value, .margin = ratings_at[_i].margin};
   double probability;
   t.basis = ratings_at[_i].field ? BASIS_FIELD : BASIS_LAB;
-  bool pass = judge_passes(&t, 5, 2, ratings_at[_i].exact, ratings_at[_i].printed, ratings_at[_i].sd, ratings_at[_i].published,
-                           ratings_at[_i].confidence, &probability);
+  bool pass =
+      judge_passes(&t, 5, 2, ratings_at[_i].exact, ratings_at[_i].printed, ratings_at[_i].sd,
+                   ratings_at[_i].published, ratings_at[_i].confidence, &probability);
   ck_assert_msg(pass == ratings_at[_i].pass, "%s", ratings_at[_i].name);
   ck_assert_double_eq_tol(probability, ratings_at[_i].probability, points);
 }
 END_TEST
 
 START_TEST(smallest_sets_without_which_a_wall_passes) {
-  const rule_mask target_bit = rule_bit(RULE_TARGET), confidence = rule_bit(RULE_CONFIDENCE), composite = rule_bit(RULE_COMPOSITE);
-  const struct { judge_reach reach; rule_mask broken, instead; } rows[] = {
+  const rule_mask target_bit = rule_bit(RULE_TARGET), confidence = rule_bit(RULE_CONFIDENCE),
+                  composite = rule_bit(RULE_COMPOSITE);
+  const struct {
+    judge_reach reach;
+    rule_mask broken, instead;
+  } rows[] = {
       {{true, true, true, true}, 0, 0},
       {{false, true, false, true}, confidence, 0},
       {{false, false, true, true}, composite, 0},
@@ -200,7 +223,8 @@ START_TEST(a_heavy_side_with_a_channel_is_refused_and_told_why) {
 }
 END_TEST
 
-/* common practice, no source: a channel helps on wood, and its short-circuit takes most of that away */
+/* common practice, no source: a channel helps on wood, and its short-circuit takes most of that
+ * away */
 START_TEST(a_mounted_leaf_has_its_short_circuited_rating) {
   brief b = asking(45);
   assessment *x = arena_alloc(shop.memory, sizeof *x);
@@ -241,13 +265,15 @@ START_TEST(evidence_published_refuses_predictions) {
 }
 END_TEST
 
-/* With a STC 28 door in 270 ft2 of wall no wall can pass 39 (calculated: 10 lg (270 / 21) above the door). */
+/* With a STC 28 door in 270 ft2 of wall no wall can pass 39 (calculated: 10 lg (270 / 21) above the
+ * door). */
 START_TEST(a_door_caps_the_composite) {
   brief b = asking(50);
   assessment *x = arena_alloc(shop.memory, sizeof *x);
   b.length_m = 270 * UNITS_M2_PER_FT2 / 3;
   b.height_m = 3;
-  b.openings[b.opening_count++] = (opening){.kind = "door", .area_m2 = 21 * UNITS_M2_PER_FT2, .stc = 28};
+  b.openings[b.opening_count++] =
+      (opening){.kind = "door", .area_m2 = 21 * UNITS_M2_PER_FT2, .stc = 28};
   judge_line(&b, "2*typex-16 | steel-92-18-double@610, glass-89, glass-89 | 2*typex-16", x);
   ck_assert(x->has_composite);
   ck_assert_double_eq_tol(x->composite_ceiling, 28 + 10 * log10(270.0 / 21), tenth_db);
@@ -261,7 +287,9 @@ START_TEST(a_door_caps_the_composite) {
   ck_assert_double_lt(x->probability[0], 0.01);
   b.targets[0].value = 35;
   judge_line(&b, "2*typex-16 | steel-92-18-double@610, glass-89, glass-89 | 2*typex-16", x);
-  ck_assert_uint_eq(x->broken & (rule_bit(RULE_COMPOSITE) | rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE)), 0);
+  ck_assert_uint_eq(
+      x->broken & (rule_bit(RULE_COMPOSITE) | rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE)),
+      0);
 }
 END_TEST
 

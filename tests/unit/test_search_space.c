@@ -2,12 +2,13 @@
 #include <stdio.h>
 #include <stdlib.h>
 
+#include "random_briefs.h"
 #include "search/space.h"
 #include "search/tables.h"
 #include "wall/line.h"
-#include "random_briefs.h"
 
-/* The whole ordinary space: what a sweep of some seconds can take, and enough to choose from (design: about 10^6). */
+/* The whole ordinary space: what a sweep of some seconds can take, and enough to choose from
+ * (design: about 10^6). */
 enum { FEWEST_WALLS = 100000, MOST_WALLS = 2000000, LINE_PAIRS = 20000, ANY_SAMPLES = 20000 };
 
 static brief plain_brief(void) {
@@ -41,11 +42,20 @@ static void check_fine(const space *s, int core, int face_a, int face_b, void *u
   ++*(long long *)user;
 }
 
-static void set_plain(brief *b) { (void)b; }
-static void set_wet(brief *b) { b->side[SIDE_A].wet = true; }
-static void set_abuse_both(brief *b) { b->side[SIDE_A].abuse = b->side[SIDE_B].abuse = true; }
+static void set_plain(brief *b) {
+  (void)b;
+}
+static void set_wet(brief *b) {
+  b->side[SIDE_A].wet = true;
+}
+static void set_abuse_both(brief *b) {
+  b->side[SIDE_A].abuse = b->side[SIDE_B].abuse = true;
+}
 
-static const struct { const char *name; void (*set)(brief *); } rooms[] = {
+static const struct {
+  const char *name;
+  void (*set)(brief *);
+} rooms[] = {
     {"plain rooms", set_plain},
     {"one wet room", set_wet},
     {"two abused rooms", set_abuse_both},
@@ -60,7 +70,8 @@ START_TEST(ordinary_walls_have_no_finding) {
   make_space(&b, &x, &s);
   for_each(&s, check_fine, &count);
   ck_assert_int_eq(count, space_count(&s));
-  ck_assert_msg(count >= FEWEST_WALLS && count <= MOST_WALLS, "%s: %lld walls", rooms[_i].name, count);
+  ck_assert_msg(count >= FEWEST_WALLS && count <= MOST_WALLS, "%s: %lld walls", rooms[_i].name,
+                count);
 }
 END_TEST
 
@@ -75,7 +86,8 @@ START_TEST(any_build_has_more_walls_and_none_that_cannot_be_built) {
   ck_assert_int_gt(space_count(&any), fewer);
   dice_state = 1;
   for (int n = 0; n < ANY_SAMPLES; n++) {
-    int k = (int)dice((unsigned)any.core_count), i = (int)dice((unsigned)any.face_count), j = (int)dice((unsigned)any.face_count);
+    int k = (int)dice((unsigned)any.core_count), i = (int)dice((unsigned)any.face_count),
+        j = (int)dice((unsigned)any.face_count);
     if (!space_legal(&any, k, i, j)) continue;
     compat_report r;
     wall w = space_wall(&any, k, i, j);
@@ -129,7 +141,8 @@ START_TEST(alike_rooms_see_one_of_two_mirror_images) {
   for_each(&once, check_one_of_two, &both);
   long long symmetric = 0;
   for (int k = 0; k < once.core_count; k++)
-    for (int i = 0; i < once.face_count; i++) symmetric += once.own_mirror[k] && space_legal(&once, k, i, i);
+    for (int i = 0; i < once.face_count; i++)
+      symmetric += once.own_mirror[k] && space_legal(&once, k, i, i);
   ck_assert_int_eq(2 * space_count(&once) - symmetric, space_count(&both));
 }
 END_TEST
@@ -166,7 +179,8 @@ static void check_only(const space *s, int core, int face_a, int face_b, void *u
       ck_assert(text_equal(id, "typex-16") || text_equal(id, "osb-11"));
     }
     if (w.fill[side] != CATALOG_NONE) ck_assert_str_eq(c->fills[w.fill[side]].id, "glass-89");
-    if (w.mount[side].mount != CATALOG_NONE) ck_assert_str_eq(c->mounts[w.mount[side].mount].id, "rc");
+    if (w.mount[side].mount != CATALOG_NONE)
+      ck_assert_str_eq(c->mounts[w.mount[side].mount].id, "rc");
   }
 }
 
@@ -194,7 +208,8 @@ START_TEST(kinds_that_only_does_not_name_are_free) {
   make_space(&c, &y, &some);
   ck_assert_int_eq(all.face_count, some.face_count);
   ck_assert_int_lt(some.core_count, all.core_count);
-  for (int k = 0; k < some.core_count; k++) ck_assert_int_eq(shop.catalog->frames[some.cores[k].frame].material, FRAME_WOOD);
+  for (int k = 0; k < some.core_count; k++)
+    ck_assert_int_eq(shop.catalog->frames[some.cores[k].frame].material, FRAME_WOOD);
 }
 END_TEST
 
@@ -205,12 +220,13 @@ START_TEST(a_record_named_in_full_is_used_though_not_proposed) {
   add_only(&b, "steel-92-27"); /* special: unusual in ordinary build */
   make_space(&b, &x, &s);
   ck_assert_int_eq(s.core_count, 0);
-  b.only[0] = "steel-64-30";   /* stocked, not proposed */
+  b.only[0] = "steel-64-30"; /* stocked, not proposed */
   make_space(&b, &x, &s);
   ck_assert_int_gt(s.core_count, 0);
-  b.only[0] = "steel-64-3?";   /* a pattern proposes what ordinary build would */
+  b.only[0] = "steel-64-3?"; /* a pattern proposes what ordinary build would */
   make_space(&b, &x, &s);
-  for (int k = 0; k < s.core_count; k++) ck_assert_str_eq(shop.catalog->frames[s.cores[k].frame].id, "steel-64-33");
+  for (int k = 0; k < s.core_count; k++)
+    ck_assert_str_eq(shop.catalog->frames[s.cores[k].frame].id, "steel-64-33");
 }
 END_TEST
 
@@ -250,13 +266,17 @@ START_TEST(lines_compare_as_strings) {
     const char *line[2];
     for (int i = 0; i < 2; i++) {
       core[i] = (int)dice((unsigned)s.core_count);
-      a[i] = n % 2 && i == 1 ? a[0] : (int)dice((unsigned)s.face_count); /* half of them alike at the start */
+      a[i] = n % 2 && i == 1
+                 ? a[0]
+                 : (int)dice((unsigned)s.face_count); /* half of them alike at the start */
       c[i] = (int)dice((unsigned)s.face_count);
       wall w = space_wall(&s, core[i], a[i], c[i]);
       line[i] = line_print(shop.memory, shop.catalog, &w);
     }
-    int order = space_compare_lines(&s, core[0], a[0], c[0], core[1], a[1], c[1]), as_strings = strcmp(line[0], line[1]);
-    ck_assert_msg((order > 0) - (order < 0) == (as_strings > 0) - (as_strings < 0), "%s / %s", line[0], line[1]);
+    int order = space_compare_lines(&s, core[0], a[0], c[0], core[1], a[1], c[1]),
+        as_strings = strcmp(line[0], line[1]);
+    ck_assert_msg((order > 0) - (order < 0) == (as_strings > 0) - (as_strings < 0), "%s / %s",
+                  line[0], line[1]);
   }
 }
 END_TEST

@@ -2,10 +2,10 @@
 #include <stdio.h>
 #include <stdlib.h>
 
+#include "random_briefs.h"
 #include "search/cheapest.h"
 #include "search/sweep.h"
 #include "search/tables.h"
-#include "random_briefs.h"
 
 enum { BRIEFS = 60 };
 
@@ -80,7 +80,8 @@ START_TEST(the_cheapest_of_each_set_of_broken_rules) {
   }
   for (int i = 0; i < x.all.count; i++) {
     bool found = false;
-    for (int m = 0; m < r.mask_count; m++) found = found || r.masks[m].broken == x.all.wall[i].broken;
+    for (int m = 0; m < r.mask_count; m++)
+      found = found || r.masks[m].broken == x.all.wall[i].broken;
     ck_assert(found);
   }
 }
@@ -89,8 +90,10 @@ END_TEST
 /* No worse in anything that a brief may ask, and not after it in the order of ties. */
 static bool stands_for(const scene *x, const candidate *p, const candidate *q) {
   rule_mask on = rules_in_force(&x->brief);
-  bool sound = !(on & rule_bit(RULE_TARGET)) || p->is.promised_hundredth >= q->is.promised_hundredth;
-  bool thin = !(on & rule_bit(RULE_THICKNESS_MAX)) || p->is.thickness_tenth_mm <= q->is.thickness_tenth_mm;
+  bool sound =
+      !(on & rule_bit(RULE_TARGET)) || p->is.promised_hundredth >= q->is.promised_hundredth;
+  bool thin =
+      !(on & rule_bit(RULE_THICKNESS_MAX)) || p->is.thickness_tenth_mm <= q->is.thickness_tenth_mm;
   bool light = !(on & rule_bit(RULE_MASS_MAX)) || p->is.mass_hundredth <= q->is.mass_hundredth;
   bool fire = !(on & rule_bit(RULE_FIRE)) || p->is.fire_min >= q->is.fire_min;
   bool cheap = !(on & rule_bit(RULE_COST_MAX)) || p->is.total_cents <= q->is.total_cents;
@@ -105,7 +108,8 @@ START_TEST(every_wall_has_one_in_the_frontier_that_stands_for_it) {
   sweep_run(shop.memory, &x.space, &r);
   for (int i = 0; i < x.all.count; i++) {
     bool found = false;
-    for (int j = 0; j < r.frontier_count && !found; j++) found = stands_for(&x, &r.frontier[j], &x.all.wall[i]);
+    for (int j = 0; j < r.frontier_count && !found; j++)
+      found = stands_for(&x, &r.frontier[j], &x.all.wall[i]);
     ck_assert_msg(found, "brief %d wall %d", _i, i);
   }
   for (int j = 0; j < r.frontier_count; j++) { /* and each of its walls is as the judge says */
@@ -128,7 +132,8 @@ START_TEST(feasible_walls_and_the_cheapest) {
   int feasible = 0, listed = 0;
   for (int i = 0; i < x.all.count; i++) feasible += x.all.wall[i].broken == 0;
   for (const feasible_block *b = r.feasible; b; b = b->next)
-    for (int i = 0; i < b->count; i++) listed += b->wall[i].certain || sweep_confirms(&x.space, &b->wall[i]);
+    for (int i = 0; i < b->count; i++)
+      listed += b->wall[i].certain || sweep_confirms(&x.space, &b->wall[i]);
   ck_assert_int_eq(listed, feasible);
   const candidate *best = brute_cheapest(&x.space, &x.all, 0);
   ck_assert_int_eq(cheapest_find(shop.memory, &x.space, &found), best != NULL);

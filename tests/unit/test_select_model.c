@@ -1,5 +1,5 @@
-/* GLPK's choice against brute force: judge_wall on every wall of 200 seeded briefs. The model's file against what was solved, by
- * glpsol and cbc where they are installed. */
+/* GLPK's choice against brute force: judge_wall on every wall of 200 seeded briefs. The model's
+ * file against what was solved, by glpsol and cbc where they are installed. */
 #include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -68,14 +68,18 @@ static double row_value(const solver_model *m, int row, int column) {
 
 static bool row_holds(const solver_row *r, double value) {
   switch (r->sense) {
-  case ROW_LESS: return value <= r->bound;
-  case ROW_GREATER: return value >= r->bound;
-  case ROW_EQUAL: break;
+  case ROW_LESS:
+    return value <= r->bound;
+  case ROW_GREATER:
+    return value >= r->bound;
+  case ROW_EQUAL:
+    break;
   }
   return !(value < r->bound) && !(value > r->bound);
 }
 
-/* The rows are exact: a column keeps them all when, and only when, the judge says that its wall breaks nothing. */
+/* The rows are exact: a column keeps them all when, and only when, the judge says that its wall
+ * breaks nothing. */
 START_TEST(rows_say_what_the_judge_says) {
   scene x;
   solver_model m;
@@ -83,7 +87,8 @@ START_TEST(rows_say_what_the_judge_says) {
   model_pick(shop.memory, &x.space, &x.sweep, &m);
   for (int j = 0; j < x.sweep.frontier_count; j++) {
     bool holds = true;
-    for (int i = 0; i < m.row_count; i++) holds = holds && row_holds(&m.rows[i], row_value(&m, i, j));
+    for (int i = 0; i < m.row_count; i++)
+      holds = holds && row_holds(&m.rows[i], row_value(&m, i, j));
     ck_assert_msg(holds == (x.sweep.frontier[j].broken == 0), "brief %d column %d", _i, j);
   }
 }
@@ -101,7 +106,8 @@ static void open_folder(void) {
 
 static void close_folder(void) {
   static const char *const names[] = {"pick.lp", "glpsol.txt", "cbc.txt"};
-  for (size_t i = 0; i < sizeof names / sizeof names[0]; i++) (void)unlink(file_join(shop.memory, folder, names[i]));
+  for (size_t i = 0; i < sizeof names / sizeof names[0]; i++)
+    (void)unlink(file_join(shop.memory, folder, names[i]));
   (void)rmdir(folder);
   close_shop();
 }
@@ -112,14 +118,16 @@ static double number_after(const char *words, const char *label) {
   return at ? strtod(at + strlen(label), NULL) : NAN;
 }
 
-/* What another solver says of the file. `label` stands before the objective in what it writes. False when it is not installed. */
-static bool other_says(const char *command, const char *output, const char *label, const char *hopeless, bool *found,
-                       double *objective) {
+/* What another solver says of the file. `label` stands before the objective in what it writes.
+ * False when it is not installed. */
+static bool other_says(const char *command, const char *output, const char *label,
+                       const char *hopeless, bool *found, double *objective) {
   diag_list d;
   size_t len;
   diag_init(&d, shop.memory);
   if (system(command) != 0) return false;
-  char *words = file_read(shop.memory, &d, file_join(shop.memory, folder, output), LONGEST_FILE, &len);
+  char *words =
+      file_read(shop.memory, &d, file_join(shop.memory, folder, output), LONGEST_FILE, &len);
   ck_assert_ptr_nonnull(words);
   *found = strstr(words, hopeless) == NULL;
   *objective = number_after(words, label);
@@ -138,10 +146,17 @@ START_TEST(other_solvers_find_the_same_cost_in_the_file) {
   double objective = 0;
   const char *lp = file_join(shop.memory, folder, "pick.lp");
   pick(&x, (unsigned)_i, lp);
-  const char *glpsol = text_format(shop.memory, "command -v glpsol >/dev/null && cd %s && glpsol --lp pick.lp -o glpsol.txt >/dev/null", folder);
-  bool said = other_says(glpsol, "glpsol.txt", "Objective:  cost = ", "INTEGER EMPTY", &found, &objective);
+  const char *glpsol = text_format(
+      shop.memory,
+      "command -v glpsol >/dev/null && cd %s && glpsol --lp pick.lp -o glpsol.txt >/dev/null",
+      folder);
+  bool said =
+      other_says(glpsol, "glpsol.txt", "Objective:  cost = ", "INTEGER EMPTY", &found, &objective);
   compare(&x, said, found, objective);
-  const char *cbc = text_format(shop.memory, "command -v cbc >/dev/null && cd %s && cbc pick.lp solve solution cbc.txt >/dev/null", folder);
+  const char *cbc = text_format(
+      shop.memory,
+      "command -v cbc >/dev/null && cd %s && cbc pick.lp solve solution cbc.txt >/dev/null",
+      folder);
   said = other_says(cbc, "cbc.txt", "objective value", "nfeasible", &found, &objective);
   compare(&x, said, found, objective);
 }

@@ -1,4 +1,5 @@
-/* The gate to GLPK: answers against brute force, faults told and survived, files whole and readable again. */
+/* The gate to GLPK: answers against brute force, faults told and survived, files whole and readable
+ * again. */
 #include <check.h>
 #include <dirent.h>
 #include <math.h>
@@ -138,7 +139,8 @@ START_TEST(a_fixed_column_stays_at_zero) {
 }
 END_TEST
 
-/* A market split of this size (Cornuejols and Dawande 1998) is far beyond branch and bound within milliseconds. */
+/* A market split of this size (Cornuejols and Dawande 1998) is far beyond branch and bound within
+ * milliseconds. */
 START_TEST(time_runs_out) {
   uint32_t seed = 7;
   solver_model m = make(SPLIT_ROWS, SPLIT_COLUMNS + 2 * SPLIT_ROWS);
@@ -166,30 +168,46 @@ END_TEST
 
 /* ---- faults ---- */
 
-static void spoil_cost(solver_model *m) { m->columns[0].cost = NAN; }
-static void spoil_bound(solver_model *m) { m->rows[0].bound = INFINITY; }
-static void spoil_entry(solver_model *m) { m->entries[0].value = NAN; }
-static void spoil_place(solver_model *m) { m->entries[0].column = m->column_count; }
-static void spoil_row_name(solver_model *m) { m->rows[0].name = "limit[1]"; }
-static void spoil_column_name(solver_model *m) { m->columns[0].name = "e1"; }
-static void spoil_limits(solver_model *m) { m->columns[0].lower = 2; }
+static void spoil_cost(solver_model *m) {
+  m->columns[0].cost = NAN;
+}
+static void spoil_bound(solver_model *m) {
+  m->rows[0].bound = INFINITY;
+}
+static void spoil_entry(solver_model *m) {
+  m->entries[0].value = NAN;
+}
+static void spoil_place(solver_model *m) {
+  m->entries[0].column = m->column_count;
+}
+static void spoil_row_name(solver_model *m) {
+  m->rows[0].name = "limit[1]";
+}
+static void spoil_column_name(solver_model *m) {
+  m->columns[0].name = "e1";
+}
+static void spoil_limits(solver_model *m) {
+  m->columns[0].lower = 2;
+}
 /* GLPK itself finds this one, and would abort the process */
-static void spoil_twice(solver_model *m) { put(m, 0, 0, 1); }
+static void spoil_twice(solver_model *m) {
+  put(m, 0, 0, 1);
+}
 
-static const struct { const char *name; void (*spoil)(solver_model *); } spoilt[] = {
-    {"cost is no number", spoil_cost},
-    {"bound of a row is infinite", spoil_bound},
-    {"entry is no number", spoil_entry},
-    {"entry outside of the matrix", spoil_place},
-    {"row name with brackets", spoil_row_name},
-    {"column name like a number", spoil_column_name},
-    {"bounds that cross", spoil_limits},
-    {"the same place twice", spoil_twice},
+static const struct {
+  const char *name;
+  void (*spoil)(solver_model *);
+} spoilt[] = {
+    {"cost is no number", spoil_cost},          {"bound of a row is infinite", spoil_bound},
+    {"entry is no number", spoil_entry},        {"entry outside of the matrix", spoil_place},
+    {"row name with brackets", spoil_row_name}, {"column name like a number", spoil_column_name},
+    {"bounds that cross", spoil_limits},        {"the same place twice", spoil_twice},
 };
 
 START_TEST(faults_are_told_and_survived) {
   solver_model m = knapsack(3), good = knapsack(4);
-  m.entries = arena_grow(scratch, m.entries, ITEMS * sizeof *m.entries, (ITEMS + 1) * sizeof *m.entries);
+  m.entries =
+      arena_grow(scratch, m.entries, ITEMS * sizeof *m.entries, (ITEMS + 1) * sizeof *m.entries);
   spoilt[_i].spoil(&m);
   solver_result r;
   solver_run(scratch, &faults, &m, 0, &r);
