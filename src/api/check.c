@@ -27,7 +27,9 @@ static bool check_brief(call *k, const catalog *c, const json_value *root) {
 }
 
 static bool check_prices(call *k, const catalog *c, const json_value *root) {
-  return prices_read(k->memory, &k->diags, c, root) != NULL;
+  const price_book *book = prices_read(k->memory, &k->diags, c, root);
+  if (book != NULL) (void)prices_report_missing(k->memory, &k->diags, c, book);
+  return book != NULL;
 }
 
 static bool check_wall(call *k, const catalog *c, const json_value *root) {

@@ -1,5 +1,5 @@
 /* The one list of errors: number, name, what it means. docs/errors.md is checked against it.
- * Families: 1xx usage, 20x JSON text, 21x fields, 22x catalogs, 23x prices, 24x briefs, 25x
+ * Families: 1xx usage, 20x JSON text and CSV, 21x fields, 22x catalogs, 23x prices, 24x briefs, 25x
  * listings and tests reports, 3xx walls, 4xx system, 5xx internal. Numbers are never reused. */
 #ifndef BASE_ERRORS_H
 #define BASE_ERRORS_H
@@ -12,6 +12,8 @@
   X(204, JSON_NUMBER, "a number is malformed or not finite")                                       \
   X(205, JSON_DUPLICATE_KEY, "a key stands twice in one object")                                   \
   X(206, JSON_TRAILING, "text follows the JSON value")                                             \
+  X(207, CSV_SYNTAX, "the text is not a table in CSV")                                             \
+  X(208, CSV_COLUMN, "a column of a table is unknown, missing or stands twice")                    \
   X(211, FIELD_UNKNOWN, "a key is not known here")                                                 \
   X(212, FIELD_MISSING, "a required key is missing")                                               \
   X(213, FIELD_TYPE, "a value has the wrong type")                                                 \
@@ -24,6 +26,11 @@
   X(222, CATALOG_UNKNOWN_ID, "a record names an id that no catalog has")                           \
   X(231, PRICE_UNKNOWN_ITEM, "a price stands for an item that no catalog or rule uses")            \
   X(232, PRICE_MISSING, "the price book lacks an item that is needed")                             \
+  X(233, PRICE_BASE, "a price book builds on one that cannot serve")                               \
+  X(234, PRICE_BREAK, "a quantity break costs more than a smaller quantity")                       \
+  X(235, PRICE_UNMATCHED, "a line of a supplier's list fits no item, or several")                  \
+  X(236, PRICE_UNIT, "a supplier's unit cannot be turned into the item's")                         \
+  X(237, PRICE_DOUBTFUL, "a supplier's price is old, missing, or moves far")                       \
   X(241, BRIEF_CONTRADICTION, "the brief contradicts itself")                                      \
   X(301, WALL_SYNTAX, "the wall line cannot be read")                                              \
   X(302, WALL_UNKNOWN_ID, "the wall names an id that no catalog has")                              \

@@ -195,6 +195,11 @@ bool file_exists(const char *path) {
   return stat(path, &info) == 0;
 }
 
+bool file_same(const char *one, const char *other) {
+  struct stat a, b;
+  return stat(one, &a) == 0 && stat(other, &b) == 0 && a.st_dev == b.st_dev && a.st_ino == b.st_ino;
+}
+
 const char *file_beside(arena *a, const char *file, const char *relative) {
   const char *slash = file ? strrchr(file, '/') : NULL;
   if (relative[0] == '/' || !slash) return text_copy(a, relative);

@@ -15,6 +15,8 @@ char *file_read(arena *a, diag_list *d, const char *path, size_t max_bytes, size
  * diagnostic when that fails. */
 bool file_write(arena *a, diag_list *d, const char *path, const char *bytes, size_t len);
 bool file_exists(const char *path);
+/* Whether two paths lead to one file, through links too. False when one of them is not there. */
+bool file_same(const char *one, const char *other);
 /* `relative` seen from the folder of `file`; absolute paths stay. */
 const char *file_beside(arena *a, const char *file, const char *relative);
 const char *file_join(arena *a, const char *folder, const char *name);

@@ -2,6 +2,7 @@
 
 #include <string.h>
 
+#include "base/file.h"
 #include "base/text.h"
 #include "base/units.h"
 #include "input/fields.h"
@@ -14,7 +15,7 @@ const char *const trade_names[TRADE_COUNT] = {"hanger", "taper", "insulator"};
 
 /* ---- records ---- */
 
-static const char *const unit_words[] = {"m2", "ft2", "m", "ft", "each", NULL};
+const char *const price_unit_words[] = {"m2", "ft2", "m", "ft", "each", NULL};
 static const char *const trade_words[] = {"hanger", "taper", "insulator", NULL};
 /* What the words mean, in their order. */
 static const struct {
@@ -26,10 +27,21 @@ static const struct {
              {UNIT_M, UNITS_M_PER_FT},
              {UNIT_EACH, 1}};
 
+bool prices_unit(const char *word, price_unit *unit, double *si) {
+  for (size_t i = 0; price_unit_words[i]; i++) {
+    if (!text_equal(word, price_unit_words[i])) continue;
+    *unit = units[i].unit;
+    *si = units[i].si;
+    return true;
+  }
+  return false;
+}
+
 /* Wide guards against slips of a digit or a unit. */
 #define MAX_MONEY    1e6
 #define MAX_HOURS    1e3
 #define MAX_QUANTITY 1e7
+#define PRICE_SLACK  1e-9 /* prices this near are equal but for rounding */
 
 typedef struct raw_item {
   price_item item;
@@ -40,7 +52,8 @@ typedef struct raw_item {
 
 typedef struct raw_book {
   price_book book;
-  const json_value *rates, *heights, *short_wall, *tall_studs, *stock, *items;
+  const char *base;
+  const json_value *factors, *rates, *heights, *short_wall, *tall_studs, *stock, *items;
 } raw_book;
 
 #define ITEM(member) offsetof(raw_item, member)
@@ -51,7 +64,7 @@ static const field item_fields[] = {
     {"code", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.code)},
     {"name", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.name)},
     {"section", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, ITEM(item.section)},
-    {"unit", FIELD_CHOICE, REQUIRED, 0, 0, 0, unit_words, ITEM(unit)},
+    {"unit", FIELD_CHOICE, REQUIRED, 0, 0, 0, price_unit_words, ITEM(unit)},
     {"price", FIELD_NUMBER, 0, 0, MAX_MONEY, 0, NULL, ITEM(item.price)},
     {"price_bought", FIELD_NUMBER, 0, 0, MAX_MONEY, 0, NULL, ITEM(price_bought)},
     {"bought_as", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.bought_as)},
@@ -64,10 +77,13 @@ static const field item_fields[] = {
     {"minimum_order", FIELD_NUMBER, 0, 0, MAX_QUANTITY, 0, NULL, ITEM(item.minimum_order)},
     {"breaks", FIELD_VALUE, 0, 0, 0, 0, NULL, ITEM(breaks)},
     {"source", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.source)},
+    {"date", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.date)},
 };
 
 static const field book_fields[] = {
     {"about", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
+    {"base", FIELD_STRING, 0, 0, 0, 0, NULL, BOOK(base)},
+    {"place_factors", FIELD_VALUE, 0, 0, 0, 0, NULL, BOOK(factors)},
     {"name", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.name)},
     {"currency", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.currency)},
     {"place", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, BOOK(book.place)},
@@ -87,9 +103,15 @@ static const field book_fields[] = {
 
 /* What is kept of an item while its code is looked up. */
 typedef struct kept_item {
-  const json_value *json;
-  bool used, told; /* told: its unit was reported as wrong */
+  bool own, used, told; /* own: of this file, not of the base; told: its unit was reported as wrong */
 } kept_item;
+
+/* The files that are being read, each built on by the one before. */
+typedef struct chain {
+  const struct chain *above;
+  const char *file;
+  int depth;
+} chain;
 
 typedef struct reader {
   arena *arena;
@@ -97,6 +119,7 @@ typedef struct reader {
   const catalog *catalog;
   price_book *book;
   kept_item *kept;
+  chain at;
 } reader;
 
 static void fault(reader *r, error_code code, const json_value *v, const char *message) {
@@ -141,12 +164,30 @@ static void read_breaks(reader *r, const json_value *v, double si, price_item *o
   out->breaks = breaks;
 }
 
-/* Price per unit, or per bought unit with its quantity: one of them. */
-static void settle_price(reader *r, const json_value *v, raw_item *raw) {
+/* A break that costs more than less of the item is a slip somewhere, but the book can be used. */
+static void check_breaks(reader *r, const price_item *item) {
+  double before = item->price;
+  for (size_t i = 0; i < item->break_count; i++) {
+    double price = item->breaks[i].price;
+    if (price > before * (1 + PRICE_SLACK)) {
+      diag_add(r->diags, DIAG_WARNING, ERROR_PRICE_BREAK,
+               json_place(r->arena, json_get(item->json, "breaks")),
+               "the break from %s %s on costs more than a smaller quantity",
+               text_of(r->arena, item->breaks[i].from / item->unit_si, 0), item->unit_word);
+      return;
+    }
+    before = price;
+  }
+}
+
+/* Price per unit, or per bought unit with its quantity: one of them. An item of the base may keep
+ * its own. */
+static void settle_price(reader *r, const json_value *v, raw_item *raw, const price_item *base) {
   bool by_unit = json_get(v, "price") != NULL, by_bought = json_get(v, "price_bought") != NULL;
   if (by_unit && by_bought) {
     fault(r, ERROR_FIELD_CONFLICT, v, "has both \"price\" and \"price_bought\"; keep one of them");
   } else if (!by_unit && !by_bought) {
+    if (base) return;
     fault(r, ERROR_FIELD_MISSING, v, "the key \"price\" (or \"price_bought\") is missing");
   } else if (by_bought && !(raw->item.bought_quantity > 0)) {
     fault(r, ERROR_FIELD_MISSING, v, "\"price_bought\" needs \"bought_quantity\"");
@@ -155,36 +196,102 @@ static void settle_price(reader *r, const json_value *v, raw_item *raw) {
   }
 }
 
+/* Figures of an item that count units, and their kind: per unit, or units. */
+static const struct {
+  const char *key, *other; /* other: a second key that gives it */
+  size_t offset;
+  bool per_unit;
+} figures[] = {
+    {"price", "price_bought", offsetof(price_item, price), true},
+    {"hours", NULL, offsetof(price_item, hours), true},
+    {"bought_quantity", NULL, offsetof(price_item, bought_quantity), false},
+    {"minimum_order", NULL, offsetof(price_item, minimum_order), false},
+};
+
+/* From the units of the file to those of takeoff; what the file does not say stays the base's. */
+static void settle_figures(const json_value *v, price_item *item, const price_item *base) {
+  for (size_t i = 0; i < COUNT(figures); i++) {
+    double *value = (double *)(void *)((char *)item + figures[i].offset);
+    bool given = json_get(v, figures[i].key) || (figures[i].other && json_get(v, figures[i].other));
+    if (!given && base) {
+      *value = *(const double *)(const void *)((const char *)base + figures[i].offset);
+    } else if (figures[i].per_unit) {
+      *value /= item->unit_si;
+    } else {
+      *value *= item->unit_si;
+    }
+  }
+}
+
+/* What a file says of an item of its base, over what the base says. The rows of `item_fields`, none
+ * of them required but the code. */
+static bool read_fields(reader *r, const json_value *v, const price_item *base, raw_item *raw) {
+  field table[COUNT(item_fields)];
+  memcpy(table, item_fields, sizeof table);
+  raw->item.source = r->book->source;
+  raw->item.date = r->book->date;
+  if (base) {
+    for (size_t i = 1; i < COUNT(table); i++) table[i].flags &= ~(unsigned)REQUIRED;
+    raw->item = *base;
+    raw->trade = (int)base->trade;
+    while (!text_equal(price_unit_words[raw->unit], base->unit_word)) raw->unit++;
+    if (json_get(v, "price") || json_get(v, "price_bought")) {
+      raw->item.source = r->book->source;
+      raw->item.date = r->book->date;
+      raw->item.breaks = NULL; /* they belong to the base's price */
+      raw->item.break_count = 0;
+    }
+  }
+  return fields_read(r->arena, r->diags, v, table, COUNT(table), raw);
+}
+
+/* The item of this code so far; CATALOG_NONE for a new one and after a fault. */
+static int find_base_item(reader *r, const json_value *v, bool *twice) {
+  const json_value *code = json_get(v, "code");
+  *twice = false;
+  if (!code || code->kind != JSON_STRING) return CATALOG_NONE;
+  int same = prices_item(r->book, code->string);
+  if (same == CATALOG_NONE || !r->kept[same].own) return same;
+  *twice = true;
+  fault(r, ERROR_FIELD_CONFLICT, v,
+        text_format(r->arena, "the code \"%s\" stands already in line %d", code->string,
+                    r->book->items[same].json->line));
+  return CATALOG_NONE;
+}
+
 static void read_item(reader *r, const json_value *v) {
   raw_item raw;
+  bool twice = false;
   memset(&raw, 0, sizeof raw);
-  raw.item.source = r->book->source;
-  if (!fields_read(r->arena, r->diags, v, item_fields, COUNT(item_fields), &raw)) return;
+  int at = find_base_item(r, v, &twice);
+  const price_item *base = at == CATALOG_NONE ? NULL : &r->book->items[at];
+  if (!read_fields(r, v, base, &raw) || twice) return;
   price_item *item = &raw.item;
-  settle_price(r, v, &raw);
-  double si = units[raw.unit].si;
+  if (base && !json_get(v, "bought_quantity"))
+    item->bought_quantity = base->bought_quantity / units[raw.unit].si;
+  settle_price(r, v, &raw, base);
   item->unit = units[raw.unit].unit;
+  item->unit_word = price_unit_words[raw.unit];
+  item->unit_si = units[raw.unit].si;
   item->trade = (trade)raw.trade;
-  item->price /= si;
-  item->hours /= si;
-  item->bought_quantity *= si;
-  item->minimum_order *= si;
-  if (raw.breaks) read_breaks(r, raw.breaks, si, item);
-  int same = prices_item(r->book, item->code);
-  if (same != CATALOG_NONE) {
-    int line = r->kept[same].json->line;
-    fault(r, ERROR_FIELD_CONFLICT, v,
-          text_format(r->arena, "the code \"%s\" stands already in line %d", item->code, line));
-    return;
+  item->json = v;
+  settle_figures(v, item, base);
+  if (raw.breaks) {
+    item->break_count = 0;
+    read_breaks(r, raw.breaks, item->unit_si, item);
+    check_breaks(r, item);
   }
-  r->kept[r->book->count].json = v;
-  r->book->items[r->book->count++] = *item;
+  if (at == CATALOG_NONE) at = (int)r->book->count++;
+  r->kept[at].own = true;
+  r->book->items[at] = *item;
 }
 
 static void read_items(reader *r, const json_value *v) {
   if (!is_array(r, v, PRICES_MAX_ITEMS)) return;
-  r->book->items = arena_array(r->arena, v->count, sizeof *r->book->items);
-  r->kept = arena_array(r->arena, v->count, sizeof *r->kept);
+  price_book *b = r->book;
+  size_t room = b->count + v->count;
+  b->items = arena_grow(r->arena, b->items, b->count * sizeof *b->items, room * sizeof *b->items);
+  r->kept = arena_array(r->arena, room, sizeof *r->kept);
   for (const json_value *e = v->first; e; e = e->next) read_item(r, e);
 }
 
@@ -195,7 +302,10 @@ static void read_rates(reader *r, const json_value *v) {
       {"insulator", FIELD_NUMBER, REQUIRED, 0, MAX_MONEY, 0, NULL,
        TRADE_INSULATOR * sizeof(double)},
   };
-  (void)fields_read(r->arena, r->diags, v, table, COUNT(table), r->book->rate);
+  field own[COUNT(table)];
+  memcpy(own, table, sizeof own);
+  for (size_t i = 0; r->book->base && i < COUNT(own); i++) own[i].flags &= ~(unsigned)REQUIRED;
+  (void)fields_read(r->arena, r->diags, v, own, COUNT(own), r->book->rate);
 }
 
 /* A length with what it does to labour: a factor, or hours. */
@@ -211,6 +321,7 @@ static void read_heights(reader *r, const json_value *v) {
   price_book *b = r->book;
   double before = -1;
   if (!is_array(r, v, PRICES_MAX_HEIGHTS)) return;
+  b->height_steps = 0;
   for (const json_value *e = v->first; e; e = e->next) {
     step s = {0, 0};
     if (!fields_read(r->arena, r->diags, e, table, COUNT(table), &s)) continue;
@@ -247,6 +358,7 @@ static void read_tall_studs(reader *r, const json_value *v) {
 
 static void read_lengths(reader *r, const json_value *v, stock_lengths *out) {
   if (!is_array(r, v, PRICES_MAX_STOCK)) return;
+  out->count = 0;
   double before = 0;
   for (const json_value *e = v->first; e; e = e->next) {
     const char *expected = "a length with its unit, such as \"9ft\"";
@@ -325,7 +437,8 @@ static price_slot slot(reader *r, const char *code, price_unit unit) {
   kept->used = true;
   if (r->book->items[s.item].unit != unit && !kept->told) {
     kept->told = true;
-    fault(r, ERROR_FIELD_UNIT, json_get(kept->json, "unit"),
+    const json_value *json = r->book->items[s.item].json, *said = json_get(json, "unit");
+    fault(r, ERROR_FIELD_UNIT, said ? said : json,
           text_format(r->arena, "\"%s\" is taken off by %s", code, unit_kinds[unit]));
   }
   return s;
@@ -378,44 +491,40 @@ static void bind(reader *r) {
 
 /* ---- all codes, once each ---- */
 
-typedef struct code_list {
-  const char **code;
-  bool *priced;
-  size_t count;
-} code_list;
-
-static void list_slot(code_list *l, price_slot s) {
+static void list_slot(price_codes *l, price_slot s, price_unit unit) {
   if (!s.code) return;
   for (size_t i = 0; i < l->count; i++) {
     if (text_equal(l->code[i], s.code)) return;
   }
   l->code[l->count] = s.code;
+  l->unit[l->count] = unit;
   l->priced[l->count++] = s.item != CATALOG_NONE;
 }
 
-static code_list all_codes(arena *a, const catalog *c, const price_book *b) {
+price_codes prices_codes(arena *a, const catalog *c, const price_book *b) {
   size_t most = c->layer_count + 3 * c->frame_count + BATT_WIDTHS * c->fill_count +
                 2 * c->mount_count + WORK_COUNT;
-  code_list l = {arena_array(a, most, sizeof *l.code), arena_array(a, most, sizeof *l.priced), 0};
-  for (size_t i = 0; i < c->layer_count; i++) list_slot(&l, b->layers[i]);
+  price_codes l = {arena_array(a, most, sizeof *l.code), arena_array(a, most, sizeof *l.priced),
+                   arena_array(a, most, sizeof *l.unit), 0};
+  for (size_t i = 0; i < c->layer_count; i++) list_slot(&l, b->layers[i], UNIT_M2);
   for (size_t i = 0; i < c->frame_count; i++) {
-    list_slot(&l, b->studs[i]);
-    list_slot(&l, b->runners[i]);
-    list_slot(&l, b->heads[i]);
+    list_slot(&l, b->studs[i], UNIT_M);
+    list_slot(&l, b->runners[i], UNIT_M);
+    list_slot(&l, b->heads[i], UNIT_M);
   }
   for (size_t i = 0; i < c->fill_count; i++) {
-    for (int w = 0; w < BATT_WIDTHS; w++) list_slot(&l, b->fills[i][w]);
+    for (int w = 0; w < BATT_WIDTHS; w++) list_slot(&l, b->fills[i][w], UNIT_M2);
   }
   for (size_t i = 0; i < c->mount_count; i++) {
-    list_slot(&l, b->rails[i]);
-    list_slot(&l, b->clips[i]);
+    list_slot(&l, b->rails[i], UNIT_M);
+    list_slot(&l, b->clips[i], UNIT_EACH);
   }
-  for (int i = 0; i < WORK_COUNT; i++) list_slot(&l, b->work[i]);
+  for (int i = 0; i < WORK_COUNT; i++) list_slot(&l, b->work[i], work_goods[i].unit);
   return l;
 }
 
 int prices_report_missing(arena *a, diag_list *d, const catalog *c, const price_book *b) {
-  code_list l = all_codes(a, c, b);
+  price_codes l = prices_codes(a, c, b);
   int missing = 0;
   for (size_t i = 0; i < l.count; i++) {
     if (l.priced[i]) continue;
@@ -428,32 +537,135 @@ int prices_report_missing(arena *a, diag_list *d, const catalog *c, const price_
 }
 
 static void report_unused(reader *r) {
-  code_list l = all_codes(r->arena, r->catalog, r->book);
+  price_codes l = prices_codes(r->arena, r->catalog, r->book);
   for (size_t i = 0; i < r->book->count; i++) {
     if (r->kept[i].used) continue;
-    const char *code = r->book->items[i].code, *near = text_nearest(code, l.code, l.count);
+    const price_item *item = &r->book->items[i];
+    const char *code = item->code, *near = text_nearest(code, l.code, l.count);
     const char *hint = near ? text_format(r->arena, "; did you mean \"%s\"?", near) : "";
     diag_add(r->diags, DIAG_WARNING, ERROR_PRICE_UNKNOWN_ITEM,
-             json_place(r->arena, json_get(r->kept[i].json, "code")),
+             json_place(r->arena, json_get(item->json, "code")),
              "nothing is priced by the code \"%s\"%s", code, hint);
   }
 }
 
 /* ---- the book ---- */
 
-price_book *prices_read(arena *a, diag_list *d, const catalog *c, const json_value *root) {
-  size_t before = d->errors;
+static void read_parts(reader *r, const raw_book *raw) {
+  if (raw->rates) read_rates(r, raw->rates);
+  if (raw->heights) read_heights(r, raw->heights);
+  if (raw->short_wall) read_short_wall(r, raw->short_wall);
+  if (raw->tall_studs) read_tall_studs(r, raw->tall_studs);
+  if (raw->stock) read_stock(r, raw->stock);
+  if (raw->items) read_items(r, raw->items);
+}
+
+static price_book *read_book(arena *a, diag_list *d, const catalog *c, const json_value *root,
+                             const chain *above, reader *r);
+
+/* The book that the key "base" names; NULL after a fault. */
+static const price_book *read_base(reader *r, const json_value *v) {
+  arena *a = r->arena;
+  if (v->kind != JSON_STRING) return NULL; /* told with the fields */
+  const char *path = file_beside(a, r->book->file, v->string);
+  const char *wrong = NULL;
+  for (const chain *k = &r->at; k; k = k->above) {
+    if (k->file && file_same(k->file, path)) wrong = "builds on itself";
+  }
+  if (!file_exists(path)) wrong = "is not there";
+  if (!wrong && r->at.depth == PRICES_MAX_BASES) wrong = "stands below too many others";
+  if (wrong) {
+    fault(r, ERROR_PRICE_BASE, v, text_format(a, "the base \"%s\" %s", v->string, wrong));
+    return NULL;
+  }
+  size_t before = r->diags->errors;
+  reader below;
+  const json_value *root = json_load(a, r->diags, path);
+  price_book *base = root ? read_book(a, r->diags, r->catalog, root, &r->at, &below) : NULL;
+  if (base && r->diags->errors == before) return base;
+  fault(r, ERROR_PRICE_BASE, v, text_format(a, "the base \"%s\" has faults", v->string));
+  return NULL;
+}
+
+typedef struct place_factors {
+  double material, labour;
+} place_factors;
+
+/* The base's figures at this place. */
+static void take_base(reader *r, const price_book *base, place_factors f) {
+  price_book *b = r->book;
+  const json_value *json = b->json;
+  *b = *base;
+  b->json = json;
+  b->file = json->file;
+  b->base = base;
+  b->items = arena_array(r->arena, b->count, sizeof *b->items);
+  for (size_t i = 0; i < b->count; i++) {
+    price_item *item = &b->items[i];
+    *item = base->items[i];
+    item->price *= f.material;
+    price_break *breaks = arena_array(r->arena, item->break_count, sizeof *breaks);
+    for (size_t k = 0; k < item->break_count; k++) {
+      breaks[k] = item->breaks[k];
+      breaks[k].price *= f.material;
+    }
+    item->breaks = breaks;
+  }
+  for (int t = 0; t < TRADE_COUNT; t++) b->rate[t] *= f.labour;
+  r->kept = arena_array(r->arena, b->count, sizeof *r->kept);
+}
+
+static place_factors read_factors(reader *r, const json_value *v) {
+  static const field table[] = {
+      {"material", FIELD_NUMBER, 0, 0.1, 10, 0, NULL, offsetof(place_factors, material)},
+      {"labour", FIELD_NUMBER, 0, 0.1, 10, 0, NULL, offsetof(place_factors, labour)},
+  };
+  place_factors f = {1, 1};
+  if (v) (void)fields_read(r->arena, r->diags, v, table, COUNT(table), &f);
+  return f;
+}
+
+/* What a book with a base need not say again. */
+static void relax(field *table, size_t rows) {
+  static const char *const inherited[] = {"currency", "labour_rates", "overhead_profit",
+                                          "sales_tax", "items"};
+  for (size_t i = 0; i < rows; i++) {
+    for (size_t k = 0; k < COUNT(inherited); k++) {
+      if (text_equal(table[i].key, inherited[k])) table[i].flags &= ~(unsigned)REQUIRED;
+    }
+  }
+}
+
+static price_book *read_book(arena *a, diag_list *d, const catalog *c, const json_value *root,
+                             const chain *above, reader *r) {
   if (!json_is(a, d, root, "price-book")) return NULL;
   raw_book *raw = arena_alloc(a, sizeof *raw);
-  reader r = {a, d, c, &raw->book, NULL};
+  *r = (reader){a, d, c, &raw->book, NULL, {above, root->file, above ? above->depth + 1 : 0}};
+  raw->book.json = root;
   raw->book.file = root->file;
-  (void)fields_read(a, d, root, book_fields, COUNT(book_fields), raw);
-  if (raw->rates) read_rates(&r, raw->rates);
-  if (raw->heights) read_heights(&r, raw->heights);
-  if (raw->short_wall) read_short_wall(&r, raw->short_wall);
-  if (raw->tall_studs) read_tall_studs(&r, raw->tall_studs);
-  if (raw->stock) read_stock(&r, raw->stock);
-  if (raw->items) read_items(&r, raw->items);
+  field table[COUNT(book_fields)];
+  memcpy(table, book_fields, sizeof table);
+  const json_value *named = json_get(root, "base"), *factors = json_get(root, "place_factors");
+  if (named) {
+    const price_book *base = read_base(r, named);
+    if (base) take_base(r, base, read_factors(r, factors));
+    relax(table, COUNT(table));
+  } else if (factors) {
+    fault(r, ERROR_FIELD_CONFLICT, factors, "place factors need a \"base\" to act on");
+  }
+  const char *currency = raw->book.currency;
+  (void)fields_read(a, d, root, table, COUNT(table), raw);
+  if (raw->book.base && !text_equal(raw->book.currency, currency))
+    fault(r, ERROR_PRICE_BASE, json_get(root, "currency"),
+          text_format(a, "the base prices in %s", currency));
+  read_parts(r, raw);
+  return r->book;
+}
+
+price_book *prices_read(arena *a, diag_list *d, const catalog *c, const json_value *root) {
+  size_t before = d->errors;
+  reader r;
+  if (!read_book(a, d, c, root, NULL, &r)) return NULL;
   bind(&r);
   if (d->errors == before) report_unused(&r);
   return d->errors == before ? r.book : NULL;

@@ -36,7 +36,10 @@ typedef struct price_item {
   const price_break
       *breaks; /* rising `from`; used where a whole project is bought, never in a wall's own cost */
   size_t break_count;
-  const char *source; /* the book's where the item has none */
+  const char *source, *date; /* the book's where the item has none */
+  const char *unit_word;     /* as the file prices it: "ft2" */
+  double unit_si;            /* one of that in takeoff units */
+  const json_value *json;    /* where it was read last: with a base, perhaps in another file */
 } price_item;
 
 /* A thing that takeoffs ask for, by the code that prices it. `item` is CATALOG_NONE where the book
@@ -73,7 +76,8 @@ enum {
   PRICES_MAX_HEIGHTS = 8,
   PRICES_MAX_STOCK = 24,
   PRICES_MAX_ITEMS = 4000,
-  PRICES_MAX_BREAKS = 8
+  PRICES_MAX_BREAKS = 8,
+  PRICES_MAX_BASES = 8 /* books below one another */
 };
 
 typedef struct stock_lengths {
@@ -82,6 +86,9 @@ typedef struct stock_lengths {
 } stock_lengths;
 
 typedef struct price_book {
+  const json_value *json;        /* the file it was read from */
+  const struct price_book *base; /* the book it builds on; NULL = none. All below holds its items and
+                                    figures too, place factors applied */
   const char *file, *name, *currency, *place, *date, *source;
   double rate[TRADE_COUNT];          /* per hour */
   double overhead_profit, sales_tax; /* shares */
@@ -110,11 +117,24 @@ price_book *prices_load(arena *a, diag_list *d, const catalog *c, const char *pa
 price_book *prices_read(arena *a, diag_list *d, const catalog *c, const json_value *root);
 /* Index or CATALOG_NONE. */
 int prices_item(const price_book *b, const char *code);
+/* The codes that some catalog record or work asks for, once each, with whether the book prices them.
+ */
+typedef struct price_codes {
+  const char **code;
+  bool *priced;
+  price_unit *unit; /* that takeoffs count it in */
+  size_t count;
+} price_codes;
+price_codes prices_codes(arena *a, const catalog *c, const price_book *b);
 /* A warning for each code that some catalog record or work asks for and the book lacks; how many.
  */
 int prices_report_missing(arena *a, diag_list *d, const catalog *c, const price_book *b);
 /* "m2", "m", "each" */
 extern const char *const price_unit_names[UNIT_COUNT];
+/* The words for units that a book may use, "m2" to "each"; NULL at the end. */
+extern const char *const price_unit_words[];
+/* The takeoff unit of such a word and one of it in that unit; false for another word. */
+bool prices_unit(const char *word, price_unit *unit, double *si);
 /* "hanger", "taper", "insulator": the keys of labour rates. */
 extern const char *const trade_names[TRADE_COUNT];
 /* The width class of batts in bays of wood or steel studs at a spacing, and the code that prices
