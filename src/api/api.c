@@ -105,26 +105,33 @@ static status rate_stage(call *k, void *given) {
   return hand_out(k, job, &words, &json, &csv, STATUS_OK);
 }
 
-static status pick_stage(call *k, void *given) {
-  answer_job *job = given;
-  request *prepared = arena_alloc(k->memory, sizeof *prepared);
-  if (!request_prepare(k, job->handle, &job->options, job->operand, true, prepared))
-    return k->diags.worst;
+/* Sweeps, chooses and explains. False after messages. */
+static bool choose(call *k, const answer_job *job, const request *prepared, pick_choice *choice,
+                   explanation *why) {
   space *s = arena_alloc(k->memory, sizeof *s);
   sweep_result *swept = arena_alloc(k->memory, sizeof *swept);
-  explanation *why = arena_alloc(k->memory, sizeof *why);
-  pick_choice choice;
-  memset(&choice, 0, sizeof choice);
   space_build(k->memory, &prepared->context, s);
   sweep_run(k->memory, s, swept);
   if (!model_choose(k->memory, &k->diags, s, swept, job->options.time_limit_s,
-                    job->options.save_model, &choice))
+                    job->options.save_model, choice))
+    return false;
+  explain_pick(k->memory, s, swept, choice, why);
+  return true;
+}
+
+static status pick_stage(call *k, void *given) {
+  answer_job *job = given;
+  request *prepared = arena_alloc(k->memory, sizeof *prepared);
+  explanation *why = arena_alloc(k->memory, sizeof *why);
+  pick_choice *choice = arena_alloc(k->memory, sizeof *choice);
+  if (!request_prepare(k, job->handle, &job->options, job->operand, true, prepared))
+    return k->diags.worst;
+  if (!choose(k, job, prepared, choice, why))
     return k->diags.worst == STATUS_OK ? STATUS_INTERNAL : k->diags.worst;
-  explain_pick(k->memory, s, swept, &choice, why);
   text words, json, csv;
   start_texts(k, &words, &json, &csv);
-  report_pick_text(&prepared->report, why, &choice, &words);
-  report_pick_json(&prepared->report, why, &choice, &json);
+  report_pick_text(&prepared->report, why, choice, &words);
+  report_pick_json(&prepared->report, why, choice, &json);
   report_takeoff_csv(&prepared->report, why->chosen, &csv);
   return hand_out(k, job, &words, &json, &csv, why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
 }

@@ -89,10 +89,14 @@ def check_rating(where, data):
         say(where, "short_circuit goes with mounted leaves")
 
 
-def check_text(where, text, data):
+def check_width(where, text):
     for line in text.splitlines():
-        if len(line) > PAGE and "|" not in line:
+        if len(line) > PAGE:
             say(where, "%d columns: %s" % (len(line), line))
+
+
+def check_text(where, text, data):
+    check_width(where, text)
     flat = " ".join(text.split())
     wanted = [data["line"], "STC %d" % data["ratings"]["STC"], "OITC %d" % data["ratings"]["OITC"],
               "{:,.2f} ".format(data["cost"]["per_ft2"]), "{:,.2f}".format(data["cost"]["total"])]
@@ -132,6 +136,7 @@ def check_wall(wall):
     if data["line"] != wall:
         say(where, "printed as %s" % data["line"])
     check_text(where, run("rate", wall)[1], data)
+    check_width(where, run("rate", wall, "--units", "si")[1])
     check_csv(where, run("rate", wall, "--csv", "-")[1], data)
     with tempfile.NamedTemporaryFile("w", suffix=".json", delete=False) as f:
         json.dump(data["wall"], f)
