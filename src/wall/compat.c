@@ -4,7 +4,8 @@
 static const struct {
   double batt_squeezed; /* batt over cavity: above it stone wool and cellulose are refused */
   double batt_refused;  /* batt over cavity: above it all are */
-  double batt_least;    /* batt over stud depth: below it no crew hangs it in ordinary work */
+  double batt_least;    /* batt over cavity: below it the batt slumps */
+  double batt_wood;     /* batt over stud depth in wood: thinner ones come in widths of steel studs */
   int boards;           /* ordinary build: layers of board a side */
   int boards_differ;    /* ordinary build: by how many they may differ between the sides */
   int kinds;            /* ordinary build: kinds of board in a wall */
@@ -14,7 +15,8 @@ static const struct {
   int gap_mm;           /* rows of studs closer than this may touch */
 } limits = {.batt_squeezed = 1.10,
             .batt_refused = 1.25,
-            .batt_least = 0.8,
+            .batt_least = 0.5,
+            .batt_wood = 0.8,
             .boards = 2,
             .boards_differ = 1,
             .kinds = 2,
@@ -58,6 +60,7 @@ typedef enum rule {
   SPECIAL_FRAME,
   SPECIAL_FILL,
   BATT_LOOSE,
+  BATT_STEEL_WIDTH,
   BATT_PRESSED,
   CELLULOSE_STEEL,
   ROWS_DIFFER,
@@ -153,8 +156,10 @@ static const compat_finding rules[RULES] = {
     [SPECIAL_FILL] = {COMPAT_UNUSUAL, "special-fill", "The fill is not stocked: a special order.",
                       COMMON},
     [BATT_LOOSE] = {COMPAT_UNUSUAL, "batt-loose",
-                    "The batt fills less than four fifths of the stud's depth and may slump.",
-                    COMMON},
+                    "The batt fills less than half of the cavity and may slump.", COMMON},
+    [BATT_STEEL_WIDTH] = {COMPAT_UNUSUAL, "batt-steel-width",
+                          "Batts much thinner than a wood stud come in the widths of steel studs.",
+                          COMMON},
     [BATT_PRESSED] = {COMPAT_UNUSUAL, "batt-pressed",
                       "The glass batt is 10 to 25 % thicker than the cavity: it goes in pressed.",
                       COMMON},
@@ -296,7 +301,9 @@ static void check_fill(const catalog *c, int frame_index, int fill_index, compat
   else if (batt->thickness_m > limits.batt_squeezed * cavity + size_slack_m) {
     add(r, batt->material == FILL_GLASS ? BATT_PRESSED : BATT_SQUEEZED);
   }
-  if (batt->thickness_m < limits.batt_least * f->stud_depth_m - size_slack_m) add(r, BATT_LOOSE);
+  if (batt->thickness_m < limits.batt_least * cavity - size_slack_m) add(r, BATT_LOOSE);
+  if (f->material == FRAME_WOOD && batt->thickness_m < limits.batt_wood * f->stud_depth_m)
+    add(r, BATT_STEEL_WIDTH);
   if (batt->wood_only && f->material == FRAME_STEEL) add(r, CELLULOSE_STEEL);
   if (batt->special) add(r, SPECIAL_FILL);
 }
