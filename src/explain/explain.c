@@ -59,21 +59,22 @@ static int cheapest_first(const void *x, const void *y) {
 
 /* Of the cheaper walls those that fail the fewest rules, cheapest last: what a little more money
  * brings comes last. */
-static void list_cheaper(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
-                         explanation *out) {
+int explain_cheaper(arena *a, const space *s, const sweep_result *r, long long below_cents,
+                    assessment ***out) {
   ranked *rank = arena_array(a, (size_t)r->mask_count, sizeof *rank);
   int n = 0;
   for (int i = 0; i < r->mask_count; i++) {
     const candidate *c = &r->masks[i].best;
     bool twice = r->masks[i].broken != c->broken; /* kept again under what would save it instead */
-    if (twice || c->is.cost_cents >= chosen->is.cost_cents) continue;
+    if (twice || c->broken == 0 || c->is.cost_cents >= below_cents) continue;
     rank[n++] = (ranked){c, rules_count(c->broken), 0};
   }
   if (n > 0) qsort(rank, (size_t)n, sizeof *rank, fewest_rules);
   if (n > CHEAPER_SHOWN) n = CHEAPER_SHOWN;
   if (n > 0) qsort(rank, (size_t)n, sizeof *rank, cheapest_first);
-  out->cheaper = arena_array(a, CHEAPER_SHOWN, sizeof *out->cheaper);
-  for (int i = 0; i < n; i++) out->cheaper[out->cheaper_count++] = judge(a, s, rank[i].wall);
+  *out = arena_array(a, CHEAPER_SHOWN, sizeof **out);
+  for (int i = 0; i < n; i++) (*out)[i] = judge(a, s, rank[i].wall);
+  return n;
 }
 
 /* ---- when nothing fits ---- */
@@ -162,7 +163,7 @@ void explain_pick(arena *a, const space *s, const sweep_result *r, const pick_ch
   if (p->found) {
     out->chosen = judge(a, s, &p->chosen);
     list_runners(a, s, r, &p->chosen, out);
-    list_cheaper(a, s, r, &p->chosen, out);
+    out->cheaper_count = explain_cheaper(a, s, r, p->chosen.is.cost_cents, &out->cheaper);
     explain_prices(a, s, r, &p->chosen, out);
     explain_break_evens(a, s, r, &p->chosen, out);
   } else if (p->status == SOLVER_INFEASIBLE) {

@@ -56,6 +56,10 @@ void explain_pick(arena *a, const space *s, const sweep_result *r, const pick_ch
 /* The brief without one of its rules; false for those that a brief cannot do without (target,
  * height, price, only). */
 bool explain_relax(const brief *b, int rule, brief *out);
+/* Walls that cost less than `below_cents` and break something, one a set of broken rules: those that
+ * fail the fewest. Returns how many. */
+int explain_cheaper(arena *a, const space *s, const sweep_result *r, long long below_cents,
+                    assessment ***out);
 /* The smallest sets of rules of which every wall breaks one, from the sets of rules that walls
  * break. Returns how many; *out in ascending order of size, then of value. */
 int explain_conflicts(arena *a, const rule_mask *broken, int count, rule_mask **out);

@@ -70,6 +70,7 @@ typedef struct brief {
   target targets[BRIEF_MAX_TARGETS];
   int target_count;
   limit thickness_m, mass_kg_m2, cost_per_m2;
+  bool thickness_exact; /* the greatest thickness is another wall's own: nothing beyond it passes */
   int fire_min; /* minutes, 0 = none asked */
   bool loadbearing;
   int floors_above; /* floors_above -1 = not said */

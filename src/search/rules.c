@@ -226,7 +226,9 @@ int rules_promised(double margin_db) {
 rule_limits rules_limits(const brief *b) {
   rule_limits l = {.total_max = LLONG_MAX, .thickness_max = INT_MAX, .mass_max = INT_MAX};
   if (b->thickness_m.has_max)
-    l.thickness_max = (int)floor((b->thickness_m.max + thickness_slack_m) * 1e4 + last_bits);
+    l.thickness_max =
+        (int)floor((b->thickness_m.max + (b->thickness_exact ? 0 : thickness_slack_m)) * 1e4 +
+                   last_bits);
   if (b->thickness_m.has_min)
     l.thickness_min = (int)ceil((b->thickness_m.min - thickness_slack_m) * 1e4 - last_bits);
   if (b->mass_kg_m2.has_max) l.mass_max = (int)floor(b->mass_kg_m2.max * 100 + last_bits);
