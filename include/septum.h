@@ -55,6 +55,10 @@ typedef struct septum_options {
   const char *brief;      /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
   const char *save_model; /* pick: path for the 0-1 model in CPLEX LP format; NULL = none */
   const char *save_csv;   /* rate, pick: path for the takeoff as CSV; NULL = none */
+  const char *save_xlsx;  /* rate, pick: path for the takeoff as a spreadsheet; NULL = none */
+  const char *save_prices; /* prices_update: path for the new price book; NULL = none */
+  const char *today;      /* prices: the date that ages count to, "2031-03-01"; NULL = the newest in
+                             the files. There is no clock in here */
   double time_limit_s;    /* pick: seconds for the solver; 0 = no limit */
   septum_units units;     /* of text and CSV */
 } septum_options;
@@ -83,6 +87,15 @@ septum_status septum_pick(septum *handle, const char *path, const septum_options
  * which say that at least one file has a fault (NULL only when memory ran out). */
 septum_status septum_check(septum *handle, const char *const *paths, size_t count,
                            septum_answer **out);
+
+/* What a supplier's list (CSV, docs/formats/prices-csv.md) does to a price book: which row prices
+ * which item, what changes, what is left alone. With options->save_prices the new book is written
+ * there, unless anything in either file is a fault (SEPTUM_DATA, *out NULL, nothing written). */
+septum_status septum_prices_update(septum *handle, const char *list, const septum_options *options,
+                                   septum_answer **out);
+/* The price book as such a list: the answer's CSV, and options->save_csv. */
+septum_status septum_prices_list(septum *handle, const septum_options *options,
+                                 septum_answer **out);
 
 /* The answer as text for people, as JSON, and (rate and pick; else empty) its takeoff as CSV. All
  * live as long as the answer. */

@@ -28,9 +28,7 @@
   X(232, PRICE_MISSING, "the price book lacks an item that is needed")                             \
   X(233, PRICE_BASE, "a price book builds on one that cannot serve")                               \
   X(234, PRICE_BREAK, "a quantity break costs more than a smaller quantity")                       \
-  X(235, PRICE_UNMATCHED, "a line of a supplier's list fits no item, or several")                  \
-  X(236, PRICE_UNIT, "a supplier's unit cannot be turned into the item's")                         \
-  X(237, PRICE_DOUBTFUL, "a supplier's price is old, missing, or moves far")                       \
+  X(235, PRICE_UNIT, "a supplier's unit cannot be turned into the item's")                         \
   X(241, BRIEF_CONTRADICTION, "the brief contradicts itself")                                      \
   X(301, WALL_SYNTAX, "the wall line cannot be read")                                              \
   X(302, WALL_UNKNOWN_ID, "the wall names an id that no catalog has")                              \

@@ -9,13 +9,18 @@ typedef enum option_id {
   OPTION_BRIEF,
   OPTION_CATALOGS,
   OPTION_CSV,
+  OPTION_FROM_CSV,
   OPTION_HELP,
   OPTION_JSON,
   OPTION_PRICES,
   OPTION_SAVE_MODEL,
   OPTION_TIME_LIMIT,
+  OPTION_TO_CSV,
+  OPTION_TODAY,
   OPTION_UNITS,
-  OPTION_VERSION
+  OPTION_VERSION,
+  OPTION_WRITE,
+  OPTION_XLSX
 } option_id;
 
 typedef struct option_row {
@@ -32,15 +37,21 @@ static const option_row option_rows[] = {
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
     {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK,
      "also write the takeoff as CSV; - prints it in place of the text"},
+    {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
-    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK,
+    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK | CLI_PRICES,
      "price book (price-book/1) in place of the brief's or the default"},
     {"save-model", "FILE", OPTION_SAVE_MODEL, CLI_PICK, "write the 0-1 model in CPLEX LP format"},
     {"time-limit", "S", OPTION_TIME_LIMIT, CLI_PICK, "seconds for the solver; the gap is printed"},
+    {"to-csv", "FILE", OPTION_TO_CSV, CLI_PRICES, "write the price book as a list; - prints it"},
+    {"today", "DATE", OPTION_TODAY, CLI_PRICES,
+     "what ages count to, as 2031-03-01; default: the newest date in the files"},
     {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK,
      "units of text and CSV; default: the brief's, else us"},
     {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
+    {"write", "FILE", OPTION_WRITE, CLI_PRICES, "write the price book with the list's prices"},
+    {"xlsx", "FILE", OPTION_XLSX, CLI_RATE | CLI_PICK, "also write the takeoff as a spreadsheet"},
 };
 enum { OPTION_COUNT = sizeof option_rows / sizeof option_rows[0] };
 
@@ -59,6 +70,12 @@ static const command_row command_rows[] = {
     {"pick", "BRIEF", CLI_PICK, 1, 1, "the cheapest wall that keeps every rule of a brief",
      "BRIEF is a brief/1 file. The answer names the wall, its rating and what that rests on, the\n"
      "takeoff, what cheaper walls fail, and what each rule costs.\n"},
+    {"prices", "OPTIONS", CLI_PRICES, 0, 0,
+     "a supplier's prices into a price book, or a book as a list",
+     "With --from-csv, shows which row of the list (CSV: code, description, unit, price) prices "
+     "which\n"
+     "item and what changes; only --write writes the new book, and never when anything is a fault.\n"
+     "--to-csv writes the book out as such a list. The book is --prices, else the default.\n"},
     {"rate", "LINE|FILE", CLI_RATE, 1, 1, "rate one wall: sound, fire, height, cost",
      "LINE is a wall line, from side A to side B, or FILE a wall/1 file:\n"
      "  septum rate '2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16'\n"
@@ -129,6 +146,9 @@ static bool apply(option_id id, const char *value, cli_line *out) {
   case OPTION_CSV:
     out->csv = value;
     return true;
+  case OPTION_FROM_CSV:
+    out->list = value;
+    return true;
   case OPTION_HELP:
     out->help = true;
     return true;
@@ -143,10 +163,22 @@ static bool apply(option_id id, const char *value, cli_line *out) {
     return true;
   case OPTION_TIME_LIMIT:
     return read_seconds(value, &out->options.time_limit_s);
+  case OPTION_TO_CSV:
+    out->csv = value;
+    return true;
+  case OPTION_TODAY:
+    out->options.today = value;
+    return true;
   case OPTION_UNITS:
     return read_units(value, &out->options.units);
   case OPTION_VERSION:
     out->version = true;
+    return true;
+  case OPTION_WRITE:
+    out->options.save_prices = value;
+    return true;
+  case OPTION_XLSX:
+    out->options.save_xlsx = value;
     return true;
   }
   return false;
@@ -200,6 +232,20 @@ static bool fits(const command_row *command, int used, size_t operands) {
   return false;
 }
 
+/* `prices` goes one way or the other. */
+static bool prices_fits(const cli_line *line) {
+  if (line->command != CLI_PRICES) return true;
+  if ((line->list == NULL) == (line->csv == NULL)) {
+    complain("prices wants either --from-csv or --to-csv", "");
+    return false;
+  }
+  if (line->list == NULL && line->options.save_prices != NULL) {
+    complain("--write goes with --from-csv", "");
+    return false;
+  }
+  return true;
+}
+
 bool options_read(int argc, char **argv, cli_line *out) {
   memset(out, 0, sizeof *out);
   septum_options_init(&out->options);
@@ -233,7 +279,7 @@ bool options_read(int argc, char **argv, cli_line *out) {
     complain("--json and --csv - both want stdout", "");
     return false;
   }
-  return fits(command, used, out->operand_count);
+  return fits(command, used, out->operand_count) && prices_fits(out);
 }
 
 static void print_options(int commands) {
@@ -251,7 +297,7 @@ void options_help(cli_command command) {
   if (command == CLI_NONE) {
     printf("septum %s: which wall to build between two rooms.\n\n", septum_version());
     for (size_t i = 0; i < COMMAND_COUNT; i++)
-      printf("  septum %-5s %-10s %s\n", command_rows[i].name, command_rows[i].operands,
+      printf("  septum %-6s %-10s %s\n", command_rows[i].name, command_rows[i].operands,
              command_rows[i].help);
     printf("\n");
     print_options(CLI_ANY);

@@ -274,7 +274,7 @@ static bool is_filler(char c) {
   return c == ' ' || c == '-' || c == '_' || c == '\n';
 }
 
-static bool same_name(const char *a, const char *b) {
+bool csv_same(const char *a, const char *b) {
   for (;;) {
     while (is_filler(*a)) a++;
     while (is_filler(*b)) b++;
@@ -287,23 +287,23 @@ static bool same_name(const char *a, const char *b) {
 
 int csv_column(const csv_table *t, const char *name) {
   for (size_t i = 0; i < t->columns; i++) {
-    if (same_name(t->header[i].text, name)) return (int)i;
+    if (csv_same(t->header[i].text, name)) return (int)i;
   }
   return -1;
 }
 
 bool csv_check_header(arena *a, diag_list *d, const csv_table *t, const char *const *names,
-                      size_t n) {
+                      size_t n, diag_level unknown) {
   size_t before = d->errors;
   const csv_row header = {1, (csv_cell *)t->header};
   for (size_t i = 0; i < t->columns; i++) {
     const char *name = t->header[i].text;
     size_t known = 0;
-    while (known < n && !same_name(name, names[known])) known++;
+    while (known < n && !csv_same(name, names[known])) known++;
     diag_place place = csv_place(a, t, &header, (int)i);
     if (known == n) {
       const char *near = text_nearest(name, names, n);
-      diag_add(d, DIAG_ERROR, ERROR_CSV_COLUMN, place, "the column \"%s\" is not known here%s%s",
+      diag_add(d, unknown, ERROR_CSV_COLUMN, place, "the column \"%s\" is not known here%s%s",
                name, near ? "; the nearest is " : "", near ? near : "");
     } else if (csv_column(t, name) != (int)i) {
       diag_add(d, DIAG_ERROR, ERROR_CSV_COLUMN, place, "the column \"%s\" stands twice", name);

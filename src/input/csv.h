@@ -41,12 +41,15 @@ typedef struct csv_table {
 csv_table *csv_parse(arena *a, diag_list *d, const char *file, const char *bytes, size_t len);
 csv_table *csv_load(arena *a, diag_list *d, const char *path);
 
+/* Whether two names or descriptions are the same without case, blanks, hyphens and underscores. */
+bool csv_same(const char *one, const char *other);
 /* The column of that name, compared without case, blanks, hyphens and underscores; -1 when there is
  * none. */
 int csv_column(const csv_table *t, const char *name);
-/* False, and one error for each header that is none of `names` or stands twice. */
+/* A message of level `unknown` for each header that is none of `names`, an error for one that stands
+ * twice. False after an error. */
 bool csv_check_header(arena *a, diag_list *d, const csv_table *t, const char *const *names,
-                      size_t n);
+                      size_t n, diag_level unknown);
 /* The cell of a row in a column; "" in a column that is not there (-1). */
 const char *csv_text(const csv_row *r, int column);
 /* Where a cell stands, for diag_add: path "C14 (price)". Column -1: the row, path "row 14". */
