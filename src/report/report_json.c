@@ -3,7 +3,7 @@
  * the amount to the cent. */
 #include <math.h>
 
-#include "report/markup.h"
+#include "report/report_json.h"
 #include "report/view.h"
 #include "septum.h"
 
@@ -80,7 +80,7 @@ static void put_bands(markup_json *j, const char *key, const double value[BANDS]
   markup_json_close(j);
 }
 
-static void put_ratings(markup_json *j, const char *key, const ratings *v) {
+void report_json_ratings(markup_json *j, const char *key, const ratings *v) {
   markup_json_object(j, key, true);
   markup_json_integer(j, "STC", v->stc);
   markup_json_integer(j, "Rw", v->rw);
@@ -102,13 +102,13 @@ static void put_sound(markup_json *j, const assessment *x) {
   const prediction *p = &x->predicted;
   put_bands(j, "bands_hz", bands_hz, 1);
   put_bands(j, "tl_db", p->tl_db, DB_DIGITS);
-  put_ratings(j, "ratings", &x->ratings);
+  report_json_ratings(j, "ratings", &x->ratings);
   markup_json_number(j, "stc_exact", p->exact[METRIC_STC], DB_DIGITS);
   markup_json_number(j, "sd", p->sd[METRIC_STC], SD_DIGITS);
   put_metrics(j, "exact", p->exact, DB_DIGITS);
   markup_json_string(j, "family", sound_family_names[p->family]);
   markup_json_object(j, "prediction", false);
-  put_ratings(j, "ratings", &p->ratings);
+  report_json_ratings(j, "ratings", &p->ratings);
   put_metrics(j, "exact", p->exact, DB_DIGITS);
   put_metrics(j, "sd", p->sd, SD_DIGITS);
   markup_json_array(j, "outside", false);
@@ -170,7 +170,7 @@ static void put_targets(markup_json *j, const report *r, const assessment *x) {
 static void put_other_sound(markup_json *j, const assessment *x) {
   if (x->mounted) {
     markup_json_object(j, "short_circuit", false);
-    put_ratings(j, "ratings", &x->short_predicted.ratings);
+    report_json_ratings(j, "ratings", &x->short_predicted.ratings);
     markup_json_number(j, "stc_exact", x->short_predicted.exact[METRIC_STC], DB_DIGITS);
     markup_json_string(j, "line", x->short_line);
     markup_json_close(j);
@@ -181,7 +181,7 @@ static void put_other_sound(markup_json *j, const assessment *x) {
     return;
   }
   markup_json_object(j, "composite", false);
-  put_ratings(j, "ratings", &x->composite);
+  report_json_ratings(j, "ratings", &x->composite);
   put_metrics(j, "exact", x->composite_exact, DB_DIGITS);
   markup_json_number(j, "ceiling", x->composite_ceiling, DB_DIGITS);
   markup_json_close(j);
@@ -223,7 +223,7 @@ static void put_broken(markup_json *j, const report *r, const char *key, const a
   markup_json_close(j);
 }
 
-static void put_mask(markup_json *j, const report *r, const char *key, rule_mask mask) {
+void report_json_rules(markup_json *j, const report *r, const char *key, rule_mask mask) {
   markup_json_array(j, key, true);
   for (int i = 0; i < RULES_MAX; i++)
     if ((mask >> i) & 1u) markup_json_string(j, NULL, rule_name(r->arena, r->brief, i));
@@ -232,7 +232,7 @@ static void put_mask(markup_json *j, const report *r, const char *key, rule_mask
 
 static void put_rules(markup_json *j, const report *r, const assessment *x) {
   markup_json_object(j, "rules", false);
-  put_mask(j, r, "in_force", rules_in_force(r->brief));
+  report_json_rules(j, r, "in_force", rules_in_force(r->brief));
   put_broken(j, r, "broken", x);
   markup_json_close(j);
 }
@@ -295,7 +295,7 @@ static void put_cost(markup_json *j, const report *r, const assessment *x) {
 
 /* --- answers --------------------------------------------------------------------------------- */
 
-static void put_rating(markup_json *j, const report *r, const char *key, const assessment *x) {
+void report_json_rating(markup_json *j, const report *r, const char *key, const assessment *x) {
   if (x == NULL) {
     markup_json_null(j, key);
     return;
@@ -323,7 +323,7 @@ static void put_rating(markup_json *j, const report *r, const char *key, const a
 void report_rate_json(const report *r, const assessment *x, text *out) {
   markup_json j;
   markup_json_init(&j, out);
-  put_rating(&j, r, NULL, x);
+  report_json_rating(&j, r, NULL, x);
 }
 
 /* A wall that was not chosen: enough to compare. `fails`: with the rules it breaks. */
@@ -337,7 +337,7 @@ static void put_other(markup_json *j, const report *r, const assessment *x, bool
     markup_json_null(j, "cost_per_m2");
   markup_json_number(j, "cost_per_ft2", v.per_ft2, MONEY_DIGITS);
   markup_json_number(j, "floor_value_per_m2", v.floor_per_m2, MONEY_DIGITS);
-  put_ratings(j, "ratings", &x->ratings);
+  report_json_ratings(j, "ratings", &x->ratings);
   markup_json_string(j, "evidence", x->evidence.match != NULL ? "published" : "predicted");
   markup_json_number(j, "thickness_mm", x->thickness_m * 1e3, MM_DIGITS);
   markup_json_number(j, "mass_kg_m2", x->mass_kg_m2, MASS_DIGITS);
@@ -345,17 +345,17 @@ static void put_other(markup_json *j, const report *r, const assessment *x, bool
   markup_json_close(j);
 }
 
-static void put_others(markup_json *j, const report *r, const char *key, assessment *const *x,
-                       int count, bool fails) {
+void report_json_others(markup_json *j, const report *r, const char *key, assessment *const *x,
+                        int count, bool fails) {
   markup_json_array(j, key, false);
   for (int i = 0; i < count; i++) put_other(j, r, x[i], fails);
   markup_json_close(j);
 }
 
-static void put_rule_prices(markup_json *j, const explanation *e) {
+void report_json_rule_prices(markup_json *j, const explain_rule_price *prices, int count) {
   markup_json_array(j, "price_of_rules", false);
-  for (int i = 0; i < e->price_count; i++) {
-    const explain_rule_price *p = &e->prices[i];
+  for (int i = 0; i < count; i++) {
+    const explain_rule_price *p = &prices[i];
     markup_json_object(j, NULL, true);
     markup_json_string(j, "rule", p->name);
     markup_json_string(j, "from", p->from);
@@ -403,16 +403,16 @@ void report_pick_json(const report *r, const explanation *e, const pick_choice *
   markup_json_number(&j, "bound", proof->found ? proof->bound : NAN, CENT_DIGITS);
   markup_json_integer(&j, "walls", e->walls);
   markup_json_integer(&j, "candidates", e->frontier);
-  put_mask(&j, r, "rules", rules_in_force(r->brief));
-  put_rating(&j, r, "chosen", e->chosen);
-  put_others(&j, r, "runners_up", e->runners, e->runner_count, false);
-  put_others(&j, r, "cheaper_but", e->cheaper, e->cheaper_count, true);
-  put_rule_prices(&j, e);
+  report_json_rules(&j, r, "rules", rules_in_force(r->brief));
+  report_json_rating(&j, r, "chosen", e->chosen);
+  report_json_others(&j, r, "runners_up", e->runners, e->runner_count, false);
+  report_json_others(&j, r, "cheaper_but", e->cheaper, e->cheaper_count, true);
+  report_json_rule_prices(&j, e->prices, e->price_count);
   put_break_even(&j, e);
   markup_json_array(&j, "conflicts", false);
-  for (int i = 0; i < e->conflict_count; i++) put_mask(&j, r, NULL, e->conflicts[i]);
+  for (int i = 0; i < e->conflict_count; i++) report_json_rules(&j, r, NULL, e->conflicts[i]);
   markup_json_close(&j);
-  put_others(&j, r, "nearest", e->nearest, e->nearest_count, true);
+  report_json_others(&j, r, "nearest", e->nearest, e->nearest_count, true);
   markup_json_close(&j);
 }
 

@@ -48,8 +48,8 @@ static void put_fails(const report *r, const assessment *x, text *out) {
   }
 }
 
-static void put_others(const report *r, const char *label, const char *intro, assessment *const *x,
-                       int count, bool fails, text *out) {
+void report_others_text(const report *r, const char *label, const char *intro,
+                        assessment *const *x, int count, bool fails, text *out) {
   if (count == 0) return;
   page_line(out, label,
             text_format(r->arena, "%s, in %s per %s:", intro,
@@ -86,13 +86,14 @@ static void put_decides(const report *r, const explanation *e, text *out) {
           p->name, p->from, p->to, view_money(r, in_area(r, p->price_per_m2), per_area(r))));
 }
 
-static void put_rule_prices(const report *r, const explanation *e, text *out) {
-  if (e->price_count == 0 || e->chosen == NULL) return;
+void report_rule_prices_text(const report *r, const explain_rule_price *prices, int count,
+                             const char *base, text *out) {
+  if (count == 0) return;
   page_line(out, "Rules cost",
             text_format(r->arena, "What giving up one rule would save, in %s per %s:",
                         r->prices != NULL ? r->prices->currency : "", per_area(r)));
-  for (int i = 0; i < e->price_count; i++) {
-    const explain_rule_price *p = &e->prices[i];
+  for (int i = 0; i < count; i++) {
+    const explain_rule_price *p = &prices[i];
     page_label(out, "");
     page_right(out, PAGE_LABEL + COST_COLUMNS, amount(r, in_area(r, p->price_per_m2)));
     text_put(out, "  ");
@@ -100,7 +101,7 @@ static void put_rule_prices(const report *r, const explanation *e, text *out) {
     if (p->price_total > 0.0 && p->wall != NULL)
       then =
           text_format(r->arena, "; then %s",
-                      text_equal(p->wall->line, e->chosen->line) ? "the same wall" : p->wall->line);
+                      text_equal(p->wall->line, base) ? "the same wall" : p->wall->line);
     page_words(out, FAIL_INDENT,
                text_format(r->arena, "%s: %s in place of %s%s", p->name, p->to, p->from, then));
   }
@@ -174,7 +175,8 @@ static void put_infeasible(const report *r, const explanation *e, text *out) {
     text_put(&t, rules > 1 ? " cannot be had together." : " cannot be had at all.");
     page_line(out, i == 0 ? "In the way" : "", t.data);
   }
-  put_others(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count, true, out);
+  report_others_text(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count,
+                     true, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }
 
@@ -197,11 +199,11 @@ void report_pick_text(const report *r, const explanation *e, const pick_choice *
   put_decides(r, e, out);
   report_wall_text(r, e->chosen, out);
   text_char(out, '\n');
-  put_others(r, "Next best", "Walls that keep every rule too", e->runners, e->runner_count, false,
-             out);
-  put_others(r, "Cheaper but", "Cheaper walls, and what they fail", e->cheaper, e->cheaper_count,
-             true, out);
-  put_rule_prices(r, e, out);
+  report_others_text(r, "Next best", "Walls that keep every rule too", e->runners, e->runner_count,
+                     false, out);
+  report_others_text(r, "Cheaper but", "Cheaper walls, and what they fail", e->cheaper,
+                     e->cheaper_count, true, out);
+  report_rule_prices_text(r, e->prices, e->price_count, e->chosen->line, out);
   put_break_even(r, e, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }
