@@ -1,5 +1,7 @@
 #include "search/front.h"
 
+enum { FIRST_GROUPS = 16, FIRST_MEMBERS = 16 };
+
 void front_init(front *f, arena *a, const space *s) {
   *f = (front){.arena = a, .space = s, .in_force = rules_in_force(s->context->brief)};
   f->floor_value = s->context->brief->floor_area_value_per_m2 > 0;
@@ -13,9 +15,8 @@ static bool counts(const front *f, int rule) {
   return (f->in_force & rule_bit(rule)) != 0;
 }
 
-/* Whether `x` at its worst can stand for `y` at its best everywhere: cheaper, or as dear and
- * earlier in the order of ties, and no worse in any number that a rule in force reads, nor in any
- * rule. */
+/* Whether `x` at its worst is no worse than `y` at its best in any number that a rule in force
+ * reads, and cheaper, or as dear and earlier in the order of ties. The rules are the group's. */
 static bool beats(const front *f, const front_member *x, const front_member *y) {
   const wall_numbers *p = &x->wall.is, *q = &y->wall.is;
   if (p->cost_cents > q->cost_cents) return false;
@@ -27,34 +28,66 @@ static bool beats(const front *f, const front_member *x, const front_member *y) 
   if (counts(f, RULE_MASS_MAX) && p->mass_hundredth > q->mass_hundredth) return false;
   if (counts(f, RULE_MASS_MIN) && p->mass_hundredth < q->mass_hundredth) return false;
   if (counts(f, RULE_COST_MAX) && f->floor_value && p->total_cents > q->total_cents) return false;
-  candidate worst = {.broken = x->broken_most, .instead = x->instead_most};
-  if (!candidate_passes_where(&worst, &y->wall)) return false;
   return candidate_compare(f->space, &x->wall, &y->wall) < 0;
 }
 
-bool front_beats(front *f, const front_member *m) {
-  for (int i = 0; i < f->count; i++) {
-    if (!beats(f, &f->item[i], m)) continue;
-    /* What beat one wall is apt to beat the next: nearer to the front it is found sooner. */
+static bool group_beats(const front *f, front_group *g, const front_member *m) {
+  for (int i = 0; i < g->count; i++) {
+    if (!beats(f, &g->item[i], m)) continue;
+    /* What beat one wall is apt to beat the next: nearer to the start it is found sooner. */
     int to = i / 2;
-    front_member kept = f->item[to];
-    f->item[to] = f->item[i];
-    f->item[i] = kept;
+    front_member kept = g->item[to];
+    g->item[to] = g->item[i];
+    g->item[i] = kept;
     return true;
   }
   return false;
 }
 
-void front_add(front *f, const front_member *m) {
-  int kept = 0;
-  for (int i = 0; i < f->count; i++)
-    if (!beats(f, m, &f->item[i])) f->item[kept++] = f->item[i];
-  f->count = kept;
-  if (f->count == f->cap) {
-    int cap = f->cap ? 2 * f->cap : 256;
-    f->item = arena_grow(f->arena, f->item, (size_t)f->cap * sizeof *f->item,
-                         (size_t)cap * sizeof *f->item);
-    f->cap = cap;
+bool front_beats(front *f, const front_member *m) {
+  for (int i = 0; i < f->groups; i++) {
+    front_group *g = &f->group[i];
+    candidate worst = {.broken = g->broken, .instead = g->instead};
+    if (candidate_passes_where(&worst, &m->wall) && group_beats(f, g, m)) return true;
   }
-  f->item[f->count++] = *m;
+  return false;
+}
+
+static front_group *group_of(front *f, rule_mask broken, rule_mask instead) {
+  for (int i = 0; i < f->groups; i++)
+    if (f->group[i].broken == broken && f->group[i].instead == instead) return &f->group[i];
+  if (f->groups == f->group_cap) {
+    int cap = f->group_cap ? 2 * f->group_cap : FIRST_GROUPS;
+    f->group = arena_grow(f->arena, f->group, (size_t)f->group_cap * sizeof *f->group,
+                          (size_t)cap * sizeof *f->group);
+    f->group_cap = cap;
+  }
+  f->group[f->groups] = (front_group){.broken = broken, .instead = instead};
+  return &f->group[f->groups++];
+}
+
+/* Drops what `m` beats among the members that break the same rules, where most of it is. */
+static void drop_beaten(front *f, front_group *g, const front_member *m) {
+  int kept = 0;
+  for (int i = 0; i < g->count; i++) {
+    const front_member *y = &g->item[i];
+    candidate worst = {.broken = m->broken_most, .instead = m->instead_most};
+    bool beaten = candidate_passes_where(&worst, &y->wall) && beats(f, m, y);
+    if (!beaten) g->item[kept++] = *y;
+  }
+  f->count -= g->count - kept;
+  g->count = kept;
+}
+
+void front_add(front *f, const front_member *m) {
+  front_group *g = group_of(f, m->broken_most, m->instead_most);
+  drop_beaten(f, g, m);
+  if (g->count == g->cap) {
+    int cap = g->cap ? 2 * g->cap : FIRST_MEMBERS;
+    g->item = arena_grow(f->arena, g->item, (size_t)g->cap * sizeof *g->item,
+                         (size_t)cap * sizeof *g->item);
+    g->cap = cap;
+  }
+  g->item[g->count++] = *m;
+  f->count++;
 }

@@ -17,19 +17,29 @@ typedef struct front_member {
 /* A member whose figures are those of the reference. */
 front_member front_exact(const candidate *c);
 
+/* Members that break the same rules at their worst. */
+typedef struct front_group {
+  rule_mask broken, instead;
+  front_member *item;
+  int count, cap;
+} front_group;
+
 typedef struct front {
   arena *arena;
   const space *space;
   rule_mask in_force; /* a coordinate that no rule reads decides nothing */
   bool floor_value;   /* cost and total differ */
-  front_member *item;
-  int count, cap;
+  front_group *group;
+  int groups, group_cap;
+  int count; /* members of all groups */
 } front;
 
 void front_init(front *f, arena *a, const space *s);
 /* Whether some member is no worse in everything that counts, whatever the bounds turn out to be. */
 bool front_beats(front *f, const front_member *m);
-/* Adds a member that front_beats refused nothing of, and drops those that it beats. */
+/* Adds a member that front_beats said no of. Members that it beats may stay: once all are exact,
+ * they fall out when they are gone through in tie order (front_beats asks only for earlier ones).
+ */
 void front_add(front *f, const front_member *m);
 
 #endif

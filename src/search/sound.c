@@ -79,6 +79,7 @@ static void bound_composite(const sound_aims *g, const sound_aim *a, const range
     out->most.with = out->most.with_bare = false;
     return;
   }
+  out->wide = true;
   double printed = floor(r->high + g->lift_db + printed_above(a->metric));
   if (r->published) printed = fmax(printed, r->printed_high);
   int with = promise(r->high + g->lift_db, printed, r, a->needed, a->z);
@@ -109,6 +110,7 @@ void sound_bound(const sound_aims *g, const double *exact, const double *sd, con
     out->least.alone_bare = out->least.alone_bare && bare_low;
     out->most.alone_bare = out->most.alone_bare && bare_high;
     if (a->composite) {
+      out->composite = true;
       bound_composite(g, a, &r, out, &most);
     } else {
       out->least.with = out->least.with && low >= 0;
@@ -122,6 +124,7 @@ void sound_bound(const sound_aims *g, const double *exact, const double *sd, con
     if (a->published_only && !r.published) out->evidence = rule_bit(RULE_EVIDENCE);
   }
   out->certain = same_reach(&out->least, &out->most);
+  out->wide = out->wide && !out->certain;
 }
 
 int sound_outcomes(const sound_bounds *b, rule_mask out[SOUND_MAX_OUTCOMES]) {
@@ -129,9 +132,9 @@ int sound_outcomes(const sound_bounds *b, rule_mask out[SOUND_MAX_OUTCOMES]) {
   int n = 0;
   if (b->most.with) out[n++] = b->evidence;
   if (b->least.with) return n;
-  if (b->most.alone) out[n++] = composite | b->evidence;
+  if (b->composite && b->most.alone) out[n++] = composite | b->evidence;
   if (b->most.with_bare) out[n++] = confidence | b->evidence;
-  if (b->most.alone_bare) out[n++] = confidence | composite | b->evidence;
+  if (b->composite && b->most.alone_bare) out[n++] = confidence | composite | b->evidence;
   if (!b->least.alone_bare && !b->least.with_bare) out[n++] = rule_bit(RULE_TARGET) | b->evidence;
   return n;
 }

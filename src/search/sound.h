@@ -27,6 +27,8 @@ typedef struct sound_bounds {
   int promised_least, promised_most; /* 0.01 dB, as in wall_numbers */
   judge_reach least, most;           /* surely reached; perhaps reached */
   rule_mask evidence;                /* RULE_EVIDENCE when broken */
+  bool composite;                    /* some target is one of the composite */
+  bool wide;                         /* and the bounds say little of it */
   bool certain;                      /* least and most are the same */
 } sound_bounds;
 

@@ -89,15 +89,16 @@ static void keep(sweep *s, const candidate *c, const sound_bounds *b) {
   m.wall.is.promised_hundredth = b->promised_most;
   name_rules(&b->most, c->broken | b->evidence, &m.wall.broken, &m.wall.instead);
   name_rules(&b->least, c->broken | b->evidence, &m.broken_most, &m.instead_most);
-  if (may_be_cheapest(s, c, b)) {
-    candidate sure = m.wall;
-    if (!b->certain) {
-      rate_exactly(s, &sure, c->broken);
-      m = front_exact(&sure);
-    }
-    keep_cheapest(s, &sure);
+  bool cheapest = may_be_cheapest(s, c, b), stays = !front_beats(&s->front, &m);
+  if (!cheapest && !stays) return;
+  if (!b->certain && (cheapest || b->wide)) {
+    candidate sure = *c;
+    rate_exactly(s, &sure, c->broken);
+    m = front_exact(&sure);
+    stays = !front_beats(&s->front, &m);
   }
-  if (!front_beats(&s->front, &m)) front_add(&s->front, &m);
+  if (cheapest) keep_cheapest(s, &m.wall);
+  if (stays) front_add(&s->front, &m);
 }
 
 static void note_feasible(sweep *s, const candidate *c, bool certain) {
@@ -178,28 +179,53 @@ static void sweep_cores(sweep *s) {
 
 /* ---- the whole ---- */
 
-/* The walls of the front as the reference rates them, again without those that another beats. */
-static void finish_front(sweep *s) {
-  const space *space_of = s->space;
-  front kept = s->front;
-  front_init(&s->front, s->arena, space_of);
-  for (int i = 0; i < kept.count; i++) {
-    front_member m = kept.item[i];
-    if (!m.exact) {
-      rate_exactly(s, &m.wall, m.wall.broken & ~sound_rules);
-      m = front_exact(&m.wall);
-    }
-    if (!front_beats(&s->front, &m)) front_add(&s->front, &m);
+/* Merges two runs in tie order. */
+static void merge(const space *sp, const candidate *from, int first, int middle, int last,
+                  candidate *to) {
+  int i = first, j = middle;
+  for (int k = first; k < last; k++) {
+    bool left = j == last || (i < middle && candidate_compare(sp, &from[i], &from[j]) < 0);
+    to[k] = left ? from[i++] : from[j++];
   }
+}
+
+/* Tie order needs the space for its lines, which qsort has no place for. */
+static candidate *sort_in_tie_order(sweep *s, candidate *list, int count) {
+  candidate *other = arena_array(s->arena, (size_t)count, sizeof *other);
+  for (int run = 1; run < count; run *= 2) {
+    for (int at = 0; at < count; at += 2 * run) {
+      int middle = at + run < count ? at + run : count;
+      int last = at + 2 * run < count ? at + 2 * run : count;
+      merge(s->space, list, at, middle, last, other);
+    }
+    candidate *done = other;
+    other = list;
+    list = done;
+  }
+  return list;
+}
+
+/* The walls of the front as the reference rates them, again without those that another beats: in
+ * tie order only an earlier wall can beat one. */
+static void finish_front(sweep *s) {
+  front kept = s->front;
   sweep_result *r = s->out;
-  r->frontier_count = s->front.count;
-  r->frontier = arena_array(s->arena, (size_t)s->front.count, sizeof *r->frontier);
-  for (int i = 0; i < s->front.count; i++) { /* in tie order, by insertion */
-    int at = i;
-    for (; at > 0 && candidate_compare(space_of, &s->front.item[i].wall, &r->frontier[at - 1]) < 0;
-         at--)
-      r->frontier[at] = r->frontier[at - 1];
-    r->frontier[at] = s->front.item[i].wall;
+  candidate *list = arena_array(s->arena, (size_t)kept.count, sizeof *list);
+  int count = 0;
+  for (int g = 0; g < kept.groups; g++)
+    for (int i = 0; i < kept.group[g].count; i++) {
+      front_member *m = &kept.group[g].item[i];
+      if (!m->exact) rate_exactly(s, &m->wall, m->wall.broken & ~sound_rules);
+      list[count++] = m->wall;
+    }
+  list = sort_in_tie_order(s, list, count);
+  front_init(&s->front, s->arena, s->space);
+  r->frontier = arena_array(s->arena, (size_t)count, sizeof *r->frontier);
+  for (int i = 0; i < count; i++) {
+    front_member m = front_exact(&list[i]);
+    if (front_beats(&s->front, &m)) continue;
+    front_add(&s->front, &m);
+    r->frontier[r->frontier_count++] = list[i];
   }
 }
 
