@@ -54,11 +54,15 @@ typedef struct septum_options {
   const char *prices;     /* price book; NULL = the brief's, else the data folder's default */
   const char *brief;      /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
   const char *save_model; /* pick: path for the 0-1 model in CPLEX LP format; NULL = none */
-  const char *save_csv;   /* rate, pick: path for the takeoff as CSV; NULL = none */
+  const char *save_csv;   /* rate, pick: path for the takeoff as CSV; trim: for the log of proposals;
+                             NULL = none */
   const char *save_xlsx;  /* rate, pick: path for the takeoff as a spreadsheet; NULL = none */
   const char *save_prices; /* prices_update: path for the new price book; NULL = none */
   const char *today;      /* prices: the date that ages count to, "2031-03-01"; NULL = the newest in
                              the files. There is no clock in here */
+  const char *slack;      /* trim: how much thicker than the specified wall a proposal may be, "1/2in",
+                             "12 mm"; NULL = none where the brief sets no target, else no limit */
+  int count;              /* trim: most proposals, 1 to 100; 0 = 8 */
   double time_limit_s;    /* pick: seconds for the solver; 0 = no limit */
   septum_units units;     /* of text and CSV */
 } septum_options;
@@ -82,6 +86,12 @@ septum_status septum_rate(septum *handle, const char *wall, const septum_options
 /* The cheapest wall for the brief at `path`. SEPTUM_OK and SEPTUM_NO_WALL both give an answer. */
 septum_status septum_pick(septum *handle, const char *path, const septum_options *options,
                           septum_answer **out);
+/* A specified wall (a wall line, or the path of a wall/1 file) under the brief at `path`, and the
+ * cheaper walls that hold everything, best saving first. A brief without a target holds the wall to
+ * its own figures. SEPTUM_NO_WALL: an answer, nothing cheaper holds. SEPTUM_DATA: also a specified
+ * wall that cannot be read, built or costed. The answer's CSV is a value-engineering log. */
+septum_status septum_trim(septum *handle, const char *path, const char *specified,
+                          const septum_options *options, septum_answer **out);
 /* Checks `count` files of any kind that septum reads, by their key "septum"; messages go to the
  * listener. The answer has a line a file and is given also with SEPTUM_DATA and SEPTUM_SYSTEM,
  * which say that at least one file has a fault (NULL only when memory ran out). */

@@ -26,6 +26,8 @@ static septum_status run(septum *handle, const cli_line *line, septum_answer **a
     return septum_pick(handle, line->operands[0], &options, answer);
   case CLI_CHECK:
     return septum_check(handle, line->operands, line->operand_count, answer);
+  case CLI_TRIM:
+    return septum_trim(handle, line->operands[0], line->specified, &options, answer);
   case CLI_PRICES:
     if (line->list != NULL) return septum_prices_update(handle, line->list, &options, answer);
     return septum_prices_list(handle, &options, answer);

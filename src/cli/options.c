@@ -8,12 +8,15 @@
 typedef enum option_id {
   OPTION_BRIEF,
   OPTION_CATALOGS,
+  OPTION_COUNT,
   OPTION_CSV,
   OPTION_FROM_CSV,
   OPTION_HELP,
   OPTION_JSON,
   OPTION_PRICES,
   OPTION_SAVE_MODEL,
+  OPTION_SLACK,
+  OPTION_SPEC,
   OPTION_TIME_LIMIT,
   OPTION_TO_CSV,
   OPTION_TODAY,
@@ -35,25 +38,29 @@ typedef struct option_row {
 static const option_row option_rows[] = {
     {"brief", "FILE", OPTION_BRIEF, CLI_RATE, "judge the wall under this brief (brief/1)"},
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
-    {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK,
-     "also write the takeoff as CSV; - prints it in place of the text"},
+    {"count", "N", OPTION_COUNT, CLI_TRIM, "most walls to list, 1 to 100; default 8"},
+    {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_TRIM,
+     "also write the takeoff (trim: a log of proposals) as CSV; - prints it in place of the text"},
     {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
-    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK | CLI_PRICES,
+    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK | CLI_TRIM | CLI_PRICES,
      "price book (price-book/1) in place of the brief's or the default"},
     {"save-model", "FILE", OPTION_SAVE_MODEL, CLI_PICK, "write the 0-1 model in CPLEX LP format"},
+    {"slack", "LENGTH", OPTION_SLACK, CLI_TRIM,
+     "walls may be so much thicker than the specified one, as 1/2in or 12mm"},
+    {"spec", "LINE|FILE", OPTION_SPEC, CLI_TRIM, "the specified wall: a wall line or a wall/1 file"},
     {"time-limit", "S", OPTION_TIME_LIMIT, CLI_PICK, "seconds for the solver; the gap is printed"},
     {"to-csv", "FILE", OPTION_TO_CSV, CLI_PRICES, "write the price book as a list; - prints it"},
     {"today", "DATE", OPTION_TODAY, CLI_PRICES,
      "what ages count to, as 2031-03-01; default: the newest date in the files"},
-    {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK,
+    {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK | CLI_TRIM,
      "units of text and CSV; default: the brief's, else us"},
     {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
     {"write", "FILE", OPTION_WRITE, CLI_PRICES, "write the price book with the list's prices"},
     {"xlsx", "FILE", OPTION_XLSX, CLI_RATE | CLI_PICK, "also write the takeoff as a spreadsheet"},
 };
-enum { OPTION_COUNT = sizeof option_rows / sizeof option_rows[0] };
+enum { OPTION_ROWS = sizeof option_rows / sizeof option_rows[0] };
 
 typedef struct command_row {
   const char *name, *operands;
@@ -81,6 +88,10 @@ static const command_row command_rows[] = {
      "  septum rate '2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16'\n"
      "Each face is written from its own room inwards; n* repeats, + adds a layer, @ is spacing in "
      "mm.\n"},
+    {"trim", "BRIEF", CLI_TRIM, 1, 1, "cheaper walls that hold what a specified wall must hold",
+     "BRIEF is a brief/1 file, --spec the specified wall. Without a target in the brief the wall is\n"
+     "held to its own rating, fire minutes and thickness. Lists the cheaper walls that hold all of\n"
+     "it, best saving first, with each change, its money and what it does when taken alone.\n"},
 };
 enum { COMMAND_COUNT = sizeof command_rows / sizeof command_rows[0] };
 
@@ -93,7 +104,7 @@ static void hint(const char *near, const char *dashes) {
 }
 
 static const option_row *find_option(const char *name, size_t length) {
-  for (size_t i = 0; i < OPTION_COUNT; i++) {
+  for (size_t i = 0; i < OPTION_ROWS; i++) {
     const char *known = option_rows[i].name;
     if (strlen(known) == length && strncmp(known, name, length) == 0) return &option_rows[i];
   }
@@ -101,15 +112,15 @@ static const option_row *find_option(const char *name, size_t length) {
 }
 
 static bool unknown_option(const char *word) {
-  const char *names[OPTION_COUNT];
-  for (size_t i = 0; i < OPTION_COUNT; i++) names[i] = option_rows[i].name;
+  const char *names[OPTION_ROWS];
+  for (size_t i = 0; i < OPTION_ROWS; i++) names[i] = option_rows[i].name;
   char name[64];
   size_t length = strcspn(word, "=");
   complain("unknown option", word);
   if (length < sizeof name && strncmp(word, "--", 2) == 0) {
     memcpy(name, word + 2, length - 2);
     name[length - 2] = '\0';
-    hint(septum_nearest(name, names, OPTION_COUNT), "--");
+    hint(septum_nearest(name, names, OPTION_ROWS), "--");
   }
   return false;
 }
@@ -120,6 +131,17 @@ static bool read_seconds(const char *value, double *seconds) {
   *seconds = strtod(value, &end);
   if (end != value && *end == '\0' && errno == 0 && *seconds >= 0.0 && *seconds <= 1e9) return true;
   complain("--time-limit wants seconds from 0 to 1000000000, found", value);
+  return false;
+}
+
+static bool read_count(const char *value, int *count) {
+  char *end = NULL;
+  long n = strtol(value, &end, 10);
+  if (end != value && *end == '\0' && n >= 1 && n <= 100) {
+    *count = (int)n;
+    return true;
+  }
+  complain("--count wants a number from 1 to 100, found", value);
   return false;
 }
 
@@ -143,6 +165,8 @@ static bool apply(option_id id, const char *value, cli_line *out) {
   case OPTION_CATALOGS:
     out->catalogs = value;
     return true;
+  case OPTION_COUNT:
+    return read_count(value, &out->options.count);
   case OPTION_CSV:
     out->csv = value;
     return true;
@@ -160,6 +184,12 @@ static bool apply(option_id id, const char *value, cli_line *out) {
     return true;
   case OPTION_SAVE_MODEL:
     out->options.save_model = value;
+    return true;
+  case OPTION_SLACK:
+    out->options.slack = value;
+    return true;
+  case OPTION_SPEC:
+    out->specified = value;
     return true;
   case OPTION_TIME_LIMIT:
     return read_seconds(value, &out->options.time_limit_s);
@@ -220,7 +250,7 @@ static const command_row *find_command(const char *name) {
 
 /* Whether the options used belong to the command and the operands are as many as it takes. */
 static bool fits(const command_row *command, int used, size_t operands) {
-  for (size_t i = 0; i < OPTION_COUNT; i++) {
+  for (size_t i = 0; i < OPTION_ROWS; i++) {
     const option_row *row = &option_rows[i];
     if ((used & (1 << row->id)) == 0 || (row->commands & (int)command->command) != 0) continue;
     fprintf(stderr, "septum: --%s is not an option of %s\n", row->name, command->name);
@@ -244,6 +274,12 @@ static bool prices_fits(const cli_line *line) {
     return false;
   }
   return true;
+}
+
+static bool trim_fits(const cli_line *line) {
+  if (line->command != CLI_TRIM || line->specified != NULL) return true;
+  complain("trim wants the specified wall: --spec 'LINE' or --spec FILE", "");
+  return false;
 }
 
 bool options_read(int argc, char **argv, cli_line *out) {
@@ -279,12 +315,12 @@ bool options_read(int argc, char **argv, cli_line *out) {
     complain("--json and --csv - both want stdout", "");
     return false;
   }
-  return fits(command, used, out->operand_count) && prices_fits(out);
+  return fits(command, used, out->operand_count) && prices_fits(out) && trim_fits(out);
 }
 
 static void print_options(int commands) {
   printf("Options, before or after the operands; -- ends them:\n");
-  for (size_t i = 0; i < OPTION_COUNT; i++) {
+  for (size_t i = 0; i < OPTION_ROWS; i++) {
     const option_row *row = &option_rows[i];
     if ((row->commands & commands) == 0) continue;
     int width =

@@ -13,8 +13,9 @@ typedef enum cli_command {
   CLI_RATE = 1,
   CLI_PICK = 2,
   CLI_CHECK = 4,
+  CLI_TRIM = 16,
   CLI_PRICES = 32,
-  CLI_ANY = CLI_RATE | CLI_PICK | CLI_CHECK | CLI_PRICES
+  CLI_ANY = CLI_RATE | CLI_PICK | CLI_CHECK | CLI_TRIM | CLI_PRICES
 } cli_command;
 
 typedef struct cli_line {
@@ -24,6 +25,7 @@ typedef struct cli_line {
   septum_options options;
   const char *catalogs; /* NULL = those of the data folder */
   const char *csv;      /* "-" = stdout, in place of the text */
+  const char *specified; /* trim: wall line or wall/1 file */
   const char *list;     /* prices: the supplier's list */
   bool json, help, version;
 } cli_line;

@@ -35,15 +35,15 @@ void step_take(const catalog *c, const wall *to, step_part part, wall *w) {
     w->spacing_mm = to->spacing_mm;
     break;
   case STEP_GAP:
-    w->gap_mm = to->gap_mm;
+    if (wall_is_double(c, w)) w->gap_mm = to->gap_mm;
     break;
   case STEP_FILL:
     w->fill[0] = to->fill[0];
-    w->fill[1] = to->fill[1];
+    if (wall_is_double(c, w)) w->fill[1] = to->fill[1];
     break;
   case STEP_MOUNT_A:
   case STEP_MOUNT_B:
-    take_mount(to, part - STEP_MOUNT_A, w);
+    take_mount(to, (int)(part - STEP_MOUNT_A), w);
     break;
   case STEP_SHEATH_A:
   case STEP_SHEATH_B:
@@ -55,7 +55,7 @@ void step_take(const catalog *c, const wall *to, step_part part, wall *w) {
     break;
   case STEP_INNER_A:
   case STEP_INNER_B:
-    w->inner[part - STEP_INNER_A] = to->inner[part - STEP_INNER_A];
+    if (wall_is_double(c, w)) w->inner[part - STEP_INNER_A] = to->inner[part - STEP_INNER_A];
     break;
   case STEP_PARTS:
     break;

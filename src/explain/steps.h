@@ -21,7 +21,7 @@ typedef enum step_part {
   STEP_PARTS
 } step_part;
 
-/* The wall's part becomes that of `to`. */
+/* The wall's part becomes that of `to`; what the wall's frame has no place for stays away. */
 void step_take(const catalog *c, const wall *to, step_part part, wall *w);
 /* The parts that differ, in order: taken one after the other they make `to` of `from`. Returns how
  * many. */
