@@ -40,7 +40,7 @@ static const option_row option_rows[] = {
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
     {"count", "N", OPTION_COUNT, CLI_TRIM, "most walls to list, 1 to 100; default 8"},
     {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_TRIM,
-     "also write the takeoff (trim: a log of proposals) as CSV; - prints it in place of the text"},
+     "also write the takeoff (trim: its log) as CSV; - prints it in place of the text"},
     {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
