@@ -5,6 +5,8 @@
 #include "api/data.h"
 #include "api/request.h"
 #include "base/file.h"
+#include "report/report_xlsx.h"
+#include "report/takeoff.h"
 
 enum { ANSWER_MAX_BYTES = 64 << 20 };
 
@@ -66,12 +68,21 @@ typedef struct answer_job {
   septum_answer *made;
 } answer_job;
 
-/* Writes the takeoff to the file that the options name, if any, and hands the answer out. */
-static status hand_out(call *k, answer_job *job, const text *words, const text *json,
-                       const text *csv, status when_done) {
-  const char *path = job->options.save_csv;
-  if (path != NULL && !file_write(k->memory, &k->diags, path, csv->data, csv->len))
-    return k->diags.worst;
+/* The takeoff of `x` (NULL: no wall, no spreadsheet) in the files that the options name. */
+static bool write_takeoff(call *k, const answer_job *job, const report *r, const assessment *x,
+                          const text *csv) {
+  const char *path = job->options.save_csv, *xlsx = job->options.save_xlsx;
+  if (path != NULL && !file_write(k->memory, &k->diags, path, csv->data, csv->len)) return false;
+  if (xlsx == NULL || x == NULL) return true;
+  sheet sheets[TAKEOFF_SHEETS];
+  takeoff_sheets(r, x, sheets);
+  return report_xlsx_write(k->memory, &k->diags, sheets, TAKEOFF_SHEETS, xlsx);
+}
+
+/* Writes the files that the options name, if any, and hands the answer out. */
+static status hand_out(call *k, answer_job *job, const report *r, const assessment *x,
+                       const text *words, const text *json, const text *csv, status when_done) {
+  if (!write_takeoff(k, job, r, x, csv)) return k->diags.worst;
   if (words->cut || json->cut || csv->cut) {
     diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
     return STATUS_INTERNAL;
@@ -86,8 +97,14 @@ static void start_texts(call *k, text *words, text *json, text *csv) {
   text_init(csv, k->memory, ANSWER_MAX_BYTES);
 }
 
+/* What the options ask for and this build lacks is said before any work. */
+static bool can_write(call *k, const answer_job *job) {
+  return job->options.save_xlsx == NULL || report_xlsx_there(&k->diags);
+}
+
 static status rate_stage(call *k, void *given) {
   answer_job *job = given;
+  if (!can_write(k, job)) return k->diags.worst;
   request *prepared = arena_alloc(k->memory, sizeof *prepared);
   bool ready = request_prepare(k, job->handle, &job->options, job->options.brief, false, prepared);
   wall w = wall_empty();
@@ -102,7 +119,7 @@ static status rate_stage(call *k, void *given) {
   report_rate_text(&prepared->report, x, &words);
   report_rate_json(&prepared->report, x, &json);
   report_takeoff_csv(&prepared->report, x, &csv);
-  return hand_out(k, job, &words, &json, &csv, STATUS_OK);
+  return hand_out(k, job, &prepared->report, x, &words, &json, &csv, STATUS_OK);
 }
 
 /* Sweeps, chooses and explains. False after messages. */
@@ -121,6 +138,7 @@ static bool choose(call *k, const answer_job *job, const request *prepared, pick
 
 static status pick_stage(call *k, void *given) {
   answer_job *job = given;
+  if (!can_write(k, job)) return k->diags.worst;
   request *prepared = arena_alloc(k->memory, sizeof *prepared);
   explanation *why = arena_alloc(k->memory, sizeof *why);
   pick_choice *choice = arena_alloc(k->memory, sizeof *choice);
@@ -133,7 +151,8 @@ static status pick_stage(call *k, void *given) {
   report_pick_text(&prepared->report, why, choice, &words);
   report_pick_json(&prepared->report, why, choice, &json);
   report_takeoff_csv(&prepared->report, why->chosen, &csv);
-  return hand_out(k, job, &words, &json, &csv, why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
+  return hand_out(k, job, &prepared->report, why->chosen, &words, &json, &csv,
+                  why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
 }
 
 static septum_status run(septum *handle, const char *operand, const septum_options *options,

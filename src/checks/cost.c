@@ -164,15 +164,20 @@ static int runner_count(const brief *b, const frame *f) {
   return b->loadbearing ? rules.plates_bearing : rules.plates;
 }
 
+double cost_stud_length_m(const price_book *book, const catalog *c, const brief *b, const wall *w) {
+  const frame *f = &c->frames[w->frame];
+  double clear = cost_built_height_m(b);
+  if (f->material == FRAME_WOOD) clear -= runner_count(b, f) * f->stud_width_m;
+  return stock_length(&book->stock[f->material], clear);
+}
+
 static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w,
                       const char *section) {
   const frame *f = &c->frames[w->frame];
   double spacing = wall_spacing_m(w->spacing_mm);
   double run = (ceil(e->length_m / spacing - count_slack) + 1) * (1 + rules.studs_added);
   double pieces = stud_rows(f) * (run + rules.studs_an_opening * b->opening_count);
-  double clear = e->height_m;
-  if (f->material == FRAME_WOOD) clear -= runner_count(b, f) * f->stud_width_m;
-  double length = stock_length(&g->book->stock[f->material], clear);
+  double length = cost_stud_length_m(g->book, c, b, w);
   price_slot stud = g->book->studs[w->frame];
   double hours = 0;
   if (stud.item != CATALOG_NONE) {
@@ -331,18 +336,18 @@ static void fill_leaves(bag *g, const brief *b, const extent *e, const catalog *
 
 /* ---- money ---- */
 
-/* To the cent, half-up. The little more than a half lifts amounts that are half a cent in decimals
+/* The little more than a half lifts amounts that are half a cent in decimals
  * but a hair less in binary. */
-static long long cents_of(double amount) {
+long long cost_cents(double amount) {
   return (long long)floor(amount * 100 + 0.5 + 1e-7);
 }
 
 static long long material_cents(const price_book *book, const bag_entry *e) {
-  return cents_of(e->bought * book->items[e->item].price);
+  return cost_cents(e->bought * book->items[e->item].price);
 }
 
 static long long labour_cents(const price_book *book, const bag_entry *e) {
-  return cents_of(e->hours * book->rate[book->items[e->item].trade]);
+  return cost_cents(e->hours * book->rate[book->items[e->item].trade]);
 }
 
 static cost_parts bag_sum(const bag *g) {
@@ -372,11 +377,11 @@ cost_parts cost_leaves(const price_book *book, const catalog *c, const brief *b,
 }
 
 static long long tax_cents(const price_book *book, long long material) {
-  return cents_of((double)material * book->sales_tax / 100);
+  return cost_cents((double)material * book->sales_tax / 100);
 }
 
 static long long profit_cents(const price_book *book, long long base) {
-  return cents_of((double)base * book->overhead_profit / 100);
+  return cost_cents((double)base * book->overhead_profit / 100);
 }
 
 cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, cost_parts core,
@@ -387,7 +392,7 @@ cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, 
   long long direct = t.material_cents + t.labour_cents, tax = tax_cents(book, t.material_cents);
   t.markup_cents = tax + profit_cents(book, direct + tax);
   t.total_cents = direct + t.markup_cents;
-  t.floor_value_cents = cents_of(thickness_m * b->length_m * b->floor_area_value_per_m2);
+  t.floor_value_cents = cost_cents(thickness_m * b->length_m * b->floor_area_value_per_m2);
   t.area_m2 = b->length_m * cost_built_height_m(b);
   t.hours = core.hours + leaves.hours;
   return t;

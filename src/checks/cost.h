@@ -50,9 +50,13 @@ typedef struct cost_total {
   double area_m2, hours;
 } cost_total;
 
+/* An amount of money to the cent, half-up. */
+long long cost_cents(double amount);
 /* The height that is built: to the ceiling (plus what stands above it) where the wall stops there,
  * else the brief's. */
 double cost_built_height_m(const brief *b);
+/* The stock length that the studs of a wall are cut from. */
+double cost_stud_length_m(const price_book *book, const catalog *c, const brief *b, const wall *w);
 /* The full takeoff with markup lines. `book` was read with `c`. */
 void cost_takeoff(const price_book *book, const catalog *c, const brief *b, const wall *w,
                   takeoff *out, cost_total *total);

@@ -46,6 +46,9 @@ static const struct {
                {COLUMN_PRICE, "unit price"},  {COLUMN_PRICE, "net price"},
                {COLUMN_DATE, "price date"}};
 
+/* Columns that are known and not read. */
+static const char *const unread[] = {"note", "row", "supplier"};
+
 typedef struct matcher {
   arena *arena;
   diag_list *diags;
@@ -71,7 +74,11 @@ static void remark(matcher *m, update_line *l, const char *words) {
 /* ---- columns ---- */
 
 static bool find_columns(matcher *m) {
-  enum { NAMES = COLUMN_COUNT + sizeof aliases / sizeof aliases[0] };
+  enum {
+    ALIASES = sizeof aliases / sizeof aliases[0],
+    UNREAD = sizeof unread / sizeof unread[0],
+    NAMES = COLUMN_COUNT + ALIASES + UNREAD
+  };
   const csv_table *t = m->out->table;
   const char *names[NAMES];
   size_t n = 0, before = m->diags->errors;
@@ -79,7 +86,8 @@ static bool find_columns(matcher *m) {
     names[n] = price_columns[n];
     m->at[n] = csv_column(t, price_columns[n]);
   }
-  for (size_t i = 0; n < NAMES; i++) {
+  for (size_t i = 0; i < UNREAD; i++) names[n++] = unread[i];
+  for (size_t i = 0; i < ALIASES; i++) {
     names[n++] = aliases[i].name;
     int *at = &m->at[aliases[i].column];
     if (*at < 0) *at = csv_column(t, aliases[i].name);
@@ -391,7 +399,6 @@ static void read_price(matcher *m, update_line *l) {
   if (!cell(m, l, COLUMN_PRICE)[0]) {
     l->kind = UPDATE_NO_PRICE;
     l->unit = cell(m, l, COLUMN_UNIT);
-    remark(m, l, "the line has no price");
     return;
   }
   if (!read_number(m, l, COLUMN_PRICE, MAX_LISTED, &l->listed)) return;
