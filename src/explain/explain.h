@@ -8,7 +8,9 @@
 /* What the chosen wall costs more, floor value included, than the cheapest that need not keep one
  * rule. */
 typedef struct explain_rule_price {
-  int rule;
+  int rule;   /* RULE_ONLY: the frames that `only` leaves */
+  bool step;  /* the rule is moved, not given up: a thicker wall, up to limit_m */
+  double limit_m;
   const char *name, *from, *to;
   bool reachable;                   /* false: no wall even with the rule given up */
   double price_per_m2, price_total; /* >= 0; 0: the rule costs nothing */
@@ -53,6 +55,8 @@ void explain_pick(arena *a, const space *s, const sweep_result *r, const pick_ch
 
 /* ---- the parts, for tests ---- */
 
+/* The brief with every frame where `only` leaves some; false when it leaves all. */
+bool explain_relax_frames(arena *a, const catalog *c, const brief *b, brief *out);
 /* The brief without one of its rules; false for those that a brief cannot do without (target,
  * height, price, only). */
 bool explain_relax(const brief *b, int rule, brief *out);
@@ -63,7 +67,9 @@ int explain_cheaper(arena *a, const space *s, const sweep_result *r, long long b
 /* The smallest sets of rules of which every wall breaks one, from the sets of rules that walls
  * break. Returns how many; *out in ascending order of size, then of value. */
 int explain_conflicts(arena *a, const rule_mask *broken, int count, rule_mask **out);
-/* One entry a rule in force but the target, `only` and prices. */
+/* One entry a rule in force but the target and prices (of `only`, what it leaves of the frames); of
+ * the greatest thickness one more for each step at which a thicker wall costs less. The dearest
+ * first, then in the order of the rules. Of `chosen` only the cost is read. */
 void explain_prices(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
                     explanation *out);
 /* One entry an item and a labour rate of the chosen wall. */

@@ -3,6 +3,8 @@
 #include "explain/explain.h"
 #include "search/cheapest.h"
 
+enum { THICKNESS_STEPS = 6 }; /* shown: the nearest ones */
+
 /* ---- the brief without a rule ---- */
 
 static void relax_targets(brief *b, int rule) {
@@ -97,6 +99,37 @@ bool explain_relax(const brief *b, int rule, brief *out) {
   }
 }
 
+static bool meets_kind(const catalog *c, const char *pattern, catalog_kind kind) {
+  const size_t count[CATALOG_KINDS] = {[CATALOG_LAYER] = c->layer_count,
+                                       [CATALOG_FRAME] = c->frame_count,
+                                       [CATALOG_FILL] = c->fill_count,
+                                       [CATALOG_MOUNT] = c->mount_count};
+  for (size_t i = 0; i < count[kind]; i++)
+    if (rules_pattern_meets(pattern, kind, catalog_id(c, (catalog_ref){kind, (int)i}))) return true;
+  return false;
+}
+
+/* A pattern that names frames goes; where it names other things too, it stays for these. */
+bool explain_relax_frames(arena *a, const catalog *c, const brief *b, brief *out) {
+  bool any = false;
+  *out = *b;
+  out->only_count = 0;
+  for (int i = 0; i < b->only_count; i++) {
+    const char *pattern = b->only[i];
+    if (!meets_kind(c, pattern, CATALOG_FRAME)) {
+      if (out->only_count < BRIEF_MAX_PATTERNS) out->only[out->only_count++] = pattern;
+      continue;
+    }
+    any = true;
+    for (int kind = 0; kind < CATALOG_KINDS; kind++)
+      if (kind != CATALOG_FRAME && meets_kind(c, pattern, (catalog_kind)kind) &&
+          out->only_count < BRIEF_MAX_PATTERNS)
+        out->only[out->only_count++] =
+            text_format(a, "%s:%s", catalog_kind_names[kind], pattern);
+  }
+  return any;
+}
+
 /* Rules that do more than refuse walls: with them goes backing or a third plate, fire rows change,
  * other leaves are enumerated. What they cost is found by picking anew. */
 static bool changes_walls(int rule) {
@@ -133,51 +166,142 @@ static void take_mask(relaxed *best, const space *s, const sweep_result *r, rule
     if (r->masks[i].broken == broken) take(best, s, &r->masks[i].best);
 }
 
-/* The cheapest wall that need not keep `rule`. */
-static relaxed without_rule(arena *a, const space *s, const sweep_result *r, int rule) {
-  relaxed best = {.found = false};
-  take_mask(&best, s, r, 0);
-  take_mask(&best, s, r, rule_bit(rule));
-  brief b;
-  if (!changes_walls(rule) || !explain_relax(s->context->brief, rule, &b)) return best;
+static void take_fresh(arena *a, const space *s, const brief *b, relaxed *best) {
   judge_context x = *s->context;
-  x.brief = &b;
+  x.brief = b;
   space other;
   candidate c;
   space_build(a, &x, &other);
-  if (cheapest_find(a, &other, &c)) take(&best, &other, &c);
+  if (cheapest_find(a, &other, &c)) take(best, &other, &c);
+}
+
+/* The cheapest wall that need not keep `rule`. */
+static relaxed without_rule(arena *a, const space *s, const sweep_result *r, int rule) {
+  const judge_context *x = s->context;
+  relaxed best = {.found = false};
+  brief b;
+  take_mask(&best, s, r, 0);
+  take_mask(&best, s, r, rule_bit(rule));
+  if (rule == RULE_ONLY ? explain_relax_frames(a, x->catalog, x->brief, &b)
+                        : changes_walls(rule) && explain_relax(x->brief, rule, &b))
+    take_fresh(a, s, &b, &best);
   return best;
 }
 
-static const char *words_after(const brief *b, int rule) {
-  (void)b;
+static const char *words_after(int rule) {
   if (rule == RULE_CONFIDENCE) return "the bare prediction, 50 %";
   if (rule == RULE_COMPOSITE) return "the wall alone";
   if (rule == RULE_EVIDENCE) return "any rating";
+  if (rule == RULE_ONLY) return "any frame";
   return "not asked";
+}
+
+static const char *frames_left(arena *a, const catalog *c, const brief *b) {
+  text t;
+  text_init(&t, a, 4000);
+  for (int i = 0; i < b->only_count; i++)
+    if (meets_kind(c, b->only[i], CATALOG_FRAME))
+      text_putf(&t, "%s%s", t.len ? ", " : "", b->only[i]);
+  return t.data;
+}
+
+static void set_price(arena *a, const space *s, const candidate *chosen, const relaxed *best,
+                      explain_rule_price *out) {
+  const brief *b = s->context->brief;
+  out->reachable = best->found;
+  if (!best->found) return;
+  long long saved = chosen->is.cost_cents - best->cents;
+  out->price_total = saved > 0 ? (double)saved / 100 : 0;
+  out->price_per_m2 = out->price_total / (b->length_m * cost_built_height_m(b));
+  out->wall = arena_alloc(a, sizeof *out->wall);
+  judge_wall(a, s->context, &best->wall, out->wall);
 }
 
 static void price(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
                   int rule, explain_rule_price *out) {
-  const brief *b = s->context->brief;
+  const judge_context *x = s->context;
   relaxed best = without_rule(a, s, r, rule);
-  *out = (explain_rule_price){.rule = rule, .reachable = best.found};
-  out->name = rule_name(a, b, rule);
-  out->from = rule_limit(a, b, rule);
-  out->to = words_after(b, rule);
-  if (!best.found) return;
-  long long saved = chosen->is.cost_cents - best.cents;
-  out->price_total = saved > 0 ? (double)saved / 100 : 0;
-  out->price_per_m2 = out->price_total / (b->length_m * cost_built_height_m(b));
-  out->wall = arena_alloc(a, sizeof *out->wall);
-  judge_wall(a, s->context, &best.wall, out->wall);
+  *out = (explain_rule_price){.rule = rule, .to = words_after(rule)};
+  out->name = rule == RULE_ONLY ? "only frame" : rule_name(a, x->brief, rule);
+  out->from = rule == RULE_ONLY ? frames_left(a, x->catalog, x->brief)
+                                : rule_limit(a, x->brief, rule);
+  set_price(a, s, chosen, &best, out);
+}
+
+/* ---- thickness by steps ---- */
+
+/* The cheapest wall that breaks nothing but the greatest thickness, and keeps `most_m` in its place.
+ * It stands in the frontier: thickness is one of its coordinates. */
+static relaxed within_thickness(const space *s, const sweep_result *r, double most_m) {
+  brief b = *s->context->brief;
+  relaxed best = {.found = false};
+  b.thickness_m.max = most_m;
+  int most = rules_limits(&b).thickness_max;
+  for (int i = 0; i < r->frontier_count; i++) {
+    const candidate *c = &r->frontier[i];
+    if ((c->broken & ~rule_bit(RULE_THICKNESS_MAX)) == 0 && c->is.thickness_tenth_mm <= most)
+      take(&best, s, c);
+  }
+  return best;
+}
+
+/* The next thickness above `most_m` of a wall that breaks nothing else; 0 when there is none. */
+static double next_thickness(const sweep_result *r, double most_m) {
+  int most = rules_thickness(most_m), next = 0;
+  for (int i = 0; i < r->frontier_count; i++) {
+    const candidate *c = &r->frontier[i];
+    int t = c->is.thickness_tenth_mm;
+    if (c->broken == rule_bit(RULE_THICKNESS_MAX) && t > most && (next == 0 || t < next)) next = t;
+  }
+  return next * 1e-4;
+}
+
+static void step_thickness(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
+                           explanation *out) {
+  brief b = *s->context->brief;
+  const char *from = rule_limit(a, &b, RULE_THICKNESS_MAX);
+  long long cents = chosen->is.cost_cents;
+  double most_m = b.thickness_m.max;
+  for (int steps = 0; steps < THICKNESS_STEPS && (most_m = next_thickness(r, most_m)) > 0;) {
+    relaxed best = within_thickness(s, r, most_m);
+    if (!best.found || best.cents >= cents) continue;
+    explain_rule_price *p = &out->prices[out->price_count++];
+    b.thickness_m.max = most_m;
+    *p = (explain_rule_price){.rule = RULE_THICKNESS_MAX, .step = true, .limit_m = most_m};
+    p->name = rule_name(a, &b, RULE_THICKNESS_MAX);
+    p->from = from;
+    p->to = rule_limit(a, &b, RULE_THICKNESS_MAX);
+    set_price(a, s, chosen, &best, p);
+    cents = best.cents;
+    steps++;
+  }
+}
+
+/* ---- the whole ---- */
+
+/* Entries stand in the order of the rules before; equals keep it. */
+static void sort_dearest_first(explanation *out) {
+  for (int i = 1; i < out->price_count; i++) {
+    explain_rule_price p = out->prices[i];
+    int at = i;
+    for (; at > 0 && out->prices[at - 1].price_total < p.price_total; at--)
+      out->prices[at] = out->prices[at - 1];
+    out->prices[at] = p;
+  }
 }
 
 void explain_prices(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
                     explanation *out) {
-  const rule_mask never = rule_bit(RULE_TARGET) | rule_bit(RULE_ONLY) | rule_bit(RULE_PRICE);
-  rule_mask on = rules_in_force(s->context->brief) & ~never;
-  out->prices = arena_array(a, (size_t)rules_count(on), sizeof *out->prices);
-  for (int rule = 0; rule < RULES_MAX; rule++)
-    if (on & rule_bit(rule)) price(a, s, r, chosen, rule, &out->prices[out->price_count++]);
+  const judge_context *x = s->context;
+  brief b;
+  rule_mask on =
+      rules_in_force(x->brief) & ~(rule_bit(RULE_TARGET) | rule_bit(RULE_ONLY) | rule_bit(RULE_PRICE));
+  if (explain_relax_frames(a, x->catalog, x->brief, &b)) on |= rule_bit(RULE_ONLY);
+  out->prices = arena_array(a, (size_t)rules_count(on) + THICKNESS_STEPS, sizeof *out->prices);
+  for (int rule = 0; rule < RULES_MAX; rule++) {
+    if (!(on & rule_bit(rule))) continue;
+    if (rule == RULE_THICKNESS_MAX) step_thickness(a, s, r, chosen, out);
+    price(a, s, r, chosen, rule, &out->prices[out->price_count++]);
+  }
+  sort_dearest_first(out);
 }

@@ -21,16 +21,20 @@ static void add_target(brief *b, int value, double confidence) {
       (target){.metric = METRIC_STC, .value = value, .confidence = confidence};
 }
 
-/* The rating that the usual confidence assures and, where it is higher, the rating as it is printed:
- * a proposal that lowered either would not be the same wall to its owner. */
+/* The rating as it is printed, as sure as the wall itself is of it (in whole percent), and what the
+ * usual confidence assures where that is less: a proposal that lowered either would not be the same
+ * wall to its owner. */
 static void hold_to_rating(const assessment *x, brief *b) {
   bool published = x->evidence.match != NULL;
   int printed = x->ratings.stc;
-  double margin = judge_margin(x->exact[METRIC_STC], printed, x->sd[METRIC_STC], published, 0,
-                               judge_z(usual_confidence));
+  double exact = x->exact[METRIC_STC], sd = x->sd[METRIC_STC], probability = 1;
+  double margin = judge_margin(exact, printed, sd, published, 0, judge_z(usual_confidence));
   int assured = (int)floor(rules_promised(margin) * 0.01);
   add_target(b, assured, usual_confidence);
-  if (printed > assured) add_target(b, printed, 0.5);
+  if (printed <= assured) return;
+  target t = {.metric = METRIC_STC, .value = printed};
+  (void)judge_passes(&t, 0, 0, exact, printed, sd, published, usual_confidence, &probability);
+  add_target(b, printed, floor(100 * probability) * 0.01);
 }
 
 void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *terms, brief *b) {
@@ -220,11 +224,13 @@ static const candidate *cheapest_of(const sweep_result *r) {
 static void price_rules(arena *a, const space *s, const sweep_result *r, const candidate *best,
                         trim_answer *out) {
   explanation e = {0};
-  candidate base = {.is = out->specified->numbers};
+  candidate base = {.core = CATALOG_NONE, .is = out->specified->numbers};
   bool holds = out->verdict == TRIM_HOLDS;
   if (best && (!holds || best->is.cost_cents <= base.is.cost_cents)) base = *best;
   if (!best && !holds) return;
+  out->base_line = best && base.core == best->core ? out->cheapest->line : out->specified->line;
   explain_prices(a, s, r, &base, &e);
+  if (out->proposal_count > 0) out->base_line = out->proposal[0].wall->line; /* or its mirror image */
   out->prices = e.prices;
   out->price_count = e.price_count;
 }

@@ -59,12 +59,13 @@ typedef struct trim_answer {
   assessment **cheaper;          /* without proposals: cheaper walls and what they break */
   int cheaper_count;
   explain_rule_price *prices; /* against the cheapest wall that holds everything */
+  const char *base_line;      /* that wall, where there are prices */
   int price_count;
   long long walls; /* judged */
 } trim_answer;
 
-/* What the wall is held to, put into `b`: without a target its own rating (as printed, and what the
- * usual confidence assures), the fire minutes that are shown for it, its thickness and the slack.
+/* What the wall is held to, put into `b`: without a target its own rating (as printed and as sure,
+ * and what the usual confidence assures), the fire minutes that are shown for it, its thickness and the slack.
  * Needs prices in the context; x->brief is read as the brief came. */
 void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *terms, brief *b);
 /* `r` is the sweep of `s`, whose brief is that of trim_hold_to; `specified` was judged by it and can

@@ -100,7 +100,8 @@ void report_rule_prices_text(const report *r, const explain_rule_price *prices, 
     const char *then = "";
     if (p->price_total > 0.0 && p->wall != NULL)
       then =
-          text_format(r->arena, "; then %s",
+          text_format(r->arena, "; %s for the wall; then %s",
+                      view_money(r, p->price_total, NULL),
                       text_equal(p->wall->line, base) ? "the same wall" : p->wall->line);
     page_words(out, FAIL_INDENT,
                text_format(r->arena, "%s: %s in place of %s%s", p->name, p->to, p->from, then));
@@ -188,6 +189,7 @@ void report_pick_text(const report *r, const explanation *e, const pick_choice *
                   ? "No wall fits this brief."
                   : "No wall found within the time limit; one may exist.");
     put_counts(r, e, proof, out);
+    report_unpriced_text(r, out);
     put_infeasible(r, e, out);
     return;
   }
@@ -196,6 +198,7 @@ void report_pick_text(const report *r, const explanation *e, const pick_choice *
                 ? "The cheapest wall that keeps every rule of the brief."
                 : "The cheapest wall found within the time limit; a cheaper one may exist.");
   put_counts(r, e, proof, out);
+  report_unpriced_text(r, out);
   put_decides(r, e, out);
   report_wall_text(r, e->chosen, out);
   text_char(out, '\n');

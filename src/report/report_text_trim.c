@@ -79,21 +79,36 @@ static void put_verdict(const report *r, const trim_answer *t, text *out) {
 
 /* --- one proposal ---------------------------------------------------------------------------- */
 
-static void put_change(const report *r, const trim_answer *t, const trim_change *c, text *out) {
+/* The number of the first proposal that has the same change, told there already; 0 = none. */
+static int told_before(const trim_answer *t, int proposal, const trim_change *c) {
+  for (int i = 0; i < proposal; i++)
+    for (int k = 0; k < t->proposal[i].change_count; k++) {
+      const trim_change *d = &t->proposal[i].change[k];
+      if (c->alone && d->alone && text_equal(c->alone->line, d->alone->line)) return i + 1;
+    }
+  return 0;
+}
+
+static void put_change(const report *r, const trim_answer *t, int proposal, const trim_change *c,
+                       text *out) {
+  int told = told_before(t, proposal, c);
   page_label(out, "");
   page_right(out, MONEY_END, c->alone ? cents_words(r, c->saving_cents) : "-");
   text_pad(out, ITEM_AT);
   page_words(out, ITEM_AT + 2,
-             text_format(r->arena, "%s: %s -> %s", c->name, c->from, c->to));
+             text_format(r->arena, "%s: %s -> %s%s", c->name, c->from, c->to,
+                         told ? text_format(r->arena, "; alone as under wall %d", told) : ""));
+  if (told) return;
   text_pad(out, ITEM_AT + 2);
   page_words(out, ITEM_AT + 2, view_trim_effect(r, t, c));
 }
 
-static void put_changes(const report *r, const trim_answer *t, const trim_proposal *p, text *out) {
+static void put_changes(const report *r, const trim_answer *t, int proposal, text *out) {
+  const trim_proposal *p = &t->proposal[proposal];
   page_line(out, "Changes",
             text_format(r->arena, "What each saves when it is taken alone, in %s for the wall:",
                         r->prices->currency));
-  for (int i = 0; i < p->change_count; i++) put_change(r, t, &p->change[i], out);
+  for (int i = 0; i < p->change_count; i++) put_change(r, t, proposal, &p->change[i], out);
   page_label(out, "");
   page_right(out, MONEY_END, cents_words(r, p->together_cents));
   text_pad(out, ITEM_AT);
@@ -116,7 +131,7 @@ static void put_proposal(const report *r, const trim_answer *t, int i, text *out
                         text_of(r->arena, 100 * (double)p->saving_cents / before, 1),
                         r->brief->floor_area_value_per_m2 > 0 ? ", floor area included" : ""));
   put_figures(r, p->wall, out);
-  put_changes(r, t, p, out);
+  put_changes(r, t, i, out);
   text losses;
   text_init(&losses, r->arena, 3000);
   text_putf(&losses, "%s.", view_trim_losses(r, p));
@@ -187,10 +202,7 @@ void report_trim_text(const report *r, const trim_answer *t, text *out) {
                        t->cheaper_count, true, out);
   }
   text_char(out, '\n');
-  if (t->price_count > 0) {
-    const char *base = t->proposal_count > 0 ? t->proposal[0].wall->line : t->specified->line;
-    report_rule_prices_text(r, t->prices, t->price_count, base, out);
-  }
+  report_rule_prices_text(r, t->prices, t->price_count, t->base_line, out);
   put_cautions(r, t, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }
