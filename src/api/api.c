@@ -114,6 +114,10 @@ static status rate_stage(call *k, void *given) {
   assessment *x = arena_alloc(k->memory, sizeof *x);
   judge_wall(k->memory, &prepared->context, &w, x);
   x->name = name;
+  if (x->takeoff.missing)
+    diag_add(&k->diags, DIAG_WARNING, ERROR_PRICE_MISSING,
+             (diag_place){.file = prepared->prices->file},
+             "no price for \"%s\": the wall is not costed", x->takeoff.missing_code);
   text words, json, csv;
   start_texts(k, &words, &json, &csv);
   report_rate_text(&prepared->report, x, &words);

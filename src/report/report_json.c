@@ -391,6 +391,17 @@ static void put_break_even(markup_json *j, const explanation *e) {
   markup_json_close(j);
 }
 
+/* What walls were left out for. */
+static void put_unpriced(markup_json *j, const report *r) {
+  markup_json_array(j, "unpriced", true);
+  if (r->prices != NULL) {
+    price_codes l = prices_codes(r->arena, r->catalog, r->prices);
+    for (size_t i = 0; i < l.count; i++)
+      if (!l.priced[i]) markup_json_string(j, NULL, l.code[i]);
+  }
+  markup_json_close(j);
+}
+
 void report_pick_json(const report *r, const explanation *e, const pick_choice *proof, text *out) {
   markup_json j;
   markup_json_init(&j, out);
@@ -403,6 +414,7 @@ void report_pick_json(const report *r, const explanation *e, const pick_choice *
   markup_json_number(&j, "bound", proof->found ? proof->bound : NAN, CENT_DIGITS);
   markup_json_integer(&j, "walls", e->walls);
   markup_json_integer(&j, "candidates", e->frontier);
+  put_unpriced(&j, r);
   report_json_rules(&j, r, "rules", rules_in_force(r->brief));
   report_json_rating(&j, r, "chosen", e->chosen);
   report_json_others(&j, r, "runners_up", e->runners, e->runner_count, false);

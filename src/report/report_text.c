@@ -258,7 +258,7 @@ static void put_takeoff_line(const report *r, const cost_line *l, text *out) {
 }
 
 static void put_takeoff(const report *r, const assessment *x, text *out) {
-  if (r->prices == NULL || x->takeoff.count == 0) return;
+  if (r->prices == NULL || x->takeoff.count == 0 || x->takeoff.missing) return;
   text_put(out, "\nTakeoff");
   text_pad(out, ITEM_AT);
   text_put(out, "item");
@@ -303,6 +303,20 @@ void report_wall_text(const report *r, const assessment *x, text *out) {
   put_cost(r, x, out);
   put_takeoff(r, x, out);
   put_cautions(r, x, out);
+}
+
+void report_unpriced_text(const report *r, text *out) {
+  if (r->prices == NULL) return;
+  price_codes l = prices_codes(r->arena, r->catalog, r->prices);
+  text t;
+  size_t n = 0;
+  text_init(&t, r->arena, 64 << 10);
+  for (size_t i = 0; i < l.count; i++) {
+    if (!l.priced[i]) text_putf(&t, "%s%s", n++ ? ", " : "No price for ", l.code[i]);
+  }
+  if (n == 0) return;
+  text_put(&t, ": walls that need one of these are left out.");
+  page_line(out, "Unpriced", t.data);
 }
 
 void report_rate_text(const report *r, const assessment *x, text *out) {

@@ -14,4 +14,8 @@ void report_others_text(const report *r, const char *label, const char *intro,
 void report_rule_prices_text(const report *r, const explain_rule_price *prices, int count,
                              const char *base, text *out);
 
+/* What the price book has no price for, since walls that need it are left out; nothing when it has
+ * all. */
+void report_unpriced_text(const report *r, text *out);
+
 #endif
