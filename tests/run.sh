@@ -16,5 +16,5 @@ ctest --test-dir "$build" --output-on-failure -j "$jobs" "$@"
 # Tests labelled `once` do not depend on the compiler, or start a foreign program for most of their time.
 build=$build-clang
 septum_build -DCMAKE_C_COMPILER=clang -DSEPTUM_SANITIZE=address,undefined
-ASAN_OPTIONS=detect_leaks=1 UBSAN_OPTIONS=print_stacktrace=1 SEPTUM_TEST_SHARE=10 \
+ASAN_OPTIONS=detect_leaks=1 UBSAN_OPTIONS=print_stacktrace=1 CK_FORK=no SEPTUM_TEST_SHARE=10 \
   ctest --test-dir "$build" --output-on-failure -j "$jobs" -LE once "$@"

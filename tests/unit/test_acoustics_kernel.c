@@ -8,6 +8,7 @@
 
 #include "acoustics/predict.h"
 #include "wall/compat.h"
+#include "share.h"
 
 /* Both work in double precision on the same formulas in another order, so that they agree far
  * closer than KERNEL_ERROR_DB. In steps of 0.1 dB that means the same step, but for a curve within
@@ -99,7 +100,7 @@ START_TEST(agrees_with_the_reference) {
   fill_faces(&d, faces);
   kernel_leaves *leaves = kernel_leaves_create(memory, cat, faces, FACES);
   kernel_core *k = kernel_core_create(memory, cat);
-  for (int i = 0; i < CORES_PER_FAMILY; i++) {
+  for (int i = 0; i < share_of(CORES_PER_FAMILY); i++) {
     wall core;
     ck_assert_msg(random_core(&d, (sound_family)_i, &core), "no core of family %s",
                   sound_family_names[_i]);
@@ -145,7 +146,7 @@ START_TEST(bound_is_never_passed) {
   kernel_leaves *leaves = kernel_leaves_create(memory, cat, faces, FACES);
   kernel_core *k = kernel_core_create(memory, cat);
   int tight = 0;
-  for (int i = 0; i < CORES_PER_FAMILY; i++) {
+  for (int i = 0; i < share_of(CORES_PER_FAMILY); i++) {
     wall core;
     ck_assert(random_core(&d, (sound_family)_i, &core));
     kernel_core_set(k, &core);

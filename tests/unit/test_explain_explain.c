@@ -7,6 +7,7 @@
 #include "explain/explain.h"
 #include "random_briefs.h"
 #include "search/cheapest.h"
+#include "share.h"
 
 enum {
   PRICE_BRIEFS = 100,
@@ -335,16 +336,16 @@ int main(void) {
   TCase *t = tcase_create("explanations");
   tcase_set_timeout(t, 300);
   tcase_add_checked_fixture(t, open_shop, close_shop);
-  tcase_add_loop_test(t, a_rule_costs_what_a_fresh_pick_without_it_saves, 0, PRICE_BRIEFS);
-  tcase_add_loop_test(t, frames_cost_what_any_frame_saves, 0, FRAME_BRIEFS);
-  tcase_add_loop_test(t, thicker_walls_are_cheaper_step_by_step, 0, PRICE_BRIEFS);
-  tcase_add_loop_test(t, height_costs_what_lower_walls_save, 0, PRICE_BRIEFS);
+  tcase_add_loop_test(t, a_rule_costs_what_a_fresh_pick_without_it_saves, 0, share_of(PRICE_BRIEFS));
+  tcase_add_loop_test(t, frames_cost_what_any_frame_saves, 0, share_of(FRAME_BRIEFS));
+  tcase_add_loop_test(t, thicker_walls_are_cheaper_step_by_step, 0, share_of(PRICE_BRIEFS));
+  tcase_add_loop_test(t, height_costs_what_lower_walls_save, 0, share_of(PRICE_BRIEFS));
   tcase_add_test(t, heavy_fastening_pays_for_its_backing);
-  tcase_add_loop_test(t, runners_break_nothing_and_cheaper_walls_break_something, 0, PRICE_BRIEFS);
+  tcase_add_loop_test(t, runners_break_nothing_and_cheaper_walls_break_something, 0, share_of(PRICE_BRIEFS));
   tcase_add_loop_test(t, conflicts_are_all_the_smallest_hitting_sets, 0, RANDOM_SETS);
   tcase_add_test(t, no_conflict_where_a_wall_breaks_nothing);
-  tcase_add_loop_test(t, conflicts_and_near_misses_of_briefs, 0, BRUTE_BRIEFS);
-  tcase_add_loop_test(t, at_a_break_even_price_another_wall_takes_over, 0, EVEN_BRIEFS);
+  tcase_add_loop_test(t, conflicts_and_near_misses_of_briefs, 0, share_of(BRUTE_BRIEFS));
+  tcase_add_loop_test(t, at_a_break_even_price_another_wall_takes_over, 0, share_of(EVEN_BRIEFS));
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
   srunner_run_all(r, CK_NORMAL);

@@ -8,6 +8,7 @@
 #include "base/file.h"
 #include "random_briefs.h"
 #include "select/model.h"
+#include "share.h"
 
 enum { BRIEFS = 200, LEAST_FEASIBLE = 60, LONGEST_FILE = 1 << 24 };
 
@@ -179,15 +180,15 @@ int main(void) {
   TCase *t = tcase_create("the choice");
   tcase_set_timeout(t, 300);
   tcase_add_checked_fixture(t, open_shop, close_shop);
-  tcase_add_loop_test(t, the_choice_is_that_of_brute_force, 0, BRIEFS);
+  tcase_add_loop_test(t, the_choice_is_that_of_brute_force, 0, share_of(BRIEFS));
   tcase_add_test(t, enough_of_the_briefs_can_be_met);
-  tcase_add_loop_test(t, rows_say_what_the_judge_says, 0, BRIEFS / 4);
+  tcase_add_loop_test(t, rows_say_what_the_judge_says, 0, share_of(BRIEFS / 4));
   tcase_add_test(t, a_frontier_without_walls_is_infeasible);
   suite_add_tcase(s, t);
   TCase *f = tcase_create("the file");
   tcase_set_timeout(f, 300);
   tcase_add_checked_fixture(f, open_folder, close_folder);
-  tcase_add_loop_test(f, other_solvers_find_the_same_cost_in_the_file, 0, BRIEFS / 5);
+  tcase_add_loop_test(f, other_solvers_find_the_same_cost_in_the_file, 0, share_of(BRIEFS / 5));
   suite_add_tcase(s, f);
   SRunner *r = srunner_create(s);
   srunner_run_all(r, CK_NORMAL);

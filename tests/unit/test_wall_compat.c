@@ -9,6 +9,7 @@
 
 #include "base/file.h"
 #include "wall/line.h"
+#include "share.h"
 
 static arena *memory;
 static diag_list faults;
@@ -283,7 +284,7 @@ START_TEST(pieces_make_the_whole) {
   enum { WALLS = 20000 };
   seed = 20240229;
   int levels[3] = {0, 0, 0};
-  for (int i = 0; i < WALLS; i++) {
+  for (int i = 0; i < share_of(WALLS); i++) {
     wall w = draw_wall();
     compat_report r;
     compat_check(shop, &w, &r);

@@ -1,5 +1,6 @@
 /* The wall line and wall/1: reading, shortest form, round trip, faults at their place. */
 #include "wall/line.h"
+#include "share.h"
 
 #include <check.h>
 #include <setjmp.h>
@@ -286,7 +287,7 @@ static const char *squeezed(const char *line) {
 START_TEST(round_trip) {
   enum { WALLS = 5000 };
   seed = 20240301;
-  for (int i = 0; i < WALLS; i++) {
+  for (int i = 0; i < share_of(WALLS); i++) {
     wall w = draw_wall(), again, tight;
     const char *line = line_print(memory, shop, &w);
     ck_assert_msg(line_parse(memory, &faults, shop, line, &again), "%s: %s", line, first_fault());
@@ -306,7 +307,7 @@ START_TEST(slips) {
   static const char bytes[] = "|+*@~,- x0123456789abcdefghijklmnopqrstuvwxyz/\"\t\n\x80\xff";
   seed = 20240302;
   int read = 0;
-  for (int i = 0; i < SLIPS; i++) {
+  for (int i = 0; i < share_of(SLIPS); i++) {
     wall w = draw_wall(), again;
     const char *line = line_print(memory, shop, &w);
     char *slip = arena_alloc(memory, strlen(line) + 1);
