@@ -392,7 +392,7 @@ static void put_break_even(markup_json *j, const explanation *e) {
 }
 
 /* What walls were left out for. */
-static void put_unpriced(markup_json *j, const report *r) {
+void report_json_unpriced(markup_json *j, const report *r) {
   markup_json_array(j, "unpriced", true);
   if (r->prices != NULL) {
     price_codes l = prices_codes(r->arena, r->catalog, r->prices);
@@ -414,7 +414,7 @@ void report_pick_json(const report *r, const explanation *e, const pick_choice *
   markup_json_number(&j, "bound", proof->found ? proof->bound : NAN, CENT_DIGITS);
   markup_json_integer(&j, "walls", e->walls);
   markup_json_integer(&j, "candidates", e->frontier);
-  put_unpriced(&j, r);
+  report_json_unpriced(&j, r);
   report_json_rules(&j, r, "rules", rules_in_force(r->brief));
   report_json_rating(&j, r, "chosen", e->chosen);
   report_json_others(&j, r, "runners_up", e->runners, e->runner_count, false);

@@ -14,6 +14,8 @@ void report_json_others(markup_json *j, const report *r, const char *key, assess
                         int count, bool fails);
 /* The names of rules. */
 void report_json_rules(markup_json *j, const report *r, const char *key, rule_mask mask);
+/* "unpriced": codes that the price book lacks */
+void report_json_unpriced(markup_json *j, const report *r);
 /* "price_of_rules" */
 void report_json_rule_prices(markup_json *j, const explain_rule_price *prices, int count);
 

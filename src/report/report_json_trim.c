@@ -152,6 +152,7 @@ void report_trim_json(const report *r, const trim_answer *t, text *out) {
   put_terms(&j, r, t);
   markup_json_integer(&j, "walls", t->walls);
   markup_json_integer(&j, "found", t->found);
+  report_json_unpriced(&j, r);
   report_json_rating(&j, r, "specified", t->specified);
   markup_json_array(&j, "alternatives", false);
   for (int i = 0; i < t->proposal_count; i++) put_proposal(&j, r, t, &t->proposal[i]);

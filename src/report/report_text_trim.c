@@ -195,6 +195,7 @@ void report_trim_text(const report *r, const trim_answer *t, text *out) {
   put_specified(r, t, out);
   put_verdict(r, t, out);
   put_answer(r, t, out);
+  report_unpriced_text(r, out);
   for (int i = 0; i < t->proposal_count; i++) put_proposal(r, t, i, out);
   if (t->proposal_count == 0) {
     put_cheapest(r, t, out);
