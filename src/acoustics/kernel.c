@@ -26,7 +26,7 @@ typedef struct lanes {
 INLINE void side_points(kernel_core *k, const kernel_block *a, int at, int first, int last) {
   const kernel_cavity *c = &k->cavity;
   kernel_points *p = &k->point;
-  double m = a->mass[at], v = a->mass_fc2[at], u = a->loss_fc2[at];
+  double m = a->mass[at], v = a->mass_fc2[at], u = a->loss_fc2[at] + k->fill_loss * v;
   for (int i = first * KERNEL_BAND_POINTS; i < (last + 1) * KERNEL_BAND_POINTS; i++) {
     double z_re = 1.0 + c->alpha[i] * (c->g[i] * u), z_im = c->alpha[i] * (m - c->g[i] * v);
     double x_re = c->a_re[i] + (c->c_re[i] * z_re - c->c_im[i] * z_im);
@@ -49,14 +49,15 @@ INLINE void side_points(kernel_core *k, const kernel_block *a, int at, int first
 
 INLINE void side_tones(kernel_core *k, const kernel_block *a, int at, int first, int last) {
   kernel_tones *t = &k->tone;
-  double slack = a->slack[at], fc_minus2 = a->fc_minus2[at], radiation = a->radiation[at];
+  double slack = a->slack[at], fc_minus2 = a->fc_minus2[at];
+  double radiation = a->radiation[at] + k->fill_loss * a->fc_root[at];
   double mass_minus2 = a->mass_minus1[at] * a->mass_minus1[at];
   for (int i = first * MODEL_SUBBANDS; i < (last + 1) * MODEL_SUBBANDS; i++) {
     double near = 1.0 - t->f2[i] * fc_minus2;
     near = near > 0.0 ? near : 0.0;
     t->soft_a[i] = t->soft[i] + t->bay[SIDE_A][i] * slack;
     t->bridge[i] = t->bridge_k[i] * mass_minus2;
-    t->below[i] = near * near / 2.0;
+    t->below[i] = near / 2.0;
     t->above[i] = t->above_k[i] * radiation;
   }
 }
@@ -94,7 +95,8 @@ INLINE fraction bridged_path(const kernel_core *k, int i, const kernel_block *b,
   const kernel_pair *p = &k->pair;
   double near = 1.0 - t->f2[i] * b->fc_minus2[j];
   near = near > 0.0 ? near : 0.0;
-  double radiation = t->below[i] * (near * near) + t->above[i] * b->radiation[j];
+  double radiation = t->below[i] * near;
+  radiation += t->above[i] * (b->radiation[j] + k->fill_loss * b->fc_root[j]);
   double heave = p->heave_square[j] + t->reach[i] * (t->reach[i] - p->twice_heave[j]);
   return (fraction){t->bridge[i] * p->mass_minus2[j],
                     radiation * heave * (1.0 + t->roll[i] * p->resonance[j])};
@@ -105,7 +107,7 @@ INLINE void tone_add(const kernel_core *k, int i, const kernel_block *restrict b
                      double *restrict tau) {
   const int p = i * MODEL_ANGLES;
   for (int j = l.from; j < l.to; j++) {
-    double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j];
+    double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j] + k->fill_loss * v;
     double t = k->tone.soft_a[i] + k->tone.bay[SIDE_B][i] * b->slack[j];
     fraction x = fraction_sum(air_path(k, p, m, v, u, t), air_path(k, p + 1, m, v, u, t));
     fraction y = fraction_sum(air_path(k, p + 2, m, v, u, t), air_path(k, p + 3, m, v, u, t));

@@ -57,6 +57,7 @@ typedef struct kernel_block {
   double slack[KERNEL_LANES];       /* 1/B */
   double fc_minus2[KERNEL_LANES];   /* 1/fc^2 */
   double radiation[KERNEL_LANES];   /* eta/sqrt(fc) */
+  double fc_root[KERNEL_LANES];     /* 1/sqrt(fc) */
   double mass_minus1[KERNEL_LANES]; /* 1/m */
   double heave[KERNEL_LANES];       /* h = sqrt(2 pi fc)/m */
 } kernel_block;
@@ -90,6 +91,7 @@ enum { KERNEL_SORT_STEPS = 63 }; /* Batcher's merge exchange of 16 rows */
 struct kernel_core {
   const catalog *catalog;
   double ceiling_tau;
+  double fill_loss; /* of the core, added to the loss of every leaf */
   kernel_sum sum[METRIC_COUNT];
   kernel_order order[KERNEL_SORT_STEPS];
   model_wall model;            /* of the core; its leaves stand for none */

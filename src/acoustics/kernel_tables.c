@@ -19,6 +19,7 @@ static void block_put(kernel_block *b, int lane, const model_leaf *l) {
   b->slack[lane] = 1 / fmax(l->bending_n_m, 1 / KERNEL_SLACK_MAX);
   b->fc_minus2[lane] = 1 / (fc * fc);
   b->radiation[lane] = l->loss / sqrt(fc);
+  b->fc_root[lane] = 1 / sqrt(fc);
   b->mass_minus1[lane] = 1 / m;
   b->heave[lane] = sqrt(2 * PI * fc) / m;
 }
@@ -85,6 +86,7 @@ void kernel_core_set(kernel_core *k, const wall *core) {
   predict_core(k->catalog, x, core, &k->model);
   for (int g = 0; g < k->model.cavity[0].gaps; g++) depth += k->model.cavity[0].gap[g].depth_m;
   k->resonance_k = turn * turn * x->air_density / depth;
+  k->fill_loss = k->model.fill_loss;
   k->leaves = NULL;
   memset(k->core_ready, 0, sizeof k->core_ready);
 }
@@ -98,7 +100,7 @@ static void point_set(kernel_core *k, int at, double f, int angle) {
   double weight, omega = 2 * PI * f, s2 = model_sin2(x, f, angle, &weight);
   double z0 = x->air_density * x->sound_speed / sqrt(1 - s2), alpha = omega / z0;
   model_matrix m = model_cavity_matrix(x, &k->model.cavity[0], f, s2);
-  double complex own = m.c / (I * omega * z0), e = (1 + (m.a + m.d - 2) / m.c) / alpha;
+  double complex own = (1 + I * x->spring_loss) * m.c / (I * omega * z0), e = (1 + (m.a + m.d - 2) / m.c) / alpha;
   p->alpha[at] = alpha, p->alpha_minus1[at] = 1 / alpha;
   p->g[at] = f * f * s2 * s2;
   p->a_re[at] = creal(m.a), p->a_im[at] = cimag(m.a);

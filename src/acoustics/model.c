@@ -37,12 +37,13 @@ void model_fibre(const struct acoustics *k, double f_hz, double complex *z_rel, 
 /* One layer of air or fibre as a transfer matrix; pressures over z0 = rho c / cos of the air outside. */
 static model_matrix gap_matrix(const struct acoustics *k, const model_gap *g, double f_hz, double s2) {
   double k0 = 2 * PI * f_hz / k->sound_speed;
-  double complex z_rel = 1, k_rel = 1 - I * k->empty_loss;
+  double complex z_rel = 1, k_rel = 1 - I * k->empty_loss * pow(500 / f_hz, k->empty_loss_fall);
   if (g->filled) model_fibre(k, f_hz, &z_rel, &k_rel);
   double complex kz_rel = csqrt(k_rel * k_rel - s2);
   double complex z = z_rel * k_rel / kz_rel * sqrt(1 - s2);
-  double complex phase = k0 * kz_rel * g->depth_m;
-  model_matrix m = {ccos(phase), I * z * csin(phase), I * csin(phase) / z, ccos(phase)};
+  double complex wave = cexp(I * k0 * kz_rel * g->depth_m), back = 1 / wave;
+  double complex cosine = (wave + back) / 2, i_sine = (wave - back) / 2;
+  model_matrix m = {cosine, z * i_sine, i_sine / z, cosine};
   return m;
 }
 
@@ -89,7 +90,7 @@ double model_low_spring(const struct acoustics *k, const model_wall *w, double f
 }
 
 /* A spring of `s` N/m3 between the two faces of a cavity; z0 scales pressures. */
-static model_matrix matrix_sprung(model_matrix m, double s, double omega, double z0) {
+static model_matrix matrix_sprung(model_matrix m, double complex s, double omega, double z0) {
   double complex q = s / (I * omega * z0);
   double complex n = 1 + m.c * q;
   model_matrix out = {(m.a + q * m.c) / n, (m.b + q * (m.a + m.d - 2)) / n, m.c / n,
@@ -97,9 +98,9 @@ static model_matrix matrix_sprung(model_matrix m, double s, double omega, double
   return out;
 }
 
-static double tau_at(const struct acoustics *k, const model_wall *w, double f_hz, double s2) {
+static double tau_at(const struct acoustics *k, const model_wall *w, double f_hz, double s2,
+                     double complex spring) {
   double z0 = k->air_density * k->sound_speed / sqrt(1 - s2);
-  double spring = model_low_spring(k, w, f_hz);
   model_matrix m = {1, model_leaf_z(k, &w->leaf[0], f_hz, s2), 0, 1};
   for (int i = 1; i < w->leaves; i++) {
     model_matrix cavity = model_cavity_matrix(k, &w->cavity[i - 1], f_hz, s2);
@@ -112,11 +113,12 @@ static double tau_at(const struct acoustics *k, const model_wall *w, double f_hz
 }
 
 double model_air_tau(const struct acoustics *k, const model_wall *w, double f_hz) {
+  double complex spring = model_low_spring(k, w, f_hz) * (1 + I * k->spring_loss);
   double sum = 0;
   for (int i = 0; i < MODEL_ANGLES; i++) {
     double weight;
     double s2 = model_sin2(k, f_hz, i, &weight);
-    sum += weight * tau_at(k, w, f_hz, s2);
+    sum += weight * tau_at(k, w, f_hz, s2, spring);
   }
   return sum;
 }
@@ -130,8 +132,7 @@ double model_resonance_hz(const struct acoustics *k, const model_wall *w) {
 }
 
 static double below_critical(double f_hz, double critical_hz) {
-  double x = fmax(0, 1 - (f_hz / critical_hz) * (f_hz / critical_hz));
-  return x * x;
+  return fmax(0, 1 - (f_hz / critical_hz) * (f_hz / critical_hz));
 }
 
 double model_bridge_tau(const struct acoustics *k, const model_wall *w, double f_hz) {

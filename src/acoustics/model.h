@@ -49,6 +49,7 @@ typedef struct model_wall {
   model_bridge bridge;                  /* between the outer leaves */
   double c500_m2_n;                     /* compliance per metre of line at 500 Hz */
   double line_m;                        /* spacing of the lines */
+  double fill_loss;                     /* what the fill adds to the loss of every leaf; already in leaf[] */
 } model_wall;
 
 /* Parts, apart: the kernel and the tests use them too. Frequencies in Hz. */

@@ -110,8 +110,8 @@ static double mount_air(const catalog *c, const wall *w, int side) {
 /* -------------------------------------------------------------- connection */
 
 static double stud_c500(const struct acoustics *k, const frame *f) {
-  if (f->material == FRAME_WOOD) return 0;
-  return model_stud_c500(k, f->stud_depth_m, f->steel_thickness_m);
+  if (f->material == FRAME_WOOD) return k->fastener_compliance;
+  return k->fastener_compliance + model_stud_c500(k, f->stud_depth_m, f->steel_thickness_m);
 }
 
 static double mount_c500(const catalog *c, const struct acoustics *k, const wall *w, int side) {
@@ -122,11 +122,16 @@ static double mount_c500(const catalog *c, const struct acoustics *k, const wall
   return spring;
 }
 
+static double fill_loss(const struct acoustics *k, const wall *w) {
+  return w->fill[0] == CATALOG_NONE && w->fill[1] == CATALOG_NONE ? 0 : k->fill_loss;
+}
+
 static void connect(const catalog *c, const struct acoustics *k, const wall *w, model_wall *out) {
   const frame *f = &c->frames[w->frame];
   double stud_m = wall_spacing_m(w->spacing_mm);
   double base = stud_c500(k, f) + (f->layout == FRAME_STAGGERED ? k->plate_compliance : 0);
   out->line_m = stud_m;
+  out->fill_loss = fill_loss(k, w);
   for (int s = 0; s < 2; s++) {
     out->support_m[s] = stud_m;
     if (w->mount[s].mount != CATALOG_NONE) out->support_m[s] = wall_spacing_m(w->mount[s].spacing_mm);
@@ -211,6 +216,7 @@ void predict_model(const catalog *c, const struct acoustics *k, const wall *w, m
   out->tied[out->leaves - 1] = tie_last;
   out->leaf[out->leaves] = outer_leaf(&ch, w, SIDE_B);
   out->leaves++;
+  for (int i = 0; i < out->leaves; i++) out->leaf[i].loss += out->fill_loss;
 }
 
 void predict_tl(const catalog *c, const struct acoustics *k, const wall *w, double tl_db[BANDS]) {

@@ -18,7 +18,8 @@ const char *const sound_outside_names[OUTSIDE_COUNT + 1] = {
 
 #define SLOT(name) {#name, offsetof(struct acoustics, name)}
 const coefficient_slot coefficient_slots[] = {
-    SLOT(layer_share),      SLOT(leaf_loss),          SLOT(empty_loss),       SLOT(bay_stiffness),
+    SLOT(layer_share),      SLOT(leaf_loss),          SLOT(fill_loss),        SLOT(empty_loss),
+    SLOT(empty_loss_fall),  SLOT(spring_loss),        SLOT(bay_stiffness),    SLOT(fastener_compliance),
     SLOT(low_share),        SLOT(stud_static_hz),     SLOT(compliance_fall),  SLOT(channel_compliance),
     SLOT(channel_on_steel), SLOT(plate_compliance),   SLOT(clip_compliance),  SLOT(double_coupling),
     SLOT(bridge_db),        SLOT(ceiling_db),         SLOT(air_density),      SLOT(sound_speed),
@@ -57,7 +58,8 @@ static const field family_fields[] = {
     {.key = "rows", .kind = FIELD_INTEGER, .flags = FIELD_REQUIRED, .min = 0, .max = 1e6, .offset = offsetof(spread_record, rows)},
     {.key = "bias", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .min = -20, .max = 20, .offset = offsetof(spread_record, bias)},
     {.key = "rms", .kind = FIELD_IGNORE},
-    {.key = "worst", .kind = FIELD_IGNORE},
+    {.key = "cross_bias", .kind = FIELD_IGNORE},
+    {.key = "cross_rms", .kind = FIELD_IGNORE},
     {.key = "sd", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED | FIELD_ABOVE_MIN, .min = 0, .max = 20, .offset = offsetof(spread_record, sd)},
     {.key = "source", .kind = FIELD_STRING, .offset = offsetof(spread_record, source)},
 };

@@ -56,13 +56,17 @@ struct acoustics {
   const char *source;
   double layer_share;        /* lambda: share of a further layer's mass that counts */
   double leaf_loss;          /* eta: installed loss factor of a leaf */
-  double empty_loss;         /* delta: loss of an empty cavity */
+  double fill_loss;          /* added to it where fibre fills the cavity */
+  double empty_loss;         /* delta: loss of an empty cavity at 500 Hz */
+  double empty_loss_fall;    /* it falls as f to the power of minus this */
+  double spring_loss;        /* loss factor of the low-frequency spring */
   double bay_stiffness;      /* kappa: 97 simply supported, 500 clamped */
   double low_share;          /* rho: low-frequency over bridging share of a connection's compliance */
   double stud_static_hz;     /* f_s: where a steel stud has its static beam compliance */
   double compliance_fall;    /* p: compliance falls as f^-p */
   double channel_compliance; /* C_rc at 500 Hz, studs at 0.406 m, m2/N */
   double channel_on_steel;   /* gamma */
+  double fastener_compliance; /* of screws and line contact of board and stud, wood or steel, at 500 Hz, m2/N */
   double plate_compliance;   /* C_st of staggered studs on one plate at 500 Hz, m2/N */
   double clip_compliance;    /* over channel_compliance: no data */
   double double_coupling;    /* k_d, N/m3 */
