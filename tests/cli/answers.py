@@ -41,7 +41,7 @@ def schema(kind):
     return Draft202012Validator(loaded)
 
 
-schemas = {kind: schema(kind) for kind in ("rating", "pick", "wall")}
+schemas = {kind: schema(kind) for kind in ("rating", "pick", "trim", "wall")}
 
 
 def check_schema(where, kind, data):
@@ -110,8 +110,10 @@ def check_text(where, text, data):
 
 
 def check_csv(where, words, data):
+    """The same lines; CSV has them by section, with their sum (takeoff.py works them out again)."""
     rows = list(csv.DictReader(io.StringIO(words, newline="")))
-    lines = data["cost"]["lines"]
+    lines = sorted(data["cost"]["lines"], key=lambda l: (not l["section"], l["section"] or ""))
+    lines.append({"item": "total", "kind": "total", "amount": data["cost"]["total"]})
     if [(r["item"], r["kind"], float(r["amount"])) for r in rows] != [(l["item"], l["kind"], l["amount"]) for l in lines]:
         say(where, "CSV and JSON differ")
 
@@ -187,6 +189,105 @@ def check_pick(path):
             say(where, "price of %s" % price["rule"])
 
 
+def figures(entry):
+    """What a buyer compares, so that more is better. STC stands for the metric that these briefs ask for."""
+    return (entry["saving_total"], -entry["thickness_mm"], -entry["mass_kg_m2"], entry["ratings"]["STC"],
+            entry["fire_minutes"] or 0, entry["height_m"])
+
+
+def check_changes(where, entry):
+    """Money of the changes and what they do together is the saving, to the cent."""
+    total = Decimal(str(entry["together"]))
+    for change in entry["changes"]:
+        if (change["alone"] is None) == (change["why_not"] is None) or (change["alone"] is None) != (change["saving_total"] is None):
+            say(where, "%s: alone, or why not" % change["part"])
+        total += Decimal(str(change["saving_total"] or 0))
+    if total != Decimal(str(entry["saving_total"])):
+        say(where, "changes add up to %s, saving is %s" % (total, entry["saving_total"]))
+
+
+def check_trim_text(where, text, data):
+    """Every amount and line of the answer stands in the text."""
+    check_width(where, text)
+    flat = " ".join(text.split())
+    wanted = ["{:,.2f}".format(data["specified"]["cost"]["total"]), data["specified"]["line"], data["held_to"]["words"]]
+    for entry in data["alternatives"]:
+        wanted += [entry["line"], "{:,.2f}".format(entry["saving_total"]), "{:,.2f}".format(entry["together"])]
+        wanted += entry["gives_up"] + [c["from"] + " -> " + c["to"] for c in entry["changes"]]
+        wanted += ["{:,.2f}".format(c["saving_total"]) for c in entry["changes"] if c["saving_total"] is not None]
+        wanted += [c["why_not"] for c in entry["changes"] if c["why_not"]]
+    for words in wanted:
+        if " ".join(words.split()) not in flat:
+            say(where, "text lacks: " + words)
+
+
+def check_log(where, words, data):
+    """The log of proposals, read back: a row a proposal; what is decided is left to who decides."""
+    rows = list(csv.DictReader(io.StringIO(words, newline="")))
+    if [(r["proposal"], r["proposed_wall"], float(r["saving_total"])) for r in rows] != [
+            (str(i + 1), e["line"], e["saving_total"]) for i, e in enumerate(data["alternatives"])]:
+        say(where, "CSV and JSON differ")
+    for row in rows:
+        if any(row[key] for key in ("status", "decided_by", "date", "remarks")) or None in row or None in row.values():
+            say(where, "row %s of the log" % row["proposal"])
+
+
+def check_trim(path, wall, *more):
+    where = "trim %s %s" % (os.path.basename(path), wall)
+    words = ["trim", path, "--spec", wall, *more]
+    status, out, err = run(*words, "--json")
+    if status not in (0, 1):
+        say(where, "exit %d: %s" % (status, err.strip()))
+        return
+    data = json.loads(out)
+    check_schema(where, "trim", data)
+    check_rating(where, data["specified"])
+    if (status == 1) != (not data["alternatives"]):
+        say(where, "exit %d with %d walls" % (status, len(data["alternatives"])))
+    if (data["verdict"] == "holds") == bool(data["specified"]["rules"]["broken"]):
+        say(where, "verdict %s" % data["verdict"])
+    before = data["specified"]["cost"]
+    for i, entry in enumerate(data["alternatives"]):
+        check_rating(where, entry["rating"])
+        check_changes(where, entry)
+        after = entry["rating"]["cost"]
+        saving = before["total"] + before["floor_value"] - after["total"] - after["floor_value"]
+        if abs(saving - entry["saving_total"]) > 0.001 or abs(saving / before["area_m2"] - entry["saving_per_m2"]) > 0.0001:
+            say(where, "%s saves %s" % (entry["line"], saving))
+        if entry["rating"]["rules"]["broken"]:
+            say(where, "breaks a rule: " + entry["line"])
+        if i > 0 and entry["saving_total"] > data["alternatives"][i - 1]["saving_total"]:
+            say(where, "not by saving: " + entry["line"])
+        for other in data["alternatives"]:
+            if other is not entry and all(x >= y for x, y in zip(figures(other), figures(entry))):
+                say(where, "%s is beaten by %s" % (entry["line"], other["line"]))
+    prices = [p["price_total"] for p in data["price_of_rules"]]
+    if prices != sorted(prices, reverse=True):
+        say(where, "prices of rules are not sorted")
+    check_trim_text(where, run(*words)[1], data)
+    check_width(where, run(*words, "--units", "si")[1])
+    check_log(where, run(*words, "--csv", "-")[1], data)
+    return data
+
+
+def check_own_trim():
+    """A brief without a target holds the wall to its own figures."""
+    with tempfile.NamedTemporaryFile("w", suffix=".json", delete=False) as f:
+        json.dump({"septum": "brief/1", "code": "ibc", "wall": {"length_m": 6, "height_m": 2.7},
+                   "only": ["typex-1*", "frame:*-92-18*", "frame:wood-89*", "glass-*", "rc"]}, f)
+    for wall, slack in ((WALLS[0], 0), (WALLS[2], 25), (WALLS[4], 0)):
+        data = check_trim(f.name, wall, "--slack", "%dmm" % slack)
+        own = data["specified"]
+        for entry in data["alternatives"]:
+            if entry["ratings"]["STC"] < own["ratings"]["STC"]:
+                say(wall, "a lower rating: " + entry["line"])
+            if (entry["fire_minutes"] or 0) < (own["fire"]["minutes"] or 0):
+                say(wall, "less fire resistance: " + entry["line"])
+            if entry["thickness_mm"] > own["thickness_mm"] + slack + 0.001:
+                say(wall, "thicker: " + entry["line"])
+    os.unlink(f.name)
+
+
 def check_model(path):
     """The saved 0-1 model, solved by GLPK's own program, costs what pick says, to the cent."""
     where = "model of " + os.path.basename(path)
@@ -215,5 +316,9 @@ for brief in sorted(glob.glob(source + "/docs/examples/*.json")):
             if shutil.which("glpsol"):
                 check_model(brief)
             count += 1
+example = source + "/docs/examples/"
+check_trim(example + "party-wall.json", example + "specified-party-wall.json")
+check_trim(example + "corridor.json", example + "corridor-wall.json", "--slack", "1/2in", "--count", "3")
+check_own_trim()
 print("%d walls, %d briefs, %d faults" % (len(WALLS), count, faults))
 sys.exit(1 if faults or count == 0 else 0)
