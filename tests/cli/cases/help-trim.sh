@@ -1,0 +1,1 @@
+$SEPTUM trim --help

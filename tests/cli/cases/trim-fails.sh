@@ -1,0 +1,1 @@
+$SEPTUM trim "$EXAMPLES/corridor.json" --spec "$EXAMPLES/corridor-wall.json" --count=1

@@ -1,0 +1,2 @@
+echo '{"septum":"price-book/1","name":"bare","currency":"USD","place":"nowhere","date":"2031-01-01","source":"invented","labour_rates":{"hanger":1,"taper":1,"insulator":1},"overhead_profit":0,"sales_tax":0,"items":[{"code":"typex-16","name":"board","section":"09 29 00","unit":"ft2","price":1,"trade":"hanger"}]}' >bare.json
+$SEPTUM trim "$EXAMPLES/party-wall.json" --spec 'typex-16 | wood-89@406 | typex-16' --prices bare.json
