@@ -55,13 +55,15 @@ typedef struct septum_options {
   const char *brief;      /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
   const char *save_model; /* pick: path for the 0-1 model in CPLEX LP format; NULL = none */
   const char *save_csv;   /* rate, pick: path for the takeoff as CSV; trim: for the log of proposals;
-                             NULL = none */
+                             ladder: for its rungs; NULL = none */
   const char *save_xlsx;  /* rate, pick: path for the takeoff as a spreadsheet; NULL = none */
   const char *save_prices; /* prices_update: path for the new price book; NULL = none */
   const char *today;      /* prices: the date that ages count to, "2031-03-01"; NULL = the newest in
                              the files. There is no clock in here */
   const char *slack;      /* trim: how much thicker than the specified wall a proposal may be, "1/2in",
                              "12 mm"; NULL = none where the brief sets no target, else no limit */
+  const char *metric;     /* ladder: "STC", "Rw", "Rw+C", "Rw+Ctr", "OITC"; NULL = the brief's, else STC */
+  int from, to;           /* ladder: lowest and highest rating, 1 to 100; 0 = as far as walls reach */
   int count;              /* trim: most proposals, 1 to 100; 0 = 8 */
   double time_limit_s;    /* pick: seconds for the solver; 0 = no limit */
   septum_units units;     /* of text and CSV */
@@ -92,6 +94,12 @@ septum_status septum_pick(septum *handle, const char *path, const septum_options
  * wall that cannot be read, built or costed. The answer's CSV is a value-engineering log. */
 septum_status septum_trim(septum *handle, const char *path, const char *specified,
                           const septum_options *options, septum_answer **out);
+/* The cheapest wall for each rating under the brief at `path`, whose own target value decides nothing
+ * (a brief without a target climbs in STC). `have` (NULL = none): a given wall, as in septum_rate, and
+ * what it takes from there; then the rungs above what it meets. SEPTUM_NO_WALL: an answer, no rung
+ * can be reached. SEPTUM_DATA: also a given wall that cannot be read, built or costed. */
+septum_status septum_ladder(septum *handle, const char *path, const char *have,
+                            const septum_options *options, septum_answer **out);
 /* Checks `count` files of any kind that septum reads, by their key "septum"; messages go to the
  * listener. The answer has a line a file and is given also with SEPTUM_DATA and SEPTUM_SYSTEM,
  * which say that at least one file has a fault (NULL only when memory ran out). */

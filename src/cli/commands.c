@@ -26,6 +26,8 @@ static septum_status run(septum *handle, const cli_line *line, septum_answer **a
     return septum_pick(handle, line->operands[0], &options, answer);
   case CLI_CHECK:
     return septum_check(handle, line->operands, line->operand_count, answer);
+  case CLI_LADDER:
+    return septum_ladder(handle, line->operands[0], line->have, &options, answer);
   case CLI_TRIM:
     return septum_trim(handle, line->operands[0], line->specified, &options, answer);
   case CLI_PRICES:

@@ -10,14 +10,18 @@ typedef enum option_id {
   OPTION_CATALOGS,
   OPTION_COUNT,
   OPTION_CSV,
+  OPTION_FROM,
   OPTION_FROM_CSV,
+  OPTION_HAVE,
   OPTION_HELP,
   OPTION_JSON,
+  OPTION_METRIC,
   OPTION_PRICES,
   OPTION_SAVE_MODEL,
   OPTION_SLACK,
   OPTION_SPEC,
   OPTION_TIME_LIMIT,
+  OPTION_TO,
   OPTION_TO_CSV,
   OPTION_TODAY,
   OPTION_UNITS,
@@ -39,22 +43,28 @@ static const option_row option_rows[] = {
     {"brief", "FILE", OPTION_BRIEF, CLI_RATE, "judge the wall under this brief (brief/1)"},
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
     {"count", "N", OPTION_COUNT, CLI_TRIM, "most walls to list, 1 to 100; default 8"},
-    {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_TRIM,
-     "also write the takeoff (trim: its log) as CSV; - prints it in place of the text"},
+    {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
+     "also write the takeoff (ladder: its rungs; trim: its log) as CSV; - prints it in place of the text"},
+    {"from", "N", OPTION_FROM, CLI_LADDER, "lowest rating, 1 to 100; default: what the cheapest wall meets"},
     {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
+    {"have", "LINE|FILE", OPTION_HAVE, CLI_LADDER,
+     "a given wall: what it takes from there (a wall line or a wall/1 file)"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
-    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK | CLI_TRIM | CLI_PRICES,
+    {"metric", "NAME", OPTION_METRIC, CLI_LADDER,
+     "STC, Rw, Rw+C, Rw+Ctr or OITC; default: the brief's, else STC"},
+    {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM | CLI_PRICES,
      "price book (price-book/1) in place of the brief's or the default"},
     {"save-model", "FILE", OPTION_SAVE_MODEL, CLI_PICK, "write the 0-1 model in CPLEX LP format"},
     {"slack", "LENGTH", OPTION_SLACK, CLI_TRIM,
      "walls may be so much thicker than the specified one, as 1/2in or 12mm"},
     {"spec", "LINE|FILE", OPTION_SPEC, CLI_TRIM, "the specified wall: a wall line or a wall/1 file"},
     {"time-limit", "S", OPTION_TIME_LIMIT, CLI_PICK, "seconds for the solver; the gap is printed"},
+    {"to", "N", OPTION_TO, CLI_LADDER, "highest rating, 1 to 100; default: what any wall meets"},
     {"to-csv", "FILE", OPTION_TO_CSV, CLI_PRICES, "write the price book as a list; - prints it"},
     {"today", "DATE", OPTION_TODAY, CLI_PRICES,
      "what ages count to, as 2031-03-01; default: the newest date in the files"},
-    {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK | CLI_TRIM,
+    {"units", "us|si", OPTION_UNITS, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
      "units of text and CSV; default: the brief's, else us"},
     {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
     {"write", "FILE", OPTION_WRITE, CLI_PRICES, "write the price book with the list's prices"},
@@ -74,6 +84,10 @@ static const command_row command_rows[] = {
      "Reads files of any kind of septum, by their key \"septum\", and reports every fault with "
      "file,\n"
      "line, column and JSON path on stderr. One line a file on stdout.\n"},
+    {"ladder", "BRIEF", CLI_LADDER, 1, 1, "what each rating costs, and the step to the next",
+     "BRIEF is a brief/1 file; its target's value decides nothing, its other rules do. For each rating\n"
+     "the cheapest wall, what changed from the rung below, what the step costs, and whether it is worth\n"
+     "taking. From a wall that is there, with --have: what it takes to get from it to each rating.\n"},
     {"pick", "BRIEF", CLI_PICK, 1, 1, "the cheapest wall that keeps every rule of a brief",
      "BRIEF is a brief/1 file. The answer names the wall, its rating and what that rests on, the\n"
      "takeoff, what cheaper walls fail, and what each rule costs.\n"},
@@ -134,14 +148,14 @@ static bool read_seconds(const char *value, double *seconds) {
   return false;
 }
 
-static bool read_count(const char *value, int *count) {
+static bool read_whole(const char *name, const char *value, int *count) {
   char *end = NULL;
   long n = strtol(value, &end, 10);
   if (end != value && *end == '\0' && n >= 1 && n <= 100) {
     *count = (int)n;
     return true;
   }
-  complain("--count wants a number from 1 to 100, found", value);
+  fprintf(stderr, "septum: --%s wants a number from 1 to 100, found %s\n", name, value);
   return false;
 }
 
@@ -166,18 +180,26 @@ static bool apply(option_id id, const char *value, cli_line *out) {
     out->catalogs = value;
     return true;
   case OPTION_COUNT:
-    return read_count(value, &out->options.count);
+    return read_whole("count", value, &out->options.count);
   case OPTION_CSV:
     out->csv = value;
     return true;
+  case OPTION_FROM:
+    return read_whole("from", value, &out->options.from);
   case OPTION_FROM_CSV:
     out->list = value;
+    return true;
+  case OPTION_HAVE:
+    out->have = value;
     return true;
   case OPTION_HELP:
     out->help = true;
     return true;
   case OPTION_JSON:
     out->json = true;
+    return true;
+  case OPTION_METRIC:
+    out->options.metric = value;
     return true;
   case OPTION_PRICES:
     out->options.prices = value;
@@ -193,6 +215,8 @@ static bool apply(option_id id, const char *value, cli_line *out) {
     return true;
   case OPTION_TIME_LIMIT:
     return read_seconds(value, &out->options.time_limit_s);
+  case OPTION_TO:
+    return read_whole("to", value, &out->options.to);
   case OPTION_TO_CSV:
     out->csv = value;
     return true;

@@ -13,9 +13,10 @@ typedef enum cli_command {
   CLI_RATE = 1,
   CLI_PICK = 2,
   CLI_CHECK = 4,
+  CLI_LADDER = 8,
   CLI_TRIM = 16,
   CLI_PRICES = 32,
-  CLI_ANY = CLI_RATE | CLI_PICK | CLI_CHECK | CLI_TRIM | CLI_PRICES
+  CLI_ANY = CLI_RATE | CLI_PICK | CLI_CHECK | CLI_LADDER | CLI_TRIM | CLI_PRICES
 } cli_command;
 
 typedef struct cli_line {
@@ -26,6 +27,7 @@ typedef struct cli_line {
   const char *catalogs; /* NULL = those of the data folder */
   const char *csv;      /* "-" = stdout, in place of the text */
   const char *specified; /* trim: wall line or wall/1 file */
+  const char *have;     /* ladder: wall line or wall/1 file */
   const char *list;     /* prices: the supplier's list */
   bool json, help, version;
 } cli_line;

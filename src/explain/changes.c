@@ -51,36 +51,57 @@ static const char *layers_words(arena *a, const catalog *c, const face *f) {
   return t.data;
 }
 
-/* What changes on one face, without its place; NULL when nothing does. */
-static const char *face_change(arena *a, const catalog *c, const face *from, const face *to) {
-  face rest;
-  if (left_out(from, to, &rest)) {
-    if (rest.count == 0) return NULL;
-    if (all_same(to) && from->count > 0) return more_layers(a, from, to);
-    return text_format(a, "%s added", layers_words(a, c, &rest));
-  }
-  if (left_out(to, from, &rest)) {
-    if (all_same(from) && to->count > 0)
-      return rest.count == 1 ? "one layer less" : text_format(a, "%d layers less", rest.count);
-    return text_format(a, "no %s", layers_words(a, c, &rest));
-  }
-  if (from->count == to->count && all_same(from) && all_same(to) && to->count > 1)
-    return text_format(a, "%s for %s in all %d layers", c->layers[to->layer[0]].name,
-                       c->layers[from->layer[0]].name, to->count);
-  return text_format(a, "%s for %s", layers_words(a, c, to), layers_words(a, c, from));
+/* What changes on one face, without its place: other boards, then more or fewer of them. NULL where
+ * nothing does. */
+typedef struct face_change {
+  const char *boards, *layers;
+} face_change;
+
+static const char *count_words(arena *a, const face *from, const face *to) {
+  int less = from->count - to->count;
+  if (less == 0) return NULL;
+  if (less < 0) return more_layers(a, from, to);
+  return less == 1 ? "one layer less" : text_format(a, "%d layers less", less);
 }
 
-/* Both sides alike are told once. */
-static void add_faces(arena *a, const catalog *c, const char *place, const face from[2],
-                      const face to[2], change_list *out) {
-  const char *words[2];
-  for (int s = 0; s < 2; s++) words[s] = face_change(a, c, &from[s], &to[s]);
+static face_change change_of(arena *a, const catalog *c, const face *from, const face *to) {
+  face rest;
+  if (all_same(from) && all_same(to)) {
+    const char *had = c->layers[from->layer[0]].name, *has = c->layers[to->layer[0]].name;
+    bool other = from->layer[0] != to->layer[0];
+    return (face_change){other ? text_format(a, "%s for %s", has, had) : NULL,
+                         count_words(a, from, to)};
+  }
+  if (left_out(from, to, &rest)) {
+    if (rest.count == 0) return (face_change){NULL, NULL};
+    return (face_change){NULL, text_format(a, "%s added", layers_words(a, c, &rest))};
+  }
+  if (left_out(to, from, &rest))
+    return (face_change){NULL, text_format(a, "no %s", layers_words(a, c, &rest))};
+  return (face_change){
+      text_format(a, "%s for %s", layers_words(a, c, to), layers_words(a, c, from)), NULL};
+}
+
+/* What is done to both sides alike is told once. */
+static void add_sided(arena *a, const char *words[2], const char *place, change_list *out) {
   if (words[0] && words[1] && text_equal(words[0], words[1])) {
     add(out, text_format(a, "%s %s both sides", words[0], place));
     return;
   }
   for (int s = 0; s < 2; s++)
     if (words[s]) add(out, text_format(a, "%s %s side %s", words[s], place, side_names[s]));
+}
+
+static void add_faces(arena *a, const catalog *c, const char *place, const face from[2],
+                      const face to[2], change_list *out) {
+  const char *boards[2], *layers[2];
+  for (int s = 0; s < 2; s++) {
+    face_change f = change_of(a, c, &from[s], &to[s]);
+    boards[s] = f.boards;
+    layers[s] = f.layers;
+  }
+  add_sided(a, boards, place, out);
+  add_sided(a, layers, place, out);
 }
 
 /* ---- the rest ---- */
@@ -129,11 +150,42 @@ static const char *fill_words(arena *a, const catalog *c, const wall *w) {
   return text_format(a, "%s in row A, %s in row B", c->fills[x].name, c->fills[y].name);
 }
 
+/* How many rows the batt fills, where it is the only one; else 0. */
+static int rows_filled(const catalog *c, const wall *w) {
+  bool first = w->fill[0] != CATALOG_NONE;
+  bool second = wall_is_double(c, w) && w->fill[1] != CATALOG_NONE;
+  if (first && second && w->fill[0] != w->fill[1]) return 0;
+  return first + second;
+}
+
+static int batt_of(const wall *w) {
+  return w->fill[0] != CATALOG_NONE ? w->fill[0] : w->fill[1];
+}
+
+/* The same batt in another number of rows. False where it is another. */
+static bool add_rows(const catalog *c, const wall *from, const wall *to, change_list *out) {
+  int had = rows_filled(c, from), has = rows_filled(c, to);
+  if (had == 0 || has == 0 || batt_of(from) != batt_of(to)) return false;
+  if (had == has) {
+    if (has == 1 && wall_is_double(c, to) && !wall_is_double(c, from))
+      add(out, "batts in one row, the other empty");
+    else if (has == 1 && wall_is_double(c, from) && wall_is_double(c, to))
+      add(out, "batts in the other row");
+    return true;
+  }
+  if (has == 2)
+    add(out, wall_is_double(c, from) ? "batts in the second row too" : "batts in both rows");
+  else if (wall_is_double(c, to))
+    add(out, "no batts in the second row");
+  return true;
+}
+
 static void add_fill(arena *a, const catalog *c, const wall *from, const wall *to,
                      change_list *out) {
   const char *had = fill_words(a, c, from), *has = fill_words(a, c, to);
   if (!had && !has) return;
   if (had && has && text_equal(had, has)) return;
+  if (add_rows(c, from, to, out)) return;
   if (!has)
     add(out, text_format(a, "no %s", had));
   else if (!had)
