@@ -4,7 +4,8 @@
 
 #include <stdbool.h>
 
-/* Days since 1970-01-01 in the Gregorian calendar. False when `s` is no date from year 1 to 9999. */
+/* Days since 1970-01-01 in the Gregorian calendar. False when `s` is no date from year 1 to 9999.
+ */
 bool date_days(const char *s, long *days);
 
 #endif

@@ -36,9 +36,9 @@ static diag_place cell_place(const scan *s, size_t column, int line, int byte) {
   const csv_table *t = s->table;
   const char *letters = csv_letters(s->arena, column);
   bool named = t->header != NULL && column < t->columns && t->header[column].text[0] != '\0';
-  const char *path = named ? text_format(s->arena, "%s%d (%s)", letters, s->row,
-                                         t->header[column].text)
-                           : text_format(s->arena, "%s%d", letters, s->row);
+  const char *path =
+      named ? text_format(s->arena, "%s%d (%s)", letters, s->row, t->header[column].text)
+            : text_format(s->arena, "%s%d", letters, s->row);
   return (diag_place){t->file, line, byte, path};
 }
 
@@ -303,8 +303,8 @@ bool csv_check_header(arena *a, diag_list *d, const csv_table *t, const char *co
     diag_place place = csv_place(a, t, &header, (int)i);
     if (known == n) {
       const char *near = text_nearest(name, names, n);
-      diag_add(d, unknown, ERROR_CSV_COLUMN, place, "the column \"%s\" is not known here%s%s",
-               name, near ? "; the nearest is " : "", near ? near : "");
+      diag_add(d, unknown, ERROR_CSV_COLUMN, place, "the column \"%s\" is not known here%s%s", name,
+               near ? "; the nearest is " : "", near ? near : "");
     } else if (csv_column(t, name) != (int)i) {
       diag_add(d, DIAG_ERROR, ERROR_CSV_COLUMN, place, "the column \"%s\" stands twice", name);
     }

@@ -23,7 +23,7 @@ typedef struct csv_cell {
 } csv_cell;
 
 typedef struct csv_row {
-  int number; /* as a spreadsheet counts: from 1, the header and blank rows included */
+  int number;     /* as a spreadsheet counts: from 1, the header and blank rows included */
   csv_cell *cell; /* as many as the header has */
 } csv_row;
 
@@ -46,8 +46,8 @@ bool csv_same(const char *one, const char *other);
 /* The column of that name, compared without case, blanks, hyphens and underscores; -1 when there is
  * none. */
 int csv_column(const csv_table *t, const char *name);
-/* A message of level `unknown` for each header that is none of `names`, an error for one that stands
- * twice. False after an error. */
+/* A message of level `unknown` for each header that is none of `names`, an error for one that
+ * stands twice. False after an error. */
 bool csv_check_header(arena *a, diag_list *d, const csv_table *t, const char *const *names,
                       size_t n, diag_level unknown);
 /* The cell of a row in a column; "" in a column that is not there (-1). */

@@ -14,35 +14,56 @@ static const struct {
   price_unit unit;
   double si;
 } names[] = {
-    {"ft2", UNIT_M2, FT2},         {"sf", UNIT_M2, FT2},
-    {"sqft", UNIT_M2, FT2},        {"ft^2", UNIT_M2, FT2},
-    {"squarefoot", UNIT_M2, FT2},  {"squarefeet", UNIT_M2, FT2},
-    {"csf", UNIT_M2, 100 * FT2},   {"msf", UNIT_M2, 1000 * FT2},
-    {"m2", UNIT_M2, 1},            {"sqm", UNIT_M2, 1},
-    {"m^2", UNIT_M2, 1},           {"squaremetre", UNIT_M2, 1},
-    {"squaremetres", UNIT_M2, 1},  {"squaremeter", UNIT_M2, 1},
-    {"squaremeters", UNIT_M2, 1},  {"ft", UNIT_M, FT},
-    {"lf", UNIT_M, FT},            {"lft", UNIT_M, FT},
-    {"linft", UNIT_M, FT},         {"foot", UNIT_M, FT},
-    {"feet", UNIT_M, FT},          {"linearfoot", UNIT_M, FT},
-    {"linearfeet", UNIT_M, FT},    {"linealfoot", UNIT_M, FT},
-    {"linealfeet", UNIT_M, FT},    {"clf", UNIT_M, 100 * FT},
-    {"mlf", UNIT_M, 1000 * FT},    {"m", UNIT_M, 1},
-    {"lm", UNIT_M, 1},             {"metre", UNIT_M, 1},
-    {"metres", UNIT_M, 1},         {"meter", UNIT_M, 1},
-    {"meters", UNIT_M, 1},         {"linearmetre", UNIT_M, 1},
-    {"linearmeter", UNIT_M, 1},    {"each", UNIT_EACH, 1},
-    {"ea", UNIT_EACH, 1},          {"pc", UNIT_EACH, 1},
-    {"pcs", UNIT_EACH, 1},         {"piece", UNIT_EACH, 1},
-    {"pieces", UNIT_EACH, 1},      {"thousand", UNIT_EACH, 1000},
+    {"ft2", UNIT_M2, FT2},
+    {"sf", UNIT_M2, FT2},
+    {"sqft", UNIT_M2, FT2},
+    {"ft^2", UNIT_M2, FT2},
+    {"squarefoot", UNIT_M2, FT2},
+    {"squarefeet", UNIT_M2, FT2},
+    {"csf", UNIT_M2, 100 * FT2},
+    {"msf", UNIT_M2, 1000 * FT2},
+    {"m2", UNIT_M2, 1},
+    {"sqm", UNIT_M2, 1},
+    {"m^2", UNIT_M2, 1},
+    {"squaremetre", UNIT_M2, 1},
+    {"squaremetres", UNIT_M2, 1},
+    {"squaremeter", UNIT_M2, 1},
+    {"squaremeters", UNIT_M2, 1},
+    {"ft", UNIT_M, FT},
+    {"lf", UNIT_M, FT},
+    {"lft", UNIT_M, FT},
+    {"linft", UNIT_M, FT},
+    {"foot", UNIT_M, FT},
+    {"feet", UNIT_M, FT},
+    {"linearfoot", UNIT_M, FT},
+    {"linearfeet", UNIT_M, FT},
+    {"linealfoot", UNIT_M, FT},
+    {"linealfeet", UNIT_M, FT},
+    {"clf", UNIT_M, 100 * FT},
+    {"mlf", UNIT_M, 1000 * FT},
+    {"m", UNIT_M, 1},
+    {"lm", UNIT_M, 1},
+    {"metre", UNIT_M, 1},
+    {"metres", UNIT_M, 1},
+    {"meter", UNIT_M, 1},
+    {"meters", UNIT_M, 1},
+    {"linearmetre", UNIT_M, 1},
+    {"linearmeter", UNIT_M, 1},
+    {"each", UNIT_EACH, 1},
+    {"ea", UNIT_EACH, 1},
+    {"pc", UNIT_EACH, 1},
+    {"pcs", UNIT_EACH, 1},
+    {"piece", UNIT_EACH, 1},
+    {"pieces", UNIT_EACH, 1},
+    {"thousand", UNIT_EACH, 1000},
     {"thousandpieces", UNIT_EACH, 1000},
 };
 
 /* Words for what holds a quantity; a piece of a long good is one too. */
 static const char *const packages[] = {
-    "sheet",  "sheets", "sht",   "board", "panel",   "bag",   "bundle", "bdl",  "roll",  "box",
-    "carton", "ctn",    "case",  "pack",  "package", "pail",  "tube",   "strip", "strap", "stud",
-    "track",  "plate",  "channel", "length", "each",  "ea",    "pc",     "piece", "pcs",
+    "sheet",  "sheets", "sht",     "board",  "panel",   "bag",  "bundle", "bdl",   "roll",  "box",
+    "carton", "ctn",    "case",    "pack",   "package", "pail", "tube",   "strip", "strap", "stud",
+    "track",  "plate",  "channel", "length", "each",    "ea",   "pc",     "piece", "pcs",
 };
 
 enum { WORDS_MAX = 120 };
@@ -156,8 +177,10 @@ static bool product(arena *a, const char *s, price_unit wanted, quantity *q) {
   } else if (bare_left) { /* the unit of the second holds for both */
     quantity second;
     if (!number(right, &r, &rest)) return false;
-    if (named(a, rest, &second) && second.unit == UNIT_M) unit = second.si;
-    else if (!units_to_metres(rest, 1, &unit)) return false;
+    if (named(a, rest, &second) && second.unit == UNIT_M)
+      unit = second.si;
+    else if (!units_to_metres(rest, 1, &unit))
+      return false;
   }
   if (!units_parse_length(left, unit, &lm, &fault) || !units_parse_length(right, unit, &rm, &fault))
     return false;
@@ -218,8 +241,8 @@ static bool understood(arena *a, const char *s, const price_item *item, quantity
   const char *word = package(a, s, &rest);
   if (word && *rest == '\0') {
     if (book_package(word, item, q)) return true;
-    *fault = text_format(a, "what a %s of %s holds is said neither here nor in the price book", word,
-                         item->code);
+    *fault = text_format(a, "what a %s of %s holds is said neither here nor in the price book",
+                         word, item->code);
     return false;
   }
   if (content(a, word ? rest : s, item->unit, q) || named(a, s, q)) return true;

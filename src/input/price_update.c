@@ -33,18 +33,18 @@ typedef enum column {
 } column;
 
 const char *const price_columns[] = {
-    "code",     "description",     "unit",  "price", "currency",   "date",  "section",
-    "bought_as", "bought_quantity", "waste", "hours", "hours_each", "trade", "minimum_order", NULL};
+    "code",  "description", "unit",      "price",           "currency",
+    "date",  "section",     "bought_as", "bought_quantity", "waste",
+    "hours", "hours_each",  "trade",     "minimum_order",   NULL};
 
 /* Other names that suppliers give the first columns. */
 static const struct {
   column column;
   const char *name;
-} aliases[] = {{COLUMN_CODE, "item"},         {COLUMN_CODE, "sku"},
-               {COLUMN_DESCRIPTION, "desc"},  {COLUMN_DESCRIPTION, "name"},
-               {COLUMN_UNIT, "uom"},          {COLUMN_UNIT, "unit of measure"},
-               {COLUMN_PRICE, "unit price"},  {COLUMN_PRICE, "net price"},
-               {COLUMN_DATE, "price date"}};
+} aliases[] = {
+    {COLUMN_CODE, "item"},        {COLUMN_CODE, "sku"},        {COLUMN_DESCRIPTION, "desc"},
+    {COLUMN_DESCRIPTION, "name"}, {COLUMN_UNIT, "uom"},        {COLUMN_UNIT, "unit of measure"},
+    {COLUMN_PRICE, "unit price"}, {COLUMN_PRICE, "net price"}, {COLUMN_DATE, "price date"}};
 
 /* Columns that are known and not read. */
 static const char *const unread[] = {"note", "row", "supplier"};
@@ -196,8 +196,8 @@ static void unmatched(matcher *m, update_line *l, const candidates *found) {
 /* Code, then description as a name, then both as spoken words. */
 static bool match(matcher *m, update_line *l) {
   const char *code = cell(m, l, COLUMN_CODE), *words = cell(m, l, COLUMN_DESCRIPTION);
-  l->said = code[0] && words[0] ? text_format(m->arena, "%s %s", code, words)
-                                : (code[0] ? code : words);
+  l->said =
+      code[0] && words[0] ? text_format(m->arena, "%s %s", code, words) : (code[0] ? code : words);
   candidates found = {{NULL}, 0};
   const char *known = code[0] ? known_code(m, code) : NULL;
   l->match = MATCH_CODE;
@@ -290,8 +290,8 @@ static void compare(matcher *m, update_line *l, const price_item *item) {
   l->before = rounded(before);
   l->after = rounded(l->listed / l->holds * share);
   long mine = 0, theirs = 0;
-  bool later = l->date && date_days(l->date, &mine) &&
-               (!date_days(item->date, &theirs) || mine > theirs);
+  bool later =
+      l->date && date_days(l->date, &mine) && (!date_days(item->date, &theirs) || mine > theirs);
   /* A difference that rounding made is none. */
   bool same = fabs(l->after - before) <= 0.6 * pow(10, -PRICE_DECIMALS);
   l->kind = !same ? UPDATE_CHANGED : later ? UPDATE_CONFIRMED : UPDATE_SAME;

@@ -7,8 +7,8 @@
 #include "input/prices.h"
 
 typedef enum update_kind {
-  UPDATE_SAME,       /* the book says so already */
-  UPDATE_CONFIRMED,  /* the same price at a later date */
+  UPDATE_SAME,      /* the book says so already */
+  UPDATE_CONFIRMED, /* the same price at a later date */
   UPDATE_CHANGED,
   UPDATE_NEW,        /* the book gets an item */
   UPDATE_INCOMPLETE, /* the book lacks the item, and the line too little to make one */
@@ -53,12 +53,13 @@ typedef struct price_update {
                         neither has one */
   bool today_given;
   bool aged;
-  long age_days; /* of the book */
+  long age_days;     /* of the book */
   price_codes codes; /* with `priced` as it will be */
 } price_update;
 
 /* Reads every line; all faults are reported, with their cells. False after an error. Lines that fit
- * no item or several, or have no price, are no faults: they are left alone. `today` NULL = see above. */
+ * no item or several, or have no price, are no faults: they are left alone. `today` NULL = see
+ * above. */
 bool price_update_read(arena *a, diag_list *d, const catalog *c, const price_book *b,
                        const csv_table *t, const char *today, price_update *out);
 

@@ -103,7 +103,8 @@ static const field book_fields[] = {
 
 /* What is kept of an item while its code is looked up. */
 typedef struct kept_item {
-  bool own, used, told; /* own: of this file, not of the base; told: its unit was reported as wrong */
+  bool own, used,
+      told; /* own: of this file, not of the base; told: its unit was reported as wrong */
 } kept_item;
 
 /* The files that are being read, each built on by the one before. */

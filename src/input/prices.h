@@ -87,8 +87,8 @@ typedef struct stock_lengths {
 
 typedef struct price_book {
   const json_value *json;        /* the file it was read from */
-  const struct price_book *base; /* the book it builds on; NULL = none. All below holds its items and
-                                    figures too, place factors applied */
+  const struct price_book *base; /* the book it builds on; NULL = none. All below holds its items
+                                    and figures too, place factors applied */
   const char *file, *name, *currency, *place, *date, *source;
   double rate[TRADE_COUNT];          /* per hour */
   double overhead_profit, sales_tax; /* shares */
@@ -117,7 +117,8 @@ price_book *prices_load(arena *a, diag_list *d, const catalog *c, const char *pa
 price_book *prices_read(arena *a, diag_list *d, const catalog *c, const json_value *root);
 /* Index or CATALOG_NONE. */
 int prices_item(const price_book *b, const char *code);
-/* The codes that some catalog record or work asks for, once each, with whether the book prices them.
+/* The codes that some catalog record or work asks for, once each, with whether the book prices
+ * them.
  */
 typedef struct price_codes {
   const char **code;

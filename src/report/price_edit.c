@@ -84,7 +84,6 @@ static const char *quoted(editor *e, const char *words) {
   return t.data;
 }
 
-
 static const char *date_of(const editor *e, const update_line *l) {
   if (l->date) return l->date;
   return e->update->today_given ? e->update->today : no_date;

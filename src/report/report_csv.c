@@ -4,9 +4,9 @@
 
 enum { FIGURE_DIGITS = 6 };
 
-static const char *const heads[] = {"section",      "item",       "name",   "kind",   "quantity",
-                                    "unit",         "rate",       "amount", "currency", "buy",
-                                    "buy_as",       "buy_quantity", "buy_amount", "buy_note"};
+static const char *const heads[] = {"section", "item",         "name",       "kind",     "quantity",
+                                    "unit",    "rate",         "amount",     "currency", "buy",
+                                    "buy_as",  "buy_quantity", "buy_amount", "buy_note"};
 
 static void put_number(const report *r, text *out, double value) {
   text t;

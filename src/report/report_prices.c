@@ -8,9 +8,8 @@
 
 enum { PERCENT_DIGITS = 1, FIGURE_DIGITS = 9, SHOWN_DIGITS = 4, WORDS_BYTES = 4000 };
 
-static const char *const kind_names[UPDATE_KINDS] = {"same",      "confirmed", "changed",
-                                                     "new",       "incomplete", "no-price",
-                                                     "unmatched", "ambiguous"};
+static const char *const kind_names[UPDATE_KINDS] = {
+    "same", "confirmed", "changed", "new", "incomplete", "no-price", "unmatched", "ambiguous"};
 static const char *const kind_words[UPDATE_KINDS] = {"as the book has them",
                                                      "the same at a later date",
                                                      "changed",
@@ -49,8 +48,9 @@ static void put_book(arena *a, const price_update *u, text *out) {
             text_format(a, "%s; %s; %s%s%s.", b->name, b->place, b->date,
                         u->aged ? text_format(a, ", %s old on ", days(a, u->age_days)) : "",
                         u->aged ? u->today : ""));
-  page_line(out, "", text_format(a, "%zu items, in %s%s%s.", b->count, b->currency,
-                                 b->base ? ", built on " : "", b->base ? b->base->name : ""));
+  page_line(out, "",
+            text_format(a, "%zu items, in %s%s%s.", b->count, b->currency,
+                        b->base ? ", built on " : "", b->base ? b->base->name : ""));
 }
 
 static void put_counts(arena *a, const price_update *u, text *out) {
@@ -138,9 +138,8 @@ static void put_left(arena *a, const price_update *u, text *out) {
     text_putf(out, "%d", l->row->number);
     text_pad(out, CODE_AT);
     page_words(out, CODE_AT,
-               text_format(a, "%s: %s%s%s", l->said[0] ? l->said : "(nothing)",
-                           kind_words[l->kind], l->remark ? "; " : "",
-                           l->remark ? l->remark : ""));
+               text_format(a, "%s: %s%s%s", l->said[0] ? l->said : "(nothing)", kind_words[l->kind],
+                           l->remark ? "; " : "", l->remark ? l->remark : ""));
   }
   if (begun) text_char(out, '\n');
 }

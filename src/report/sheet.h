@@ -9,7 +9,7 @@
 
 typedef enum sheet_style {
   SHEET_TEXT,
-  SHEET_WRAP,  /* long text in one cell */
+  SHEET_WRAP, /* long text in one cell */
   SHEET_TITLE,
   SHEET_LABEL, /* bold */
   SHEET_HEAD,  /* head of a column: bold on grey */

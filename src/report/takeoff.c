@@ -37,9 +37,8 @@ void takeoff_rows_of(const report *r, const assessment *x, takeoff_rows *out) {
 
 /* A quantity of an item in the units of text. */
 static view_quantity shown(const report *r, int item, double quantity, double rate) {
-  cost_line l = {.unit = price_unit_names[r->prices->items[item].unit],
-                 .quantity = quantity,
-                 .rate = rate};
+  cost_line l = {
+      .unit = price_unit_names[r->prices->items[item].unit], .quantity = quantity, .rate = rate};
   return view_quantity_of(r, &l);
 }
 
@@ -105,16 +104,16 @@ static void takeoff_row(const report *r, const cost_line *l, int row, sheet *s) 
 static void takeoff_sheet(const report *r, const assessment *x, const takeoff_rows *rows,
                           sheet *s) {
   const column columns[] = {
-      {"Section", 10}, {"Item", 20}, {"Name", 40}, {"Kind", 10},
-      {"Quantity", 12}, {"Unit", 8}, {"Rate", 12},
-      {text_format(r->arena, "Amount %s", r->prices->currency), 14}};
+      {"Section", 10},  {"Item", 20},
+      {"Name", 40},     {"Kind", 10},
+      {"Quantity", 12}, {"Unit", 8},
+      {"Rate", 12},     {text_format(r->arena, "Amount %s", r->prices->currency), 14}};
   put_heads(s, 0, columns, sizeof columns / sizeof columns[0]);
-  for (int i = 0; i < rows->count; i++)
-    takeoff_row(r, &x->takeoff.line[rows->order[i]], i + 1, s);
+  for (int i = 0; i < rows->count; i++) takeoff_row(r, &x->takeoff.line[rows->order[i]], i + 1, s);
   int last = rows->count + 1;
   sheet_text(s, last, TAKEOFF_NAME, SHEET_LABEL, "Total");
-  sheet_formula(s, last, TAKEOFF_AMOUNT, SHEET_TOTAL,
-                text_format(r->arena, "=SUM(H2:H%d)", last), money(x->cost.total_cents));
+  sheet_formula(s, last, TAKEOFF_AMOUNT, SHEET_TOTAL, text_format(r->arena, "=SUM(H2:H%d)", last),
+                money(x->cost.total_cents));
 }
 
 static void buy_row(const report *r, const buy_line *b, int row, sheet *s) {
@@ -136,9 +135,12 @@ static void buy_row(const report *r, const buy_line *b, int row, sheet *s) {
 
 static void buy_sheet(const report *r, const takeoff_rows *rows, sheet *s) {
   const column columns[] = {
-      {"Section", 10}, {"Item", 20}, {"Name", 36}, {"Needed", 11}, {"Unit", 7}, {"Buy", 8},
-      {"As", 22}, {"Bought", 11}, {"Price", 11},
-      {text_format(r->arena, "Amount %s", r->prices->currency), 14}, {"Note", 30}};
+      {"Section", 10}, {"Item", 20},
+      {"Name", 36},    {"Needed", 11},
+      {"Unit", 7},     {"Buy", 8},
+      {"As", 22},      {"Bought", 11},
+      {"Price", 11},   {text_format(r->arena, "Amount %s", r->prices->currency), 14},
+      {"Note", 30}};
   put_heads(s, 0, columns, sizeof columns / sizeof columns[0]);
   int row = 1;
   for (int i = 0; i < rows->count; i++) {
@@ -195,8 +197,8 @@ static int put_sections(const report *r, const assessment *x, const takeoff_rows
     }
     sheet_text(s, row, 0, SHEET_TEXT, markup ? "Tax and markups" : section_of(l));
     const char *sum =
-        markup ? text_format(r->arena,
-                             "=SUMIF(Takeoff!$D$2:$D$%d,\"markup\",Takeoff!$H$2:$H$%d)", last, last)
+        markup ? text_format(r->arena, "=SUMIF(Takeoff!$D$2:$D$%d,\"markup\",Takeoff!$H$2:$H$%d)",
+                             last, last)
                : text_format(r->arena, "=SUMIF(Takeoff!$A$2:$A$%d,A%d,Takeoff!$H$2:$H$%d)", last,
                              row + 1, last);
     sheet_formula(s, row++, 1, SHEET_MONEY, sum, money(cents));
@@ -214,8 +216,7 @@ static int put_rates(const report *r, const assessment *x, sheet *s, int total_r
   sheet_text(s, row, 0, SHEET_TEXT, us ? "Area, ft2" : "Area, m2");
   sheet_number(s, row, 1, SHEET_QUANTITY, area);
   sheet_text(s, row + 1, 0, SHEET_TEXT, us ? "Cost per ft2" : "Cost per m2");
-  sheet_formula(s, row + 1, 1, SHEET_MONEY,
-                text_format(r->arena, "=B%d/B%d", total_row, row + 1),
+  sheet_formula(s, row + 1, 1, SHEET_MONEY, text_format(r->arena, "=B%d/B%d", total_row, row + 1),
                 us ? v.per_ft2 : v.per_m2);
   sheet_text(s, row + 2, 0, SHEET_TEXT, "Labour hours");
   sheet_number(s, row + 2, 1, SHEET_QUANTITY, x->cost.hours);

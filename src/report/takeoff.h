@@ -8,7 +8,7 @@
 
 typedef struct takeoff_rows {
   int count;
-  int order[COST_MAX_LINES]; /* lines of the takeoff, by section; markups last */
+  int order[COST_MAX_LINES];           /* lines of the takeoff, by section; markups last */
   const buy_line *buy[COST_MAX_LINES]; /* of the line at that place; NULL = none */
   buy_list list;
 } takeoff_rows;

@@ -39,18 +39,23 @@ static const char book_text[] =
     "{\"septum\":\"price-book/1\",\"name\":\"n\",\"currency\":\"USD\",\"place\":\"p\",\"date\":"
     "\"2031-03-01\",\"source\":\"s\",\"overhead_profit\":0.2,\"sales_tax\":0.07,\"labour_rates\":{"
     "\"hanger\":62,\"taper\":60,\"insulator\":48},\"items\":["
-    "{\"code\":\"typex-16\",\"name\":\"Type X\",\"section\":\"09 29 00\",\"unit\":\"ft2\",\"price\":"
+    "{\"code\":\"typex-16\",\"name\":\"Type X\",\"section\":\"09 29 "
+    "00\",\"unit\":\"ft2\",\"price\":"
     "0.52,\"bought_as\":\"sheet 4 ft x 10 ft\",\"bought_quantity\":40,\"trade\":\"hanger\"},"
-    "{\"code\":\"gyp-16\",\"name\":\"plain\",\"section\":\"09 29 00\",\"unit\":\"ft2\",\"price\":0.5,"
+    "{\"code\":\"gyp-16\",\"name\":\"plain\",\"section\":\"09 29 "
+    "00\",\"unit\":\"ft2\",\"price\":0.5,"
     "\"trade\":\"hanger\"},"
-    "{\"code\":\"wood-89\",\"name\":\"2x4 stud\",\"section\":\"06 11 00\",\"unit\":\"ft\",\"price\":"
+    "{\"code\":\"wood-89\",\"name\":\"2x4 stud\",\"section\":\"06 11 "
+    "00\",\"unit\":\"ft\",\"price\":"
     "0.52,\"bought_as\":\"stud\",\"trade\":\"hanger\"},"
-    "{\"code\":\"plate-89\",\"name\":\"2x4 plate\",\"section\":\"06 11 00\",\"unit\":\"m\",\"price\":"
+    "{\"code\":\"plate-89\",\"name\":\"2x4 plate\",\"section\":\"06 11 "
+    "00\",\"unit\":\"m\",\"price\":"
     "2,\"bought_as\":\"piece 16 ft\",\"bought_quantity\":4.8768,\"trade\":\"hanger\"},"
     "{\"code\":\"sealant\",\"name\":\"sealant\",\"section\":\"07 92 19\",\"unit\":\"ft\","
     "\"price_bought\":9,\"bought_as\":\"tube 28 oz\",\"bought_quantity\":85,\"trade\":\"hanger\"},"
     "{\"code\":\"screw\",\"name\":\"board screw\",\"section\":\"09 29 00\",\"unit\":\"each\","
-    "\"price\":0.012,\"bought_as\":\"box of 1000\",\"bought_quantity\":1000,\"trade\":\"hanger\"}]}";
+    "\"price\":0.012,\"bought_as\":\"box of "
+    "1000\",\"bought_quantity\":1000,\"trade\":\"hanger\"}]}";
 
 static const price_book *book;
 
@@ -100,7 +105,9 @@ static const struct unit_row {
     {"1.22 x 2.44 m", "typex-16", 1.22 * 2.44},
     {"sheet 1.22x2.44", "typex-16", 1.22 * 2.44},
     {"1200x2400 mm", "typex-16", 1.2 * 2.4},
-    {"1200\xC3\x97" "2400", "typex-16", 1.2 * 2.4},
+    {"1200\xC3\x97"
+     "2400",
+     "typex-16", 1.2 * 2.4},
     {"48x96", "typex-16", 32 * FT2},
     {"bundle of 320 sf", "typex-16", 320 * FT2},
     {"lf", "wood-89", FT},
@@ -122,13 +129,13 @@ static const struct unit_row {
     {"thousand", "screw", 1000},
     {"1,000 each", "screw", 1000},
     {"", "typex-16", 0},
-    {"M", "wood-89", 0},            /* a metre or a thousand */
-    {"lf", "typex-16", 0},          /* another kind */
-    {"each", "wood-89", 0},         /* studs of what length */
-    {"sheet", "gyp-16", 0},         /* the book does not say what a sheet is */
-    {"bag", "typex-16", 0},         /* no package of this item */
-    {"box of 500", "typex-16", 0},  /* pieces of an area */
-    {"20x40", "typex-16", 0},       /* feet or inches */
+    {"M", "wood-89", 0},           /* a metre or a thousand */
+    {"lf", "typex-16", 0},         /* another kind */
+    {"each", "wood-89", 0},        /* studs of what length */
+    {"sheet", "gyp-16", 0},        /* the book does not say what a sheet is */
+    {"bag", "typex-16", 0},        /* no package of this item */
+    {"box of 500", "typex-16", 0}, /* pieces of an area */
+    {"20x40", "typex-16", 0},      /* feet or inches */
     {"sheet 4x0", "typex-16", 0},
     {"furlong", "wood-89", 0},
     {"sheet -4x8", "typex-16", 0},
@@ -219,7 +226,8 @@ START_TEST(lines) {
   ck_assert_str_eq(l->code, row->code);
   ck_assert_msg(l->match == row->match, "%s: match %d", row->name, (int)l->match);
   /* prices are kept to six decimals */
-  if (row->after > 0) ck_assert_msg(fabs(l->after - row->after) < 1e-9, "%s: %f", row->name, l->after);
+  if (row->after > 0)
+    ck_assert_msg(fabs(l->after - row->after) < 1e-9, "%s: %f", row->name, l->after);
 }
 END_TEST
 
@@ -238,14 +246,14 @@ static const struct fault_row {
     {"another currency", "typex-16,,ft2,0.52,,EUR,,,,", ERROR_FIELD_CONFLICT, "F2 (currency)"},
     {"two prices for one item", "typex-16,,ft2,0.52,,,,,,\n5/8X,,ft2,0.53,,,,,,",
      ERROR_FIELD_CONFLICT, "D3 (price)"},
-    {"a new item in a package", "osb-11,OSB,sheet,18,,,06 16 00,hanger,0.1,0.014",
-     ERROR_PRICE_UNIT, "C2 (unit)"},
+    {"a new item in a package", "osb-11,OSB,sheet,18,,,06 16 00,hanger,0.1,0.014", ERROR_PRICE_UNIT,
+     "C2 (unit)"},
     {"a new item by length", "osb-11,OSB,ft,18,,,06 16 00,hanger,0.1,0.014", ERROR_PRICE_UNIT,
      "C2 (unit)"},
     {"a new item of no trade", "osb-11,OSB,ft2,0.5,,,06 16 00,plumber,0.1,0.014",
      ERROR_FIELD_CHOICE, "H2 (trade)"},
-    {"a new item with bad hours", "osb-11,OSB,ft2,0.5,,,06 16 00,hanger,0.1,soon",
-     ERROR_FIELD_TYPE, "J2 (hours)"},
+    {"a new item with bad hours", "osb-11,OSB,ft2,0.5,,,06 16 00,hanger,0.1,soon", ERROR_FIELD_TYPE,
+     "J2 (hours)"},
 };
 
 START_TEST(faults) {
@@ -268,7 +276,8 @@ START_TEST(heads_refused) {
 END_TEST
 
 START_TEST(all_faults_at_once) {
-  ck_assert(!read_list(HEADS "typex-16,,lf,1,,,,,,\ngyp-16,,ft2,x,,,,,,\nwood-89,,ft,1,x,,,,,\n", NULL));
+  ck_assert(
+      !read_list(HEADS "typex-16,,lf,1,,,,,,\ngyp-16,,ft2,x,,,,,,\nwood-89,,ft,1,x,,,,,\n", NULL));
   ck_assert_uint_eq(diags.errors, 3);
 }
 END_TEST

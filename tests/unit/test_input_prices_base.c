@@ -37,8 +37,8 @@ static const char *path_of(const char *name) {
 }
 
 static const char *const file_names[] = {"base.json", "book.json", "a.json", "b.json", "link.json",
-                                         "0.json", "1.json", "2.json", "3.json", "4.json", "5.json",
-                                         "6.json", "7.json", "8.json", "9.json"};
+                                         "0.json",    "1.json",    "2.json", "3.json", "4.json",
+                                         "5.json",    "6.json",    "7.json", "8.json", "9.json"};
 
 static void teardown(void) {
   for (size_t i = 0; i < sizeof file_names / sizeof file_names[0]; i++)
@@ -52,11 +52,12 @@ static void put_file(const char *name, const char *words) {
 }
 
 #define BASE                                                                                       \
-  "{\"septum\":\"price-book/1\",\"name\":\"base\",\"currency\":\"USD\",\"place\":\"p\",\"date\":"   \
+  "{\"septum\":\"price-book/1\",\"name\":\"base\",\"currency\":\"USD\",\"place\":\"p\",\"date\":"  \
   "\"2031-03-01\",\"source\":\"s\",\"overhead_profit\":0.2,\"sales_tax\":0.07,\"labour_rates\":{"  \
   "\"hanger\":60,\"taper\":50,\"insulator\":40},\"heights\":[{\"above_ft\":10,\"factor\":1.2}],"   \
   "\"stock\":{\"wood\":[\"9ft\"],\"steel\":[\"10ft\"]},\"items\":["                                \
-  "{\"code\":\"typex-16\",\"name\":\"Type X\",\"section\":\"09 29 00\",\"unit\":\"ft2\",\"price\":" \
+  "{\"code\":\"typex-16\",\"name\":\"Type X\",\"section\":\"09 29 "                                \
+  "00\",\"unit\":\"ft2\",\"price\":"                                                               \
   "0.5,\"bought_as\":\"sheet\",\"bought_quantity\":40,\"waste\":0.1,\"hours\":0.01,\"trade\":"     \
   "\"hanger\",\"minimum_order\":640,\"breaks\":[{\"from\":8000,\"price\":0.4}]},"                  \
   "{\"code\":\"wood-89\",\"name\":\"2x4\",\"section\":\"06 11 00\",\"unit\":\"m\",\"price\":2,"    \
@@ -106,9 +107,9 @@ START_TEST(all_inherited) {
 END_TEST
 
 START_TEST(place) {
-  const price_book *b = read_over(OVER(
-      ",\"place_factors\":{\"material\":1.1,\"labour\":0.9},\"labour_rates\":{\"taper\":55},"
-      "\"items\":[{\"code\":\"wood-89\",\"price\":3}]"));
+  const price_book *b = read_over(
+      OVER(",\"place_factors\":{\"material\":1.1,\"labour\":0.9},\"labour_rates\":{\"taper\":55},"
+           "\"items\":[{\"code\":\"wood-89\",\"price\":3}]"));
   ck_assert_ptr_nonnull(b);
   near("board", item(b, "typex-16")->price, 0.55 / UNITS_M2_PER_FT2);
   near("break", item(b, "typex-16")->breaks[0].price, 0.44 / UNITS_M2_PER_FT2);
@@ -161,28 +162,34 @@ static const struct refusal {
   error_code code;
   const char *path, *says;
 } refusals[] = {
-    {"itself", "{\"septum\":\"price-book/1\",\"base\":\"book.json\",\"name\":\"n\",\"place\":\"p\","
-               "\"date\":\"d\",\"source\":\"s\"}",
+    {"itself",
+     "{\"septum\":\"price-book/1\",\"base\":\"book.json\",\"name\":\"n\",\"place\":\"p\","
+     "\"date\":\"d\",\"source\":\"s\"}",
      ERROR_PRICE_BASE, "$.base", "itself"},
-    {"not there", "{\"septum\":\"price-book/1\",\"base\":\"none.json\",\"name\":\"n\",\"place\":"
-                  "\"p\",\"date\":\"d\",\"source\":\"s\"}",
+    {"not there",
+     "{\"septum\":\"price-book/1\",\"base\":\"none.json\",\"name\":\"n\",\"place\":"
+     "\"p\",\"date\":\"d\",\"source\":\"s\"}",
      ERROR_PRICE_BASE, "$.base", "not there"},
-    {"no name of a base", "{\"septum\":\"price-book/1\",\"base\":1,\"name\":\"n\",\"place\":\"p\","
-                          "\"date\":\"d\",\"source\":\"s\"}",
+    {"no name of a base",
+     "{\"septum\":\"price-book/1\",\"base\":1,\"name\":\"n\",\"place\":\"p\","
+     "\"date\":\"d\",\"source\":\"s\"}",
      ERROR_FIELD_TYPE, "$.base", "string"},
     {"another currency", OVER(",\"currency\":\"CAD\""), ERROR_PRICE_BASE, "$.currency", "USD"},
     {"a new item that is not whole", OVER(",\"items\":[{\"code\":\"plate-89\",\"price\":2}]"),
      ERROR_FIELD_MISSING, "$.items[0]", ""},
-    {"an item twice", OVER(",\"items\":[{\"code\":\"wood-89\",\"price\":2},{\"code\":\"wood-89\","
-                           "\"price\":3}]"),
+    {"an item twice",
+     OVER(",\"items\":[{\"code\":\"wood-89\",\"price\":2},{\"code\":\"wood-89\","
+          "\"price\":3}]"),
      ERROR_FIELD_CONFLICT, "$.items[1]", "already"},
-    {"a unit of another kind", OVER(",\"items\":[{\"code\":\"wood-89\",\"unit\":\"ft2\",\"price\":"
-                                    "2}]"),
+    {"a unit of another kind",
+     OVER(",\"items\":[{\"code\":\"wood-89\",\"unit\":\"ft2\",\"price\":"
+          "2}]"),
      ERROR_FIELD_UNIT, "$.items[0].unit", "length"},
     {"a factor out of range", OVER(",\"place_factors\":{\"material\":0}"), ERROR_FIELD_RANGE,
      "$.place_factors.material", ""},
-    {"no date", "{\"septum\":\"price-book/1\",\"name\":\"over\",\"base\":\"base.json\",\"place\":"
-                "\"q\",\"source\":\"t\"}",
+    {"no date",
+     "{\"septum\":\"price-book/1\",\"name\":\"over\",\"base\":\"base.json\",\"place\":"
+     "\"q\",\"source\":\"t\"}",
      ERROR_FIELD_MISSING, "$", "date"},
 };
 
