@@ -2,6 +2,7 @@
 
 #include <math.h>
 
+#include "explain/changes.h"
 #include "search/savers.h"
 #include "wall/line.h"
 
@@ -116,7 +117,11 @@ static void list_changes(arena *a, const judge_context *x, const assessment *fro
     trim_change *c = &p->change[i];
     *c = (trim_change){.part = part[i], .name = step_name(part[i])};
     c->from = step_words(a, cat, &now, part[i], inches);
+    wall before = now;
+    change_list words;
     step_take(cat, &p->wall->wall, part[i], &now);
+    changes_list(a, cat, &before, &now, inches, &words);
+    c->what = changes_words(a, &words);
     c->to = step_words(a, cat, &now, part[i], inches);
     take_alone(a, x, from, &p->wall->wall, c);
     p->together_cents -= c->saving_cents;

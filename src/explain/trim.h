@@ -26,7 +26,8 @@ typedef enum trim_verdict {
 /* One part of the wall changed. */
 typedef struct trim_change {
   step_part part;
-  const char *name, *from, *to; /* in trade words */
+  const char *what;             /* "second layer off side A" (explain/changes.h) */
+  const char *name, *from, *to; /* of the part, in trade words */
   assessment *alone;            /* the specified wall with this change only; NULL when it cannot be */
   const char *why_not;          /* why it cannot be taken alone: a sentence; NULL when it can */
   long long saving_cents;       /* of the change alone, floor value included; may be below 0 */

@@ -56,8 +56,7 @@ static const char *changes_words(const report *r, const trim_proposal *p) {
   text t;
   text_init(&t, r->arena, 4000);
   for (int i = 0; i < p->change_count; i++)
-    text_putf(&t, "%s%s: %s -> %s", i ? "; " : "", p->change[i].name, p->change[i].from,
-              p->change[i].to);
+    text_putf(&t, "%s%s", i ? "; " : "", p->change[i].what);
   return t.data;
 }
 

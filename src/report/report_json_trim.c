@@ -55,6 +55,7 @@ static void put_figures(markup_json *j, const report *r, const assessment *from,
 static void put_change(markup_json *j, const report *r, const trim_answer *t,
                        const trim_change *c) {
   markup_json_object(j, NULL, false);
+  markup_json_string(j, "what", c->what);
   markup_json_string(j, "part", c->name);
   markup_json_string(j, "from", c->from);
   markup_json_string(j, "to", c->to);

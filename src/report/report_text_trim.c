@@ -96,7 +96,7 @@ static void put_change(const report *r, const trim_answer *t, int proposal, cons
   page_right(out, MONEY_END, c->alone ? cents_words(r, c->saving_cents) : "-");
   text_pad(out, ITEM_AT);
   page_words(out, ITEM_AT + 2,
-             text_format(r->arena, "%s: %s -> %s%s", c->name, c->from, c->to,
+             text_format(r->arena, "%s%s", c->what,
                          told ? text_format(r->arena, "; alone as under wall %d", told) : ""));
   if (told) return;
   text_pad(out, ITEM_AT + 2);

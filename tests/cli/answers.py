@@ -213,7 +213,7 @@ def check_trim_text(where, text, data):
     wanted = ["{:,.2f}".format(data["specified"]["cost"]["total"]), data["specified"]["line"], data["held_to"]["words"]]
     for entry in data["alternatives"]:
         wanted += [entry["line"], "{:,.2f}".format(entry["saving_total"]), "{:,.2f}".format(entry["together"])]
-        wanted += entry["gives_up"] + [c["from"] + " -> " + c["to"] for c in entry["changes"]]
+        wanted += entry["gives_up"] + [c["what"] for c in entry["changes"]]
         wanted += ["{:,.2f}".format(c["saving_total"]) for c in entry["changes"] if c["saving_total"] is not None]
         wanted += [c["why_not"] for c in entry["changes"] if c["why_not"]]
     for words in wanted:
