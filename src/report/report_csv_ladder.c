@@ -39,7 +39,7 @@ static void put_head(row *w, const ladder_answer *l) {
   bool us = w->r->units == UNITS_US;
   const char *const heads[] = {"rating", "metric", "serves_from", "worth_taking",
                                us ? "cost_per_ft2" : "cost_per_m2", "cost_total",
-                               "floor_value_total", "currency", "step_points", "step_total",
+                               "floor_value_total", "cost_with_floor_total", "currency", "step_points", "step_total",
                                us ? "step_per_point_per_ft2" : "step_per_point_per_m2",
                                us ? "thickness_in" : "thickness_mm",
                                us ? "mass_psf" : "mass_kg_m2", "evidence", "predicted_exact",
@@ -74,6 +74,7 @@ static void put_rung(row *w, const ladder_answer *l, const ladder_rung *g) {
   put_number(w, view_ladder_per_m2(x, x->cost.total_cents) * area(w), 4);
   put_cents(w, x->cost.total_cents);
   put_cents(w, x->cost.floor_value_cents);
+  put_cents(w, g->cost_cents);
   put(w, r->prices->currency);
   put_step(w, g);
   put_number(w, us ? x->thickness_m / UNITS_M_PER_IN : x->thickness_m * 1e3, us ? 3 : 1);

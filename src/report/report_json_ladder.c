@@ -39,6 +39,7 @@ static void put_figures(markup_json *j, const report *r, const assessment *x) {
   markup_json_number(j, "cost_per_ft2", v.per_ft2, MONEY_DIGITS);
   markup_json_cents(j, "cost_total", x->cost.total_cents);
   markup_json_cents(j, "floor_value_total", x->cost.floor_value_cents);
+  markup_json_cents(j, "cost_with_floor_total", x->numbers.cost_cents);
   markup_json_number(j, "thickness_mm", x->thickness_m * 1e3, MM_DIGITS);
   markup_json_number(j, "mass_kg_m2", x->mass_kg_m2, MASS_DIGITS);
   markup_json_string(j, "line", x->line);

@@ -107,7 +107,7 @@ static void put_head(const report *r, const ladder_answer *l, text *out) {
   const char *currency = r->prices->currency;
   page_right(out, RATING_END, view_ladder_metric(r, l));
   page_right(out, COST_END, text_format(r->arena, "%s/%s", currency, area_name(r)));
-  page_right(out, TOTAL_END, "the wall");
+  page_right(out, TOTAL_END, r->brief->floor_area_value_per_m2 > 0 ? "with floor" : "the wall");
   page_right(out, STEP_END, text_format(r->arena, "step/%s", area_name(r)));
   page_right(out, POINT_END, "a point");
   text_pad(out, THICK_AT);
@@ -122,7 +122,7 @@ static void put_figures(const report *r, const ladder_answer *l, const ladder_ru
   text_put(out, g->worth ? " *" : "");
   page_right(out, RATING_END, text_format(r->arena, "%d", g->rating));
   page_right(out, COST_END, by_area(r, x, (double)x->cost.total_cents, false));
-  page_right(out, TOTAL_END, cents_words(r, x->cost.total_cents, false));
+  page_right(out, TOTAL_END, cents_words(r, g->cost_cents, false));
   page_right(out, STEP_END, g->points ? by_area(r, x, step, true) : "-");
   page_right(out, POINT_END, g->points ? by_area(r, x, step / g->points, true) : "-");
   text_pad(out, THICK_AT);
@@ -208,14 +208,15 @@ static void put_none(const report *r, const explanation *e, text *out) {
 }
 
 static void put_legend(const report *r, text *out) {
-  page_line(out, "* ",
+  page_line(out, "*",
             "Worth taking: between two starred rungs no rung in between gives its points as "
             "cheaply.");
   page_line(out, "",
-            text_format(r->arena,
-                        "Step and point: what a rung costs more than the one above it here%s. "
-                        "Ratings that are left out cost as much as the next rung.",
-                        r->brief->floor_area_value_per_m2 > 0 ? ", floor area included" : ""));
+            "Step and point: what a rung costs more than the one above it here. Ratings that are "
+            "left out cost as much as the next rung.");
+  if (r->brief->floor_area_value_per_m2 > 0)
+    page_line(out, "",
+              "With floor: the wall and the floor area under it; so are steps and points.");
 }
 
 /* What is said of several rungs is said once. */
