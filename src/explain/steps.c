@@ -78,9 +78,10 @@ int steps_between(const catalog *c, const wall *from, const wall *to, step_part 
 /* ---- words ---- */
 
 const char *step_name(step_part part) {
-  static const char *const names[STEP_PARTS] = {
-      "frame",    "stud spacing", "gap between rows", "fill",   "mount A",         "mount B",
-      "on studs A", "on studs B", "side A",           "side B", "between rows, A", "between rows, B"};
+  static const char *const names[STEP_PARTS] = {"frame",      "stud spacing",    "gap between rows",
+                                                "fill",       "mount A",         "mount B",
+                                                "on studs A", "on studs B",      "side A",
+                                                "side B",     "between rows, A", "between rows, B"};
   return names[part];
 }
 

@@ -146,8 +146,7 @@ static void lose_sound(arena *a, const brief *b, const assessment *x, const asse
     for (int k = 0; k < i; k++) again = again || b->targets[k].metric == m;
     if (again) continue;
     int from = rating_of(&x->ratings, m), to = rating_of(&y->ratings, m);
-    if (to < from)
-      lose(p, text_format(a, "%s %d becomes %d", sound_metric_names[m], from, to));
+    if (to < from) lose(p, text_format(a, "%s %d becomes %d", sound_metric_names[m], from, to));
     if (stands_published(x, m) && !stands_published(y, m))
       lose(p, text_format(a, "a published rating (%s) becomes a prediction",
                           x->evidence.match->source));
@@ -191,15 +190,16 @@ static void lose_rest(arena *a, const brief *b, const assessment *x, const asses
 
 /* ---- proposals ---- */
 
-/* Where both rooms ask the same, the space holds one of two mirror images: the nearer one is told. */
+/* Where both rooms ask the same, the space holds one of two mirror images: the nearer one is told.
+ */
 static assessment *nearer_image(arena *a, const space *s, const assessment *from, wall w,
                                 long long cost_cents) {
   const catalog *c = s->context->catalog;
   step_part part[STEP_PARTS];
   wall other = wall_mirrored(c, &w);
   assessment *x = judge(a, s->context, &w);
-  if (!s->mirror_once || steps_between(c, &from->wall, &w, part) <=
-                             steps_between(c, &from->wall, &other, part))
+  if (!s->mirror_once ||
+      steps_between(c, &from->wall, &w, part) <= steps_between(c, &from->wall, &other, part))
     return x;
   assessment *y = judge(a, s->context, &other);
   bool same = y->broken == 0 && y->numbers.cost_cents == cost_cents;
@@ -211,8 +211,8 @@ static void propose(arena *a, const space *s, const trim_answer *t, const candid
   const judge_context *x = s->context;
   const assessment *from = t->specified;
   *p = (trim_proposal){0};
-  p->wall = nearer_image(a, s, from, space_wall(s, c->core, c->face_a, c->face_b),
-                         c->is.cost_cents);
+  p->wall =
+      nearer_image(a, s, from, space_wall(s, c->core, c->face_a, c->face_b), c->is.cost_cents);
   p->saving_cents = from->numbers.cost_cents - p->wall->numbers.cost_cents;
   p->saving_per_m2 = (double)p->saving_cents / 100 / from->cost.area_m2;
   take_heavy(x, &p->wall->wall, p->heavy);
@@ -235,7 +235,8 @@ static void price_rules(arena *a, const space *s, const sweep_result *r, const c
   if (!best && !holds) return;
   out->base_line = best && base.core == best->core ? out->cheapest->line : out->specified->line;
   explain_prices(a, s, r, &base, &e);
-  if (out->proposal_count > 0) out->base_line = out->proposal[0].wall->line; /* or its mirror image */
+  if (out->proposal_count > 0)
+    out->base_line = out->proposal[0].wall->line; /* or its mirror image */
   out->prices = e.prices;
   out->price_count = e.price_count;
 }
@@ -259,6 +260,7 @@ void trim_explain(arena *a, const space *s, const sweep_result *r, assessment *s
     out->cheapest = judge(a, s->context, &w);
     out->cheapest_more_cents = best->is.cost_cents - cost_cents;
   }
-  if (out->proposal_count == 0) out->cheaper_count = explain_cheaper(a, s, r, cost_cents, &out->cheaper);
+  if (out->proposal_count == 0)
+    out->cheaper_count = explain_cheaper(a, s, r, cost_cents, &out->cheaper);
   price_rules(a, s, r, best, out);
 }

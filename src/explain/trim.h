@@ -28,11 +28,11 @@ typedef struct trim_change {
   step_part part;
   const char *what;             /* "second layer off side A" (explain/changes.h) */
   const char *name, *from, *to; /* of the part, in trade words */
-  assessment *alone;            /* the specified wall with this change only; NULL when it cannot be */
-  const char *why_not;          /* why it cannot be taken alone: a sentence; NULL when it can */
-  long long saving_cents;       /* of the change alone, floor value included; may be below 0 */
-  rule_mask breaks;             /* rules that the change alone breaks and the specified wall keeps */
-  bool heavy[2];                /* the sides take heavy fastening after the change alone */
+  assessment *alone;      /* the specified wall with this change only; NULL when it cannot be */
+  const char *why_not;    /* why it cannot be taken alone: a sentence; NULL when it can */
+  long long saving_cents; /* of the change alone, floor value included; may be below 0 */
+  rule_mask breaks;       /* rules that the change alone breaks and the specified wall keeps */
+  bool heavy[2];          /* the sides take heavy fastening after the change alone */
 } trim_change;
 
 typedef struct trim_proposal {
@@ -66,11 +66,11 @@ typedef struct trim_answer {
 } trim_answer;
 
 /* What the wall is held to, put into `b`: without a target its own rating (as printed and as sure,
- * and what the usual confidence assures), the fire minutes that are shown for it, its thickness and the slack.
- * Needs prices in the context; x->brief is read as the brief came. */
+ * and what the usual confidence assures), the fire minutes that are shown for it, its thickness and
+ * the slack. Needs prices in the context; x->brief is read as the brief came. */
 void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *terms, brief *b);
-/* `r` is the sweep of `s`, whose brief is that of trim_hold_to; `specified` was judged by it and can
- * be costed. */
+/* `r` is the sweep of `s`, whose brief is that of trim_hold_to; `specified` was judged by it and
+ * can be costed. */
 void trim_explain(arena *a, const space *s, const sweep_result *r, assessment *specified,
                   const trim_terms *terms, trim_answer *out);
 

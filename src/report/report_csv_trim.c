@@ -1,5 +1,5 @@
-/* The value-engineering log: one proposal a row, with what its acceptance turns on; the last columns
- * are for whoever decides. */
+/* The value-engineering log: one proposal a row, with what its acceptance turns on; the last
+ * columns are for whoever decides. */
 #include "report/markup.h"
 #include "report/report_trim.h"
 #include "report/view_trim.h"
@@ -38,16 +38,35 @@ static void put_height(row *w, double metres) {
 
 static void put_head(row *w) {
   bool us = w->r->units == UNITS_US;
-  const char *const heads[] = {
-      "proposal", "brief", "specified_wall", "proposed_wall", "changes", "asked",
-      "rating_specified", "rating_proposed", "sureness_proposed", "fire_specified",
-      "fire_proposed", us ? "thickness_specified_in" : "thickness_specified_mm",
-      us ? "thickness_change_in" : "thickness_change_mm",
-      us ? "mass_change_psf" : "mass_change_kg_m2", "height_asked", "height_limit_specified",
-      "height_limit_proposed", "heavy_fastening_proposed", "rating_if_mount_bridged",
-      us ? "cost_specified_per_ft2" : "cost_specified_per_m2",
-      us ? "saving_per_ft2" : "saving_per_m2", "saving_total", "currency", "gives_up", "cautions",
-      "status", "decided_by", "date", "remarks"};
+  const char *const heads[] = {"proposal",
+                               "brief",
+                               "specified_wall",
+                               "proposed_wall",
+                               "changes",
+                               "asked",
+                               "rating_specified",
+                               "rating_proposed",
+                               "sureness_proposed",
+                               "fire_specified",
+                               "fire_proposed",
+                               us ? "thickness_specified_in" : "thickness_specified_mm",
+                               us ? "thickness_change_in" : "thickness_change_mm",
+                               us ? "mass_change_psf" : "mass_change_kg_m2",
+                               "height_asked",
+                               "height_limit_specified",
+                               "height_limit_proposed",
+                               "heavy_fastening_proposed",
+                               "rating_if_mount_bridged",
+                               us ? "cost_specified_per_ft2" : "cost_specified_per_m2",
+                               us ? "saving_per_ft2" : "saving_per_m2",
+                               "saving_total",
+                               "currency",
+                               "gives_up",
+                               "cautions",
+                               "status",
+                               "decided_by",
+                               "date",
+                               "remarks"};
   for (size_t i = 0; i < sizeof heads / sizeof heads[0]; i++) put(w, heads[i]);
   markup_csv_end(w->out);
 }
@@ -55,8 +74,7 @@ static void put_head(row *w) {
 static const char *changes_words(const report *r, const trim_proposal *p) {
   text t;
   text_init(&t, r->arena, 4000);
-  for (int i = 0; i < p->change_count; i++)
-    text_putf(&t, "%s%s", i ? "; " : "", p->change[i].what);
+  for (int i = 0; i < p->change_count; i++) text_putf(&t, "%s%s", i ? "; " : "", p->change[i].what);
   return t.data;
 }
 

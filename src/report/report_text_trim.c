@@ -48,8 +48,7 @@ static void put_specified(const report *r, const trim_answer *t, text *out) {
   put_figures(r, x, out);
   text c;
   text_init(&c, r->arena, 500);
-  text_putf(&c, "%s, %s for the wall of ",
-            view_money(r, per_area(r, v.per_m2), area(r)),
+  text_putf(&c, "%s, %s for the wall of ", view_money(r, per_area(r, v.per_m2), area(r)),
             view_money(r, (double)x->cost.total_cents / 100, NULL));
   units_put_height(&c, r->brief->length_m, r->units);
   text_put(&c, " x ");
@@ -168,10 +167,10 @@ static void put_cheapest(const report *r, const trim_answer *t, text *out) {
     page_line(out, "Cheapest", "The specified wall is the cheapest that holds all of that.");
     return;
   }
-  page_line(out, "Cheapest",
-            text_format(r->arena, "The cheapest of the walls judged that holds it costs %s more: %s",
-                        view_money(r, (double)t->cheapest_more_cents / 100, NULL),
-                        t->cheapest->line));
+  page_line(
+      out, "Cheapest",
+      text_format(r->arena, "The cheapest of the walls judged that holds it costs %s more: %s",
+                  view_money(r, (double)t->cheapest_more_cents / 100, NULL), t->cheapest->line));
 }
 
 static void put_cautions(const report *r, const trim_answer *t, text *out) {

@@ -7,7 +7,8 @@
 
 /* The metric that the wall is held to first. */
 sound_metric view_trim_metric(const report *r);
-/* "STC 52 (predicted)", "STC 54 (published: NBC 2020 ...)": the ratings that the targets ask for. */
+/* "STC 52 (predicted)", "STC 54 (published: NBC 2020 ...)": the ratings that the targets ask for.
+ */
 const char *view_trim_rating(const report *r, const assessment *x);
 /* "83 % sure of STC 50": for each target how sure it is. */
 const char *view_trim_sure(const report *r, const assessment *x);

@@ -22,10 +22,10 @@ typedef struct finder {
   kernel_leaves *leaves;
   sound_aims aims;
   core_facts core;
-  bool kernel_set;  /* the kernel holds this core */
-  candidate *wall;  /* of one leaf on A: face_count walls, by the leaf on B */
-  bool *open;       /* of these, those that are cheap enough */
-  double *exact;    /* METRIC_COUNT x face_count */
+  bool kernel_set; /* the kernel holds this core */
+  candidate *wall; /* of one leaf on A: face_count walls, by the leaf on B */
+  bool *open;      /* of these, those that are cheap enough */
+  double *exact;   /* METRIC_COUNT x face_count */
   long long below_cents;
   savers *out;
   int cap;
@@ -86,8 +86,7 @@ static void rate_at_most(const finder *f, saver *x) {
   for (int i = 0; i < f->aims.metrics; i++) {
     sound_metric m = f->aims.metric[i];
     double exact = f->exact[(size_t)m * (size_t)f->space->face_count + (size_t)x->is.face_b];
-    x->rating[m] =
-        match && m == METRIC_STC ? match->stc : (int)floor(exact + printed_above_db);
+    x->rating[m] = match && m == METRIC_STC ? match->stc : (int)floor(exact + printed_above_db);
   }
 }
 

@@ -326,8 +326,8 @@ START_TEST(verdicts) {
       {"far below", "typex-16 | steel-92-18@610, glass-89 | typex-16", 60, 0.8, 60, TRIM_FAILS},
       {"no fire row with a channel", "typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16", 30,
        0.8, 60, TRIM_NOT_SHOWN},
-      {"a fire row, but too few minutes", "typex-16 | steel-92-18@610, glass-89 | typex-16", 40, 0.8,
-       120, TRIM_FAILS},
+      {"a fire row, but too few minutes", "typex-16 | steel-92-18@610, glass-89 | typex-16", 40,
+       0.8, 120, TRIM_FAILS},
   };
   scene x = {.context.prices = NULL};
   wall w = read_wall(rows[_i].line);
