@@ -151,9 +151,10 @@ static void read_coefficients(reader *r, const json_value *list) {
   if (!list_of(r, list)) return;
   for (const json_value *v = list->first; v; v = v->next) {
     coefficient_record c = {.prior = NAN, .prior_sd = NAN};
-    if (!fields_read(r->arena, r->diags, v, coefficient_fields, ROWS(coefficient_fields), &c)) continue;
-    int slot = slot_of(c.id);
-    if (!take(r, v, slot, c.id, seen)) continue;
+    bool sound = fields_read(r->arena, r->diags, v, coefficient_fields, ROWS(coefficient_fields), &c);
+    int slot = c.id ? slot_of(c.id) : -1;
+    if (!sound && slot >= 0) seen[slot] = true; /* one message is enough */
+    if (!sound || !take(r, v, slot, c.id, seen)) continue;
     if (c.value < c.min || c.value > c.max) {
       diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_RANGE, json_place(r->arena, json_get(v, "value")),
                "%s must lie within its own bounds \"min\" and \"max\"", c.id);
@@ -168,9 +169,10 @@ static void read_families(reader *r, const json_value *list) {
   if (!list_of(r, list)) return;
   for (const json_value *v = list->first; v; v = v->next) {
     spread_record s = {0};
-    if (!fields_read(r->arena, r->diags, v, family_fields, ROWS(family_fields), &s)) continue;
-    int i = index_of(s.id, sound_family_names);
-    if (!take(r, v, i, s.id, seen)) continue;
+    bool sound = fields_read(r->arena, r->diags, v, family_fields, ROWS(family_fields), &s);
+    int i = s.id ? index_of(s.id, sound_family_names) : -1;
+    if (!sound && i >= 0) seen[i] = true;
+    if (!sound || !take(r, v, i, s.id, seen)) continue;
     r->out->rows[i] = s.rows;
     r->out->bias[i] = s.bias;
     r->out->sd[i] = s.sd;
@@ -184,9 +186,10 @@ static void read_extras(reader *r, const json_value *list, const char *const *na
   if (!list_of(r, list)) return;
   for (const json_value *v = list->first; v; v = v->next) {
     spread_record s = {0};
-    if (!fields_read(r->arena, r->diags, v, extra_fields, ROWS(extra_fields), &s)) continue;
-    int i = index_of(s.id, names);
-    if (take(r, v, i, s.id, seen)) out[i] = s.sd;
+    bool sound = fields_read(r->arena, r->diags, v, extra_fields, ROWS(extra_fields), &s);
+    int i = s.id ? index_of(s.id, names) : -1;
+    if (!sound && i >= 0) seen[i] = true;
+    if (sound && take(r, v, i, s.id, seen)) out[i] = s.sd;
   }
   all_seen(r, list, seen, n, name);
 }
