@@ -16,8 +16,8 @@
 static const struct {
   double soft_db, step;
 } stages[] = {{1.0, 0.2}, {0.5, 0.1}, {0.25, 0.06}, {0.1, 0.06}, {0, 0.06}};
-enum { STAGES = sizeof stages / sizeof stages[0], NEAR_STAGE = 2, MAX_ITERATIONS = 60 };
-#define STEP_TOLERANCE 1e-6
+enum { STAGES = sizeof stages / sizeof stages[0], NEAR_STAGE = 3, MAX_ITERATIONS = 30 };
+#define STEP_TOLERANCE 1e-4
 /* The second start, in prior sd, alternately up and down. */
 #define SECOND_START 0.8
 

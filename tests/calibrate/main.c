@@ -1,5 +1,5 @@
 /* Fits the coefficients of the sound model to the published walls of tests/data, prints how well, and
- * rewrites catalogs/acoustics.json and docs/methods/sound_fit.svg of the source folder given.
+ * rewrites catalogs/acoustics.json and docs/methods/sound_fit.{md,svg} of the source folder given.
  * `--look` writes nothing. Running it again gives the same bytes. */
 #include <gsl/gsl_errno.h>
 #include <math.h>
@@ -115,15 +115,26 @@ static void print_faults(arena *a, const diag_list *d) {
   fputs(t.data, stderr);
 }
 
-static bool save(arena *a, diag_list *d, const char *root, const fit *f, const json_value *old,
-                 const outcome *o) {
-  text json, svg;
+static void save_text(diag_list *d, const char *root, const char *name, const text *t) {
+  file_write(t->arena, d, file_join(t->arena, root, name), t->data, t->len);
+}
+
+static void save(arena *a, diag_list *d, const char *root, const fit *f, const json_value *old,
+                 const outcome *o, const char *report) {
+  text json, svg, page;
   text_init(&json, a, MOST_BYTES);
   text_init(&svg, a, MOST_BYTES);
+  text_init(&page, a, MOST_BYTES);
   write_acoustics(&json, old, f, o);
   plot_fit(&svg, f, o);
-  return file_write(a, d, file_join(a, root, "catalogs/acoustics.json"), json.data, json.len) &&
-         file_write(a, d, file_join(a, root, "docs/methods/sound_fit.svg"), svg.data, svg.len);
+  text_putf(&page,
+            "# What the fit of the sound model gave\n\nWritten by the calibration tool (target "
+            "`calibrate`); method and words in `sound.md`.\n\n```\n%s```\n\n![Predicted against "
+            "published STC](sound_fit.svg)\n",
+            report);
+  save_text(d, root, "catalogs/acoustics.json", &json);
+  save_text(d, root, "docs/methods/sound_fit.svg", &svg);
+  save_text(d, root, "docs/methods/sound_fit.md", &page);
 }
 
 int main(int argc, char **argv) {
@@ -151,7 +162,7 @@ int main(int argc, char **argv) {
   if (d.errors == 0) {
     run(&out, &f, &o);
     fputs(out.data, stdout);
-    if (argc < 3) save(a, &d, argv[1], &f, old, &o);
+    if (argc < 3) save(a, &d, argv[1], &f, old, &o, out.data);
   }
   print_faults(a, &d);
   int answer = d.errors == 0 ? 0 : 1;
