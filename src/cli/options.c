@@ -44,7 +44,7 @@ static const option_row option_rows[] = {
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
     {"count", "N", OPTION_COUNT, CLI_TRIM, "most walls to list, 1 to 100; default 8"},
     {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
-     "also write the takeoff (ladder: its rungs; trim: its log) as CSV; - prints it in place of the text"},
+     "also write the takeoff, rungs or log as CSV; - prints it in place of the text"},
     {"from", "N", OPTION_FROM, CLI_LADDER, "lowest rating, 1 to 100; default: what the cheapest wall meets"},
     {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
     {"have", "LINE|FILE", OPTION_HAVE, CLI_LADDER,

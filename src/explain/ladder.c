@@ -159,14 +159,32 @@ static void keep_edit(ladder_answer *out, const ladder_edit *e) {
   out->edit_count = kept < LADDER_MAX_EDITS ? kept + 1 : LADDER_MAX_EDITS;
 }
 
+static bool has_finding(const compat_report *r, const char *rule) {
+  for (int i = 0; i < r->count; i++)
+    if (text_equal(r->finding[i].rule, rule)) return true;
+  return false;
+}
+
+/* It can be built, and is unusual in nothing that the given wall is not. */
+static bool fits(const editor *e, const wall *w) {
+  const compat_report *had = &e->out->terms.have->compat;
+  compat_report r;
+  compat_check(e->context->catalog, w, &r);
+  if (r.worst == COMPAT_ILLEGAL) return false;
+  if (e->context->brief->build == BUILD_ANY) return true;
+  for (int i = 0; i < r.count; i++)
+    if (r.finding[i].level != COMPAT_FINE && !has_finding(had, r.finding[i].rule)) return false;
+  return true;
+}
+
+static bool may_use(const editor *e, bool ordinary) {
+  return ordinary || e->context->brief->build == BUILD_ANY;
+}
+
 static void try_edit(editor *e, const wall *w) {
   const ladder_terms *t = &e->out->terms;
   const judge_context *x = e->context;
-  compat_report fits;
-  compat_level most = x->brief->build == BUILD_ANY ? COMPAT_UNUSUAL : COMPAT_FINE;
-  compat_check(x->catalog, w, &fits);
-  if (fits.worst > most && fits.worst > t->have->compat.worst) return;
-  if (fits.worst == COMPAT_ILLEGAL) return;
+  if (!fits(e, w)) return;
   ladder_edit d = {.reaches = rungs_reached(x, t->climbs, w)};
   if (d.reaches <= t->have_reaches) return;
   d.wall = judge_at(e->arena, x, t->climbs, d.reaches, w);
@@ -181,6 +199,7 @@ static void edit_layers(editor *e, int side) {
   const catalog *c = e->context->catalog;
   const wall *have = &e->out->terms.have->wall;
   for (size_t i = 0; i < c->layer_count; i++) {
+    if (!may_use(e, c->layers[i].ordinary)) continue;
     const face *f = &have->side[side];
     wall w = *have;
     face *g = &w.side[side];
@@ -208,12 +227,13 @@ static void edit_mount(editor *e, int side) {
     }
 }
 
-/* The frame in both rows' or one row's fill, where there are two. */
+/* Of two rows both, or either. */
 static void edit_fill(editor *e) {
   const catalog *c = e->context->catalog;
   const wall *have = &e->out->terms.have->wall;
   bool two = wall_is_double(c, have);
   for (size_t i = 0; i < c->fill_count; i++) {
+    if (!may_use(e, c->fills[i].ordinary)) continue;
     wall w = *have;
     w.fill[0] = (int)i;
     try_edit(e, &w);
@@ -235,7 +255,8 @@ static void edit_frame(editor *e) {
   }
   for (size_t i = 0; i < c->frame_count; i++) {
     wall w = *have;
-    if (c->frames[i].rows != c->frames[have->frame].rows) continue; /* more than one change */
+    bool as_many = c->frames[i].rows == c->frames[have->frame].rows; /* else it is more than one change */
+    if (!as_many || !may_use(e, c->frames[i].ordinary)) continue;
     w.frame = (int)i;
     try_edit(e, &w);
   }

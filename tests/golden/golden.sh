@@ -1,8 +1,8 @@
 # Shared by check_golden.sh and rewrite.sh: the briefs that have golden answers, and how an answer is made.
 # Sets $briefs; `answer BRIEF EXTENSION` writes the answer to stdout.
-briefs="heavy-fastening one-hour thin-wall tall-wall impossible specified-party-wall"
+briefs="heavy-fastening one-hour thin-wall tall-wall impossible specified-party-wall ladder-one-hour"
 unset SEPTUM_DATA
-# A specified wall is trimmed under the brief whose name follows; a brief is picked for.
+# A specified wall is trimmed under the brief whose name follows, a ladder climbed under it; a brief is picked for.
 answer() {
   status=0
   file=$source/docs/examples/$1.json
@@ -12,6 +12,7 @@ answer() {
     specified-*)
       "$build/bin/septum" trim $json "$source/docs/examples/${1#specified-}.json" --spec "$file" --count 3 2>/dev/null ||
         status=$? ;;
+    ladder-*) "$build/bin/septum" ladder $json "$source/docs/examples/${1#ladder-}.json" 2>/dev/null || status=$? ;;
     *) "$build/bin/septum" pick $json "$file" 2>/dev/null || status=$? ;;
   esac
   # No wall fits the impossible brief; every other has an answer.

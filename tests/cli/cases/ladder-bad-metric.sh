@@ -1,0 +1,1 @@
+$SEPTUM ladder "$EXAMPLES/party-wall.json" --metric STX

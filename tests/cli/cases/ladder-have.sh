@@ -1,0 +1,1 @@
+$SEPTUM ladder "$EXAMPLES/corridor.json" --have "$EXAMPLES/corridor-wall.json" --to 60
