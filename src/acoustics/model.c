@@ -4,7 +4,9 @@
 
 #define PI 3.14159265358979323846
 
-double model_subband_hz(int band, int i) { return bands_hz[band] * exp2((i - 1) / 9.0); }
+double model_subband_hz(int band, int i) {
+  return bands_hz[band] * exp2((i - 1) / 9.0);
+}
 
 double model_sin2(const struct acoustics *k, double f_hz, int i, double *weight) {
   /* Gauss-Legendre on (0, 1), four points (Abramowitz and Stegun, table 25.4). */
@@ -18,7 +20,8 @@ double model_sin2(const struct acoustics *k, double f_hz, int i, double *weight)
   return node[i] * top;
 }
 
-double complex model_leaf_z(const struct acoustics *k, const model_leaf *l, double f_hz, double s2) {
+double complex model_leaf_z(const struct acoustics *k, const model_leaf *l, double f_hz,
+                            double s2) {
   double omega = 2 * PI * f_hz;
   double ratio = f_hz / l->critical_hz;
   double complex stiff = ratio * ratio * s2 * s2 * (1 + I * l->loss);
@@ -26,7 +29,8 @@ double complex model_leaf_z(const struct acoustics *k, const model_leaf *l, doub
   return I * omega * l->mass_kg_m2 * (1 - stiff) / z0;
 }
 
-void model_fibre(const struct acoustics *k, double f_hz, double complex *z_rel, double complex *k_rel) {
+void model_fibre(const struct acoustics *k, double f_hz, double complex *z_rel,
+                 double complex *k_rel) {
   /* Y. Miki, J. Acoust. Soc. Jpn (E) 11 (1990), as recalled in docs/methods/sound.md. */
   double q = f_hz / k->fill_resistivity;
   double z = pow(q, -0.632), n = pow(q, -0.618);
@@ -34,8 +38,10 @@ void model_fibre(const struct acoustics *k, double f_hz, double complex *z_rel, 
   *k_rel = 1 + 0.109 * n - I * 0.160 * n;
 }
 
-/* One layer of air or fibre as a transfer matrix; pressures over z0 = rho c / cos of the air outside. */
-static model_matrix gap_matrix(const struct acoustics *k, const model_gap *g, double f_hz, double s2) {
+/* One layer of air or fibre as a transfer matrix; pressures over z0 = rho c / cos of the air
+ * outside. */
+static model_matrix gap_matrix(const struct acoustics *k, const model_gap *g, double f_hz,
+                               double s2) {
   double k0 = 2 * PI * f_hz / k->sound_speed;
   double complex z_rel = 1, k_rel = 1 - I * k->empty_loss * pow(500 / f_hz, k->empty_loss_fall);
   if (g->filled) model_fibre(k, f_hz, &z_rel, &k_rel);
@@ -69,7 +75,8 @@ double model_stud_static(const struct acoustics *k, double web_m, double thickne
 }
 
 double model_stud_c500(const struct acoustics *k, double web_m, double thickness_m) {
-  return model_stud_static(k, web_m, thickness_m) * pow(k->stud_static_hz / 500, k->compliance_fall);
+  return model_stud_static(k, web_m, thickness_m) *
+         pow(k->stud_static_hz / 500, k->compliance_fall);
 }
 
 double model_compliance(const struct acoustics *k, double c500_m2_n, double f_hz) {
@@ -146,7 +153,8 @@ double model_bridge_tau(const struct acoustics *k, const model_wall *w, double f
   double above = 8 * f_hz * l1->loss * l2->loss / (PI * sqrt(l1->critical_hz * l2->critical_hz));
   double radiation = 1 / (below / 2 + above);
   double f0 = model_resonance_hz(k, w) / f_hz;
-  double tau = 64 * rho * rho * c * c * c * radiation / ((g * g + reach * reach) * w->line_m * omega * omega);
+  double tau = 64 * rho * rho * c * c * c * radiation /
+               ((g * g + reach * reach) * w->line_m * omega * omega);
   return tau * pow(10, k->bridge_db / 10) / (1 + f0 * f0 * f0 * f0);
 }
 
@@ -160,8 +168,8 @@ model_leaf model_tied(const model_leaf *x, const model_leaf *y) {
   return l;
 }
 
-/* The chain in which leaves that studs tie move as one; its air path is added to that of the whole chain. False when
- * nothing is tied. */
+/* The chain in which leaves that studs tie move as one; its air path is added to that of the whole
+ * chain. False when nothing is tied. */
 static bool tied_chain(const model_wall *w, model_wall *out) {
   bool any = false;
   *out = *w;
@@ -179,7 +187,8 @@ static bool tied_chain(const model_wall *w, model_wall *out) {
   return any && out->leaves > 1;
 }
 
-static double all_paths(const struct acoustics *k, const model_wall *w, double f_hz, double *bridge) {
+static double all_paths(const struct acoustics *k, const model_wall *w, double f_hz,
+                        double *bridge) {
   double air = model_air_tau(k, w, f_hz);
   model_wall tied;
   if (w->leaves > 2 && tied_chain(w, &tied)) air += model_air_tau(k, &tied, f_hz);
@@ -187,7 +196,9 @@ static double all_paths(const struct acoustics *k, const model_wall *w, double f
   return air;
 }
 
-static double decibel(double tau) { return -10 * log10(tau); }
+static double decibel(double tau) {
+  return -10 * log10(tau);
+}
 
 void model_paths(const model_wall *w, const struct acoustics *k, double air_db[BANDS],
                  double bridge_db[BANDS]) {

@@ -4,14 +4,15 @@
 
 #include "base/units.h"
 
-/* A leaf's loss never counts for more: constrained layers reach about this (docs/methods/sound.md). */
+/* A leaf's loss never counts for more: constrained layers reach about this (docs/methods/sound.md).
+ */
 #define LOSS_MOST 0.3
-/* Below this share of its cavity's depth a fill is a part fill (National Building Code of Canada 2020, table
- * 9.10.3.1.-A: "at least 90 %"). */
+/* Below this share of its cavity's depth a fill is a part fill (National Building Code of Canada
+ * 2020, table 9.10.3.1.-A: "at least 90 %"). */
 #define FULL_SHARE 0.9
 /* Fitted boards: gypsum of 12.7 and 15.9 mm. */
-#define FITTED_THIN_M 0.0126
-#define FITTED_THICK_M 0.0160
+#define FITTED_THIN_M       0.0126
+#define FITTED_THICK_M      0.0160
 #define REFERENCE_SPACING_M (16 * UNITS_M_PER_IN) /* of channel_compliance */
 
 static const char *const outside_words[OUTSIDE_COUNT] = {
@@ -40,7 +41,8 @@ static void stack_add(stack *s, const catalog *c, const face *f) {
   for (int i = 0; i < f->count; i++) s->item[s->count++] = &c->layers[f->layer[i]];
 }
 
-/* Damped boards lend their loss by their share of the stiffness; a damping layer damps the boards it touches. */
+/* Damped boards lend their loss by their share of the stiffness; a damping layer damps the boards
+ * it touches. */
 static double stack_loss(const struct acoustics *k, const stack *s, double bending) {
   double loss = k->leaf_loss;
   for (int i = 0; i < s->count; i++) {
@@ -91,7 +93,8 @@ static void add_gap(model_cavity *v, double depth_m, bool filled) {
   v->gap[v->gaps++] = (model_gap){depth_m, filled};
 }
 
-/* One row: the batt stands in the middle of what it leaves empty, so that a wall and its mirror image are one. */
+/* One row: the batt stands in the middle of what it leaves empty, so that a wall and its mirror
+ * image are one. */
 static void add_row(const catalog *c, model_cavity *v, double depth_m, int fill_index) {
   double thick = fill_index == CATALOG_NONE ? 0 : fmin(c->fills[fill_index].thickness_m, depth_m);
   /* A nominal batt that fills the depth but for the tolerance of sizes is full. */
@@ -134,7 +137,8 @@ static void connect(const catalog *c, const struct acoustics *k, const wall *w, 
   out->fill_loss = fill_loss(k, w);
   for (int s = 0; s < 2; s++) {
     out->support_m[s] = stud_m;
-    if (w->mount[s].mount != CATALOG_NONE) out->support_m[s] = wall_spacing_m(w->mount[s].spacing_mm);
+    if (w->mount[s].mount != CATALOG_NONE)
+      out->support_m[s] = wall_spacing_m(w->mount[s].spacing_mm);
   }
   out->bridge = f->layout == FRAME_DOUBLE ? BRIDGE_NONE : BRIDGE_LINE;
   out->c500_m2_n = base;
@@ -167,7 +171,8 @@ typedef struct chain {
   model_wall *out;
 } chain;
 
-/* Closes the cavity under way with an inner leaf. `tied`: studs in that cavity are screwed to both its leaves. */
+/* Closes the cavity under way with an inner leaf. `tied`: studs in that cavity are screwed to both
+ * its leaves. */
 static void chain_leaf(chain *ch, const face *f, bool tied) {
   model_wall *o = ch->out;
   o->tied[o->leaves - 1] = tied;
@@ -175,9 +180,12 @@ static void chain_leaf(chain *ch, const face *f, bool tied) {
   o->leaves++;
 }
 
-static model_cavity *chain_cavity(chain *ch) { return &ch->out->cavity[ch->out->leaves - 1]; }
+static model_cavity *chain_cavity(chain *ch) {
+  return &ch->out->cavity[ch->out->leaves - 1];
+}
 
-/* The outer leaf with the boards under it; a sheath under a mount stands apart, as a leaf of its own. */
+/* The outer leaf with the boards under it; a sheath under a mount stands apart, as a leaf of its
+ * own. */
 static model_leaf outer_leaf(const chain *ch, const wall *w, int side) {
   stack s = {.count = 0};
   stack_add(&s, ch->catalog, &w->side[side]);
@@ -237,7 +245,9 @@ sound_family predict_family(const catalog *c, const wall *w) {
 
 /* ------------------------------------------------------- how sure it is */
 
-static unsigned bit(sound_outside reason) { return 1u << reason; }
+static unsigned bit(sound_outside reason) {
+  return 1u << reason;
+}
 
 unsigned predict_outside_face(const catalog *c, const face *f) {
   unsigned mask = face_boards(c, f) > 2 ? bit(OUTSIDE_LAYERS) : 0;
@@ -246,13 +256,16 @@ unsigned predict_outside_face(const catalog *c, const face *f) {
     if (l->loss_factor > 0) mask |= bit(OUTSIDE_DAMPED);
     if (l->material == LAYER_LIMP) mask |= bit(OUTSIDE_LIMP);
     if (l->membrane) continue;
-    bool fitted = l->material == LAYER_GYPSUM && l->thickness_m > FITTED_THIN_M && l->thickness_m < FITTED_THICK_M;
+    bool fitted = l->material == LAYER_GYPSUM && l->thickness_m > FITTED_THIN_M &&
+                  l->thickness_m < FITTED_THICK_M;
     if (!fitted) mask |= bit(OUTSIDE_BOARD);
   }
   return mask;
 }
 
-static bool near(double x, double y) { return fabs(x - y) < 1e-3; }
+static bool near(double x, double y) {
+  return fabs(x - y) < 1e-3;
+}
 
 static unsigned outside_frame(const catalog *c, const wall *w) {
   const frame *f = &c->frames[w->frame];
@@ -260,10 +273,12 @@ static unsigned outside_frame(const catalog *c, const wall *w) {
   if (f->material == FRAME_STEEL) {
     bool light = f->mil <= 18;
     if (!light && f->mil != 54) mask |= bit(OUTSIDE_GAUGE);
-    bool depth = near(f->stud_depth_m, 0.0921) || (light && (near(f->stud_depth_m, 0.0635) || near(f->stud_depth_m, 0.1524)));
+    bool depth = near(f->stud_depth_m, 0.0921) ||
+                 (light && (near(f->stud_depth_m, 0.0635) || near(f->stud_depth_m, 0.1524)));
     if (!depth) mask |= bit(OUTSIDE_DEPTH);
     if (light && wall_is_mounted(w)) mask |= bit(OUTSIDE_LIGHT_MOUNT);
-    if (f->layout == FRAME_STAGGERED || (f->layout == FRAME_DOUBLE && f->mil != 54)) mask |= bit(OUTSIDE_ROWS);
+    if (f->layout == FRAME_STAGGERED || (f->layout == FRAME_DOUBLE && f->mil != 54))
+      mask |= bit(OUTSIDE_ROWS);
   } else if (!near(f->stud_depth_m, 0.0889)) {
     mask |= bit(OUTSIDE_DEPTH);
   }
@@ -288,20 +303,24 @@ unsigned predict_outside_core(const catalog *c, const wall *w) {
   return mask;
 }
 
-void predict_sd_of(const catalog *c, sound_family family, unsigned outside, double sd[METRIC_COUNT]) {
+void predict_sd_of(const catalog *c, sound_family family, unsigned outside,
+                   double sd[METRIC_COUNT]) {
   const struct acoustics *k = c->acoustics;
   double square = k->sd[family] * k->sd[family];
   for (int i = 0; i < OUTSIDE_COUNT; i++) {
     if (outside & (1u << i)) square += k->outside_sd[i] * k->outside_sd[i];
   }
-  for (int m = 0; m < METRIC_COUNT; m++) sd[m] = sqrt(square + k->metric_extra_sd[m] * k->metric_extra_sd[m]);
+  for (int m = 0; m < METRIC_COUNT; m++)
+    sd[m] = sqrt(square + k->metric_extra_sd[m] * k->metric_extra_sd[m]);
 }
 
-int predict_sd(const catalog *c, const wall *w, double sd[METRIC_COUNT], const char *reasons[PREDICT_MAX_REASONS]) {
+int predict_sd(const catalog *c, const wall *w, double sd[METRIC_COUNT],
+               const char *reasons[PREDICT_MAX_REASONS]) {
   unsigned mask = predict_outside_core(c, w);
   int count = 0;
   for (int s = 0; s < 2; s++) {
-    mask |= predict_outside_face(c, &w->side[s]) | predict_outside_face(c, &w->sheath[s]) | predict_outside_face(c, &w->inner[s]);
+    mask |= predict_outside_face(c, &w->side[s]) | predict_outside_face(c, &w->sheath[s]) |
+            predict_outside_face(c, &w->inner[s]);
     if (trapped(w, s) || w->inner[s].count > 0) mask |= bit(OUTSIDE_TRAPPED);
   }
   predict_sd_of(c, predict_family(c, w), mask, sd);

@@ -25,15 +25,19 @@ void predict_tl(const catalog *c, const struct acoustics *k, const wall *w, doub
 void predict_model(const catalog *c, const struct acoustics *k, const wall *w, model_wall *out);
 /* One leaf in the model's numbers; an empty face is not allowed. */
 model_leaf predict_leaf(const catalog *c, const struct acoustics *k, const face *f);
-/* What the frame, spacing, fills and mounts give: everything of `out` but its leaves (two are assumed). */
+/* What the frame, spacing, fills and mounts give: everything of `out` but its leaves (two are
+ * assumed). */
 void predict_core(const catalog *c, const struct acoustics *k, const wall *w, model_wall *out);
 sound_family predict_family(const catalog *c, const wall *w);
-/* sd per metric, and the reasons for widening it (their number is returned). `reasons` may be NULL. */
+/* sd per metric, and the reasons for widening it (their number is returned). `reasons` may be NULL.
+ */
 int predict_sd(const catalog *c, const wall *w, double sd[METRIC_COUNT],
                const char *reasons[PREDICT_MAX_REASONS]);
-/* The same in parts, for the sweep: bit i of the mask is sound_outside i; a wall's mask is the union of its parts'. */
+/* The same in parts, for the sweep: bit i of the mask is sound_outside i; a wall's mask is the
+ * union of its parts'. */
 unsigned predict_outside_face(const catalog *c, const face *f);
 unsigned predict_outside_core(const catalog *c, const wall *w);
-void predict_sd_of(const catalog *c, sound_family family, unsigned outside, double sd[METRIC_COUNT]);
+void predict_sd_of(const catalog *c, sound_family family, unsigned outside,
+                   double sd[METRIC_COUNT]);
 
 #endif

@@ -9,22 +9,25 @@ const char *const sound_family_names[FAMILY_COUNT + 1] = {
     "wood",        "wood-mount",  "wood-staggered",  "wood-double",  "steel",
     "steel-heavy", "steel-mount", "steel-staggered", "steel-double", NULL};
 
-const char *const sound_metric_names[METRIC_COUNT + 1] = {"STC", "Rw", "Rw+C", "Rw+Ctr", "OITC", NULL};
+const char *const sound_metric_names[METRIC_COUNT + 1] = {"STC",    "Rw",   "Rw+C",
+                                                          "Rw+Ctr", "OITC", NULL};
 
 const char *const sound_outside_names[OUTSIDE_COUNT + 1] = {
-    "gauge",  "depth", "spacing",   "clip",        "damped",  "limp",
-    "layers", "board", "part-fill", "light-mount", "trapped", "rows",
-    NULL};
+    "gauge", "depth",     "spacing",     "clip",    "damped", "limp", "layers",
+    "board", "part-fill", "light-mount", "trapped", "rows",   NULL};
 
-#define SLOT(name) {#name, offsetof(struct acoustics, name)}
+#define SLOT(name)                                                                                 \
+  { #name, offsetof(struct acoustics, name) }
 const coefficient_slot coefficient_slots[] = {
-    SLOT(layer_share),      SLOT(leaf_loss),          SLOT(fill_loss),        SLOT(empty_loss),
-    SLOT(empty_loss_fall),  SLOT(spring_loss),        SLOT(bay_stiffness),    SLOT(fastener_compliance),
-    SLOT(low_share),        SLOT(stud_static_hz),     SLOT(compliance_fall),  SLOT(channel_compliance),
-    SLOT(channel_on_steel), SLOT(plate_compliance),   SLOT(clip_compliance),  SLOT(double_coupling),
-    SLOT(bridge_db),        SLOT(ceiling_db),         SLOT(air_density),      SLOT(sound_speed),
-    SLOT(fill_resistivity), SLOT(test_area_m2),       SLOT(limit_cos2_max),   SLOT(bay_fade_hz),
-    SLOT(screw_edge_m),     SLOT(steel_modulus_pa),   SLOT(poisson)};
+    SLOT(layer_share),      SLOT(leaf_loss),           SLOT(fill_loss),
+    SLOT(empty_loss),       SLOT(empty_loss_fall),     SLOT(spring_loss),
+    SLOT(bay_stiffness),    SLOT(fastener_compliance), SLOT(low_share),
+    SLOT(stud_static_hz),   SLOT(compliance_fall),     SLOT(channel_compliance),
+    SLOT(channel_on_steel), SLOT(plate_compliance),    SLOT(clip_compliance),
+    SLOT(double_coupling),  SLOT(bridge_db),           SLOT(ceiling_db),
+    SLOT(air_density),      SLOT(sound_speed),         SLOT(fill_resistivity),
+    SLOT(test_area_m2),     SLOT(limit_cos2_max),      SLOT(bay_fade_hz),
+    SLOT(screw_edge_m),     SLOT(steel_modulus_pa),    SLOT(poisson)};
 const size_t coefficient_slot_count = sizeof coefficient_slots / sizeof coefficient_slots[0];
 
 typedef struct coefficient_record {
@@ -34,17 +37,41 @@ typedef struct coefficient_record {
 } coefficient_record;
 
 static const field coefficient_fields[] = {
-    {.key = "id", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, id)},
-    {.key = "value", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, value)},
-    {.key = "unit", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, unit)},
-    {.key = "meaning", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, meaning)},
-    {.key = "min", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, min)},
-    {.key = "max", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, max)},
+    {.key = "id",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, id)},
+    {.key = "value",
+     .kind = FIELD_NUMBER,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, value)},
+    {.key = "unit",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, unit)},
+    {.key = "meaning",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, meaning)},
+    {.key = "min",
+     .kind = FIELD_NUMBER,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, min)},
+    {.key = "max",
+     .kind = FIELD_NUMBER,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, max)},
     {.key = "prior", .kind = FIELD_NUMBER, .offset = offsetof(coefficient_record, prior)},
     {.key = "prior_sd", .kind = FIELD_NUMBER, .offset = offsetof(coefficient_record, prior_sd)},
     {.key = "scale", .kind = FIELD_IGNORE},
-    {.key = "fitted", .kind = FIELD_BOOL, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, fitted)},
-    {.key = "source", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(coefficient_record, source)},
+    {.key = "fitted",
+     .kind = FIELD_BOOL,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, fitted)},
+    {.key = "source",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(coefficient_record, source)},
 };
 
 typedef struct spread_record {
@@ -54,20 +81,49 @@ typedef struct spread_record {
 } spread_record;
 
 static const field family_fields[] = {
-    {.key = "id", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(spread_record, id)},
-    {.key = "rows", .kind = FIELD_INTEGER, .flags = FIELD_REQUIRED, .min = 0, .max = 1e6, .offset = offsetof(spread_record, rows)},
-    {.key = "bias", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .min = -20, .max = 20, .offset = offsetof(spread_record, bias)},
+    {.key = "id",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(spread_record, id)},
+    {.key = "rows",
+     .kind = FIELD_INTEGER,
+     .flags = FIELD_REQUIRED,
+     .min = 0,
+     .max = 1e6,
+     .offset = offsetof(spread_record, rows)},
+    {.key = "bias",
+     .kind = FIELD_NUMBER,
+     .flags = FIELD_REQUIRED,
+     .min = -20,
+     .max = 20,
+     .offset = offsetof(spread_record, bias)},
     {.key = "rms", .kind = FIELD_IGNORE},
     {.key = "cross_bias", .kind = FIELD_IGNORE},
     {.key = "cross_rms", .kind = FIELD_IGNORE},
-    {.key = "sd", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED | FIELD_ABOVE_MIN, .min = 0, .max = 20, .offset = offsetof(spread_record, sd)},
+    {.key = "sd",
+     .kind = FIELD_NUMBER,
+     .flags = FIELD_REQUIRED | FIELD_ABOVE_MIN,
+     .min = 0,
+     .max = 20,
+     .offset = offsetof(spread_record, sd)},
     {.key = "source", .kind = FIELD_STRING, .offset = offsetof(spread_record, source)},
 };
 
 static const field extra_fields[] = {
-    {.key = "id", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(spread_record, id)},
-    {.key = "sd", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .min = 0, .max = 20, .offset = offsetof(spread_record, sd)},
-    {.key = "source", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(spread_record, source)},
+    {.key = "id",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(spread_record, id)},
+    {.key = "sd",
+     .kind = FIELD_NUMBER,
+     .flags = FIELD_REQUIRED,
+     .min = 0,
+     .max = 20,
+     .offset = offsetof(spread_record, sd)},
+    {.key = "source",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(spread_record, source)},
 };
 
 typedef struct acoustics_file {
@@ -77,11 +133,26 @@ typedef struct acoustics_file {
 
 static const field file_fields[] = {
     {.key = "about", .kind = FIELD_STRING, .offset = offsetof(acoustics_file, about)},
-    {.key = "source", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(acoustics_file, source)},
-    {.key = "coefficients", .kind = FIELD_VALUE, .flags = FIELD_REQUIRED, .offset = offsetof(acoustics_file, coefficients)},
-    {.key = "families", .kind = FIELD_VALUE, .flags = FIELD_REQUIRED, .offset = offsetof(acoustics_file, families)},
-    {.key = "metrics", .kind = FIELD_VALUE, .flags = FIELD_REQUIRED, .offset = offsetof(acoustics_file, metrics)},
-    {.key = "outside", .kind = FIELD_VALUE, .flags = FIELD_REQUIRED, .offset = offsetof(acoustics_file, outside)},
+    {.key = "source",
+     .kind = FIELD_STRING,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(acoustics_file, source)},
+    {.key = "coefficients",
+     .kind = FIELD_VALUE,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(acoustics_file, coefficients)},
+    {.key = "families",
+     .kind = FIELD_VALUE,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(acoustics_file, families)},
+    {.key = "metrics",
+     .kind = FIELD_VALUE,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(acoustics_file, metrics)},
+    {.key = "outside",
+     .kind = FIELD_VALUE,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(acoustics_file, outside)},
     {.key = "fit", .kind = FIELD_VALUE, .offset = offsetof(acoustics_file, fit)},
 };
 
@@ -107,7 +178,8 @@ static int slot_of(const char *id) {
   return -1;
 }
 
-static void refuse(reader *r, const json_value *v, error_code code, const char *what, const char *id) {
+static void refuse(reader *r, const json_value *v, error_code code, const char *what,
+                   const char *id) {
   diag_add(r->diags, DIAG_ERROR, code, json_place(r->arena, v), "%s, found \"%s\"", what, id);
 }
 
@@ -141,17 +213,26 @@ static void all_seen(reader *r, const json_value *list, const bool *seen, size_t
   }
 }
 
-static const char *slot_name(size_t i) { return coefficient_slots[i].id; }
-static const char *family_name(size_t i) { return sound_family_names[i]; }
-static const char *metric_name(size_t i) { return sound_metric_names[i]; }
-static const char *outside_name(size_t i) { return sound_outside_names[i]; }
+static const char *slot_name(size_t i) {
+  return coefficient_slots[i].id;
+}
+static const char *family_name(size_t i) {
+  return sound_family_names[i];
+}
+static const char *metric_name(size_t i) {
+  return sound_metric_names[i];
+}
+static const char *outside_name(size_t i) {
+  return sound_outside_names[i];
+}
 
 static void read_coefficients(reader *r, const json_value *list) {
   bool *seen = arena_array(r->arena, coefficient_slot_count, sizeof *seen);
   if (!list_of(r, list)) return;
   for (const json_value *v = list->first; v; v = v->next) {
     coefficient_record c = {.prior = NAN, .prior_sd = NAN};
-    bool sound = fields_read(r->arena, r->diags, v, coefficient_fields, ROWS(coefficient_fields), &c);
+    bool sound =
+        fields_read(r->arena, r->diags, v, coefficient_fields, ROWS(coefficient_fields), &c);
     int slot = c.id ? slot_of(c.id) : -1;
     if (!sound && slot >= 0) seen[slot] = true; /* one message is enough */
     if (!sound || !take(r, v, slot, c.id, seen)) continue;
@@ -203,7 +284,9 @@ const struct acoustics *coefficients_read(arena *a, diag_list *d, const json_val
   r.out->source = file.source;
   read_coefficients(&r, file.coefficients);
   read_families(&r, file.families);
-  read_extras(&r, file.metrics, sound_metric_names, METRIC_COUNT, metric_name, r.out->metric_extra_sd);
-  read_extras(&r, file.outside, sound_outside_names, OUTSIDE_COUNT, outside_name, r.out->outside_sd);
+  read_extras(&r, file.metrics, sound_metric_names, METRIC_COUNT, metric_name,
+              r.out->metric_extra_sd);
+  read_extras(&r, file.outside, sound_outside_names, OUTSIDE_COUNT, outside_name,
+              r.out->outside_sd);
   return d->errors == before ? r.out : NULL;
 }

@@ -1,4 +1,5 @@
-/* The coefficients of the sound model (catalogs/acoustics.json): meaning, unit and bounds in docs/methods/sound.md. */
+/* The coefficients of the sound model (catalogs/acoustics.json): meaning, unit and bounds in
+ * docs/methods/sound.md. */
 #ifndef INPUT_COEFFICIENTS_H
 #define INPUT_COEFFICIENTS_H
 
@@ -17,7 +18,8 @@ typedef enum sound_family {
   FAMILY_COUNT
 } sound_family;
 
-/* "wood", "wood-mount", "wood-staggered", "wood-double", "steel", "steel-heavy", "steel-mount"... */
+/* "wood", "wood-mount", "wood-staggered", "wood-double", "steel", "steel-heavy", "steel-mount"...
+ */
 extern const char *const sound_family_names[FAMILY_COUNT + 1]; /* NULL-ended */
 
 typedef enum sound_metric {
@@ -34,18 +36,18 @@ extern const char *const sound_metric_names[METRIC_COUNT + 1]; /* NULL-ended */
 
 /* Why a wall lies outside the range of the fit; each widens its sd by an amount of its own. */
 typedef enum sound_outside {
-  OUTSIDE_GAUGE,      /* steel between 18 and 54 mil, or heavier */
-  OUTSIDE_DEPTH,      /* stud depth that no fitted wall of the material has */
-  OUTSIDE_SPACING,    /* studs other than 406 or 610 mm */
-  OUTSIDE_CLIP,       /* isolation clips */
-  OUTSIDE_DAMPED,     /* damped boards or layers */
-  OUTSIDE_LIMP,       /* limp mass */
-  OUTSIDE_LAYERS,     /* three boards or more a side */
-  OUTSIDE_BOARD,      /* boards other than gypsum of 12.7 and 15.9 mm */
-  OUTSIDE_PART_FILL,  /* fill below 90 % of the depth */
-  OUTSIDE_LIGHT_MOUNT,/* a mount on light steel */
-  OUTSIDE_TRAPPED,    /* a board under a mount or on an inner face */
-  OUTSIDE_ROWS,       /* staggered steel, double light steel, other gaps */
+  OUTSIDE_GAUGE,       /* steel between 18 and 54 mil, or heavier */
+  OUTSIDE_DEPTH,       /* stud depth that no fitted wall of the material has */
+  OUTSIDE_SPACING,     /* studs other than 406 or 610 mm */
+  OUTSIDE_CLIP,        /* isolation clips */
+  OUTSIDE_DAMPED,      /* damped boards or layers */
+  OUTSIDE_LIMP,        /* limp mass */
+  OUTSIDE_LAYERS,      /* three boards or more a side */
+  OUTSIDE_BOARD,       /* boards other than gypsum of 12.7 and 15.9 mm */
+  OUTSIDE_PART_FILL,   /* fill below 90 % of the depth */
+  OUTSIDE_LIGHT_MOUNT, /* a mount on light steel */
+  OUTSIDE_TRAPPED,     /* a board under a mount or on an inner face */
+  OUTSIDE_ROWS,        /* staggered steel, double light steel, other gaps */
   OUTSIDE_COUNT
 } sound_outside;
 
@@ -54,24 +56,25 @@ extern const char *const sound_outside_names[OUTSIDE_COUNT + 1];
 
 struct acoustics {
   const char *source;
-  double layer_share;        /* lambda: share of a further layer's mass that counts */
-  double leaf_loss;          /* eta: installed loss factor of a leaf */
-  double fill_loss;          /* added to it where fibre fills the cavity */
-  double empty_loss;         /* delta: loss of an empty cavity at 500 Hz */
-  double empty_loss_fall;    /* it falls as f to the power of minus this */
-  double spring_loss;        /* loss factor of the low-frequency spring */
-  double bay_stiffness;      /* kappa: 97 simply supported, 500 clamped */
-  double low_share;          /* rho: low-frequency over bridging share of a connection's compliance */
-  double stud_static_hz;     /* f_s: where a steel stud has its static beam compliance */
-  double compliance_fall;    /* p: compliance falls as f^-p */
-  double channel_compliance; /* C_rc at 500 Hz, studs at 0.406 m, m2/N */
-  double channel_on_steel;   /* gamma */
-  double fastener_compliance; /* of screws and line contact of board and stud, wood or steel, at 500 Hz, m2/N */
-  double plate_compliance;   /* C_st of staggered studs on one plate at 500 Hz, m2/N */
-  double clip_compliance;    /* over channel_compliance: no data */
-  double double_coupling;    /* k_d, N/m3 */
-  double bridge_db;          /* kb */
-  double ceiling_db;         /* laboratory flanking */
+  double layer_share;     /* lambda: share of a further layer's mass that counts */
+  double leaf_loss;       /* eta: installed loss factor of a leaf */
+  double fill_loss;       /* added to it where fibre fills the cavity */
+  double empty_loss;      /* delta: loss of an empty cavity at 500 Hz */
+  double empty_loss_fall; /* it falls as f to the power of minus this */
+  double spring_loss;     /* loss factor of the low-frequency spring */
+  double bay_stiffness;   /* kappa: 97 simply supported, 500 clamped */
+  double low_share;       /* rho: low-frequency over bridging share of a connection's compliance */
+  double stud_static_hz;  /* f_s: where a steel stud has its static beam compliance */
+  double compliance_fall; /* p: compliance falls as f^-p */
+  double channel_compliance;  /* C_rc at 500 Hz, studs at 0.406 m, m2/N */
+  double channel_on_steel;    /* gamma */
+  double fastener_compliance; /* of screws and line contact of board and stud, wood or steel, at 500
+                                 Hz, m2/N */
+  double plate_compliance;    /* C_st of staggered studs on one plate at 500 Hz, m2/N */
+  double clip_compliance;     /* over channel_compliance: no data */
+  double double_coupling;     /* k_d, N/m3 */
+  double bridge_db;           /* kb */
+  double ceiling_db;          /* laboratory flanking */
   double air_density, sound_speed, fill_resistivity, test_area_m2, limit_cos2_max, bay_fade_hz;
   double screw_edge_m, steel_modulus_pa, poisson;
   double sd[FAMILY_COUNT];   /* of rating - (exact - 0.5), cross-validated and shrunk */
@@ -89,7 +92,8 @@ typedef struct coefficient_slot {
 extern const coefficient_slot coefficient_slots[];
 extern const size_t coefficient_slot_count;
 
-/* NULL and diagnostics when anything is missing, unknown, twice there, or out of its stated bounds. */
+/* NULL and diagnostics when anything is missing, unknown, twice there, or out of its stated bounds.
+ */
 const struct acoustics *coefficients_read(arena *a, diag_list *d, const json_value *root);
 
 #endif

@@ -7,8 +7,8 @@
 /* sd of a family: inverse gamma with so many rows' worth of the pooled value beforehand; never
  * below what laboratories agree to (u(Rw) 1.2 dB, ISO 12999-1). */
 #define PRIOR_ROWS 6.0
-#define PRIOR_SD 1.4
-#define LEAST_SD 1.2
+#define PRIOR_SD   1.4
+#define LEAST_SD   1.2
 enum { MOST_NUMBERS = 200 };
 
 /* A linear congruential generator (Knuth's MMIX constants): the same folds everywhere. */
@@ -49,7 +49,8 @@ static void leave_out(const fit *f, const double *x, const int *fold, int part, 
 void cross_folds(const fit *f, const double *x, unsigned seed, double *error) {
   int fold[DATA_MAX_ROWS] = {0}, next = 0;
   uint64_t state = seed;
-  for (int family = 0; family < FAMILY_COUNT; family++) family_folds(f->data, family, &state, &next, fold);
+  for (int family = 0; family < FAMILY_COUNT; family++)
+    family_folds(f->data, family, &state, &next, fold);
   for (int part = 0; part < CROSS_FOLDS; part++) leave_out(f, x, fold, part, error);
 }
 

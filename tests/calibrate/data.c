@@ -53,9 +53,13 @@ static const char *text_at(const csv *f, const char *column) {
   return "";
 }
 
-static double number_at(const csv *f, const char *column) { return strtod(text_at(f, column), NULL); }
+static double number_at(const csv *f, const char *column) {
+  return strtod(text_at(f, column), NULL);
+}
 
-static int whole_at(const csv *f, const char *column) { return (int)(number_at(f, column) + 0.5); }
+static int whole_at(const csv *f, const char *column) {
+  return (int)(number_at(f, column) + 0.5);
+}
 
 /* The table speaks of 400 and 600 mm for 16 and 24 in. */
 static int spacing_at(const csv *f, const char *column) {
@@ -66,8 +70,11 @@ static int spacing_at(const csv *f, const char *column) {
 
 static const struct {
   const char *written, *id;
-} boards[] = {{"15.9X", "typex-16"}, {"12.7X", "typex-13"}, {"12.7R", "gyp-13"},
-              {"15.9R", "gyp-16"},   {"12.7OSB", "osb-13"}};
+} boards[] = {{"15.9X", "typex-16"},
+              {"12.7X", "typex-13"},
+              {"12.7R", "gyp-13"},
+              {"15.9R", "gyp-16"},
+              {"12.7OSB", "osb-13"}};
 
 static void add_board(const csv *f, const char *written, face *out) {
   int times = 1;
@@ -98,11 +105,16 @@ static int read_frame(const csv *f) {
   int depth = whole_at(f, "stud_depth_mm");
   bool heavy = number_at(f, "steel_thickness_mm") > 1;
   const char *id;
-  if (text_equal(family, "wood-staggered")) id = "wood-89-stag-140";
-  else if (text_equal(family, "wood-double")) id = "wood-89-double";
-  else if (text_equal(family, "steel-double")) id = heavy ? "steel-92-54-double" : "steel-92-18-double";
-  else if (text_starts(family, "wood")) id = text_format(f->arena, "wood-%d", depth);
-  else id = text_format(f->arena, "steel-%d-%s", depth, heavy ? "54" : "18");
+  if (text_equal(family, "wood-staggered"))
+    id = "wood-89-stag-140";
+  else if (text_equal(family, "wood-double"))
+    id = "wood-89-double";
+  else if (text_equal(family, "steel-double"))
+    id = heavy ? "steel-92-54-double" : "steel-92-18-double";
+  else if (text_starts(family, "wood"))
+    id = text_format(f->arena, "wood-%d", depth);
+  else
+    id = text_format(f->arena, "steel-%d-%s", depth, heavy ? "54" : "18");
   int index = catalog_frame(f->catalog, id);
   if (index == CATALOG_NONE) fault(f, "expected a frame of the catalog", id);
   return index;
@@ -114,7 +126,8 @@ static void read_fill(const csv *f, wall *w) {
   if (mm == 0) return;
   bool both = rows == 2 && mm > 150;
   if (both) mm /= 2;
-  const char *kind = text_equal(text_at(f, "fill"), "stone") || mm == 51 || mm == 76 ? "stone" : "glass";
+  const char *kind =
+      text_equal(text_at(f, "fill"), "stone") || mm == 51 || mm == 76 ? "stone" : "glass";
   int index = catalog_fill(f->catalog, text_format(f->arena, "%s-%d", kind, mm == 51 ? 50 : mm));
   if (index == CATALOG_NONE) fault(f, "expected a fill of the catalog", text_at(f, "fill_mm"));
   w->fill[0] = index;

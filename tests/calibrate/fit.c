@@ -52,8 +52,10 @@ static double shift_by_sum(const double *above, double soft) {
   for (int i = 0; i < 50; i++) {
     double middle = 0.5 * (low + high), sum = 0;
     for (int b = 0; b < RATING_FIT_BANDS; b++) sum += hinge(middle - above[b], soft);
-    if (sum <= RATING_SUM_LIMIT_DB) low = middle;
-    else high = middle;
+    if (sum <= RATING_SUM_LIMIT_DB)
+      low = middle;
+    else
+      high = middle;
   }
   return low;
 }
@@ -61,7 +63,8 @@ static double shift_by_sum(const double *above, double soft) {
 /* STC on the unrounded curve; `soft` above 0 rounds its corners. */
 static double stc_of(const double tl_db[BANDS], double soft) {
   double above[RATING_FIT_BANDS];
-  for (int b = 0; b < RATING_FIT_BANDS; b++) above[b] = tl_db[RATING_STC_FIRST + b] - rating_stc_contour[b];
+  for (int b = 0; b < RATING_FIT_BANDS; b++)
+    above[b] = tl_db[RATING_STC_FIRST + b] - rating_stc_contour[b];
   double shift = shift_by_sum(above, soft), sum = 1, least = shift;
   for (int b = 0; b < RATING_FIT_BANDS; b++) {
     double limit = above[b] + RATING_STC_LIMIT_DB;
@@ -71,7 +74,9 @@ static double stc_of(const double tl_db[BANDS], double soft) {
   return soft > 0 ? shift - soft * log(sum) : least;
 }
 
-double fit_stc(const double tl_db[BANDS]) { return stc_of(tl_db, 0); }
+double fit_stc(const double tl_db[BANDS]) {
+  return stc_of(tl_db, 0);
+}
 
 void fit_octaves(const double tl_db[BANDS], double octave_db[DATA_OCTAVES]) {
   for (int o = 0; o < DATA_OCTAVES; o++) {
@@ -94,7 +99,9 @@ static double robust(double r) {
   return copysign(sqrt(loss), r);
 }
 
-bool fit_uses(const fit *f, int i) { return !f->use || f->use[i]; }
+bool fit_uses(const fit *f, int i) {
+  return !f->use || f->use[i];
+}
 
 static size_t residual_count(const fit *f) {
   size_t n = (size_t)f->parameters;
@@ -153,13 +160,16 @@ static int solver_slopes(const gsl_vector *at, void *params, gsl_matrix *out) {
 static double solve_stage(fit *f, double *x) {
   size_t n = residual_count(f), p = (size_t)f->parameters;
   gsl_multifit_nlinear_parameters settings = gsl_multifit_nlinear_default_parameters();
-  gsl_multifit_nlinear_fdf system = {.f = solver_residuals, .df = solver_slopes, .n = n, .p = p, .params = f};
-  gsl_multifit_nlinear_workspace *w = gsl_multifit_nlinear_alloc(gsl_multifit_nlinear_trust, &settings, n, p);
+  gsl_multifit_nlinear_fdf system = {
+      .f = solver_residuals, .df = solver_slopes, .n = n, .p = p, .params = f};
+  gsl_multifit_nlinear_workspace *w =
+      gsl_multifit_nlinear_alloc(gsl_multifit_nlinear_trust, &settings, n, p);
   gsl_vector_view start = gsl_vector_view_array(x, p);
   int info;
   double sum;
   gsl_multifit_nlinear_init(&start.vector, &system, w);
-  gsl_multifit_nlinear_driver(MAX_ITERATIONS, STEP_TOLERANCE, STEP_TOLERANCE, 0, NULL, NULL, &info, w);
+  gsl_multifit_nlinear_driver(MAX_ITERATIONS, STEP_TOLERANCE, STEP_TOLERANCE, 0, NULL, NULL, &info,
+                              w);
   gsl_vector *r = gsl_multifit_nlinear_residual(w), *best = gsl_multifit_nlinear_position(w);
   sum = 0;
   for (size_t i = 0; i < n; i++) sum += gsl_vector_get(r, i) * gsl_vector_get(r, i);
@@ -178,7 +188,9 @@ static double solve_from(fit *f, double *x, int stage) {
   return cost;
 }
 
-double fit_refine(fit *f, double *x) { return solve_from(f, x, NEAR_STAGE); }
+double fit_refine(fit *f, double *x) {
+  return solve_from(f, x, NEAR_STAGE);
+}
 
 double fit_solve(fit *f, double *x) {
   double other[FIT_MAX];
@@ -205,8 +217,14 @@ typedef struct record {
 
 static const field record_fields[] = {
     {.key = "id", .kind = FIELD_STRING, .flags = FIELD_REQUIRED, .offset = offsetof(record, id)},
-    {.key = "fitted", .kind = FIELD_BOOL, .flags = FIELD_REQUIRED, .offset = offsetof(record, fitted)},
-    {.key = "scale", .kind = FIELD_CHOICE, .choices = scale_names, .offset = offsetof(record, scale)},
+    {.key = "fitted",
+     .kind = FIELD_BOOL,
+     .flags = FIELD_REQUIRED,
+     .offset = offsetof(record, fitted)},
+    {.key = "scale",
+     .kind = FIELD_CHOICE,
+     .choices = scale_names,
+     .offset = offsetof(record, scale)},
     {.key = "min", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .offset = offsetof(record, min)},
     {.key = "max", .kind = FIELD_NUMBER, .flags = FIELD_REQUIRED, .offset = offsetof(record, max)},
     {.key = "prior", .kind = FIELD_NUMBER, .offset = offsetof(record, prior)},
@@ -221,7 +239,8 @@ void fit_read_parameters(fit *f, diag_list *d, arena *a, const json_value *root)
   const json_value *list = json_get(root, "coefficients");
   for (const json_value *v = list ? list->first : NULL; v; v = v->next) {
     record r = {0};
-    bool sound = fields_read(a, d, v, record_fields, sizeof record_fields / sizeof record_fields[0], &r);
+    bool sound =
+        fields_read(a, d, v, record_fields, sizeof record_fields / sizeof record_fields[0], &r);
     if (!sound || !r.fitted || f->parameters == FIT_MAX) continue;
     for (size_t i = 0; i < coefficient_slot_count; i++) {
       if (!text_equal(coefficient_slots[i].id, r.id)) continue;

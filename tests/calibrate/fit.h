@@ -1,4 +1,5 @@
-/* Least squares for the coefficients of the sound model: what is fitted, the residuals, the solver. */
+/* Least squares for the coefficients of the sound model: what is fitted, the residuals, the solver.
+ */
 #ifndef CALIBRATE_FIT_H
 #define CALIBRATE_FIT_H
 
@@ -12,9 +13,9 @@ typedef enum fit_scale { SCALE_LINEAR, SCALE_LN, SCALE_LG } fit_scale;
 typedef struct parameter {
   const char *id;
   size_t offset;
-  fit_scale scale;       /* prior_sd is in units of the value, of its ln, of its lg */
+  fit_scale scale; /* prior_sd is in units of the value, of its ln, of its lg */
   double prior, prior_sd;
-  double min, max;       /* hard bounds of the value */
+  double min, max; /* hard bounds of the value */
 } parameter;
 
 typedef struct fit {
@@ -31,7 +32,8 @@ typedef struct fit {
 /* The parameters as catalogs/acoustics.json states them. */
 void fit_read_parameters(fit *f, diag_list *d, arena *a, const json_value *root);
 
-/* Coefficients from the solver's numbers: prior + x prior_sd on the parameter's scale, within bounds. */
+/* Coefficients from the solver's numbers: prior + x prior_sd on the parameter's scale, within
+ * bounds. */
 void fit_apply(const fit *f, const double *x, struct acoustics *out);
 /* STC neither rounded nor stepped. */
 double fit_stc(const double tl_db[BANDS]);

@@ -1,5 +1,6 @@
-/* Fits the coefficients of the sound model to the published walls of tests/data, prints how well, and
- * rewrites catalogs/acoustics.json and docs/methods/sound_fit.{md,svg} of the source folder given.
+/* Fits the coefficients of the sound model to the published walls of tests/data, prints how well,
+ * and rewrites catalogs/acoustics.json and docs/methods/sound_fit.{md,svg} of the source folder
+ * given.
  * `--look` writes nothing. Running it again gives the same bytes. */
 #include <gsl/gsl_errno.h>
 #include <math.h>

@@ -33,9 +33,12 @@ static void put_string(text *out, const char *s) {
 }
 
 static void put_scalar(text *out, const json_value *v) {
-  if (v->kind == JSON_STRING) put_string(out, v->string);
-  else if (v->kind == JSON_BOOL) text_put(out, v->boolean ? "true" : "false");
-  else put_value(out, v->number);
+  if (v->kind == JSON_STRING)
+    put_string(out, v->string);
+  else if (v->kind == JSON_BOOL)
+    text_put(out, v->boolean ? "true" : "false");
+  else
+    put_value(out, v->number);
 }
 
 static void put_key(text *out, const char *key, bool first) {
@@ -53,10 +56,14 @@ static void put_coefficient(text *out, const json_value *record, const fit *f, c
   text_put(out, "    {");
   for (const json_value *v = record->first; v; v = v->next) {
     bool own_line = text_equal(v->key, "meaning") || text_equal(v->key, "source");
-    if (own_line) text_putf(out, ",\n     \"%s\": ", v->key);
-    else put_key(out, v->key, v == record->first);
-    if (text_equal(v->key, "value")) put_value(out, value);
-    else put_scalar(out, v);
+    if (own_line)
+      text_putf(out, ",\n     \"%s\": ", v->key);
+    else
+      put_key(out, v->key, v == record->first);
+    if (text_equal(v->key, "value"))
+      put_value(out, value);
+    else
+      put_scalar(out, v);
   }
   text_put(out, "}");
 }
@@ -73,7 +80,8 @@ static void put_coefficients(text *out, const json_value *list, const fit *f, co
 static void put_families(text *out, const fit *f, const outcome *o) {
   text_put(out, "  \"families\": [\n");
   for (int i = 0; i < FAMILY_COUNT; i++) {
-    error_summary t = cross_summary(f->data, o->trained, i), c = cross_summary(f->data, o->folds, i);
+    error_summary t = cross_summary(f->data, o->trained, i),
+                  c = cross_summary(f->data, o->folds, i);
     text_putf(out, "    {\"id\": \"%s\", \"rows\": %d, \"bias\": ", sound_family_names[i], c.rows);
     text_number(out, t.bias, 2);
     text_put(out, ", \"rms\": ");
@@ -119,8 +127,8 @@ static void put_rows(text *out, const fit *f, const outcome *o) {
   for (int i = 0; i < d->count; i++) {
     const sample *s = &d->row[i];
     if (s->curve) continue;
-    text_putf(out, "%s\n      {\"id\": \"%s\", \"family\": \"%s\", \"rating\": ", first ? "" : ",", s->id,
-              sound_family_names[s->family]);
+    text_putf(out, "%s\n      {\"id\": \"%s\", \"family\": \"%s\", \"rating\": ", first ? "" : ",",
+              s->id, sound_family_names[s->family]);
     text_number(out, s->rating, 0);
     text_put(out, ", \"error\": ");
     text_fixed(out, o->trained[i], 2);

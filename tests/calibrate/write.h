@@ -1,4 +1,5 @@
-/* What the calibration leaves behind: catalogs/acoustics.json and the plot. Same input, same bytes. */
+/* What the calibration leaves behind: catalogs/acoustics.json and the plot. Same input, same bytes.
+ */
 #ifndef CALIBRATE_WRITE_H
 #define CALIBRATE_WRITE_H
 

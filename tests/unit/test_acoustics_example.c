@@ -27,9 +27,13 @@ static void setup(void) {
   ck_assert(cat && doc);
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
-static void must_hold(const text *line) { ck_assert_msg(strstr(doc, line->data), "sound.md lacks: %s", line->data); }
+static void must_hold(const text *line) {
+  ck_assert_msg(strstr(doc, line->data), "sound.md lacks: %s", line->data);
+}
 
 static void put(text *t, const char *before, double value, int decimals, const char *after) {
   text_put(t, before);

@@ -1,4 +1,5 @@
-/* The sound model against published numbers, closed forms and limits. Formulas: docs/methods/sound.md. */
+/* The sound model against published numbers, closed forms and limits. Formulas:
+ * docs/methods/sound.md. */
 #include "acoustics/model.h"
 
 #include <check.h>
@@ -11,7 +12,7 @@
 #define PI 3.14159265358979323846
 
 /* Printed to so many digits by the source. */
-#define AS_PRINTED_DB 1e-8
+#define AS_PRINTED_DB    1e-8
 #define AS_PRINTED_RATIO 6e-5
 /* The table is rounded to two or three digits. */
 #define TABLE_SHARE 0.05
@@ -33,9 +34,13 @@ static void setup(void) {
   k = *c->acoustics;
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
-static model_leaf limp(double mass) { return (model_leaf){mass, MODEL_LIMP_HZ, 0, 0}; }
+static model_leaf limp(double mass) {
+  return (model_leaf){mass, MODEL_LIMP_HZ, 0, 0};
+}
 
 static model_leaf board(double mass, double critical_hz) {
   double c2 = k.sound_speed * k.sound_speed, ratio = c2 / (2 * PI * critical_hz);
@@ -44,17 +49,23 @@ static model_leaf board(double mass, double critical_hz) {
 
 /* Two leaves with nothing but a cavity between them. */
 static model_wall pair(model_leaf a, model_leaf b, double depth_m, bool filled) {
-  model_wall w = {.leaves = 2, .leaf = {a, b}, .support_m = {0.4064, 0.4064}, .bridge = BRIDGE_NONE, .line_m = 0.4064};
+  model_wall w = {.leaves = 2,
+                  .leaf = {a, b},
+                  .support_m = {0.4064, 0.4064},
+                  .bridge = BRIDGE_NONE,
+                  .line_m = 0.4064};
   w.cavity[0] = (model_cavity){1, {{depth_m, filled}}};
   return w;
 }
 
-static double decibel(double tau) { return -10 * log10(tau); }
+static double decibel(double tau) {
+  return -10 * log10(tau);
+}
 
 /* ---- a single leaf ---- */
 
-/* Oblique mass law with density, thickness, angle, speed of sound, density of air and R: reference data of a general
- * acoustics library, as collected from public sources. */
+/* Oblique mass law with density, thickness, angle, speed of sound, density of air and R: reference
+ * data of a general acoustics library, as collected from public sources. */
 static const struct {
   const char *name;
   double f_hz, rho_leaf, h_m, degrees, c, rho, r_db;
@@ -69,7 +80,8 @@ START_TEST(single_leaf_mass_law) {
   k.air_density = mass_law[_i].rho;
   double complex z = model_leaf_z(&k, &leaf, mass_law[_i].f_hz, sine * sine);
   /* The limp limit leaves (f/1e6)^2 of the mass away. */
-  ck_assert_msg(fabs(20 * log10(cabs(1 + z / 2)) - mass_law[_i].r_db) < 5 * AS_PRINTED_DB, "%s", mass_law[_i].name);
+  ck_assert_msg(fabs(20 * log10(cabs(1 + z / 2)) - mass_law[_i].r_db) < 5 * AS_PRINTED_DB, "%s",
+                mass_law[_i].name);
 }
 END_TEST
 
@@ -120,13 +132,14 @@ END_TEST
 
 /* ---- steel studs ---- */
 
-/* Static compliance in 1e-6 m2/N by web depth and design thickness, calculated by the same formula elsewhere (E 203 GPa,
- * screws 16 mm from the web); 70 mm and 0.6 mm is 5.1, where Vigran fitted 5.0 to a Norwegian test. */
+/* Static compliance in 1e-6 m2/N by web depth and design thickness, calculated by the same formula
+ * elsewhere (E 203 GPa, screws 16 mm from the web); 70 mm and 0.6 mm is 5.1, where Vigran
+ * fitted 5.0 to a Norwegian test. */
 static const struct {
   const char *name;
   double web_m, thickness_m, compliance;
 } studs[] = {
-    {"64 mm 18 mil", 0.0635, 0.000478, 9.4},  {"92 mm 18 mil", 0.0921, 0.000478, 13.0},
+    {"64 mm 18 mil", 0.0635, 0.000478, 9.4},   {"92 mm 18 mil", 0.0921, 0.000478, 13.0},
     {"152 mm 18 mil", 0.1524, 0.000478, 21.0}, {"92 mm 33 mil", 0.0921, 0.000879, 2.1},
     {"92 mm 43 mil", 0.0921, 0.001146, 0.94},  {"92 mm 54 mil", 0.0921, 0.001438, 0.48},
     {"64 mm 54 mil", 0.0635, 0.001438, 0.34},  {"70 mm 0.6 mm", 0.070, 0.0006, 5.1},
@@ -134,7 +147,8 @@ static const struct {
 
 START_TEST(stud_compliance) {
   double found = model_stud_static(&k, studs[_i].web_m, studs[_i].thickness_m) * 1e6;
-  ck_assert_msg(fabs(found / studs[_i].compliance - 1) < TABLE_SHARE, "%s: %.3f", studs[_i].name, found);
+  ck_assert_msg(fabs(found / studs[_i].compliance - 1) < TABLE_SHARE, "%s: %.3f", studs[_i].name,
+                found);
 }
 END_TEST
 
@@ -147,7 +161,8 @@ END_TEST
 
 /* ---- double leaves ---- */
 
-/* Two boards of 11.2 kg/m2, 92.1 mm apart: 84 Hz (60 sqrt((m1 + m2)/(d m1 m2)); Vigran, Building Acoustics). */
+/* Two boards of 11.2 kg/m2, 92.1 mm apart: 84 Hz (60 sqrt((m1 + m2)/(d m1 m2)); Vigran, Building
+ * Acoustics). */
 START_TEST(mass_air_mass_resonance) {
   model_wall w = pair(limp(11.2), limp(11.2), 0.0921, false);
   ck_assert_double_eq_tol(model_resonance_hz(&k, &w), 84, 1); /* 60 is rounded up from 59.8 */
@@ -156,9 +171,11 @@ END_TEST
 
 /* Leaves close together move as one of their summed mass. */
 START_TEST(no_cavity_is_one_leaf) {
-  model_wall two = pair(limp(8), limp(12), 1e-7, false), heavy = pair(limp(20 - 1e-9), limp(1e-9), 1e-7, false);
+  model_wall two = pair(limp(8), limp(12), 1e-7, false),
+             heavy = pair(limp(20 - 1e-9), limp(1e-9), 1e-7, false);
   for (int band = 0; band < BANDS; band++) {
-    double x = decibel(model_air_tau(&k, &two, bands_hz[band])), y = decibel(model_air_tau(&k, &heavy, bands_hz[band]));
+    double x = decibel(model_air_tau(&k, &two, bands_hz[band])),
+           y = decibel(model_air_tau(&k, &heavy, bands_hz[band]));
     ck_assert_double_eq_tol(x, y, 0.01);
   }
 }
@@ -169,14 +186,15 @@ START_TEST(stiff_rows_are_one_leaf) {
   model_wall two = pair(limp(8), limp(12), 0.1, false), one = pair(limp(8), limp(12), 1e-7, false);
   k.double_coupling = 1e12;
   for (int band = 0; bands_hz[band] <= 125; band++) {
-    double x = decibel(model_air_tau(&k, &two, bands_hz[band])), y = decibel(model_air_tau(&k, &one, bands_hz[band]));
+    double x = decibel(model_air_tau(&k, &two, bands_hz[band])),
+           y = decibel(model_air_tau(&k, &one, bands_hz[band]));
     ck_assert_double_eq_tol(x, y, 0.3); /* what is left is the air's own travel time */
   }
 }
 END_TEST
 
-/* Sharp's law between resonance and 55/d: R1 + R2 + 20 lg(2 k d), here for one plane wave at normal incidence, where
- * R = 20 lg(w m/(2 rho c)) (Long, Architectural Acoustics, 9.48). */
+/* Sharp's law between resonance and 55/d: R1 + R2 + 20 lg(2 k d), here for one plane wave at normal
+ * incidence, where R = 20 lg(w m/(2 rho c)) (Long, Architectural Acoustics, 9.48). */
 START_TEST(unbridged_double_leaf_law) {
   model_wall w = pair(limp(22), limp(22), 0.1, false);
   double f = 300, omega = 2 * PI * f;
@@ -184,7 +202,8 @@ START_TEST(unbridged_double_leaf_law) {
   k.test_area_m2 = 1e-9, k.limit_cos2_max = 1; /* normal incidence only */
   double one = 20 * log10(omega * 22 / (2 * k.air_density * k.sound_speed));
   double law = 2 * one + 20 * log10(2 * omega / k.sound_speed * 0.1);
-  ck_assert_double_eq_tol(decibel(model_air_tau(&k, &w, f)), law, 1.0); /* the law is an asymptote */
+  ck_assert_double_eq_tol(decibel(model_air_tau(&k, &w, f)), law,
+                          1.0); /* the law is an asymptote */
 }
 END_TEST
 
@@ -216,9 +235,9 @@ END_TEST
 
 /* ---- bridges ---- */
 
-/* A rigid line: Sharp's form R = R_M + 10 lg(b f_cl) - 23, R_M the field-incidence mass law 20 lg(f m) - 47 (Vigran 8.26),
- * and Davy's as Vigran prints it (8.27), nearly identical; the form of Bies and Hansen, which the model takes, lets
- * through twice as much. */
+/* A rigid line: Sharp's form R = R_M + 10 lg(b f_cl) - 23, R_M the field-incidence mass law 20 lg(f
+ * m) - 47 (Vigran 8.26), and Davy's as Vigran prints it (8.27), nearly identical; the form of Bies
+ * and Hansen, which the model takes, lets through twice as much. */
 START_TEST(rigid_lines_of_sharp_and_davy) {
   static const double critical_hz = 2390, mass = 11.2, spacing_m = 0.610;
   model_wall w = pair(board(mass, critical_hz), board(mass, critical_hz), 10, true);
@@ -278,7 +297,8 @@ START_TEST(angles_are_weighted_to_one) {
       sum += weight;
       mean += weight * s2;
     }
-    double cos2 = fmin(k.limit_cos2_max, k.sound_speed / (2 * PI * bands_hz[band] * sqrt(k.test_area_m2)));
+    double cos2 =
+        fmin(k.limit_cos2_max, k.sound_speed / (2 * PI * bands_hz[band] * sqrt(k.test_area_m2)));
     ck_assert_double_eq_tol(sum, 1, SAME);
     ck_assert_double_eq_tol(mean, (1 - cos2) / 2, SAME);
   }

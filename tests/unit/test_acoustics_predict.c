@@ -1,4 +1,5 @@
-/* Predictions against published walls and against what every practitioner knows; sense beyond the data. */
+/* Predictions against published walls and against what every practitioner knows; sense beyond the
+ * data. */
 #include "acoustics/predict.h"
 
 #include <check.h>
@@ -12,12 +13,13 @@
 #include "wall/compat.h"
 #include "wall/line.h"
 
-/* What the fit reached on the rows of tests/data, with a little room: the table itself is smoothed and whole points. */
-#define ROWS_RMS 1.3
+/* What the fit reached on the rows of tests/data, with a little room: the table itself is smoothed
+ * and whole points. */
+#define ROWS_RMS     1.3
 #define ROWS_LARGEST 4.0
 /* Error on walls that were kept out of the fit, 10 folds. */
 #define CROSS_RMS_MOST 1.3
-#define FAMILY_BIAS 0.7 /* for families of so many rows: */
+#define FAMILY_BIAS    0.7 /* for families of so many rows: */
 enum { FAMILY_ROWS = 8 };
 /* Exact ratings come in steps of 0.1, stored errors in hundredths. */
 #define STEP_ERROR 0.11
@@ -36,13 +38,16 @@ static void setup(void) {
   ck_assert_ptr_nonnull(cat);
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static wall parsed(const char *line) {
   diag_list d;
   wall w;
   diag_init(&d, memory);
-  ck_assert_msg(line_parse(memory, &d, cat, line, &w), "%s: %s", line, d.count ? d.items[0].message : "");
+  ck_assert_msg(line_parse(memory, &d, cat, line, &w), "%s: %s", line,
+                d.count ? d.items[0].message : "");
   return w;
 }
 
@@ -52,7 +57,9 @@ static prediction predicted(const wall *w) {
   return p;
 }
 
-static double exact(const wall *w) { return predicted(w).exact[METRIC_STC]; }
+static double exact(const wall *w) {
+  return predicted(w).exact[METRIC_STC];
+}
 
 static double exact_of(const char *line) {
   wall w = parsed(line);
@@ -136,11 +143,14 @@ START_TEST(cross_validated_targets) {
 }
 END_TEST
 
-static double phi(double z) { return 0.5 * erfc(-z / sqrt(2.0)); }
+static double phi(double z) {
+  return 0.5 * erfc(-z / sqrt(2.0));
+}
 
-/* Stated probabilities against outcomes of walls that the fit had not seen: for targets up to 3 above and below the
- * prediction, the share of walls that reach them, by decile of the stated probability. A share of n outcomes may be off
- * by three of its own standard errors; outcomes of one wall are not independent, so n is counted in walls. */
+/* Stated probabilities against outcomes of walls that the fit had not seen: for targets up to 3
+ * above and below the prediction, the share of walls that reach them, by decile of the stated
+ * probability. A share of n outcomes may be off by three of its own standard errors; outcomes of
+ * one wall are not independent, so n is counted in walls. */
 START_TEST(probabilities_are_calibrated) {
   enum { DECILES = 10 };
   double stated[DECILES] = {0}, reached[DECILES] = {0};
@@ -163,22 +173,25 @@ START_TEST(probabilities_are_calibrated) {
   for (int i = 0; i < DECILES; i++) {
     double p = stated[i] / count[i], share = reached[i] / count[i];
     double allowed = 3 * sqrt(p * (1 - p) / walls[i]);
-    ck_assert_msg(fabs(share - p) < allowed, "decile %d: stated %.2f, reached %.2f of %d walls", i, p, share, walls[i]);
+    ck_assert_msg(fabs(share - p) < allowed, "decile %d: stated %.2f, reached %.2f of %d walls", i,
+                  p, share, walls[i]);
   }
 }
 END_TEST
 
 /* ---- directions ---- */
 
-/* The second wall is better than the first by `least` to `most` points. Sources: NRC Construction Technology Update 1;
- * a trade paper on steel gauges; a consultant's figure for trapped boards; else common practice, no source. */
+/* The second wall is better than the first by `least` to `most` points. Sources: NRC Construction
+ * Technology Update 1; a trade paper on steel gauges; a consultant's figure for trapped boards;
+ * else common practice, no source. */
 static const struct {
   const char *name, *from, *to;
   double least, most;
 } steps[] = {
     {"steel studs at 24 in beat 16 in", "typex-16 | steel-92-18@406, glass-89 | typex-16",
      "typex-16 | steel-92-18@610, glass-89 | typex-16", 0.3, 5},
-    /* 4 to 5 are published; the model, fitted at 18 and 54 mil only, takes 10, hence the sd of that range. */
+    /* 4 to 5 are published; the model, fitted at 18 and 54 mil only, takes 10, hence the sd of that
+       range. */
     {"25 gauge beats 20 gauge", "typex-16 | steel-92-33@406, glass-89 | typex-16",
      "typex-16 | steel-92-18@406, glass-89 | typex-16", 1, 12},
     {"20 gauge beats 16 gauge", "typex-16 | steel-92-54@406, glass-89 | typex-16",
@@ -205,7 +218,8 @@ static const struct {
      "typex-16 + mlv-5 | steel-92-18@406, glass-89 | typex-16", 0.3, 4},
     {"damping layer", "2*typex-16 | steel-92-18@406, glass-89 | typex-16",
      "typex-16 + damp-layer + typex-16 | steel-92-18@406, glass-89 | typex-16", 0, 8},
-    {"board trapped under a channel", "typex-16 | rc@610 | on typex-16 | wood-89@406, glass-89 | typex-16",
+    {"board trapped under a channel",
+     "typex-16 | rc@610 | on typex-16 | wood-89@406, glass-89 | typex-16",
      "typex-16 | rc@610 | wood-89@406, glass-89 | typex-16", 3, 25},
     {"two rows beat staggered studs", "typex-16 | wood-89-stag-140@406, glass-89 | typex-16",
      "typex-16 | wood-89-double@406, glass-89, glass-89 | typex-16", 3, 15},
@@ -213,14 +227,16 @@ static const struct {
 
 START_TEST(directions) {
   double step = exact_of(steps[_i].to) - exact_of(steps[_i].from);
-  ck_assert_msg(step > steps[_i].least - NOTHING && step < steps[_i].most + NOTHING, "%s: %.1f, expected %.1f to %.1f",
-                steps[_i].name, step, steps[_i].least, steps[_i].most);
+  ck_assert_msg(step > steps[_i].least - NOTHING && step < steps[_i].most + NOTHING,
+                "%s: %.1f, expected %.1f to %.1f", steps[_i].name, step, steps[_i].least,
+                steps[_i].most);
 }
 END_TEST
 
 /* "Screw short-circuit removes the gain" of a channel: common practice. */
 START_TEST(short_circuit_takes_most_of_a_channel_away) {
-  wall with = parsed("typex-16 | rc@610 | wood-89@406, glass-89 | typex-16"), shorted = wall_short_circuited(&with);
+  wall with = parsed("typex-16 | rc@610 | wood-89@406, glass-89 | typex-16"),
+       shorted = wall_short_circuited(&with);
   double bare = exact_of("typex-16 | wood-89@406, glass-89 | typex-16");
   ck_assert_double_gt(exact(&with) - exact(&shorted), 0.7 * (exact(&with) - bare));
 }
@@ -247,11 +263,13 @@ static const struct {
 START_TEST(outside_is_said_and_widens) {
   wall w = parsed(ranges[_i].line);
   prediction p = predicted(&w);
-  ck_assert_msg(p.outside == ranges[_i].outside, "%s: %d reasons, first %s", ranges[_i].line, p.outside,
-                p.outside ? p.outside_reason[0] : "none");
+  ck_assert_msg(p.outside == ranges[_i].outside, "%s: %d reasons, first %s", ranges[_i].line,
+                p.outside, p.outside ? p.outside_reason[0] : "none");
   double family = cat->acoustics->sd[p.family];
-  if (p.outside == 0) ck_assert_double_eq_tol(p.sd[METRIC_STC], family, 1e-12);
-  else ck_assert_double_gt(p.sd[METRIC_STC], family + 0.3);
+  if (p.outside == 0)
+    ck_assert_double_eq_tol(p.sd[METRIC_STC], family, 1e-12);
+  else
+    ck_assert_double_gt(p.sd[METRIC_STC], family + 0.3);
   for (int m = 0; m < METRIC_COUNT; m++) ck_assert_double_ge(p.sd[m], p.sd[METRIC_STC]);
   for (int i = 0; i < p.outside; i++) ck_assert_ptr_nonnull(p.outside_reason[i]);
 }

@@ -1,5 +1,6 @@
-/* Sense beyond the fitted walls: monotone where physics is, smooth everywhere. Thousands of seeded legal walls of the
- * shipped catalog against their neighbours. The exceptions are those of docs/methods/sound.md, "Sense beyond the data". */
+/* Sense beyond the fitted walls: monotone where physics is, smooth everywhere. Thousands of seeded
+ * legal walls of the shipped catalog against their neighbours. The exceptions are those of
+ * docs/methods/sound.md, "Sense beyond the data". */
 #include <check.h>
 #include <math.h>
 #include <stdlib.h>
@@ -11,7 +12,8 @@
 
 /* What a step that physics calls an improvement may cost, points. */
 #define LOSS_MOST 0.3
-/* What one per cent of any continuous input may change, points; 1.5 is the most between neighbours. */
+/* What one per cent of any continuous input may change, points; 1.5 is the most between neighbours.
+ */
 #define JUMP_MOST 1.0
 enum { TRIES = 60000, PAIRS = 1200, SMOOTH_WALLS = 400 };
 
@@ -29,7 +31,9 @@ static void setup(void) {
   state = 20;
 }
 
-static void teardown(void) { arena_free(memory); }
+static void teardown(void) {
+  arena_free(memory);
+}
 
 static int roll(size_t below) {
   state = state * 1664525u + 1013904223u;
@@ -83,9 +87,9 @@ static wall random_wall(void) {
 
 /* ---- steps for the better: false when the wall has no such neighbour ---- */
 
-/* Thin rows, and bays so short that the boards are stiff, have their resonance near 125 Hz, and more so with fill, whose
- * air is softer: there the 8 dB rule of STC decides. */
-#define THIN_M 0.06
+/* Thin rows, and bays so short that the boards are stiff, have their resonance near 125 Hz, and
+ * more so with fill, whose air is softer: there the 8 dB rule of STC decides. */
+#define THIN_M   0.06
 #define CLOSE_MM 400
 
 static bool fill_of(wall *w, bool thin) {
@@ -98,8 +102,12 @@ static bool fill_of(wall *w, bool thin) {
   return w->fill[0] != CATALOG_NONE;
 }
 
-static bool more_fill(wall *w) { return fill_of(w, false); }
-static bool more_fill_thin(wall *w) { return fill_of(w, true); }
+static bool more_fill(wall *w) {
+  return fill_of(w, false);
+}
+static bool more_fill_thin(wall *w) {
+  return fill_of(w, true);
+}
 
 static bool wider_studs(wall *w) {
   w->spacing_mm = w->spacing_mm == 305 ? 406 : 610;
@@ -118,7 +126,8 @@ static bool lighter_gauge(wall *w) {
   int best = CATALOG_NONE;
   for (int i = 0; i < (int)cat->frame_count; i++) {
     const frame *g = &cat->frames[i];
-    if (g->material != FRAME_STEEL || f->material != FRAME_STEEL || g->layout != f->layout) continue;
+    if (g->material != FRAME_STEEL || f->material != FRAME_STEEL || g->layout != f->layout)
+      continue;
     if (fabs(g->stud_depth_m - f->stud_depth_m) > 1e-6 || g->mil >= f->mil) continue;
     if (best == CATALOG_NONE || g->mil > cat->frames[best].mil) best = i;
   }
@@ -169,7 +178,9 @@ static bool deeper_studs(wall *w) {
   if (w->fill[0] == CATALOG_NONE || f->layout != FRAME_SINGLE) return false;
   for (int i = 0; i < (int)cat->frame_count; i++) {
     const frame *g = &cat->frames[i];
-    if (g->material != f->material || g->layout != f->layout || g->mil != f->mil || g->frt != f->frt) continue;
+    if (g->material != f->material || g->layout != f->layout || g->mil != f->mil ||
+        g->frt != f->frt)
+      continue;
     if (g->stud_depth_m <= f->stud_depth_m) continue;
     if (best == CATALOG_NONE || g->stud_depth_m < cat->frames[best].stud_depth_m) best = i;
   }
@@ -185,21 +196,26 @@ static bool wider_gap(wall *w) {
   return true;
 }
 
-/* `lost`: the share of pairs that may lose more than LOSS_MOST all the same, and by how much at most, with the reason. */
+/* `lost`: the share of pairs that may lose more than LOSS_MOST all the same, and by how much at
+ * most, with the reason. */
 static const struct {
   const char *name;
   bool (*step)(wall *);
   double lost, worst;
   const char *reason;
 } steps[] = {
-    {"more fill", more_fill, 0.005, 1.0, "resonance moves into 125 Hz, light boards on 64 mm studs"},
-    {"more fill, studs of 41 mm, studs or channels at 305 mm", more_fill_thin, 0.3, 5.5, "resonance moves into 125 Hz"},
+    {"more fill", more_fill, 0.005, 1.0,
+     "resonance moves into 125 Hz, light boards on 64 mm studs"},
+    {"more fill, studs of 41 mm, studs or channels at 305 mm", more_fill_thin, 0.3, 5.5,
+     "resonance moves into 125 Hz"},
     {"wider studs", wider_studs, 0.005, 1.5, "the same, studs of 41 mm"},
     {"wider channel", wider_channel, 0, 0, ""},
-    {"lighter gauge", lighter_gauge, 0.02, 1.2, "interference in the bridged path between stiff and soft"},
+    {"lighter gauge", lighter_gauge, 0.02, 1.2,
+     "interference in the bridged path between stiff and soft"},
     {"another layer", another_layer, 0.01, 2.5, "resonance moves into 125 Hz"},
     {"limp layer", limp_layer, 0.02, 2.0, "resonance moves into 125 Hz"},
-    {"heavier board of the same thickness", heavier_board, 0.005, 0.6, "resonance moves into 125 Hz"},
+    {"heavier board of the same thickness", heavier_board, 0.005, 0.6,
+     "resonance moves into 125 Hz"},
     {"channel", channel, 0.005, 0.8, "on studs of 41 mm"},
     {"clips for channel", clips_for_channel, 0, 0, ""},
     {"deeper filled cavity", deeper_studs, 0.03, 1.6, "a deeper stud is softer: as lighter gauge"},
@@ -223,8 +239,9 @@ START_TEST(steps_for_the_better) {
   }
   ck_assert_msg(pairs >= 100, "%s: %d pairs", steps[_i].name, pairs);
   double most = fmax(steps[_i].worst, LOSS_MOST) + 1e-9;
-  ck_assert_msg(lost <= steps[_i].lost * pairs && worst <= most, "%s: %d of %d pairs, worst %.1f, from %s to %s",
-                steps[_i].name, lost, pairs, worst, line, then);
+  ck_assert_msg(lost <= steps[_i].lost * pairs && worst <= most,
+                "%s: %d of %d pairs, worst %.1f, from %s to %s", steps[_i].name, lost, pairs, worst,
+                line, then);
 }
 END_TEST
 
@@ -238,14 +255,30 @@ static double stc_of(const model_wall *m) {
 
 static void scale(model_wall *m, int what, double by) {
   switch (what) {
-  case 0: m->leaf[0].mass_kg_m2 *= by; break;
-  case 1: m->leaf[0].critical_hz *= by; break;
-  case 2: m->leaf[0].bending_n_m *= by; break;
-  case 3: m->leaf[0].loss *= by; break;
-  case 4: m->cavity[0].gap[0].depth_m *= by; break;
-  case 5: m->c500_m2_n *= by; break;
-  case 6: m->line_m *= by; break;
-  default: m->support_m[0] *= by; break;
+  case 0:
+    m->leaf[0].mass_kg_m2 *= by;
+    break;
+  case 1:
+    m->leaf[0].critical_hz *= by;
+    break;
+  case 2:
+    m->leaf[0].bending_n_m *= by;
+    break;
+  case 3:
+    m->leaf[0].loss *= by;
+    break;
+  case 4:
+    m->cavity[0].gap[0].depth_m *= by;
+    break;
+  case 5:
+    m->c500_m2_n *= by;
+    break;
+  case 6:
+    m->line_m *= by;
+    break;
+  default:
+    m->support_m[0] *= by;
+    break;
   }
 }
 
@@ -257,7 +290,8 @@ START_TEST(one_per_cent_changes_little) {
     predict_model(cat, cat->acoustics, &w, &m);
     n = m;
     scale(&n, _i, 1.01);
-    ck_assert_msg(fabs(stc_of(&n) - stc_of(&m)) < JUMP_MOST, "input %d: %s", _i, line_print(memory, cat, &w));
+    ck_assert_msg(fabs(stc_of(&n) - stc_of(&m)) < JUMP_MOST, "input %d: %s", _i,
+                  line_print(memory, cat, &w));
   }
 }
 END_TEST
