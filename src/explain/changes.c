@@ -32,8 +32,7 @@ static bool all_same(const face *f) {
 
 /* "second layer", "second and third layers": more of the same board. */
 static const char *more_layers(arena *a, const face *from, const face *to) {
-  static const char *const ordinals[] = {"first",  "second", "third",
-                                         "fourth", "fifth",  "sixth"};
+  static const char *const ordinals[] = {"first", "second", "third", "fourth", "fifth", "sixth"};
   const char *first = ordinals[from->count], *last = ordinals[to->count - 1];
   if (to->count == from->count + 1) return text_format(a, "%s layer", first);
   return text_format(a, "%s to %s layers", first, last);

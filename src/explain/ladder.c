@@ -255,7 +255,8 @@ static void edit_frame(editor *e) {
   }
   for (size_t i = 0; i < c->frame_count; i++) {
     wall w = *have;
-    bool as_many = c->frames[i].rows == c->frames[have->frame].rows; /* else it is more than one change */
+    bool as_many =
+        c->frames[i].rows == c->frames[have->frame].rows; /* else it is more than one change */
     if (!as_many || !may_use(e, c->frames[i].ordinary)) continue;
     w.frame = (int)i;
     try_edit(e, &w);

@@ -1,5 +1,5 @@
-/* What each rating costs: the cheapest wall of every rung under one brief, what changes from rung to
- * rung, and what it takes from a given wall to each of them (docs/design/ladder.md). */
+/* What each rating costs: the cheapest wall of every rung under one brief, what changes from rung
+ * to rung, and what it takes from a given wall to each of them (docs/design/ladder.md). */
 #ifndef EXPLAIN_LADDER_H
 #define EXPLAIN_LADDER_H
 
@@ -12,23 +12,23 @@
 enum { LADDER_FLANKING_FROM = 60, LADDER_MAX_EDITS = 16 };
 
 typedef struct ladder_terms {
-  int climbs;            /* index of the brief's target whose value is varied */
-  int from, to;          /* values asked for, 0 = no end on that side */
+  int climbs;             /* index of the brief's target whose value is varied */
+  int from, to;           /* values asked for, 0 = no end on that side */
   const assessment *have; /* the given wall; NULL without. Then only rungs above its rating stand */
-  int have_reaches;      /* what it meets, 0 = it meets no value */
+  int have_reaches;       /* what it meets, 0 = it meets no value */
 } ladder_terms;
 
 typedef struct ladder_rung {
-  int rating;      /* the highest value asked for that is met at this cost */
-  int serves_from; /* the lowest that costs as much: values between are not worth a wall of their
-                      own */
-  int reaches;     /* what the wall meets; above `rating` only on the last rung of a range */
+  int rating;       /* the highest value asked for that is met at this cost */
+  int serves_from;  /* the lowest that costs as much: values between are not worth a wall of their
+                       own */
+  int reaches;      /* what the wall meets; above `rating` only on the last rung of a range */
   assessment *wall; /* judged with the target at `rating` */
-  long long cost_cents; /* floor value included */
-  long long step_cents; /* beyond the rung below; 0 on the first */
-  int points;           /* above the rung below; 0 on the first */
-  bool worth;           /* on the lower convex hull of cost over rating */
-  change_list changes;  /* from the rung below */
+  long long cost_cents;  /* floor value included */
+  long long step_cents;  /* beyond the rung below; 0 on the first */
+  int points;            /* above the rung below; 0 on the first */
+  bool worth;            /* on the lower convex hull of cost over rating */
+  change_list changes;   /* from the rung below */
   long long extra_cents; /* beyond the given wall; may be below 0 */
   change_list from_have; /* sides as in the given wall */
 } ladder_rung;
@@ -52,9 +52,9 @@ typedef struct ladder_answer {
   long long walls, rated;
 } ladder_answer;
 
-/* The brief whose target climbs: that of `metric` where the brief has one, else its first one turned
- * to `metric`, else STC as a brief would ask for it. METRIC_COUNT: whatever the first has. Returns
- * its index in b->targets. */
+/* The brief whose target climbs: that of `metric` where the brief has one, else its first one
+ * turned to `metric`, else STC as a brief would ask for it. METRIC_COUNT: whatever the first has.
+ * Returns its index in b->targets. */
 int ladder_target(brief *b, sound_metric metric);
 /* Marks the points of the lower convex hull of cost over rating; both rise. The first and the last
  * are on it. */

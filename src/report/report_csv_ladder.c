@@ -37,13 +37,25 @@ static double area(const row *w) {
 
 static void put_head(row *w, const ladder_answer *l) {
   bool us = w->r->units == UNITS_US;
-  const char *const heads[] = {"rating", "metric", "serves_from", "worth_taking",
-                               us ? "cost_per_ft2" : "cost_per_m2", "cost_total",
-                               "floor_value_total", "cost_with_floor_total", "currency", "step_points", "step_total",
+  const char *const heads[] = {"rating",
+                               "metric",
+                               "serves_from",
+                               "worth_taking",
+                               us ? "cost_per_ft2" : "cost_per_m2",
+                               "cost_total",
+                               "floor_value_total",
+                               "cost_with_floor_total",
+                               "currency",
+                               "step_points",
+                               "step_total",
                                us ? "step_per_point_per_ft2" : "step_per_point_per_m2",
                                us ? "thickness_in" : "thickness_mm",
-                               us ? "mass_psf" : "mass_kg_m2", "evidence", "predicted_exact",
-                               "predicted_sd", "line", "changes"};
+                               us ? "mass_psf" : "mass_kg_m2",
+                               "evidence",
+                               "predicted_exact",
+                               "predicted_sd",
+                               "line",
+                               "changes"};
   const char *const more[] = {us ? "extra_per_ft2" : "extra_per_m2", "extra_total",
                               "changes_from_have"};
   for (size_t i = 0; i < sizeof heads / sizeof heads[0]; i++) put(w, heads[i]);

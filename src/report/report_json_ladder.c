@@ -3,13 +3,7 @@
 #include "report/view_ladder.h"
 #include "septum.h"
 
-enum {
-  DB_DIGITS = 1,
-  MM_DIGITS = 1,
-  MASS_DIGITS = 2,
-  MONEY_DIGITS = 4,
-  SHARE_DIGITS = 3
-};
+enum { DB_DIGITS = 1, MM_DIGITS = 1, MASS_DIGITS = 2, MONEY_DIGITS = 4, SHARE_DIGITS = 3 };
 
 static void put_value(markup_json *j, const char *key, int value) {
   if (value > 0)
@@ -154,16 +148,14 @@ static void put_target(markup_json *j, const report *r, const ladder_answer *l) 
   markup_json_string(j, "words", view_ladder_aim(r, l));
   markup_json_array(j, "others", false);
   for (int i = 0; i < r->brief->target_count; i++)
-    if (i != l->terms.climbs)
-      markup_json_string(j, NULL, view_target(r, &r->brief->targets[i]));
+    if (i != l->terms.climbs) markup_json_string(j, NULL, view_target(r, &r->brief->targets[i]));
   markup_json_close(j);
   markup_json_close(j);
 }
 
 static void put_why(markup_json *j, const report *r, const explanation *e) {
   markup_json_array(j, "conflicts", false);
-  for (int i = 0; e && i < e->conflict_count; i++)
-    report_json_rules(j, r, NULL, e->conflicts[i]);
+  for (int i = 0; e && i < e->conflict_count; i++) report_json_rules(j, r, NULL, e->conflicts[i]);
   markup_json_close(j);
   report_json_others(j, r, "nearest", e ? e->nearest : NULL, e ? e->nearest_count : 0, true);
 }

@@ -93,8 +93,7 @@ static void put_edits(const report *r, const ladder_answer *l, text *out) {
     page_label(out, "");
     page_words(out, PAGE_LABEL + 2,
                text_format(r->arena, "%s %d (+%d): %s: %s", view_ladder_metric(r, l), e->reaches,
-                           e->reaches - l->terms.have_reaches,
-                           changes_words(r->arena, &e->change),
+                           e->reaches - l->terms.have_reaches, changes_words(r->arena, &e->change),
                            money_words(r, e->wall, e->extra_cents)));
     text_pad(out, PAGE_LABEL + 2);
     page_words(out, PAGE_LABEL + 2, e->wall->line);
@@ -154,7 +153,8 @@ static void put_rung(const report *r, const ladder_answer *l, const ladder_rung 
   if (g->points > 0) page_line(out, "", changes_from(r, g));
   if (l->terms.have)
     page_line(out, "",
-              text_format(r->arena, "From your wall: %s. %s.", changes_words(r->arena, &g->from_have),
+              text_format(r->arena, "From your wall: %s. %s.",
+                          changes_words(r->arena, &g->from_have),
                           money_words(r, g->wall, g->extra_cents)));
   if (g->serves_from < g->rating && g->serves_from > RUNGS_LEAST)
     page_line(out, "", text_format(r->arena, "Also the cheapest for %s.", served(r, g)));
@@ -173,9 +173,9 @@ static void put_reach(const report *r, const ladder_answer *l, text *out) {
   page_line(out, "Ladder", text_format(r->arena, "%s.", view_ladder_aim(r, l)));
   for (int i = 0; i < r->brief->target_count; i++)
     if (i != t->climbs)
-      page_line(out, "",
-                text_format(r->arena, "Every rung keeps %s.",
-                            view_target(r, &r->brief->targets[i])));
+      page_line(
+          out, "",
+          text_format(r->arena, "Every rung keeps %s.", view_target(r, &r->brief->targets[i])));
   if (l->highest == 0)
     page_line(out, "Answer", "No wall keeps the other rules of this brief, whatever its rating.");
   else

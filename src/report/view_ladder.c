@@ -35,8 +35,7 @@ const char *view_ladder_aim(const report *r, const ladder_answer *l) {
   return out.data;
 }
 
-view_predicted view_ladder_predicted(const report *r, const ladder_answer *l,
-                                     const assessment *x) {
+view_predicted view_ladder_predicted(const report *r, const ladder_answer *l, const assessment *x) {
   sound_metric m = view_ladder_target(r, l)->metric;
   const prediction *p = &x->predicted;
   return (view_predicted){rating_of(&p->ratings, m), p->exact[m], p->sd[m], view_published(x, m)};

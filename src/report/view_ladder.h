@@ -16,8 +16,7 @@ typedef struct view_predicted {
   double exact, sd;
   bool published; /* the rung stands on a published rating instead */
 } view_predicted;
-view_predicted view_ladder_predicted(const report *r, const ladder_answer *l,
-                                     const assessment *x);
+view_predicted view_ladder_predicted(const report *r, const ladder_answer *l, const assessment *x);
 /* Money of the whole wall per m2 of it. */
 double view_ladder_per_m2(const assessment *x, long long cents);
 /* The rung is so high that it speaks of the wall alone. */

@@ -62,8 +62,8 @@ int rungs_reached(const judge_context *x, int climbs, const wall *w) {
 
 /* ---- what is kept ---- */
 
-/* The rungs below are no dearer than those above: what does not come first at the highest value that
- * it can reach does so nowhere. */
+/* The rungs below are no dearer than those above: what does not come first at the highest value
+ * that it can reach does so nowhere. */
 static bool wants(const climber *k, const candidate *c, int value) {
   const rung_best *r = &k->out->at[value];
   return !r->found || candidate_compare(k->space, c, &r->wall) < 0;

@@ -21,8 +21,8 @@ typedef struct rungs {
                                    rest of the brief */
 } rungs;
 
-/* The highest whole value of the brief's target `climbs` at which the sound of `w` keeps all targets;
- * 0 when it keeps them at no value. The value that stands in the brief decides nothing. */
+/* The highest whole value of the brief's target `climbs` at which the sound of `w` keeps all
+ * targets; 0 when it keeps them at no value. The value that stands in the brief decides nothing. */
 int rungs_reached(const judge_context *x, int climbs, const wall *w);
 /* All rungs of the target `climbs`; its value in the brief decides nothing. Needs prices in the
  * context. */

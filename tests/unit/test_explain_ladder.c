@@ -142,15 +142,15 @@ END_TEST
 
 /* ---- hull ---- */
 
-/* By definition: a point is a corner of the lower hull when no segment between a point before it and
- * one after it passes on or below it. Andrew, Another efficient algorithm for convex hulls in two
- * dimensions, 1979, is what the module does; this is the slow way round. */
+/* By definition: a point is a corner of the lower hull when no segment between a point before it
+ * and one after it passes on or below it. Andrew, Another efficient algorithm for convex hulls in
+ * two dimensions, 1979, is what the module does; this is the slow way round. */
 static bool is_corner(const ladder_rung *r, int count, int i) {
   for (int p = 0; p < i; p++)
     for (int q = i + 1; q < count; q++) {
       long long run = r[q].rating - r[p].rating;
-      long long line = r[p].cost_cents * run +
-                       (r[q].cost_cents - r[p].cost_cents) * (r[i].rating - r[p].rating);
+      long long line =
+          r[p].cost_cents * run + (r[q].cost_cents - r[p].cost_cents) * (r[i].rating - r[p].rating);
       if (line <= r[i].cost_cents * run) return false;
     }
   return true;
@@ -207,8 +207,7 @@ START_TEST(from_a_given_wall) {
   ladder_explain(shop.memory, &x.space, &x.rungs, &terms, &l);
   for (int i = 0; i < l.count; i++) {
     ck_assert_int_gt(l.rung[i].rating, terms.have_reaches);
-    ck_assert_int_eq(l.rung[i].extra_cents,
-                     l.rung[i].cost_cents - have->numbers.cost_cents);
+    ck_assert_int_eq(l.rung[i].extra_cents, l.rung[i].cost_cents - have->numbers.cost_cents);
     ck_assert_int_gt(l.rung[i].from_have.count, 0);
   }
   for (int i = 0; i < l.edit_count; i++) {
