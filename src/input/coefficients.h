@@ -64,6 +64,8 @@ struct acoustics {
   double spring_loss;     /* loss factor of the low-frequency spring */
   double bay_stiffness;   /* kappa: 97 simply supported, 500 clamped */
   double low_share;       /* rho: low-frequency over bridging share of a connection's compliance */
+  double gauge_fall;      /* compliance falls as thickness to minus this, from light to middle gauge */
+  double gauge_light_m, gauge_middle_m, gauge_heavy_m; /* design thickness of 18, 33 and 54 mil */
   double stud_static_hz;  /* f_s: where a steel stud has its static beam compliance */
   double compliance_fall; /* p: compliance falls as f^-p */
   double channel_compliance;  /* C_rc at 500 Hz, studs at 0.406 m, m2/N */
