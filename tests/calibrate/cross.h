@@ -4,7 +4,7 @@
 
 #include "fit.h"
 
-enum { CROSS_FOLDS = 10 };
+enum { CROSS_FOLDS = 10, CROSS_SEEDS = 3 };
 
 typedef struct error_summary {
   int rows, within_3;

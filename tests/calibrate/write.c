@@ -159,6 +159,12 @@ void write_acoustics(text *out, const json_value *old, const fit *f, const outco
   put_summary(out, "trained", &t);
   put_summary(out, "cross_validated", &c);
   put_summary(out, "wall_numbers_left_out", &n);
+  text_put(out, "    \"cross_rms_by_seed\": [");
+  for (int i = 0; i < CROSS_SEEDS; i++) {
+    text_put(out, i ? ", " : "");
+    text_fixed(out, o->seed_rms[i], 2);
+  }
+  text_put(out, "],\n");
   text_put(out, "    \"shape_mae_db\": ");
   text_fixed(out, o->shape_mae_db, 2);
   text_put(out, ", \"shape_125_db\": ");

@@ -10,6 +10,7 @@
 typedef struct outcome {
   struct acoustics fitted;
   double trained[DATA_MAX_ROWS], folds[DATA_MAX_ROWS], numbers[DATA_MAX_ROWS];
+  double seed_rms[CROSS_SEEDS];      /* of folds drawn from seed 1, which is `folds`, 2, 3 */
   double shape_mae_db, shape_125_db; /* of the octave curves; mean difference at 125 Hz */
 } outcome;
 
