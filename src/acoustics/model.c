@@ -74,12 +74,13 @@ double model_stud_static(const struct acoustics *k, double web_m, double thickne
   return (2 * e * e * e / 3 + e * e * web_m) / d;
 }
 
-/* Ratings are published for the lightest and the heaviest gauge, where the beam formula holds, and step sizes for those
- * between, which fall slower than its cube: a power law of its own up to the middle gauge, and from there ever faster down to the
- * heavy one. */
+/* Ratings are published for the lightest and the heaviest gauge, where the beam formula holds, and
+ * step sizes for those between, which fall slower than its cube: a power law of its own up to the
+ * middle gauge, and from there ever faster down to the heavy one. */
 static double gauge_compliance(const struct acoustics *k, double web_m, double thickness_m) {
   double light_m = k->gauge_light_m, middle_m = k->gauge_middle_m, heavy_m = k->gauge_heavy_m;
-  if (thickness_m <= light_m || thickness_m >= heavy_m) return model_stud_static(k, web_m, thickness_m);
+  if (thickness_m <= light_m || thickness_m >= heavy_m)
+    return model_stud_static(k, web_m, thickness_m);
   double light = model_stud_static(k, web_m, light_m);
   if (thickness_m <= middle_m) return light * pow(light_m / thickness_m, k->gauge_fall);
   double middle = light * pow(light_m / middle_m, k->gauge_fall);
@@ -89,8 +90,7 @@ static double gauge_compliance(const struct acoustics *k, double web_m, double t
 }
 
 double model_stud_c500(const struct acoustics *k, double web_m, double thickness_m) {
-  return gauge_compliance(k, web_m, thickness_m) *
-         pow(k->stud_static_hz / 500, k->compliance_fall);
+  return gauge_compliance(k, web_m, thickness_m) * pow(k->stud_static_hz / 500, k->compliance_fall);
 }
 
 double model_compliance(const struct acoustics *k, double c500_m2_n, double f_hz) {

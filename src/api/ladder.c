@@ -98,6 +98,14 @@ static status hand_out(call *k, ladder_job *job, const request *q, const ladder_
   return found->count > 0 ? STATUS_OK : STATUS_NO_WALL;
 }
 
+/* What the brief asks in the metric that climbs (METRIC_COUNT: that of its first target); 0 =
+ * nothing. */
+static int own_value(const brief *b, sound_metric metric) {
+  for (int i = 0; i < b->target_count; i++)
+    if (metric == METRIC_COUNT || b->targets[i].metric == metric) return (int)b->targets[i].value;
+  return 0;
+}
+
 static status ladder_stage(call *k, void *given) {
   ladder_job *job = given;
   request *q = arena_alloc(k->memory, sizeof *q);
@@ -105,6 +113,7 @@ static status ladder_stage(call *k, void *given) {
   sound_metric metric;
   if (!read_terms(k, &job->options, &metric, &terms)) return k->diags.worst;
   if (!request_prepare(k, job->handle, &job->options, job->path, false, q)) return k->diags.worst;
+  terms.own_value = own_value(&q->brief, metric);
   terms.climbs = ladder_target(&q->brief, metric);
   if (!read_have(k, job, q, &terms)) return k->diags.worst;
   return hand_out(k, job, q, climb(k, q, &terms));

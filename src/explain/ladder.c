@@ -121,6 +121,30 @@ static void explain_none(arena *a, const space *s, ladder_answer *out) {
   explain_pick(a, s, swept, &none, out->why);
 }
 
+/* What the other rules cost at one rung: a pick with the target there, which alone has all walls at
+ * hand that a rule given up lets in. */
+static void price_rules(arena *a, const judge_context *x, const ladder_terms *terms,
+                        ladder_answer *out) {
+  int value = terms->to > 0 ? terms->to : terms->own_value;
+  if (value < out->lowest || value > out->highest) return;
+  brief *asked = arena_alloc(a, sizeof *asked);
+  judge_context *asking = arena_alloc(a, sizeof *asking);
+  space *s = arena_alloc(a, sizeof *s);
+  sweep_result *swept = arena_alloc(a, sizeof *swept);
+  explanation *e = arena_alloc(a, sizeof *e);
+  *asked = *x->brief;
+  asked->targets[terms->climbs].value = value;
+  *asking = *x;
+  asking->brief = asked;
+  space_build(a, asking, s);
+  sweep_run(a, s, swept);
+  if (swept->runner_count == 0) return;
+  explain_prices(a, s, swept, &swept->runners[0], e);
+  out->priced_at = value;
+  out->prices = e->prices;
+  out->price_count = e->price_count;
+}
+
 void ladder_explain(arena *a, const space *s, const rungs *r, const ladder_terms *terms,
                     ladder_answer *out) {
   *out = (ladder_answer){.terms = *terms, .lowest = r->lowest, .highest = r->highest};
@@ -132,6 +156,7 @@ void ladder_explain(arena *a, const space *s, const rungs *r, const ladder_terms
     list_rungs(a, s, r, out);
     ladder_mark_hull(out->rung, out->count);
     list_changes(a, s, out);
+    price_rules(a, s->context, terms, out);
   }
   if (terms->have) ladder_edits(a, s->context, out);
 }

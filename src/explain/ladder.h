@@ -16,6 +16,7 @@ typedef struct ladder_terms {
   int from, to;           /* values asked for, 0 = no end on that side */
   const assessment *have; /* the given wall; NULL without. Then only rungs above its rating stand */
   int have_reaches;       /* what it meets, 0 = it meets no value */
+  int own_value;          /* what the brief asks of that target, 0 = nothing */
 } ladder_terms;
 
 typedef struct ladder_rung {
@@ -48,6 +49,9 @@ typedef struct ladder_answer {
   int count;
   ladder_edit edit[LADDER_MAX_EDITS]; /* rising in rating and in cost: for each gain the cheapest */
   int edit_count;
+  int priced_at; /* the value at which rules are priced: `to`, else the brief's own; 0 = none */
+  explain_rule_price *prices; /* as pick's with that value */
+  int price_count;
   explanation *why; /* no wall keeps the other rules: conflicts and near misses; else NULL */
   long long walls, rated;
 } ladder_answer;

@@ -181,6 +181,8 @@ void report_ladder_json(const report *r, const ladder_answer *l, text *out) {
   markup_json_array(&j, "rungs", false);
   for (int i = 0; i < l->count; i++) put_rung(&j, r, l, &l->rung[i]);
   markup_json_close(&j);
+  put_value(&j, "priced_at", l->priced_at);
+  report_json_rule_prices(&j, l->prices, l->price_count);
   put_why(&j, r, l->why);
   markup_json_close(&j);
 }

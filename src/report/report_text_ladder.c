@@ -283,6 +283,13 @@ void report_ladder_text(const report *r, const ladder_answer *l, text *out) {
     put_legend(r, out);
   }
   put_edits(r, l, out);
+  if (l->price_count > 0) {
+    page_line(
+        out, "Priced at",
+        text_format(r->arena, "%s %d, %s:", view_ladder_metric(r, l), l->priced_at,
+                    l->terms.to > 0 ? "the end of the range asked for" : "the value of the brief"));
+    report_rule_prices_text(r, l->prices, l->price_count, "", out);
+  }
   put_cautions(r, l, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }
