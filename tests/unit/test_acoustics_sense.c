@@ -210,7 +210,7 @@ static const struct {
      "resonance moves into 125 Hz"},
     {"wider studs", wider_studs, 0.005, 1.5, "the same, studs of 41 mm"},
     {"wider channel", wider_channel, 0, 0, ""},
-    {"lighter gauge", lighter_gauge, 0.02, 1.2,
+    {"lighter gauge", lighter_gauge, 0.02, 1.6,
      "interference in the bridged path between stiff and soft"},
     {"another layer", another_layer, 0.01, 2.5, "resonance moves into 125 Hz"},
     {"limp layer", limp_layer, 0.02, 2.0, "resonance moves into 125 Hz"},
