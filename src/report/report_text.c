@@ -166,7 +166,8 @@ static void put_height(const report *r, const assessment *x, text *out) {
 static void put_kept(const report *r, const assessment *x, text *out) {
   text kept;
   text_init(&kept, r->arena, 4000);
-  rule_mask mask = rules_in_force(r->brief) & ~x->broken;
+  /* A price for every item is a condition of any answer, not a rule that somebody set. */
+  rule_mask mask = rules_in_force(r->brief) & ~x->broken & ~((rule_mask)1 << RULE_PRICE);
   for (int i = 0; i < RULES_MAX; i++)
     if ((mask >> i) & 1u)
       text_putf(&kept, "%s%s", kept.len ? ", " : "", rule_name(r->arena, r->brief, i));
