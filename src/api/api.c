@@ -8,8 +8,6 @@
 #include "report/report_xlsx.h"
 #include "report/takeoff.h"
 
-enum { ANSWER_MAX_BYTES = 64 << 20 };
-
 void septum_options_init(septum_options *options) {
   memset(options, 0, sizeof *options);
 }
@@ -68,11 +66,9 @@ typedef struct answer_job {
   septum_answer *made;
 } answer_job;
 
-/* The takeoff of `x` (NULL: no wall, no spreadsheet) in the files that the options name. */
-static bool write_takeoff(call *k, const answer_job *job, const report *r, const assessment *x,
-                          const text *csv) {
-  const char *path = job->options.save_csv, *xlsx = job->options.save_xlsx;
-  if (path != NULL && !file_write(k->memory, &k->diags, path, csv->data, csv->len)) return false;
+/* The takeoff of `x` (NULL: no wall, no spreadsheet) in the spreadsheet that the options name. */
+static bool write_sheets(call *k, const answer_job *job, const report *r, const assessment *x) {
+  const char *xlsx = job->options.save_xlsx;
   if (xlsx == NULL || x == NULL) return true;
   sheet sheets[TAKEOFF_SHEETS];
   takeoff_sheets(r, x, sheets);
@@ -81,20 +77,10 @@ static bool write_takeoff(call *k, const answer_job *job, const report *r, const
 
 /* Writes the files that the options name, if any, and hands the answer out. */
 static status hand_out(call *k, answer_job *job, const report *r, const assessment *x,
-                       const text *words, const text *json, const text *csv, status when_done) {
-  if (!write_takeoff(k, job, r, x, csv)) return k->diags.worst;
-  if (words->cut || json->cut || csv->cut) {
-    diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
-    return STATUS_INTERNAL;
-  }
-  job->made = call_answer(k, words->data, json->data, csv->data);
-  return when_done;
-}
-
-static void start_texts(call *k, text *words, text *json, text *csv) {
-  text_init(words, k->memory, ANSWER_MAX_BYTES);
-  text_init(json, k->memory, ANSWER_MAX_BYTES);
-  text_init(csv, k->memory, ANSWER_MAX_BYTES);
+                       const call_texts *t, status when_done) {
+  if (!call_texts_whole(k, t) || !write_sheets(k, job, r, x)) return k->diags.worst;
+  job->made = call_deliver(k, t, job->options.save_csv);
+  return job->made != NULL ? when_done : k->diags.worst;
 }
 
 /* What the options ask for and this build lacks is said before any work. */
@@ -118,12 +104,12 @@ static status rate_stage(call *k, void *given) {
     diag_add(&k->diags, DIAG_WARNING, ERROR_PRICE_MISSING,
              (diag_place){.file = prepared->prices->file},
              "no price for \"%s\": the wall is not costed", x->takeoff.missing_code);
-  text words, json, csv;
-  start_texts(k, &words, &json, &csv);
-  report_rate_text(&prepared->report, x, &words);
-  report_rate_json(&prepared->report, x, &json);
-  report_takeoff_csv(&prepared->report, x, &csv);
-  return hand_out(k, job, &prepared->report, x, &words, &json, &csv, STATUS_OK);
+  call_texts t;
+  call_texts_init(k, &t);
+  report_rate_text(&prepared->report, x, &t.words);
+  report_rate_json(&prepared->report, x, &t.json);
+  report_takeoff_csv(&prepared->report, x, &t.csv);
+  return hand_out(k, job, &prepared->report, x, &t, STATUS_OK);
 }
 
 /* Sweeps, chooses and explains. False after messages. */
@@ -150,12 +136,12 @@ static status pick_stage(call *k, void *given) {
     return k->diags.worst;
   if (!choose(k, job, prepared, choice, why))
     return k->diags.worst == STATUS_OK ? STATUS_INTERNAL : k->diags.worst;
-  text words, json, csv;
-  start_texts(k, &words, &json, &csv);
-  report_pick_text(&prepared->report, why, choice, &words);
-  report_pick_json(&prepared->report, why, choice, &json);
-  report_takeoff_csv(&prepared->report, why->chosen, &csv);
-  return hand_out(k, job, &prepared->report, why->chosen, &words, &json, &csv,
+  call_texts t;
+  call_texts_init(k, &t);
+  report_pick_text(&prepared->report, why, choice, &t.words);
+  report_pick_json(&prepared->report, why, choice, &t.json);
+  report_takeoff_csv(&prepared->report, why->chosen, &t.csv);
+  return hand_out(k, job, &prepared->report, why->chosen, &t,
                   why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
 }
 

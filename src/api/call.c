@@ -3,7 +3,9 @@
 #include <stddef.h>
 #include <string.h>
 
-enum { LINE_MAX_BYTES = 4000 };
+#include "base/file.h"
+
+enum { LINE_MAX_BYTES = 4000, ANSWER_MAX_BYTES = 64 << 20 };
 
 static void tell_item(call *k, const diag *item) {
   text line;
@@ -71,4 +73,23 @@ septum_answer *call_answer(call *k, const char *words, const char *json, const c
   answer->memory = k->kept;
   k->keep = true;
   return answer;
+}
+
+void call_texts_init(call *k, call_texts *t) {
+  text_init(&t->words, k->memory, ANSWER_MAX_BYTES);
+  text_init(&t->json, k->memory, ANSWER_MAX_BYTES);
+  text_init(&t->csv, k->memory, ANSWER_MAX_BYTES);
+}
+
+bool call_texts_whole(call *k, const call_texts *t) {
+  if (!t->words.cut && !t->json.cut && !t->csv.cut) return true;
+  diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
+  return false;
+}
+
+septum_answer *call_deliver(call *k, const call_texts *t, const char *csv_path) {
+  if (!call_texts_whole(k, t)) return NULL;
+  if (csv_path != NULL && !file_write(k->memory, &k->diags, csv_path, t->csv.data, t->csv.len))
+    return NULL;
+  return call_answer(k, t->words.data, t->json.data, t->csv.data);
 }

@@ -1,10 +1,7 @@
 /* septum_ladder: what each rating costs. */
 #include "api/call.h"
 #include "api/request.h"
-#include "base/file.h"
 #include "report/report_ladder.h"
-
-enum { ANSWER_MAX_BYTES = 64 << 20 };
 
 typedef struct ladder_job {
   const septum *handle;
@@ -80,21 +77,13 @@ static ladder_answer *climb(call *k, const request *q, const ladder_terms *terms
 }
 
 static status hand_out(call *k, ladder_job *job, const request *q, const ladder_answer *found) {
-  text words, json, csv;
-  text_init(&words, k->memory, ANSWER_MAX_BYTES);
-  text_init(&json, k->memory, ANSWER_MAX_BYTES);
-  text_init(&csv, k->memory, ANSWER_MAX_BYTES);
-  report_ladder_text(&q->report, found, &words);
-  report_ladder_json(&q->report, found, &json);
-  report_ladder_csv(&q->report, found, &csv);
-  if (words.cut || json.cut || csv.cut) {
-    diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
-    return STATUS_INTERNAL;
-  }
-  const char *path = job->options.save_csv;
-  if (path != NULL && !file_write(k->memory, &k->diags, path, csv.data, csv.len))
-    return k->diags.worst;
-  job->made = call_answer(k, words.data, json.data, csv.data);
+  call_texts t;
+  call_texts_init(k, &t);
+  report_ladder_text(&q->report, found, &t.words);
+  report_ladder_json(&q->report, found, &t.json);
+  report_ladder_csv(&q->report, found, &t.csv);
+  job->made = call_deliver(k, &t, job->options.save_csv);
+  if (job->made == NULL) return k->diags.worst;
   return found->count > 0 ? STATUS_OK : STATUS_NO_WALL;
 }
 

@@ -100,16 +100,13 @@ static status list_stage(call *k, void *given) {
   price_update *u = arena_alloc(k->memory, sizeof *u);
   if (!price_update_age(k->memory, &k->diags, job->handle->catalog, b, job->options.today, u))
     return k->diags.worst;
-  text words, json, csv;
-  text_init(&words, k->memory, JSON_MAX_BYTES);
-  text_init(&json, k->memory, JSON_MAX_BYTES);
-  text_init(&csv, k->memory, JSON_MAX_BYTES);
-  report_book_text(k->memory, u, path, &words);
-  report_book_json(u, path, &json);
-  report_book_csv(k->memory, b, &csv);
-  if (path != NULL && !file_write(k->memory, &k->diags, path, csv.data, csv.len))
-    return k->diags.worst;
-  job->made = call_answer(k, words.data, json.data, csv.data);
+  call_texts t;
+  call_texts_init(k, &t);
+  report_book_text(k->memory, u, path, &t.words);
+  report_book_json(u, path, &t.json);
+  report_book_csv(k->memory, b, &t.csv);
+  job->made = call_deliver(k, &t, path);
+  if (job->made == NULL) return k->diags.worst;
   return STATUS_OK;
 }
 

@@ -1,10 +1,8 @@
 /* septum_trim: a specified wall, and what may stand in its place. */
 #include "api/call.h"
 #include "api/request.h"
-#include "base/file.h"
 #include "report/report_trim.h"
 
-enum { ANSWER_MAX_BYTES = 64 << 20 };
 static const double SLACK_UNIT_M = 1e-3; /* a bare number is in millimetres */
 static const double SLACK_MAX_M = 1;     /* a guard against slips of a unit */
 
@@ -61,21 +59,13 @@ static trim_answer *compare(call *k, const request *q, assessment *specified,
 }
 
 static status hand_out(call *k, trim_job *job, const request *q, const trim_answer *found) {
-  text words, json, csv;
-  text_init(&words, k->memory, ANSWER_MAX_BYTES);
-  text_init(&json, k->memory, ANSWER_MAX_BYTES);
-  text_init(&csv, k->memory, ANSWER_MAX_BYTES);
-  report_trim_text(&q->report, found, &words);
-  report_trim_json(&q->report, found, &json);
-  report_trim_csv(&q->report, found, &csv);
-  if (words.cut || json.cut || csv.cut) {
-    diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
-    return STATUS_INTERNAL;
-  }
-  const char *path = job->options.save_csv;
-  if (path != NULL && !file_write(k->memory, &k->diags, path, csv.data, csv.len))
-    return k->diags.worst;
-  job->made = call_answer(k, words.data, json.data, csv.data);
+  call_texts t;
+  call_texts_init(k, &t);
+  report_trim_text(&q->report, found, &t.words);
+  report_trim_json(&q->report, found, &t.json);
+  report_trim_csv(&q->report, found, &t.csv);
+  job->made = call_deliver(k, &t, job->options.save_csv);
+  if (job->made == NULL) return k->diags.worst;
   return found->proposal_count > 0 ? STATUS_OK : STATUS_NO_WALL;
 }
 
