@@ -360,7 +360,9 @@ void report_json_rule_prices(markup_json *j, const explain_rule_price *prices, i
     markup_json_string(j, "rule", p->name);
     markup_json_string(j, "from", p->from);
     markup_json_string(j, "to", p->to);
-    markup_json_number(j, "price_per_m2", p->reachable ? p->price_per_m2 : NAN, MONEY_DIGITS);
+    double by_area = p->reachable ? p->price_per_m2 : NAN;
+    markup_json_number(j, "price_per_m2", by_area, MONEY_DIGITS);
+    markup_json_number(j, "price_per_ft2", by_area * UNITS_M2_PER_FT2, MONEY_DIGITS);
     markup_json_number(j, "price_total", p->reachable ? p->price_total : NAN, CENT_DIGITS);
     markup_json_string(j, "line", p->wall != NULL ? p->wall->line : NULL);
     markup_json_close(j);
