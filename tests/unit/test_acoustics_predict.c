@@ -17,9 +17,10 @@
  * and whole points. */
 #define ROWS_RMS     1.3
 #define ROWS_LARGEST 4.0
-/* Error on walls that were kept out of the fit, 10 folds. The target is 1.3; which walls share a
- * fold moves it by 0.03. */
-#define CROSS_RMS_MOST 1.33
+/* Error on walls that were kept out of the fit, 10 folds: the target, for the folds that are stored;
+ * which walls share a fold moves it by 0.03. */
+#define CROSS_RMS_MOST      1.3
+#define CROSS_RMS_SEED_MOST 1.33
 #define FAMILY_BIAS    0.7 /* for families of so many rows: */
 enum { FAMILY_ROWS = 8 };
 /* Exact ratings come in steps of 0.1, stored errors in hundredths. */
@@ -139,8 +140,9 @@ START_TEST(cross_validated_targets) {
   const json_value *cross = json_get(fit_part(), "cross_validated");
   const json_value *seeds = json_get(fit_part(), "cross_rms_by_seed");
   ck_assert_ptr_nonnull(seeds);
+  ck_assert_double_le(member(cross, "rms"), CROSS_RMS_MOST);
   for (const json_value *v = seeds->first; v; v = v->next)
-    ck_assert_double_le(v->number, CROSS_RMS_MOST);
+    ck_assert_double_le(v->number, CROSS_RMS_SEED_MOST);
   ck_assert_double_ge(member(cross, "within_3_share"), 0.97);
   ck_assert_double_le(member(cross, "largest"), 5.0);
   ck_assert_double_le(member(fit_part(), "shape_mae_db"), 3.5);
