@@ -10,28 +10,7 @@
 #include "base/file.h"
 #include "wall/line.h"
 #include "share.h"
-
-static arena *memory;
-static diag_list faults;
-static const catalog *shop;
-static jmp_buf out_of_memory;
-
-static void setup(void) {
-  memory = arena_create(0, &out_of_memory);
-  diag_init(&faults, memory);
-  shop = catalog_load(memory, &faults, TEST_ROOT "/catalogs");
-  ck_assert_msg(shop != NULL, "the shipped catalogs load");
-}
-
-static void teardown(void) {
-  arena_free(memory);
-}
-
-static wall parse(const char *line) {
-  wall w;
-  ck_assert_msg(line_parse(memory, &faults, shop, line, &w), "%s reads", line);
-  return w;
-}
+#include "shop.h"
 
 static bool has(const compat_report *r, const char *rule, compat_level level) {
   for (int i = 0; i < r->count; i++) {

@@ -1,27 +1,13 @@
 /* The wall line and wall/1: reading, shortest form, round trip, faults at their place. */
 #include "wall/line.h"
-#include "share.h"
 
 #include <check.h>
 #include <setjmp.h>
 #include <stdlib.h>
 #include <string.h>
 
-static arena *memory;
-static diag_list faults;
-static const catalog *shop;
-static jmp_buf out_of_memory;
-
-static void setup(void) {
-  memory = arena_create(0, &out_of_memory);
-  diag_init(&faults, memory);
-  shop = catalog_load(memory, &faults, TEST_ROOT "/catalogs");
-  ck_assert_msg(shop != NULL, "the shipped catalogs load");
-}
-
-static void teardown(void) {
-  arena_free(memory);
-}
+#include "share.h"
+#include "shop.h"
 
 static const char *first_fault(void) {
   text t;

@@ -7,32 +7,11 @@
 #include <stdlib.h>
 
 #include "wall/line.h"
+#include "shop.h"
 
 #define SIZE_M         1e-9 /* sums of sizes that the files give to 0.1 mm: equal but for rounding */
 #define SIXTEENTH_IN_M (0.0254 / 16) /* thickness is printed to 1/16 in */
 #define MASS_KG_M2     0.05          /* the hand sums below are rounded to 0.1 kg/m2 */
-
-static arena *memory;
-static diag_list faults;
-static const catalog *shop;
-static jmp_buf out_of_memory;
-
-static void setup(void) {
-  memory = arena_create(0, &out_of_memory);
-  diag_init(&faults, memory);
-  shop = catalog_load(memory, &faults, TEST_ROOT "/catalogs");
-  ck_assert_msg(shop != NULL, "the shipped catalogs load");
-}
-
-static void teardown(void) {
-  arena_free(memory);
-}
-
-static wall parse(const char *line) {
-  wall w;
-  ck_assert_msg(line_parse(memory, &faults, shop, line, &w), "%s reads", line);
-  return w;
-}
 
 /* Actual sizes by hand, in mm. */
 static const struct thickness_row {
