@@ -6,6 +6,7 @@
 #include "input/catalog_records.h"
 #include "input/coefficients.h"
 #include "input/rows.h"
+#include "input/spoken.h"
 
 /* ---- reading ---- */
 
@@ -136,85 +137,43 @@ int catalog_mount(const catalog *c, const char *id) {
   return find_id(c, CATALOG_MOUNT, id);
 }
 
-static bool is_letter(char ch) {
-  return (ch >= 'a' && ch <= 'z') || (ch >= 'A' && ch <= 'Z');
-}
-static bool is_digit(char ch) {
-  return ch >= '0' && ch <= '9';
-}
-static char lower(char ch) {
-  return ch >= 'A' && ch <= 'Z' ? (char)(ch - 'A' + 'a') : ch;
-}
-
-enum { SPOKEN_MAX = 96 };
-
-/* Bytes of an inch word ("in", "inch", "inches") at s, 0 without; a word that merely starts so is
- * none. */
-static size_t inch_word(const char *s) {
-  static const char *const words[] = {"inches", "inch", "in"};
-  for (size_t i = 0; i < sizeof words / sizeof words[0]; i++) {
-    size_t n = strlen(words[i]), k = 0;
-    while (k < n && lower(s[k]) == words[i][k]) k++;
-    if (k == n && !is_letter(s[n])) return n;
-  }
-  return 0;
-}
-
-/* What is left of a spoken word when blanks, hyphens, case, inch marks and the long form of "ga" do
- * not count. */
-static bool spoken_form(const char *s, char out[SPOKEN_MAX]) {
-  size_t n = 0;
-  for (size_t i = 0; s[i] != '\0';) {
-    size_t inch = n > 0 && is_digit(out[n - 1]) ? inch_word(s + i) : 0;
-    if (inch > 0) {
-      i += inch;
-    } else if (lower(s[i]) == 'g' && strlen(s + i) >= 5 && lower(s[i + 1]) == 'a' &&
-               lower(s[i + 2]) == 'u' && lower(s[i + 3]) == 'g' && lower(s[i + 4]) == 'e') {
-      if (n + 2 >= SPOKEN_MAX) return false;
-      out[n++] = 'g';
-      out[n++] = 'a';
-      i += 5;
-    } else {
-      char ch = lower(s[i++]);
-      if (ch == ' ' || ch == '\t' || ch == '-' || ch == '"' || ch == '.') continue;
-      if (n + 1 >= SPOKEN_MAX) return false;
-      out[n++] = ch;
-    }
-  }
-  out[n] = '\0';
-  return n > 0;
-}
-
-static bool is_said(const catalog *c, catalog_ref ref, const char *form) {
-  char other[SPOKEN_MAX];
-  if (spoken_form(catalog_id(c, ref), other) && text_equal(other, form)) return true;
+static bool is_said(const catalog *c, catalog_ref ref, const spoken *form, spoken_way way) {
+  spoken other;
+  if (spoken_read(catalog_id(c, ref), ref.kind, way, &other) && spoken_same(&other, form))
+    return true;
   said_words said = said_of(c, ref);
-  for (size_t i = 0; i < said.count; i++) {
-    if (spoken_form(said.word[i], other) && text_equal(other, form)) return true;
-  }
+  for (size_t i = 0; i < said.count; i++)
+    if (spoken_read(said.word[i], ref.kind, way, &other) && spoken_same(&other, form)) return true;
   return false;
 }
 
+/* Every record that `word` is said for, from out[found] on. Returns how many there are now. */
+static size_t find_said(const catalog *c, const char *word, spoken_way way, catalog_ref *out,
+                        size_t max) {
+  size_t found = 0;
+  for (int k = 0; k < CATALOG_KINDS; k++) {
+    spoken form;
+    if (!spoken_read(word, (catalog_kind)k, way, &form)) continue;
+    int n = (int)count_of(c, (catalog_kind)k);
+    for (int i = 0; i < n; i++) {
+      catalog_ref ref = {(catalog_kind)k, i};
+      if (!is_said(c, ref, &form, way)) continue;
+      if (found < max) out[found] = ref;
+      found++;
+    }
+  }
+  return found;
+}
+
 size_t catalog_find(const catalog *c, const char *word, catalog_ref *out, size_t max) {
-  char form[SPOKEN_MAX];
   for (int k = 0; k < CATALOG_KINDS; k++) {
     int index = find_id(c, (catalog_kind)k, word);
     if (index == CATALOG_NONE) continue;
     if (max > 0) out[0] = (catalog_ref){(catalog_kind)k, index};
     return 1;
   }
-  if (!spoken_form(word, form)) return 0;
-  size_t found = 0;
-  for (int k = 0; k < CATALOG_KINDS; k++) {
-    int n = (int)count_of(c, (catalog_kind)k);
-    for (int i = 0; i < n; i++) {
-      catalog_ref ref = {(catalog_kind)k, i};
-      if (!is_said(c, ref, form)) continue;
-      if (found < max) out[found] = ref;
-      found++;
-    }
-  }
-  return found;
+  size_t found = find_said(c, word, SPOKEN_AS_IT_STANDS, out, max);
+  return found > 0 ? found : find_said(c, word, SPOKEN_IN_ANY_ORDER, out, max);
 }
 
 const target_row *catalog_target(const catalog *c, const char *adjacency, fire_code code) {

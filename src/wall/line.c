@@ -3,6 +3,7 @@
 #include <string.h>
 
 #include "base/units.h"
+#include "input/spoken.h"
 #include "wall/parts.h"
 
 /* Grammar and meaning: docs/formats/wall.md. The line is cut at `|`, the segment that starts with a
@@ -119,10 +120,19 @@ static int read_spacing(parser *p, span s, const int *list, size_t count, const 
 
 /* ---- faces ---- */
 
-/* `n*` before an item: returns n and moves *s behind it; 1 without, 0 after a fault. */
+/* `n*` before an item, or what people say for it ("2x ", "two layers of "): returns n and moves *s
+ * behind it; 1 without, 0 after a fault. */
 static int read_repeat(parser *p, span *s) {
-  size_t star = find(p, *s, '*');
-  if (star == s->to) return 1;
+  size_t star = find(p, *s, '*'), skip = 0;
+  if (star == s->to) {
+    int said = spoken_count(p->line + s->from, s->to - s->from, &skip);
+    if (said == 0) return 1;
+    if (said > REPEAT_MAX)
+      fault(p, ERROR_WALL_SYNTAX, s->from,
+            text_format(p->arena, "expected 1 to %d layers, found %d", (int)REPEAT_MAX, said));
+    s->from += skip;
+    return said > REPEAT_MAX ? 0 : said;
+  }
   span digits = trim(p, (span){s->from, star});
   int n = 0;
   bool number = digits.from < digits.to;
@@ -258,7 +268,7 @@ static void read_fill(parser *p, span item, int row, int rows, wall *out) {
 
 /* `frame [, fill]... [, inner-a face] [, inner-b face]` */
 static void read_core(parser *p, span s, wall *out) {
-  span rest = s, item, faces;
+  span rest = s, item = s, faces;
   bool seen[2] = {false, false};
   int row = 0;
   next_piece(p, &rest, ',', &item);
@@ -290,8 +300,9 @@ typedef enum segment_kind {
 static segment_kind classify(const parser *p, span s) {
   span after;
   if (starts_with(p, s, "on", &after)) return SEGMENT_ON;
-  size_t star = find(p, s, '*'), end = s.from;
+  size_t star = find(p, s, '*'), end = s.from, skip = 0;
   while (end < s.to && !strchr("+,@~", p->line[end])) end++;
+  if (star >= end && spoken_count(p->line + s.from, end - s.from, &skip) > 0) s.from += skip;
   span first = trim(p, (span){star < end ? star + 1 : s.from, end});
   catalog_ref ref[1];
   if (first.from >= first.to || catalog_find(p->catalog, word_of(p, first), ref, 1) == 0)

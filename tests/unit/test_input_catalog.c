@@ -306,7 +306,22 @@ static const struct said_row {
                  {"nothing like it", ""},
                  {"", ""},
                  {" - ", ""},
-                 {"5/8 insulation", ""}};
+                 {"5/8 insulation", ""},
+                 /* words in another order, and those that every good of the kind is called by */
+                 {"25ga 3-5/8", "steel-92-18"},
+                 {"20 gauge structural 3 5/8 in stud", "steel-92-33"},
+                 {"18 mil 3-5/8 stud", "steel-92-18"},
+                 {"2x4 stud", "wood-89"},
+                 {"20ga 6", "steel-152-30 steel-152-33"},
+                 {"type X 5/8", "typex-16"},
+                 {"5/8 in Type X gypsum board", "typex-16"},
+                 {"regular 1/2 board", "gyp-13"},
+                 {"R13 batt insulation", "glass-89"},
+                 {"mineral wool batt 3 in", "stone-76"},
+                 {"board", ""},
+                 {"stud", ""},
+                 {"25 ga", ""},
+                 {"R13 board", ""}};
 
 START_TEST(what_people_say) {
   const catalog *c = load();

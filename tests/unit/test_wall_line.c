@@ -65,6 +65,13 @@ static const struct line_row {
     {"5/8X + 7/16 OSB | double 2x4@16, R13, R13 | 5/8X",
      "typex-16 + osb-11 | wood-89-double@406, glass-89, glass-89 | typex-16"},
     {"5/8X | 362S125-18@24 | 5/8X", "typex-16 | steel-92-18@610 | typex-16"},
+    {"5/8X | 3-5/8 25ga @24, R13 | 2x 5/8X", "typex-16 | steel-92-18@610, glass-89 | 2*typex-16"},
+    {"2x5/8X | RC @ 24 | 2x4 @ 16, R13 | (2) 5/8 type X",
+     "2*typex-16 | rc@610 | wood-89@406, glass-89 | 2*typex-16"},
+    {"two layers of 5/8 Type X gypsum board | 25ga 3-5/8 studs @24, R13 batts | 2 layers 5/8X",
+     "2*typex-16 | steel-92-18@610, glass-89 | 2*typex-16"},
+    {"3 X 1/2 regular + 7/16 OSB | staggered 2x4 @16 | 1x 5/8X",
+     "3*gyp-13 + osb-11 | wood-89-stag-140@406 | typex-16"},
 };
 
 START_TEST(reads) {
@@ -162,6 +169,8 @@ static const struct error_row {
      "at most 6"},
     {"3*typex-16 + typex-16 | rc@610 | on 3*osb-11 | wood-89@406 | typex-16", 1, ERROR_WALL_SYNTAX,
      "at most 6"},
+    {"4x 5/8X | 2x4@16 | 5/8X", 1, ERROR_WALL_SYNTAX, "expected 1 to 3 layers, found 4"},
+    {"2x4 | 2x4@16 | 5/8X", 7, ERROR_WALL_SYNTAX, "expected one frame, found a second"},
     {"5/8 | 2x4@16 | 5/8X", 1, ERROR_WALL_UNKNOWN_ID, "may mean gyp-16 or typex-16"},
     {"5/8X | 3-5/8 20ga@16 | 5/8X", 8, ERROR_WALL_UNKNOWN_ID,
      "may mean steel-92-30 or steel-92-33"},
