@@ -138,6 +138,181 @@ void markup_json_cents(markup_json *j, const char *key, long long cents) {
   text_cents(j->out, cents, false);
 }
 
+/* ---- XML and HTML ---- */
+
+static bool in(const unsigned char *s, unsigned char b0, unsigned char b1, unsigned char low,
+               unsigned char high) {
+  return s[0] == b0 && s[1] == b1 && s[2] >= low && s[2] <= high;
+}
+
+/* Whether a well-formed sequence may not stand in a page: control characters (C0 but tab and line
+ * breaks, DEL, C1), U+FFFE and U+FFFF, and the characters that order others by direction. */
+static bool barred(const unsigned char *s, size_t length) {
+  if (length == 1) return (*s < 0x20 && *s != '\t' && *s != '\n' && *s != '\r') || *s == 0x7F;
+  if (length == 2) return s[0] == 0xC2 && s[1] < 0xA0;
+  if (length == 3)
+    return in(s, 0xEF, 0xBF, 0xBE, 0xBF) || in(s, 0xE2, 0x80, 0xAA, 0xAE) ||
+           in(s, 0xE2, 0x81, 0xA6, 0xA9);
+  return false;
+}
+
+/* The reference that stands for a character; NULL when it stands for itself. */
+static const char *reference_of(unsigned char c, bool attribute) {
+  switch (c) {
+  case '&': return "&amp;";
+  case '<': return "&lt;";
+  case '>': return "&gt;";
+  case '"': return attribute ? "&quot;" : NULL;
+  case '\t': return attribute ? "&#9;" : NULL;
+  case '\n': return attribute ? "&#10;" : NULL;
+  case '\r': return " ";
+  default: return NULL;
+  }
+}
+
+static void put_escaped(text *out, const char *value, bool attribute) {
+  if (value == NULL) return;
+  for (const unsigned char *s = (const unsigned char *)value; *s != '\0';) {
+    size_t length = utf8_length(s);
+    const char *instead = length == 1 ? reference_of(*s, attribute) : NULL;
+    if (length == 0 || barred(s, length))
+      text_put(out, "\xEF\xBF\xBD");
+    else if (instead)
+      text_put(out, instead);
+    else
+      text_putn(out, (const char *)s, length);
+    s += length ? length : 1;
+  }
+}
+
+void markup_text(text *out, const char *value) {
+  put_escaped(out, value, false);
+}
+
+void markup_attribute(text *out, const char *value) {
+  put_escaped(out, value, true);
+}
+
+/* Elements without content: those of HTML 5 that have no end tag (12.1.2), and shapes of SVG. */
+static bool holds_nothing(const char *name) {
+  static const char *const names[] = {"br",     "circle", "col",  "hr",      "img",
+                                      "input",  "line",   "link", "meta",    "path",
+                                      "ellipse", "polygon", "rect", "polyline", "use"};
+  for (size_t i = 0; i < sizeof names / sizeof names[0]; i++)
+    if (text_equal(name, names[i])) return true;
+  return false;
+}
+
+void markup_xml_init(markup_xml *x, text *out) {
+  memset(x, 0, sizeof *x);
+  x->out = out;
+  text_init(&x->nowhere, out->arena, 0);
+}
+
+void markup_xml_declaration(markup_xml *x) {
+  text_put(x->out, "<?xml version=\"1.0\" encoding=\"UTF-8\"?>\n");
+}
+
+void markup_xml_html(markup_xml *x) {
+  text_put(x->out, "<!DOCTYPE html>\n");
+}
+
+static void end_tag_start(markup_xml *x) {
+  if (x->tag_open) text_char(x->out, '>');
+  x->tag_open = false;
+}
+
+void markup_xml_inline(markup_xml *x, const char *name) {
+  end_tag_start(x);
+  if (x->depth == MARKUP_MAX_DEPTH) {
+    x->lost++;
+    return;
+  }
+  text_char(x->out, '<');
+  text_put(x->out, name);
+  x->name[x->depth] = name;
+  x->lines[x->depth++] = false;
+  x->tag_open = true;
+}
+
+void markup_xml_open(markup_xml *x, const char *name) {
+  end_tag_start(x);
+  if (x->depth > 0 && x->depth < MARKUP_MAX_DEPTH) {
+    text_char(x->out, '\n');
+    x->lines[x->depth - 1] = true;
+  }
+  markup_xml_inline(x, name);
+}
+
+text *markup_xml_attribute_begin(markup_xml *x, const char *name) {
+  if (x->lost || !x->tag_open) return &x->nowhere;
+  text_char(x->out, ' ');
+  text_put(x->out, name);
+  text_put(x->out, "=\"");
+  return x->out;
+}
+
+void markup_xml_attribute_end(markup_xml *x) {
+  if (!x->lost && x->tag_open) text_char(x->out, '"');
+}
+
+void markup_xml_attribute(markup_xml *x, const char *name, const char *value) {
+  if (value == NULL) return;
+  markup_attribute(markup_xml_attribute_begin(x, name), value);
+  markup_xml_attribute_end(x);
+}
+
+void markup_xml_number(markup_xml *x, const char *name, double value, int decimals) {
+  text_number(markup_xml_attribute_begin(x, name), isfinite(value) ? value : 0, decimals);
+  markup_xml_attribute_end(x);
+}
+
+void markup_xml_text(markup_xml *x, const char *value) {
+  end_tag_start(x);
+  markup_text(x->out, value);
+}
+
+void markup_xml_close(markup_xml *x) {
+  if (x->lost > 0) {
+    x->lost--;
+    return;
+  }
+  if (x->depth == 0) return;
+  const char *name = x->name[--x->depth];
+  if (x->tag_open && holds_nothing(name)) {
+    text_put(x->out, "/>");
+    x->tag_open = false;
+  } else {
+    end_tag_start(x);
+    if (x->lines[x->depth]) text_char(x->out, '\n');
+    text_put(x->out, "</");
+    text_put(x->out, name);
+    text_char(x->out, '>');
+  }
+  if (x->depth == 0) text_char(x->out, '\n');
+}
+
+void markup_xml_element(markup_xml *x, const char *name, const char *css_class, const char *value) {
+  markup_xml_open(x, name);
+  markup_xml_attribute(x, "class", css_class);
+  markup_xml_text(x, value);
+  markup_xml_close(x);
+}
+
+void markup_xml_style(markup_xml *x, const char *css) {
+  markup_xml_open(x, "style");
+  end_tag_start(x);
+  text_put(x->out, css);
+  markup_xml_close(x);
+}
+
+text *markup_xml_embed(markup_xml *x) {
+  end_tag_start(x);
+  return x->out;
+}
+
+/* ---- CSV ---- */
+
 void markup_csv_field(text *out, const char *value, bool first) {
   if (!first) text_char(out, ',');
   bool formula = strchr("=+-@\t\r", value[0]) != NULL && value[0] != '\0';

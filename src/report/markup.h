@@ -35,6 +35,54 @@ void markup_json_null(markup_json *j, const char *key);
 /* Minor units as a number in the major unit, exactly: 1999 -> 19.99. */
 void markup_json_cents(markup_json *j, const char *key, long long cents);
 
+/* XML and HTML, for text from anywhere. Bytes that are not UTF-8, control characters and what XML
+ * forbids become U+FFFD; a carriage return becomes a blank. The characters that order the letters
+ * around them (U+202A to U+202E, U+2066 to U+2069) become U+FFFD too: unclosed they would turn the
+ * rest of the page around, and a name needs none. Text that is itself written from right to left
+ * stays as it is. NULL is nothing. */
+/* Between tags. */
+void markup_text(text *out, const char *value);
+/* Inside the double quotes of an attribute. */
+void markup_attribute(text *out, const char *value);
+
+/* Elements, written front to back, readable as XML and as HTML 5 alike: those that can hold nothing
+ * (br, meta, path...) end in "/>", all others have an end tag. Names of elements and attributes are
+ * the program's own and are kept by address until closed. Elements deeper than MARKUP_MAX_DEPTH are
+ * left out; what they would hold stands in the deepest that is written. */
+typedef struct markup_xml {
+  text *out;
+  int depth;
+  int lost;                           /* open elements that are left out */
+  bool tag_open;                      /* the start tag takes attributes still */
+  const char *name[MARKUP_MAX_DEPTH]; /* of the open elements */
+  bool lines[MARKUP_MAX_DEPTH];       /* something in it began on a line of its own */
+  text nowhere;
+} markup_xml;
+
+void markup_xml_init(markup_xml *x, text *out);
+/* The first line of a file of XML, of HTML 5. */
+void markup_xml_declaration(markup_xml *x);
+void markup_xml_html(markup_xml *x);
+/* Opens an element on a new line, or within the line (between words, where a line break would be a
+ * blank). */
+void markup_xml_open(markup_xml *x, const char *name);
+void markup_xml_inline(markup_xml *x, const char *name);
+/* Attributes of the element just opened; not after anything was put into it. NULL: no attribute. */
+void markup_xml_attribute(markup_xml *x, const char *name, const char *value);
+/* At most `decimals` digits after the point, whatever the locale. Not finite: 0. */
+void markup_xml_number(markup_xml *x, const char *name, double value, int decimals);
+/* An attribute written in pieces by the program itself: digits, letters and blanks only. */
+text *markup_xml_attribute_begin(markup_xml *x, const char *name);
+void markup_xml_attribute_end(markup_xml *x);
+void markup_xml_text(markup_xml *x, const char *value);
+void markup_xml_close(markup_xml *x);
+/* Open, text, close. `css_class` NULL: without. */
+void markup_xml_element(markup_xml *x, const char *name, const char *css_class, const char *value);
+/* <style> with the program's own style sheet, which holds none of < > &. */
+void markup_xml_style(markup_xml *x, const char *css);
+/* Ends the start tag and hands out the text, for whole elements that another writer puts here. */
+text *markup_xml_embed(markup_xml *x);
+
 /* One field of a CSV line (RFC 4180): quoted where it must be. A field that a spreadsheet would
  * take for a formula gets an apostrophe in front. `first`: no comma before it. */
 void markup_csv_field(text *out, const char *value, bool first);
