@@ -51,7 +51,6 @@ typedef struct layer {
   double max_spacing_m;    /* stud spacing; 0 = any of the catalog's */
   double max_spacing_single_m; /* as a single layer; 0 = as max_spacing_m */
   int min_steel_mil;       /* steel studs must be at least so thick; 0 = any */
-  double fire_minutes;     /* component-additive membrane time of one layer (IBC 722.6.2(1)); 0 = none */
 } layer;
 
 typedef enum frame_material { FRAME_WOOD, FRAME_STEEL } frame_material;
@@ -94,7 +93,6 @@ typedef struct fill {
   double thickness_m, density_kg_m3, mass_kg_m2, resistivity_pa_s_m2;
   bool wood_only;           /* dense-packed cellulose in ordinary build */
   bool special, ordinary;
-  bool dense;               /* earns the +15 min of component-additive fire */
 } fill;
 
 typedef struct mount {

@@ -76,7 +76,6 @@ static const field layer_fields[] = {
     {"max_spacing_single_m", FIELD_LENGTH, 0, 0.1, 2, 0, NULL,
      AT(raw_layer, l.max_spacing_single_m)},
     {"min_steel_mil", FIELD_INTEGER, 0, 10, 200, 0, NULL, AT(raw_layer, l.min_steel_mil)},
-    {"fire_minutes", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 240, 0, NULL, AT(raw_layer, l.fire_minutes)},
     {"said", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(raw_layer, said)},
     {"source", FIELD_STRING, REQUIRED, 0, 0, 0, NULL, AT(raw_layer, l.source)},
 };
@@ -131,7 +130,6 @@ static const field fill_fields[] = {
     {"resistivity_pa_s_m2", FIELD_NUMBER, POSITIVE, 0, 1e6, 0, NULL,
      AT(raw_fill, f.resistivity_pa_s_m2)},
     {"wood_only", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_fill, f.wood_only)},
-    {"dense", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_fill, f.dense)},
     {"ordinary", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(raw_fill, f.ordinary)},
     {"stock", FIELD_CHOICE, 0, 0, 0, 0, stocks, AT(raw_fill, stock)},
     {"said", FIELD_VALUE, 0, 0, 0, 0, NULL, AT(raw_fill, said)},

@@ -1,49 +1,20 @@
 /* Published ratings: which walls a row stands for, and the nearest rows in words.
  * Published source of every rating: National Building Code of Canada 2020, Table 9.10.3.1.-A. */
-#include <check.h>
-#include <setjmp.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
 
 #include "checks/evidence.h"
 #include "code_table.h"
-#include "wall/line.h"
+#include "shop.h"
 
-static jmp_buf failed;
-static arena *memory;
-static diag_list diags;
-static catalog *shipped;
 static table stc_table;
 
-static void setup(void) {
-  memory = arena_create(0, &failed);
-  ck_assert_ptr_nonnull(memory);
-  if (setjmp(failed)) ck_abort_msg("memory ran out");
-  diag_init(&diags, memory);
-  shipped = catalog_load(memory, &diags, TEST_ROOT "/catalogs");
-  for (size_t i = 0; i < diags.count; i++) fprintf(stderr, "%s\n", diags.items[i].message);
-  ck_assert_ptr_nonnull(shipped);
-}
-
-static void teardown(void) {
-  arena_free(memory);
-}
-
-static wall parsed(const char *line) {
-  wall w;
-  if (!line_parse(memory, &diags, shipped, line, &w)) {
-    for (size_t i = 0; i < diags.count; i++) fprintf(stderr, "%s\n", diags.items[i].message);
-    ck_abort_msg("cannot read %s", line);
-  }
-  return w;
-}
-
 static const wall_row *matched(const char *line) {
-  wall w = parsed(line);
-  const wall_row *row = evidence_match(shipped, &w);
-  wall m = wall_mirrored(shipped, &w);
-  const wall_row *mirrored = evidence_match(shipped, &m);
+  wall w = parse(line);
+  const wall_row *row = evidence_match(shop, &w);
+  wall m = wall_mirrored(shop, &w);
+  const wall_row *mirrored = evidence_match(shop, &m);
   ck_assert_msg((row == NULL) == (mirrored == NULL), "the mirror image differs: %s", line);
   if (row) ck_assert_msg(row->stc == mirrored->stc, "the mirror image differs: %s", line);
   return row;
@@ -151,9 +122,9 @@ static const near_case near_cases[] = {
 
 START_TEST(test_nearest) {
   const near_case *k = &near_cases[_i];
-  wall w = parsed(k->line);
+  wall w = parse(k->line);
   evidence e;
-  evidence_find(memory, shipped, &w, &e);
+  evidence_find(memory, shop, &w, &e);
   ck_assert_int_eq(e.nearest_count, EVIDENCE_NEAREST);
   ck_assert_msg(strcmp(e.nearest[0].row->id, k->id) == 0, "%s: nearest is %s, expected %s", k->line,
                 e.nearest[0].row->id, k->id);
@@ -172,9 +143,9 @@ START_TEST(test_line_is_the_row) {
   char line[256];
   int light = strcmp(table_get(&stc_table, _i, "steel_thickness_mm"), "0.46") == 0;
   table_line(&stc_table, _i, "stone", 0, light ? 18 : 54, 305, 0, line, sizeof line);
-  wall w = parsed(line);
+  wall w = parse(line);
   evidence e;
-  evidence_find(memory, shipped, &w, &e);
+  evidence_find(memory, shop, &w, &e);
   ck_assert_ptr_null(e.match); /* no row names 12 in */
   for (int i = 0; i < e.nearest_count; i++) {
     ck_assert_ptr_nonnull(e.nearest[i].line);
@@ -182,9 +153,9 @@ START_TEST(test_line_is_the_row) {
     ck_assert_msg(row != NULL, "%s: the line of %s is no row: %s", line, e.nearest[i].row->id,
                   e.nearest[i].line);
     ck_assert_int_eq(row->stc, e.nearest[i].row->stc);
-    wall published = parsed(e.nearest[i].line);
+    wall published = parse(e.nearest[i].line);
     evidence same;
-    evidence_find(memory, shipped, &published, &same);
+    evidence_find(memory, shop, &published, &same);
     ck_assert_ptr_eq(same.match, row);
   }
 }
@@ -192,17 +163,17 @@ END_TEST
 
 START_TEST(test_cautions) {
   evidence e;
-  wall w = parsed("2*gyp-13 | wood-89@406, glass-89 | 2*gyp-13");
-  evidence_find(memory, shipped, &w, &e);
+  wall w = parse("2*gyp-13 | wood-89@406, glass-89 | 2*gyp-13");
+  evidence_find(memory, shop, &w, &e);
   ck_assert_str_eq(e.match->id, "NBC-W2c");
   ck_assert_int_eq(e.caution_count, 1);
   ck_assert_ptr_nonnull(strstr(e.caution[0], "lighter"));
-  w = parsed("2*typex-16 | steel-92-18@610, glass-89 | typex-16");
-  evidence_find(memory, shipped, &w, &e);
+  w = parse("2*typex-16 | steel-92-18@610, glass-89 | typex-16");
+  evidence_find(memory, shop, &w, &e);
   ck_assert_int_eq(e.caution_count, 1);
   ck_assert_ptr_nonnull(strstr(e.caution[0], "15 mil"));
-  w = parsed("typex-16 | wood-89@406, glass-89 | typex-16");
-  evidence_find(memory, shipped, &w, &e);
+  w = parse("typex-16 | wood-89@406, glass-89 | typex-16");
+  evidence_find(memory, shop, &w, &e);
   ck_assert_int_eq(e.caution_count, 0);
   for (int i = 0; i < e.nearest_count; i++) ck_assert_ptr_ne(e.nearest[i].row, e.match);
 }

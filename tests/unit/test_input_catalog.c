@@ -231,8 +231,6 @@ START_TEST(records_hang_together) {
     ck_assert_msg(l->noncombustible == (l->material == LAYER_GYPSUM || l->material == LAYER_CEMENT),
                   "%s", l->id);
     if (l->shear) ck_assert_msg(l->material == LAYER_WOOD, "%s", l->id);
-    if (l->fire_minutes > 0)
-      ck_assert_msg(l->material == LAYER_GYPSUM || l->material == LAYER_WOOD, "%s", l->id);
   }
 }
 END_TEST
@@ -245,21 +243,6 @@ START_TEST(stiffness_of_gypsum) {
   double b = 1.9e9 * 0.0127 * 0.0127 * 0.0127 / (12 * (1 - 0.09));
   double found = c->layers[catalog_layer(c, "gyp-13")].bending_n_m;
   ck_assert_msg(fabs(found / b - 1) < share, "%f for %f", found, b);
-}
-END_TEST
-
-/* IBC Table 722.6.2(1), one layer. */
-static const struct {
-  const char *id;
-  double minutes;
-} fire_rows[] = {{"gyp-10", 10},   {"gyp-13", 15},      {"gyp-16", 30}, {"typex-13", 25},
-                 {"typex-16", 40}, {"ply-13", 10},      {"osb-11", 5},  {"cement-13", 0},
-                 {"damp-16", 0},   {"fibreboard-13", 0}};
-
-START_TEST(fire_minutes) {
-  const catalog *c = load();
-  ck_assert_double_eq(c->layers[catalog_layer(c, fire_rows[_i].id)].fire_minutes,
-                      fire_rows[_i].minutes);
 }
 END_TEST
 
@@ -559,7 +542,6 @@ int main(void) {
   tcase_add_test(t, composite_height);
   tcase_add_test(t, records_hang_together);
   tcase_add_test(t, stiffness_of_gypsum);
-  tcase_add_loop_test(t, fire_minutes, 0, ROWS(fire_rows));
   tcase_add_test(t, targets);
   tcase_add_loop_test(t, what_people_say, 0, ROWS(said_rows));
   tcase_add_test(t, nearest);
