@@ -60,6 +60,21 @@ void arena_free(arena *a) {
   free(a);
 }
 
+arena *arena_beside(const arena *a, jmp_buf *on_fail) {
+  /* a limit of 0 would be none: one byte serves nobody either */
+  size_t left = a->limit > a->used ? a->limit - a->used : 1;
+  return arena_create(a->limit == SIZE_MAX ? 0 : left, on_fail);
+}
+
+void arena_absorb(arena *a, arena *from) {
+  if (!from) return;
+  block **end = &a->blocks;
+  while (*end) end = &(*end)->next; /* behind: the block being filled stays first */
+  *end = from->blocks;
+  a->used += from->used;
+  free(from);
+}
+
 void arena_on_fail(arena *a, jmp_buf *on_fail) {
   a->on_fail = on_fail;
 }
@@ -102,7 +117,7 @@ void *arena_try(arena *a, size_t size) {
   if (must_fail()) return NULL;
   size_t align = size >= LINE_ALIGN ? LINE_ALIGN : SMALL_ALIGN;
   if (size == 0) size = 1;
-  if (size > a->limit - a->used) return NULL;
+  if (a->used > a->limit || size > a->limit - a->used) return NULL;
   block *b = a->blocks;
   unsigned char *start = b ? place_in(b, size, align) : NULL;
   if (!start) {

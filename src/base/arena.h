@@ -30,6 +30,11 @@ void *arena_grow(arena *a, const void *old, size_t old_bytes, size_t new_bytes);
 void *arena_try(arena *a, size_t size);
 /* Jumps to `on_fail` as if memory had run out: after closing what was open. */
 _Noreturn void arena_fail(arena *a);
+/* A new arena that may take what is left of `a`'s limit at this moment; for work that another thread
+ * does. NULL when memory ran out. */
+arena *arena_beside(const arena *a, jmp_buf *on_fail);
+/* Everything that came from `from` lives on in `a`; `from` itself is gone. NULL is fine. */
+void arena_absorb(arena *a, arena *from);
 /* Bytes handed out so far. */
 size_t arena_used(const arena *a);
 /* For tests: the n-th allocation from now on fails (0 = never), over all arenas; those after it
