@@ -58,6 +58,10 @@ typedef struct extent {
   double board_m2, batt_m2; /* a face, a row: openings deducted */
 } extent;
 
+double cost_boxes_per_10m(const brief *b) {
+  return b->boxes_given ? b->boxes_per_10m : rules.boxes_per_10m;
+}
+
 double cost_built_height_m(const brief *b) {
   if (b->top != TOP_CEILING) return b->height_m;
   double ceiling = fmax(b->ceiling_m[0], b->ceiling_m[1]);
@@ -252,8 +256,7 @@ static void put_seals(bag *g, const brief *b, const extent *e) {
       beads += joint;
   }
   put_work(g, WORK_SEALANT, beads);
-  double boxes = b->boxes_given ? b->boxes_per_10m : rules.boxes_per_10m;
-  put_work(g, WORK_BOX_PAD, 2 * boxes * e->length_m / 10);
+  put_work(g, WORK_BOX_PAD, 2 * cost_boxes_per_10m(b) * e->length_m / 10);
 }
 
 static void put_backing(bag *g, const brief *b, const extent *e, const frame *f) {
@@ -374,6 +377,25 @@ cost_parts cost_leaves(const price_book *book, const catalog *c, const brief *b,
   bag_start(&g, book, &e);
   fill_leaves(&g, b, &e, c, w);
   return bag_sum(&g);
+}
+
+static int note_needs(const bag *g, cost_need *out) {
+  int n = 0;
+  for (int i = 0; i < g->count; i++)
+    if (g->entry[i].bought > 0) out[n++] = (cost_need){g->entry[i].item, g->entry[i].bought};
+  return n;
+}
+
+int cost_needs(const price_book *book, const catalog *c, const brief *b, const wall *w,
+               cost_need out[COST_MAX_NEEDS]) {
+  extent e = extent_of(b);
+  bag g;
+  bag_start(&g, book, &e);
+  fill_core(&g, b, &e, c, w);
+  int n = note_needs(&g, out);
+  bag_start(&g, book, &e);
+  fill_leaves(&g, b, &e, c, w);
+  return n + note_needs(&g, out + n);
 }
 
 static long long tax_cents(const price_book *book, long long material) {

@@ -55,6 +55,8 @@ long long cost_cents(double amount);
 /* The height that is built: to the ceiling (plus what stands above it) where the wall stops there,
  * else the brief's. */
 double cost_built_height_m(const brief *b);
+/* Electrical boxes a side in 10 m of wall: the brief's, else what is usual. */
+double cost_boxes_per_10m(const brief *b);
 /* The stock length that the studs of a wall are cut from. */
 double cost_stud_length_m(const price_book *book, const catalog *c, const brief *b, const wall *w);
 /* The full takeoff with markup lines. `book` was read with `c`. */
@@ -64,6 +66,15 @@ void cost_takeoff(const price_book *book, const catalog *c, const brief *b, cons
  * record, spacing and mounts matter, and of these only the spacing of each side's supports. */
 cost_parts cost_core(const price_book *book, const catalog *c, const brief *b, const wall *core);
 cost_parts cost_leaves(const price_book *book, const catalog *c, const brief *b, const wall *w);
+/* What a wall needs of an item, waste included, in takeoff units. */
+typedef struct cost_need {
+  int item; /* in the price book; the same item may come twice */
+  double quantity;
+} cost_need;
+enum { COST_MAX_NEEDS = 112 }; /* twice the items of a core or of two leaves */
+/* What the takeoff's material lines say, whatever the items' prices; how many. */
+int cost_needs(const price_book *book, const catalog *c, const brief *b, const wall *w,
+               cost_need out[COST_MAX_NEEDS]);
 /* Markups and total from summed parts; the same arithmetic that cost_takeoff uses. */
 cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, cost_parts core,
                     cost_parts leaves);

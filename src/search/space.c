@@ -17,6 +17,7 @@ typedef struct builder {
   arena *arena;
   const catalog *catalog;
   const brief *brief;
+  space_wish wish;
   compat_level most; /* what a finding may be at most */
   space *out;
   size_t face_cap, core_cap;
@@ -104,7 +105,7 @@ static bool backs(const builder *u, int finish, int back) {
   const layer *f = &u->catalog->layers[finish], *l = &u->catalog->layers[back];
   if (back == finish || l->membrane || !layer_usable(u, back)) return false;
   if (l->backing || l->material == LAYER_CEMENT) return true;
-  bool asked = any_build(u) || rooms_particular(u->brief);
+  bool asked = any_build(u) || u->wish.finishes_mixed;
   return l->material == LAYER_GYPSUM && (f->abuse || f->moisture) && asked;
 }
 
@@ -280,12 +281,11 @@ static void build_supports(builder *u) {
 static void build_pairs(builder *u) {
   space *s = u->out;
   size_t n = (size_t)s->face_count;
-  bool may_differ = rooms_differ(u->brief);
   s->pair = arena_array(u->arena, n * n, sizeof *s->pair);
   for (size_t i = 0; i < n; i++)
     for (size_t j = 0; j < n; j++) {
       bool same_board = s->faces[i].layer[0] == s->faces[j].layer[0];
-      if (!same_board && !may_differ) continue;
+      if (!same_board && !u->wish.finishes_differ) continue;
       s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <=
                            (same_board ? u->most : COMPAT_FINE);
     }
@@ -347,15 +347,24 @@ static bool rooms_alike(const brief *b) {
          p->finish_level == q->finish_level && same_ceiling && b->shear_side == CATALOG_NONE;
 }
 
-void space_build(arena *a, const judge_context *x, space *out) {
-  *out = (space){.context = x, .mirror_once = rooms_alike(x->brief)};
-  builder u = {.arena = a, .catalog = x->catalog, .brief = x->brief, .out = out};
+space_wish space_wishes(const brief *b) {
+  return (space_wish){rooms_particular(b), rooms_differ(b), rooms_alike(b)};
+}
+
+void space_build_for(arena *a, const judge_context *x, const space_wish *wish, space *out) {
+  *out = (space){.context = x, .mirror_once = wish->mirror_once};
+  builder u = {.arena = a, .catalog = x->catalog, .brief = x->brief, .wish = *wish, .out = out};
   u.most = x->brief->build == BUILD_ANY ? COMPAT_UNUSUAL : COMPAT_FINE;
   build_faces(&u);
   build_cores(&u);
   build_supports(&u);
   build_pairs(&u);
   build_texts(&u);
+}
+
+void space_build(arena *a, const judge_context *x, space *out) {
+  space_wish wish = space_wishes(x->brief);
+  space_build_for(a, x, &wish, out);
 }
 
 bool space_legal(const space *s, int core, int face_a, int face_b) {

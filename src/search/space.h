@@ -28,6 +28,18 @@ typedef struct space {
       **core_text; /* pieces of the wall line: a face; what stands between the faces */
 } space;
 
+/* What the rooms on both sides ask of the axes. */
+typedef struct space_wish {
+  bool finishes_mixed;  /* some room is wet or abused: such boards may stand over plain ones */
+  bool finishes_differ; /* and not all are alike in it: the sides may have different boards */
+  bool mirror_once;     /* one of two mirror images stands for both */
+} space_wish;
+
+/* What one brief asks. */
+space_wish space_wishes(const brief *b);
+/* As space_build, for the rooms of several briefs; of the context's brief only build and `only`
+ * matter. */
+void space_build_for(arena *a, const judge_context *x, const space_wish *wish, space *out);
 /* Builds the axes after `only`, `without` (kept, as rules), build and compatibility. */
 void space_build(arena *a, const judge_context *x, space *out);
 /* Whether face i on A and j on B may stand on core k. */
