@@ -1,12 +1,12 @@
 #include "report/view.h"
 
+#include <math.h>
 #include <string.h>
 
 /* --- what it is ------------------------------------------------------------------------------ */
 
-static void add_part(view_parts *out, const char *where, const char *what, double thickness_m) {
-  if (out->count == VIEW_MAX_PARTS) return;
-  out->part[out->count++] = (view_part){where, what, thickness_m};
+static void add_part(view_parts *out, view_part part) {
+  if (out->count < VIEW_MAX_PARTS) out->part[out->count++] = part;
 }
 
 /* "24 in" or "610 mm": nominal spacings are whole inches. */
@@ -24,8 +24,8 @@ static void add_face(const report *r, view_parts *out, const char *where, const 
     int index = f->layer[at], n = 1;
     while (i + n < f->count && f->layer[backwards ? at - n : at + n] == index) n++;
     const layer *l = &r->catalog->layers[index];
-    add_part(out, where, n == 1 ? l->name : text_format(r->arena, "%d x %s", n, l->name),
-             n * l->thickness_m);
+    const char *what = n == 1 ? l->name : text_format(r->arena, "%d x %s", n, l->name);
+    add_part(out, (view_part){where, what, n * l->thickness_m, VIEW_LAYERS, index, n});
     i += n;
   }
 }
@@ -37,7 +37,8 @@ static void add_mount(const report *r, view_parts *out, const wall *w, int side)
   const char *what = text_format(r->arena, "%s at %s", type->name, spacing_words(r, m->spacing_mm));
   if (m->clip_spacing_mm > 0)
     what = text_format(r->arena, "%s, clips at %s", what, spacing_words(r, m->clip_spacing_mm));
-  add_part(out, side == SIDE_A ? "mount A" : "mount B", what, type->depth_m);
+  const char *where = side == SIDE_A ? "mount A" : "mount B";
+  add_part(out, (view_part){where, what, type->depth_m, VIEW_MOUNT, m->mount, 1});
 }
 
 static void add_row(const report *r, view_parts *out, const wall *w, int row) {
@@ -45,13 +46,12 @@ static void add_row(const report *r, view_parts *out, const wall *w, int row) {
   const char *where = f->rows == 1 ? "frame" : row == 0 ? "row A" : "row B";
   int single = f->rows == 1 ? CATALOG_NONE : catalog_frame(r->catalog, f->stud);
   const char *name = single == CATALOG_NONE ? f->name : r->catalog->frames[single].name;
-  add_part(out, where,
-           text_format(r->arena, "%s at %s on centre", name, spacing_words(r, w->spacing_mm)),
-           f->row_depth_m);
+  const char *what =
+      text_format(r->arena, "%s at %s on centre", name, spacing_words(r, w->spacing_mm));
+  add_part(out, (view_part){where, what, f->row_depth_m, VIEW_ROW, w->frame, 1});
   int filled = w->fill[row];
-  add_part(out, "fill",
-           filled == CATALOG_NONE ? "none: the bays are empty" : r->catalog->fills[filled].name,
-           0.0);
+  what = filled == CATALOG_NONE ? "none: the bays are empty" : r->catalog->fills[filled].name;
+  add_part(out, (view_part){"fill", what, 0.0, VIEW_FILL, filled, 1});
 }
 
 void view_parts_of(const report *r, const wall *w, view_parts *out) {
@@ -62,7 +62,8 @@ void view_parts_of(const report *r, const wall *w, view_parts *out) {
   add_row(r, out, w, 0);
   if (r->catalog->frames[w->frame].rows > 1) {
     add_face(r, out, "inner A", &w->inner[SIDE_A], true);
-    add_part(out, "gap", "air between the rows, nothing across", w->gap_mm * 1e-3);
+    add_part(out, (view_part){"gap", "air between the rows, nothing across", w->gap_mm * 1e-3,
+                              VIEW_GAP, CATALOG_NONE, 1});
     add_face(r, out, "inner B", &w->inner[SIDE_B], false);
     add_row(r, out, w, 1);
   }
@@ -114,11 +115,30 @@ const char *view_line_kind(const cost_line *l) {
   return kinds[l->kind];
 }
 
+long long view_in_cents(double amount) {
+  double minor = amount * 100.0;
+  return (long long)(minor < 0.0 ? minor - 0.5 : minor + 0.5);
+}
+
+const char *view_cents(const report *r, long long cents) {
+  text t;
+  text_init(&t, r->arena, 64);
+  text_cents(&t, cents, true);
+  return t.data;
+}
+
+const char *view_area(const report *r) {
+  return r->units == UNITS_US ? "ft2" : "m2";
+}
+
+double view_per_area(const report *r, double per_m2) {
+  return r->units == UNITS_US ? per_m2 * UNITS_M2_PER_FT2 : per_m2;
+}
+
 const char *view_money(const report *r, double amount, const char *per) {
   text t;
   text_init(&t, r->arena, 200);
-  double minor = amount * 100.0;
-  text_cents(&t, (long long)(minor < 0.0 ? minor - 0.5 : minor + 0.5), true);
+  text_cents(&t, view_in_cents(amount), true);
   text_putf(&t, " %s", r->prices != NULL ? r->prices->currency : "");
   if (per != NULL) text_putf(&t, " per %s", per);
   return t.data;
@@ -163,9 +183,23 @@ bool view_published(const assessment *x, sound_metric metric) {
   return x->evidence.match != NULL && metric == METRIC_STC;
 }
 
-double view_confidence(const report *r) {
+double view_usual_confidence(void) {
   enum { USUAL_PERCENT = 80 }; /* the brief's default */
-  return r->brief->target_count > 0 ? r->brief->targets[0].confidence : USUAL_PERCENT / 100.0;
+  return USUAL_PERCENT / 100.0;
+}
+
+double view_confidence(const report *r) {
+  return r->brief->target_count > 0 ? r->brief->targets[0].confidence : view_usual_confidence();
+}
+
+const char *view_ratings(const report *r, const ratings *v) {
+  return text_format(r->arena, "STC %d, Rw %d (C %d, Ctr %d), OITC %d", v->stc, v->rw, v->c, v->ctr,
+                     v->oitc);
+}
+
+const char *view_sureness(const report *r, double probability) {
+  const double last_bits = 1e-9;
+  return text_of(r->arena, floor(100.0 * probability + last_bits), 0);
 }
 
 int view_assured(const report *r, const assessment *x, sound_metric metric, double confidence) {

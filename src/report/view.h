@@ -4,11 +4,16 @@
 
 #include "report/report.h"
 
+typedef enum view_kind { VIEW_LAYERS, VIEW_MOUNT, VIEW_ROW, VIEW_FILL, VIEW_GAP } view_kind;
+
 /* One thing a wall is made of, in plain words, in the order one meets it from room A to room B. */
 typedef struct view_part {
   const char *where;  /* "side A", "mount A", "frame", "fill", ... */
   const char *what;   /* "2 x 5/8 in Type X gypsum board" */
   double thickness_m; /* what it adds to the wall; 0 = nothing (a fill stands in the frame) */
+  view_kind kind;
+  int record; /* catalog index: layer, mount, frame, fill; CATALOG_NONE: empty bays, gap */
+  int copies; /* equal layers, one on the other */
 } view_part;
 
 enum { VIEW_MAX_PARTS = 48 };
@@ -42,6 +47,13 @@ const char *view_item(const report *r, const cost_line *l);
 const char *view_line_kind(const cost_line *l);
 /* "2,430.10 USD" without, "9.00 USD per ft2" with a unit. */
 const char *view_money(const report *r, double amount, const char *per);
+/* "2,430.10", without the currency. */
+const char *view_cents(const report *r, long long cents);
+/* Minor units, half away from zero. */
+long long view_in_cents(double amount);
+/* "ft2" or "m2", and what a figure per m2 is per that. */
+const char *view_area(const report *r);
+double view_per_area(const report *r, double per_m2);
 /* "183,456" */
 void view_count(text *out, long long count);
 /* "STC 50 in the laboratory, 80 % sure" */
@@ -50,6 +62,12 @@ const char *view_target(const report *r, const target *t);
  * without a target). */
 int view_assured(const report *r, const assessment *x, sound_metric metric, double confidence);
 double view_confidence(const report *r);
+/* What a brief gets that says none: 0.8. */
+double view_usual_confidence(void);
+/* "STC 47, Rw 46 (C -6, Ctr -14), OITC 25" */
+const char *view_ratings(const report *r, const ratings *v);
+/* A probability in per cent, never rounded up: 79.9 % is not 80 %. */
+const char *view_sureness(const report *r, double probability);
 /* Whether the metric of this wall stands on a published rating. */
 bool view_published(const assessment *x, sound_metric metric);
 /* "optimal", "infeasible", "limit": what the solver proved. */
