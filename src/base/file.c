@@ -211,3 +211,8 @@ const char *file_join(arena *a, const char *folder, const char *name) {
   bool bare = n == 0 || folder[n - 1] == '/';
   return text_format(a, "%s%s%s", folder, bare ? "" : "/", name);
 }
+
+const char *file_name(const char *path) {
+  const char *slash = strrchr(path, '/');
+  return slash ? slash + 1 : path;
+}

@@ -20,5 +20,7 @@ bool file_same(const char *one, const char *other);
 /* `relative` seen from the folder of `file`; absolute paths stay. */
 const char *file_beside(arena *a, const char *file, const char *relative);
 const char *file_join(arena *a, const char *folder, const char *name);
+/* The last part of `path`, in it. */
+const char *file_name(const char *path);
 
 #endif
