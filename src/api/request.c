@@ -81,6 +81,7 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
                          .prices = out->prices,
                          .brief = &out->brief,
                          .asked = brief_path != NULL,
+                         .usual_prices = !options->prices && !out->brief.prices,
                          .units = out->brief.units};
   return true;
 }

@@ -12,7 +12,8 @@ typedef struct report {
   const price_book *prices;
   const brief *brief;
   bool asked;         /* somebody gave this brief; false: the reference wall, nothing is asked */
-  units_system units; /* of text and CSV; JSON is SI */
+  bool usual_prices;  /* neither brief nor options name the price book */
+  units_system units; /* of text, CSV and pages; JSON is SI */
 } report;
 
 void report_rate_text(const report *r, const assessment *x, text *out);

@@ -41,19 +41,8 @@ static void put_parts(const report *r, const assessment *x, text *out) {
 
 /* --- sound ----------------------------------------------------------------------------------- */
 
-static const char *ratings_words(const report *r, const ratings *v) {
-  return text_format(r->arena, "STC %d, Rw %d (C %d, Ctr %d), OITC %d", v->stc, v->rw, v->c, v->ctr,
-                     v->oitc);
-}
-
 static const char *percent(const report *r, double share) {
   return text_of(r->arena, 100.0 * share, 0);
-}
-
-/* A probability, never rounded up: 79.9 % is not 80 %. */
-static const char *sureness(const report *r, double probability) {
-  const double last_bits = 1e-9;
-  return text_of(r->arena, floor(100.0 * probability + last_bits), 0);
 }
 
 static void put_basis(const report *r, const assessment *x, text *out) {
@@ -90,7 +79,7 @@ static void put_targets(const report *r, const assessment *x, text *out) {
     const target *t = &r->brief->targets[i];
     const char *found = view_published(x, t->metric)
                             ? text_format(r->arena, "published STC %d", x->ratings.stc)
-                            : text_format(r->arena, "%s %% sure", sureness(r, x->probability[i]));
+                            : text_format(r->arena, "%s %% sure", view_sureness(r, x->probability[i]));
     page_line(out, "",
               text_format(r->arena, "Target %s: %s.%s", view_target(r, t), found,
                           count == 1 ? verdict : ""));
@@ -119,17 +108,17 @@ static void put_evidence(const report *r, const assessment *x, text *out) {
 }
 
 static void put_sound(const report *r, const assessment *x, text *out) {
-  page_line(out, "Sound", text_format(r->arena, "%s.", ratings_words(r, &x->ratings)));
+  page_line(out, "Sound", text_format(r->arena, "%s.", view_ratings(r, &x->ratings)));
   put_basis(r, x, out);
   put_targets(r, x, out);
   if (x->mounted)
     page_line(out, "",
               text_format(r->arena, "If a fixture or a long screw bridges the mount: %s (%s).",
-                          ratings_words(r, &x->short_predicted.ratings), x->short_line));
+                          view_ratings(r, &x->short_predicted.ratings), x->short_line));
   if (x->has_composite)
     page_line(out, "",
               text_format(r->arena, "With its openings: %s; no wall gets past STC %s with these.",
-                          ratings_words(r, &x->composite),
+                          view_ratings(r, &x->composite),
                           text_of(r->arena, x->composite_ceiling, 1)));
   put_evidence(r, x, out);
 }

@@ -24,7 +24,12 @@ static void set_up(void) {
   ck_assert_ptr_nonnull(shipped);
   job_defaults(&asked);
   book = (price_book){.currency = "USD"};
-  usual = (report){memory, shipped, &book, &asked, true, UNITS_US};
+  usual = (report){.arena = memory,
+                   .catalog = shipped,
+                   .prices = &book,
+                   .brief = &asked,
+                   .asked = true,
+                   .units = UNITS_US};
 }
 
 static void tear_down(void) {
