@@ -1,6 +1,7 @@
 /* The one list of errors: number, name, what it means. docs/errors.md is checked against it.
- * Families: 1xx usage, 20x JSON text and CSV, 21x fields, 22x catalogs, 23x prices, 24x briefs, 25x
- * listings and tests reports, 3xx walls, 4xx system, 5xx internal. Numbers are never reused. */
+ * Families: 1xx usage, 20x JSON text and CSV, 21x fields, 22x catalogs, 23x prices, 24x briefs and
+ * schedules, 25x listings and tests reports, 3xx walls, 4xx system, 5xx internal. Numbers are never
+ * reused. */
 #ifndef BASE_ERRORS_H
 #define BASE_ERRORS_H
 
@@ -30,6 +31,7 @@
   X(234, PRICE_BREAK, "a quantity break costs more than a smaller quantity")                       \
   X(235, PRICE_UNIT, "a supplier's unit cannot be turned into the item's")                         \
   X(241, BRIEF_CONTRADICTION, "the brief contradicts itself")                                      \
+  X(242, SCHEDULE_DUPLICATE_ID, "an id stands twice in a wall schedule")                           \
   X(301, WALL_SYNTAX, "the wall line cannot be read")                                              \
   X(302, WALL_UNKNOWN_ID, "the wall names an id that no catalog has")                              \
   X(303, WALL_ILLEGAL, "the wall cannot be built")                                                 \

@@ -4,7 +4,7 @@
 #include <string.h>
 
 #include "base/file.h"
-#include "input/fields.h"
+#include "input/job_fields.h"
 
 #define COUNT(table) (sizeof(table) / sizeof((table)[0]))
 
@@ -13,14 +13,14 @@ enum { MAX_FINISH_LEVEL = 5, MAX_PATHS = 16 };
 
 static const char *const unit_words[] = {"us", "si", NULL};
 static const char *const code_words[] = {"none", "ibc", "nbc", NULL};
-static const char *const basis_words[] = {"lab", "field", NULL};
-static const char *const evidence_words[] = {"any", "published", NULL};
-static const char *const scope_words[] = {"wall", "composite", NULL};
-static const char *const fastening_words[] = {"none", "light", "heavy", NULL};
-static const char *const noncombustible_words[] = {"no", "strict", "frt_ok", NULL};
-static const char *const shear_words[] = {"none", "a", "b", NULL};
-static const char *const top_words[] = {"deck", "ceiling", NULL};
-static const char *const head_words[] = {"rigid", "slip", NULL};
+const char *const job_basis_words[] = {"lab", "field", NULL};
+const char *const job_evidence_words[] = {"any", "published", NULL};
+const char *const job_scope_words[] = {"wall", "composite", NULL};
+const char *const job_fastening_words[] = {"none", "light", "heavy", NULL};
+const char *const job_noncombustible_words[] = {"no", "strict", "frt_ok", NULL};
+const char *const job_shear_words[] = {"none", "a", "b", NULL};
+const char *const job_top_words[] = {"deck", "ceiling", NULL};
+const char *const job_head_words[] = {"rigid", "slip", NULL};
 static const char *const build_words[] = {"ordinary", "any", NULL};
 
 static const char opening_source[] = "common practice, no source";
@@ -35,11 +35,7 @@ const opening_kind job_opening_kinds[] = {
 };
 const int job_opening_kind_count = (int)COUNT(job_opening_kinds);
 
-typedef struct reader {
-  arena *arena;
-  diag_list *diags;
-  const catalog *catalog;
-} reader;
+typedef job_reader reader;
 
 static void contradiction(reader *r, const json_value *v, const char *message) {
   diag_add(r->diags, DIAG_ERROR, ERROR_BRIEF_CONTRADICTION, json_place(r->arena, v), "%s", message);
@@ -98,10 +94,10 @@ static void read_target(reader *r, const json_value *v, brief *out) {
   const field table[] = {
       {"metric", FIELD_CHOICE, 0, 0, 0, 0, metrics, AT(t.metric)},
       {"value", FIELD_NUMBER, FIELD_REQUIRED, 1, 100, 0, NULL, AT(t.value)},
-      {"basis", FIELD_CHOICE, 0, 0, 0, 0, basis_words, AT(t.basis)},
+      {"basis", FIELD_CHOICE, 0, 0, 0, 0, job_basis_words, AT(t.basis)},
       {"confidence", FIELD_NUMBER, 0, 0.5, 0.999, 0, NULL, AT(t.confidence)},
-      {"evidence", FIELD_CHOICE, 0, 0, 0, 0, evidence_words, AT(t.evidence)},
-      {"scope", FIELD_CHOICE, 0, 0, 0, 0, scope_words, AT(scope)},
+      {"evidence", FIELD_CHOICE, 0, 0, 0, 0, job_evidence_words, AT(t.evidence)},
+      {"scope", FIELD_CHOICE, 0, 0, 0, 0, job_scope_words, AT(scope)},
       {"margin", FIELD_NUMBER, 0, 0, 30, 0, NULL, AT(t.margin)},
   };
   raw_target raw = {.t = {.metric = METRIC_STC, .confidence = 0.8}, .scope = -1};
@@ -216,8 +212,8 @@ static void read_wall(reader *r, const json_value *v, brief *out) {
        AT(ceiling_m[0])},
       {"ceiling_b_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL,
        AT(ceiling_m[1])},
-      {"top", FIELD_CHOICE, 0, 0, 0, 0, top_words, AT(top)},
-      {"head", FIELD_CHOICE, 0, 0, 0, 0, head_words, AT(head)},
+      {"top", FIELD_CHOICE, 0, 0, 0, 0, job_top_words, AT(top)},
+      {"head", FIELD_CHOICE, 0, 0, 0, 0, job_head_words, AT(head)},
   };
   read_object(r, v, table, COUNT(table), out);
   for (int i = 0; v && i < 2; i++)
@@ -262,14 +258,22 @@ typedef struct raw_structure {
   const json_value *deflection;
 } raw_structure;
 
+bool job_span(const char *words, double *span) {
+  static const double most = 2000;
+  const char *p = text_starts(words, "L/") || text_starts(words, "l/") ? words + 2 : words;
+  double found = 0;
+  for (; *p; p++)
+    found = *p >= '0' && *p <= '9' && found < most ? found * 10 + (*p - '0') : most + 1;
+  if (found < JOB_SPAN_MIN || found > JOB_SPAN_MAX) return false;
+  *span = found;
+  return true;
+}
+
 /* 240, or "L/240". */
 static void read_deflection(reader *r, const json_value *v, brief *out) {
-  static const double least = 60, most = 2000;
   double span = v->kind == JSON_NUMBER ? v->number : 0;
-  if (v->kind == JSON_STRING && text_starts(v->string, "L/"))
-    for (const char *p = v->string + 2; *p; p++)
-      span = *p >= '0' && *p <= '9' && span < most ? span * 10 + (*p - '0') : most + 1;
-  if (span >= least && span <= most) {
+  bool words = v->kind == JSON_STRING && text_starts(v->string, "L/") && job_span(v->string, &span);
+  if (words || (span >= JOB_SPAN_MIN && span <= JOB_SPAN_MAX)) {
     out->deflection = span;
     return;
   }
@@ -282,8 +286,8 @@ static void read_structure(reader *r, const json_value *v, brief *out) {
   static const field table[] = {
       {"loadbearing", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(loadbearing)},
       {"floors_above", FIELD_INTEGER, FIELD_NULL_OK, 0, 100, 0, NULL, AT(floors_above)},
-      {"noncombustible", FIELD_CHOICE, 0, 0, 0, 0, noncombustible_words, AT(noncombustible)},
-      {"shear_side", FIELD_CHOICE, 0, 0, 0, 0, shear_words, AT(shear)},
+      {"noncombustible", FIELD_CHOICE, 0, 0, 0, 0, job_noncombustible_words, AT(noncombustible)},
+      {"shear_side", FIELD_CHOICE, 0, 0, 0, 0, job_shear_words, AT(shear)},
       {"lateral_pa", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 10000, 0, NULL, AT(lateral_pa)},
       {"lateral_psf", FIELD_NUMBER, FIELD_ABOVE_MIN, 0, 10000, UNITS_PA_PER_PSF, NULL,
        AT(lateral_pa)},
@@ -310,7 +314,7 @@ typedef struct raw_sides {
 static void read_side(reader *r, const json_value *v, const brief *b, room_side *out) {
   static const field table[] = {
       {"room", FIELD_STRING, 0, 0, 0, 0, NULL, AT(room)},
-      {"fastening", FIELD_CHOICE, 0, 0, 0, 0, fastening_words, AT(fastening)},
+      {"fastening", FIELD_CHOICE, 0, 0, 0, 0, job_fastening_words, AT(fastening)},
       {"fastening_length_m", FIELD_LENGTH, 0, 0, 1000, 0, NULL, AT(fastening_length_m)},
       {"wet", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(wet)},
       {"abuse", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(abuse)},
@@ -483,18 +487,12 @@ static int read_paths(reader *r, const json_value *v, const char *file, const ch
 
 /* ---- the brief ---- */
 
-typedef struct raw_brief {
-  brief b;
-  const json_value *building, *wall, *target, *targets, *limits, *structure, *sides, *services,
-      *openings, *allowance;
-  const json_value *only, *without, *listings, *reports;
-} raw_brief;
 _Static_assert(COUNT(((brief *)0)->listings) == MAX_PATHS &&
                    COUNT(((brief *)0)->reports) == MAX_PATHS,
                "places for paths");
 
-#define AT(member) offsetof(raw_brief, member)
-static const field brief_fields[] = {
+#define AT(member) offsetof(job_raw, member)
+const field job_fields[] = {
     {"title", FIELD_STRING, 0, 0, 0, 0, NULL, AT(b.title)},
     {"note", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
     {"source", FIELD_IGNORE, 0, 0, 0, 0, NULL, 0},
@@ -522,8 +520,9 @@ static const field brief_fields[] = {
     {"reports", FIELD_VALUE, FIELD_NULL_OK, 0, 0, 0, NULL, AT(reports)},
 };
 #undef AT
+const size_t job_field_count = COUNT(job_fields);
 
-static void read_lists(reader *r, const json_value *root, const raw_brief *raw, brief *out) {
+static void read_lists(reader *r, const json_value *root, const job_raw *raw, brief *out) {
   out->only_count = read_patterns(r, raw->only, out->only);
   out->without_count = read_patterns(r, raw->without, out->without);
   out->listing_count = read_paths(r, raw->listings, root->file, out->listings);
@@ -539,28 +538,33 @@ static void check_whole(reader *r, const json_value *root, const brief *b) {
             "without a code and without listings no wall can be shown to have a fire rating");
 }
 
+void job_take(job_reader *r, const json_value *root, const job_raw *raw, bool target_required,
+              brief *out) {
+  *out = raw->b;
+  out->file = root->file;
+  read_building(r, raw->building, out);
+  read_wall(r, raw->wall, out);
+  read_targets(r, root, raw->target, raw->targets, target_required, out);
+  read_limits(r, raw->limits, out);
+  read_structure(r, raw->structure, out);
+  read_sides(r, raw->sides, out);
+  read_services(r, raw->services, out);
+  read_openings(r, raw->openings, out);
+  read_allowance(r, raw->allowance, out);
+  read_lists(r, root, raw, out);
+  check_whole(r, root, out);
+}
+
 bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root,
               bool target_required, brief *out) {
   size_t before = d->errors, first = d->count;
-  reader r = {a, d, c};
+  job_reader r = {a, d, c};
   job_defaults(out);
   if (!json_is(a, d, root, "brief")) return false;
-  raw_brief *raw = arena_alloc(a, sizeof *raw);
+  job_raw *raw = arena_alloc(a, sizeof *raw);
   raw->b = *out;
-  read_object(&r, root, brief_fields, COUNT(brief_fields), raw);
-  *out = raw->b;
-  out->file = root->file;
-  read_building(&r, raw->building, out);
-  read_wall(&r, raw->wall, out);
-  read_targets(&r, root, raw->target, raw->targets, target_required, out);
-  read_limits(&r, raw->limits, out);
-  read_structure(&r, raw->structure, out);
-  read_sides(&r, raw->sides, out);
-  read_services(&r, raw->services, out);
-  read_openings(&r, raw->openings, out);
-  read_allowance(&r, raw->allowance, out);
-  read_lists(&r, root, raw, out);
-  check_whole(&r, root, out);
+  read_object(&r, root, job_fields, COUNT(job_fields), raw);
+  job_take(&r, root, raw, target_required, out);
   diag_sort(d, first);
   return d->errors == before;
 }
