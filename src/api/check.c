@@ -4,6 +4,7 @@
 #include "api/call.h"
 #include "api/request.h"
 #include "input/rows.h"
+#include "wall/compat.h"
 #include "wall/line.h"
 
 typedef struct check_job {
@@ -36,7 +37,7 @@ static bool check_wall(call *k, const catalog *c, const json_value *root) {
   wall w = wall_empty();
   const char *name = NULL;
   return line_from_json(k->memory, &k->diags, c, root, &w, &name) &&
-         request_buildable(k, c, root->file, &w);
+         compat_buildable(&k->diags, (diag_place){root->file, 0, 0, NULL}, c, &w);
 }
 
 /* A listing's boards are looked up in the catalog as they are when a brief names it. */
@@ -45,6 +46,14 @@ static bool check_listing(call *k, const catalog *c, const json_value *root) {
   alone.published_count = 0;
   return rows_read(k->memory, &k->diags, root, "listing", &alone.fire, &alone.fire_count) &&
          rows_check_ids(k->memory, &k->diags, &alone);
+}
+
+static bool check_report(call *k, const catalog *c, const json_value *root) {
+  tested_wall *tested = NULL;
+  size_t count = 0;
+  if (!tested_read(k->memory, &k->diags, c, root, &tested, &count)) return false;
+  for (size_t i = 0; i < count; i++) request_check_curve(k, &tested[i]);
+  return true;
 }
 
 static const struct check_kind {
@@ -56,7 +65,7 @@ static const struct check_kind {
     {"fire", check_catalog},      {"frames", check_catalog},
     {"listing", check_listing},   {"mounts", check_catalog},
     {"price-book", check_prices}, {"project", NULL},
-    {"published", check_catalog}, {"report", NULL},
+    {"published", check_catalog}, {"report", check_report},
     {"targets", check_catalog},   {"wall", check_wall},
 };
 enum { CHECK_KINDS = sizeof check_kinds / sizeof check_kinds[0] };

@@ -2,11 +2,13 @@
 
 #include <string.h>
 
+#include "acoustics/rating.h"
 #include "api/data.h"
 #include "base/file.h"
 #include "input/rows.h"
 #include "wall/compat.h"
 #include "wall/line.h"
+#include "wall/tested.h"
 
 /* Rating without a brief: cost and height are those of this wall. */
 static const double REFERENCE_LENGTH_M = 10.0, REFERENCE_HEIGHT_M = 3.0;
@@ -43,20 +45,47 @@ static bool add_listing(call *k, catalog *c, const char *path) {
   return true;
 }
 
-/* The user's fire listings stand beside the fire rows of the catalog, in a copy: the handle's rows
- * stay as they are. */
-static bool add_listings(call *k, const brief *b, catalog *c) {
-  if (b->report_count > 0)
-    diag_add(&k->diags, DIAG_WARNING, ERROR_FILE_KIND,
-             (diag_place){.file = b->file, .path = "$.reports"},
-             "test reports (report/1) are not read by this version: they are left out");
-  if (b->listing_count == 0) return true;
+void request_check_curve(call *k, const tested_wall *t) {
+  int found = rating_stc(t->tl_db, true);
+  if (!t->has_bands || found == t->row.stc) return;
+  diag_add(&k->diags, DIAG_WARNING, ERROR_FIELD_CONFLICT, json_place(k->memory, t->stc),
+           "expected STC %d, that of the curve by ASTM E413, found %d: the lower one is taken", found,
+           t->row.stc);
+}
+
+static bool add_report(call *k, catalog *c, const char *path) {
+  const json_value *root = json_load(k->memory, &k->diags, path);
+  tested_wall *tested = NULL;
+  size_t count = 0;
+  if (root == NULL || !tested_read(k->memory, &k->diags, c, root, &tested, &count)) return false;
+  wall_row *all = arena_array(k->memory, c->published_count + count, sizeof *all);
+  if (c->published_count > 0) memcpy(all, c->published, c->published_count * sizeof *all);
+  for (size_t i = 0; i < count; i++) {
+    wall_row *row = &all[c->published_count + i];
+    request_check_curve(k, &tested[i]);
+    *row = tested[i].row;
+    if (tested[i].has_bands && rating_stc(tested[i].tl_db, true) < row->stc)
+      row->stc = rating_stc(tested[i].tl_db, true);
+  }
+  c->published = all;
+  c->published_count += count;
+  return true;
+}
+
+/* The user's fire listings and test reports stand beside the rows of the catalog, in copies: the
+ * handle's rows stay as they are. */
+static bool add_evidence(call *k, const brief *b, catalog *c) {
+  if (b->listing_count == 0 && b->report_count == 0) return true;
+  wall_row *fire = arena_array(k->memory, c->fire_count, sizeof *fire);
   wall_row *published = arena_array(k->memory, c->published_count, sizeof *published);
+  if (c->fire_count > 0) memcpy(fire, c->fire, c->fire_count * sizeof *fire);
   if (c->published_count > 0)
     memcpy(published, c->published, c->published_count * sizeof *published);
+  c->fire = fire;
   c->published = published;
   bool sound = true;
   for (int i = 0; i < b->listing_count; i++) sound = add_listing(k, c, b->listings[i]) && sound;
+  for (int i = 0; i < b->report_count; i++) sound = add_report(k, c, b->reports[i]) && sound;
   return sound && rows_check_ids(k->memory, &k->diags, c);
 }
 
@@ -70,7 +99,7 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
                      const char *brief_path, bool target_required, request *out) {
   out->catalog = *handle->catalog;
   bool sound = read_brief(k, handle->catalog, brief_path, target_required, &out->brief);
-  if (sound) sound = add_listings(k, &out->brief, &out->catalog);
+  if (sound) sound = add_evidence(k, &out->brief, &out->catalog);
   out->prices = read_prices(k, options, out);
   if (!sound || out->prices == NULL) return false;
   out->brief.units = text_units(options, &out->brief); /* limits and findings are words too */
@@ -86,20 +115,6 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
   return true;
 }
 
-bool request_buildable(call *k, const catalog *c, const char *file, const wall *w) {
-  compat_report found;
-  compat_check(c, w, &found);
-  bool buildable = true;
-  for (int i = 0; i < found.count; i++) {
-    const compat_finding *f = &found.finding[i];
-    if (f->level != COMPAT_ILLEGAL) continue;
-    diag_add(&k->diags, DIAG_ERROR, ERROR_WALL_ILLEGAL, (diag_place){.file = file}, "%s: %s (%s)",
-             f->rule, f->reason, f->source);
-    buildable = false;
-  }
-  return buildable;
-}
-
 /* A wall line holds bars; what holds none is a path when such a file is there or it looks like one.
  */
 static bool is_path(const char *words) {
@@ -112,8 +127,8 @@ static bool is_path(const char *words) {
 bool request_wall(call *k, const catalog *c, const char *words, wall *out, const char **name) {
   *name = NULL;
   if (!is_path(words))
-    return line_parse(k->memory, &k->diags, c, words, out) && request_buildable(k, c, NULL, out);
+    return line_parse(k->memory, &k->diags, c, words, out) && compat_buildable(&k->diags, (diag_place){NULL, 0, 0, NULL}, c, out);
   const json_value *root = json_load(k->memory, &k->diags, words);
   return root != NULL && line_from_json(k->memory, &k->diags, c, root, out, name) &&
-         request_buildable(k, c, words, out);
+         compat_buildable(&k->diags, (diag_place){words, 0, 0, NULL}, c, out);
 }

@@ -4,7 +4,7 @@
 
 #include "api/call.h"
 #include "report/report.h"
-#include "wall/wall.h"
+#include "wall/tested.h"
 
 typedef struct request {
   brief brief;
@@ -20,7 +20,9 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
                      const char *brief_path, bool target_required, request *out);
 /* The wall of a wall line or wall/1 file, checked: it can be built. False after messages. */
 bool request_wall(call *k, const catalog *c, const char *words, wall *out, const char **name);
-/* One message for each reason why the wall cannot be built. True when there is none. */
-bool request_buildable(call *k, const catalog *c, const char *file, const wall *w);
+
+/* A report that gives its curve is held against it: a slip of the pen in either would pass for
+ * evidence. A warning when the two differ. */
+void request_check_curve(call *k, const tested_wall *t);
 
 #endif

@@ -75,15 +75,29 @@ static bool has_hidden_layers(const wall *w) {
   return w->sheath[0].count + w->sheath[1].count + w->inner[0].count + w->inner[1].count > 0;
 }
 
+/* Whether a core is that of a row whose side A stands on `side`. */
+static bool core_is(const catalog *c, const wall *core, const wall_row *row, int side) {
+  if (row->tested) {
+    wall turned = side == SIDE_A ? *row->tested : wall_mirrored(c, row->tested);
+    return wall_same_core(&turned, core);
+  }
+  return !has_hidden_layers(core) && frame_is(c, core, row) && fill_is(c, core, row) &&
+         mount_is(c, core, row, side);
+}
+
+/* A test of the very wall comes before a code's table; among equals the lower rating counts. */
+static short rank_of(const wall_row *row) {
+  const int tested_first = 1000;
+  return (short)(row->tested ? row->stc - tested_first : row->stc);
+}
+
 void evidence_core_set(const catalog *c, const wall *core, match_list *out) {
   out->count = 0;
-  if (has_hidden_layers(core)) return;
   for (size_t i = 0; i < c->published_count; i++) {
     const wall_row *row = &c->published[i];
-    if (!frame_is(c, core, row) || !fill_is(c, core, row)) continue;
     for (int side = 0; side < 2; side++) {
-      if (!mount_is(c, core, row, side)) continue;
-      match_entry e = {.row = (short)i, .value = (short)row->stc};
+      if (!core_is(c, core, row, side)) continue;
+      match_entry e = {.row = (short)i, .value = rank_of(row)};
       e.need[side] = (unsigned char)row->side_a.need;
       e.need[1 - side] = (unsigned char)row->side_b.need;
       match_add(out, e, lower_rating);
@@ -229,27 +243,33 @@ static void compare_spacing(walk *k) {
         k->w->spacing_mm);
 }
 
+/* Clips are known of tested walls only: no code table holds them. */
+static bool row_has_clips(const walk *k) {
+  const wall *t = k->row->tested;
+  return t && t->mount[SIDE_A].mount != CATALOG_NONE && k->c->mounts[t->mount[SIDE_A].mount].clips;
+}
+
 static void compare_mount(walk *k) {
   const evidence_weights *weight = &k->c->distance;
   int ours = match_mounted_side(k->w);
   bool clips = ours != CATALOG_NONE && k->c->mounts[k->w->mount[ours].mount].clips;
-  const char *kind = clips ? "clips" : "channel";
+  const char *kind = clips ? "clips" : "channel", *theirs = row_has_clips(k) ? "clips" : "channel";
   if (k->row->mount == ROW_MOUNT_NONE) {
     if (ours != CATALOG_NONE) say(k, weight->mount, "no %s on side %c", kind, letter(ours));
     return;
   }
   if (ours == CATALOG_NONE) {
-    say(k, weight->mount, "channel on side %c", letter(k->side));
+    say(k, weight->mount, "%s on side %c", theirs, letter(k->side));
     return;
   }
   if (ours != k->side)
-    say(k, weight->mount_side, "channel on side %c for side %c", letter(k->side), letter(ours));
-  if (clips) say(k, weight->mount_kind, "channel for clips");
+    say(k, weight->mount_side, "%s on side %c for side %c", theirs, letter(k->side), letter(ours));
+  if (clips != row_has_clips(k)) say(k, weight->mount_kind, "%s for %s", theirs, kind);
   double nearest;
   double steps = spacing_steps(wall_spacing_m(k->w->mount[ours].spacing_mm),
                                k->row->mount_spacing_min_m, k->row->mount_spacing_max_m, &nearest);
   if (steps > 0)
-    say(k, weight->mount_spacing * steps, "channel at %d for %s at %d mm", nominal(nearest), kind,
+    say(k, weight->mount_spacing * steps, "%s at %d for %s at %d mm", theirs, nominal(nearest), kind,
         k->w->mount[ours].spacing_mm);
 }
 
@@ -348,6 +368,10 @@ static bool wall_of(const walk *k, wall *out) {
   const catalog *c = k->c;
   const wall_row *row = k->row;
   double spacing;
+  if (row->tested) {
+    *out = k->side == SIDE_A ? *row->tested : wall_mirrored(c, row->tested);
+    return true;
+  }
   *out = wall_empty();
   out->frame = frame_of(c, row, &c->frames[k->w->frame]);
   if (out->frame == CATALOG_NONE) return false;

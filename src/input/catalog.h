@@ -159,6 +159,7 @@ typedef struct wall_row {
   int minutes_bearing, minutes_nonbearing; /* fire; 0 = not assigned */
   int stc;                  /* published rating; 0 = none */
   double stc_sd;            /* 1.0 code table, 1.2 test report */
+  const struct wall *tested; /* of a test report: the row stands for this wall only (wall/tested.h); NULL = in general terms */
   const json_value *json;   /* where it was read, for messages while loading */
 } wall_row;
 

@@ -498,3 +498,15 @@ compat_level compat_pair(const catalog *c, const face *a, const face *b) {
   check_pair(c, a, b, &r);
   return r.worst;
 }
+
+bool compat_buildable(diag_list *d, diag_place place, const catalog *c, const wall *w) {
+  compat_report found;
+  compat_check(c, w, &found);
+  for (int i = 0; i < found.count; i++) {
+    const compat_finding *f = &found.finding[i];
+    if (f->level == COMPAT_ILLEGAL)
+      diag_add(d, DIAG_ERROR, ERROR_WALL_ILLEGAL, place, "%s: %s (%s)", f->rule, f->reason,
+               f->source);
+  }
+  return found.worst < COMPAT_ILLEGAL;
+}

@@ -35,6 +35,9 @@ compat_level compat_face_on_core(const catalog *c, const wall *core, int side, c
 compat_level compat_pair(const catalog *c, const face *a,
                          const face *b); /* ordinary build: counts and kinds of both sides */
 
+/* One error for each reason why the wall cannot be built, at `place`. True when there is none. */
+bool compat_buildable(diag_list *d, diag_place place, const catalog *c, const wall *w);
+
 /* Every rule with its level, reason and source: for tests and pages. */
 const compat_finding *compat_rules(size_t *count);
 

@@ -419,6 +419,18 @@ bool line_parse(arena *a, diag_list *d, const catalog *c, const char *line, wall
   return p.sound;
 }
 
+bool line_parse_value(arena *a, diag_list *d, const catalog *c, const json_value *v, wall *out) {
+  diag_list found;
+  diag_init(&found, a);
+  bool sound = line_parse(a, &found, c, v->string, out);
+  for (size_t i = 0; i < found.count; i++) {
+    const diag *f = &found.items[i];
+    diag_add(d, f->level, f->code, json_place(a, v), "wall line, column %d: %s", f->place.column,
+             f->message);
+  }
+  return sound;
+}
+
 /* ---- printing ---- */
 
 static void put_face(text *t, const catalog *c, const face *f) {

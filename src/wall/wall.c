@@ -134,14 +134,18 @@ static bool same_mount(const wall_mount *a, const wall_mount *b) {
          (a->spacing_mm == b->spacing_mm && a->clip_spacing_mm == b->clip_spacing_mm);
 }
 
-bool wall_same(const wall *a, const wall *b) {
+bool wall_same_core(const wall *a, const wall *b) {
   if (a->frame != b->frame || a->spacing_mm != b->spacing_mm || a->gap_mm != b->gap_mm)
     return false;
   for (int s = 0; s < 2; s++) {
     if (a->fill[s] != b->fill[s] || !same_mount(&a->mount[s], &b->mount[s])) return false;
-    if (!same_face(&a->side[s], &b->side[s]) || !same_face(&a->sheath[s], &b->sheath[s]))
+    if (!same_face(&a->sheath[s], &b->sheath[s]) || !same_face(&a->inner[s], &b->inner[s]))
       return false;
-    if (!same_face(&a->inner[s], &b->inner[s])) return false;
   }
   return true;
+}
+
+bool wall_same(const wall *a, const wall *b) {
+  return wall_same_core(a, b) && same_face(&a->side[SIDE_A], &b->side[SIDE_A]) &&
+         same_face(&a->side[SIDE_B], &b->side[SIDE_B]);
 }

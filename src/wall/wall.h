@@ -54,5 +54,7 @@ wall wall_mirrored(const catalog *c, const wall *w);
  */
 wall wall_short_circuited(const wall *w);
 bool wall_same(const wall *a, const wall *b);
+/* The same but for the leaves at the rooms. */
+bool wall_same_core(const wall *a, const wall *b);
 
 #endif

@@ -6,7 +6,9 @@
 
 #include "checks/evidence.h"
 #include "code_table.h"
+#include "input/rows.h"
 #include "shop.h"
+#include "wall/tested.h"
 
 static table stc_table;
 
@@ -179,6 +181,78 @@ START_TEST(test_cautions) {
 }
 END_TEST
 
+/* ---- test reports ---- */
+
+/* The catalog with the reports of a file among its rows. */
+static catalog *with_reports(const char *json) {
+  tested_wall *tested;
+  size_t count;
+  const json_value *root = json_parse(memory, &faults, "report.json", json, strlen(json));
+  ck_assert_ptr_nonnull(root);
+  ck_assert(tested_read(memory, &faults, shop, root, &tested, &count));
+  catalog *c = arena_alloc(memory, sizeof *c);
+  *c = *shop;
+  wall_row *all = arena_array(memory, shop->published_count + count, sizeof *all);
+  memcpy(all, shop->published, shop->published_count * sizeof *all);
+  for (size_t i = 0; i < count; i++) all[shop->published_count + i] = tested[i].row;
+  c->published = all;
+  c->published_count += count;
+  ck_assert(rows_check_ids(memory, &faults, c));
+  return c;
+}
+
+#define TESTED(number, wall, stc)                                                                  \
+  "{\"number\":\"" number "\",\"laboratory\":\"invented\",\"date\":\"2031\",\"wall\":\"" wall      \
+  "\",\"stc\":" stc "}"
+static const char reports[] =
+    "{\"septum\":\"report/1\",\"records\":[" TESTED(
+        "T-1", "2*typex-16 | clip@610 | wood-89@406, glass-89 | typex-16", "58") ","
+    TESTED("T-2", "typex-16 | wood-89@406, glass-89 | typex-16", "35") ","
+    TESTED("T-3", "typex-16 | wood-89@406, glass-89 | typex-16", "34") ","
+    TESTED("T-4", "typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16", "44") "]}";
+
+/* Order of evidence: a test of the very wall, then the code's table (practice of submittals: common
+ * practice, no source). NBC-W1a gives 36 for the second wall, any fibre, 400 or 600. */
+static const struct tested_case {
+  const char *line, *id;
+  int stc;
+} tested_cases[] = {
+    {"2*typex-16 | clip@610 | wood-89@406, glass-89 | typex-16", "T-1", 58},
+    {"typex-16 | wood-89@406, glass-89 | clip@610 | 2*typex-16", "T-1", 58},
+    {"2*typex-16 | clip@406 | wood-89@406, glass-89 | typex-16", NULL, 0},
+    {"2*typex-16 | clip@610 | wood-89@610, glass-89 | typex-16", NULL, 0},
+    {"2*typex-16 | clip@610 | wood-89@406, stone-89 | typex-16", NULL, 0},
+    {"typex-16 | wood-89@406, glass-89 | typex-16", "T-3", 34},
+    {"typex-16 | wood-89@406, stone-89 | typex-16", "NBC-W1a", 36},
+    {"typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16", "T-4", 44},
+    {"typex-16 | rc@610 | on osb-13 | wood-89@406, glass-89 | typex-16", NULL, 0},
+};
+
+START_TEST(test_reports) {
+  const struct tested_case *k = &tested_cases[_i];
+  const catalog *c = with_reports(reports);
+  wall w = parse(k->line);
+  const wall_row *row = evidence_match(c, &w);
+  ck_assert_msg((row == NULL) == (k->id == NULL), "%s: %s", k->line, row ? row->id : "no match");
+  if (!row) return;
+  ck_assert_str_eq(row->id, k->id);
+  ck_assert_int_eq(row->stc, k->stc);
+}
+END_TEST
+
+/* A tested wall is a neighbour as a row of the table is, and says how it differs. */
+START_TEST(near_a_report) {
+  const catalog *c = with_reports(reports);
+  wall w = parse("2*typex-16 | clip@406 | wood-89@406, glass-89 | typex-16");
+  evidence e;
+  evidence_find(memory, c, &w, &e);
+  ck_assert_str_eq(e.nearest[0].row->id, "T-1");
+  ck_assert_str_eq(e.nearest[0].line, "2*typex-16 | clip@610 | wood-89@406, glass-89 | typex-16");
+  ck_assert_int_eq(e.nearest[0].differ_count, 1);
+  ck_assert_str_eq(e.nearest[0].differs[0], "clips at 610 for clips at 406 mm");
+}
+END_TEST
+
 int main(void) {
   int rows = table_read(&stc_table, TEST_ROOT "/tests/data/nbc2020_stc.csv");
   int last = rows > 0 ? rows : 1;
@@ -191,6 +265,8 @@ int main(void) {
   tcase_add_loop_test(t, test_nearest, 0, (int)(sizeof near_cases / sizeof near_cases[0]));
   tcase_add_loop_test(t, test_line_is_the_row, 0, last);
   tcase_add_test(t, test_cautions);
+  tcase_add_loop_test(t, test_reports, 0, (int)(sizeof tested_cases / sizeof tested_cases[0]));
+  tcase_add_test(t, near_a_report);
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
   srunner_run_all(r, CK_NORMAL);
