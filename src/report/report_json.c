@@ -134,6 +134,7 @@ static void put_evidence(markup_json *j, const assessment *x) {
   const wall_row *match = x->evidence.match;
   markup_json_object(j, "evidence", false);
   markup_json_string(j, "kind", match != NULL ? "published" : "predicted");
+  markup_json_string(j, "rests_on", view_rests_on(x));
   if (match != NULL) {
     markup_json_object(j, "match", true);
     markup_json_string(j, "id", match->id);
@@ -200,6 +201,7 @@ static void put_checks(markup_json *j, const report *r, const assessment *x) {
   markup_json_string(j, "basis", x->fire.minutes > 0 ? x->fire.basis : "not shown");
   markup_json_string(j, "code", view_code(r));
   markup_json_string(j, "row", x->fire.row_id);
+  markup_json_string(j, "rests_on", view_fire_rests_on(r, x));
   markup_json_string(j, "source", x->fire.minutes > 0 ? x->fire.source : NULL);
   markup_json_close(j);
   markup_json_object(j, "height", false);

@@ -53,8 +53,8 @@ static void put_basis(const report *r, const assessment *x, text *out) {
   if (x->evidence.match != NULL) {
     const wall_row *m = x->evidence.match;
     page_line(out, "",
-              text_format(r->arena, "Published: STC %d, %s (%s). Rw and OITC are predicted.",
-                          m->stc, m->name, m->source));
+              text_format(r->arena, "%s: STC %d, %s (%s). Rw and OITC are predicted.",
+                          m->tested ? "Tested" : "Published", m->stc, m->name, m->source));
     page_line(out, "",
               text_format(r->arena, "The prediction alone: STC %s, sd %s (family %s).", exact, sd,
                           sound_family_names[p->family]));
@@ -78,7 +78,9 @@ static void put_targets(const report *r, const assessment *x, text *out) {
   for (int i = 0; i < count; i++) {
     const target *t = &r->brief->targets[i];
     const char *found = view_published(x, t->metric)
-                            ? text_format(r->arena, "published STC %d", x->ratings.stc)
+                            ? text_format(r->arena, "%s STC %d",
+                                          x->evidence.match->tested ? "tested" : "published",
+                                          x->ratings.stc)
                             : text_format(r->arena, "%s %% sure", view_sureness(r, x->probability[i]));
     page_line(out, "",
               text_format(r->arena, "Target %s: %s.%s", view_target(r, t), found,

@@ -179,6 +179,21 @@ const char *view_target(const report *r, const target *t) {
   return out.data;
 }
 
+const char *view_rests_on(const assessment *x) {
+  const wall_row *match = x->evidence.match;
+  if (match == NULL) return "predicted";
+  return match->tested != NULL ? "test_report" : "code_table";
+}
+
+const char *view_fire_rests_on(const report *r, const assessment *x) {
+  if (x->fire.minutes == 0) return NULL;
+  for (size_t i = 0; i < r->catalog->fire_count && x->fire.row_id != NULL; i++) {
+    const wall_row *row = &r->catalog->fire[i];
+    if (row->code == CODE_NONE && text_equal(row->id, x->fire.row_id)) return "listing";
+  }
+  return "code_table";
+}
+
 bool view_published(const assessment *x, sound_metric metric) {
   return x->evidence.match != NULL && metric == METRIC_STC;
 }

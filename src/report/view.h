@@ -70,6 +70,11 @@ const char *view_ratings(const report *r, const ratings *v);
 const char *view_sureness(const report *r, double probability);
 /* Whether the metric of this wall stands on a published rating. */
 bool view_published(const assessment *x, sound_metric metric);
+/* What the sound rating rests on, in the order in which evidence counts: "test_report", "code_table",
+ * "predicted". */
+const char *view_rests_on(const assessment *x);
+/* What the fire rating rests on: "listing", "code_table"; NULL when nothing is shown. */
+const char *view_fire_rests_on(const report *r, const assessment *x);
 /* "optimal", "infeasible", "limit": what the solver proved. */
 const char *view_status(const explanation *e);
 /* "ibc" */
