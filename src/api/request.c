@@ -95,11 +95,10 @@ static units_system text_units(const septum_options *options, const brief *b) {
   return b->units;
 }
 
-bool request_prepare(call *k, const septum *handle, const septum_options *options,
-                     const char *brief_path, bool target_required, request *out) {
+bool request_settle(call *k, const septum *handle, const septum_options *options, bool asked,
+                    request *out) {
   out->catalog = *handle->catalog;
-  bool sound = read_brief(k, handle->catalog, brief_path, target_required, &out->brief);
-  if (sound) sound = add_evidence(k, &out->brief, &out->catalog);
+  bool sound = add_evidence(k, &out->brief, &out->catalog);
   out->prices = read_prices(k, options, out);
   if (!sound || out->prices == NULL) return false;
   out->brief.units = text_units(options, &out->brief); /* limits and findings are words too */
@@ -109,10 +108,19 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
                          .catalog = &out->catalog,
                          .prices = out->prices,
                          .brief = &out->brief,
-                         .asked = brief_path != NULL,
+                         .asked = asked,
                          .usual_prices = !options->prices && !out->brief.prices,
                          .units = out->brief.units};
   return true;
+}
+
+bool request_prepare(call *k, const septum *handle, const septum_options *options,
+                     const char *brief_path, bool target_required, request *out) {
+  bool sound = read_brief(k, handle->catalog, brief_path, target_required, &out->brief);
+  if (sound) return request_settle(k, handle, options, brief_path != NULL, out);
+  out->catalog = *handle->catalog;
+  (void)read_prices(k, options, out); /* its faults are told too */
+  return false;
 }
 
 /* A wall line holds bars; what holds none is a path when such a file is there or it looks like one.

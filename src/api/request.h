@@ -18,6 +18,9 @@ typedef struct request {
  * False after messages. */
 bool request_prepare(call *k, const septum *handle, const septum_options *options,
                      const char *brief_path, bool target_required, request *out);
+/* The same for a brief that is there already, in out->brief; `asked`: somebody gave it. */
+bool request_settle(call *k, const septum *handle, const septum_options *options, bool asked,
+                    request *out);
 /* The wall of a wall line or wall/1 file, checked: it can be built. False after messages. */
 bool request_wall(call *k, const catalog *c, const char *words, wall *out, const char **name);
 
