@@ -30,6 +30,9 @@ typedef enum option_id {
   OPTION_XLSX
 } option_id;
 
+/* A bit an option_id. */
+typedef unsigned long long option_set;
+
 typedef struct option_row {
   const char *name;
   const char *value; /* what it takes, NULL for none */
@@ -239,7 +242,7 @@ static bool apply(option_id id, const char *value, cli_line *out) {
 }
 
 /* One option at argv[i]; returns how many words it took, 0 after a message. */
-static int read_option(int argc, char **argv, int i, cli_line *out, int *used) {
+static int read_option(int argc, char **argv, int i, cli_line *out, option_set *used) {
   const char *word = argv[i] + 2;
   size_t length = strcspn(word, "=");
   const option_row *row = find_option(word, length);
@@ -258,7 +261,7 @@ static int read_option(int argc, char **argv, int i, cli_line *out, int *used) {
     fprintf(stderr, "septum: --%s wants %s\n", row->name, row->value);
     return 0;
   }
-  *used |= 1 << row->id;
+  *used |= (option_set)1 << row->id;
   return apply(row->id, value, out) ? words : 0;
 }
 
@@ -273,10 +276,10 @@ static const command_row *find_command(const char *name) {
 }
 
 /* Whether the options used belong to the command and the operands are as many as it takes. */
-static bool fits(const command_row *command, int used, size_t operands) {
+static bool fits(const command_row *command, option_set used, size_t operands) {
   for (size_t i = 0; i < OPTION_ROWS; i++) {
     const option_row *row = &option_rows[i];
-    if ((used & (1 << row->id)) == 0 || (row->commands & (int)command->command) != 0) continue;
+    if ((used & (option_set)1 << row->id) == 0 || (row->commands & (int)command->command) != 0) continue;
     fprintf(stderr, "septum: --%s is not an option of %s\n", row->name, command->name);
     return false;
   }
@@ -309,7 +312,8 @@ static bool trim_fits(const cli_line *line) {
 bool options_read(int argc, char **argv, cli_line *out) {
   memset(out, 0, sizeof *out);
   septum_options_init(&out->options);
-  int used = 0, kept = 0;
+  option_set used = 0;
+  int kept = 0;
   bool options_end = false;
   for (int i = 1; i < argc;) {
     bool option = !options_end && argv[i][0] == '-' && argv[i][1] != '\0';
