@@ -262,18 +262,30 @@ bool structure_noncombustible_ok(const catalog *c, const brief *b, const wall *w
 
 /* ---- sides ---- */
 
-bool structure_fastening_ok(const catalog *c, const brief *b, const wall *w, int side,
-                            const char **why) {
-  if (b->side[side].fastening != FASTENING_HEAVY) return true;
+/* Whether cabinets may be screwed to the studs, whatever is between. */
+static bool studs_hold_heavy(const catalog *c, const wall *w, const char **why) {
   const frame *f = frame_of(c, w);
-  if (w->mount[side].mount != CATALOG_NONE)
-    return fails(why, "Heavy fastenings through a mounted leaf bridge its mount.");
   if (f->material != FRAME_STEEL) return true;
   if (f->mil < rules.heavy_mil)
     return fails(why, "Heavy fastening needs steel studs of 30 mil or heavier.");
   if (wall_spacing_m(w->spacing_mm) > rules.heavy_spacing_m + size_slack_m)
     return fails(why, "Heavy fastening needs steel studs at 406 mm (16 in) or closer.");
   return true;
+}
+
+bool structure_fastening_ok(const catalog *c, const brief *b, const wall *w, int side,
+                            const char **why) {
+  if (b->side[side].fastening != FASTENING_HEAVY) return true;
+  if (w->mount[side].mount != CATALOG_NONE)
+    return fails(why, "Heavy fastenings through a mounted leaf bridge its mount.");
+  return studs_hold_heavy(c, w, why);
+}
+
+bool structure_studs_ok(const catalog *c, const brief *b, const wall *w, const char **why) {
+  const frame *f = frame_of(c, w);
+  if (f->material == FRAME_STEEL && f->mil < b->studs.mil)
+    return fails(why, "The steel studs are thinner than the specified ones.");
+  return !b->studs.fixtures || studs_hold_heavy(c, w, why);
 }
 
 static const layer *room_board(const catalog *c, const wall *w, int side) {

@@ -28,6 +28,7 @@ bool structure_shear_ok(const catalog *c, const brief *b, const wall *w, const c
 bool structure_noncombustible_ok(const catalog *c, const brief *b, const wall *w, const char **why);
 bool structure_fastening_ok(const catalog *c, const brief *b, const wall *w, int side,
                             const char **why);
+bool structure_studs_ok(const catalog *c, const brief *b, const wall *w, const char **why);
 bool structure_wet_ok(const catalog *c, const brief *b, const wall *w, int side, const char **why);
 bool structure_abuse_ok(const catalog *c, const brief *b, const wall *w, int side,
                         const char **why);

@@ -86,6 +86,9 @@ bool explain_relax(const brief *b, int rule, brief *out) {
   case RULE_SERVICES:
     out->riser_m = out->run_m = 0;
     return true;
+  case RULE_STUDS:
+    out->studs = (stud_floor){.mil = 0};
+    return true;
   case RULE_FASTENING_A:
   case RULE_FASTENING_B:
   case RULE_WET_A:

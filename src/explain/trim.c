@@ -14,10 +14,18 @@ static assessment *judge(arena *a, const judge_context *x, const wall *w) {
   return out;
 }
 
+static void take_heavy(const judge_context *x, const wall *w, bool heavy[2]) {
+  brief asking = *x->brief;
+  for (int s = 0; s < 2; s++) {
+    asking.side[s].fastening = FASTENING_HEAVY;
+    heavy[s] = structure_fastening_ok(x->catalog, &asking, w, s, NULL);
+  }
+}
+
 /* ---- what the wall is held to ---- */
 
 static void add_target(brief *b, int value, double confidence) {
-  if (value < 1) return; /* no target asks for less */
+  if (value < 1 || b->target_count == BRIEF_MAX_TARGETS) return; /* no target asks for less */
   b->targets[b->target_count++] =
       (target){.metric = METRIC_STC, .value = value, .confidence = confidence};
 }
@@ -38,24 +46,75 @@ static void hold_to_rating(const assessment *x, brief *b) {
   add_target(b, printed, floor(100 * probability) * 0.01);
 }
 
+/* The floor is the larger of what is promised and what is shown. */
+static void hold_to_promises(const assessment *own, const trim_terms *terms, brief *b) {
+  bool shown = terms->own || terms->promised_fire > 0;
+  if (terms->own || terms->promised_stc > 0) hold_to_rating(own, b);
+  if (terms->promised_stc > 0) {
+    double confidence = b->targets[0].confidence > 0 ? b->targets[0].confidence : usual_confidence;
+    add_target(b, terms->promised_stc, terms->own ? usual_confidence : confidence);
+  }
+  if (terms->promised_fire > b->fire_min) b->fire_min = terms->promised_fire;
+  if (shown && !(terms->allow & TRIM_ALLOW_LESS_FIRE) && own->fire.minutes > b->fire_min)
+    b->fire_min = own->fire.minutes;
+}
+
+static void hold_to_thickness(const assessment *own, const trim_terms *terms, brief *b) {
+  /* In the whole tenths of a millimetre that the rule counts in. */
+  double most_m = rules_thickness(own->thickness_m + terms->slack_m) * 1e-4;
+  if (terms->keep & TRIM_KEEP_THICKNESS) {
+    bool more = b->thickness_m.has_min && b->thickness_m.min > own->thickness_m;
+    if (!more) b->thickness_m.min = own->thickness_m;
+    b->thickness_m.has_min = true;
+  }
+  if (!terms->thickness || (b->thickness_m.has_max && b->thickness_m.max < most_m)) return;
+  b->thickness_m.has_max = true;
+  b->thickness_m.max = most_m;
+  b->thickness_exact = true;
+}
+
+/* Class of the boards that people touch, studs that hold fixtures, parts that do not burn. */
+static void hold_to_make(const judge_context *x, const wall *w, const trim_terms *terms, brief *b) {
+  const catalog *c = x->catalog;
+  const frame *f = &c->frames[w->frame];
+  brief strict = *b;
+  for (int s = 0; s < 2 && !(terms->allow & TRIM_ALLOW_PLAIN_BOARDS); s++) {
+    const layer *room = w->side[s].count > 0 ? &c->layers[w->side[s].layer[0]] : NULL;
+    b->side[s].wet = b->side[s].wet || (room && room->moisture);
+    b->side[s].abuse = b->side[s].abuse || (room && room->abuse);
+  }
+  if (!(terms->allow & TRIM_ALLOW_THINNER_STUDS)) {
+    brief asking = *b;
+    asking.studs = (stud_floor){.fixtures = true};
+    b->studs.mil = f->material == FRAME_STEEL ? f->mil : 0;
+    b->studs.fixtures = structure_studs_ok(c, &asking, w, NULL);
+  }
+  strict.noncombustible = NONCOMBUSTIBLE_STRICT;
+  bool burns_not = structure_noncombustible_ok(c, &strict, w, NULL);
+  if (burns_not && !(terms->allow & TRIM_ALLOW_COMBUSTIBLE))
+    b->noncombustible = NONCOMBUSTIBLE_STRICT;
+}
+
+static void hold_to_frame(arena *a, const judge_context *x, const wall *w, brief *b) {
+  brief free;
+  (void)explain_relax_frames(a, x->catalog, b, &free);
+  *b = free;
+  const char *id = x->catalog->frames[w->frame].id;
+  if (b->only_count < BRIEF_MAX_PATTERNS)
+    b->only[b->only_count++] = text_format(a, "frame:%s", id);
+}
+
 void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *terms, brief *b) {
   brief as_given = *x->brief;
   judge_context given = *x;
   given.brief = &as_given;
   terms->own = as_given.target_count == 0;
-  terms->thickness = terms->own || terms->slack_given;
-  if (!terms->thickness) return;
+  terms->thickness = terms->slack_given || !(terms->allow & TRIM_ALLOW_THICKER);
   const assessment *own = judge(a, &given, w);
-  if (terms->own) {
-    hold_to_rating(own, b);
-    if (own->fire.minutes > b->fire_min) b->fire_min = own->fire.minutes;
-  }
-  /* In the whole tenths of a millimetre that the rule counts in. */
-  double most_m = rules_thickness(own->thickness_m + terms->slack_m) * 1e-4;
-  if (b->thickness_m.has_max && b->thickness_m.max < most_m) return;
-  b->thickness_m.has_max = true;
-  b->thickness_m.max = most_m;
-  b->thickness_exact = true;
+  hold_to_promises(own, terms, b);
+  hold_to_thickness(own, terms, b);
+  hold_to_make(&given, w, terms, b);
+  if (terms->keep & TRIM_KEEP_FRAME) hold_to_frame(a, &given, w, b);
 }
 
 static trim_verdict verdict_of(const assessment *x) {
@@ -63,14 +122,6 @@ static trim_verdict verdict_of(const assessment *x) {
   if (x->fire.minutes == 0) unshown |= rule_bit(RULE_FIRE);
   if (x->broken == 0) return TRIM_HOLDS;
   return x->broken & ~unshown ? TRIM_FAILS : TRIM_NOT_SHOWN;
-}
-
-static void take_heavy(const judge_context *x, const wall *w, bool heavy[2]) {
-  brief asking = *x->brief;
-  for (int s = 0; s < 2; s++) {
-    asking.side[s].fastening = FASTENING_HEAVY;
-    heavy[s] = structure_fastening_ok(x->catalog, &asking, w, s, NULL);
-  }
 }
 
 /* ---- one change ---- */
@@ -214,6 +265,7 @@ static void propose(arena *a, const space *s, const trim_answer *t, const candid
   p->wall =
       nearer_image(a, s, from, space_wall(s, c->core, c->face_a, c->face_b), c->is.cost_cents);
   p->saving_cents = from->numbers.cost_cents - p->wall->numbers.cost_cents;
+  p->net_cents = p->saving_cents - t->terms.redesign_cents;
   p->saving_per_m2 = (double)p->saving_cents / 100 / from->cost.area_m2;
   take_heavy(x, &p->wall->wall, p->heavy);
   list_changes(a, x, from, p);
@@ -248,7 +300,7 @@ void trim_explain(arena *a, const space *s, const sweep_result *r, assessment *s
   *out = (trim_answer){.terms = *terms, .specified = specified, .walls = r->walls};
   out->verdict = verdict_of(specified);
   take_heavy(s->context, &specified->wall, out->heavy);
-  savers_find(a, s, r, cost_cents, &found);
+  savers_find(a, s, r, cost_cents - terms->redesign_cents, &found);
   out->found = found.count;
   out->proposal_count = found.count < terms->count ? found.count : terms->count;
   out->proposal = arena_array(a, (size_t)out->proposal_count, sizeof *out->proposal);

@@ -8,8 +8,27 @@
 
 enum { TRIM_DEFAULT_COUNT = 8, TRIM_MAX_COUNT = 100, TRIM_MAX_LOSSES = 16 };
 
+/* What the specified wall has and a proposal must have too, unless it is waived. */
+typedef enum trim_waiver {
+  TRIM_ALLOW_THINNER_STUDS = 1, /* steel lighter than the specified; sides that take no fixtures */
+  TRIM_ALLOW_PLAIN_BOARDS = 2,  /* faces that are abuse- or moisture-resistant no longer */
+  TRIM_ALLOW_THICKER = 4,
+  TRIM_ALLOW_COMBUSTIBLE = 8, /* combustible parts in place of none */
+  TRIM_ALLOW_LESS_FIRE = 16   /* fewer minutes than are shown; what is asked or promised stays */
+} trim_waiver;
+/* What a proposal must not change at all. */
+typedef enum trim_hold {
+  TRIM_KEEP_FRAME = 1,    /* the frame, its spacing aside */
+  TRIM_KEEP_FIRE = 2,     /* the row, rule or listing that shows its fire rating */
+  TRIM_KEEP_THICKNESS = 4 /* neither thicker nor thinner */
+} trim_hold;
+
 typedef struct trim_terms {
   int count;        /* most proposals, 1..TRIM_MAX_COUNT */
+  int promised_stc, promised_fire; /* what the drawings promise, 0 = nothing said */
+  const char *design;              /* and the listed design that they name; NULL = none */
+  unsigned allow, keep;            /* bits of trim_waiver, trim_hold */
+  long long redesign_cents;        /* of redesign and resubmittal: a saving must be above it */
   bool slack_given; /* a thickness limit holds though the brief sets a target */
   double slack_m;   /* a proposal may be so much thicker than the specified wall */
   /* Set by trim_hold_to. */
@@ -39,6 +58,7 @@ typedef struct trim_proposal {
   assessment *wall;
   bool heavy[2];
   long long saving_cents;   /* floor value included */
+  long long net_cents;      /* less redesign and resubmittal */
   long long together_cents; /* saving less that of the changes that can be taken alone */
   double saving_per_m2;
   trim_change change[STEP_PARTS];
@@ -66,8 +86,10 @@ typedef struct trim_answer {
 } trim_answer;
 
 /* What the wall is held to, put into `b`: without a target its own rating (as printed and as sure,
- * and what the usual confidence assures), the fire minutes that are shown for it, its thickness and
- * the slack. Needs prices in the context; x->brief is read as the brief came. */
+ * and what the usual confidence assures) and the fire minutes that are shown for it; what the drawings
+ * promise; its thickness and the slack, class of boards at the rooms, studs and noncombustible parts,
+ * as far as the terms do not waive them. Needs prices in the context; x->brief is read as the brief
+ * came. A promised rating needs room for two targets more (BRIEF_MAX_TARGETS). */
 void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *terms, brief *b);
 /* `r` is the sweep of `s`, whose brief is that of trim_hold_to; `specified` was judged by it and
  * can be costed. */

@@ -47,6 +47,13 @@ typedef struct room_side {
   int finish_level; /* 0..5, default 4 */
 } room_side;
 
+/* What the studs of another wall offer to fixtures and this one must not fall short of (trim); a
+ * brief/1 file has no key for it. */
+typedef struct stud_floor {
+  int mil;       /* steel studs at least so thick; 0 = any */
+  bool fixtures; /* cabinets and grab bars may be screwed to them, where no mount is between */
+} stud_floor;
+
 /* A door or window: its rating, or its transmission loss per band. */
 typedef struct opening {
   const char *kind; /* "" when not said */
@@ -79,6 +86,7 @@ typedef struct brief {
   double lateral_pa; /* default 240 */
   double deflection; /* span over this: default 240 */
   room_side side[2];
+  stud_floor studs;
   double riser_m, run_m; /* clear pipe in the stud depth; through holes */
   double boxes_per_10m;
   bool boxes_given;

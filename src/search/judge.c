@@ -72,6 +72,7 @@ static void judge_structure(const judge_context *x, const char *why[RULE_FIXED_C
       {RULE_NONCOMBUSTIBLE, structure_noncombustible_ok},
       {RULE_SHEAR, structure_shear_ok},
       {RULE_SERVICES, structure_services_ok},
+      {RULE_STUDS, structure_studs_ok},
   };
   static const struct {
     int rule;

@@ -43,6 +43,7 @@ static const char *const names[RULE_FIXED_COUNT] = {
     [RULE_ABUSE_A] = "abuse a",
     [RULE_ABUSE_B] = "abuse b",
     [RULE_SERVICES] = "services",
+    [RULE_STUDS] = "studs for fixtures",
     [RULE_ONLY] = "only",
     [RULE_PRICE] = "price",
 };
@@ -106,6 +107,13 @@ static const char *cost_words(arena *a, const brief *b) {
   return text_format(a, "<= %s per m2", text_of(a, b->cost_per_m2.max, 2));
 }
 
+static const char *stud_words(arena *a, const stud_floor *f) {
+  const char *fixtures = f->fixtures ? "studs that hold heavy fastening" : "";
+  if (f->mil == 0) return fixtures;
+  return text_format(a, "%s%ssteel of %d mil or heavier", fixtures, f->fixtures ? ", " : "",
+                     f->mil);
+}
+
 static const char *fixed_words(const brief *b, int rule) {
   static const char *const fastenings[] = {"none", "light", "heavy"};
   switch (rule) {
@@ -163,6 +171,8 @@ const char *rule_limit(arena *a, const brief *b, int rule) {
     return length_words(a, ">=", units_put_height, b->height_m, b->units);
   case RULE_SERVICES:
     return services_words(a, b);
+  case RULE_STUDS:
+    return stud_words(a, &b->studs);
   default:
     return fixed_words(b, rule);
   }
@@ -194,6 +204,7 @@ rule_mask rules_in_force(const brief *b) {
        bit_if(b->noncombustible != NONCOMBUSTIBLE_NO, RULE_NONCOMBUSTIBLE);
   m |= bit_if(b->shear_side != CATALOG_NONE, RULE_SHEAR) |
        bit_if(b->riser_m > 0 || b->run_m > 0, RULE_SERVICES);
+  m |= bit_if(b->studs.mil > 0 || b->studs.fixtures, RULE_STUDS);
   for (int s = 0; s < 2; s++) {
     m |= bit_if(b->side[s].fastening != FASTENING_NONE, RULE_FASTENING_A + s);
     m |= bit_if(b->side[s].wet, RULE_WET_A + s) | bit_if(b->side[s].abuse, RULE_ABUSE_A + s);

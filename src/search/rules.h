@@ -33,6 +33,7 @@ typedef enum rule_kind {
   RULE_ABUSE_A,
   RULE_ABUSE_B,
   RULE_SERVICES,
+  RULE_STUDS, /* the studs hold fixtures no worse than those of a specified wall */
   RULE_ONLY,
   RULE_PRICE,
   RULE_FIXED_COUNT,

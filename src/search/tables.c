@@ -136,6 +136,7 @@ static rule_mask core_bits(const tables *t, const wall *core) {
   const brief *b = t->context->brief;
   rule_mask m = bit_unless(structure_bearing_ok(c, b, core, NULL), RULE_LOADBEARING) |
                 bit_unless(structure_services_ok(c, b, core, NULL), RULE_SERVICES) |
+                bit_unless(structure_studs_ok(c, b, core, NULL), RULE_STUDS) |
                 bit_unless(burns_not(t, core), RULE_NONCOMBUSTIBLE);
   for (int s = 0; s < 2; s++)
     m |= bit_unless(structure_fastening_ok(c, b, core, s, NULL), RULE_FASTENING_A + s);
