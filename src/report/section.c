@@ -110,6 +110,27 @@ static void stud_dimensions(section *s) {
 
 /* ---- words around the plan ---- */
 
+/* A bar of a round length with its top at y, from x to the right, or up to x. */
+static const double longest_bar = 130, scale_bar_room = 210;
+
+static void scale_bar(section *s, double x, double y, double scale, bool up_to) {
+  static const double si_m[] = {0.05, 0.1, 0.2, 0.5, 1, 2, 5};
+  static const double us_in[] = {2, 4, 8, 12, 24, 48, 96};
+  enum { BARS = 7 };
+  const double high = 4;
+  bool us = s->report->units == UNITS_US;
+  double length_m = us ? us_in[0] * UNITS_M_PER_IN : si_m[0];
+  for (int i = 1; i < BARS; i++) {
+    double next_m = us ? us_in[i] * UNITS_M_PER_IN : si_m[i];
+    if (next_m * scale <= longest_bar) length_m = next_m;
+  }
+  double wide = length_m * scale, left = up_to ? x - wide : x;
+  svg_rect(&s->svg, left, y, wide / 2, high, "cut-bar");
+  svg_rect(&s->svg, left, y, wide, high, "cut-thin");
+  svg_text(&s->svg, up_to ? left - 6 : left + wide + 6, y + high + 1, up_to ? SVG_END : SVG_START,
+           "cut-note", section_spacing(s, length_m));
+}
+
 static void put_side(section *s, const layout *l, int side, double baseline) {
   const char *name = side == SIDE_A ? "Side A" : "Side B", *room = s->report->brief->side[side].room;
   double left = s->plan.x + 2, used = svg_text_width("Side A  ", l->side_size, true);
@@ -123,7 +144,8 @@ static void put_side(section *s, const layout *l, int side, double baseline) {
   markup_xml_text(x, name);
   markup_xml_close(x);
   if (room != NULL && room[0] != '\0') {
-    double width = l->plan_wide - 4 - used;
+    double bar = side == SIDE_B && l->labels_x > 0 ? scale_bar_room : 0;
+    double width = l->plan_wide - 4 - used - bar;
     markup_xml_text(x, "  ");
     markup_xml_inline(x, "tspan");
     markup_xml_attribute(x, "class", "cut-room");
@@ -131,24 +153,6 @@ static void put_side(section *s, const layout *l, int side, double baseline) {
     markup_xml_close(x);
   }
   markup_xml_close(x);
-}
-
-/* A bar of a round length. */
-static void scale_bar(section *s, double x, double y, double scale) {
-  static const double si_m[] = {0.05, 0.1, 0.2, 0.5, 1, 2, 5};
-  static const double us_in[] = {2, 4, 8, 12, 24, 48, 96};
-  enum { BARS = 7 };
-  const double most = 110, high = 4;
-  bool us = s->report->units == UNITS_US;
-  double length_m = us ? us_in[0] * UNITS_M_PER_IN : si_m[0];
-  for (int i = 1; i < BARS; i++) {
-    double next_m = us ? us_in[i] * UNITS_M_PER_IN : si_m[i];
-    if (next_m * scale <= most) length_m = next_m;
-  }
-  double wide = length_m * scale;
-  svg_rect(&s->svg, x - wide, y, wide / 2, high, "cut-bar");
-  svg_rect(&s->svg, x - wide, y, wide, high, "cut-thin");
-  svg_text(&s->svg, x - wide - 6, y + high + 1, SVG_END, "cut-note", section_spacing(s, length_m));
 }
 
 static const char *room_words(const section *s, int side) {
@@ -227,13 +231,25 @@ static void draw_small(section *s, text *out) {
 
 /* Where the lower half of the full picture stands. */
 static const double floor_middle_x = 262, floor_high = 160, floor_most_wide = 190,
-                    floor_most_scale = 1250, legend_x = 590, head_high = 24;
+                    floor_most_scale = 1250, floor_least_gain = 1.25, legend_x = 590,
+                    head_high = 24;
 
+/* Larger than the plan where that has room; beside it on the left there are labels only for a mount
+ * of side A. */
 static void place_floor(section *s, double top) {
   double scale = fmin(floor_most_scale, floor_most_wide / s->thickness_m);
-  s->floor = (section_place){floor_middle_x - s->thickness_m * scale / 2,
-                             top + head_high + 10 + floor_high, scale, true};
+  if (scale < floor_least_gain * s->plan.scale) scale = s->plan.scale;
+  bool left = s->wall->mount[SIDE_A].mount != CATALOG_NONE;
+  double x = left ? floor_middle_x - s->thickness_m * scale / 2 : s->plan.x;
+  s->floor = (section_place){x, top + head_high + 10 + floor_high, scale, true};
   s->floor_high_m = floor_high / scale;
+}
+
+static const char *floor_heading(const section *s) {
+  double gain = s->floor.scale / s->plan.scale;
+  if (gain < floor_least_gain) return "At the floor, scale as in the plan";
+  return text_format(s->report->arena, "At the floor, %s times the scale of the plan",
+                     text_of(s->report->arena, gain, 1));
 }
 
 static void put_floor(section *s, double top) {
@@ -245,16 +261,14 @@ static void put_floor(section *s, double top) {
   right.x = x1 + 40;
   right.width = legend_x - 24 - right.x;
   right.knee_x = x1 + 14;
-  const char *words = text_format(s->report->arena, "At the floor, %s times the scale of the plan",
-                                  text_of(s->report->arena, s->floor.scale / s->plan.scale, 1));
-  svg_text(&s->svg, 8, top + 12, SVG_START, "cut-head", words);
+  svg_text(&s->svg, 8, top + 12, SVG_START, "cut-head", floor_heading(s));
   section_floor(s);
   section_floor_labels(s, &left, &right);
   section_column_height(s, &left);
   section_column_height(s, &right);
   section_column_put(s, &left, top + head_high, s->floor.y + 20);
-  section_column_put(s, &right, top + head_high, s->floor.y + 24);
-  scale_bar(s, x1, s->floor.y + 26, s->floor.scale);
+  section_column_put(s, &right, top + head_high, s->floor.y + 20);
+  scale_bar(s, s->floor.x, s->floor.y + 30, s->floor.scale, false);
 }
 
 static void put_legend(section *s, double top) {
@@ -279,10 +293,11 @@ static void draw_full(section *s, text *out) {
   section_column_height(s, &column);
   double lower = top + high + 20;
   place_floor(s, lower);
-  double end = fmax(s->floor.y + 40, lower + head_high + section_legend_height(s) + 6);
+  double end = fmax(s->floor.y + 42, lower + head_high + section_legend_height(s) + 6);
   begin(s, l, end, out);
   put_plan(s, l);
-  scale_bar(s, l->plan_x + l->plan_wide, s->plan.y + wall_high + dimension_high - 2, s->plan.scale);
+  scale_bar(s, l->plan_x + l->plan_wide, s->plan.y + wall_high + dimension_high + 18,
+            s->plan.scale, true);
   section_column_put(s, &column, top, top + high);
   svg_line(&s->svg, 8, lower - 8, l->right, lower - 8, "cut-rule");
   put_floor(s, lower);

@@ -9,10 +9,9 @@ static const double track_leg_m = 0.0318, channel_foot_m = 0.018, channel_leg_m 
                     channel_flange_m = 0.034, hat_crown_m = 0.032, hat_slope_m = 0.008,
                     hat_foot_m = 0.013;
 
-/* Middle of the first rail above the floor: within 2 in for channels, 3 in for clips (common
- * practice, no source). */
-static double first_rail_m(const mount *type) {
-  return type->clips ? 0.075 : 0.05;
+/* Within 2 in of the floor for channels, 3 in for clips (common practice, no source). */
+double section_first_rail_m(const mount *type) {
+  return UNITS_M_PER_IN * (type->clips ? 3 : 2);
 }
 
 static double clear(const section *s) {
@@ -66,7 +65,7 @@ static void put_mount(section *s, const section_band *b) {
   bool a = b->side == SIDE_A;
   double leaf_m = a ? b->from_m : b->to_m, stud_m = a ? b->to_m : b->from_m, sign = a ? 1 : -1;
   svg_group(&s->svg, "cut-mount");
-  for (double at_m = first_rail_m(type); at_m + half_m < s->floor_high_m; at_m += spacing_m) {
+  for (double at_m = section_first_rail_m(type); at_m + half_m < s->floor_high_m; at_m += spacing_m) {
     if (type->clips)
       put_clip(s, at_m, stud_m, leaf_m, sign);
     else

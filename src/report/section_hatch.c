@@ -179,9 +179,11 @@ static void curve(section *s, const section_place *p, const double *c) {
             section_y(p, c[2], c[3]), section_x(p, c[4], c[5]), section_y(p, c[4], c[5]));
 }
 
-/* One loop a period from one face to the other and back. */
+/* A line from one face to the other and back, once a period: a wave with `bulge` 0, loops wider
+ * than their necks above it. */
 static void put_loops(section *s, const section_place *p, double along0, double along1,
-                      double deep0, double deep1, double period, const char *css_class) {
+                      double deep0, double deep1, double period, double bulge,
+                      const char *css_class) {
   int loops = (int)((along1 - along0) / period);
   if (loops < 1) return;
   period = (along1 - along0) / loops;
@@ -189,10 +191,9 @@ static void put_loops(section *s, const section_place *p, double along0, double 
   svg_move(&s->svg, section_x(p, along0, deep1), section_y(p, along0, deep1));
   for (int i = 0; i < loops; i++) {
     double u = along0 + i * period;
-    curve(s, p, (const double[]){u + 0.75 * period, deep1, u - 0.25 * period, deep0,
-                                 u + 0.5 * period, deep0});
-    curve(s, p, (const double[]){u + 1.25 * period, deep0, u + 0.25 * period, deep1, u + period,
-                                 deep1});
+    double out = (0.25 + bulge) * period, middle = u + 0.5 * period, end = u + period;
+    curve(s, p, (const double[]){u + out, deep1, middle - out, deep0, middle, deep0});
+    curve(s, p, (const double[]){middle + out, deep0, end - out, deep1, end, deep1});
   }
   svg_path_end(&s->svg);
 }
@@ -200,30 +201,31 @@ static void put_loops(section *s, const section_place *p, double along0, double 
 typedef struct fibre_look {
   const char *ground, *line;
   double narrow; /* period over thickness */
+  double least;  /* period in units */
 } fibre_look;
 
 static const fibre_look fibre_looks[] = {
-    [FILL_GLASS] = {"cut-glass", "cut-glass-line", 0.42},
-    [FILL_STONE] = {"cut-stone", "cut-stone-line", 0.28},
-    [FILL_CELLULOSE] = {"cut-cellulose", "cut-cellulose-line", 0.5},
+    [FILL_GLASS] = {"cut-glass", "cut-glass-line", 0.42, 9},
+    [FILL_STONE] = {"cut-stone", "cut-stone-line", 0.28, 6},
+    [FILL_CELLULOSE] = {"cut-cellulose", "cut-cellulose-line", 0, 0},
 };
 
 /* Blown in: rows of short waves instead of one loop from face to face. */
 static void put_blown(section *s, const section_place *p, double along0, double along1,
                       double deep0, double deep1, const char *css_class) {
-  const double row = 7 / p->scale;
+  const double row = 6.5 / p->scale;
   int rows = (int)fmax(1, floor((deep1 - deep0) / row));
   double high = (deep1 - deep0) / rows;
   for (int i = 0; i < rows; i++) {
-    double shift = i % 2 == 0 ? 0 : row / 2, top = deep0 + (i + 0.3) * high;
-    put_loops(s, p, along0 + shift, along1 - row / 2 + shift, top, top + 0.4 * high, 1.6 * row,
+    double shift = i % 2 == 0 ? 0 : row / 2, top = deep0 + (i + 0.32) * high;
+    put_loops(s, p, along0 + shift, along1 - row / 2 + shift, top, top + 0.36 * high, 1.5 * row, 0,
               css_class);
   }
 }
 
 void section_fibre(section *s, const section_place *p, const section_band *b, double along0,
                    double along1) {
-  const double least = 7 / p->scale, most = 26 / p->scale;
+  const double most = 26 / p->scale;
   const double inset = 1.2 / p->scale; /* so that the line does not touch the boards */
   if (b->record == CATALOG_NONE) return;
   fill_material material = s->catalog->fills[b->record].material;
@@ -234,6 +236,6 @@ void section_fibre(section *s, const section_place *p, const section_band *b, do
     put_blown(s, p, along0, along1, deep0, deep1, look->line);
     return;
   }
-  double period = fmin(most, fmax(least, look->narrow * (deep1 - deep0)));
-  put_loops(s, p, along0 + inset, along1 - inset, deep0, deep1, period, look->line);
+  double period = fmin(most, fmax(look->least / p->scale, look->narrow * (deep1 - deep0)));
+  put_loops(s, p, along0 + inset, along1 - inset, deep0, deep1, period, 0.5, look->line);
 }

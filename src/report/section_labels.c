@@ -11,11 +11,20 @@ void section_label_add(section_column *c, section_label label) {
   if (c->count < VIEW_MAX_PARTS) c->label[c->count++] = label;
 }
 
+/* Where a line may break: at a blank, but not between a number and its unit. */
+static size_t word_end(const char *words, size_t at) {
+  for (size_t end = at;; end++) {
+    end += strcspn(words + end, " ");
+    bool number = end > at && words[end - 1] >= '0' && words[end - 1] <= '9';
+    if (words[end] == '\0' || !number) return end;
+  }
+}
+
 /* How many bytes of `words` make the next line: whole words while they fit, at least one. */
 static size_t line_of(section *s, const char *words, double width) {
   size_t kept = 0;
   for (size_t at = 0; words[at] != '\0';) {
-    size_t end = at + strcspn(words + at, " ");
+    size_t end = word_end(words, at);
     const char *so_far = text_copyn(s->report->arena, words, end);
     if (kept > 0 && svg_text_width(so_far, letter, false) > width) break;
     kept = end;
@@ -130,7 +139,7 @@ static section_label fill_label(const section *s, const section_band *b, double 
   double y = plan_y(s, b->from_m + 0.7 * (b->to_m - b->from_m));
   if (fabs(y - stud_y) < apart) y = plan_y(s, b->from_m + 0.25 * (b->to_m - b->from_m));
   if (fabs(y - stud_y) < apart) y = stud_y + apart;
-  return label_of(b, edge - 20, y);
+  return label_of(b, edge - 9, y);
 }
 
 void section_plan_labels(section *s, section_column *c) {
@@ -162,19 +171,24 @@ void section_floor_labels(section *s, section_column *left, section_column *righ
     if (b->kind == VIEW_ROW) last_row = b;
     if (b->kind != VIEW_MOUNT) continue;
     bool clips = s->catalog->mounts[b->record].clips;
-    section_label l = floor_label(s, clips ? 0.075 : 0.05, (b->from_m + b->to_m) / 2,
-                                  clips ? "first rail, on its clip" : "first channel, screwed to "
-                                                                      "the studs only");
+    double along_m = section_first_rail_m(&s->catalog->mounts[b->record]);
+    const char *words = text_format(s->report->arena, "first %s, within %s of the floor",
+                                    clips ? "rail, on its clip" : "channel",
+                                    section_length(s, along_m));
+    /* On the leg of a channel, the middle of a clip. */
+    section_label l = floor_label(s, along_m - (clips ? 0 : 0.006), (b->from_m + b->to_m) / 2, words);
     section_label_add(b->side == SIDE_A ? left : right, l);
   }
   bool steel = s->frame->material == FRAME_STEEL;
   section_label_add(right, floor_label(s, SECTION_JOINT_M / 2, deep_m - bead_m,
                                        "acoustical sealant under each face, all round"));
-  if (last_row)
-    section_label_add(
-        right, floor_label(s, steel ? 1 / s->floor.scale : 0.6 * s->frame->stud_width_m,
-                           last_row->from_m + 0.7 * (last_row->to_m - last_row->from_m),
-                           steel ? "runner track" : "bottom plate"));
+  if (last_row && steel) /* on the leg at the leaf of B */
+    section_label_add(right, floor_label(s, 0.025, last_row->to_m - 1 / s->floor.scale,
+                                         "runner track"));
+  if (last_row && !steel)
+    section_label_add(right, floor_label(s, 0.6 * s->frame->stud_width_m,
+                                         0.3 * last_row->from_m + 0.7 * last_row->to_m,
+                                         "bottom plate"));
   section_label_add(right, (section_label){.x = section_x(&s->floor, 0, deep_m) + 8,
                                            .y = s->floor.y + 8, .to_y = s->floor.y + 8, .dots = 1,
                                            .words = "floor, by others", .aside = ""});

@@ -64,6 +64,15 @@ static void add_frame(legend *g) {
   }
 }
 
+static void add_rail(legend *g) {
+  if (!wall_is_mounted(g->section->wall)) return;
+  if (g->draw) {
+    section_box(g->section, &g->at, 0, wide_m, 0.0025, 0.0105, "cut-rail");
+    section_segment(g->section, &g->at, 0, 0.0065, wide_m, 0.0065, "cut-slot");
+  }
+  next(g, "rail of the mount, from above");
+}
+
 static void add_fibre(legend *g, fill_material m, const char *words) {
   const section *s = g->section;
   for (int i = 0; i < s->count; i++) {
@@ -94,6 +103,7 @@ static int run(section *s, double x, double y, bool draw) {
   legend g = {s, draw, {x, y, units_per_m, false}, 0};
   add_layers(&g);
   add_frame(&g);
+  add_rail(&g);
   add_fibre(&g, FILL_GLASS, "glass fibre");
   add_fibre(&g, FILL_STONE, "stone wool");
   add_fibre(&g, FILL_CELLULOSE, "blown cellulose");

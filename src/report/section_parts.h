@@ -89,6 +89,8 @@ void section_break(section *s, const section_place *p, double along_m, double be
 /* section_plan.c, section_floor.c: the cuts themselves. */
 void section_plan(section *s);
 void section_floor(section *s);
+/* Middle of the first rail of a mount above the floor. */
+double section_first_rail_m(const mount *type);
 
 /* section_labels.c: a column of labels with leaders to what they name. */
 enum { SECTION_MAX_LINES = 4 };
