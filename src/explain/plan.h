@@ -4,6 +4,7 @@
 #ifndef EXPLAIN_PLAN_H
 #define EXPLAIN_PLAN_H
 
+#include "explain/explain.h"
 #include "search/types.h"
 #include "select/plan.h"
 
@@ -56,6 +57,7 @@ typedef struct plan_used {
   const char *name; /* the drawings' mark where the wall is one of theirs, else T1, T2... by run */
   const char *mark; /* NULL: not a wall of the drawings */
   bool locked;      /* some row keeps it by its mark */
+  int candidate;    /* its index among those put to the solver */
   wall wall;
   const char *line;
   int judged_as;    /* index of the class it is judged under: where its margin is least */
@@ -85,6 +87,7 @@ typedef struct plan_section {
 /* What the walls need of an item, by the length of stud that it is cut from. */
 typedef struct plan_need {
   int item;        /* in the price book */
+  const char *section;
   double stud_m;   /* stock length; 0: not a stud */
   double quantity; /* takeoff units, waste included */
   int goods;       /* index in plan_answer.goods; -1: bought wall by wall at the list price */
@@ -106,7 +109,7 @@ typedef struct plan_drawn {
   double run_m;
   long long list_cents; /* rows costed alone, as plan_row; 0 when not costed */
   int used;             /* the plan's type that is the same wall; PLAN_NONE */
-  assessment **miss;    /* for each class that it misses the demand of */
+  const assessment **miss; /* for each class that it misses the demand of */
   int *miss_class;
   int miss_count;
   int miss_rows, miss_walls;
@@ -123,10 +126,7 @@ typedef struct plan_comparison {
 
 typedef struct plan_reason {
   int class_of;
-  assessment *const *nearest;
-  int nearest_count;
-  const rule_mask *conflict;
-  int conflict_count;
+  explanation *why; /* conflicts and nearest misses, judged by the class's demand */
 } plan_reason;
 
 typedef struct plan_answer {
@@ -141,6 +141,7 @@ typedef struct plan_answer {
   plan_money money;
   long long cost_cents, bound_cents; /* bound LLONG_MIN: nothing was proved */
   int worst_margin; /* 0.01 dB, least over all planned walls */
+  int margin_bound; /* of AIM_MARGIN: no plan has a better one */
   bool has_margin;  /* some planned wall has a target */
   plan_storey *storey;
   int storey_count; /* in the order of the schedule */
@@ -157,8 +158,9 @@ typedef struct plan_answer {
   plan_reason *unplanned;
   int unplanned_count; /* classes that no type fits */
   int unplanned_rows, unplanned_walls;
-  unsigned conflict[32]; /* infeasible: the smallest sets of plan_rule bits that cannot hold */
+  unsigned conflict[PLAN_MAX_CONFLICTS]; /* infeasible: the smallest sets of plan_rule bits that cannot hold */
   int conflict_count;
+  bool conflicts_whole; /* false: time ran out before all were settled */
   plan_drawn *drawn;
   int drawn_count;
   plan_comparison against;
@@ -169,18 +171,20 @@ typedef struct plan_answer {
   int candidates; /* types put to the solver */
 } plan_answer;
 
-typedef struct plan_terms {
+/* How it is worked out. */
+typedef struct plan_order {
   double seconds; /* for all solves together; 0 = no limit */
   const volatile int *stop;
   void (*progress)(void *user, const char *stage, double found, double bound);
   void *user;
   const char *save_model; /* of the plan itself; NULL = none */
-} plan_terms;
+} plan_order;
 
 /* Finds the types, solves, and explains. `mark_wall` holds the wall of each mark of the project.
- * False after messages. "No plan" is an answer. */
+ * False after messages. "No plan" is an answer. Without time limit and stop the answer is the same
+ * on every run. */
 bool plan_explain(arena *a, diag_list *d, const plan_context *x, const wall *mark_wall,
-                  const plan_terms *terms, plan_answer *out);
+                  const plan_order *order, plan_answer *out);
 
 long long plan_money_total(const plan_money *m);
 

@@ -1,5 +1,5 @@
 /* What brief/1 and project/1 have in common: the fields of a brief, their words, and how they are
- * read. For the readers of this layer only. */
+ * read. For the readers of this layer; its words also for the writer of briefs. */
 #ifndef INPUT_JOB_FIELDS_H
 #define INPUT_JOB_FIELDS_H
 

@@ -36,12 +36,12 @@ static void put_length(text *out, double metres, units_system u) {
   }
 }
 
-/* Studs come in the stock length that the wall takes. */
-static void set_package(const report *r, const assessment *x, const price_item *p, buy_line *b) {
-  if (is_stud(r, x, b->item)) {
+void buy_package(const report *r, double stud_m, buy_line *b) {
+  const price_item *p = &r->prices->items[b->item];
+  if (stud_m > 0) {
     text words;
     text_init(&words, r->arena, 100);
-    b->package = cost_stud_length_m(r->prices, r->catalog, r->brief, &x->wall);
+    b->package = stud_m;
     b->whole = true;
     text_put(&words, "stud ");
     put_length(&words, b->package, r->units);
@@ -60,13 +60,21 @@ static void set_package(const report *r, const assessment *x, const price_item *
                    : shown.unit;
 }
 
+void buy_count(double wanted, buy_line *b) {
+  b->count = (long long)ceil(wanted / b->package - count_slack);
+  if (b->count < 0) b->count = 0;
+  b->bought = (double)b->count * b->package;
+}
+
 static void settle(const report *r, const assessment *x, buy_line *b) {
   const price_item *p = &r->prices->items[b->item];
-  set_package(r, x, p, b);
+  double stud_m = is_stud(r, x, b->item)
+                      ? cost_stud_length_m(r->prices, r->catalog, r->brief, &x->wall)
+                      : 0;
+  buy_package(r, stud_m, b);
   double wanted = b->needed;
   if (p->minimum_order > wanted) wanted = b->least = p->minimum_order;
-  b->count = (long long)ceil(wanted / b->package - count_slack);
-  b->bought = (double)b->count * b->package;
+  buy_count(wanted, b);
   b->price = p->price;
   for (size_t i = 0; i < p->break_count; i++) {
     if (b->bought < p->breaks[i].from * (1 - count_slack)) break;

@@ -30,4 +30,12 @@ typedef struct buy_list {
 /* One line a material of the takeoff, in its order. Empty when the wall cannot be costed. */
 void buy_list_of(const report *r, const assessment *x, buy_list *out);
 
+/* ---- parts, for the list of a whole project ---- */
+
+/* Sets package, whole and as of a line whose item is set. `stud_m` the stock length that studs are
+ * cut from; 0 for what is no stud. */
+void buy_package(const report *r, double stud_m, buy_line *b);
+/* As many whole packages as hold `wanted` units: sets count and bought. */
+void buy_count(double wanted, buy_line *b);
+
 #endif

@@ -305,6 +305,11 @@ void report_json_rating(markup_json *j, const report *r, const char *key, const 
   markup_json_object(j, key, false);
   markup_json_string(j, "septum", "rating/1");
   markup_json_string(j, "version", SEPTUM_VERSION);
+  report_json_rating_facts(j, r, x);
+  markup_json_close(j);
+}
+
+void report_json_rating_facts(markup_json *j, const report *r, const assessment *x) {
   put_wall(j, r, x);
   markup_json_string(j, "line", x->line);
   put_sound(j, x);
@@ -318,7 +323,6 @@ void report_json_rating(markup_json *j, const report *r, const char *key, const 
   int cautions = view_cautions(r, x, caution);
   markup_json_array(j, "cautions", false);
   for (int i = 0; i < cautions; i++) markup_json_string(j, NULL, caution[i]);
-  markup_json_close(j);
   markup_json_close(j);
 }
 

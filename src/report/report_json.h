@@ -7,6 +7,10 @@
 
 /* A rating/1; null without a wall. */
 void report_json_rating(markup_json *j, const report *r, const char *key, const assessment *x);
+/* The same keys but "septum" and "version", into an object that is open. */
+void report_json_rating_facts(markup_json *j, const report *r, const assessment *x);
+/* A brief/1 that asks the same; paths are those that it was read from. */
+void report_json_brief(markup_json *j, const report *r, const char *key, const brief *b);
 /* {"STC", "Rw", "C", "Ctr", "OITC"} */
 void report_json_ratings(markup_json *j, const char *key, const ratings *v);
 /* Walls to compare with; `fails`: with the rules that they break. */
