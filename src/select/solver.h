@@ -41,8 +41,8 @@ typedef struct solver_model {
   int entry_count;
 } solver_model;
 
-/* LIMIT: time ran out; the result then holds the best found, if any. FAILED: a fault, in the
- * diagnostics. */
+/* LIMIT: time ran out, or nodes, or it was stopped; the result then holds the best found, if any.
+ * FAILED: a fault, in the diagnostics. */
 typedef enum solver_status {
   SOLVER_OPTIMAL,
   SOLVER_INFEASIBLE,
@@ -58,7 +58,31 @@ typedef struct solver_result {
   double *value;    /* column_count values, in the arena given to solver_run */
 } solver_result;
 
-/* Minimises. `seconds` 0 = no limit; without one the result is the same on every run. */
+/* How a model is solved; all zero is: to the end. Without `seconds` and `stop` the result is the
+ * same on every run. */
+typedef struct solver_how {
+  double seconds;      /* 0 = no limit */
+  int nodes;           /* most nodes of branch and bound; 0 = no limit */
+  const int *priority; /* a column; of those that are fractional the greatest is branched on first,
+                          depth first; NULL = the solver's own rule */
+  const double *start; /* a solution to begin with, column_count values, whole where binary: it must
+                          keep all rows, which is not checked; NULL = none */
+  bool asked;          /* only whether some solution costs no more than `limit` is asked: ends where
+                          that is settled, LIMIT with the solution or with a bound above it */
+  double limit;
+  bool dual; /* the first relaxation by the dual simplex: for many rows that start kept */
+  const volatile int *stop; /* ends early where it turns non-zero; may be NULL */
+  /* Told of each better solution (HUGE_VAL before the first) and bound, from the solver's thread;
+   * must return. May be NULL. */
+  void (*progress)(void *user, double found, double bound);
+  void *user;
+} solver_how;
+
+/* Minimises. LIMIT when seconds, nodes or `stop` ended it. */
+void solver_run_how(arena *a, diag_list *d, const solver_model *m, const solver_how *how,
+                    solver_result *out);
+/* The same with nothing but a limit of time. `seconds` 0 = no limit; without one the result is the
+ * same on every run. */
 void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, solver_result *out);
 /* Writes the exact model in CPLEX LP format, whole or not at all. False and a diagnostic when that
  * fails. */

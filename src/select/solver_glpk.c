@@ -19,10 +19,11 @@
 #include <string.h>
 #include <unistd.h>
 
+#include "base/clock.h"
 #include "base/file.h"
 #include "select/solver.h"
 
-enum { TALK_MAX = 512, MILLISECONDS = 1000, NAME_MAX_BYTES = 255 };
+enum { TALK_MAX = 512, MILLISECONDS = 1000, NAME_MAX_BYTES = 255, SLICE_ITERATIONS = 500 };
 
 /* GLPK's own default for the objective, 1e-7, is relative: with an objective near a million it
  * called plans optimal that were 0.10 too dear. */
@@ -36,9 +37,13 @@ typedef struct task {
   const solver_model *model;
   int *row_of, *column_of; /* entries as GLPK wants them, from 1 */
   double *value_of;
-  int limit_ms;
-  const char *save_path; /* NULL: solve */
-  solver_result *result; /* NULL: save */
+  const solver_how *how;
+  double begun; /* clock, s */
+  bool timed, started, cut_short;
+  double *start;                 /* how->start as GLPK counts, from 1 */
+  double told_found, told_bound; /* what `progress` heard last */
+  const char *save_path;         /* NULL: solve */
+  solver_result *result;         /* NULL: save */
   task_state state;
   jmp_buf escape;
   char talk[TALK_MAX]; /* the last words of GLPK, for the diagnostic */
@@ -103,15 +108,36 @@ static glp_prob *load(const task *t) {
   return p;
 }
 
-/* The first linear relaxation: branch and bound needs its optimum. True when the search may go on.
- */
+/* What is left of the time, in GLPK's unit; at least one so that a late call ends at once. */
+static int left_ms(const task *t) {
+  if (!t->timed) return INT_MAX;
+  double ms = (t->how->seconds - (clock_seconds() - t->begun)) * MILLISECONDS;
+  return ms < 1 ? 1 : ms < INT_MAX ? (int)ms : INT_MAX;
+}
+
+static bool stopped(const task *t) {
+  return t->how->stop && *t->how->stop;
+}
+
+static bool out_of_time(const task *t) {
+  return t->timed && clock_seconds() - t->begun >= t->how->seconds;
+}
+
+/* The first linear relaxation: branch and bound needs its optimum. The simplex has no callback, so
+ * it goes by slices of iterations, between which the stop flag is looked at. True when the search
+ * may go on. */
 static bool relax(glp_prob *p, const task *t) {
   glp_smcp how;
   glp_init_smcp(&how);
-  how.tm_lim = t->limit_ms;
-  int code = glp_simplex(p, &how);
+  how.it_lim = SLICE_ITERATIONS;
+  if (t->how->dual) how.meth = GLP_DUALP;
+  int code = 0;
+  do {
+    how.tm_lim = left_ms(t);
+    code = glp_simplex(p, &how);
+  } while (code == GLP_EITLIM && !stopped(t) && !out_of_time(t));
   int found = glp_get_status(p);
-  if (code == GLP_ETMLIM) {
+  if (code == GLP_ETMLIM || code == GLP_EITLIM) {
     t->result->status = SOLVER_LIMIT;
   } else if (code == 0 && found == GLP_NOFEAS) {
     t->result->status = SOLVER_INFEASIBLE;
@@ -122,13 +148,66 @@ static bool relax(glp_prob *p, const task *t) {
   return false;
 }
 
-/* Keeps the bound that is proved so far. */
-static void watch(glp_tree *tree, void *info) {
-  task *t = info;
+/* Keeps the bound that is proved so far, and tells of progress. */
+static void watch(glp_tree *tree, task *t) {
   int best = glp_ios_best_node(tree);
-  if (best == 0) return;
-  double bound = glp_ios_node_bound(tree, best);
-  if (bound > t->result->bound) t->result->bound = bound;
+  solver_result *r = t->result;
+  if (best != 0 && glp_ios_node_bound(tree, best) > r->bound)
+    r->bound = glp_ios_node_bound(tree, best);
+  if (!t->how->progress) return;
+  glp_prob *p = glp_ios_get_prob(tree);
+  double found = glp_mip_status(p) == GLP_FEAS ? glp_mip_obj_val(p) : HUGE_VAL;
+  double bound = fmin(r->bound, found);
+  if (!(found < t->told_found) && !(bound > t->told_bound)) return;
+  t->told_found = found;
+  t->told_bound = bound;
+  t->how->progress(t->how->user, found, bound);
+}
+
+/* Of the fractional columns that come first, the one nearest to a half; the first of equals. */
+static void choose_branch(glp_tree *tree, const task *t) {
+  glp_prob *p = glp_ios_get_prob(tree);
+  int chosen = 0;
+  double nearest = 1, value = 0;
+  for (int j = 1; j <= t->model->column_count; j++) {
+    if (!glp_ios_can_branch(tree, j)) continue;
+    double v = glp_get_col_prim(p, j);
+    double off = fabs(v - floor(v) - 0.5);
+    int rank = chosen ? t->how->priority[j - 1] - t->how->priority[chosen - 1] : 1;
+    if (rank < 0 || (rank == 0 && off >= nearest)) continue;
+    chosen = j;
+    nearest = off;
+    value = v;
+  }
+  if (chosen)
+    glp_ios_branch_upon(tree, chosen, value - floor(value) < 0.5 ? GLP_DN_BRNCH : GLP_UP_BRNCH);
+}
+
+/* Whether what was asked is settled by what was found, or by the bound. */
+static bool settled(glp_prob *p, const task *t) {
+  if (!t->how->asked) return false;
+  bool within = glp_mip_status(p) == GLP_FEAS && glp_mip_obj_val(p) <= t->how->limit;
+  return within || t->result->bound > t->how->limit;
+}
+
+static void listen(glp_tree *tree, void *info) {
+  task *t = info;
+  int nodes = 0;
+  watch(tree, t);
+  glp_ios_tree_size(tree, NULL, NULL, &nodes);
+  bool enough = t->how->nodes > 0 && nodes > t->how->nodes;
+  if (enough || stopped(t) || settled(glp_ios_get_prob(tree), t)) {
+    t->cut_short = true;
+    glp_ios_terminate(tree);
+    return;
+  }
+  int reason = glp_ios_reason(tree);
+  if (reason == GLP_IHEUR && t->start && !t->started) {
+    t->started = true;
+    (void)glp_ios_heur_sol(tree, t->start);
+  } else if (reason == GLP_IBRANCH && t->how->priority) {
+    choose_branch(tree, t);
+  }
 }
 
 static void branch(glp_prob *p, task *t) {
@@ -138,22 +217,23 @@ static void branch(glp_prob *p, task *t) {
   how.mip_gap = 0.0;
   how.tol_obj = objective_tolerance;
   how.tol_int = integer_tolerance;
-  how.tm_lim = t->limit_ms;
-  how.cb_func = watch;
+  how.tm_lim = left_ms(t);
+  if (t->how->priority) how.bt_tech = GLP_BT_DFS;
+  how.cb_func = listen;
   how.cb_info = t;
   int code = glp_intopt(p, &how);
   int found = glp_mip_status(p);
   solver_result *r = t->result;
-  if (code != 0 && code != GLP_ETMLIM) return;
-  r->status = code == GLP_ETMLIM    ? SOLVER_LIMIT
-              : found == GLP_OPT    ? SOLVER_OPTIMAL
-              : found == GLP_NOFEAS ? SOLVER_INFEASIBLE
-                                    : SOLVER_FAILED;
+  if (code != 0 && code != GLP_ETMLIM && code != GLP_ESTOP) return;
+  r->status = code != 0 || t->cut_short ? SOLVER_LIMIT
+              : found == GLP_OPT        ? SOLVER_OPTIMAL
+              : found == GLP_NOFEAS     ? SOLVER_INFEASIBLE
+                                        : SOLVER_FAILED;
   r->found = found == GLP_OPT || found == GLP_FEAS;
   if (!r->found) return;
   r->objective = glp_mip_obj_val(p);
   for (int j = 0; j < t->model->column_count; j++) r->value[j] = glp_mip_col_val(p, j + 1);
-  if (r->status == SOLVER_OPTIMAL) r->bound = r->objective;
+  r->bound = r->status == SOLVER_OPTIMAL ? r->objective : fmin(r->bound, r->objective);
 }
 
 static void *errand(void *info) {
@@ -244,7 +324,15 @@ static void report_fault(diag_list *d, task *t, bool sent) {
              t->talk_len ? t->talk : "no reason given");
 }
 
-void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, solver_result *out) {
+/* GLPK counts from 1. */
+static double *counted_from_one(arena *a, const double *from, int n) {
+  double *out = arena_array(a, (size_t)n + 1, sizeof *out);
+  memcpy(out + 1, from, (size_t)n * sizeof *out);
+  return out;
+}
+
+void solver_run_how(arena *a, diag_list *d, const solver_model *m, const solver_how *how,
+                    solver_result *out) {
   *out = (solver_result){.status = SOLVER_FAILED, .bound = -HUGE_VAL};
   const char *fault = model_fault(m);
   if (fault) {
@@ -254,12 +342,20 @@ void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, s
   out->value = arena_array(a, (size_t)m->column_count, sizeof *out->value);
   task *t = arena_alloc(a, sizeof *t);
   prepare(a, m, t);
-  double ms = seconds * MILLISECONDS;
-  t->limit_ms = seconds > 0 && ms < INT_MAX ? (int)fmax(ms, 1.0) : INT_MAX;
+  t->how = how;
+  if (how->start) t->start = counted_from_one(a, how->start, m->column_count);
+  t->timed = how->seconds > 0;
+  t->begun = clock_seconds();
+  t->told_found = HUGE_VAL;
+  t->told_bound = -HUGE_VAL;
   t->result = out;
   bool sent = send(t);
   if (!sent || t->state != TASK_DONE) out->status = SOLVER_FAILED;
   if (out->status == SOLVER_FAILED) report_fault(d, t, sent);
+}
+
+void solver_run(arena *a, diag_list *d, const solver_model *m, double seconds, solver_result *out) {
+  solver_run_how(a, d, m, &(solver_how){.seconds = seconds}, out);
 }
 
 /* The bytes of GLPK's file, which is gone afterwards. NULL when it cannot be read; never jumps
