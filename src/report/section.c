@@ -14,8 +14,8 @@ typedef struct layout {
   double labels_x, labels_wide, right; /* 0: no labels */
 } layout;
 
-static const layout full = {820, 66, 404, 240, 20, 13, 20, 522, 222, 808};
-static const layout small = {320, 44, 264, 150, 12, 11.5, 14, 0, 0, 308};
+static const layout full = {820, 66, 404, 240, 20, 13, 20, 518, 218, 812};
+static const layout small = {320, 44, 264, 150, 12, 11.5, 14, 0, 0, 312};
 
 /* Length of wall that the plan would show on its whole width: one bay of the widest spacing and
  * a piece of the next, so that samples of most walls are at one scale. */
@@ -256,7 +256,7 @@ static void put_floor(section *s, double top) {
   section_column left = {.left = true}, right = {.left = false};
   double x1 = s->floor.x + s->thickness_m * s->floor.scale;
   left.x = s->floor.x - 34;
-  left.width = left.x - 8;
+  left.width = left.x - 14;
   left.knee_x = s->floor.x - 12;
   right.x = x1 + 40;
   right.width = legend_x - 24 - right.x;

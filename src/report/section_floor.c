@@ -11,7 +11,7 @@ static const double track_leg_m = 0.0318, channel_foot_m = 0.018, channel_leg_m 
 
 /* Within 2 in of the floor for channels, 3 in for clips (common practice, no source). */
 double section_first_rail_m(const mount *type) {
-  return UNITS_M_PER_IN * (type->clips ? 3 : 2);
+  return type->clips ? 0.075 : 0.05;
 }
 
 static double clear(const section *s) {

@@ -171,10 +171,12 @@ void section_floor_labels(section *s, section_column *left, section_column *righ
     if (b->kind == VIEW_ROW) last_row = b;
     if (b->kind != VIEW_MOUNT) continue;
     bool clips = s->catalog->mounts[b->record].clips;
+    bool us = s->report->units == UNITS_US;
     double along_m = section_first_rail_m(&s->catalog->mounts[b->record]);
-    const char *words = text_format(s->report->arena, "first %s, within %s of the floor",
-                                    clips ? "rail, on its clip" : "channel",
-                                    section_length(s, along_m));
+    const char *words =
+        text_format(s->report->arena, "first %s, within %s of the floor",
+                    clips ? "rail, on its clip" : "channel",
+                    clips ? (us ? "3 in" : "75 mm") : (us ? "2 in" : "50 mm"));
     /* On the leg of a channel, the middle of a clip. */
     section_label l = floor_label(s, along_m - (clips ? 0 : 0.006), (b->from_m + b->to_m) / 2, words);
     section_label_add(b->side == SIDE_A ? left : right, l);
