@@ -24,7 +24,7 @@ typedef struct lanes {
 
 /* Points of bands first .. last with the leaf on side A, lane `at` of its block. */
 INLINE void side_points(kernel_core *k, const kernel_block *a, int at, int first, int last) {
-  const kernel_cavity *c = &k->cavity;
+  const kernel_cavity *c = k->cavity;
   kernel_points *p = &k->point;
   double m = a->mass[at], v = a->mass_fc2[at], u = a->loss_fc2[at] + k->fill_loss * v;
   for (int i = first * KERNEL_BAND_POINTS; i < (last + 1) * KERNEL_BAND_POINTS; i++) {
@@ -81,7 +81,7 @@ INLINE fraction fraction_sum(fraction x, fraction y) {
 /* Air path at point i for one lane. */
 INLINE fraction air_path(const kernel_core *k, int i, double m, double v, double u, double t) {
   const kernel_points *p = &k->point;
-  double g = k->cavity.g[i], y_re = g * u, y_im = m - g * v;
+  double g = k->cavity->g[i], y_re = g * u, y_im = m - g * v;
   double r_re = p->r_re[i] + y_re, r_im = p->r_im[i] + y_im;
   double q_re = p->q_re[i] + y_re, q_im = p->q_im[i] + y_im;
   double re = t * r_re + (p->k_re[i] * q_re - p->k_im[i] * q_im);
@@ -102,25 +102,28 @@ INLINE fraction bridged_path(const kernel_core *k, int i, const kernel_block *b,
                     radiation * heave * (1.0 + t->roll[i] * p->resonance[j])};
 }
 
-/* Adds the transmission of tone i: all its fractions over one division. */
+/* Transmission of tone i for lane j: all its fractions as one. */
+INLINE fraction tone_of(const kernel_core *k, int i, const kernel_block *b, int j) {
+  const int p = i * MODEL_ANGLES;
+  double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j] + k->fill_loss * v;
+  double t = k->tone.soft_a[i] + k->tone.bay[SIDE_B][i] * b->slack[j];
+  fraction x = fraction_sum(air_path(k, p, m, v, u, t), air_path(k, p + 1, m, v, u, t));
+  fraction y = fraction_sum(air_path(k, p + 2, m, v, u, t), air_path(k, p + 3, m, v, u, t));
+  return fraction_sum(fraction_sum(x, y), bridged_path(k, i, b, j));
+}
+
 INLINE void tone_add(const kernel_core *k, int i, const kernel_block *restrict b, lanes l,
                      double *restrict tau) {
-  const int p = i * MODEL_ANGLES;
   for (int j = l.from; j < l.to; j++) {
-    double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j] + k->fill_loss * v;
-    double t = k->tone.soft_a[i] + k->tone.bay[SIDE_B][i] * b->slack[j];
-    fraction x = fraction_sum(air_path(k, p, m, v, u, t), air_path(k, p + 1, m, v, u, t));
-    fraction y = fraction_sum(air_path(k, p + 2, m, v, u, t), air_path(k, p + 3, m, v, u, t));
-    fraction all = fraction_sum(fraction_sum(x, y), bridged_path(k, i, b, j));
+    fraction all = tone_of(k, i, b, j);
     tau[j] += all.num / all.den;
   }
 }
 
 INLINE void pair_set(kernel_core *k, const kernel_block *b, lanes l) {
-  const kernel_block *a = &k->leaves->block[k->side_a / KERNEL_LANES];
   kernel_pair *p = &k->pair;
-  double heave_a = a->heave[k->side_a % KERNEL_LANES];
-  double mass_minus1_a = a->mass_minus1[k->side_a % KERNEL_LANES];
+  double heave_a = k->side_block->heave[k->side_lane];
+  double mass_minus1_a = k->side_block->mass_minus1[k->side_lane];
   for (int j = l.from; j < l.to; j++) {
     double heave = heave_a + b->heave[j];
     double f0_2 = k->resonance_k * (mass_minus1_a + b->mass_minus1[j]);
@@ -232,8 +235,9 @@ INLINE void bands_db(kernel_core *k, lanes l, int first, int last) {
  * METRIC_STC. */
 typedef struct kernel_job {
   bool want[METRIC_COUNT];
-  bool bound;
-  int first, last; /* bands */
+  bool bound, screen;
+  int first, last;  /* bands */
+  double tau_most;  /* screen: what lets more through at 125 Hz is refused */
 } kernel_job;
 
 INLINE void block_bound(kernel_core *k, const kernel_block *b, lanes l) {
@@ -244,6 +248,24 @@ INLINE void block_bound(kernel_core *k, const kernel_block *b, lanes l) {
     double shift = lane_db(k->level[BAND_125][j]) - contour;
     out[j] = lane_step_down(shift + RATING_STC_LIMIT_DB);
   }
+}
+
+/* One tone after another, since more tones only let more through: mostly the first refuses all. */
+INLINE void block_screen(kernel_core *k, const kernel_block *b, lanes l, double tau_most) {
+  double *restrict tau = k->level[BAND_125];
+  unsigned char *restrict open = k->open;
+  int left = 1;
+  pair_set(k, b, l);
+  for (int j = l.from; j < l.to; j++) tau[j] = k->ceiling_tau;
+  for (int j = l.from; j < l.to; j++) open[j] = 0;
+  for (int i = 0; i < MODEL_SUBBANDS && left; i++) {
+    double passed = 0.0;
+    tone_add(k, BAND_125 * MODEL_SUBBANDS + i, b, l, tau);
+    for (int j = l.from; j < l.to; j++) passed += tau[j] <= tau_most ? 1.0 : 0.0;
+    left = passed > 0.0;
+  }
+  if (!left) return;
+  for (int j = l.from; j < l.to; j++) open[j] = tau[j] <= tau_most;
 }
 
 INLINE void block_rate(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job) {
@@ -260,7 +282,9 @@ INLINE void block_rate(kernel_core *k, const kernel_block *b, lanes l, const ker
 }
 
 INLINE void block_any(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job) {
-  if (job->bound)
+  if (job->screen)
+    block_screen(k, b, l, job->tau_most);
+  else if (job->bound)
     block_bound(k, b, l);
   else
     block_rate(k, b, l, job);
@@ -319,23 +343,50 @@ const char *kernel_vectors(void) {
 
 /* ------------------------------------------------------------------ calls */
 
-/* Makes the tables of bands first .. last that are not there yet. */
-static void prepare(kernel_core *k, const kernel_build *build, const kernel_leaves *leaves,
-                    int side_a, int first, int last) {
-  if (k->leaves != leaves || k->side_a != side_a) memset(k->side_ready, 0, sizeof k->side_ready);
-  k->leaves = leaves;
-  k->side_a = side_a;
+/* Makes the tables of bands first .. last that are not there yet, with leaf `a` on side A. */
+static void prepare(kernel_core *k, const kernel_build *build, const kernel_leaves *leaves, int a,
+                    int first, int last) {
+  const kernel_block *block = &leaves->block[a / KERNEL_LANES];
+  int lane = a % KERNEL_LANES;
+  if (k->side_block != block || k->side_lane != lane)
+    memset(k->side_ready, 0, sizeof k->side_ready);
+  k->side_block = block;
+  k->side_lane = lane;
   while (first <= last && k->side_ready[first]) first++;
   if (first > last) return;
   for (int band = first; band <= last; band++) {
     if (!k->core_ready[band]) kernel_core_band(k, band);
     k->side_ready[band] = true;
   }
-  build->side(k, &leaves->block[side_a / KERNEL_LANES], side_a % KERNEL_LANES, first, last);
+  build->side(k, block, lane, first, last);
 }
 
 static int step_up(int lane) {
   return (lane + KERNEL_STEP - 1) / KERNEL_STEP * KERNEL_STEP;
+}
+
+/* The part of faces first_b + done .. first_b + n - 1 that lies in one block. */
+typedef struct stretch {
+  int block, lane, count;
+  lanes lanes;
+} stretch;
+
+static stretch stretch_at(int first_b, int done, int n) {
+  stretch s = {(first_b + done) / KERNEL_LANES, (first_b + done) % KERNEL_LANES, n - done, {0, 0}};
+  if (s.count > KERNEL_LANES - s.lane) s.count = KERNEL_LANES - s.lane;
+  s.lanes = (lanes){s.lane / KERNEL_STEP * KERNEL_STEP, step_up(s.lane + s.count)};
+  return s;
+}
+
+/* The wanted metrics of `count` lanes from `lane`, one after another at `out`, `apart` values
+ * apart. */
+static void hand_out(const kernel_core *k, const kernel_job *job, int lane, int count, int apart,
+                     double *out) {
+  for (int metric = 0; metric < METRIC_COUNT; metric++) {
+    if (!job->want[metric]) continue;
+    memcpy(out, &k->result[metric][lane], (size_t)count * sizeof *out);
+    out += apart;
+  }
 }
 
 /* Goes over the blocks that hold faces first_b .. first_b + n - 1; wanted metrics one after another
@@ -344,30 +395,29 @@ static void sweep(kernel_core *k, const kernel_leaves *leaves, int side_a, int f
                   const kernel_job *job, double *out) {
   kernel_build build = widest();
   prepare(k, &build, leaves, side_a, job->first, job->last);
-  for (int done = 0, count; done < n; done += count) {
-    int block = (first_b + done) / KERNEL_LANES, lane = (first_b + done) % KERNEL_LANES;
-    count = KERNEL_LANES - lane < n - done ? KERNEL_LANES - lane : n - done;
-    lanes l = {lane / KERNEL_STEP * KERNEL_STEP, step_up(lane + count)};
-    build.block(k, &leaves->block[block], l, job);
-    double *to = out + done;
-    for (int metric = 0; metric < METRIC_COUNT; metric++) {
-      if (!job->want[metric]) continue;
-      memcpy(to, &k->result[metric][lane], (size_t)count * sizeof *to);
-      to += n;
-    }
+  for (int done = 0; done < n;) {
+    stretch s = stretch_at(first_b, done, n);
+    build.block(k, &leaves->block[s.block], s.lanes, job);
+    hand_out(k, job, s.lane, s.count, n, out + done);
+    done += s.count;
   }
+}
+
+static kernel_job job_of(const kernel_core *k, sound_metric metric) {
+  kernel_job job = {.first = k->sum[metric].first, .last = k->sum[metric].last};
+  job.want[metric] = true;
+  return job;
 }
 
 void kernel_rate(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                  sound_metric metric, double *exact) {
-  kernel_job job = {.first = k->sum[metric].first, .last = k->sum[metric].last};
-  job.want[metric] = true;
+  kernel_job job = job_of(k, metric);
   sweep(k, leaves, side_a, first_b, n, &job, exact);
 }
 
 void kernel_rate_all(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                      double *exact) {
-  kernel_job job = {.first = k->sum[METRIC_OITC].first, .last = k->sum[METRIC_OITC].last};
+  kernel_job job = job_of(k, METRIC_OITC);
   for (int metric = 0; metric < METRIC_COUNT; metric++) {
     job.want[metric] = true;
     job.first = k->sum[metric].first < job.first ? k->sum[metric].first : job.first;
@@ -381,4 +431,44 @@ void kernel_bound(kernel_core *k, const kernel_leaves *leaves, int side_a, int f
   kernel_job job = {.bound = true, .first = BAND_125, .last = BAND_125};
   job.want[METRIC_STC] = true;
   sweep(k, leaves, side_a, first_b, n, &job, stc_at_most);
+}
+
+void kernel_screen(kernel_core *k, const kernel_leaves *leaves_a, int a,
+                   const kernel_leaves *leaves_b, int first_b, int n, double screen,
+                   unsigned char *open) {
+  kernel_job job = {.screen = true, .first = BAND_125, .last = BAND_125, .tau_most = screen};
+  kernel_build build = widest();
+  prepare(k, &build, leaves_a, a, BAND_125, BAND_125);
+  for (int done = 0; done < n;) {
+    stretch s = stretch_at(first_b, done, n);
+    build.block(k, &leaves_b->block[s.block], s.lanes, &job);
+    memcpy(open + done, &k->open[s.lane], (size_t)s.count);
+    done += s.count;
+  }
+}
+
+/* The blocks are arrays of one lane count and nothing else. */
+_Static_assert(sizeof(kernel_block) % (KERNEL_LANES * sizeof(double)) == 0, "arrays of lanes");
+
+static void gather(kernel_block *to, int lane, const kernel_leaves *leaves, int b) {
+  enum { ARRAYS = sizeof(kernel_block) / (KERNEL_LANES * sizeof(double)) };
+  const double *from = (const double *)&leaves->block[b / KERNEL_LANES] + b % KERNEL_LANES;
+  double *at = (double *)to + lane;
+  for (int i = 0; i < ARRAYS; i++) at[i * KERNEL_LANES] = from[i * KERNEL_LANES];
+}
+
+void kernel_rate_listed(kernel_core *k, const kernel_leaves *leaves_a, int a,
+                        const kernel_leaves *leaves_b, const int *b, int n, sound_metric metric,
+                        double *exact) {
+  kernel_job job = job_of(k, metric);
+  kernel_build build = widest();
+  prepare(k, &build, leaves_a, a, job.first, job.last);
+  for (int done = 0, count; done < n; done += count) {
+    count = n - done < KERNEL_LANES ? n - done : KERNEL_LANES;
+    lanes l = {0, step_up(count)};
+    for (int i = 0; i < l.to; i++)
+      gather(&k->gathered, i, leaves_b, b[done + (i < count ? i : count - 1)]);
+    build.block(k, &k->gathered, l, &job);
+    hand_out(k, &job, 0, count, n, exact + done);
+  }
 }

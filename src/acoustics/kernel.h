@@ -17,8 +17,8 @@ typedef struct kernel_leaves kernel_leaves;
 /* Tables of `n` faces, none empty (leaf scalars are per face; support spacing enters by the core). Lives in `a`; only
  * read afterwards, so that threads may share it. */
 kernel_leaves *kernel_leaves_create(arena *a, const catalog *c, const face *faces, int n);
-/* Tables of one core; its faces, sheaths and inner faces are ignored (they must be empty). Scratch for one thread, about 100 KiB
- * in `a`. */
+/* Tables of one core; its faces, sheaths and inner faces are ignored (they must be empty). Scratch for one thread, up to 2 MiB
+ * in `a` as cavities are met. */
 kernel_core *kernel_core_create(arena *a, const catalog *c);
 /* Makes `k` the tables of `core`. Costs the time of some hundred walls. */
 void kernel_core_set(kernel_core *k, const wall *core);
@@ -31,6 +31,15 @@ void kernel_rate_all(kernel_core *k, const kernel_leaves *leaves, int side_a, in
 /* stc_at_most[j] >= the exact STC that kernel_rate gives for the same wall, from the band at 125 Hz alone: no contour passes a
  * curve by more than 8 dB. At a small part of the time of kernel_rate. */
 void kernel_bound(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n, double *stc_at_most);
+/* What kernel_screen takes for `stc`. */
+double kernel_screen_of(double stc);
+/* The quick test: open[j] = 0 only where the exact STC of face `a` of leaves_a on A and face first_b + j of leaves_b on B is
+ * surely below the `stc` of kernel_screen_of, by the band at 125 Hz or a part of it; else 1. */
+void kernel_screen(kernel_core *k, const kernel_leaves *leaves_a, int a, const kernel_leaves *leaves_b, int first_b, int n,
+                   double screen, unsigned char *open);
+/* kernel_rate for the `n` faces b[] of leaves_b: the same bits. */
+void kernel_rate_listed(kernel_core *k, const kernel_leaves *leaves_a, int a, const kernel_leaves *leaves_b, const int *b, int n,
+                        sound_metric metric, double *exact);
 /* Which vectors the lanes run in on this machine: "avx512", "avx2" or "portable". All give the same bits. */
 const char *kernel_vectors(void);
 

@@ -14,11 +14,15 @@ enum {
   KERNEL_STEP = 8,   /* lanes are taken in whole multiples of the widest vector */
   KERNEL_TONES = BANDS * MODEL_SUBBANDS,
   KERNEL_POINTS = KERNEL_TONES * MODEL_ANGLES,
-  KERNEL_BAND_POINTS = MODEL_SUBBANDS * MODEL_ANGLES
+  KERNEL_BAND_POINTS = MODEL_SUBBANDS * MODEL_ANGLES,
+  KERNEL_CAVITIES = 48 /* kept, the oldest goes first: 40 KiB each */
 };
 
-/* What the core says of a point. */
+/* What the cavity says of a point. Cores that differ in what stands in the cavity's sides only
+ * (spacing, gauge of the studs) have the same. */
 typedef struct kernel_cavity {
+  model_cavity of;
+  bool ready[BANDS]; /* tables are made when a band is first asked for */
   double alpha[KERNEL_POINTS], alpha_minus1[KERNEL_POINTS]; /* w/z0 */
   double g[KERNEL_POINTS];                                  /* f^2 sin^4 */
   double a_re[KERNEL_POINTS], a_im[KERNEL_POINTS], b_re[KERNEL_POINTS], b_im[KERNEL_POINTS];
@@ -96,16 +100,20 @@ struct kernel_core {
   kernel_order order[KERNEL_SORT_STEPS];
   model_wall model;            /* of the core; its leaves stand for none */
   double resonance_k;          /* f0^2 = resonance_k (1/m_A + 1/m) */
-  const kernel_leaves *leaves; /* of the leaf on side A that was swept last; NULL = none */
-  int side_a;
+  const kernel_block *side_block; /* of the leaf on side A that was swept last; NULL = none */
+  int side_lane;
   bool core_ready[BANDS], side_ready[BANDS]; /* tables are made when a band is first asked for */
-  kernel_cavity cavity;
+  arena *arena;
+  kernel_cavity *kept[KERNEL_CAVITIES], *cavity; /* the core's is one of those kept */
+  int cavities, oldest;
   kernel_tones tone;
   kernel_points point;
   kernel_pair pair;
   double level[BANDS][KERNEL_LANES];          /* tau, then TL in dB */
   double fit[RATING_FIT_BANDS][KERNEL_LANES]; /* TL less contour, sorted */
   double result[METRIC_COUNT][KERNEL_LANES];
+  unsigned char open[KERNEL_LANES]; /* of the screen */
+  kernel_block gathered;            /* lanes from here and there, side by side */
 };
 
 /* The tables of one band as far as the core decides them. */

@@ -73,11 +73,37 @@ static void order_set(kernel_order order[KERNEL_SORT_STEPS]) {
 
 kernel_core *kernel_core_create(arena *a, const catalog *c) {
   kernel_core *k = arena_alloc(a, sizeof *k);
+  k->arena = a;
   k->catalog = c;
   sums_set(k->sum);
   order_set(k->order);
   k->ceiling_tau = pow(10, -c->acoustics->ceiling_db / 10);
   return k;
+}
+
+static bool same_cavity(const model_cavity *x, const model_cavity *y) {
+  bool same = x->gaps == y->gaps;
+  for (int g = 0; same && g < x->gaps; g++)
+    same = x->gap[g].filled == y->gap[g].filled && !(x->gap[g].depth_m < y->gap[g].depth_m) &&
+           !(x->gap[g].depth_m > y->gap[g].depth_m);
+  return same;
+}
+
+/* The tables of a cavity, from earlier cores where they are kept. */
+static kernel_cavity *cavity_of(kernel_core *k, const model_cavity *c) {
+  for (int i = 0; i < k->cavities; i++)
+    if (same_cavity(&k->kept[i]->of, c)) return k->kept[i];
+  int at = k->cavities;
+  if (at < KERNEL_CAVITIES) {
+    k->kept[at] = arena_alloc(k->arena, sizeof *k->kept[at]);
+    k->cavities++;
+  } else {
+    at = k->oldest;
+    k->oldest = (k->oldest + 1) % KERNEL_CAVITIES;
+  }
+  k->kept[at]->of = *c;
+  memset(k->kept[at]->ready, 0, sizeof k->kept[at]->ready);
+  return k->kept[at];
 }
 
 void kernel_core_set(kernel_core *k, const wall *core) {
@@ -87,7 +113,8 @@ void kernel_core_set(kernel_core *k, const wall *core) {
   for (int g = 0; g < k->model.cavity[0].gaps; g++) depth += k->model.cavity[0].gap[g].depth_m;
   k->resonance_k = turn * turn * x->air_density / depth;
   k->fill_loss = k->model.fill_loss;
-  k->leaves = NULL;
+  k->cavity = cavity_of(k, &k->model.cavity[0]);
+  k->side_block = NULL;
   memset(k->core_ready, 0, sizeof k->core_ready);
 }
 
@@ -96,7 +123,7 @@ void kernel_core_set(kernel_core *k, const wall *core) {
  * 2)/(alpha c) + y] }. */
 static void point_set(kernel_core *k, int at, double f, int angle) {
   const struct acoustics *x = k->catalog->acoustics;
-  kernel_cavity *p = &k->cavity;
+  kernel_cavity *p = k->cavity;
   double weight, omega = 2 * PI * f, s2 = model_sin2(x, f, angle, &weight);
   double z0 = x->air_density * x->sound_speed / sqrt(1 - s2), alpha = omega / z0;
   model_matrix m = model_cavity_matrix(x, &k->model.cavity[0], f, s2);
@@ -137,8 +164,16 @@ void kernel_core_band(kernel_core *k, int band) {
     int tone = band * MODEL_SUBBANDS + i;
     double f = model_subband_hz(band, i);
     tone_set(k, tone, f);
-    for (int angle = 0; angle < MODEL_ANGLES; angle++)
+    for (int angle = 0; angle < MODEL_ANGLES && !k->cavity->ready[band]; angle++)
       point_set(k, tone * MODEL_ANGLES + angle, f, angle);
   }
-  k->core_ready[band] = true;
+  k->core_ready[band] = k->cavity->ready[band] = true;
+}
+
+/* What rounding can make of the screen's sum and of kernel_rate's curve is far less. */
+static const double screen_slack_db = 1e-3;
+
+double kernel_screen_of(double stc) {
+  double most_db = RATING_STC_LIMIT_DB - rating_stc_contour[BAND_125 - RATING_STC_FIRST];
+  return pow(10, -(stc - screen_slack_db - most_db) / 10);
 }

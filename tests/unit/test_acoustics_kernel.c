@@ -162,6 +162,60 @@ START_TEST(bound_is_never_passed) {
 }
 END_TEST
 
+/* A side A from other tables, and faces from here and there: the same bits as in order. */
+START_TEST(listed_faces_give_the_same) {
+  dice d = {31u};
+  face *faces = arena_array(memory, FACES, sizeof *faces);
+  double *all = arena_array(memory, FACES, sizeof *all);
+  double *listed = arena_array(memory, FACES, sizeof *listed);
+  int *list = arena_array(memory, FACES, sizeof *list);
+  fill_faces(&d, faces);
+  kernel_leaves *leaves = kernel_leaves_create(memory, cat, faces, FACES);
+  kernel_leaves *others = kernel_leaves_create(memory, cat, faces + 70, FACES - 70);
+  kernel_core *k = kernel_core_create(memory, cat);
+  for (int i = 0; i < 3 * FAMILY_COUNT; i++) {
+    wall core;
+    ck_assert(random_core(&d, (sound_family)(i % FAMILY_COUNT), &core));
+    kernel_core_set(k, &core);
+    int a = roll(&d, FACES - 70), n = 1 + roll(&d, FACES);
+    sound_metric m = (sound_metric)roll(&d, METRIC_COUNT);
+    kernel_rate(k, leaves, a + 70, 0, FACES, m, all);
+    for (int j = 0; j < n; j++) list[j] = roll(&d, FACES);
+    kernel_rate_listed(k, others, a, leaves, list, n, m, listed);
+    for (int j = 0; j < n; j++) ck_assert_double_eq(listed[j], all[list[j]]);
+  }
+}
+END_TEST
+
+/* Refuses no wall that reaches the value, and of those that miss it most. */
+START_TEST(screen_refuses_what_fails_only) {
+  static const double values[] = {40, 45.3, 50, 55, 60.1};
+  dice d = {4000u + (unsigned)_i};
+  face *faces = arena_array(memory, FACES, sizeof *faces);
+  double *exact = arena_array(memory, FACES, sizeof *exact);
+  unsigned char *open = arena_array(memory, FACES, sizeof *open);
+  fill_faces(&d, faces);
+  kernel_leaves *leaves = kernel_leaves_create(memory, cat, faces, FACES);
+  kernel_core *k = kernel_core_create(memory, cat);
+  int refused = 0;
+  for (int i = 0; i < share_of(CORES_PER_FAMILY); i++) {
+    wall core;
+    ck_assert(random_core(&d, (sound_family)_i, &core));
+    kernel_core_set(k, &core);
+    int a = roll(&d, FACES), first = roll(&d, FACES), n = FACES - first;
+    kernel_rate(k, leaves, a, first, n, METRIC_STC, exact);
+    for (size_t v = 0; v < sizeof values / sizeof *values; v++) {
+      kernel_screen(k, leaves, a, leaves, first, n, kernel_screen_of(values[v]), open);
+      for (int j = 0; j < n; j++) {
+        ck_assert_msg(open[j] || exact[j] < values[v], "%.1f refused at %.1f", exact[j], values[v]);
+        refused += !open[j];
+      }
+    }
+  }
+  ck_assert_int_gt(refused, 0);
+}
+END_TEST
+
 int main(void) {
   Suite *s = suite_create("acoustics_kernel");
   TCase *t = tcase_create("kernel");
@@ -170,6 +224,8 @@ int main(void) {
   tcase_add_loop_test(t, agrees_with_the_reference, 0, FAMILY_COUNT);
   tcase_add_test(t, parts_give_the_same);
   tcase_add_loop_test(t, bound_is_never_passed, 0, FAMILY_COUNT);
+  tcase_add_test(t, listed_faces_give_the_same);
+  tcase_add_loop_test(t, screen_refuses_what_fails_only, 0, FAMILY_COUNT);
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
   srunner_run_all(r, CK_NORMAL);
