@@ -44,6 +44,7 @@ static const struct catalog_file {
 };
 
 enum { FILES = sizeof files / sizeof files[0] };
+_Static_assert((int)FILES == (int)CATALOG_FILES, "a catalog tells the edition of each of its files");
 
 catalog *catalog_load(arena *a, diag_list *d, const char *folder) {
   catalog *c = arena_alloc(a, sizeof *c);
@@ -52,6 +53,7 @@ catalog *catalog_load(arena *a, diag_list *d, const char *folder) {
   c->folder = text_copy(a, folder);
   for (int i = 0; i < FILES; i++) {
     const json_value *root = json_load(a, d, file_join(a, folder, files[i].file));
+    c->edition[i] = (catalog_edition){files[i].file, root ? root->crc : 0};
     sound = root && files[i].read(&r, root, c) && sound;
   }
   return sound && rows_check_ids(a, d, c) ? c : NULL;

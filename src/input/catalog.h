@@ -186,8 +186,13 @@ typedef struct target_row {
 
 typedef struct acoustics acoustics; /* acoustics/coefficients: see input/coefficients.h */
 
+/* Which edition of a file was read. */
+typedef struct catalog_edition { const char *file; uint32_t crc; } catalog_edition;
+enum { CATALOG_FILES = 8 };
+
 typedef struct catalog {
   const char *folder;
+  catalog_edition edition[CATALOG_FILES];
   layer *layers;   size_t layer_count;
   frame *frames;   size_t frame_count;
   fill *fills;     size_t fill_count;

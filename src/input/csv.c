@@ -4,6 +4,7 @@
 #include <stdlib.h>
 #include <string.h>
 
+#include "base/checksum.h"
 #include "base/file.h"
 
 static const char byte_order_mark[] = "\xEF\xBB\xBF";
@@ -244,6 +245,7 @@ csv_table *csv_parse(arena *a, diag_list *d, const char *file, const char *bytes
   s.table = arena_alloc(a, sizeof *s.table);
   s.found = arena_array(a, CSV_MAX_COLUMNS, sizeof *s.found);
   s.table->file = file;
+  s.table->crc = checksum_crc32(bytes, len);
   size_t mark = sizeof byte_order_mark - 1;
   if (len >= mark && memcmp(bytes, byte_order_mark, mark) == 0) s.at += mark;
   s.line_start = s.at;

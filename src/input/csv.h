@@ -7,6 +7,7 @@
 
 #include <stdbool.h>
 #include <stddef.h>
+#include <stdint.h>
 
 #include "base/diag.h"
 
@@ -29,6 +30,7 @@ typedef struct csv_row {
 
 typedef struct csv_table {
   const char *file;
+  uint32_t crc;   /* CRC-32 of its bytes */
   char separator; /* ',' ';' or tab: the one that the header has most of */
   size_t columns;
   const csv_cell *header;

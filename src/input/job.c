@@ -565,6 +565,7 @@ bool job_read(arena *a, diag_list *d, const catalog *c, const json_value *root,
   raw->b = *out;
   read_object(&r, root, job_fields, COUNT(job_fields), raw);
   job_take(&r, root, raw, target_required, out);
+  out->crc = root->crc;
   diag_sort(d, first);
   return d->errors == before;
 }

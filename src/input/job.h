@@ -3,6 +3,7 @@
 #define INPUT_JOB_H
 
 #include <stdbool.h>
+#include <stdint.h>
 
 #include "base/bands.h"
 #include "base/units.h"
@@ -65,6 +66,7 @@ typedef struct opening {
 
 typedef struct brief {
   const char *file; /* NULL for the default brief */
+  uint32_t crc;     /* CRC-32 of its bytes */
   const char *title;
   units_system units;
   fire_code code;

@@ -5,6 +5,7 @@
 #include <stdlib.h>
 #include <string.h>
 
+#include "base/checksum.h"
 #include "base/file.h"
 #include "input/json_scan.h"
 
@@ -108,6 +109,7 @@ json_value *json_parse(arena *a, diag_list *d, const char *file, const char *byt
   json_value *root = json_scan(a, d, file, bytes, len, &string_bytes);
   if (root && d->errors == before) read_values(a, d, root, bytes, len, string_bytes);
   if (root) check_tree(a, d, root);
+  if (root) root->crc = checksum_crc32(bytes, len);
   return d->errors == before ? root : NULL;
 }
 

@@ -6,6 +6,7 @@
 
 #include <stdbool.h>
 #include <stddef.h>
+#include <stdint.h>
 
 #include "base/diag.h"
 
@@ -25,6 +26,7 @@ struct json_value {
   json_kind kind;
   int line, column;         /* where the value starts, from 1 */
   int key_line, key_column; /* where its key starts; 0 without one */
+  uint32_t crc;             /* of the outermost value: CRC-32 of the bytes it was read from */
   const char *file;
   const char *key; /* in an object, else NULL */
   size_t index;    /* position in its parent */

@@ -215,7 +215,7 @@ static void check_whole(job_reader *r, const json_value *root, const project *p)
 bool project_read(arena *a, diag_list *d, const catalog *c, const json_value *root, project *out) {
   size_t before = d->errors, first = d->count, rows;
   job_reader r = {a, d, c};
-  *out = (project){.file = root->file, .title = ""};
+  *out = (project){.file = root->file, .crc = root->crc, .title = ""};
   job_defaults(&out->common);
   if (!json_is(a, d, root, "project")) return false;
   raw_project *raw = arena_alloc(a, sizeof *raw);

@@ -32,6 +32,7 @@ typedef struct project_mark {
 
 typedef struct project {
   const char *file, *title;
+  uint32_t crc; /* CRC-32 of the file's bytes */
   units_system units;
   brief
       common; /* what every wall shares unless its row says otherwise: code, building, build, only,
