@@ -5,6 +5,7 @@
 #include "api/data.h"
 #include "api/request.h"
 #include "base/file.h"
+#include "report/report_html.h"
 #include "report/report_xlsx.h"
 #include "report/takeoff.h"
 
@@ -78,7 +79,9 @@ static bool write_sheets(call *k, const answer_job *job, const report *r, const 
 /* Writes the files that the options name, if any, and hands the answer out. */
 static status hand_out(call *k, answer_job *job, const report *r, const assessment *x,
                        const call_texts *t, status when_done) {
-  if (!call_texts_whole(k, t) || !write_sheets(k, job, r, x)) return k->diags.worst;
+  if (!call_texts_whole(k, t) || !write_sheets(k, job, r, x) ||
+      !call_save_page(k, t, job->options.save_html))
+    return k->diags.worst;
   job->made = call_deliver(k, t, job->options.save_csv);
   return job->made != NULL ? when_done : k->diags.worst;
 }
@@ -109,6 +112,7 @@ static status rate_stage(call *k, void *given) {
   report_rate_text(&prepared->report, x, &t.words);
   report_rate_json(&prepared->report, x, &t.json);
   report_takeoff_csv(&prepared->report, x, &t.csv);
+  if (job->options.save_html) report_rate_html(&prepared->report, x, &t.page);
   return hand_out(k, job, &prepared->report, x, &t, STATUS_OK);
 }
 

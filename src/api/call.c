@@ -79,12 +79,19 @@ void call_texts_init(call *k, call_texts *t) {
   text_init(&t->words, k->memory, ANSWER_MAX_BYTES);
   text_init(&t->json, k->memory, ANSWER_MAX_BYTES);
   text_init(&t->csv, k->memory, ANSWER_MAX_BYTES);
+  text_init(&t->page, k->memory, ANSWER_MAX_BYTES);
 }
 
 bool call_texts_whole(call *k, const call_texts *t) {
-  if (!t->words.cut && !t->json.cut && !t->csv.cut) return true;
+  if (!t->words.cut && !t->json.cut && !t->csv.cut && !t->page.cut) return true;
   diag_error(&k->diags, ERROR_INTERNAL, "the answer is larger than any answer should be");
   return false;
+}
+
+bool call_save_page(call *k, const call_texts *t, const char *path) {
+  if (path == NULL) return true;
+  return call_texts_whole(k, t) &&
+         file_write(k->memory, &k->diags, path, t->page.data, t->page.len);
 }
 
 septum_answer *call_deliver(call *k, const call_texts *t, const char *csv_path) {

@@ -47,15 +47,18 @@ void call_tell(call *k);
 /* An answer in `kept` with copies of the texts; it lives on. */
 septum_answer *call_answer(call *k, const char *text, const char *json, const char *csv);
 
-/* The three writings of one answer, under way. */
+/* The writings of one answer, under way. */
 typedef struct call_texts {
   text words, json, csv;
+  text page; /* HTML; empty where nobody asks for it */
 } call_texts;
 
 /* Empty, in the call's memory. */
 void call_texts_init(call *k, call_texts *t);
-/* Whether all three are whole; a message when one is cut, and then no file should be written. */
+/* Whether all are whole; a message when one is cut, and then no file should be written. */
 bool call_texts_whole(call *k, const call_texts *t);
+/* Writes the page to `path` (NULL: nothing is done). False after messages. */
+bool call_save_page(call *k, const call_texts *t, const char *path);
 /* The answer, and its CSV in the file `csv_path` (NULL: none). NULL after messages. */
 septum_answer *call_deliver(call *k, const call_texts *t, const char *csv_path);
 

@@ -14,6 +14,7 @@ typedef enum option_id {
   OPTION_FROM_CSV,
   OPTION_HAVE,
   OPTION_HELP,
+  OPTION_HTML,
   OPTION_JSON,
   OPTION_METRIC,
   OPTION_PRICES,
@@ -53,6 +54,8 @@ static const option_row option_rows[] = {
     {"have", "LINE|FILE", OPTION_HAVE, CLI_LADDER,
      "a given wall: what it takes from there (a wall line or a wall/1 file)"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
+    {"html", "FILE", OPTION_HTML, CLI_RATE,
+     "also write the answer as one page with drawings and charts"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
     {"metric", "NAME", OPTION_METRIC, CLI_LADDER,
      "STC, Rw, Rw+C, Rw+Ctr or OITC; default: the brief's, else STC"},
@@ -197,6 +200,9 @@ static bool apply(option_id id, const char *value, cli_line *out) {
     return true;
   case OPTION_HELP:
     out->help = true;
+    return true;
+  case OPTION_HTML:
+    out->options.save_html = value;
     return true;
   case OPTION_JSON:
     out->json = true;

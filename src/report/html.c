@@ -1,7 +1,11 @@
 #include "report/html.h"
 
+#include <inttypes.h>
 #include <string.h>
 
+#include "base/file.h"
+#include "report/chart.h"
+#include "report/section.h"
 #include "septum.h"
 
 /* --- the shell ------------------------------------------------------------------------------- */
@@ -32,6 +36,8 @@ static void put_head(html *h, const char *kind, const char *title) {
   text style;
   text_init(&style, r->arena, STYLE_MAX_BYTES);
   html_style(&style);
+  chart_style(&style);
+  section_style(&style, false);
   markup_xml_open(&h->x, "head");
   markup_xml_open(&h->x, "meta");
   markup_xml_attribute(&h->x, "charset", "utf-8");
@@ -68,15 +74,24 @@ void html_begin(html *h, const report *r, const char *kind, const char *title, t
   markup_xml_open(&h->x, "main");
 }
 
-static void put_files(html *h, const html_files *files) {
-  text t;
-  text_init(&t, h->report->arena, HTML_MAX_FILES * 400);
-  for (int i = 0; i < files->count; i++)
-    text_putf(&t, "%s%s %s", i ? ", " : "", files->file[i].name, files->file[i].crc);
-  html_fact_data(h, "Files, each with its CRC-32", t.len ? t.data : "none");
+static void put_edition(text *t, const char *path, uint32_t crc) {
+  if (path) text_putf(t, "%s%s %08" PRIX32, t->len ? ", " : "", file_name(path), crc);
 }
 
-void html_end(html *h, const html_files *files) {
+static void put_editions(html *h, const html_file *asked, int count) {
+  enum { FILES_MAX_BYTES = 64 << 10 };
+  const catalog *c = h->report->catalog;
+  text t;
+  text_init(&t, h->report->arena, FILES_MAX_BYTES);
+  for (int i = 0; i < count; i++) put_edition(&t, asked[i].path, asked[i].crc);
+  for (const price_book *b = h->report->prices; b; b = b->base)
+    if (b->json) put_edition(&t, b->json->file, b->json->crc);
+  for (int i = 0; i < CATALOG_FILES; i++)
+    put_edition(&t, c->edition[i].file, c->edition[i].crc);
+  html_fact_data(h, "Files read, with their CRC-32", t.data);
+}
+
+void html_end(html *h, const html_file *asked, int count) {
   const price_book *b = h->report->prices;
   markup_xml_close(&h->x);
   markup_xml_open(&h->x, "footer");
@@ -89,7 +104,7 @@ void html_end(html *h, const html_files *files) {
     html_fact_data(h, "Date of the prices", b->date);
     html_fact_data(h, "Source of the prices", b->source);
   }
-  put_files(h, files);
+  put_editions(h, asked, count);
   html_fact(h, "What decides",
             "Ratings predicted here are estimates, not tests; fire and structure are screened "
             "only. Local code, the listed fire design and licensed practice decide.");
@@ -97,6 +112,11 @@ void html_end(html *h, const html_files *files) {
   markup_xml_close(&h->x);
   markup_xml_close(&h->x);
   markup_xml_close(&h->x);
+}
+
+void html_end_brief(html *h) {
+  const brief *b = h->report->brief;
+  html_end(h, &(html_file){b->file, b->crc}, 1);
 }
 
 /* --- sections -------------------------------------------------------------------------------- */
@@ -156,6 +176,15 @@ text *html_picture(html *h, const char *css_class) {
   markup_xml_open(&h->x, "figure");
   markup_xml_attribute(&h->x, "class", css_class);
   return markup_xml_embed(&h->x);
+}
+
+void html_more(html *h, const char *summary) {
+  markup_xml_open(&h->x, "details");
+  markup_xml_element(&h->x, "summary", NULL, summary);
+}
+
+void html_more_end(html *h) {
+  markup_xml_close(&h->x);
 }
 
 const char *html_picture_id(html *h) {
@@ -230,7 +259,8 @@ static void put_column_head(html *h, const html_column *c) {
   markup_xml_close(&h->x);
 }
 
-void html_table(html *h, const char *caption, const html_column *column, int count) {
+void html_table_as(html *h, const char *css_class, const char *caption, const html_column *column,
+                   int count) {
   const char *id = text_format(h->report->arena, "t%d", ++h->tables);
   h->columns = count;
   for (int i = 0; i < count; i++) h->kind[i] = column[i].kind;
@@ -240,6 +270,7 @@ void html_table(html *h, const char *caption, const html_column *column, int cou
   markup_xml_attribute(&h->x, "aria-labelledby", id);
   markup_xml_attribute(&h->x, "tabindex", "0");
   markup_xml_open(&h->x, "table");
+  markup_xml_attribute(&h->x, "class", css_class);
   markup_xml_open(&h->x, "caption");
   markup_xml_attribute(&h->x, "id", id);
   markup_xml_text(&h->x, caption);
@@ -250,6 +281,10 @@ void html_table(html *h, const char *caption, const html_column *column, int cou
   markup_xml_close(&h->x);
   markup_xml_close(&h->x);
   markup_xml_open(&h->x, "tbody");
+}
+
+void html_table(html *h, const char *caption, const html_column *column, int count) {
+  html_table_as(h, NULL, caption, column, count);
 }
 
 static void put_cell(html *h, html_kind kind, const char *words) {

@@ -7,19 +7,6 @@
 #include "report/markup.h"
 #include "report/report.h"
 
-/* A file that an answer rests on, with the CRC-32 of its bytes, so that a filed page tells which
- * edition it was. */
-typedef struct html_file {
-  const char *name; /* without folder */
-  const char *crc;  /* 8 digits */
-} html_file;
-
-enum { HTML_MAX_FILES = 64 };
-typedef struct html_files {
-  html_file file[HTML_MAX_FILES];
-  int count;
-} html_files;
-
 typedef enum html_kind {
   HTML_HEAD,   /* what the row is about: its header */
   HTML_WORDS,  /* running text */
@@ -48,8 +35,16 @@ typedef struct html {
 /* Starts a page: head, style, and the header with what it is (`kind`) and whose (`title`, text of
  * the user; "" or NULL: the kind alone). Sections follow. */
 void html_begin(html *h, const report *r, const char *kind, const char *title, text *out);
-/* Ends it with what it rests on: program, files, price book (r->prices may be NULL). */
-void html_end(html *h, const html_files *files);
+/* Ends it with what it rests on: the program, the price book (r->prices may be NULL), and the files
+ * that were read, each with the CRC-32 of its bytes, so that a filed page tells their editions.
+ * `asked` are those besides catalogs and price books: brief, or project and schedule. */
+typedef struct html_file {
+  const char *path; /* its name is shown without the folder; NULL: no file */
+  uint32_t crc;
+} html_file;
+void html_end(html *h, const html_file *asked, int count);
+/* The end of a page for one brief. */
+void html_end_brief(html *h);
 
 /* A numbered section with its heading; not one in another. */
 void html_section(html *h, const char *heading);
@@ -77,6 +72,8 @@ void html_facts_end(html *h);
 
 /* A table; it scrolls by itself where the page is narrower. */
 void html_table(html *h, const char *caption, const html_column *column, int count);
+void html_table_as(html *h, const char *css_class, const char *caption, const html_column *column,
+                   int count);
 /* As many cells as the table has columns; NULL: an empty one. */
 void html_row(html *h, const char *const *cell);
 void html_row_as(html *h, const char *css_class, const char *const *cell);
@@ -85,6 +82,9 @@ void html_table_end(html *h);
 /* A box of a class of the style sheet. */
 void html_box(html *h, const char *css_class);
 void html_box_end(html *h);
+/* What is seen only when asked for. */
+void html_more(html *h, const char *summary);
+void html_more_end(html *h);
 /* A picture with words under it: between these two goes one <svg>, written to what the first hands
  * out. */
 text *html_picture(html *h, const char *css_class);
