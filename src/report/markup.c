@@ -159,14 +159,22 @@ static bool barred(const unsigned char *s, size_t length) {
 /* The reference that stands for a character; NULL when it stands for itself. */
 static const char *reference_of(unsigned char c, bool attribute) {
   switch (c) {
-  case '&': return "&amp;";
-  case '<': return "&lt;";
-  case '>': return "&gt;";
-  case '"': return attribute ? "&quot;" : NULL;
-  case '\t': return attribute ? "&#9;" : NULL;
-  case '\n': return attribute ? "&#10;" : NULL;
-  case '\r': return " ";
-  default: return NULL;
+  case '&':
+    return "&amp;";
+  case '<':
+    return "&lt;";
+  case '>':
+    return "&gt;";
+  case '"':
+    return attribute ? "&quot;" : NULL;
+  case '\t':
+    return attribute ? "&#9;" : NULL;
+  case '\n':
+    return attribute ? "&#10;" : NULL;
+  case '\r':
+    return " ";
+  default:
+    return NULL;
   }
 }
 
@@ -195,8 +203,8 @@ void markup_attribute(text *out, const char *value) {
 
 /* Elements without content: those of HTML 5 that have no end tag (12.1.2), and shapes of SVG. */
 static bool holds_nothing(const char *name) {
-  static const char *const names[] = {"br",     "circle", "col",  "hr",      "img",
-                                      "input",  "line",   "link", "meta",    "path",
+  static const char *const names[] = {"br",      "circle",  "col",  "hr",       "img",
+                                      "input",   "line",    "link", "meta",     "path",
                                       "ellipse", "polygon", "rect", "polyline", "use"};
   for (size_t i = 0; i < sizeof names / sizeof names[0]; i++)
     if (text_equal(name, names[i])) return true;

@@ -7,10 +7,10 @@
 /* Sizes of the two pictures in user units. */
 typedef struct layout {
   double width;
-  double plan_x, plan_wide;  /* the wall begins, its length on paper */
-  double most_high;          /* of the wall on paper: thicker walls get a smaller scale */
-  double structure;          /* width of the abutting structure */
-  double side_size, side_gap; /* lettering of the rooms, from there to the wall */
+  double plan_x, plan_wide;            /* the wall begins, its length on paper */
+  double most_high;                    /* of the wall on paper: thicker walls get a smaller scale */
+  double structure;                    /* width of the abutting structure */
+  double side_size, side_gap;          /* lettering of the rooms, from there to the wall */
   double labels_x, labels_wide, right; /* 0: no labels */
 } layout;
 
@@ -132,7 +132,8 @@ static void scale_bar(section *s, double x, double y, double scale, bool up_to) 
 }
 
 static void put_side(section *s, const layout *l, int side, double baseline) {
-  const char *name = side == SIDE_A ? "Side A" : "Side B", *room = s->report->brief->side[side].room;
+  const char *name = side == SIDE_A ? "Side A" : "Side B",
+             *room = s->report->brief->side[side].room;
   double left = s->plan.x + 2, used = svg_text_width("Side A  ", l->side_size, true);
   markup_xml *x = &s->svg.xml;
   markup_xml_open(x, "text");
@@ -190,9 +191,14 @@ static void begin(section *s, const layout *l, double height, text *out) {
   if (o->standalone) section_style(&style, true);
   const char *title =
       text_format(s->report->arena, "Wall section, %s thick", section_length(s, s->thickness_m));
-  svg_head head = {.prefix = o->prefix, .title = title, .desc = describe(s),
-                   .css_class = o->compact ? "cut cut-small" : "cut", .width = l->width,
-                   .height = height, .style = o->standalone ? style.data : NULL, .scale = 1};
+  svg_head head = {.prefix = o->prefix,
+                   .title = title,
+                   .desc = describe(s),
+                   .css_class = o->compact ? "cut cut-small" : "cut",
+                   .width = l->width,
+                   .height = height,
+                   .style = o->standalone ? style.data : NULL,
+                   .scale = 1};
   svg_begin(&s->svg, out, &head);
   section_patterns(s);
   if (o->standalone) svg_rect(&s->svg, 0, 0, l->width, height, "cut-paper");
@@ -282,7 +288,9 @@ static void draw_full(section *s, text *out) {
   double top = s->options->caption ? title_high + 4 : 6;
   double wall_high = s->thickness_m * s->plan.scale;
   double needed = plan_gap_above(s, l) + wall_high + plan_gap_below(l);
-  section_column column = {.x = l->labels_x, .width = l->labels_wide, .aside_x = l->right,
+  section_column column = {.x = l->labels_x,
+                           .width = l->labels_wide,
+                           .aside_x = l->right,
                            .knee_x = l->plan_x + l->plan_wide + 16};
   /* The height of the column depends on its words alone, so that it can tell where the wall is. */
   section_plan_labels(s, &column);
@@ -296,8 +304,8 @@ static void draw_full(section *s, text *out) {
   double end = fmax(s->floor.y + 42, lower + head_high + section_legend_height(s) + 6);
   begin(s, l, end, out);
   put_plan(s, l);
-  scale_bar(s, l->plan_x + l->plan_wide, s->plan.y + wall_high + dimension_high + 18,
-            s->plan.scale, true);
+  scale_bar(s, l->plan_x + l->plan_wide, s->plan.y + wall_high + dimension_high + 18, s->plan.scale,
+            true);
   section_column_put(s, &column, top, top + high);
   svg_line(&s->svg, 8, lower - 8, l->right, lower - 8, "cut-rule");
   put_floor(s, lower);
@@ -307,7 +315,10 @@ static void draw_full(section *s, text *out) {
 
 void section_draw(const report *r, const wall *w, const section_options *o, text *out) {
   section *s = arena_alloc(r->arena, sizeof *s);
-  *s = (section){.report = r, .wall = w, .catalog = r->catalog, .options = o,
+  *s = (section){.report = r,
+                 .wall = w,
+                 .catalog = r->catalog,
+                 .options = o,
                  .frame = &r->catalog->frames[w->frame]};
   section_bands(s);
   if (o->compact)

@@ -23,7 +23,8 @@ void section_draw(const report *r, const wall *w, const section_options *o, text
 
 /* The style sheet of the drawings, once a page. Light and dark are told apart by custom properties:
  * of the page it needs --paper, --ink, --soft, --rule, which it sets itself only when `standalone`;
- * its own are --gypsum --stipple --cement --panel --panel-grain --fibreboard --limp --damping --wood
+ * its own are --gypsum --stipple --cement --panel --panel-grain --fibreboard --limp --damping
+ * --wood
  * --wood-grain --steel --rail --glass --glass-line --stone --stone-line --cellulose
  * --cellulose-line --sealant --rubber --hatch. Standing alone it also gives every colour plainly,
  * for viewers that know no custom properties. */

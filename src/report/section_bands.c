@@ -23,13 +23,16 @@ static int side_of(const char *where) {
   return n > 0 && where[n - 1] == 'B' ? SIDE_B : SIDE_A;
 }
 
-static const char *words_of(const section *s, const view_part *p) {
-  bool doubled = wall_is_double(s->catalog, s->wall);
+static const char *words_of(const section *s, const view_part *p, int side) {
+  arena *a = s->report->arena;
+  const char *row = side == SIDE_A ? "row A" : "row B";
   if (p->kind == VIEW_FILL && p->record == CATALOG_NONE) return "bays left empty";
   if (p->kind == VIEW_GAP) return "clear gap between the rows";
-  bool named = (p->kind == VIEW_ROW && doubled) || text_starts(p->where, "on studs") ||
-               text_starts(p->where, "inner");
-  return named ? text_format(s->report->arena, "%s: %s", p->where, p->what) : p->what;
+  if (p->kind == VIEW_ROW && wall_is_double(s->catalog, s->wall))
+    return text_format(a, "%s: %s", row, p->what);
+  if (text_starts(p->where, "on studs")) return text_format(a, "on the studs: %s", p->what);
+  if (text_starts(p->where, "inner")) return text_format(a, "inner face, %s: %s", row, p->what);
+  return p->what;
 }
 
 /* A batt stands against the leaf of its row's side: against A in a frame of one row. It is as thick
@@ -57,14 +60,18 @@ void section_bands(section *s) {
   view_parts parts;
   view_parts_of(s->report, s->wall, &parts);
   double at_m = 0, inner_m = face_thickness_m(s->catalog, &s->wall->inner[SIDE_A]) +
-                            face_thickness_m(s->catalog, &s->wall->inner[SIDE_B]);
+                             face_thickness_m(s->catalog, &s->wall->inner[SIDE_B]);
   int row = -1;
   for (int i = 0; i < parts.count; i++) {
     const view_part *p = &parts.part[i];
     section_band *b = &s->band[s->count++];
-    *b = (section_band){.kind = p->kind, .record = p->record, .copies = p->copies,
-                        .side = side_of(p->where), .leaf = text_starts(p->where, "side"),
-                        .words = words_of(s, p), .thickness = thickness_of(s, p)};
+    *b = (section_band){.kind = p->kind,
+                        .record = p->record,
+                        .copies = p->copies,
+                        .side = side_of(p->where),
+                        .leaf = text_starts(p->where, "side"),
+                        .words = words_of(s, p, side_of(p->where)),
+                        .thickness = thickness_of(s, p)};
     if (p->kind == VIEW_ROW) row++;
     if (p->kind == VIEW_ROW || p->kind == VIEW_FILL) b->side = row;
     b->from_m = at_m;

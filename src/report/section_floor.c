@@ -1,4 +1,5 @@
-/* The cut at the floor: what a plan cannot show, the shape of rails and the joint under the boards. */
+/* The cut at the floor: what a plan cannot show, the shape of rails and the joint under the boards.
+ */
 #include <math.h>
 
 #include "report/section_parts.h"
@@ -39,8 +40,14 @@ static void put_row(section *s, const section_band *row, const section_band *bat
 /* Single leg: the foot on the stud below, the flange on the board above. */
 static void put_channel(section *s, double at_m, double stud_m, double leaf_m, double sign) {
   double in = sign * clear(s), leaf = leaf_m + in, stud = stud_m - in;
-  const double points[] = {at_m - channel_leg_m - channel_foot_m, stud, at_m - channel_leg_m, stud,
-                           at_m, leaf, at_m + channel_flange_m, leaf};
+  const double points[] = {at_m - channel_leg_m - channel_foot_m,
+                           stud,
+                           at_m - channel_leg_m,
+                           stud,
+                           at_m,
+                           leaf,
+                           at_m + channel_flange_m,
+                           leaf};
   section_outline(s, &s->floor, points, 4, "cut-steel");
 }
 
@@ -50,12 +57,13 @@ static void put_clip(section *s, double at_m, double stud_m, double leaf_m, doub
   double crown = hat_crown_m / 2, side = crown + hat_slope_m, foot = side + hat_foot_m;
   if (sign * (stud_m - base) > 0) {
     section_box(s, &s->floor, at_m - 0.6 * side, at_m + 0.6 * side, base, stud_m, "cut-rubber");
-    const double bracket[] = {at_m - foot, base + in, at_m - 0.6 * side, stud_m - in,
-                              at_m + 0.6 * side, stud_m - in, at_m + foot, base + in};
+    const double bracket[] = {at_m - foot,       base + in,   at_m - 0.6 * side, stud_m - in,
+                              at_m + 0.6 * side, stud_m - in, at_m + foot,       base + in};
     section_outline(s, &s->floor, bracket, 4, "cut-steel");
   }
-  const double hat[] = {at_m - foot,  base - in,   at_m - side, base - in, at_m - crown, leaf_m + in,
-                        at_m + crown, leaf_m + in, at_m + side, base - in, at_m + foot,  base - in};
+  const double hat[] = {at_m - foot,  base - in,   at_m - side,  base - in,
+                        at_m - crown, leaf_m + in, at_m + crown, leaf_m + in,
+                        at_m + side,  base - in,   at_m + foot,  base - in};
   section_outline(s, &s->floor, hat, 6, "cut-steel");
 }
 
@@ -65,7 +73,8 @@ static void put_mount(section *s, const section_band *b) {
   bool a = b->side == SIDE_A;
   double leaf_m = a ? b->from_m : b->to_m, stud_m = a ? b->to_m : b->from_m, sign = a ? 1 : -1;
   svg_group(&s->svg, "cut-mount");
-  for (double at_m = section_first_rail_m(type); at_m + half_m < s->floor_high_m; at_m += spacing_m) {
+  for (double at_m = section_first_rail_m(type); at_m + half_m < s->floor_high_m;
+       at_m += spacing_m) {
     if (type->clips)
       put_clip(s, at_m, stud_m, leaf_m, sign);
     else

@@ -107,8 +107,8 @@ static double plan_y(const section *s, double deep_m) {
 }
 
 static section_label label_of(const section_band *b, double x, double y) {
-  return (section_label){.x = x, .y = y, .to_y = y, .dots = 1, .words = b->words,
-                         .aside = b->thickness};
+  return (section_label){
+      .x = x, .y = y, .to_y = y, .dots = 1, .words = b->words, .aside = b->thickness};
 }
 
 /* Of the row's studs the last of the plan, at a quarter of its depth; staggered: of A's. */
@@ -159,12 +159,16 @@ void section_plan_labels(section *s, section_column *c) {
 static section_label floor_label(const section *s, double along_m, double deep_m,
                                  const char *words) {
   double y = section_y(&s->floor, along_m, deep_m);
-  return (section_label){.x = section_x(&s->floor, along_m, deep_m), .y = y, .to_y = y, .dots = 1,
-                         .words = words, .aside = ""};
+  return (section_label){.x = section_x(&s->floor, along_m, deep_m),
+                         .y = y,
+                         .to_y = y,
+                         .dots = 1,
+                         .words = words,
+                         .aside = ""};
 }
 
 void section_floor_labels(section *s, section_column *left, section_column *right) {
-  const double deep_m = s->thickness_m, bead_m = 0.006;
+  const double deep_m = s->thickness_m, bead_m = 0.004;
   const section_band *last_row = NULL;
   for (int i = 0; i < s->count; i++) {
     const section_band *b = &s->band[i];
@@ -173,25 +177,28 @@ void section_floor_labels(section *s, section_column *left, section_column *righ
     bool clips = s->catalog->mounts[b->record].clips;
     bool us = s->report->units == UNITS_US;
     double along_m = section_first_rail_m(&s->catalog->mounts[b->record]);
-    const char *words =
-        text_format(s->report->arena, "first %s, within %s of the floor",
-                    clips ? "rail, on its clip" : "channel",
-                    clips ? (us ? "3 in" : "75 mm") : (us ? "2 in" : "50 mm"));
+    const char *words = text_format(s->report->arena, "first %s, within %s of the floor",
+                                    clips ? "rail, on its clip" : "channel",
+                                    clips ? (us ? "3 in" : "75 mm") : (us ? "2 in" : "50 mm"));
     /* On the leg of a channel, the middle of a clip. */
-    section_label l = floor_label(s, along_m - (clips ? 0 : 0.006), (b->from_m + b->to_m) / 2, words);
+    section_label l =
+        floor_label(s, along_m - (clips ? 0 : 0.006), (b->from_m + b->to_m) / 2, words);
     section_label_add(b->side == SIDE_A ? left : right, l);
   }
   bool steel = s->frame->material == FRAME_STEEL;
   section_label_add(right, floor_label(s, SECTION_JOINT_M / 2, deep_m - bead_m,
                                        "acoustical sealant under each face, all round"));
   if (last_row && steel) /* on the leg at the leaf of B */
-    section_label_add(right, floor_label(s, 0.025, last_row->to_m - 1 / s->floor.scale,
-                                         "runner track"));
+    section_label_add(right,
+                      floor_label(s, 0.025, last_row->to_m - 1 / s->floor.scale, "runner track"));
   if (last_row && !steel)
-    section_label_add(right, floor_label(s, 0.6 * s->frame->stud_width_m,
-                                         0.3 * last_row->from_m + 0.7 * last_row->to_m,
-                                         "bottom plate"));
+    section_label_add(right,
+                      floor_label(s, 0.6 * s->frame->stud_width_m,
+                                  0.3 * last_row->from_m + 0.7 * last_row->to_m, "bottom plate"));
   section_label_add(right, (section_label){.x = section_x(&s->floor, 0, deep_m) + 8,
-                                           .y = s->floor.y + 8, .to_y = s->floor.y + 8, .dots = 1,
-                                           .words = "floor, by others", .aside = ""});
+                                           .y = s->floor.y + 8,
+                                           .to_y = s->floor.y + 8,
+                                           .dots = 1,
+                                           .words = "floor, by others",
+                                           .aside = ""});
 }

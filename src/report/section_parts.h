@@ -36,14 +36,14 @@ typedef struct section {
   section_band band[VIEW_MAX_PARTS];
   int count;
   double thickness_m;
-  double length_m;     /* of wall that the plan shows */
+  double length_m; /* of wall that the plan shows */
   section_place plan, floor;
   double floor_high_m; /* what the cut at the floor shows */
 } section;
 
 /* A stud as the plan cuts it. */
 typedef struct section_stud {
-  double from_m, to_m;           /* along */
+  double from_m, to_m; /* along */
   double deep_from_m, deep_to_m;
   int index; /* 0 at the abutting structure, then by spacings */
   int face;  /* staggered: whose leaf it carries; else CATALOG_NONE */
@@ -65,13 +65,13 @@ double section_y(const section_place *p, double along_m, double deep_m);
 void section_patterns(section *s);
 void section_box(section *s, const section_place *p, double along0, double along1, double deep0,
                  double deep1, const char *css_class);
-void section_segment(section *s, const section_place *p, double along0, double deep0,
-                     double along1, double deep1, const char *css_class);
+void section_segment(section *s, const section_place *p, double along0, double deep0, double along1,
+                     double deep1, const char *css_class);
 /* Points along, deep. */
 void section_outline(section *s, const section_place *p, const double *points, int n,
                      const char *css_class);
-void section_layer(section *s, const section_place *p, const layer *l, double along0,
-                   double along1, double deep0, double deep1);
+void section_layer(section *s, const section_place *p, const layer *l, double along0, double along1,
+                   double deep0, double deep1);
 /* A run of equal layers. */
 void section_layers(section *s, const section_place *p, const section_band *b, double along0,
                     double along1);
@@ -95,11 +95,11 @@ double section_first_rail_m(const mount *type);
 /* section_labels.c: a column of labels with leaders to what they name. */
 enum { SECTION_MAX_LINES = 4 };
 typedef struct section_label {
-  double x, y;         /* what it names: a dot stands there */
-  double to_y;         /* several equal layers: the dot of the last; else y */
+  double x, y; /* what it names: a dot stands there */
+  double to_y; /* several equal layers: the dot of the last; else y */
   int dots;
   const char *words;
-  const char *aside;   /* at the column's far edge: the thickness; "" none */
+  const char *aside; /* at the column's far edge: the thickness; "" none */
   const char *line[SECTION_MAX_LINES];
   int lines;
 } section_label;
@@ -107,10 +107,10 @@ typedef struct section_label {
 typedef struct section_column {
   section_label label[VIEW_MAX_PARTS];
   int count;
-  double x, width;  /* of the words; they begin at x, or end there when `left` */
-  double aside_x;   /* where `aside` ends */
-  double knee_x;    /* leaders are level up to here */
-  bool left;        /* the column stands left of what it names */
+  double x, width; /* of the words; they begin at x, or end there when `left` */
+  double aside_x;  /* where `aside` ends */
+  double knee_x;   /* leaders are level up to here */
+  bool left;       /* the column stands left of what it names */
 } section_column;
 
 void section_label_add(section_column *c, section_label label);

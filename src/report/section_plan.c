@@ -45,8 +45,8 @@ typedef struct rail {
 
 static rail rail_of(const section *s, const section_band *b) {
   bool a = b->side == SIDE_A;
-  return (rail){&s->catalog->mounts[b->record], a ? b->from_m : b->to_m,
-                a ? b->to_m : b->from_m, a ? 1 : -1};
+  return (rail){&s->catalog->mounts[b->record], a ? b->from_m : b->to_m, a ? b->to_m : b->from_m,
+                a ? 1 : -1};
 }
 
 /* A resilient channel from above: one flange on the board, the slotted leg, one on the stud. */

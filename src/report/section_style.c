@@ -16,16 +16,16 @@ static const shade page_shades[] = {
 };
 
 static const shade shades[] = {
-    {"gypsum", "#efede7", "#3b4046"},    {"stipple", "#857f72", "#a3a8ad"},
-    {"cement", "#d9dad8", "#4a4f52"},    {"panel", "#e2c697", "#66512f"},
+    {"gypsum", "#efede7", "#3b4046"},      {"stipple", "#857f72", "#a3a8ad"},
+    {"cement", "#d9dad8", "#4a4f52"},      {"panel", "#e2c697", "#66512f"},
     {"panel-grain", "#97713a", "#c9a468"}, {"fibreboard", "#dccbb4", "#574a3b"},
-    {"limp", "#2f3138", "#c6c9ce"},      {"damping", "#7a4a86", "#c79ad2"},
-    {"wood", "#f1dcb8", "#5a4526"},      {"wood-grain", "#8a6330", "#d0a565"},
-    {"steel", "#34495e", "#a9c1d6"},     {"rail", "#d5dee6", "#2c3a46"},
-    {"glass", "#fdf4d3", "#3a3420"},     {"glass-line", "#b48a1a", "#d3b04e"},
-    {"stone", "#e6ebdd", "#2f3a2a"},     {"stone-line", "#5f7547", "#9fb884"},
-    {"cellulose", "#e6e1da", "#37332e"}, {"cellulose-line", "#7a6c5a", "#b7a78f"},
-    {"sealant", "#b3402f", "#e58472"},   {"rubber", "#4a4d54", "#8d9299"},
+    {"limp", "#2f3138", "#c6c9ce"},        {"damping", "#7a4a86", "#c79ad2"},
+    {"wood", "#f1dcb8", "#5a4526"},        {"wood-grain", "#8a6330", "#d0a565"},
+    {"steel", "#34495e", "#a9c1d6"},       {"rail", "#d5dee6", "#2c3a46"},
+    {"glass", "#fdf4d3", "#3a3420"},       {"glass-line", "#b48a1a", "#d3b04e"},
+    {"stone", "#e6ebdd", "#2f3a2a"},       {"stone-line", "#5f7547", "#9fb884"},
+    {"cellulose", "#e6e1da", "#37332e"},   {"cellulose-line", "#7a6c5a", "#b7a78f"},
+    {"sealant", "#b3402f", "#e58472"},     {"rubber", "#4a4d54", "#8d9299"},
     {"hatch", "#8b8a85", "#7b8086"},
 };
 

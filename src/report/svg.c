@@ -268,17 +268,17 @@ void svg_fill(svg *s, const char *name) {
  * on DejaVu Sans; the sans serifs that other systems bring are narrower letter by letter (from
  * memory: Arial and Helvetica have digits of 56 against 64). */
 static const unsigned char ascii_width[] = {
-    32, 41, 46, 84, 64, 96, 78, 28, 40, 40, 50, 84, 32, 37, 32, 34, 64, 64, 64, 64, 64, 64, 64, 64,
+    32, 41, 46, 84, 64, 96, 78, 28, 40,  40, 50, 84, 32, 37, 32, 34, 64, 64, 64, 64, 64, 64, 64, 64,
     64, 64, 34, 34, 84, 84, 84, 54, 100, 69, 69, 70, 78, 64, 58, 78, 76, 30, 30, 66, 56, 87, 75, 79,
-    61, 79, 70, 64, 62, 74, 69, 99, 69, 62, 69, 40, 34, 40, 84, 50, 50, 62, 64, 55, 64, 62, 36, 64,
-    64, 28, 28, 58, 28, 98, 64, 62, 64, 64, 42, 53, 40, 64, 60, 82, 60, 60, 53, 64, 34, 64, 84};
+    61, 79, 70, 64, 62, 74, 69, 99, 69,  62, 69, 40, 34, 40, 84, 50, 50, 62, 64, 55, 64, 62, 36, 64,
+    64, 28, 28, 58, 28, 98, 64, 62, 64,  64, 42, 53, 40, 64, 60, 82, 60, 60, 53, 64, 34, 64, 84};
 
 /* Other letters by range, the widest of common ones; U+FFFD and pictures among the last. */
 static const struct {
   unsigned long last;
   int width;
-} other_width[] = {{0x24F, 100}, {0x2FF, 100}, {0x36F, 0}, {0x52F, 110}, {0x6FF, 95}, {0x1FFF, 110},
-                   {0x20FF, 100}, {0x10FFFF, 130}};
+} other_width[] = {{0x24F, 100}, {0x2FF, 100},  {0x36F, 0},    {0x52F, 110},
+                   {0x6FF, 95},  {0x1FFF, 110}, {0x20FF, 100}, {0x10FFFF, 130}};
 
 static const double bold_share = 1.22; /* the widest gain in DejaVu Sans Bold: i, l */
 
@@ -287,12 +287,17 @@ static unsigned long point_at(const char *p, const char *stop, size_t *length) {
   *length = text_utf8(p, stop);
   const unsigned char *b = (const unsigned char *)p;
   switch (*length) {
-  case 1: return b[0];
-  case 2: return (b[0] & 0x1FUL) << 6 | (b[1] & 0x3FUL);
-  case 3: return (b[0] & 0x0FUL) << 12 | (b[1] & 0x3FUL) << 6 | (b[2] & 0x3FUL);
+  case 1:
+    return b[0];
+  case 2:
+    return (b[0] & 0x1FUL) << 6 | (b[1] & 0x3FUL);
+  case 3:
+    return (b[0] & 0x0FUL) << 12 | (b[1] & 0x3FUL) << 6 | (b[2] & 0x3FUL);
   case 4:
     return (b[0] & 0x07UL) << 18 | (b[1] & 0x3FUL) << 12 | (b[2] & 0x3FUL) << 6 | (b[3] & 0x3FUL);
-  default: *length = 1; return 0xFFFD;
+  default:
+    *length = 1;
+    return 0xFFFD;
   }
 }
 

@@ -15,9 +15,9 @@ typedef struct svg {
 } svg;
 
 typedef struct svg_head {
-  const char *prefix;         /* begins every id of the drawing: unique on its page, letters first */
-  const char *title, *desc;   /* what a screen reader says; user text is fine */
-  const char *css_class;      /* of the <svg>; NULL without */
+  const char *prefix;       /* begins every id of the drawing: unique on its page, letters first */
+  const char *title, *desc; /* what a screen reader says; user text is fine */
+  const char *css_class;    /* of the <svg>; NULL without */
   double x, y, width, height; /* view box */
   /* NULL: the page has the style. Else the drawing is a file of its own, with this style sheet (no
    * < > & in it), a size of `scale` px a unit, and the line that begins a file of XML. */

@@ -1,9 +1,8 @@
 /* Draws walls for the checks beside it. Usage:
  *   draw_walls LINE [us|si] [full|card]    one wall, to stdout
- *   draw_walls --many FOLDER COUNT         COUNT seeded walls that can be built, every frame with no
- *                                          mount, channel and clips in turn; FOLDER/walls.tsv lists
- *                                          file, units, size and wall line
- * Exit 2 when something is wrong with the call, 1 when a drawing could not be written. */
+ *   draw_walls --many FOLDER COUNT         COUNT seeded walls that can be built, every frame with
+ * no mount, channel and clips in turn; FOLDER/walls.tsv lists file, units, size and wall line Exit
+ * 2 when something is wrong with the call, 1 when a drawing could not be written. */
 #include <setjmp.h>
 #include <stdint.h>
 #include <stdio.h>
@@ -108,14 +107,19 @@ static wall buildable_wall(const catalog *c, int turn) {
 
 /* Names as people give them, and as people who mean ill do. */
 static const char *room_of(desk *d, int turn) {
-  static const char *const rooms[] = {
-      "bedroom of flat 12", "corridor", "", "Wohnzimmer s\xC3\xBC"
-      "dlich & K\xC3\xBC"
-      "che",
-      "\xD7\x97\xD7\x93\xD7\xA8 \xD7\xA9\xD7\x99\xD7\xA0\xD7\x94",
-      "</text><script>alert(1)</script>", "\"quoted\" 'room' ]]> &amp;",
-      "turned \xE2\x80\xAE around \xE2\x81\xA7", "bad \x80\xC0\xAF bytes \x01\x1B[2J",
-      "\xE5\xAF\x9D\xE5\xAE\xA4", "WWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWW"};
+  static const char *const rooms[] = {"bedroom of flat 12",
+                                      "corridor",
+                                      "",
+                                      "Wohnzimmer s\xC3\xBC"
+                                      "dlich & K\xC3\xBC"
+                                      "che",
+                                      "\xD7\x97\xD7\x93\xD7\xA8 \xD7\xA9\xD7\x99\xD7\xA0\xD7\x94",
+                                      "</text><script>alert(1)</script>",
+                                      "\"quoted\" 'room' ]]> &amp;",
+                                      "turned \xE2\x80\xAE around \xE2\x81\xA7",
+                                      "bad \x80\xC0\xAF bytes \x01\x1B[2J",
+                                      "\xE5\xAF\x9D\xE5\xAE\xA4",
+                                      "WWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWW"};
   enum { ROOMS = sizeof rooms / sizeof rooms[0], LONG = 10000 };
   if (turn % (ROOMS + 1) < ROOMS) return rooms[turn % (ROOMS + 1)];
   char *name = arena_alloc(d->memory, LONG + 1);
@@ -129,7 +133,8 @@ static int draw_many(desk *d, const char *folder, int count) {
   bool written = true;
   for (int i = 0; i < count && written; i++) {
     wall w = buildable_wall(d->catalog, i);
-    section_options o = {.prefix = text_format(d->memory, "w%d", i), .standalone = true,
+    section_options o = {.prefix = text_format(d->memory, "w%d", i),
+                         .standalone = true,
                          .compact = dice(4) == 0,
                          .caption = dice(3) == 0 ? room_of(d, dice(12)) : NULL};
     d->report.units = dice(2) ? UNITS_SI : UNITS_US;
@@ -155,11 +160,11 @@ int main(int argc, char **argv) {
   d.catalog = catalog_load(d.memory, &faults, TEST_ROOT "/catalogs");
   if (d.catalog == NULL) return 2;
   job_defaults(&d.brief);
-  d.report = (report){
-      .arena = d.memory, .catalog = d.catalog, .brief = &d.brief, .units = UNITS_US};
+  d.report =
+      (report){.arena = d.memory, .catalog = d.catalog, .brief = &d.brief, .units = UNITS_US};
   bool many = argc == 4 && strcmp(argv[1], "--many") == 0;
-  int failed = many ? draw_many(&d, argv[2], (int)strtol(argv[3], NULL, 10))
-                    : draw_line(&d, argc, argv);
+  int failed =
+      many ? draw_many(&d, argv[2], (int)strtol(argv[3], NULL, 10)) : draw_line(&d, argc, argv);
   arena_free(d.memory);
   return failed;
 }

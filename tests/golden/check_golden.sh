@@ -1,5 +1,6 @@
 #!/bin/sh
-# Golden answers: text and JSON of `pick` for the demo briefs. After a change that is meant: rewrite.sh, then review the diff.
+# Golden answers: text and JSON of `pick` for the demo briefs; drawings of four walls. After a change that is meant: rewrite.sh,
+# then review the diff.
 # Usage: check_golden.sh SOURCE BUILD
 set -u
 source=$1
@@ -13,6 +14,10 @@ for brief in $briefs; do
     answer "$brief" "$extension" >"$work/found" || bad=1
     diff -u "$source/tests/golden/$brief.$extension" "$work/found" || bad=1
   done
+done
+for name in $sections; do
+  section "$name" >"$work/found" || bad=1
+  diff -u "$source/tests/golden/$name.svg" "$work/found" || bad=1
 done
 [ "$bad" = 0 ] || echo "if this change is meant: sh tests/golden/rewrite.sh BUILD, then review the diff"
 exit $bad

@@ -1,5 +1,5 @@
-# Shared by check_golden.sh and rewrite.sh: the briefs that have golden answers, and how an answer is made.
-# Sets $briefs; `answer BRIEF EXTENSION` writes the answer to stdout.
+# Shared by check_golden.sh and rewrite.sh: the briefs that have golden answers, the walls that have golden drawings, and how they
+# are made. Sets $briefs and $sections; `answer BRIEF EXTENSION` and `section NAME` write to stdout.
 briefs="heavy-fastening one-hour thin-wall tall-wall impossible specified-party-wall ladder-one-hour"
 unset SEPTUM_DATA
 # A specified wall is trimmed under the brief whose name follows, a ladder climbed under it; a brief is picked for.
@@ -19,4 +19,14 @@ answer() {
   want=0
   [ "$1" = impossible ] && want=1
   [ "$status" = "$want" ] || { echo "$1.$2: exit $status, expected $want" >&2; return 1; }
+}
+sections="section-steel section-staggered section-two-rows section-on-sheathing"
+section() {
+  case $1 in
+    section-steel) "$build/bin/draw_walls" 'typex-16 | steel-92-18@610, glass-89 | typex-16' us ;;
+    section-staggered) "$build/bin/draw_walls" '2*typex-16 | wood-89-stag-140@406, glass-89 | typex-16' si ;;
+    section-two-rows)
+      "$build/bin/draw_walls" '2*typex-16 | wood-89-double@406, glass-89, stone-65 | typex-16 + osb-11' us ;;
+    section-on-sheathing) "$build/bin/draw_walls" 'typex-16 | rc@610 | on osb-11 | wood-89@406, cell-89 | typex-16' si ;;
+  esac
 }

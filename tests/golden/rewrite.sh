@@ -10,3 +10,7 @@ for brief in $briefs; do
     mv "$source/tests/golden/$brief.$extension.new" "$source/tests/golden/$brief.$extension"
   done
 done
+for name in $sections; do
+  section "$name" >"$source/tests/golden/$name.svg.new"
+  mv "$source/tests/golden/$name.svg.new" "$source/tests/golden/$name.svg"
+done

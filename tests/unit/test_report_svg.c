@@ -31,8 +31,12 @@ START_TEST(whole_drawing) {
   text out = fresh();
   svg s;
   svg_begin(&s, &out,
-            &(svg_head){.prefix = "a", .title = "A < B", .desc = "words", .css_class = "cut",
-                        .width = 40, .height = 20.125});
+            &(svg_head){.prefix = "a",
+                        .title = "A < B",
+                        .desc = "words",
+                        .css_class = "cut",
+                        .width = 40,
+                        .height = 20.125});
   svg_defs(&s);
   svg_pattern(&s, "dots", 4, 4);
   svg_circle(&s, 1, 1, 0.5, NULL);
@@ -95,8 +99,13 @@ START_TEST(standing_alone) {
   text out = fresh();
   svg s;
   svg_begin(&s, &out,
-            &(svg_head){.prefix = "p", .title = "t", .desc = "d", .width = 10, .height = 5,
-                        .style = ".a{fill:red}", .scale = 2});
+            &(svg_head){.prefix = "p",
+                        .title = "t",
+                        .desc = "d",
+                        .width = 10,
+                        .height = 5,
+                        .style = ".a{fill:red}",
+                        .scale = 2});
   svg_end(&s);
   ck_assert_msg(text_starts(out.data, "<?xml version=\"1.0\" encoding=\"UTF-8\"?>\n<svg "),
                 "begins as a file of XML: %s", out.data);
