@@ -105,6 +105,29 @@ static bool note_rules(void *user, catalog_kind kind, int index) {
   return true;
 }
 
+/* Everything that decides, once the sound stands. */
+static void judge_rules(arena *a, const judge_context *x, const char *why[RULE_FIXED_COUNT],
+                        assessment *out) {
+  judge_numbers(a, x, out);
+  judge_structure(x, why, out);
+  id_rules ids = {x, 0};
+  judge_records(&out->wall, note_rules, &ids);
+  rule_limits limits = rules_limits(x->brief);
+  out->broken |= ids.broken | rules_broken_by(&limits, &out->numbers);
+  const rule_mask sound = rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) |
+                          rule_bit(RULE_EVIDENCE) | rule_bit(RULE_COMPOSITE);
+  if (out->instead) out->instead |= out->broken & ~sound;
+}
+
+void judge_silently(const judge_context *x, const wall *w, const prediction *p,
+                    const wall_row *match, assessment *out) {
+  const char *why[RULE_FIXED_COUNT] = {NULL};
+  *out = (assessment){.wall = *w, .predicted = *p, .mounted = wall_is_mounted(w)};
+  out->evidence.match = match;
+  judge_sound_of(x, out);
+  judge_rules(NULL, x, why, out);
+}
+
 void judge_wall(arena *a, const judge_context *x, const wall *w, assessment *out) {
   const char *why[RULE_FIXED_COUNT] = {NULL};
   *out = (assessment){.wall = *w, .line = line_print(a, x->catalog, w)};
@@ -113,15 +136,7 @@ void judge_wall(arena *a, const judge_context *x, const wall *w, assessment *out
   evidence_find(a, x->catalog, w, &out->evidence);
   judge_sound_of(x, out);
   judge_short_circuit(a, x, out);
-  judge_numbers(a, x, out);
-  judge_structure(x, why, out);
-  id_rules ids = {x, 0};
-  judge_records(w, note_rules, &ids);
-  rule_limits limits = rules_limits(x->brief);
-  out->broken |= ids.broken | rules_broken_by(&limits, &out->numbers);
-  const rule_mask sound = rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) |
-                          rule_bit(RULE_EVIDENCE) | rule_bit(RULE_COMPOSITE);
-  if (out->instead) out->instead |= out->broken & ~sound;
+  judge_rules(a, x, why, out);
   judge_say_broken(a, x, why, out);
   judge_say_cautions(a, x, out);
 }

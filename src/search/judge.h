@@ -62,6 +62,12 @@ typedef struct judge_context {
 /* `out` is filled whole; words live in `a`. out->name is left to the caller. */
 void judge_wall(arena *a, const judge_context *x, const wall *w, assessment *out);
 
+/* The same decisions without a word, for many briefs and one wall: `p` is its prediction, `match` the
+ * published row that it is, or NULL. Of `out` sound, numbers, takeoff, broken and instead are filled.
+ */
+void judge_silently(const judge_context *x, const wall *w, const prediction *p,
+                    const wall_row *match, assessment *out);
+
 /* ---- what decides about sound; shared with the sweep ---- */
 
 /* z with Phi(z) = confidence, 0 < confidence < 1. */

@@ -69,11 +69,10 @@ typedef struct plan_types {
 
 /* `keep` one of TYPES_. */
 void types_find(arena *a, const plan_context *x, int keep, plan_types *out);
-/* Any wall as a type (a wall of the drawings): `t` from types_find, for its items and groups. A
- * framing group that no type has gets a number of its own, from t->groups on, by frame. False when
- * an item of the wall has no price: then it fits nothing and has no cost; else the whole of `use` is
- * told for the classes that it does not fit, too. Needs are those of the takeoff, added up part by
- * part (framing, fills, mounts, each leaf), every part rounded to a millionth of a unit. */
+/* Any wall as a type (a wall of the drawings), of the items and groups of `t` from types_find. `use`
+ * and `need` are told in whole for the classes that it does not fit, too, as drawn; an item without
+ * a price makes it fit nothing and cost nothing: then false. Needs are those of the takeoff, added up
+ * part by part (framing, fills, mounts, each leaf), every part rounded to a millionth of a unit. */
 bool types_of_wall(arena *a, const plan_context *x, const plan_types *t, const wall *w,
                    plan_type *out);
 
