@@ -4,6 +4,7 @@
 #include "api/call.h"
 #include "api/request.h"
 #include "input/rows.h"
+#include "input/schedule.h"
 #include "wall/compat.h"
 #include "wall/line.h"
 
@@ -14,26 +15,29 @@ typedef struct check_job {
   septum_answer *made;
 } check_job;
 
-typedef bool (*check_reader)(call *k, const catalog *c, const json_value *root);
+typedef bool (*check_reader)(call *k, const septum *handle, const json_value *root);
 
-static bool check_catalog(call *k, const catalog *c, const json_value *root) {
-  (void)c;
+static bool check_catalog(call *k, const septum *handle, const json_value *root) {
+  (void)handle;
   return catalog_check_file(k->memory, &k->diags, root);
 }
 
-static bool check_brief(call *k, const catalog *c, const json_value *root) {
+static bool check_brief(call *k, const septum *handle, const json_value *root) {
+  const catalog *c = handle->catalog;
   brief *b = arena_alloc(k->memory, sizeof *b);
   job_defaults(b);
   return job_read(k->memory, &k->diags, c, root, false, b);
 }
 
-static bool check_prices(call *k, const catalog *c, const json_value *root) {
+static bool check_prices(call *k, const septum *handle, const json_value *root) {
+  const catalog *c = handle->catalog;
   const price_book *book = prices_read(k->memory, &k->diags, c, root);
   if (book != NULL) (void)prices_report_missing(k->memory, &k->diags, c, book);
   return book != NULL;
 }
 
-static bool check_wall(call *k, const catalog *c, const json_value *root) {
+static bool check_wall(call *k, const septum *handle, const json_value *root) {
+  const catalog *c = handle->catalog;
   wall w = wall_empty();
   const char *name = NULL;
   return line_from_json(k->memory, &k->diags, c, root, &w, &name) &&
@@ -41,14 +45,15 @@ static bool check_wall(call *k, const catalog *c, const json_value *root) {
 }
 
 /* A listing's boards are looked up in the catalog as they are when a brief names it. */
-static bool check_listing(call *k, const catalog *c, const json_value *root) {
-  catalog alone = *c;
+static bool check_listing(call *k, const septum *handle, const json_value *root) {
+  catalog alone = *handle->catalog;
   alone.published_count = 0;
   return rows_read(k->memory, &k->diags, root, "listing", &alone.fire, &alone.fire_count) &&
          rows_check_ids(k->memory, &k->diags, &alone);
 }
 
-static bool check_report(call *k, const catalog *c, const json_value *root) {
+static bool check_report(call *k, const septum *handle, const json_value *root) {
+  const catalog *c = handle->catalog;
   tested_wall *tested = NULL;
   size_t count = 0;
   if (!tested_read(k->memory, &k->diags, c, root, &tested, &count)) return false;
@@ -56,15 +61,44 @@ static bool check_report(call *k, const catalog *c, const json_value *root) {
   return true;
 }
 
+/* The types of the drawings: lines that can be read and walls that can be built. */
+static bool check_marks(call *k, const catalog *c, const project *p) {
+  bool sound = true;
+  for (int i = 0; i < p->mark_count; i++) {
+    wall w = wall_empty();
+    const json_value *line = p->mark[i].line_json;
+    bool read = line_parse_value(k->memory, &k->diags, c, line, &w);
+    sound = read && compat_buildable(&k->diags, json_place(k->memory, line), c, &w) && sound;
+  }
+  return sound;
+}
+
+/* A project with all that it names: its price book, listings and reports, and its schedule. */
+static bool check_project(call *k, const septum *handle, const json_value *root) {
+  project *p = arena_alloc(k->memory, sizeof *p);
+  request *q = arena_alloc(k->memory, sizeof *q);
+  septum_options plain;
+  if (!project_read(k->memory, &k->diags, handle->catalog, root, p)) return false;
+  septum_options_init(&plain);
+  q->brief = p->common;
+  bool sound = request_settle(k, handle, &plain, true, q);
+  size_t first = k->diags.count;
+  sound = check_marks(k, handle->catalog, p) && sound;
+  if (q->prices != NULL) sound = project_check_stock(k->memory, &k->diags, p, q->prices) && sound;
+  diag_sort(&k->diags, first);
+  const csv_table *t = csv_load(k->memory, &k->diags, p->walls);
+  return t != NULL && schedule_read(k->memory, &k->diags, handle->catalog, p, t) != NULL && sound;
+}
+
 static const struct check_kind {
   const char *kind;
-  check_reader reader; /* NULL: a kind of septum that this version does not read */
+  check_reader reader;
 } check_kinds[] = {
     {"acoustics", check_catalog}, {"boards", check_catalog},
     {"brief", check_brief},       {"fills", check_catalog},
     {"fire", check_catalog},      {"frames", check_catalog},
     {"listing", check_listing},   {"mounts", check_catalog},
-    {"price-book", check_prices}, {"project", NULL},
+    {"price-book", check_prices}, {"project", check_project},
     {"published", check_catalog}, {"report", check_report},
     {"targets", check_catalog},   {"wall", check_wall},
 };
@@ -94,7 +128,7 @@ static void unknown_kind(call *k, const json_value *root, const json_value *said
            near ? "; the nearest is " : "", near ? near : "");
 }
 
-static void check_root(call *k, const catalog *c, const json_value *root, checked_file *out) {
+static void check_root(call *k, const septum *handle, const json_value *root, checked_file *out) {
   const json_value *said = json_get(root, "septum");
   const struct check_kind *kind =
       said != NULL && said->kind == JSON_STRING ? find_kind(said->string) : NULL;
@@ -103,12 +137,7 @@ static void check_root(call *k, const catalog *c, const json_value *root, checke
     return;
   }
   out->kind = text_format(k->memory, "%s/1", kind->kind);
-  if (kind->reader == NULL)
-    diag_add(&k->diags, DIAG_ERROR, ERROR_FILE_KIND, json_place(k->memory, said),
-             "expected a kind that this version reads, found %s, which it does not read yet",
-             out->kind);
-  else
-    (void)kind->reader(k, c, root); /* which checks the version too */
+  (void)kind->reader(k, handle, root); /* which checks the version too */
 }
 
 static status check_stage(call *k, void *given) {
@@ -118,7 +147,7 @@ static status check_stage(call *k, void *given) {
   for (size_t i = 0; i < job->count; i++) {
     files[i].path = job->paths[i];
     const json_value *root = json_load(k->memory, &k->diags, job->paths[i]);
-    if (root != NULL) check_root(k, job->handle->catalog, root, &files[i]);
+    if (root != NULL) check_root(k, job->handle, root, &files[i]);
     files[i].errors = k->diags.errors;
     if (k->diags.worst > worst) worst = k->diags.worst;
     call_tell(k);

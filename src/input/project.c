@@ -93,7 +93,7 @@ static void read_stock(job_reader *r, const json_value *v, project *out) {
   raw_stock raw = {NULL, NULL, 0};
   if (!fields_read(r->arena, r->diags, v, table, COUNT(table), &raw)) return;
   double si = 0;
-  project_stock s = {.item = raw.item, .json = v};
+  project_stock s = {.item = raw.item, .unit_word = raw.unit, .json = v};
   if (!prices_unit(raw.unit, &s.unit, &si)) {
     fault(r, ERROR_FIELD_UNIT, json_get(v, "unit"),
           text_format(r->arena, "expected one of %s; found \"%s\"", unit_list(r->arena), raw.unit));
@@ -141,7 +141,13 @@ static void put_mark(job_reader *r, const json_value *v, const raw_mark *raw, pr
                       out->mark[other].json->line));
     return;
   }
-  out->mark[out->mark_count++] = (project_mark){raw->mark, raw->line, raw->locked, v};
+  out->mark[out->mark_count++] = (project_mark){
+      .mark = raw->mark,
+      .line = raw->line,
+      .locked = raw->locked,
+      .json = v,
+      .line_json = v->kind == JSON_STRING ? v : json_get(v, "line"),
+  };
 }
 
 /* {"P1": {"line": ..., "locked": ...}} or {"P1": "line"}: `v` is the member; in a list the mark
@@ -260,8 +266,8 @@ bool project_check_stock(arena *a, diag_list *d, const project *p, const price_b
                near ? "; the nearest is " : "", near ? near : "");
     } else if (book->items[item].unit != s->unit) {
       diag_add(d, DIAG_ERROR, ERROR_FIELD_UNIT, json_place(a, json_get(s->json, "unit")),
-               "the price book counts \"%s\" in %s (or a unit of the same kind), not in %s",
-               s->item, price_unit_names[book->items[item].unit], price_unit_names[s->unit]);
+               "the price book counts \"%s\" in %s, not in %s", s->item,
+               book->items[item].unit_word, s->unit_word);
     }
   }
   return d->errors == before;

@@ -20,6 +20,7 @@ typedef struct project_stock {
   const char *item; /* code of the price book */
   double quantity;  /* takeoff units */
   price_unit unit;  /* of the file's quantity; project_check_stock compares it with the item's */
+  const char *unit_word; /* as in the file: "ft2" */
   const json_value *json;
 } project_stock;
 
@@ -27,7 +28,8 @@ typedef struct project_stock {
 typedef struct project_mark {
   const char *mark, *line; /* wall line as it stands in the file; side A towards a wall's `from` */
   bool locked;             /* walls of this mark keep it */
-  const json_value *json;  /* of the mark; of its line when it is nothing but a line */
+  const json_value *json;  /* of the mark */
+  const json_value *line_json; /* a string */
 } project_mark;
 
 typedef struct project {

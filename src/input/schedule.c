@@ -324,9 +324,11 @@ schedule *schedule_read(arena *a, diag_list *d, const catalog *c, const project 
   caution_marks(k);
   row_values *v = arena_alloc(a, sizeof *v);
   for (size_t i = 0; i < table->count && !diag_is_full(d); i++) {
+    size_t first = d->count;
     bool sound = row_read(&k->rows, &table->rows[i], v);
     keep_id(k, v);
     caution_fire(k, v);
+    diag_sort(d, first);
     if (columns && sound) add_wall(k, v);
   }
   if (d->errors > before) return NULL;

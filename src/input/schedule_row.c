@@ -550,7 +550,7 @@ static void check_row(row_reader *r, const row_values *v) {
 }
 
 bool row_read(row_reader *r, const csv_row *row, row_values *v) {
-  size_t before = r->diags->errors, first = r->diags->count;
+  size_t before = r->diags->errors;
   r->row = row;
   set_defaults(r->project, v);
   v->b.length_m = 0;
@@ -565,6 +565,5 @@ bool row_read(row_reader *r, const csv_row *row, row_values *v) {
   settle_mark(r, v);
   row_targets(r, v);
   check_row(r, v);
-  diag_sort(r->diags, first);
   return r->diags->errors == before;
 }

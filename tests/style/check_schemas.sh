@@ -77,7 +77,22 @@ for table, kind in tables.items():
     if read != known:
         faults.append("%s: reader and schema differ in %s" % (kind, ", ".join(sorted(read ^ known))))
 
-for kind in ("boards", "frames", "fills", "mounts", "targets", "wall"):
+# What a project says as a brief does is asked as a brief asks it; openings and counts belong to a wall.
+brief, project = schemas["brief"].schema, schemas["project"].schema
+def plain(wall):
+    own = ("length_", "corners", "tees", "doors")
+    keys = {k: v for k, v in wall["properties"].items() if not k.startswith(own)}
+    return keys, [r for r in wall["allOf"] if not any(k.startswith(own) for k in r["not"]["required"])]
+shared = set(brief["properties"]) - {"septum", "openings"}
+for key in sorted(shared):
+    one, other = brief["properties"][key], project["properties"].get(key)
+    if one != other and not (key == "wall" and plain(one) == plain(other) and plain(other)[0] == other["properties"]):
+        faults.append("project: %s is not what a brief's is" % key)
+for name in sorted(set(brief["$defs"]) - {"opening"}):
+    if brief["$defs"][name] != project["$defs"].get(name):
+        faults.append("project: $defs/%s is not what a brief's is" % name)
+
+for kind in ("boards", "frames", "fills", "mounts", "targets", "wall", "project"):
     if not any(os.path.basename(p).startswith(kind + "-") for p in glob.glob(root + "/tests/data/schemas/wrong/*.json")):
         faults.append("no wrong file for kind %s" % kind)
 for fault in faults:
