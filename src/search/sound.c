@@ -1,5 +1,6 @@
 #include "search/sound.h"
 
+#include <limits.h>
 #include <math.h>
 
 #include "acoustics/kernel.h"
@@ -12,6 +13,11 @@ static const double stray_db = KERNEL_ERROR_DB;
  * dB, and so the contour neither; the exact one is stepped down by less than 0.1 dB. OITC is
  * rounded half up once more. */
 static const double printed_below_db = 0.5;
+/* So far below what is needed a rating misses it whatever the kernel's error and the rounding to
+ * 0.01 dB. */
+static const double screen_below_db = 2 * KERNEL_ERROR_DB;
+/* A rating that no wall has: for metrics that are not looked at. */
+static const double any_rating_db = 1000;
 static double printed_above(sound_metric m) {
   return m == METRIC_OITC ? 1.1 : 0.6;
 }
@@ -20,6 +26,19 @@ static void add_metric(sound_aims *g, sound_metric m) {
   for (int i = 0; i < g->metrics; i++)
     if (g->metric[i] == m) return;
   g->metric[g->metrics++] = m;
+}
+
+/* With openings in scope a wall may pass by less than it has; below even odds the standard deviation
+ * lifts what is promised. */
+static void set_screen(sound_aims *g) {
+  for (int i = 0; i < g->count; i++) {
+    const sound_aim *a = &g->aim[i];
+    if (a->composite || a->z < 0) {
+      g->screen_stc = 0;
+      return;
+    }
+    if (a->metric == METRIC_STC) g->screen_stc = fmax(g->screen_stc, a->needed - screen_below_db);
+  }
 }
 
 void sound_aims_set(const brief *b, sound_aims *out) {
@@ -41,6 +60,7 @@ void sound_aims_set(const brief *b, sound_aims *out) {
               fmax(most[t->metric], floor(most[t->metric] + printed_above(t->metric))) < a->needed;
     add_metric(out, t->metric);
   }
+  set_screen(out);
 }
 
 /* What is known of one target's rating. */
@@ -125,6 +145,16 @@ void sound_bound(const sound_aims *g, const double *exact, const double *sd, con
   }
   out->certain = same_reach(&out->least, &out->most);
   out->wide = out->wide && !out->certain;
+}
+
+void sound_screened(const sound_aims *g, double stc_at_most, const double *sd, sound_bounds *out) {
+  double exact[METRIC_COUNT];
+  for (int m = 0; m < METRIC_COUNT; m++) exact[m] = any_rating_db;
+  exact[METRIC_STC] = stc_at_most;
+  sound_bound(g, exact, sd, NULL, out);
+  out->least = out->most = (judge_reach){false, false, false, false};
+  out->promised_least = INT_MIN;
+  out->certain = false;
 }
 
 int sound_outcomes(const sound_bounds *b, rule_mask out[SOUND_MAX_OUTCOMES]) {

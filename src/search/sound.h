@@ -19,6 +19,8 @@ typedef struct sound_aims {
   sound_metric metric[METRIC_COUNT]; /* those that are asked for, each once */
   int metrics;
   double field_sd;
+  double screen_stc; /* no wall whose STC the kernel puts below this reaches the targets even by the
+                        bare prediction, but for published ones; 0 = not known */
   double lift_db; /* what a composite may be above the wall itself: openings that let nothing
                      through */
 } sound_aims;
@@ -37,6 +39,10 @@ void sound_aims_set(const brief *b, sound_aims *out);
  * wall; `match` or NULL. */
 void sound_bound(const sound_aims *g, const double *exact, const double *sd, const wall_row *match,
                  sound_bounds *out);
+
+/* What is certain of a wall that is in no published row when its STC is at most `stc_at_most`, less than
+ * screen_stc: it breaks the target, and promises at most so much. */
+void sound_screened(const sound_aims *g, double stc_at_most, const double *sd, sound_bounds *out);
 
 enum { SOUND_MAX_OUTCOMES = 5 };
 /* The sets of broken rules of sound that a wall may turn out to have. Returns how many. */

@@ -291,6 +291,20 @@ static void build_pairs(builder *u) {
     }
 }
 
+static void build_partners(builder *u) {
+  space *s = u->out;
+  size_t n = (size_t)s->face_count, count = 0;
+  for (size_t i = 0; i < n * n; i++) count += s->pair[i];
+  s->partner = arena_array(u->arena, count, sizeof *s->partner);
+  s->partner_first = arena_array(u->arena, n + 1, sizeof *s->partner_first);
+  count = 0;
+  for (size_t i = 0; i < n; i++) {
+    for (size_t j = 0; j < n; j++)
+      if (s->pair[i * n + j]) s->partner[count++] = (int)j;
+    s->partner_first[i + 1] = (int)count;
+  }
+}
+
 /* ---- wall lines in pieces ---- */
 
 /* The line of core `k` between leaves `i` and `j`. */
@@ -359,6 +373,7 @@ void space_build_for(arena *a, const judge_context *x, const space_wish *wish, s
   build_cores(&u);
   build_supports(&u);
   build_pairs(&u);
+  build_partners(&u);
   build_texts(&u);
 }
 
@@ -372,6 +387,19 @@ bool space_legal(const space *s, int core, int face_a, int face_b) {
   if (s->own_mirror[core] && face_b < face_a) return false;
   return s->on_support[(size_t)s->support[SIDE_A][core] * n + i] &&
          s->on_support[(size_t)s->support[SIDE_B][core] * n + j] && s->pair[i * n + j];
+}
+
+int space_row(const space *s, int core, int face_a, int *face_b) {
+  size_t n = (size_t)s->face_count;
+  const bool *on_a = s->on_support + (size_t)s->support[SIDE_A][core] * n;
+  const bool *on_b = s->on_support + (size_t)s->support[SIDE_B][core] * n;
+  int count = 0;
+  if (!on_a[face_a]) return 0;
+  for (int i = s->partner_first[face_a]; i < s->partner_first[face_a + 1]; i++) {
+    int j = s->partner[i];
+    if (on_b[j] && !(s->own_mirror[core] && j < face_a)) face_b[count++] = j;
+  }
+  return count;
 }
 
 wall space_wall(const space *s, int core, int face_a, int face_b) {

@@ -24,6 +24,10 @@ typedef struct space {
   int support_count;
   bool *on_support; /* support_count x face_count */
   bool *pair;       /* face_count x face_count: may stand opposite */
+  int *partner;     /* the same as lists: faces partner[partner_first[i]] .. before
+                       partner[partner_first[i + 1]], rising, may stand opposite i */
+  int *partner_first;
+  int threads; /* that may work on it (base/threads.h); 0, as built: as many as there are */
   const char **face_text,
       **core_text; /* pieces of the wall line: a face; what stands between the faces */
 } space;
@@ -44,6 +48,9 @@ void space_build_for(arena *a, const judge_context *x, const space_wish *wish, s
 void space_build(arena *a, const judge_context *x, space *out);
 /* Whether face i on A and j on B may stand on core k. */
 bool space_legal(const space *s, int core, int face_a, int face_b);
+/* The faces, rising, that may stand on B when face_a stands on A of a core: fills `face_b` (face_count
+ * places) and returns how many. */
+int space_row(const space *s, int core, int face_a, int *face_b);
 wall space_wall(const space *s, int core, int face_a, int face_b);
 /* Order of two walls' lines, as strings. */
 int space_compare_lines(const space *s, int core, int face_a, int face_b, int other_core,

@@ -1,5 +1,5 @@
 /* The sweep: judges every wall of the space by tables and keeps what a choice can need.
- * Deterministic. Memory grows with what is kept: the walls that break nothing at 12 bytes each, and
+ * By as many threads as the space says; what comes out does not depend on how many. Memory grows with what is kept: the walls that break nothing at 12 bytes each, and
  * a few hundred bytes for each of the frontier. Why nothing is lost: docs/design/search.md. */
 #ifndef SEARCH_SWEEP_H
 #define SEARCH_SWEEP_H
@@ -7,7 +7,7 @@
 #include "search/candidate.h"
 #include "search/masks.h"
 
-enum { SWEEP_RUNNERS = 24, SWEEP_BLOCK = 4096 };
+enum { SWEEP_RUNNERS = 24, SWEEP_BLOCK = 512 };
 
 /* A wall that breaks nothing. Not certain: its sound is so near a limit that the reference has to
  * be asked. */
@@ -26,7 +26,7 @@ typedef struct feasible_block {
 /* Every wall that is kept has been rated by the reference: its numbers are those of judge_wall. */
 typedef struct sweep_result {
   long long walls; /* judged */
-  long long rated; /* of these, rated by the reference */
+  long long rated; /* of these, rated by the reference; more of them with more threads */
   candidate *frontier;
   int frontier_count; /* in tie order; what no other wall beats in any number that a rule in force
                          reads, in broken rules, and in cost and ties */
