@@ -48,14 +48,21 @@ typedef struct septum_message {
  * library. */
 typedef void (*septum_listener)(void *user, const septum_message *message);
 
+/* How far a long solve is: `stage` says which one ("plan", "without T2"); the cost of the best found
+ * so far (infinite before the first) and what no better one can undercut, in the currency of the
+ * price book. Called from a thread of the library's, never from two at once; it must return soon and
+ * not call the library. */
+typedef void (*septum_progress)(void *user, const char *stage, double found, double bound);
+
 /* Fill with septum_options_init, then change. Strings must live during the call. Files appear
  * whole or not at all. */
 typedef struct septum_options {
   const char *prices;     /* price book; NULL = the brief's, else the data folder's default */
   const char *brief;      /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
-  const char *save_model; /* pick: path for the 0-1 model in CPLEX LP format; NULL = none */
+  const char *save_model; /* pick, plan: path for the 0-1 model in CPLEX LP format; NULL = none */
   const char *save_csv;   /* rate, pick: path for the takeoff as CSV; trim: for the log of proposals;
-                             ladder: for its rungs; NULL = none */
+                             ladder: for its rungs; plan: for the schedule with what is assigned;
+                             NULL = none */
   const char *save_html;  /* rate, pick, ladder, trim: path for the answer as one page that needs nothing
                              else, in the units of text; NULL = none */
   const char *save_xlsx;  /* rate, pick: path for the takeoff as a spreadsheet; NULL = none */
@@ -64,10 +71,20 @@ typedef struct septum_options {
                              the files. There is no clock in here */
   const char *slack;      /* trim: how much thicker than the specified wall a proposal may be, "1/2in",
                              "12 mm"; NULL = none where the brief sets no target, else no limit */
+  int promised_stc, promised_fire; /* trim: STC and fire minutes that the drawings promise; 0 = none */
+  const char *design;     /* trim: the listed design that they name; NULL = none */
+  const char *allow;      /* trim: what may be given up, words with commas between: "thinner-studs",
+                             "plain-boards", "thicker", "combustible", "less-fire"; NULL = nothing */
+  const char *keep;       /* trim: what must stay as it is: "frame", "fire", "thickness"; NULL = nothing */
+  double redesign_cost;   /* trim: of redesign and resubmittal, in the price book's currency */
   const char *metric;     /* ladder: "STC", "Rw", "Rw+C", "Rw+Ctr", "OITC"; NULL = the brief's, else STC */
   int from, to;           /* ladder: lowest and highest rating, 1 to 100; 0 = as far as walls reach */
   int count;              /* trim: most proposals, 1 to 100; 0 = 8 */
-  double time_limit_s;    /* pick: seconds for the solver; 0 = no limit */
+  double time_limit_s;    /* pick, plan: seconds for the solver; 0 = no limit */
+  const volatile int *stop; /* plan: looked at again and again; as soon as it is not 0 the best plan
+                             so far is the answer. A signal handler may set it. NULL = none */
+  septum_progress progress; /* plan: hears how far a long solve is; NULL = none */
+  void *progress_user;    /* given to it */
   septum_units units;     /* of text and CSV */
 } septum_options;
 
@@ -102,6 +119,13 @@ septum_status septum_trim(septum *handle, const char *path, const char *specifie
  * can be reached. SEPTUM_DATA: also a given wall that cannot be read, built or costed. */
 septum_status septum_ladder(septum *handle, const char *path, const char *have,
                             const septum_options *options, septum_answer **out);
+/* Few wall types for all walls of the project at `path` (project/1, which names its wall schedule),
+ * at least cost, and which wall gets which. The answer's CSV is the schedule with what is assigned.
+ * SEPTUM_NO_WALL: an answer, in which some wall has no type (the others are planned all the same),
+ * or rules of the project that no plan keeps together, or nothing found within the time limit.
+ * SEPTUM_DATA: also a fault of the schedule, or of a wall type of the drawings. */
+septum_status septum_plan(septum *handle, const char *path, const septum_options *options,
+                          septum_answer **out);
 /* Checks `count` files of any kind that septum reads, by their key "septum"; messages go to the
  * listener. The answer has a line a file and is given also with SEPTUM_DATA and SEPTUM_SYSTEM,
  * which say that at least one file has a fault (NULL only when memory ran out). */

@@ -1,10 +1,14 @@
 /* septum_trim: a specified wall, and what may stand in its place. */
+#include <string.h>
+
 #include "api/call.h"
 #include "api/request.h"
 #include "report/report_trim.h"
+#include "report/view_trim.h"
 
 static const double SLACK_UNIT_M = 1e-3; /* a bare number is in millimetres */
 static const double SLACK_MAX_M = 1;     /* a guard against slips of a unit */
+static const double REDESIGN_MAX = 1e9;
 
 typedef struct trim_job {
   const septum *handle;
@@ -12,6 +16,57 @@ typedef struct trim_job {
   septum_options options;
   septum_answer *made;
 } trim_job;
+
+static bool read_word(call *k, const char *name, const char *word, const view_trim_word *known,
+                      unsigned *bits) {
+  text all;
+  text_init(&all, k->memory, 200);
+  for (int i = 0; known[i].word != NULL; i++) {
+    if (text_equal(known[i].word, word)) {
+      *bits |= known[i].bit;
+      return true;
+    }
+    text_putf(&all, "%s%s", i == 0 ? "" : known[i + 1].word ? ", " : " or ", known[i].word);
+  }
+  diag_error(&k->diags, ERROR_USAGE, "%s: expected %s, found \"%s\"", name, all.data, word);
+  return false;
+}
+
+/* Words with commas between, as bits. */
+static bool read_words(call *k, const char *name, const char *list, const view_trim_word *known,
+                       unsigned *bits) {
+  bool sound = true;
+  for (const char *at = list; at != NULL;) {
+    size_t n = strcspn(at, ",");
+    sound = read_word(k, name, text_copyn(k->memory, at, n), known, bits) && sound;
+    at = at[n] == ',' ? at + n + 1 : NULL;
+  }
+  return sound;
+}
+
+static bool read_promises(call *k, const septum_options *options, trim_terms *out) {
+  out->promised_stc = options->promised_stc;
+  out->promised_fire = options->promised_fire;
+  out->design = options->design;
+  out->redesign_cents = cost_cents(options->redesign_cost);
+  bool sound = options->promised_stc >= 0 && options->promised_stc <= 100 &&
+               options->promised_fire >= 0 && options->promised_fire <= 480;
+  if (!sound)
+    diag_error(&k->diags, ERROR_USAGE,
+               "expected a promised rating of at most 100 and at most 480 minutes, found %d and %d",
+               options->promised_stc, options->promised_fire);
+  if (!(options->redesign_cost >= 0 && options->redesign_cost <= REDESIGN_MAX)) {
+    diag_error(&k->diags, ERROR_USAGE, "the cost of redesign: expected 0 to 1e9");
+    sound = false;
+  }
+  sound = read_words(k, "allow", options->allow, view_trim_waivers, &out->allow) && sound;
+  sound = read_words(k, "keep", options->keep, view_trim_holds, &out->keep) && sound;
+  if (sound && out->keep & TRIM_KEEP_THICKNESS && (out->allow & TRIM_ALLOW_THICKER || options->slack)) {
+    diag_error(&k->diags, ERROR_USAGE, "the thickness is either kept or may grow, not both");
+    return false;
+  }
+  return sound;
+}
 
 static bool read_terms(call *k, const septum_options *options, trim_terms *out) {
   const char *expected = NULL;
@@ -22,6 +77,7 @@ static bool read_terms(call *k, const septum_options *options, trim_terms *out) 
                options->count);
     return false;
   }
+  if (!read_promises(k, options, out)) return false;
   if (!options->slack) return true;
   if (!units_parse_length(options->slack, SLACK_UNIT_M, &out->slack_m, &expected)) {
     diag_error(&k->diags, ERROR_USAGE, "the slack: expected %s, found \"%s\"", expected,
@@ -33,10 +89,41 @@ static bool read_terms(call *k, const septum_options *options, trim_terms *out) 
   return false;
 }
 
+/* Leaves of the fire rows only what shows the specified wall's rating. False after a message. */
+static bool keep_fire(call *k, request *q, const wall *w) {
+  fire_verdict v = fire_judge(k->memory, &q->catalog, &q->brief, w);
+  if (v.minutes == 0) {
+    diag_error(&k->diags, ERROR_USAGE, "keep fire: no fire rating is shown for the specified wall");
+    return false;
+  }
+  catalog *c = &q->catalog;
+  const wall_row *row = NULL;
+  for (size_t i = 0; i < c->fire_count && v.row_id; i++)
+    if (text_equal(c->fire[i].id, v.row_id)) row = &c->fire[i];
+  wall_row *only = arena_array(k->memory, 1, sizeof *only);
+  if (row) *only = *row;
+  c->fire = only;
+  c->fire_count = row ? 1 : 0;
+  if (row) c->membrane_count = 0; /* the component-additive rule is another one */
+  if (v.minutes > q->brief.fire_min) q->brief.fire_min = v.minutes;
+  return true;
+}
+
+/* A promised rating comes beside what the brief and the wall itself ask. */
+static bool has_room(call *k, const request *q, const trim_terms *terms) {
+  int most = BRIEF_MAX_TARGETS - 1;
+  if (terms->promised_stc == 0 || q->brief.target_count <= most) return true;
+  diag_error(&k->diags, ERROR_USAGE, "a promised rating goes with at most %d targets, found %d", most,
+             q->brief.target_count);
+  return false;
+}
+
 /* The specified wall, judged by what it is held to. NULL after messages. */
 static assessment *specify(call *k, request *q, const wall *w, const char *name,
                            trim_terms *terms) {
   assessment *x = arena_alloc(k->memory, sizeof *x);
+  if (!has_room(k, q, terms)) return NULL;
+  if (terms->keep & TRIM_KEEP_FIRE && !keep_fire(k, q, w)) return NULL;
   trim_hold_to(k->memory, &q->context, w, terms, &q->brief);
   judge_wall(k->memory, &q->context, w, x);
   x->name = name;

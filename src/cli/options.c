@@ -6,18 +6,24 @@
 #include <string.h>
 
 typedef enum option_id {
+  OPTION_ALLOW,
   OPTION_BRIEF,
   OPTION_CATALOGS,
   OPTION_COUNT,
   OPTION_CSV,
+  OPTION_DESIGN,
+  OPTION_FIRE,
   OPTION_FROM,
   OPTION_FROM_CSV,
   OPTION_HAVE,
   OPTION_HELP,
   OPTION_HTML,
   OPTION_JSON,
+  OPTION_KEEP,
   OPTION_METRIC,
   OPTION_PRICES,
+  OPTION_RATING,
+  OPTION_REDESIGN,
   OPTION_SAVE_MODEL,
   OPTION_SLACK,
   OPTION_SPEC,
@@ -44,11 +50,15 @@ typedef struct option_row {
 
 /* Sorted by name: the help and the manual keep this order. */
 static const option_row option_rows[] = {
+    {"allow", "WORDS", OPTION_ALLOW, CLI_TRIM,
+     "what may be given up: thinner-studs, plain-boards, thicker, combustible, less-fire"},
     {"brief", "FILE", OPTION_BRIEF, CLI_RATE, "judge the wall under this brief (brief/1)"},
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
     {"count", "N", OPTION_COUNT, CLI_TRIM, "most walls to list, 1 to 100; default 8"},
     {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
      "also write the takeoff, rungs or log as CSV; - prints it in place of the text"},
+    {"design", "TEXT", OPTION_DESIGN, CLI_TRIM, "the listed design that the drawings name"},
+    {"fire", "MINUTES", OPTION_FIRE, CLI_TRIM, "fire resistance that the drawings promise"},
     {"from", "N", OPTION_FROM, CLI_LADDER, "lowest rating, 1 to 100; default: what the cheapest wall meets"},
     {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
     {"have", "LINE|FILE", OPTION_HAVE, CLI_LADDER,
@@ -57,10 +67,14 @@ static const option_row option_rows[] = {
     {"html", "FILE", OPTION_HTML, CLI_RATE,
      "also write the answer as one page with drawings and charts"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
+    {"keep", "WORDS", OPTION_KEEP, CLI_TRIM, "what must stay as it is: frame, fire, thickness"},
     {"metric", "NAME", OPTION_METRIC, CLI_LADDER,
      "STC, Rw, Rw+C, Rw+Ctr or OITC; default: the brief's, else STC"},
     {"prices", "FILE", OPTION_PRICES, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM | CLI_PRICES,
      "price book (price-book/1) in place of the brief's or the default"},
+    {"rating", "N", OPTION_RATING, CLI_TRIM, "STC that the drawings promise"},
+    {"redesign", "COST", OPTION_REDESIGN, CLI_TRIM,
+     "cost of redesign and resubmittal: savings are net of it"},
     {"save-model", "FILE", OPTION_SAVE_MODEL, CLI_PICK, "write the 0-1 model in CPLEX LP format"},
     {"slack", "LENGTH", OPTION_SLACK, CLI_TRIM,
      "walls may be so much thicker than the specified one, as 1/2in or 12mm"},
@@ -154,14 +168,27 @@ static bool read_seconds(const char *value, double *seconds) {
   return false;
 }
 
-static bool read_whole(const char *name, const char *value, int *count) {
+static bool read_up_to(const char *name, const char *value, int most, int *count) {
   char *end = NULL;
   long n = strtol(value, &end, 10);
-  if (end != value && *end == '\0' && n >= 1 && n <= 100) {
+  if (end != value && *end == '\0' && n >= 1 && n <= most) {
     *count = (int)n;
     return true;
   }
-  fprintf(stderr, "septum: --%s wants a number from 1 to 100, found %s\n", name, value);
+  fprintf(stderr, "septum: --%s wants a number from 1 to %d, found %s\n", name, most, value);
+  return false;
+}
+
+static bool read_whole(const char *name, const char *value, int *count) {
+  return read_up_to(name, value, 100, count);
+}
+
+static bool read_money(const char *name, const char *value, double *money) {
+  char *end = NULL;
+  errno = 0;
+  *money = strtod(value, &end);
+  if (end != value && *end == '\0' && errno == 0 && *money >= 0.0 && *money <= 1e9) return true;
+  fprintf(stderr, "septum: --%s wants an amount from 0 to 1000000000, found %s\n", name, value);
   return false;
 }
 
@@ -179,6 +206,21 @@ static bool read_units(const char *value, septum_units *units) {
 
 static bool apply(option_id id, const char *value, cli_line *out) {
   switch (id) {
+  case OPTION_ALLOW:
+    out->options.allow = value;
+    return true;
+  case OPTION_DESIGN:
+    out->options.design = value;
+    return true;
+  case OPTION_FIRE:
+    return read_up_to("fire", value, 480, &out->options.promised_fire);
+  case OPTION_KEEP:
+    out->options.keep = value;
+    return true;
+  case OPTION_RATING:
+    return read_whole("rating", value, &out->options.promised_stc);
+  case OPTION_REDESIGN:
+    return read_money("redesign", value, &out->options.redesign_cost);
   case OPTION_BRIEF:
     out->options.brief = value;
     return true;

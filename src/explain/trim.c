@@ -46,13 +46,16 @@ static void hold_to_rating(const assessment *x, brief *b) {
   add_target(b, printed, floor(100 * probability) * 0.01);
 }
 
-/* The floor is the larger of what is promised and what is shown. */
+/* The floor is the larger of what is promised and what is shown. A rating that nothing but our
+ * prediction speaks for is not shown to anybody. */
 static void hold_to_promises(const assessment *own, const trim_terms *terms, brief *b) {
   bool shown = terms->own || terms->promised_fire > 0;
-  if (terms->own || terms->promised_stc > 0) hold_to_rating(own, b);
   if (terms->promised_stc > 0) {
-    double confidence = b->targets[0].confidence > 0 ? b->targets[0].confidence : usual_confidence;
-    add_target(b, terms->promised_stc, terms->own ? usual_confidence : confidence);
+    int published = own->evidence.match ? own->evidence.match->stc : 0;
+    double confidence = terms->own ? usual_confidence : b->targets[0].confidence;
+    add_target(b, published > terms->promised_stc ? published : terms->promised_stc, confidence);
+  } else if (terms->own) {
+    hold_to_rating(own, b);
   }
   if (terms->promised_fire > b->fire_min) b->fire_min = terms->promised_fire;
   if (shown && !(terms->allow & TRIM_ALLOW_LESS_FIRE) && own->fire.minutes > b->fire_min)
@@ -109,7 +112,8 @@ void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *t
   judge_context given = *x;
   given.brief = &as_given;
   terms->own = as_given.target_count == 0;
-  terms->thickness = terms->slack_given || !(terms->allow & TRIM_ALLOW_THICKER);
+  terms->thickness = terms->slack_given || terms->keep & TRIM_KEEP_THICKNESS ||
+                     !(terms->allow & TRIM_ALLOW_THICKER);
   const assessment *own = judge(a, &given, w);
   hold_to_promises(own, terms, b);
   hold_to_thickness(own, terms, b);
@@ -239,6 +243,31 @@ static void lose_rest(arena *a, const brief *b, const assessment *x, const asses
       lose(p, text_format(a, "%s takes heavy fastening (cabinets, grab bars) no longer", sides[s]));
 }
 
+static const layer *room_board(const catalog *c, const wall *w, int side) {
+  return w->side[side].count > 0 ? &c->layers[w->side[side].layer[0]] : NULL;
+}
+
+/* Boards that people touch, studs that hold fixtures, parts that do not burn. */
+static void lose_make(arena *a, const judge_context *x, const wall *from, const wall *to,
+                      trim_proposal *p) {
+  const catalog *c = x->catalog;
+  const frame *f = &c->frames[from->frame], *g = &c->frames[to->frame];
+  brief strict = *x->brief;
+  for (int s = 0; s < 2; s++) {
+    const layer *had = room_board(c, from, s), *has = room_board(c, to, s);
+    if (had && had->abuse && !(has && has->abuse))
+      lose(p, text_format(a, "side %c has an abuse-resistant board no longer", "AB"[s]));
+    if (had && had->moisture && !(has && has->moisture))
+      lose(p, text_format(a, "side %c has a moisture-resistant board no longer", "AB"[s]));
+  }
+  if (f->mil > 0 && g->mil > 0 && g->mil < f->mil)
+    lose(p, text_format(a, "steel of %d mil becomes %d mil", f->mil, g->mil));
+  strict.noncombustible = NONCOMBUSTIBLE_STRICT;
+  if (structure_noncombustible_ok(c, &strict, from, NULL) &&
+      !structure_noncombustible_ok(c, &strict, to, NULL))
+    lose(p, "it has combustible parts where the specified wall has none");
+}
+
 /* ---- proposals ---- */
 
 /* Where both rooms ask the same, the space holds one of two mirror images: the nearer one is told.
@@ -271,6 +300,7 @@ static void propose(arena *a, const space *s, const trim_answer *t, const candid
   list_changes(a, x, from, p);
   lose_sound(a, x->brief, from, p->wall, p);
   lose_rest(a, x->brief, from, p->wall, t->heavy, p);
+  lose_make(a, x, &from->wall, &p->wall->wall, p);
 }
 
 static const candidate *cheapest_of(const sweep_result *r) {

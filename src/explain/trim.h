@@ -89,7 +89,8 @@ typedef struct trim_answer {
  * and what the usual confidence assures) and the fire minutes that are shown for it; what the drawings
  * promise; its thickness and the slack, class of boards at the rooms, studs and noncombustible parts,
  * as far as the terms do not waive them. Needs prices in the context; x->brief is read as the brief
- * came. A promised rating needs room for two targets more (BRIEF_MAX_TARGETS). */
+ * came. A promised rating stands in place of the wall's own and needs room for one target more
+ * (BRIEF_MAX_TARGETS). */
 void trim_hold_to(arena *a, const judge_context *x, const wall *w, trim_terms *terms, brief *b);
 /* `r` is the sweep of `s`, whose brief is that of trim_hold_to; `specified` was judged by it and
  * can be costed. */

@@ -29,13 +29,15 @@ typedef enum column {
   COLUMN_HOURS_EACH,
   COLUMN_TRADE,
   COLUMN_MINIMUM_ORDER,
+  COLUMN_LEAD_WEEKS,
   COLUMN_COUNT
 } column;
 
 const char *const price_columns[] = {
     "code",  "description", "unit",      "price",           "currency",
     "date",  "section",     "bought_as", "bought_quantity", "waste",
-    "hours", "hours_each",  "trade",     "minimum_order",   NULL};
+    "hours", "hours_each",  "trade",     "minimum_order",   "lead_weeks",
+    NULL};
 
 /* Other names that suppliers give the first columns. */
 static const struct {
@@ -373,6 +375,7 @@ static bool complete(matcher *m, update_line *l) {
   good = read_figure(m, l, COLUMN_HOURS, 1 / si, &x->hours) && good;
   good = read_figure(m, l, COLUMN_HOURS_EACH, 1, &x->hours_each) && good;
   good = read_figure(m, l, COLUMN_BOUGHT_QUANTITY, si, &x->bought_quantity) && good;
+  good = read_figure(m, l, COLUMN_LEAD_WEEKS, 1, &x->lead_weeks) && good;
   return read_figure(m, l, COLUMN_MINIMUM_ORDER, si, &x->minimum_order) && good;
 }
 

@@ -40,6 +40,7 @@ bool prices_unit(const char *word, price_unit *unit, double *si) {
 /* Wide guards against slips of a digit or a unit. */
 #define MAX_MONEY    1e6
 #define MAX_HOURS    1e3
+#define MAX_WEEKS    200
 #define MAX_QUANTITY 1e7
 #define PRICE_SLACK  1e-9 /* prices this near are equal but for rounding */
 
@@ -75,6 +76,7 @@ static const field item_fields[] = {
     {"hours_each", FIELD_NUMBER, 0, 0, MAX_HOURS, 0, NULL, ITEM(item.hours_each)},
     {"trade", FIELD_CHOICE, REQUIRED, 0, 0, 0, trade_words, ITEM(trade)},
     {"minimum_order", FIELD_NUMBER, 0, 0, MAX_QUANTITY, 0, NULL, ITEM(item.minimum_order)},
+    {"lead_weeks", FIELD_NUMBER, 0, 0, MAX_WEEKS, 0, NULL, ITEM(item.lead_weeks)},
     {"breaks", FIELD_VALUE, 0, 0, 0, 0, NULL, ITEM(breaks)},
     {"source", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.source)},
     {"date", FIELD_STRING, 0, 0, 0, 0, NULL, ITEM(item.date)},

@@ -33,6 +33,7 @@ typedef struct price_item {
   double hours_each; /* labour hours a piece, for studs, whose pieces are counted; 0 without */
   trade trade;
   double minimum_order; /* takeoff units; 0 = none */
+  double lead_weeks;    /* from order to site; 0 = from the yard's shelf */
   const price_break
       *breaks; /* rising `from`; used where a whole project is bought, never in a wall's own cost */
   size_t break_count;

@@ -162,6 +162,7 @@ static void add_item(editor *e, const update_line *l) {
   markup_json_string(&j, "trade", trade_names[x->trade]);
   if (x->minimum_order > 0)
     markup_json_number(&j, "minimum_order", x->minimum_order / x->unit_si, PRICE_DECIMALS);
+  if (x->lead_weeks > 0) markup_json_number(&j, "lead_weeks", x->lead_weeks, PRICE_DECIMALS);
   end_added(e, l, &j);
 }
 

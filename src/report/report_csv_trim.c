@@ -60,7 +60,10 @@ static void put_head(row *w) {
                                us ? "cost_specified_per_ft2" : "cost_specified_per_m2",
                                us ? "saving_per_ft2" : "saving_per_m2",
                                "saving_total",
+                               "net_saving_total",
                                "currency",
+                               "lead_weeks",
+                               "drawings_promise",
                                "gives_up",
                                "cautions",
                                "status",
@@ -110,6 +113,7 @@ static void put_money(row *w, const trim_answer *t, const trim_proposal *p) {
   put_number(w, (double)from->numbers.cost_cents / 100 / from->cost.area_m2 * area, 2);
   put_number(w, p->saving_per_m2 * area, 2);
   put_cents(w, p->saving_cents);
+  put_cents(w, p->net_cents);
   put(w, w->r->prices->currency);
 }
 
@@ -132,6 +136,9 @@ static void put_proposal(row *w, const trim_answer *t, int i) {
   put(w, heavy_words(p->heavy));
   put(w, x->mounted ? text_format(r->arena, "STC %d", x->short_predicted.ratings.stc) : "");
   put_money(w, t, p);
+  const char *item, *promises = view_trim_promises(r, t);
+  put_number(w, view_lead_weeks(r, x, &item), 1);
+  put(w, promises ? promises : "");
   put(w, view_trim_losses(r, p));
   put(w, caution_words(r, x));
   for (int k = 0; k < 4; k++) put(w, ""); /* status, decided by, date, remarks */

@@ -52,6 +52,15 @@ static void put_figures(markup_json *j, const report *r, const assessment *from,
   markup_json_number(j, "height_change_m", (n->height_mm - m->height_mm) * 1e-3, METRE_DIGITS);
 }
 
+static void put_lead(markup_json *j, const report *r, const assessment *x) {
+  const char *item;
+  double weeks = view_lead_weeks(r, x, &item);
+  markup_json_object(j, "lead_time", true);
+  markup_json_number(j, "weeks", weeks, 1);
+  markup_json_string(j, "item", item);
+  markup_json_close(j);
+}
+
 static void put_change(markup_json *j, const report *r, const trim_answer *t,
                        const trim_change *c) {
   markup_json_object(j, NULL, false);
@@ -90,10 +99,12 @@ static void put_proposal(markup_json *j, const report *r, const trim_answer *t,
   markup_json_number(j, "saving_per_m2", p->saving_per_m2, MONEY_DIGITS);
   markup_json_number(j, "saving_per_ft2", p->saving_per_m2 * UNITS_M2_PER_FT2, MONEY_DIGITS);
   markup_json_cents(j, "saving_total", p->saving_cents);
+  markup_json_cents(j, "net_saving_total", p->net_cents);
   markup_json_number(j, "saving_share", (double)p->saving_cents / (double)before, SHARE_DIGITS);
   markup_json_cents(j, "saving_floor_value",
                     t->specified->cost.floor_value_cents - x->cost.floor_value_cents);
   put_figures(j, r, t->specified, x);
+  put_lead(j, r, x);
   put_heavy(j, p->heavy);
   markup_json_array(j, "changes", false);
   for (int i = 0; i < p->change_count; i++) put_change(j, r, t, &p->change[i]);
@@ -103,6 +114,24 @@ static void put_proposal(markup_json *j, const report *r, const trim_answer *t,
   for (int i = 0; i < p->loss_count; i++) markup_json_string(j, NULL, p->loss[i]);
   markup_json_close(j);
   report_json_rating(j, r, "rating", x);
+  markup_json_close(j);
+}
+
+static void put_promises(markup_json *j, const trim_answer *t) {
+  markup_json_object(j, "promised", true);
+  if (t->terms.promised_stc > 0)
+    markup_json_integer(j, "stc", t->terms.promised_stc);
+  else
+    markup_json_null(j, "stc");
+  put_minutes(j, "fire_minutes", t->terms.promised_fire);
+  markup_json_string(j, "design", t->terms.design);
+  markup_json_close(j);
+}
+
+static void put_bits(markup_json *j, const char *key, unsigned bits, const view_trim_word *words) {
+  markup_json_array(j, key, true);
+  for (int i = 0; words[i].word != NULL; i++)
+    if (bits & words[i].bit) markup_json_string(j, NULL, words[i].word);
   markup_json_close(j);
 }
 
@@ -126,6 +155,10 @@ static void put_terms(markup_json *j, const report *r, const trim_answer *t) {
   else
     markup_json_null(j, "thickness_mm");
   markup_json_number(j, "slack_mm", t->terms.slack_m * 1e3, MM_DIGITS);
+  put_promises(j, t);
+  put_bits(j, "allow", t->terms.allow, view_trim_waivers);
+  put_bits(j, "keep", t->terms.keep, view_trim_holds);
+  markup_json_cents(j, "redesign_cost", t->terms.redesign_cents);
   markup_json_string(j, "words", view_trim_terms(r, t));
   report_json_rules(j, r, "rules", rules_in_force(b));
   markup_json_close(j);

@@ -316,6 +316,7 @@ static void csv_item(arena *a, const price_book *b, const price_item *x, text *o
   csv_figure(a, out, x->hours_each);
   markup_csv_field(out, trade_names[x->trade], false);
   csv_figure(a, out, x->minimum_order / x->unit_si);
+  csv_figure(a, out, x->lead_weeks);
   markup_csv_end(out);
 }
 

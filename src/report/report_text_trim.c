@@ -58,7 +58,19 @@ static void put_specified(const report *r, const trim_answer *t, text *out) {
               view_money(r, (double)x->cost.floor_value_cents / 100, NULL));
   text_char(&c, '.');
   page_line(out, "", c.data);
+  const char *promises = view_trim_promises(r, t);
+  if (promises)
+    page_line(out, "Drawings", text_format(r->arena, "They promise %s.", promises));
   page_line(out, "Held to", view_trim_terms(r, t));
+}
+
+/* When the goods are on site, where they are not on the shelf. */
+static void put_lead(const report *r, const assessment *x, text *out) {
+  const char *item;
+  double weeks = view_lead_weeks(r, x, &item);
+  if (weeks > 0)
+    page_line(out, "Lead time",
+              text_format(r->arena, "%s weeks: %s.", text_of(r->arena, weeks, 1), item));
 }
 
 static void put_verdict(const report *r, const trim_answer *t, text *out) {
@@ -129,7 +141,13 @@ static void put_proposal(const report *r, const trim_answer *t, int i, text *out
                         view_money(r, (double)p->saving_cents / 100, NULL),
                         text_of(r->arena, 100 * (double)p->saving_cents / before, 1),
                         r->brief->floor_area_value_per_m2 > 0 ? ", floor area included" : ""));
+  if (t->terms.redesign_cents > 0)
+    page_line(out, "",
+              text_format(r->arena, "%s after %s for redesign and resubmittal.",
+                          view_money(r, (double)p->net_cents / 100, NULL),
+                          view_money(r, (double)t->terms.redesign_cents / 100, NULL)));
   put_figures(r, p->wall, out);
+  put_lead(r, p->wall, out);
   put_changes(r, t, i, out);
   text losses;
   text_init(&losses, r->arena, 3000);
@@ -187,6 +205,14 @@ static void put_cautions(const report *r, const trim_answer *t, text *out) {
   page_words(out, PAGE_LABEL + 2,
              "A change of a specified wall needs the acceptance of the owner and the designer; see "
              "`septum rate` for all about one wall.");
+  if (t->terms.design == NULL) return;
+  page_label(out, "");
+  text_put(out, "- ");
+  page_words(out, PAGE_LABEL + 2,
+             text_format(r->arena,
+                         "Design %s covers the wall that it describes: any other wall needs a listed "
+                         "design of its own.",
+                         t->terms.design));
 }
 
 void report_trim_text(const report *r, const trim_answer *t, text *out) {

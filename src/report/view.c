@@ -194,6 +194,18 @@ const char *view_fire_rests_on(const report *r, const assessment *x) {
   return "code_table";
 }
 
+double view_lead_weeks(const report *r, const assessment *x, const char **item) {
+  double most = 0;
+  *item = NULL;
+  for (int i = 0; i < x->takeoff.count; i++) {
+    int at = x->takeoff.line[i].item;
+    if (at == CATALOG_NONE || !(r->prices->items[at].lead_weeks > most)) continue;
+    most = r->prices->items[at].lead_weeks;
+    *item = r->prices->items[at].name;
+  }
+  return most;
+}
+
 bool view_published(const assessment *x, sound_metric metric) {
   return x->evidence.match != NULL && metric == METRIC_STC;
 }

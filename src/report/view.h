@@ -75,6 +75,9 @@ bool view_published(const assessment *x, sound_metric metric);
 const char *view_rests_on(const assessment *x);
 /* What the fire rating rests on: "listing", "code_table"; NULL when nothing is shown. */
 const char *view_fire_rests_on(const report *r, const assessment *x);
+/* Weeks until the last item of the wall is on site, and which item that is (NULL at 0: all of it is on
+ * the shelf, as far as the price book says). */
+double view_lead_weeks(const report *r, const assessment *x, const char **item);
 /* "optimal", "infeasible", "limit": what the solver proved. */
 const char *view_status(const explanation *e);
 /* "ibc" */

@@ -57,6 +57,57 @@ const char *view_trim_fire(const report *r, const assessment *x) {
   return text_format(r->arena, "%d min: %s", x->fire.minutes, x->fire.basis);
 }
 
+/* Words for the bits that are set, with commas between. */
+static void put_words(unsigned bits, const view_trim_word *words, text *out) {
+  for (int i = 0, n = 0; words[i].word != NULL; i++)
+    if (bits & words[i].bit) text_putf(out, "%s%s", n++ ? ", " : "", words[i].word);
+}
+
+const view_trim_word view_trim_waivers[] = {{TRIM_ALLOW_THINNER_STUDS, "thinner-studs"},
+                                            {TRIM_ALLOW_PLAIN_BOARDS, "plain-boards"},
+                                            {TRIM_ALLOW_THICKER, "thicker"},
+                                            {TRIM_ALLOW_COMBUSTIBLE, "combustible"},
+                                            {TRIM_ALLOW_LESS_FIRE, "less-fire"},
+                                            {0, NULL}};
+const view_trim_word view_trim_holds[] = {{TRIM_KEEP_FRAME, "frame"},
+                                          {TRIM_KEEP_FIRE, "fire"},
+                                          {TRIM_KEEP_THICKNESS, "thickness"},
+                                          {0, NULL}};
+
+const char *view_trim_promises(const report *r, const trim_answer *t) {
+  const trim_terms *g = &t->terms;
+  text out;
+  text_init(&out, r->arena, 2000);
+  if (g->promised_stc > 0) text_putf(&out, "STC %d", g->promised_stc);
+  if (g->promised_fire > 0)
+    text_putf(&out, "%s%d min of fire resistance", out.len ? ", " : "", g->promised_fire);
+  if (g->design) text_putf(&out, "%sdesign %s", out.len ? ", " : "", g->design);
+  return out.len ? out.data : NULL;
+}
+
+/* What the make of the specified wall adds to the rules. */
+static void put_make(const report *r, text *out) {
+  static const int rules[] = {RULE_STUDS, RULE_NONCOMBUSTIBLE, RULE_WET_A,
+                              RULE_WET_B, RULE_ABUSE_A,        RULE_ABUSE_B};
+  for (size_t i = 0; i < sizeof rules / sizeof rules[0]; i++) {
+    if (!(rules_in_force(r->brief) & rule_bit(rules[i]))) continue;
+    text_putf(out, "; %s", rule_limit(r->arena, r->brief, rules[i]));
+    if (rules[i] == RULE_WET_A || rules[i] == RULE_ABUSE_A) text_put(out, " on side A");
+    if (rules[i] == RULE_WET_B || rules[i] == RULE_ABUSE_B) text_put(out, " on side B");
+  }
+}
+
+static void put_choices(const trim_terms *g, text *out) {
+  if (g->keep) {
+    text_put(out, "; to be kept as it is: ");
+    put_words(g->keep, view_trim_holds, out);
+  }
+  if (g->allow) {
+    text_put(out, "; waived: ");
+    put_words(g->allow, view_trim_waivers, out);
+  }
+}
+
 const char *view_trim_terms(const report *r, const trim_answer *t) {
   const brief *b = r->brief;
   text out;
@@ -71,6 +122,8 @@ const char *view_trim_terms(const report *r, const trim_answer *t) {
     text_put(&out, "; no thicker than ");
     units_put_thickness(&out, b->thickness_m.max, r->units);
   }
+  put_make(r, &out);
+  put_choices(&t->terms, &out);
   text_put(&out, "; and every other rule of the brief.");
   return out.data;
 }

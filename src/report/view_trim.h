@@ -23,6 +23,15 @@ const char *view_trim_effect(const report *r, const trim_answer *t, const trim_c
 const char *view_trim_losses(const report *r, const trim_proposal *p);
 /* "holds", "not_shown", "fails" */
 const char *view_trim_verdict(const trim_answer *t);
+/* What the drawings promise, "STC 55, 60 min of fire resistance, design 42"; NULL when nothing was
+ * said. */
+const char *view_trim_promises(const report *r, const trim_answer *t);
+/* Words of the terms' bits; a NULL word ends them. */
+typedef struct view_trim_word {
+  unsigned bit;
+  const char *word;
+} view_trim_word;
+extern const view_trim_word view_trim_waivers[], view_trim_holds[];
 /* By how much the predicted rating moves, dB: of the metric that the wall is held to first. */
 double view_trim_shift(const report *r, const assessment *from, const assessment *to);
 

@@ -197,7 +197,8 @@ static int all_savers(const scene *x, full *out) {
       for (int j = 0; j < s->face_count; j++) {
         if (!space_legal(s, k, i, j)) continue;
         full f = full_of(x, k, i, j);
-        if (f.is.broken == 0 && f.is.is.cost_cents < x->specified->numbers.cost_cents)
+        long long below = x->specified->numbers.cost_cents - x->terms.redesign_cents;
+        if (f.is.broken == 0 && f.is.is.cost_cents < below)
           out[count++] = f;
       }
   return count;
@@ -225,6 +226,10 @@ static bool set_scene(scene *x, unsigned seed) {
   if (seed % 2) x->brief.target_count = 0;
   x->terms.slack_given = seed % 3 == 0;
   x->terms.slack_m = seed % 6 == 0 ? 0.02 : 0;
+  x->terms.allow = seed % 4 == 0 ? ~0u : seed / 4 & 31u;
+  if (!x->terms.slack_given && seed % 5 == 1) x->terms.keep = TRIM_KEEP_FRAME;
+  if (!x->terms.slack_given && seed % 5 == 2) x->terms.keep = TRIM_KEEP_THICKNESS;
+  x->terms.redesign_cents = seed % 7 == 0 ? 2000 : 0;
   if (!roll_wall(&x->brief, seed, &w)) return false;
   trim_wall(x, &w);
   return true;
@@ -259,7 +264,8 @@ START_TEST(every_listed_wall_holds_and_its_money_adds_up) {
   for (int i = 0; i < x.trim.proposal_count; i++) {
     const trim_proposal *p = &x.trim.proposal[i];
     ck_assert_uint_eq(p->wall->broken, 0);
-    ck_assert_int_gt(p->saving_cents, 0);
+    ck_assert_int_gt(p->saving_cents, x.terms.redesign_cents);
+    ck_assert_int_eq(p->net_cents, p->saving_cents - x.terms.redesign_cents);
     ck_assert_int_eq(p->saving_cents,
                      x.specified->numbers.cost_cents - p->wall->numbers.cost_cents);
     if (i > 0) ck_assert_int_le(p->saving_cents, x.trim.proposal[i - 1].saving_cents);
@@ -284,6 +290,108 @@ START_TEST(every_listed_wall_holds_and_its_money_adds_up) {
     ck_assert_int_eq(sum, p->saving_cents);
     ck_assert(wall_same(&now, &p->wall->wall));
   }
+}
+END_TEST
+
+/* ---- what stays as the specified wall has it ---- */
+
+static const layer *at_room(const wall *w, int side) {
+  return &shop.catalog->layers[w->side[side].layer[0]];
+}
+
+static bool burns_nowhere(const scene *x, const wall *w) {
+  brief strict = x->brief;
+  strict.noncombustible = NONCOMBUSTIBLE_STRICT;
+  return structure_noncombustible_ok(shop.catalog, &strict, w, NULL);
+}
+
+/* A substitute has no plainer boards where people touch them, no lighter steel, no combustible part in
+ * place of none, unless that is waived: common practice, no source. */
+START_TEST(what_is_not_waived_stays) {
+  static const double same_thickness_m = 0.0254 / 32 + 1e-6; /* the slack of thickness limits */
+  scene x;
+  if (!set_scene(&x, (unsigned)_i)) return;
+  const wall *from = &x.specified->wall;
+  for (int i = 0; i < x.trim.proposal_count; i++) {
+    const wall *to = &x.trim.proposal[i].wall->wall;
+    const frame *f = &shop.catalog->frames[from->frame], *g = &shop.catalog->frames[to->frame];
+    for (int s = 0; s < 2 && !(x.terms.allow & TRIM_ALLOW_PLAIN_BOARDS); s++) {
+      ck_assert(at_room(to, s)->abuse || !at_room(from, s)->abuse);
+      ck_assert(at_room(to, s)->moisture || !at_room(from, s)->moisture);
+    }
+    if (!(x.terms.allow & TRIM_ALLOW_THINNER_STUDS) && f->mil > 0 && g->mil > 0)
+      ck_assert_int_ge(g->mil, f->mil);
+    if (!(x.terms.allow & TRIM_ALLOW_COMBUSTIBLE) && burns_nowhere(&x, from))
+      ck_assert(burns_nowhere(&x, to));
+    if (x.terms.keep & TRIM_KEEP_FRAME) ck_assert_int_eq(to->frame, from->frame);
+    if (x.terms.keep & TRIM_KEEP_THICKNESS)
+      ck_assert(fabs(x.trim.proposal[i].wall->thickness_m - x.specified->thickness_m) <
+                same_thickness_m);
+  }
+}
+END_TEST
+
+static const struct floor_row {
+  const char *name, *line;
+  unsigned allow;
+  const char *lost; /* what the best proposal gives up then; NULL: not this */
+} floor_rows[] = {
+    {"abuse boards stay", "2*abuse-16 | wood-89@406, glass-89 | 2*abuse-16",
+     TRIM_ALLOW_THICKER | TRIM_ALLOW_LESS_FIRE, NULL},
+    {"plain boards waived", "2*abuse-16 | wood-89@406, glass-89 | 2*abuse-16",
+     TRIM_ALLOW_PLAIN_BOARDS | TRIM_ALLOW_LESS_FIRE, "side A has an abuse-resistant board no longer"},
+    {"studs stay", "2*typex-16 | steel-92-33@406, glass-89 | 2*typex-16", 0, NULL},
+    {"studs waived", "2*typex-16 | steel-92-33@406, glass-89 | 2*typex-16", TRIM_ALLOW_THINNER_STUDS,
+     "steel of 33 mil becomes 18 mil"},
+};
+
+START_TEST(a_waiver_is_told) {
+  const struct floor_row *row = &floor_rows[_i];
+  scene x = {.terms.allow = row->allow};
+  wall w = read_wall(row->line);
+  job_defaults(&x.brief);
+  x.brief.code = CODE_IBC;
+  trim_wall(&x, &w);
+  bool told = false, some = false;
+  for (int i = 0; i < x.trim.proposal_count; i++)
+    for (int k = 0; k < x.trim.proposal[i].loss_count; k++) {
+      const char *loss = x.trim.proposal[i].loss[k];
+      told = told || (row->lost && strcmp(loss, row->lost) == 0);
+      some = some || strstr(loss, "abuse-resistant") || strstr(loss, " mil becomes ");
+    }
+  ck_assert_msg(row->lost ? told : !some, "%s", row->name);
+}
+END_TEST
+
+/* The floor is the larger of what the drawings promise and what is shown: NBC 2020 Table
+ * 9.10.3.1.-A gives row W6a STC 55; clips stand in no code table; IBC 13-1.1 gives one layer each side
+ * of light steel 60 min (from memory). */
+#define W6A     "2*typex-16 | rc@406 | wood-89@406, glass-89 | 2*typex-16"
+#define CLIPS   "2*typex-16 | clip@610 | wood-89@406, glass-89 | typex-16"
+#define IBC1311 "typex-16 | steel-92-18@610, glass-89 | typex-16"
+static const struct promise_row {
+  const char *name, *line;
+  int stc, fire;           /* promised */
+  int value, minutes_held; /* what the wall is held to */
+} promise_rows[] = {
+    {"a promise below a published rating", W6A, 50, 0, 55, 0},
+    {"a promise above a published rating", W6A, 57, 0, 57, 0},
+    {"a promise below a mere prediction", CLIPS, 50, 0, 50, 0},
+    {"fire promised below what is shown", IBC1311, 40, 45, 40, 60},
+    {"fire promised above what is shown", IBC1311, 40, 90, 40, 90},
+};
+
+START_TEST(promises) {
+  const struct promise_row *row = &promise_rows[_i];
+  scene x = {.terms = {.promised_stc = row->stc, .promised_fire = row->fire}};
+  wall w = read_wall(row->line);
+  job_defaults(&x.brief);
+  x.brief.code = CODE_IBC;
+  trim_wall(&x, &w);
+  ck_assert_int_eq(x.brief.target_count, 1);
+  ck_assert_msg((int)x.brief.targets[0].value == row->value, "%s: held to %g", row->name,
+                x.brief.targets[0].value);
+  if (row->fire > 0) ck_assert_int_eq(x.brief.fire_min, row->minutes_held);
 }
 END_TEST
 
@@ -449,6 +557,9 @@ int main(void) {
   tcase_add_loop_test(t, every_cheaper_wall_that_no_other_beats_is_listed, 0, BRUTE_BRIEFS);
   tcase_add_loop_test(t, every_listed_wall_holds_and_its_money_adds_up, 0, BRUTE_BRIEFS);
   tcase_add_loop_test(t, a_wall_keeps_its_own_figures, 0, OWN_BRIEFS);
+  tcase_add_loop_test(t, what_is_not_waived_stays, 0, BRUTE_BRIEFS);
+  tcase_add_loop_test(t, a_waiver_is_told, 0, (int)(sizeof floor_rows / sizeof floor_rows[0]));
+  tcase_add_loop_test(t, promises, 0, (int)(sizeof promise_rows / sizeof promise_rows[0]));
   tcase_add_loop_test(t, verdicts, 0, 4);
   tcase_add_test(t, a_rating_that_is_not_sure_enough_is_not_shown);
   tcase_add_test(t, nothing_is_cheaper_than_the_cheapest);
