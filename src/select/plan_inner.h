@@ -61,7 +61,7 @@ void plan_case_make(arena *a, const plan_terms *s, unsigned rules, int least_mar
 typedef struct plan_columns {
   int *x;  /* a pair */
   int *y;  /* a type */
-  int **z; /* an item: tier 0 = none bought, then the tiers */
+  int **z; /* an item: tier 0 = none bought, then the tiers; NULL: not in the model */
   int **q; /* an item: the tiers */
   int *w;  /* an item */
   int *u;  /* storey * groups + group */
@@ -70,8 +70,11 @@ typedef struct plan_columns {
 
 typedef struct plan_shape {
   bool lean;        /* for our own solve: cost above each class's cheapest, and cuts */
+  bool bare;        /* for our own question whether there is any plan: no goods, no costs */
   bool with_margin; /* a column for the worst margin, at least `least_margin` */
   int least_margin;
+  const unsigned *tiers; /* an item: the tiers that may be taken, bit 0 none bought, k + 1 tier k;
+                            NULL all */
 } plan_shape;
 
 /* The 0-1 model of a case. With `lean`, *base is what it leaves out of the objective, currency. */
@@ -103,12 +106,16 @@ typedef struct plan_least {
 bool plan_over(const plan_call *call);
 /* Seconds left, for the solver; 0 = no limit. */
 double plan_left(const plan_call *call);
-/* Solves a case. `start`: a choice to begin with, NULL none. `enough_cents`: any choice that costs
- * no more will do, and none is wanted that costs more (LLONG_MIN: the least cost is wanted). False
- * and a diagnostic on a fault. */
+/* Solves a case. `start`: a choice to begin with, NULL none; it may break rules. `enough_cents`:
+ * only whether some choice costs no more is asked; LIMIT then with such a choice, or with a bound
+ * above it (LLONG_MIN: the least cost is wanted). False and a diagnostic on a fault. */
 bool plan_least_cost(const plan_call *call, const plan_case *x, const int *start,
                      long long enough_cents, plan_least *out);
 
+/* Hands a case to the solver as it is. `limit`: what costs more is not looked for; HUGE_VAL none.
+ * `asked`: anything within it will do. */
+bool plan_ask_solver(const plan_call *call, const plan_case *x, const plan_shape *shape,
+                     const int *start, double limit, bool asked, plan_least *out);
 /* The rules that the problem states, as plan_rule bits. */
 unsigned plan_rules_in_force(const plan_problem *p);
 /* Whether an amount is above whole cents when rounded. */

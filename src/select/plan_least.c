@@ -1,36 +1,35 @@
-/* The least cost of one case: what our own search finds and rules out, then the solver's proof. */
+/* The least cost of a case. A good plan is searched first; lower bounds then close whatever costs
+ * more, by itself and split by the tiers that goods are bought in; what is left goes to the solver,
+ * which proves it (docs/design/plan.md, "Solving"). */
 #include <limits.h>
 #include <math.h>
 #include <string.h>
 
-#include "base/clock.h"
-#include "select/plan_inner.h"
+#include "select/plan_relax.h"
 
-/* The answer's cents are counted anew; the solver's objective says the same to a cent, or the proof
- * is not one of this plan. */
-static const double cent = 0.01;
+enum {
+  FIRST_STEPS = 150,
+  NEXT_STEPS = 60,
+  ROUNDS = 4,
+  PART_STEPS = 40,
+  MOST_PARTS = 200,
+  DEEPEST = 16
+};
+/* pairs a class that the solver settles at once */
+enum { FEW_PAIRS = 2 };
+static const double sure = 1e-4;
 
-bool plan_over(const plan_call *call) {
-  const plan_how *how = call->how;
-  if (how->stop && *how->stop) return true;
-  return how->seconds > 0 && clock_seconds() - call->begun >= how->seconds;
-}
-
-double plan_left(const plan_call *call) {
-  if (!(call->how->seconds > 0)) return 0;
-  return fmax(call->how->seconds - (clock_seconds() - call->begun), 1e-3);
-}
-
-/* What the solver tells counts from the classes' cheapest. */
-typedef struct teller {
-  const plan_how *how;
-  double base;
-} teller;
-
-static void tell(void *user, double found, double bound) {
-  const teller *t = user;
-  t->how->progress(t->how->user, found + t->base, bound + t->base);
-}
+typedef struct search {
+  const plan_call *call;
+  const plan_case *x;
+  plan_guess guess;
+  plan_relax *relax;
+  double limit; /* what costs more is not wanted; HUGE_VAL none */
+  bool asked;
+  double unsettled; /* the least bound of parts that were left; HUGE_VAL none was */
+  double root;      /* bound of the whole */
+  int parts;
+} search;
 
 static bool no_way(const plan_case *x) {
   const plan_problem *p = x->terms->p;
@@ -42,75 +41,203 @@ static bool no_way(const plan_case *x) {
   return false;
 }
 
-static void take_choice(const plan_case *x, const plan_columns *at, const solver_result *r,
-                        int *type_of) {
-  const plan_problem *p = x->terms->p;
-  for (int c = 0; c < p->classes; c++)
-    for (int t = 0; t < p->types; t++) {
-      int column = at->x[plan_pair(p, c, t)];
-      if (column >= 0 && r->value[column] > 0.5) type_of[c] = t;
-    }
+static double ceiling(const search *s) {
+  return s->guess.found ? fmin(s->guess.tally.amount, s->limit) : s->limit;
 }
 
-static bool take_answer(const plan_call *call, const plan_case *x, const plan_columns *at,
-                        const solver_result *r, double base, plan_least *out) {
-  out->status = r->status;
-  out->bound = r->bound + base;
-  out->found = r->found;
-  if (!r->found) return true;
-  take_choice(x, at, r, out->type_of);
-  plan_tally_make(x->terms, out->type_of, &out->tally);
-  if (plan_broken(x, &out->tally)) {
-    diag_error(call->diags, ERROR_INTERNAL_SOLVER,
-               "the solver's plan breaks a rule when it is checked in integers");
-    return false;
+static bool has_enough(const search *s) {
+  return s->asked && s->guess.found && s->guess.tally.amount <= s->limit;
+}
+
+static void tell_progress(const search *s) {
+  const plan_how *how = s->call->how;
+  if (how->progress)
+    how->progress(how->user, s->guess.found ? s->guess.tally.amount : HUGE_VAL, s->root);
+}
+
+/* ---- whether there is any plan ---- */
+
+/* Whether type `t` can stand in for `u` wherever rules alone are asked about. */
+static bool stands_for(const plan_case *x, const bool *open, int t, int u) {
+  const plan_problem *p = x->terms->p;
+  if (x->framed && p->group[t] != p->group[u]) return false;
+  for (int c = 0; c < p->classes; c++) {
+    size_t a = plan_pair(p, c, t), b = plan_pair(p, c, u);
+    if (open[b] && (!open[a] || (x->floor_max > 0 && x->terms->floor[a] > x->terms->floor[b])))
+      return false;
   }
-  if (out->status == SOLVER_OPTIMAL && out->tally.amount > r->objective + base + cent)
-    out->status = SOLVER_LIMIT; /* within tolerances the solver saw another plan: not proved */
   return true;
 }
 
-static bool ask_solver(const plan_call *call, const plan_case *x, const int *start,
-                       long long enough_cents, plan_least *out) {
-  solver_model m;
-  plan_columns at;
-  double base;
-  solver_result r;
-  plan_model(call->arena, x, &(plan_shape){.lean = true}, &m, &at, &base);
-  teller t = {call->how, base};
-  solver_how how = {.seconds = plan_left(call),
-                    .nodes = call->how->nodes,
-                    .priority = plan_priorities(call->arena, x, &m, &at),
-                    .start = start ? plan_values(call->arena, x, &m, &at, start) : NULL,
-                    .dual = true,
-                    .stop = call->how->stop,
-                    .progress = call->how->progress ? tell : NULL,
-                    .user = &t};
-  if (enough_cents > LLONG_MIN) {
-    how.asked = true;
-    how.limit = ((double)enough_cents + 0.5) / 100 - base;
+static bool *needed_types(arena *a, const plan_case *x) {
+  const plan_problem *p = x->terms->p;
+  size_t pairs = (size_t)p->classes * (size_t)p->types;
+  bool *open = arena_array(a, pairs, sizeof *open);
+  memcpy(open, x->open, pairs * sizeof *open);
+  for (int u = 0; u < p->types; u++) {
+    bool needless = false;
+    for (int t = 0; t < p->types && !needless; t++)
+      needless = t != u && stands_for(x, open, t, u) && (t < u || !stands_for(x, open, u, t));
+    for (int c = 0; needless && c < p->classes; c++) open[plan_pair(p, c, u)] = false;
   }
-  solver_run_how(call->arena, call->diags, &m, &how, &r);
-  if (r.status == SOLVER_FAILED) return false;
-  return take_answer(call, x, &at, &r, base, out);
+  return open;
 }
 
-/* A choice to begin with counts only where it keeps the case's rules. */
-static bool usable(const plan_case *x, const int *start) {
-  const plan_problem *p = x->terms->p;
-  plan_tally t;
-  if (!start) return false;
+/* Without costs and goods, and without types that others can stand in for. */
+static bool find_any(search *s, plan_least *out) {
+  plan_case rules = *s->x;
+  rules.open = needed_types(s->call->arena, s->x);
+  plan_shape bare = {.bare = true};
+  if (!plan_ask_solver(s->call, &rules, &bare, NULL, HUGE_VAL, false, out)) return false;
+  if (out->found) (void)plan_guess_offer(&s->guess, out->type_of);
+  out->found = false;
+  out->bound = -HUGE_VAL;
+  return true;
+}
+
+/* ---- parts ---- */
+
+static bool fits_part(const search *s, const plan_part *part) {
+  const plan_problem *p = s->x->terms->p;
+  plan_buy *buy = arena_array(s->call->arena, (size_t)p->items + 1, sizeof *buy);
+  if (!s->guess.found) return false;
   for (int c = 0; c < p->classes; c++)
-    if (start[c] < 0 || start[c] >= p->types || !x->open[plan_pair(p, c, start[c])]) return false;
-  plan_tally_make(x->terms, start, &t);
-  return plan_broken(x, &t) == 0;
+    if (!part->open[plan_pair(p, c, s->guess.best[c])]) return false;
+  (void)plan_cost(p, s->guess.best, buy);
+  for (int i = 0; i < p->items; i++)
+    if (!(part->tiers[i] & 1u << (buy[i].tier + 1))) return false;
+  return true;
+}
+
+static void leave(search *s, double bound) {
+  s->unsettled = fmin(s->unsettled, bound);
+}
+
+static bool prove(search *s, const plan_part *part) {
+  plan_case x = *s->x;
+  plan_least found = {.type_of = s->guess.trial};
+  plan_shape shape = {.lean = true, .tiers = part->tiers};
+  x.open = part->open;
+  const int *start = fits_part(s, part) ? s->guess.best : NULL;
+  double limit = ceiling(s);
+  if (limit < HUGE_VAL) limit += sure;
+  if (!plan_ask_solver(s->call, &x, &shape, start, limit, s->asked, &found)) return false;
+  if (found.found) (void)plan_guess_offer(&s->guess, found.type_of);
+  bool beyond = found.status == SOLVER_INFEASIBLE || found.bound > limit;
+  if (found.status != SOLVER_OPTIMAL && !beyond && !has_enough(s))
+    leave(s, fmax(part->bound, found.bound));
+  tell_progress(s);
+  return true;
+}
+
+static int preferred_tier(const search *s, int item) {
+  const plan_problem *p = s->x->terms->p;
+  plan_buy *buy = arena_array(s->call->arena, (size_t)p->items + 1, sizeof *buy);
+  if (!s->guess.found) return 0;
+  (void)plan_cost(p, s->guess.best, buy);
+  return buy[item].tier + 1;
+}
+
+static bool settle(search *s, plan_part *part, int depth);
+
+static bool split(search *s, const plan_part *part, int depth) {
+  int item = part->wavers, first = preferred_tier(s, item);
+  int tiers = s->x->terms->p->item[item].tier_count + 1;
+  for (int k = 0; k < tiers; k++) {
+    int tier = k == 0 ? first : k <= first ? k - 1 : k;
+    if (!(part->tiers[item] & 1u << tier)) continue;
+    plan_part one;
+    plan_part_copy(s->relax, part, &one);
+    one.tiers[item] = 1u << tier;
+    if (!settle(s, &one, depth + 1)) return false;
+  }
+  return true;
+}
+
+static bool settle(search *s, plan_part *part, int depth) {
+  if (has_enough(s)) return true;
+  if (plan_over(s->call)) {
+    leave(s, part->bound);
+    return true;
+  }
+  if (depth > 0) plan_relax_part(s->relax, part, ceiling(s), PART_STEPS);
+  if (part->bound > ceiling(s) + sure || has_enough(s)) return true;
+  bool small = part->pairs <= FEW_PAIRS * s->x->terms->p->classes;
+  if (small || part->wavers == PLAN_NONE || depth >= DEEPEST || ++s->parts > MOST_PARTS)
+    return prove(s, part);
+  return split(s, part, depth);
+}
+
+/* ---- the whole ---- */
+
+static int list_types(const search *s, const plan_part *part, int *types) {
+  const plan_problem *p = s->x->terms->p;
+  int n = 0;
+  for (int t = 0; t < p->types; t++) {
+    bool any = false;
+    for (int c = 0; c < p->classes && !any; c++) any = part->open[plan_pair(p, c, t)];
+    if (any) types[n++] = t;
+  }
+  return n;
+}
+
+/* Bound and plan help each other: the better the plan, the fewer pairs are left to bound and
+ * search. */
+static void narrow(search *s, plan_part *whole) {
+  int *types = arena_array(s->call->arena, (size_t)s->x->terms->p->types, sizeof *types);
+  plan_relax_part(s->relax, whole, s->limit, FIRST_STEPS);
+  for (int round = 0; round < ROUNDS; round++) {
+    if (whole->bound > ceiling(s) + sure || has_enough(s) || plan_over(s->call)) break;
+    int before = whole->pairs;
+    plan_guess_polish(&s->guess, types, 0, types, list_types(s, whole, types));
+    plan_relax_part(s->relax, whole, s->limit, NEXT_STEPS);
+    s->root = whole->bound;
+    tell_progress(s);
+    if (whole->pairs * 5 > before * 4) break;
+  }
+  s->root = whole->bound;
+}
+
+static void conclude(const search *s, plan_least *out) {
+  out->found = s->guess.found;
+  out->bound = fmin(s->unsettled, ceiling(s));
+  if (s->guess.found) {
+    out->tally = s->guess.tally;
+    memcpy(out->type_of, s->guess.best, (size_t)s->x->terms->p->classes * sizeof *out->type_of);
+  }
+  bool all = s->unsettled >= HUGE_VAL;
+  out->status = all && !s->asked && s->guess.found ? SOLVER_OPTIMAL : SOLVER_LIMIT;
+  if (all && s->asked && !has_enough(s)) out->bound = s->limit + sure;
+  if (has_enough(s)) out->bound = -HUGE_VAL;
+}
+
+static bool search_plan(search *s, const int *start, plan_least *out) {
+  plan_part whole;
+  plan_guess_init(s->call->arena, s->x, &s->guess);
+  s->relax = plan_relax_make(s->call, s->x, &s->guess);
+  plan_part_whole(s->relax, &whole);
+  if (start) (void)plan_guess_offer(&s->guess, start);
+  narrow(s, &whole);
+  if (!s->guess.found && !(whole.bound > s->limit + sure)) {
+    if (!find_any(s, out)) return false;
+    if (out->status == SOLVER_INFEASIBLE) return true;
+    if (s->guess.found) narrow(s, &whole);
+  }
+  if (!settle(s, &whole, 0)) return false;
+  conclude(s, out);
+  return true;
 }
 
 bool plan_least_cost(const plan_call *call, const plan_case *x, const int *start,
                      long long enough_cents, plan_least *out) {
   const plan_problem *p = x->terms->p;
+  search s = {.call = call, .x = x, .unsettled = HUGE_VAL, .root = -HUGE_VAL};
   *out = (plan_least){.status = SOLVER_INFEASIBLE, .bound = -HUGE_VAL};
   out->type_of = arena_array(call->arena, (size_t)p->classes, sizeof *out->type_of);
+  s.asked = enough_cents > LLONG_MIN;
+  s.limit = !s.asked || enough_cents == LLONG_MAX ? HUGE_VAL : ((double)enough_cents + 0.5) / 100;
   if (no_way(x)) return true;
-  return ask_solver(call, x, usable(x, start) ? start : NULL, enough_cents, out);
+  if (call->how->plain)
+    return plan_ask_solver(call, x, &(plan_shape){.lean = true}, NULL, s.limit, s.asked, out);
+  return search_plan(&s, start, out);
 }

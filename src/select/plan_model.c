@@ -19,6 +19,7 @@ typedef struct builder {
   double *unit; /* an item: quantities count in the most that is ever bought, so that no coefficient
                    is above 1: with 1e5 sheets as a bound a tolerance of 1e-5 would be a sheet */
   double *base; /* a class: currency that its costs are above */
+  bool *wanted; /* an item: stands in the model */
 } builder;
 
 static const char *name_v(arena *a, const char *format, va_list args) {
@@ -119,19 +120,19 @@ static void set_bases(builder *b, double *base) {
 
 static void choice_columns(builder *b) {
   const plan_problem *p = b->p;
+  double setup = b->shape->bare ? 0 : (double)p->setup_cents / 100;
   b->at->x = none(b->arena, (size_t)p->classes * (size_t)p->types);
   b->at->y = none(b->arena, (size_t)p->types);
   for (int t = 0; t < p->types; t++)
     for (int c = 0; c < p->classes && b->at->y[t] < 0; c++)
       if (is_open(b, c, t))
-        b->at->y[t] = add_column(
-            b, (solver_column){.cost = (double)p->setup_cents / 100, .binary = true, .upper = 1},
-            "y_t%d", t + 1);
+        b->at->y[t] = add_column(b, (solver_column){.cost = setup, .binary = true, .upper = 1},
+                                 "y_t%d", t + 1);
   for (int c = 0; c < p->classes; c++)
     for (int t = 0; t < p->types; t++) {
       if (!is_open(b, c, t)) continue;
       size_t k = plan_pair(p, c, t);
-      double cost = (double)p->cents[k] / 100 - b->base[c];
+      double cost = b->shape->bare ? 0 : (double)p->cents[k] / 100 - b->base[c];
       b->at->x[k] = add_column(b, (solver_column){.cost = cost, .binary = true, .upper = 1},
                                "x_c%d_t%d", c + 1, t + 1);
     }
@@ -151,9 +152,11 @@ static void item_columns(builder *b, int i) {
   if (!(b->unit[i] > 0)) b->unit[i] = 1;
   at->z[i] = none(b->arena, (size_t)n + 1);
   at->q[i] = none(b->arena, (size_t)n);
-  for (int k = 0; k <= n; k++)
-    at->z[i][k] =
-        add_column(b, (solver_column){.binary = true, .upper = 1}, "z_%s_%d", b->code[i], k);
+  for (int k = 0; k <= n; k++) {
+    bool may = !b->shape->tiers || b->shape->tiers[i] & 1u << k;
+    at->z[i][k] = add_column(b, (solver_column){.binary = true, .upper = may ? 1 : 0}, "z_%s_%d",
+                             b->code[i], k);
+  }
   for (int k = 0; k < n; k++)
     at->q[i][k] =
         add_column(b, (solver_column){.cost = item->tier[k].price * b->unit[i], .upper = HUGE_VAL},
@@ -164,13 +167,26 @@ static void item_columns(builder *b, int i) {
                    "w_%s", b->code[i]);
 }
 
+/* Of our own model goods are left out that no open pair takes. */
+static void list_wanted(builder *b) {
+  const plan_terms *s = b->x->terms;
+  const plan_problem *p = b->p;
+  b->wanted = arena_array(b->arena, (size_t)p->items + 1, sizeof *b->wanted);
+  for (int i = 0; i < p->items; i++) b->wanted[i] = !b->shape->lean && !b->shape->bare;
+  if (!b->shape->lean) return;
+  for (size_t k = 0; k < (size_t)p->classes * (size_t)p->types; k++)
+    for (int e = s->first_pair[k]; b->x->open[k] && e < s->first_pair[k + 1]; e++)
+      b->wanted[s->good[e]] = true;
+}
+
 static void goods_columns(builder *b) {
   size_t n = (size_t)b->p->items;
   b->unit = arena_array(b->arena, n + 1, sizeof *b->unit);
   b->at->z = arena_array(b->arena, n + 1, sizeof *b->at->z);
   b->at->q = arena_array(b->arena, n + 1, sizeof *b->at->q);
   b->at->w = none(b->arena, n);
-  for (int i = 0; i < b->p->items; i++) item_columns(b, i);
+  for (size_t i = 0; i < n; i++)
+    if (b->wanted[i]) item_columns(b, (int)i);
 }
 
 /* ---- rows ---- */
@@ -237,19 +253,21 @@ static void tier_rows(builder *b, int i) {
 static void need_rows(builder *b) {
   const plan_problem *p = b->p;
   const plan_terms *s = b->x->terms;
-  int first = b->m->row_count;
+  int *row_of = none(b->arena, (size_t)p->items);
   for (int i = 0; i < p->items; i++) {
-    int row = add_row(b, ROW_GREATER, 0, "need_%s", b->code[i]);
-    for (int k = 0; k < p->item[i].tier_count; k++) put(b, row, b->at->q[i][k], 1);
-    if (b->at->w[i] >= 0) put(b, row, b->at->w[i], 1);
+    if (!b->wanted[i]) continue;
+    row_of[i] = add_row(b, ROW_GREATER, 0, "need_%s", b->code[i]);
+    for (int k = 0; k < p->item[i].tier_count; k++) put(b, row_of[i], b->at->q[i][k], 1);
+    if (b->at->w[i] >= 0) put(b, row_of[i], b->at->w[i], 1);
   }
   size_t pairs = (size_t)p->classes * (size_t)p->types;
-  for (size_t k = 0; k < pairs; k++) {
+  for (size_t k = 0; k < pairs && !b->shape->bare; k++) {
     if (!b->x->open[k]) continue;
     for (int e = s->first_pair[k]; e < s->first_pair[k + 1]; e++)
-      put(b, first + s->good[e], b->at->x[k], -s->amount[e] / b->unit[s->good[e]]);
+      put(b, row_of[s->good[e]], b->at->x[k], -s->amount[e] / b->unit[s->good[e]]);
   }
-  for (int i = 0; i < p->items; i++) tier_rows(b, i);
+  for (int i = 0; i < p->items; i++)
+    if (b->wanted[i]) tier_rows(b, i);
 }
 
 static void floor_row(builder *b) {
@@ -315,7 +333,7 @@ static void buying_cuts(builder *b) {
   const plan_problem *p = b->p;
   for (int i = 0; i < p->items; i++)
     for (int t = 0; t < p->types; t++) {
-      if (b->at->y[t] < 0) continue;
+      if (!b->wanted[i] || b->at->y[t] < 0) continue;
       if (least_need(b, t, i) <= p->item[i].stock + b->x->terms->slack[i]) continue;
       int row = add_row(b, ROW_LESS, 1, "buys_%s_t%d", b->code[i], t + 1);
       put(b, row, b->at->y[t], 1);
@@ -328,6 +346,7 @@ void plan_model(arena *a, const plan_case *x, const plan_shape *shape, solver_mo
   builder b = {.arena = a, .x = x, .p = x->terms->p, .shape = shape, .m = m, .at = at};
   *m = (solver_model){.name = "plan"};
   name_items(&b);
+  list_wanted(&b);
   set_bases(&b, base);
   choice_columns(&b);
   goods_columns(&b);
@@ -371,7 +390,8 @@ double *plan_values(arena *a, const plan_case *x, const solver_model *m, const p
     if (x->framed) value[at->u[p->storey[c] * p->groups + p->group[type_of[c]]]] = 1;
     if (c == 0 || p->margin[k] < worst) worst = p->margin[k];
   }
-  for (int i = 0; i < p->items; i++) put_goods(x, at, type_of, i, value);
+  for (int i = 0; i < p->items; i++)
+    if (at->z[i]) put_goods(x, at, type_of, i, value);
   if (at->s >= 0) value[at->s] = (double)worst / 100;
   return value;
 }
@@ -387,7 +407,7 @@ int *plan_priorities(arena *a, const plan_case *x, const solver_model *m, const 
   for (int t = 0; t < p->types; t++)
     if (at->y[t] >= 0) rank[at->y[t]] = THEN_TYPES;
   for (int i = 0; i < p->items; i++)
-    for (int k = 0; k <= p->item[i].tier_count; k++) rank[at->z[i][k]] = THEN_TIERS;
+    for (int k = 0; at->z[i] && k <= p->item[i].tier_count; k++) rank[at->z[i][k]] = THEN_TIERS;
   if (x->framed)
     for (int k = 0; k < x->storeys * p->groups; k++) rank[at->u[k]] = FIRST_GROUPS;
   return rank;

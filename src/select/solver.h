@@ -67,8 +67,9 @@ typedef struct solver_how {
                           depth first; NULL = the solver's own rule */
   const double *start; /* a solution to begin with, column_count values, whole where binary: it must
                           keep all rows, which is not checked; NULL = none */
-  bool asked;          /* only whether some solution costs no more than `limit` is asked: ends where
-                          that is settled, LIMIT with the solution or with a bound above it */
+  bool limited; /* what costs more than `limit` is not looked for: LIMIT with a bound above it
+                   where all that is left does */
+  bool asked;   /* and the first solution within the limit will do: LIMIT with it */
   double limit;
   bool dual; /* the first relaxation by the dual simplex: for many rows that start kept */
   const volatile int *stop; /* ends early where it turns non-zero; may be NULL */

@@ -183,11 +183,11 @@ static void choose_branch(glp_tree *tree, const task *t) {
     glp_ios_branch_upon(tree, chosen, value - floor(value) < 0.5 ? GLP_DN_BRNCH : GLP_UP_BRNCH);
 }
 
-/* Whether what was asked is settled by what was found, or by the bound. */
+/* Whether the limit settles the search: nothing left is within it, or something found is. */
 static bool settled(glp_prob *p, const task *t) {
-  if (!t->how->asked) return false;
-  bool within = glp_mip_status(p) == GLP_FEAS && glp_mip_obj_val(p) <= t->how->limit;
-  return within || t->result->bound > t->how->limit;
+  if (!t->how->limited) return false;
+  if (t->result->bound > t->how->limit) return true;
+  return t->how->asked && glp_mip_status(p) == GLP_FEAS && glp_mip_obj_val(p) <= t->how->limit;
 }
 
 static void listen(glp_tree *tree, void *info) {

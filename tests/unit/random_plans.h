@@ -135,6 +135,60 @@ static inline plan_problem small_plan(unsigned seed, unsigned features) {
   return p;
 }
 
+/* A problem of the size of a real project: walls of `classes` demands that need a quality, types
+ * that have one and cost by it, goods that types share: some in tiers, the others with a minimum
+ * order. */
+static inline plan_problem large_plan(unsigned seed, int classes, int types, int items) {
+  uint64_t s = seed * 2654435761u + 99u;
+  for (int i = 0; i < 4; i++) (void)draw(&s, 2);
+  plan_problem p;
+  plan_arrays m = plan_room(&p, classes, types, items);
+  double *quality = arena_array(plan_memory, (size_t)types, sizeof *quality);
+  double *rate = arena_array(plan_memory, (size_t)types, sizeof *rate);
+  double *use = arena_array(plan_memory, (size_t)(types * items) + 1, sizeof *use);
+  int *kind = arena_array(plan_memory, (size_t)types, sizeof *kind);
+  double run = 0;
+  for (int t = 0; t < types; t++) {
+    quality[t] = draw(&s, 1000) / 1000.0;
+    rate[t] = 60 + 90 * quality[t] * quality[t] + draw(&s, 2500) / 100.0;
+    kind[t] = (int)draw(&s, 4);
+    m.group[t] = (int)draw(&s, 2);
+    for (int i = 0; i < items; i++) /* the first goods are everybody's, the others some types' */
+      if (i < 3 ? draw(&s, 10) < 7 : draw(&s, 10) == 0)
+        use[t * items + i] = 1 + (double)draw(&s, 2);
+  }
+  for (int c = 0; c < classes; c++) {
+    double asked = draw(&s, 850) / 1000.0, height = 2.4 + draw(&s, 12) / 10.0;
+    int wants = (int)draw(&s, 4) ? -1 : (int)draw(&s, 4);
+    m.run_m[c] = 20 + draw(&s, 30000) / 100.0;
+    m.storey[c] = (int)draw(&s, 5);
+    run += m.run_m[c];
+    for (int t = 0; t < types; t++) {
+      int k = c * types + t;
+      bool fits = (quality[t] >= asked && (wants < 0 || kind[t] == wants)) || t == types - 1;
+      double area = m.run_m[c] * height;
+      if (t == types - 1) rate[t] = 190; /* one that does everything */
+      m.cents[k] = fits ? (long long)(area * (rate[t] + draw(&s, 300) / 100.0) * 100) : -1;
+      m.floor_m2[k] = m.run_m[c] * (0.1 + 0.15 * quality[t]);
+      m.margin[k] = (int)(100 * 20 * (quality[t] - asked));
+      for (int i = 0; i < items; i++) m.need[k * items + i] = area * use[t * items + i];
+    }
+  }
+  for (int i = 0; i < items; i++) {
+    m.item[i] = (plan_item){.code = text_format(plan_memory, "goods-%d", i + 1), .tier_count = 1};
+    m.item[i].tier[0] =
+        (plan_tier){i < 3 ? 0 : 200 + (double)draw(&s, 400), 3 + (double)draw(&s, 4)};
+    for (int k = 1; i < 3 && k < 3; k++)
+      m.item[i].tier[k] =
+          (plan_tier){run * 0.9 * k * k + draw(&s, 500), m.item[i].tier[k - 1].price * 0.93};
+    m.item[i].tier_count = i < 3 ? 3 : 1;
+  }
+  p.setup_cents = 250000;
+  p.max_types = 6;
+  p.min_run_m = 60;
+  return p;
+}
+
 /* ---- brute force ---- */
 
 typedef struct brute_rules {

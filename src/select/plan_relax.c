@@ -1,0 +1,497 @@
+#include "select/plan_relax.h"
+
+#include <limits.h>
+#include <math.h>
+#include <string.h>
+
+enum { TRY_EVERY = 8, PATIENCE = 6, MOST_OPEN = PLAN_MAX_TIERS * 10 };
+/* The subgradient method of Held, Wolfe and Crowder (1974) with Polyak's step towards the best
+ * plan; the direction keeps a part of the one before (Camerini, Fratta and Maffioli, 1975). */
+static const double first_step = 1.2, least_step = 0.01, kept_direction = 0.5;
+/* without a plan the step aims this share above the bound */
+static const double hoped_share = 0.03;
+/* an item that hides less of the gap than this is not worth parts of its own */
+static const double idle_share = 0.02;
+/* far above what the sums of some thousand amounts lose, far below a cent */
+static const double sure = 1e-4;
+
+/* The pairs of a part, closed ones left out, a class after the other. */
+typedef struct pairs {
+  int *first; /* a class */
+  int *pair;  /* which pair of the problem */
+  int *type;
+  double *cost; /* currency without goods */
+  double *over; /* cost at the present prices above the class's wage */
+  int count;
+} pairs;
+
+struct plan_relax {
+  const plan_call *call;
+  const plan_case *x;
+  plan_guess *guess;
+  pairs in;
+  double *sum, *rho,
+      *run;             /* a type: of its pairs below 0; with the setup, and what its run asks; m */
+  bool *active, *taken; /* a type */
+  int *list, *chosen;   /* types in the part; those taken */
+  int list_count, chosen_count;
+  int *mine;                             /* pairs of one type */
+  double *grad_wage, *grad_price, *need; /* and the direction's */
+  double grad_floor;
+  double *dir_wage, *dir_price;
+  double dir_floor;
+  double *scale; /* an item: so that its multiplier moves like a class's */
+  double floor_scale;
+  double *wage, *price; /* at hand; the part holds the best */
+  double floor_price;
+};
+
+plan_relax *plan_relax_make(const plan_call *call, const plan_case *x, plan_guess *g) {
+  const plan_problem *p = x->terms->p;
+  arena *a = call->arena;
+  size_t classes = (size_t)p->classes, types = (size_t)p->types, items = (size_t)p->items + 1;
+  size_t pairs_room = classes * types;
+  plan_relax *r = arena_alloc(a, sizeof *r);
+  *r = (plan_relax){.call = call, .x = x, .guess = g};
+  r->in.first = arena_array(a, classes + 1, sizeof *r->in.first);
+  r->in.pair = arena_array(a, pairs_room, sizeof *r->in.pair);
+  r->in.type = arena_array(a, pairs_room, sizeof *r->in.type);
+  r->in.cost = arena_array(a, pairs_room, sizeof *r->in.cost);
+  r->in.over = arena_array(a, pairs_room, sizeof *r->in.over);
+  r->sum = arena_array(a, types, sizeof *r->sum);
+  r->rho = arena_array(a, types, sizeof *r->rho);
+  r->run = arena_array(a, types, sizeof *r->run);
+  r->active = arena_array(a, types, sizeof *r->active);
+  r->taken = arena_array(a, types, sizeof *r->taken);
+  r->list = arena_array(a, types, sizeof *r->list);
+  r->chosen = arena_array(a, types, sizeof *r->chosen);
+  r->mine = arena_array(a, classes, sizeof *r->mine);
+  r->grad_wage = arena_array(a, classes, sizeof *r->grad_wage);
+  r->dir_wage = arena_array(a, classes, sizeof *r->dir_wage);
+  r->wage = arena_array(a, classes, sizeof *r->wage);
+  r->grad_price = arena_array(a, items, sizeof *r->grad_price);
+  r->dir_price = arena_array(a, items, sizeof *r->dir_price);
+  r->price = arena_array(a, items, sizeof *r->price);
+  r->need = arena_array(a, items, sizeof *r->need);
+  r->scale = arena_array(a, items, sizeof *r->scale);
+  for (int i = 0; i < p->items; i++)
+    r->scale[i] = x->terms->most[i] > 0 ? p->classes / x->terms->most[i] : 0;
+  r->floor_scale = x->floor_max > 0 ? (double)p->classes / (double)x->floor_max : 0;
+  return r;
+}
+
+/* ---- parts ---- */
+
+static void part_room(plan_relax *r, plan_part *out) {
+  const plan_problem *p = r->x->terms->p;
+  arena *a = r->call->arena;
+  out->open = arena_array(a, (size_t)p->classes * (size_t)p->types, sizeof *out->open);
+  out->tiers = arena_array(a, (size_t)p->items + 1, sizeof *out->tiers);
+  out->wage = arena_array(a, (size_t)p->classes, sizeof *out->wage);
+  out->price = arena_array(a, (size_t)p->items + 1, sizeof *out->price);
+}
+
+/* Goods at their lowest price: a line through the origin that no spend is below. */
+void plan_part_whole(plan_relax *r, plan_part *out) {
+  const plan_terms *s = r->x->terms;
+  const plan_problem *p = s->p;
+  *out = (plan_part){.bound = -HUGE_VAL, .wavers = PLAN_NONE};
+  part_room(r, out);
+  memcpy(out->open, r->x->open, (size_t)p->classes * (size_t)p->types * sizeof *out->open);
+  for (int i = 0; i < p->items; i++) {
+    const plan_item *item = &p->item[i];
+    out->tiers[i] = (1u << (item->tier_count + 1)) - 1;
+    out->price[i] = HUGE_VAL;
+    for (int k = 0; k < item->tier_count; k++)
+      out->price[i] = fmin(out->price[i], item->tier[k].price);
+    if (s->most[i] <= item->stock) out->price[i] = 0;
+  }
+  plan_guess_prices(r->guess, out->price, 0);
+  for (int c = 0; c < p->classes; c++) {
+    double least = HUGE_VAL;
+    for (int t = 0; t < p->types; t++) least = fmin(least, r->guess->cost[plan_pair(p, c, t)]);
+    out->wage[c] = least + (double)p->setup_cents / 100 / p->classes;
+  }
+}
+
+void plan_part_copy(plan_relax *r, const plan_part *from, plan_part *out) {
+  const plan_problem *p = r->x->terms->p;
+  *out = *from;
+  part_room(r, out);
+  memcpy(out->open, from->open, (size_t)p->classes * (size_t)p->types * sizeof *out->open);
+  memcpy(out->tiers, from->tiers, (size_t)p->items * sizeof *out->tiers);
+  memcpy(out->wage, from->wage, (size_t)p->classes * sizeof *out->wage);
+  memcpy(out->price, from->price, (size_t)p->items * sizeof *out->price);
+}
+
+/* A pair that needs goods which this part does not buy is closed. */
+static bool can_buy(const plan_relax *r, const plan_part *part, int pair) {
+  const plan_terms *s = r->x->terms;
+  for (int e = s->first_pair[pair]; e < s->first_pair[pair + 1]; e++) {
+    int i = s->good[e];
+    if (part->tiers[i] == 1u && s->amount[e] > s->p->item[i].stock + s->slack[i]) return false;
+  }
+  return true;
+}
+
+static void list_pairs(plan_relax *r, plan_part *part) {
+  const plan_problem *p = r->x->terms->p;
+  pairs *in = &r->in;
+  memset(r->active, 0, (size_t)p->types * sizeof *r->active);
+  in->count = 0;
+  for (int c = 0; c < p->classes; c++) {
+    in->first[c] = in->count;
+    for (int t = 0; t < p->types; t++) {
+      int k = (int)plan_pair(p, c, t);
+      part->open[k] = part->open[k] && can_buy(r, part, k);
+      if (!part->open[k]) continue;
+      in->pair[in->count] = k;
+      in->type[in->count] = t;
+      in->cost[in->count++] = (double)p->cents[k] / 100;
+      r->active[t] = true;
+    }
+  }
+  in->first[p->classes] = in->count;
+  part->pairs = in->count;
+  r->list_count = 0;
+  for (int t = 0; t < p->types; t++)
+    if (r->active[t]) r->list[r->list_count++] = t;
+}
+
+/* ---- one evaluation ---- */
+
+/* The least of (spend - price x need) over the tiers left; *at: the need where it is taken. Spend
+ * is flat up to a tier's `from` and linear from there on, so only ends count. */
+static double goods_term(const plan_relax *r, const unsigned *tiers, int i, double price,
+                         double *at) {
+  const plan_item *item = &r->x->terms->p->item[i];
+  double most = r->x->terms->most[i], least = HUGE_VAL;
+  double stock = item->stock + r->x->terms->slack[i];
+  *at = 0;
+  for (int k = -1; k < item->tier_count; k++) {
+    if (!(tiers[i] & 1u << (k + 1))) continue;
+    double from = k < 0 ? 0 : item->tier[k].from;
+    double end = k < 0 ? 0 : k + 1 < item->tier_count ? item->tier[k + 1].from : HUGE_VAL;
+    for (int side = 0; side < 2; side++) {
+      double need = fmin(most, stock + (side ? end : from));
+      double spend = k < 0 ? 0 : item->tier[k].price * fmax(from, need - stock);
+      if (spend - price * need >= least) continue;
+      least = spend - price * need;
+      *at = need;
+    }
+  }
+  return least;
+}
+
+/* What a type with too short a run must still take on, at best in parts of classes. */
+static double run_short(plan_relax *r, int t) {
+  const plan_terms *s = r->x->terms;
+  double lacks = (double)r->x->min_run_mm / PLAN_MM_PER_M - r->run[t], more = 0;
+  int n = 0;
+  for (int k = 0; k < r->in.count; k++)
+    if (r->in.type[k] == t && r->in.over[k] >= 0) r->mine[n++] = k;
+  while (lacks > sure && n > 0) {
+    int best = 0;
+    double least = HUGE_VAL;
+    for (int i = 0; i < n; i++) {
+      double run = (double)s->run_mm[r->in.pair[r->mine[i]] / s->p->types] / PLAN_MM_PER_M;
+      if (!(run > 0) || r->in.over[r->mine[i]] / run >= least) continue;
+      least = r->in.over[r->mine[i]] / run;
+      best = i;
+    }
+    if (least >= HUGE_VAL) break;
+    double run = (double)s->run_mm[r->in.pair[r->mine[best]] / s->p->types] / PLAN_MM_PER_M;
+    more += least * fmin(run, lacks);
+    lacks -= run;
+    r->mine[best] = r->mine[--n];
+  }
+  return lacks > sure ? HUGE_VAL : more;
+}
+
+static void price_pairs(plan_relax *r) {
+  const plan_terms *s = r->x->terms;
+  const plan_problem *p = s->p;
+  double setup = (double)p->setup_cents / 100;
+  for (int i = 0; i < r->list_count; i++) {
+    r->sum[r->list[i]] = setup;
+    r->run[r->list[i]] = 0;
+  }
+  for (int c = 0; c < p->classes; c++) {
+    double run = (double)s->run_mm[c] / PLAN_MM_PER_M;
+    for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++) {
+      int pair = r->in.pair[k];
+      double over = r->in.cost[k] - r->wage[c] + r->floor_price * (double)s->floor[pair];
+      for (int e = s->first_pair[pair]; e < s->first_pair[pair + 1]; e++)
+        over += r->price[s->good[e]] * s->amount[e];
+      r->in.over[k] = over;
+      if (over >= 0) continue;
+      r->sum[r->in.type[k]] += over;
+      r->run[r->in.type[k]] += run;
+    }
+  }
+  for (int i = 0; i < r->list_count; i++) {
+    int t = r->list[i];
+    bool is_short = r->x->min_run_mm > 0 && r->sum[t] < 0 &&
+                    r->run[t] * PLAN_MM_PER_M < (double)r->x->min_run_mm;
+    r->rho[t] = r->sum[t] + (is_short ? run_short(r, t) : 0);
+  }
+}
+
+/* The types that pay: all, or the best of them. Their sum. */
+static double choose(plan_relax *r) {
+  int most = r->x->max_types > 0 ? r->x->max_types : r->list_count;
+  double sum = 0;
+  r->chosen_count = 0;
+  for (int i = 0; i < r->list_count; i++) {
+    int t = r->list[i];
+    r->taken[t] = false;
+    if (!(r->rho[t] < 0)) continue;
+    int at = r->chosen_count < most ? r->chosen_count++ : most;
+    if (at == most && r->rho[t] >= r->rho[r->chosen[most - 1]]) continue;
+    if (at == most) at--;
+    for (; r->x->max_types > 0 && at > 0 && r->rho[r->chosen[at - 1]] > r->rho[t]; at--)
+      r->chosen[at] = r->chosen[at - 1];
+    r->chosen[at] = t;
+  }
+  for (int i = 0; i < r->chosen_count; i++) {
+    r->taken[r->chosen[i]] = true;
+    sum += r->rho[r->chosen[i]];
+  }
+  return sum;
+}
+
+/* The bound at the multipliers at hand, without the types' part. */
+static double fixed_terms(plan_relax *r, const plan_part *part, bool with_gradient) {
+  const plan_problem *p = r->x->terms->p;
+  double sum = -r->floor_price * (double)r->x->floor_max;
+  for (int c = 0; c < p->classes; c++) sum += r->wage[c];
+  for (int i = 0; i < p->items; i++) {
+    double at;
+    sum += goods_term(r, part->tiers, i, r->price[i], &at);
+    if (with_gradient) r->grad_price[i] = -at;
+  }
+  return sum;
+}
+
+static double evaluate(plan_relax *r, const plan_part *part) {
+  price_pairs(r);
+  double bound = fixed_terms(r, part, true);
+  return bound + choose(r);
+}
+
+/* What the relaxed choice breaks: classes served not once, goods and floor taken above what the
+ * terms assume. */
+static double gradient(plan_relax *r) {
+  const plan_terms *s = r->x->terms;
+  const plan_problem *p = s->p;
+  double norm = 0;
+  memset(r->need, 0, ((size_t)p->items + 1) * sizeof *r->need);
+  r->grad_floor = -(double)r->x->floor_max;
+  for (int c = 0; c < p->classes; c++) {
+    r->grad_wage[c] = 1;
+    for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++) {
+      if (r->in.over[k] >= 0 || !r->taken[r->in.type[k]]) continue;
+      int pair = r->in.pair[k];
+      r->grad_wage[c] -= 1;
+      r->grad_floor += (double)s->floor[pair];
+      for (int e = s->first_pair[pair]; e < s->first_pair[pair + 1]; e++)
+        r->need[s->good[e]] += s->amount[e];
+    }
+    norm += r->grad_wage[c] * r->grad_wage[c];
+  }
+  for (int i = 0; i < p->items; i++) {
+    r->grad_price[i] = (r->grad_price[i] + r->need[i]) * r->scale[i];
+    norm += r->grad_price[i] * r->grad_price[i];
+  }
+  r->grad_floor *= r->floor_scale;
+  return norm + r->grad_floor * r->grad_floor;
+}
+
+static void move(plan_relax *r, double step, double towards) {
+  const plan_problem *p = r->x->terms->p;
+  double norm = 0;
+  for (int c = 0; c < p->classes; c++) {
+    r->dir_wage[c] = r->grad_wage[c] + kept_direction * r->dir_wage[c];
+    norm += r->dir_wage[c] * r->dir_wage[c];
+  }
+  for (int i = 0; i < p->items; i++) {
+    r->dir_price[i] = r->grad_price[i] + kept_direction * r->dir_price[i];
+    norm += r->dir_price[i] * r->dir_price[i];
+  }
+  r->dir_floor = r->grad_floor + kept_direction * r->dir_floor;
+  norm += r->dir_floor * r->dir_floor;
+  if (!(norm > 0)) return;
+  double by = step * towards / norm;
+  for (int c = 0; c < p->classes; c++) r->wage[c] += by * r->dir_wage[c];
+  for (int i = 0; i < p->items; i++)
+    r->price[i] = fmax(r->price[i] + by * r->scale[i] * r->dir_price[i], 0);
+  r->floor_price = fmax(r->floor_price + by * r->floor_scale * r->dir_floor, 0);
+}
+
+static void keep_best(plan_relax *r, plan_part *part) {
+  const plan_problem *p = r->x->terms->p;
+  memcpy(part->wage, r->wage, (size_t)p->classes * sizeof *part->wage);
+  memcpy(part->price, r->price, (size_t)p->items * sizeof *part->price);
+  part->floor_price = r->floor_price;
+}
+
+static void recall_best(plan_relax *r, const plan_part *part) {
+  const plan_problem *p = r->x->terms->p;
+  memcpy(r->wage, part->wage, (size_t)p->classes * sizeof *part->wage);
+  memcpy(r->price, part->price, (size_t)p->items * sizeof *part->price);
+  r->floor_price = part->floor_price;
+}
+
+/* ---- what a bound rules out ---- */
+
+/* Types by rho with one class left out: the `most` smallest below 0, rising. */
+typedef struct front {
+  double sum;  /* of all kept */
+  double last; /* the greatest kept; 0 while there is room */
+  int count, most;
+} front;
+
+/* Closes the pairs of class `c` that cost too much: the bound with the class taken out of the
+ * relaxation and given to the pair's type, which then stands open. */
+static void close_class(plan_relax *r, plan_part *part, int c, double fixed, double ceiling,
+                        double *kept) {
+  front f = {.most = r->x->max_types};
+  for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++)
+    if (r->in.over[k] < 0) r->sum[r->in.type[k]] -= r->in.over[k];
+  for (int i = 0; i < r->list_count; i++) {
+    double rho = r->sum[r->list[i]];
+    if (rho >= 0) continue;
+    if (f.most <= 0) {
+      f.sum += rho;
+      continue;
+    }
+    int at = f.count < f.most ? f.count++ : f.most;
+    if (at == f.most && rho >= kept[f.most - 1]) continue;
+    if (at == f.most) at--;
+    for (; at > 0 && kept[at - 1] > rho; at--) kept[at] = kept[at - 1];
+    kept[at] = rho;
+  }
+  for (int i = 0; i < f.count; i++) f.sum += kept[i];
+  f.last = f.most > 0 && f.count == f.most ? kept[f.most - 1] : 0;
+  for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++) {
+    double rho = r->sum[r->in.type[k]];
+    /* the type itself is open: it takes the place of its own term, or of the least of the others */
+    double others = f.sum - (rho < 0 && rho <= f.last ? rho : f.last);
+    if (f.most <= 0) others = f.sum - fmin(rho, 0);
+    if (fixed + r->in.over[k] + rho + others > ceiling + sure) part->open[r->in.pair[k]] = false;
+  }
+  for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++)
+    if (r->in.over[k] < 0) r->sum[r->in.type[k]] += r->in.over[k];
+}
+
+/* A type that stands open costs its rho, whatever else does. */
+static void close_types(plan_relax *r, plan_part *part, double bound, double ceiling) {
+  const plan_problem *p = r->x->terms->p;
+  bool full = r->x->max_types > 0 && r->chosen_count == r->x->max_types;
+  double least = full ? r->rho[r->chosen[r->chosen_count - 1]] : 0;
+  for (int i = 0; i < r->list_count; i++) {
+    int t = r->list[i];
+    if (r->taken[t] || bound + r->rho[t] - least <= ceiling + sure) continue;
+    for (int c = 0; c < p->classes; c++) part->open[plan_pair(p, c, t)] = false;
+  }
+}
+
+static void close_pairs(plan_relax *r, plan_part *part, double ceiling) {
+  if (ceiling >= HUGE_VAL) return;
+  double fixed = fixed_terms(r, part, false), kept[MOST_OPEN];
+  double bound = fixed;
+  for (int i = 0; i < r->chosen_count; i++) bound += r->rho[r->chosen[i]];
+  if (r->x->max_types <= MOST_OPEN)
+    for (int c = 0; c < r->x->terms->p->classes; c++) close_class(r, part, c, fixed, ceiling, kept);
+  close_types(r, part, bound, ceiling);
+}
+
+/* The item whose spend is furthest above what the bound counts for it, at the need of the relaxed
+ * choice and at that of the best plan. */
+static int waverer(plan_relax *r, const plan_part *part, double ceiling) {
+  const plan_terms *s = r->x->terms;
+  const plan_problem *p = s->p;
+  int most = PLAN_NONE;
+  double gap_most = fmax(sure, idle_share * (fmin(ceiling, 2 * part->bound) - part->bound));
+  for (int i = 0; i < p->items; i++) {
+    if ((part->tiers[i] & (part->tiers[i] - 1)) == 0) continue; /* one tier left */
+    double at, needs[2] = {r->need[i], 0}, gap = 0;
+    double term = goods_term(r, part->tiers, i, r->price[i], &at);
+    for (int c = 0; r->guess->found && c < p->classes; c++)
+      needs[1] += p->need[plan_pair(p, c, r->guess->best[c]) * (size_t)p->items + (size_t)i];
+    for (int k = 0; k < 2; k++) {
+      int tier;
+      double bought, spend = 0;
+      if (needs[k] > p->item[i].stock + s->slack[i])
+        spend = plan_spend(&p->item[i], needs[k] - p->item[i].stock, &tier, &bought);
+      gap = fmax(gap, spend - r->price[i] * needs[k] - term);
+    }
+    if (gap <= gap_most) continue;
+    gap_most = gap;
+    most = i;
+  }
+  return most;
+}
+
+/* ---- the method ---- */
+
+static void begin(plan_relax *r, plan_part *part) {
+  const plan_problem *p = r->x->terms->p;
+  list_pairs(r, part);
+  recall_best(r, part);
+  memset(r->dir_wage, 0, (size_t)p->classes * sizeof *r->dir_wage);
+  memset(r->dir_price, 0, ((size_t)p->items + 1) * sizeof *r->dir_price);
+  r->dir_floor = 0;
+}
+
+static bool all_served(const plan_relax *r) {
+  for (int c = 0; c < r->x->terms->p->classes; c++)
+    if (r->in.first[c] == r->in.first[c + 1]) return false;
+  return true;
+}
+
+static void climb(plan_relax *r, plan_part *part, double ceiling, int steps) {
+  double step = first_step, best = -HUGE_VAL;
+  int waited = 0;
+  for (int n = 0; n < steps && step > least_step; n++) {
+    double bound = evaluate(r, part);
+    double norm = gradient(r);
+    if (bound > best) {
+      if (bound > best + hoped_share * 1e-3 * fabs(best)) waited = 0;
+      best = bound;
+      keep_best(r, part);
+    } else if (++waited > PATIENCE) {
+      waited = 0;
+      step /= 2;
+    }
+    if (best > part->bound) part->bound = best;
+    if (part->bound > ceiling + sure || !(norm > 0)) break;
+    if (n % TRY_EVERY == 0) {
+      plan_guess_prices(r->guess, r->price, r->floor_price);
+      plan_guess_try(r->guess, r->chosen, r->chosen_count);
+      if (plan_over(r->call)) break;
+    }
+    double aim =
+        r->guess->found ? fmin(r->guess->tally.amount, ceiling) : best + hoped_share * fabs(best);
+    if (ceiling < HUGE_VAL && !r->guess->found) aim = fmax(aim, ceiling);
+    move(r, step, fmax(aim - bound, sure));
+  }
+}
+
+void plan_relax_part(plan_relax *r, plan_part *part, double ceiling, int steps) {
+  begin(r, part);
+  part->wavers = PLAN_NONE;
+  if (!all_served(r)) {
+    part->bound = HUGE_VAL;
+    return;
+  }
+  climb(r, part, ceiling, steps);
+  recall_best(r, part);
+  (void)evaluate(r, part);
+  (void)gradient(r);
+  if (r->guess->found) ceiling = fmin(ceiling, r->guess->tally.amount);
+  if (part->bound > ceiling + sure) return;
+  part->wavers = waverer(r, part, ceiling);
+  close_pairs(r, part, ceiling);
+  list_pairs(r, part);
+}
