@@ -116,9 +116,13 @@ static status rate_stage(call *k, void *given) {
   return hand_out(k, job, &prepared->report, x, &t, STATUS_OK);
 }
 
-/* Sweeps, chooses and explains. False after messages. */
+/* Most points of the chart of candidates. */
+enum { CLOUD_POINTS = 300 };
+
+/* Sweeps, chooses and explains; *candidates (NULL without a page) are for its chart. False after
+ * messages. */
 static bool choose(call *k, const answer_job *job, const request *prepared, pick_choice *choice,
-                   explanation *why) {
+                   explanation *why, cloud **candidates) {
   space *s = arena_alloc(k->memory, sizeof *s);
   sweep_result *swept = arena_alloc(k->memory, sizeof *swept);
   space_build(k->memory, &prepared->context, s);
@@ -127,6 +131,11 @@ static bool choose(call *k, const answer_job *job, const request *prepared, pick
                     job->options.save_model, choice))
     return false;
   explain_pick(k->memory, s, swept, choice, why);
+  *candidates = NULL;
+  if (job->options.save_html && choice->found) {
+    *candidates = arena_alloc(k->memory, sizeof **candidates);
+    cloud_sample(k->memory, s, swept, CLOUD_POINTS, *candidates);
+  }
   return true;
 }
 
@@ -138,13 +147,16 @@ static status pick_stage(call *k, void *given) {
   pick_choice *choice = arena_alloc(k->memory, sizeof *choice);
   if (!request_prepare(k, job->handle, &job->options, job->operand, true, prepared))
     return k->diags.worst;
-  if (!choose(k, job, prepared, choice, why))
+  cloud *candidates = NULL;
+  if (!choose(k, job, prepared, choice, why, &candidates))
     return k->diags.worst == STATUS_OK ? STATUS_INTERNAL : k->diags.worst;
   call_texts t;
   call_texts_init(k, &t);
   report_pick_text(&prepared->report, why, choice, &t.words);
   report_pick_json(&prepared->report, why, choice, &t.json);
   report_takeoff_csv(&prepared->report, why->chosen, &t.csv);
+  if (job->options.save_html)
+    report_pick_html(&prepared->report, why, choice, candidates, &t.page);
   return hand_out(k, job, &prepared->report, why->chosen, &t,
                   why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
 }

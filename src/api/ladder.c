@@ -1,6 +1,7 @@
 /* septum_ladder: what each rating costs. */
 #include "api/call.h"
 #include "api/request.h"
+#include "report/report_html.h"
 #include "report/report_ladder.h"
 
 typedef struct ladder_job {
@@ -82,6 +83,8 @@ static status hand_out(call *k, ladder_job *job, const request *q, const ladder_
   report_ladder_text(&q->report, found, &t.words);
   report_ladder_json(&q->report, found, &t.json);
   report_ladder_csv(&q->report, found, &t.csv);
+  if (job->options.save_html) report_ladder_html(&q->report, found, &t.page);
+  if (!call_save_page(k, &t, job->options.save_html)) return k->diags.worst;
   job->made = call_deliver(k, &t, job->options.save_csv);
   if (job->made == NULL) return k->diags.worst;
   return found->count > 0 ? STATUS_OK : STATUS_NO_WALL;

@@ -3,6 +3,7 @@
 
 #include "api/call.h"
 #include "api/request.h"
+#include "report/report_html.h"
 #include "report/report_trim.h"
 #include "report/view_trim.h"
 
@@ -151,6 +152,8 @@ static status hand_out(call *k, trim_job *job, const request *q, const trim_answ
   report_trim_text(&q->report, found, &t.words);
   report_trim_json(&q->report, found, &t.json);
   report_trim_csv(&q->report, found, &t.csv);
+  if (job->options.save_html) report_trim_html(&q->report, found, &t.page);
+  if (!call_save_page(k, &t, job->options.save_html)) return k->diags.worst;
   job->made = call_deliver(k, &t, job->options.save_csv);
   if (job->made == NULL) return k->diags.worst;
   return found->proposal_count > 0 ? STATUS_OK : STATUS_NO_WALL;

@@ -64,7 +64,7 @@ static const option_row option_rows[] = {
     {"have", "LINE|FILE", OPTION_HAVE, CLI_LADDER,
      "a given wall: what it takes from there (a wall line or a wall/1 file)"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
-    {"html", "FILE", OPTION_HTML, CLI_RATE,
+    {"html", "FILE", OPTION_HTML, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
      "also write the answer as one page with drawings and charts"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
     {"keep", "WORDS", OPTION_KEEP, CLI_TRIM, "what must stay as it is: frame, fire, thickness"},

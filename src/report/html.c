@@ -248,7 +248,20 @@ void html_facts_end(html *h) {
 /* --- tables ---------------------------------------------------------------------------------- */
 
 static const char *class_of(html_kind kind) {
-  return kind == HTML_FIGURE ? "n" : kind == HTML_LINE ? "w" : NULL;
+  switch (kind) {
+  case HTML_FIGURE:
+    return "n";
+  case HTML_LINE:
+    return "w";
+  case HTML_ID:
+  case HTML_CODE:
+    return "i";
+  case HTML_HEAD:
+  case HTML_WORDS:
+  case HTML_DATA:
+    break;
+  }
+  return NULL;
 }
 
 static void put_column_head(html *h, const html_column *c) {
@@ -288,8 +301,9 @@ void html_table(html *h, const char *caption, const html_column *column, int cou
 }
 
 static void put_cell(html *h, html_kind kind, const char *words) {
-  markup_xml_inline(&h->x, kind == HTML_HEAD ? "th" : "td");
-  if (kind == HTML_HEAD) markup_xml_attribute(&h->x, "scope", "row");
+  bool head = kind == HTML_HEAD || kind == HTML_ID;
+  markup_xml_inline(&h->x, head ? "th" : "td");
+  if (head) markup_xml_attribute(&h->x, "scope", "row");
   if (kind == HTML_DATA) markup_xml_attribute(&h->x, "dir", "auto");
   markup_xml_attribute(&h->x, "class", class_of(kind));
   markup_xml_text(&h->x, words ? words : "");

@@ -9,7 +9,9 @@
 
 typedef enum html_kind {
   HTML_HEAD,   /* what the row is about: its header */
+  HTML_ID,     /* the same, where it is one word that must not break */
   HTML_WORDS,  /* running text */
+  HTML_CODE,   /* one word, or more that must not break */
   HTML_DATA,   /* words of the user's files: they may run from right to left */
   HTML_FIGURE, /* a number, to the right */
   HTML_LINE    /* a wall line */

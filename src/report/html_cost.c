@@ -38,7 +38,7 @@ static const char *cents_if(html *h, long long cents) {
 
 void html_cost_by_section(html *h, const assessment *x) {
   const report *r = h->report;
-  const html_column columns[] = {{"Section", HTML_HEAD},
+  const html_column columns[] = {{"Section", HTML_ID},
                                  {"Material", HTML_FIGURE},
                                  {"Labour", HTML_FIGURE},
                                  {text_format(r->arena, "Together, %s", r->prices->currency),
@@ -95,8 +95,7 @@ static void put_rates(html *h, const assessment *x) {
   html_facts_end(h);
 }
 
-void html_wall_cost(html *h, const assessment *x) {
-  html_section(h, "Cost");
+void html_cost_parts(html *h, const assessment *x) {
   if (!view_cost_of(h->report, x).costed) {
     html_note(h, "care",
               text_format(h->report->arena, "Not known: %s.", html_cost_words(h, x)));
@@ -107,6 +106,11 @@ void html_wall_cost(html *h, const assessment *x) {
     html_picture_end(h, NULL);
     html_cost_by_section(h, x);
   }
+}
+
+void html_wall_cost(html *h, const assessment *x) {
+  html_section(h, "Cost");
+  html_cost_parts(h, x);
   html_section_end(h);
 }
 
@@ -121,7 +125,7 @@ static const char *rate_words(const report *r, const view_quantity *q) {
 void html_takeoff_table(html *h, const char *caption, const assessment *x) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Section", HTML_WORDS},   {"Item", HTML_HEAD},   {"Name", HTML_DATA},
+      {"Section", HTML_CODE},   {"Item", HTML_ID},   {"Name", HTML_DATA},
       {"Kind", HTML_WORDS},      {"Quantity", HTML_FIGURE}, {"Unit", HTML_WORDS},
       {"Rate", HTML_FIGURE},     {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE}};
   takeoff_rows *rows = arena_alloc(r->arena, sizeof *rows);
@@ -144,7 +148,7 @@ void html_takeoff_table(html *h, const char *caption, const assessment *x) {
 static void put_buy_list(html *h, const assessment *x) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Item", HTML_HEAD},     {"Name", HTML_DATA}, {"Needed", HTML_FIGURE},
+      {"Item", HTML_ID},     {"Name", HTML_DATA}, {"Needed", HTML_FIGURE},
       {"Unit", HTML_WORDS},    {"Buy", HTML_FIGURE}, {"As", HTML_DATA},
       {"Price", HTML_FIGURE},  {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE},
       {"Note", HTML_WORDS}};

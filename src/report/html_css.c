@@ -28,7 +28,7 @@ static const char words[] =
     "p,ul{margin:0 0 .75rem;max-width:46rem}\n"
     "ul{padding-left:1.2rem}\n"
     "li{margin:0 0 .3rem}\n"
-    "code,.w{font-family:ui-monospace,\"Cascadia Mono\",Menlo,Consolas,\"Liberation Mono\","
+    "code,td.w{font-family:ui-monospace,\"Cascadia Mono\",Menlo,Consolas,\"Liberation Mono\","
     "monospace;font-size:.86em}\n"
     ".line{font-size:1.1rem;max-width:none}\n"
     ".lead{font-size:1.15rem}\n"
@@ -68,14 +68,14 @@ static const char layout[] =
     ".card .figures{grid-template-columns:repeat(2,minmax(0,1fr));gap:0 1rem;margin:0}\n"
     ".card .figures dd{font-size:1.1rem}\n"
     ".card .figures .note{font-size:.82rem}\n"
-    ".facts{margin:0 0 1rem}\n"
+    ".facts{margin:0 0 1rem;max-width:60rem}\n"
     ".facts div{display:grid;grid-template-columns:minmax(0,12rem) minmax(0,1fr);gap:.1rem 1.25rem;"
     "border-bottom:1px solid var(--hair);padding:.35rem 0}\n"
     ".facts dt{color:var(--soft)}\n"
     ".facts dd{margin:0}\n"
     "@media (max-width:34rem){.facts div{grid-template-columns:minmax(0,1fr)}}\n"
     "footer{padding:1.5rem 0 0}\n"
-    "footer .facts{border:1px solid var(--rule);font-size:.87rem}\n"
+    "footer .facts{max-width:none;border:1px solid var(--rule);font-size:.87rem}\n"
     "footer .facts div{padding:.35rem .75rem}\n";
 
 static const char tables[] =
@@ -92,11 +92,13 @@ static const char tables[] =
     "td[dir],th[dir]{overflow-wrap:anywhere;min-width:8rem}\n"
     "td[dir=rtl]{text-align:right}\n"
     ".n{text-align:right;white-space:nowrap}\n"
+    "tbody .i{white-space:nowrap}\n"
     "thead .n{white-space:normal}\n"
-    "td.w,th.w{min-width:15rem;overflow-wrap:anywhere;font-size:.86rem}\n"
+    "td.w,th.w{min-width:15rem}\n"
+    "td.w{overflow-wrap:anywhere;font-size:.86rem}\n"
     ".total td,.total th{border-top:1px solid var(--ink);border-bottom:none;font-weight:600}\n"
     ".chosen td,.chosen th{background:var(--wash)}\n"
-    ".bands{font-size:.8rem}\n"
+    ".bands,.bands thead th{font-size:.8rem}\n"
     ".bands th,.bands td{padding-right:.3rem;min-width:0}\n";
 
 static const char print[] =
@@ -117,10 +119,10 @@ static const char print[] =
     "tr,figure,.figures div,.facts div,li{break-inside:avoid}\n"
     ".scroll{overflow:visible}\n"
     "table{font-size:8pt}\n"
-    "thead th,td.w,th.w{font-size:7.5pt}\n"
+    "thead th,td.w{font-size:7.5pt}\n"
     "th,td{padding:.6mm 2.5mm .6mm 0;min-width:0}\n"
     "td.w,th.w{min-width:38mm}\n"
-    ".bands{font-size:6.5pt}}\n";
+    ".bands,.bands thead th{font-size:6.5pt}}\n";
 
 void html_style(text *out) {
   text_put(out, colours);

@@ -1,7 +1,6 @@
 /* The page of `rate`. */
 #include "report/html_wall.h"
 #include "report/report_html.h"
-#include "report/view.h"
 
 static void put_glance(html *h, const assessment *x) {
   const report *r = h->report;
@@ -20,7 +19,6 @@ static void put_glance(html *h, const assessment *x) {
 
 void report_rate_html(const report *r, const assessment *x, text *out) {
   html *h = arena_alloc(r->arena, sizeof *h);
-  const char *caution[VIEW_MAX_CAUTIONS];
   const char *title = x->name ? x->name : r->asked ? r->brief->title : "";
   html_begin(h, r, "Wall rating", title, out);
   put_glance(h, x);
@@ -30,6 +28,6 @@ void report_rate_html(const report *r, const assessment *x, text *out) {
   html_wall_cost(h, x);
   html_wall_takeoff(h, x);
   html_brief(h, CATALOG_NONE);
-  html_cautions(h, caution, view_cautions(r, x, caution));
+  html_wall_cautions(h, x);
   html_end_brief(h);
 }

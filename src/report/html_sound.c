@@ -93,7 +93,7 @@ static void put_targets(html *h, const assessment *x) {
 /* --- evidence -------------------------------------------------------------------------------- */
 
 static void put_nearest(html *h, const assessment *x) {
-  static const html_column columns[] = {{"Row", HTML_HEAD},
+  static const html_column columns[] = {{"Row", HTML_ID},
                                         {"STC", HTML_FIGURE},
                                         {"Wall", HTML_LINE},
                                         {"What it has otherwise", HTML_WORDS},
@@ -136,7 +136,6 @@ static void put_basis(html *h, const assessment *x) {
 }
 
 void html_evidence(html *h, const assessment *x) {
-  html_heading(h, "Evidence");
   put_basis(h, x);
   put_nearest(h, x);
 }
@@ -181,8 +180,7 @@ static void put_other_sound(html *h, const assessment *x) {
   html_facts_end(h);
 }
 
-void html_wall_sound(html *h, const assessment *x) {
-  html_section(h, "Sound");
+void html_sound_parts(html *h, const assessment *x) {
   put_targets(h, x);
   put_curve(h, x, false);
   html_more(h, "The curve with its paths: what passes the cavity and what passes the studs");
@@ -192,6 +190,12 @@ void html_wall_sound(html *h, const assessment *x) {
   put_other_sound(h, x);
   put_prediction(h, x);
   put_bands(h, x);
+  html_heading(h, "Evidence");
   html_evidence(h, x);
+}
+
+void html_wall_sound(html *h, const assessment *x) {
+  html_section(h, "Sound");
+  html_sound_parts(h, x);
   html_section_end(h);
 }

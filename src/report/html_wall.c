@@ -196,8 +196,7 @@ static void put_rules(html *h, const assessment *x) {
   html_broken(h, "Rules that this wall breaks", x);
 }
 
-void html_wall_checks(html *h, const assessment *x) {
-  html_section(h, "Fire, height and rules");
+void html_check_parts(html *h, const assessment *x) {
   html_heading(h, "Fire");
   html_facts(h);
   put_fire(h, x);
@@ -207,6 +206,11 @@ void html_wall_checks(html *h, const assessment *x) {
   put_height(h, x);
   html_facts_end(h);
   put_rules(h, x);
+}
+
+void html_wall_checks(html *h, const assessment *x) {
+  html_section(h, "Fire, height and rules");
+  html_check_parts(h, x);
   html_section_end(h);
 }
 
@@ -216,6 +220,11 @@ void html_cautions(html *h, const char *const *caution, int count) {
   html_section(h, "Cautions");
   html_list(h, caution, count);
   html_section_end(h);
+}
+
+void html_wall_cautions(html *h, const assessment *x) {
+  const char *caution[VIEW_MAX_CAUTIONS];
+  html_cautions(h, caution, view_cautions(h->report, x, caution));
 }
 
 void html_unpriced(html *h) {

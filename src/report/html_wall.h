@@ -19,6 +19,11 @@ void html_wall_checks(html *h, const assessment *x);
 void html_wall_cost(html *h, const assessment *x);
 void html_wall_takeoff(html *h, const assessment *x);
 
+/* What stands in these sections, for pages of several walls. */
+void html_sound_parts(html *h, const assessment *x);
+void html_check_parts(html *h, const assessment *x);
+void html_cost_parts(html *h, const assessment *x);
+
 /* Parts of sections. */
 /* Money by section of the specification, material and labour apart. */
 void html_cost_by_section(html *h, const assessment *x);
@@ -45,6 +50,7 @@ const char *html_mass(html *h, double kg_m2);
 /* `climbs` as in view_brief_of. */
 void html_brief(html *h, int climbs);
 void html_cautions(html *h, const char *const *caution, int count);
+void html_wall_cautions(html *h, const assessment *x);
 /* Codes that the price book has no price for; nothing when it has all. */
 void html_unpriced(html *h);
 
@@ -53,6 +59,8 @@ void html_others(html *h, const char *caption, assessment *const *x, int count, 
 /* What giving up each rule would save; `base` is the line that it is counted against. */
 void html_rule_prices(html *h, const char *caption, const explain_rule_price *price, int count,
                       const char *base);
+/* Between which prices the wall stays the cheapest. */
+void html_break_even(html *h, const explain_break_even *b, int count);
 /* Sets of rules that no wall keeps together, as a list. */
 void html_conflicts(html *h, const rule_mask *conflict, int count);
 /* "target and fire" */

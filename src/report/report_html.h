@@ -3,8 +3,16 @@
 #ifndef REPORT_REPORT_HTML_H
 #define REPORT_REPORT_HTML_H
 
+#include "explain/cloud.h"
+#include "explain/trim.h"
 #include "report/html.h"
+#include "report/report_ladder.h"
 
 void report_rate_html(const report *r, const assessment *x, text *out);
+/* `c` NULL: without the chart of candidates. */
+void report_pick_html(const report *r, const explanation *e, const pick_choice *proof,
+                      const cloud *c, text *out);
+void report_ladder_html(const report *r, const ladder_answer *l, text *out);
+void report_trim_html(const report *r, const trim_answer *t, text *out);
 
 #endif

@@ -140,13 +140,6 @@ static const char *changes_from(const report *r, const ladder_rung *g) {
                      changes_words(r->arena, &g->changes));
 }
 
-/* "46", "41 to 44" */
-static const char *served(const report *r, const ladder_rung *g) {
-  int last = g->rating - 1;
-  if (g->serves_from == last) return text_format(r->arena, "%d", last);
-  return text_format(r->arena, "%d to %d", g->serves_from, last);
-}
-
 static void put_rung(const report *r, const ladder_answer *l, const ladder_rung *g, text *out) {
   put_figures(r, l, g, out);
   page_line(out, "", g->wall->line);
@@ -157,7 +150,7 @@ static void put_rung(const report *r, const ladder_answer *l, const ladder_rung 
                           changes_words(r->arena, &g->from_have),
                           money_words(r, g->wall, g->extra_cents)));
   if (g->serves_from < g->rating && g->serves_from > RUNGS_LEAST)
-    page_line(out, "", text_format(r->arena, "Also the cheapest for %s.", served(r, g)));
+    page_line(out, "", text_format(r->arena, "Also the cheapest for %s.", view_ladder_served(r, g)));
   if (g->reaches > g->rating)
     page_line(out, "", text_format(r->arena, "This wall meets %d.", g->reaches));
 }
@@ -219,53 +212,13 @@ static void put_legend(const report *r, text *out) {
               "With floor: the wall and the floor area under it; so are steps and points.");
 }
 
-/* What is said of several rungs is said once. */
-enum { CAUTIONS_MAX = 200 };
-typedef struct said_caution {
-  const char *words;
-  bool of[RUNGS_MOST];
-} said_caution;
-
-static int gather_cautions(const report *r, const ladder_answer *l, said_caution *said) {
-  int kinds = 0;
-  for (int i = 0; i < l->count; i++) {
-    const char *caution[VIEW_MAX_CAUTIONS];
-    int n = view_ladder_cautions(r, l, l->rung[i].rating, l->rung[i].wall, caution);
-    for (int k = 0; k < n; k++) {
-      int at = 0;
-      while (at < kinds && !text_equal(said[at].words, caution[k])) at++;
-      if (at == CAUTIONS_MAX) continue;
-      if (at == kinds) said[kinds++] = (said_caution){.words = caution[k]};
-      said[at].of[i] = true;
-    }
-  }
-  return kinds;
-}
-
-/* "" for all rungs, "54 and up: ", "40, 57: ". */
-static const char *rungs_words(const report *r, const ladder_answer *l, const said_caution *c) {
-  int first = 0, last = l->count;
-  text t;
-  text_init(&t, r->arena, 1000);
-  while (!c->of[first]) first++;
-  while (last > 0 && c->of[last - 1]) last--;
-  if (last <= first && first == 0) return "";
-  if (last <= first && first < l->count - 1)
-    return text_format(r->arena, "%d and up: ", l->rung[first].rating);
-  for (int i = first; i < l->count; i++)
-    if (c->of[i]) text_putf(&t, "%s%d", t.len ? ", " : "", l->rung[i].rating);
-  text_put(&t, ": ");
-  return t.data;
-}
-
 static void put_cautions(const report *r, const ladder_answer *l, text *out) {
-  said_caution *said = arena_array(r->arena, CAUTIONS_MAX, sizeof *said);
-  int kinds = gather_cautions(r, l, said);
-  for (int i = 0; i < kinds; i++) {
+  const char *caution[VIEW_LADDER_CAUTIONS];
+  int count = view_ladder_all_cautions(r, l, caution);
+  for (int i = 0; i < count; i++) {
     page_label(out, i == 0 ? "Cautions" : "");
     text_put(out, "- ");
-    page_words(out, PAGE_LABEL + 2,
-               text_format(r->arena, "%s%s", rungs_words(r, l, &said[i]), said[i].words));
+    page_words(out, PAGE_LABEL + 2, caution[i]);
   }
 }
 

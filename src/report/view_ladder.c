@@ -58,3 +58,56 @@ int view_ladder_cautions(const report *r, const ladder_answer *l, int rating, co
   at.brief = b;
   return view_cautions(&at, x, caution);
 }
+
+/* What is said of several rungs is said once. */
+typedef struct said_caution {
+  const char *words;
+  bool of[RUNGS_MOST];
+} said_caution;
+
+static int gather_cautions(const report *r, const ladder_answer *l, said_caution *said) {
+  int kinds = 0;
+  for (int i = 0; i < l->count; i++) {
+    const char *caution[VIEW_MAX_CAUTIONS];
+    int n = view_ladder_cautions(r, l, l->rung[i].rating, l->rung[i].wall, caution);
+    for (int k = 0; k < n; k++) {
+      int at = 0;
+      while (at < kinds && !text_equal(said[at].words, caution[k])) at++;
+      if (at == VIEW_LADDER_CAUTIONS) continue;
+      if (at == kinds) said[kinds++] = (said_caution){.words = caution[k]};
+      said[at].of[i] = true;
+    }
+  }
+  return kinds;
+}
+
+/* "" for all rungs, "54 and up: ", "40, 57: ". */
+static const char *rungs_words(const report *r, const ladder_answer *l, const said_caution *c) {
+  int first = 0, last = l->count;
+  text t;
+  text_init(&t, r->arena, 1000);
+  while (!c->of[first]) first++;
+  while (last > 0 && c->of[last - 1]) last--;
+  if (last <= first && first == 0) return "";
+  if (last <= first && first < l->count - 1)
+    return text_format(r->arena, "%d and up: ", l->rung[first].rating);
+  for (int i = first; i < l->count; i++)
+    if (c->of[i]) text_putf(&t, "%s%d", t.len ? ", " : "", l->rung[i].rating);
+  text_put(&t, ": ");
+  return t.data;
+}
+
+int view_ladder_all_cautions(const report *r, const ladder_answer *l,
+                             const char *caution[VIEW_LADDER_CAUTIONS]) {
+  said_caution *said = arena_array(r->arena, VIEW_LADDER_CAUTIONS, sizeof *said);
+  int count = gather_cautions(r, l, said);
+  for (int i = 0; i < count; i++)
+    caution[i] = text_format(r->arena, "%s%s", rungs_words(r, l, &said[i]), said[i].words);
+  return count;
+}
+
+const char *view_ladder_served(const report *r, const ladder_rung *g) {
+  int last = g->rating - 1;
+  if (g->serves_from == last) return text_format(r->arena, "%d", last);
+  return text_format(r->arena, "%d to %d", g->serves_from, last);
+}

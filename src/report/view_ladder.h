@@ -26,5 +26,12 @@ extern const char view_ladder_flanking[];
 /* As view_cautions, with the target at what the wall is rated for. */
 int view_ladder_cautions(const report *r, const ladder_answer *l, int rating, const assessment *x,
                          const char *caution[VIEW_MAX_CAUTIONS]);
+/* The cautions of all rungs, what is said of several once, with the rungs in front: "54 and up: ...".
+ */
+enum { VIEW_LADDER_CAUTIONS = 200 };
+int view_ladder_all_cautions(const report *r, const ladder_answer *l,
+                             const char *caution[VIEW_LADDER_CAUTIONS]);
+/* Lower values at the same cost: "46", "41 to 44". Only where the rung serves some. */
+const char *view_ladder_served(const report *r, const ladder_rung *g);
 
 #endif
