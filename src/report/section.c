@@ -236,7 +236,7 @@ static void draw_small(section *s, text *out) {
 }
 
 /* Where the lower half of the full picture stands. */
-static const double floor_middle_x = 262, floor_high = 160, floor_most_wide = 190,
+static const double floor_middle_x = 276, floor_high = 160, floor_most_wide = 190,
                     floor_most_scale = 1250, floor_least_gain = 1.25, legend_x = 590,
                     head_high = 24;
 
