@@ -17,7 +17,10 @@ typedef struct section_options {
   bool standalone;     /* a file of its own, with section_style() in it */
 } section_options;
 
-/* One <svg> of class "cut". The wall can be built (compat.h); rooms are the brief's, lengths in
+/* Lettering is 10.5 to 14 units: below a width of some 500 px the full drawing is hard to read, and
+ * a page does better to show the compact one there.
+ *
+ * One <svg> of class "cut". The wall can be built (compat.h); rooms are the brief's, lengths in
  * r->units. */
 void section_draw(const report *r, const wall *w, const section_options *o, text *out);
 
