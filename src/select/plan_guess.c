@@ -5,8 +5,8 @@
 #include <string.h>
 
 enum { PASSES = 12 };
-/* an excess of floor weighs more than any wall, so that the search first gets rid of it */
-static const double currency_per_excess = 1e6;
+/* more than any project costs */
+static const double currency_per_excess = 1e9, currency_per_class_left = 1e15;
 /* less is rounding */
 static const double worthwhile = 1e-6;
 
@@ -74,9 +74,10 @@ static double storey_cost(const plan_guess *g, int storey, const int *open, int 
   return sum;
 }
 
-static bool assign_storey(plan_guess *g, int storey, const int *open, int count) {
+/* Both return how many classes find no open type. */
+static int assign_storey(plan_guess *g, int storey, const int *open, int count) {
   const plan_problem *p = g->x->terms->p;
-  int group = PLAN_NONE;
+  int group = PLAN_NONE, left = 0;
   double least = HUGE_VAL;
   for (int k = 0; k < p->groups; k++) {
     double cost = storey_cost(g, storey, open, count, k);
@@ -84,23 +85,26 @@ static bool assign_storey(plan_guess *g, int storey, const int *open, int count)
     least = cost;
     group = k;
   }
-  for (int c = 0; group != PLAN_NONE && c < p->classes; c++)
-    if (p->storey[c] == storey) g->trial[c] = cheapest(g, c, open, count, group);
-  return group != PLAN_NONE;
+  for (int c = 0; c < p->classes; c++) {
+    if (p->storey[c] != storey) continue;
+    g->trial[c] = group == PLAN_NONE ? PLAN_NONE : cheapest(g, c, open, count, group);
+    left += group == PLAN_NONE;
+  }
+  return left;
 }
 
-static bool assign(plan_guess *g, const int *open, int count) {
+static int assign(plan_guess *g, const int *open, int count) {
   const plan_problem *p = g->x->terms->p;
+  int left = 0;
   if (g->x->framed) {
-    for (int s = 0; s < g->x->storeys; s++)
-      if (!assign_storey(g, s, open, count)) return false;
-    return true;
+    for (int s = 0; s < g->x->storeys; s++) left += assign_storey(g, s, open, count);
+    return left;
   }
   for (int c = 0; c < p->classes; c++) {
     g->trial[c] = cheapest(g, c, open, count, PLAN_NONE);
-    if (g->trial[c] == PLAN_NONE) return false;
+    left += g->trial[c] == PLAN_NONE;
   }
-  return true;
+  return left;
 }
 
 /* Where in `open` the used type stands whose run is short and shortest; PLAN_NONE when none is. */
@@ -118,21 +122,22 @@ static int shortest(plan_guess *g, const int *open, int count) {
 }
 
 /* Types with too little to do are closed until none is left. */
-static bool assign_with_runs(plan_guess *g, int *open, int count) {
-  while (assign(g, open, count)) {
-    int at = g->x->min_run_mm > 0 ? shortest(g, open, count) : PLAN_NONE;
-    if (at == PLAN_NONE) return true;
+static int assign_with_runs(plan_guess *g, int *open, int count) {
+  for (;;) {
+    int left = assign(g, open, count);
+    int at = left == 0 && g->x->min_run_mm > 0 ? shortest(g, open, count) : PLAN_NONE;
+    if (at == PLAN_NONE) return left;
     open[at] = open[--count];
   }
-  return false;
 }
 
-/* What the plan with these types open costs, excess of floor weighed in; HUGE_VAL when it is none.
- */
+/* What the plan with these types open costs; classes left over and excess of floor weighed in, so
+ * that the search first gets rid of them. */
 static double score(plan_guess *g, const int *types, int count) {
   plan_tally t;
   memcpy(g->other, types, (size_t)count * sizeof *types);
-  if (!assign_with_runs(g, g->other, count)) return HUGE_VAL;
+  int left = assign_with_runs(g, g->other, count);
+  if (left > 0) return left * currency_per_class_left;
   (void)plan_guess_offer(g, g->trial);
   plan_tally_make(g->x->terms, g->trial, &t);
   long long excess = g->x->floor_max > 0 ? t.floor - g->x->floor_max : 0;
@@ -205,15 +210,20 @@ static int list_used(plan_guess *g, int *open) {
   return count;
 }
 
-void plan_guess_polish(plan_guess *g, const int *types, int count, const int *from,
-                       int from_count) {
-  if (g->found)
-    count = list_used(g, g->open);
-  else
-    memcpy(g->open, types, (size_t)count * sizeof *types);
+static void polish_open(plan_guess *g, int count, const int *from, int from_count) {
   double least = score(g, g->open, count);
   for (int pass = 0; pass < PASSES && improve(g, &count, &least, from, from_count); pass++)
     continue;
-  if (g->found) count = list_used(g, g->open);
-  move_classes(g, g->open, count);
+}
+
+void plan_guess_polish(plan_guess *g, const int *types, int count, const int *from,
+                       int from_count) {
+  memcpy(g->open, types, (size_t)count * sizeof *types);
+  polish_open(g, count, from, from_count);
+}
+
+void plan_guess_finish(plan_guess *g, const int *from, int from_count) {
+  if (!g->found) return;
+  polish_open(g, list_used(g, g->open), from, from_count);
+  move_classes(g, g->open, list_used(g, g->open));
 }

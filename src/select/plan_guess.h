@@ -23,8 +23,9 @@ void plan_guess_prices(plan_guess *g, const double *price, double floor_price);
 bool plan_guess_offer(plan_guess *g, const int *type_of);
 /* Tries the plan with these types open. */
 void plan_guess_try(plan_guess *g, const int *types, int count);
-/* Starts from the best so far, or from `types` when there is none, and drops, swaps and adds types
- * out of `from` as long as that pays; then moves single classes. */
+/* Starts from these types and drops, swaps and adds types out of `from` as long as that pays. */
 void plan_guess_polish(plan_guess *g, const int *types, int count, const int *from, int from_count);
+/* The same from the best so far; then moves single classes. */
+void plan_guess_finish(plan_guess *g, const int *from, int from_count);
 
 #endif

@@ -149,6 +149,7 @@ static bool split(search *s, const plan_part *part, int depth) {
     plan_part one;
     plan_part_copy(s->relax, part, &one);
     one.tiers[item] = 1u << tier;
+    if (tier > 0) one.price[item] = s->x->terms->p->item[item].tier[tier - 1].price;
     if (!settle(s, &one, depth + 1)) return false;
   }
   return true;
@@ -189,7 +190,7 @@ static void narrow(search *s, plan_part *whole) {
   for (int round = 0; round < ROUNDS; round++) {
     if (whole->bound > ceiling(s) + sure || has_enough(s) || plan_over(s->call)) break;
     int before = whole->pairs;
-    plan_guess_polish(&s->guess, types, 0, types, list_types(s, whole, types));
+    plan_guess_finish(&s->guess, types, list_types(s, whole, types));
     plan_relax_part(s->relax, whole, s->limit, NEXT_STEPS);
     s->root = whole->bound;
     tell_progress(s);

@@ -4,16 +4,27 @@
 #include <math.h>
 #include <string.h>
 
-enum { TRY_EVERY = 8, PATIENCE = 6, MOST_OPEN = PLAN_MAX_TIERS * 10 };
+enum {
+  TRY_EVERY = 8,
+  PATIENCE = 10,
+  THOROUGH = 100,
+  MOST_NEAR = 60,
+  MOST_OPEN = PLAN_MAX_TIERS * 10
+};
 /* The subgradient method of Held, Wolfe and Crowder (1974) with Polyak's step towards the best
  * plan; the direction keeps a part of the one before (Camerini, Fratta and Maffioli, 1975). */
-static const double first_step = 1.2, least_step = 0.01, kept_direction = 0.5;
+static const double first_step = 1.2, least_step = 0.01, kept_direction = 0.3;
+/* what is off for all goods weighs as much as this number of classes served twice: a wage moves by
+ * thousands where a price moves by its tenth, and one step serves both */
+static const double whole_scale = 4;
 /* without a plan the step aims this share above the bound */
 static const double hoped_share = 0.03;
 /* an item that hides less of the gap than this is not worth parts of its own */
 static const double idle_share = 0.02;
 /* far above what the sums of some thousand amounts lose, far below a cent */
 static const double sure = 1e-4;
+/* terms as near as this are equal: what is needed may then lie anywhere between */
+static const double even = 1e-6;
 
 /* The pairs of a part, closed ones left out, a class after the other. */
 typedef struct pairs {
@@ -25,6 +36,10 @@ typedef struct pairs {
   int count;
 } pairs;
 
+typedef struct span {
+  double from, to;
+} span;
+
 struct plan_relax {
   const plan_call *call;
   const plan_case *x;
@@ -35,11 +50,13 @@ struct plan_relax {
   bool *active, *taken; /* a type */
   int *list, *chosen;   /* types in the part; those taken */
   int list_count, chosen_count;
+  int near[MOST_NEAR];                   /* types to try in place of the chosen */
   int *mine;                             /* pairs of one type */
   double *grad_wage, *grad_price, *need; /* and the direction's */
   double grad_floor;
   double *dir_wage, *dir_price;
   double dir_floor;
+  span *assumed; /* an item: the needs that its term holds for */
   double *scale; /* an item: so that its multiplier moves like a class's */
   double floor_scale;
   double *wage, *price; /* at hand; the part holds the best */
@@ -72,11 +89,12 @@ plan_relax *plan_relax_make(const plan_call *call, const plan_case *x, plan_gues
   r->grad_price = arena_array(a, items, sizeof *r->grad_price);
   r->dir_price = arena_array(a, items, sizeof *r->dir_price);
   r->price = arena_array(a, items, sizeof *r->price);
+  r->assumed = arena_array(a, items, sizeof *r->assumed);
   r->need = arena_array(a, items, sizeof *r->need);
   r->scale = arena_array(a, items, sizeof *r->scale);
   for (int i = 0; i < p->items; i++)
-    r->scale[i] = x->terms->most[i] > 0 ? p->classes / x->terms->most[i] : 0;
-  r->floor_scale = x->floor_max > 0 ? (double)p->classes / (double)x->floor_max : 0;
+    r->scale[i] = x->terms->most[i] > 0 ? whole_scale / x->terms->most[i] : 0;
+  r->floor_scale = x->floor_max > 0 ? whole_scale / (double)x->floor_max : 0;
   return r;
 }
 
@@ -160,14 +178,14 @@ static void list_pairs(plan_relax *r, plan_part *part) {
 
 /* ---- one evaluation ---- */
 
-/* The least of (spend - price x need) over the tiers left; *at: the need where it is taken. Spend
+/* The least of (spend - price x need) over the tiers left; *at: the needs where it is taken. Spend
  * is flat up to a tier's `from` and linear from there on, so only ends count. */
 static double goods_term(const plan_relax *r, const unsigned *tiers, int i, double price,
-                         double *at) {
+                         span *at) {
   const plan_item *item = &r->x->terms->p->item[i];
   double most = r->x->terms->most[i], least = HUGE_VAL;
   double stock = item->stock + r->x->terms->slack[i];
-  *at = 0;
+  *at = (span){0, 0};
   for (int k = -1; k < item->tier_count; k++) {
     if (!(tiers[i] & 1u << (k + 1))) continue;
     double from = k < 0 ? 0 : item->tier[k].from;
@@ -175,9 +193,12 @@ static double goods_term(const plan_relax *r, const unsigned *tiers, int i, doub
     for (int side = 0; side < 2; side++) {
       double need = fmin(most, stock + (side ? end : from));
       double spend = k < 0 ? 0 : item->tier[k].price * fmax(from, need - stock);
-      if (spend - price * need >= least) continue;
-      least = spend - price * need;
-      *at = need;
+      double term = spend - price * need;
+      if (term < least - even)
+        *at = (span){need, need};
+      else if (term <= least + even)
+        *at = (span){fmin(at->from, need), fmax(at->to, need)};
+      least = fmin(least, term);
     }
   }
   return least;
@@ -266,9 +287,9 @@ static double fixed_terms(plan_relax *r, const plan_part *part, bool with_gradie
   double sum = -r->floor_price * (double)r->x->floor_max;
   for (int c = 0; c < p->classes; c++) sum += r->wage[c];
   for (int i = 0; i < p->items; i++) {
-    double at;
+    span at;
     sum += goods_term(r, part->tiers, i, r->price[i], &at);
-    if (with_gradient) r->grad_price[i] = -at;
+    if (with_gradient) r->assumed[i] = at;
   }
   return sum;
 }
@@ -300,7 +321,8 @@ static double gradient(plan_relax *r) {
     norm += r->grad_wage[c] * r->grad_wage[c];
   }
   for (int i = 0; i < p->items; i++) {
-    r->grad_price[i] = (r->grad_price[i] + r->need[i]) * r->scale[i];
+    double assumed = fmin(fmax(r->need[i], r->assumed[i].from), r->assumed[i].to);
+    r->grad_price[i] = (r->need[i] - assumed) * r->scale[i];
     norm += r->grad_price[i] * r->grad_price[i];
   }
   r->grad_floor *= r->floor_scale;
@@ -415,7 +437,8 @@ static int waverer(plan_relax *r, const plan_part *part, double ceiling) {
   double gap_most = fmax(sure, idle_share * (fmin(ceiling, 2 * part->bound) - part->bound));
   for (int i = 0; i < p->items; i++) {
     if ((part->tiers[i] & (part->tiers[i] - 1)) == 0) continue; /* one tier left */
-    double at, needs[2] = {r->need[i], 0}, gap = 0;
+    span at;
+    double needs[2] = {r->need[i], 0}, gap = 0;
     double term = goods_term(r, part->tiers, i, r->price[i], &at);
     for (int c = 0; r->guess->found && c < p->classes; c++)
       needs[1] += p->need[plan_pair(p, c, r->guess->best[c]) * (size_t)p->items + (size_t)i];
@@ -450,6 +473,19 @@ static bool all_served(const plan_relax *r) {
   return true;
 }
 
+/* The types that pay best or come nearest to it. */
+static int nearest_types(plan_relax *r) {
+  int n = 0;
+  for (int i = 0; i < r->list_count; i++) {
+    int t = r->list[i], at = n < MOST_NEAR ? n++ : MOST_NEAR;
+    if (at == MOST_NEAR && r->rho[t] >= r->rho[r->near[MOST_NEAR - 1]]) continue;
+    if (at == MOST_NEAR) at--;
+    for (; at > 0 && r->rho[r->near[at - 1]] > r->rho[t]; at--) r->near[at] = r->near[at - 1];
+    r->near[at] = t;
+  }
+  return n;
+}
+
 static void climb(plan_relax *r, plan_part *part, double ceiling, int steps) {
   double step = first_step, best = -HUGE_VAL;
   int waited = 0;
@@ -468,7 +504,10 @@ static void climb(plan_relax *r, plan_part *part, double ceiling, int steps) {
     if (part->bound > ceiling + sure || !(norm > 0)) break;
     if (n % TRY_EVERY == 0) {
       plan_guess_prices(r->guess, r->price, r->floor_price);
-      plan_guess_try(r->guess, r->chosen, r->chosen_count);
+      if (steps >= THOROUGH && n >= TRY_EVERY)
+        plan_guess_polish(r->guess, r->chosen, r->chosen_count, r->near, nearest_types(r));
+      else
+        plan_guess_try(r->guess, r->chosen, r->chosen_count);
       if (plan_over(r->call)) break;
     }
     double aim =
