@@ -175,7 +175,10 @@ static bool is_header(const column_row *c, const char *header, double *unit) {
 }
 
 static const char *column_name(arena *a, row_column c) {
-  return text_copyn(a, columns[c].names, strcspn(columns[c].names, "|"));
+  text t;
+  text_init(&t, a, CSV_MAX_CELL);
+  for (const char *p = columns[c].names; *p && *p != '|'; p++) text_char(&t, *p == ' ' ? '_' : *p);
+  return t.data;
 }
 
 static diag_place header_place(row_reader *r, size_t i) {
@@ -276,20 +279,25 @@ static bool take_decimal(const csv_table *t, const char **at, double *value) {
   return true;
 }
 
+/* `/8` behind a whole number. */
+static bool take_divisor(const csv_table *t, const char **at, double *divisor) {
+  if (**at != '/') return false;
+  ++*at;
+  return take_decimal(t, at, divisor) && *divisor > 0;
+}
+
 bool row_number(const csv_table *t, const char *words, double *value, const char **rest) {
   const char *s = words;
   double part, divisor;
   if (!take_decimal(t, &s, value)) return false;
-  if (*s == '/' && s++ && take_decimal(t, &s, &divisor) && divisor > 0) {
+  if (*s == '/') {
+    if (!take_divisor(t, &s, &divisor)) return false;
     *value /= divisor;
   } else if ((*s == '-' || *s == ' ') && is_digit(s[1])) {
     s++;
-    if (!take_decimal(t, &s, &part) || *s++ != '/' || !take_decimal(t, &s, &divisor) ||
-        !(divisor > 0))
-      return false;
+    if (!take_decimal(t, &s, &part) || !take_divisor(t, &s, &divisor)) return false;
     *value += part / divisor;
   }
-  if (s > words && s[-1] == '/') return false;
   while (*s == ' ') s++;
   *rest = s;
   return true;

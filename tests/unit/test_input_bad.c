@@ -1,7 +1,7 @@
 /* Bad files: every tests/bad/NAME.json is read as what it claims to be (a brief when it claims
- * nothing), and its messages must be the lines of NAME.expect. A new case needs two files and no
- * compiler. With SEPTUM_REWRITE set in the environment the .expect files are written instead; look
- * at the difference before keeping it. */
+ * nothing), every NAME.csv as a wall schedule, and the messages must be the lines of NAME.expect. A
+ * new case needs two files and no compiler. With SEPTUM_REWRITE set in the environment the .expect
+ * files are written instead; look at the difference before keeping it. */
 #include <check.h>
 #include <dirent.h>
 #include <setjmp.h>
@@ -10,7 +10,7 @@
 
 #include "base/file.h"
 #include "input/catalog.h"
-#include "input/job.h"
+#include "input/schedule.h"
 
 #define FOLDER TEST_ROOT "/tests/bad/"
 enum { CASES_MAX = 1000, FILE_BYTES = 16 << 20 };
@@ -23,14 +23,20 @@ static int by_name(const void *a, const void *b) {
   return strcmp(*(const char *const *)a, *(const char *const *)b);
 }
 
-/* Names less `.json`, sorted. */
+/* The project of the schedules: its rows must say storey and height. */
+static const char project_file[] =
+    "{\"septum\": \"project/1\", \"walls\": \"walls.csv\", \"code\": \"ibc\", \"same_framing\": "
+    "\"storey\", \"types\": {\"P1\": \"typex-16 | wood-89@406 | typex-16\"}}";
+static const catalog *shipped; /* read once, outside of any test */
+
+/* Whole names, sorted. */
 static void find_cases(arena *a) {
   DIR *folder = opendir(FOLDER);
   if (!folder) return;
   for (struct dirent *e; (e = readdir(folder)) != NULL && count < CASES_MAX;) {
-    size_t n = strlen(e->d_name);
-    if (n > 5 && text_equal(e->d_name + n - 5, ".json"))
-      names[count++] = text_copyn(a, e->d_name, n - 5);
+    const char *dot = strrchr(e->d_name, '.');
+    if (dot && (text_equal(dot, ".json") || text_equal(dot, ".csv")))
+      names[count++] = text_copy(a, e->d_name);
   }
   (void)closedir(folder);
   qsort(names, (size_t)count, sizeof *names, by_name);
@@ -44,6 +50,26 @@ static bool is_catalog_kind(const char *mark) {
   return false;
 }
 
+static bool read_json(arena *a, diag_list *faults, const char *file, const char *bytes,
+                      size_t len) {
+  const json_value *root = json_parse(a, faults, file, bytes, len);
+  const json_value *mark = root ? json_get(root, "septum") : NULL;
+  const char *kind = mark && mark->kind == JSON_STRING ? mark->string : "";
+  if (!root) return false;
+  if (is_catalog_kind(kind)) return catalog_check_file(a, faults, root);
+  if (text_starts(kind, "project/"))
+    return project_read(a, faults, NULL, root, arena_alloc(a, sizeof(project)));
+  return job_read(a, faults, NULL, root, true, arena_alloc(a, sizeof(brief)));
+}
+
+static bool read_csv(arena *a, diag_list *faults, const char *file, const char *bytes, size_t len) {
+  project *p = arena_alloc(a, sizeof *p);
+  const json_value *root = json_parse(a, faults, "p.json", project_file, sizeof project_file - 1);
+  ck_assert(root != NULL && project_read(a, faults, shipped, root, p));
+  const csv_table *t = csv_parse(a, faults, file, bytes, len);
+  return t != NULL && schedule_read(a, faults, shipped, p, t) != NULL;
+}
+
 /* The faults of one file, a line each, under its bare name. */
 static const char *messages_of(arena *a, const char *name) {
   diag_list faults;
@@ -51,18 +77,10 @@ static const char *messages_of(arena *a, const char *name) {
   text lines;
   diag_init(&faults, a);
   text_init(&lines, a, FILE_BYTES);
-  const char *file = text_format(a, "%s.json", name);
-  const char *bytes = file_read(a, &faults, file_join(a, FOLDER, file), FILE_BYTES, &len);
+  const char *bytes = file_read(a, &faults, file_join(a, FOLDER, name), FILE_BYTES, &len);
   ck_assert_msg(bytes != NULL, "%s can be read", name);
-  const json_value *root = json_parse(a, &faults, file, bytes, len);
-  const json_value *mark = root ? json_get(root, "septum") : NULL;
-  bool sound = false;
-  if (mark && mark->kind == JSON_STRING && is_catalog_kind(mark->string)) {
-    sound = catalog_check_file(a, &faults, root);
-  } else if (root) {
-    brief *b = arena_alloc(a, sizeof *b);
-    sound = job_read(a, &faults, NULL, root, true, b);
-  }
+  bool csv = text_equal(strrchr(name, '.'), ".csv");
+  bool sound = (csv ? read_csv : read_json)(a, &faults, name, bytes, len);
   ck_assert_msg(sound == (faults.errors == 0), "%s: the answer and the messages agree", name);
   ck_assert_msg(faults.count > 0, "%s: at least one message", name);
   for (size_t i = 0; i < faults.count; i++) {
@@ -77,11 +95,12 @@ START_TEST(the_messages_are_those_expected) {
   diag_list faults;
   size_t len = 0;
   diag_init(&faults, a);
-  const char *expect = text_format(a, FOLDER "%s.expect", names[_i]);
+  int stem = (int)(strrchr(names[_i], '.') - names[_i]);
+  const char *expect = text_format(a, FOLDER "%.*s.expect", stem, names[_i]);
   const char *found = messages_of(a, names[_i]);
   if (getenv("SEPTUM_REWRITE")) ck_assert(file_write(a, &faults, expect, found, strlen(found)));
   const char *expected = file_read(a, &faults, expect, FILE_BYTES, &len);
-  ck_assert_msg(expected != NULL, "%s.expect can be read", names[_i]);
+  ck_assert_msg(expected != NULL, "%s can be read", expect);
   ck_assert_msg(text_equal(found, expected), "%s\nexpected:\n%sfound:\n%s", names[_i], expected,
                 found);
   arena_free(a);
@@ -96,8 +115,10 @@ START_TEST(memory_may_run_out_anywhere) {
     arena *volatile a = arena_create(0, &out_of_memory);
     if (setjmp(out_of_memory) == 0) {
       arena_fail_at(n);
-      (void)messages_of(a, "json-several-faults");
-      (void)messages_of(a, "field-wrong-kinds");
+      (void)messages_of(a, "json-several-faults.json");
+      (void)messages_of(a, "field-wrong-kinds.json");
+      (void)messages_of(a, "project-several-faults.json");
+      (void)messages_of(a, "schedule-cells.csv");
       arena_fail_at(0);
       arena_free(a);
       break;
@@ -134,8 +155,34 @@ START_TEST(damaged_files_are_refused_or_read) {
 }
 END_TEST
 
+START_TEST(damaged_schedules_are_refused_or_read) {
+  static const char whole[] = "id;storey;length (ft);height;target;fire;thickness_max\r\n"
+                              "W1;2;12;9ft-6in;\"STC 50; Rw+C 48\";1-1/2 h;4-7/8in\r\n";
+  static const char bytes[] = ";\",'-/ \n\x01\x80\xC3\xFF"
+                              "09.RhiL";
+  for (size_t i = 0; i < sizeof whole; i++) {
+    for (size_t k = 0; k < sizeof bytes; k++) {
+      arena *a = arena_create(0, &out_of_memory);
+      char damaged[sizeof whole];
+      diag_list faults;
+      diag_init(&faults, a);
+      memcpy(damaged, whole, sizeof whole);
+      if (k > 0) damaged[i] = bytes[k - 1];
+      bool read = read_csv(a, &faults, "f", damaged, k > 0 ? sizeof whole - 1 : i);
+      if (read != (faults.errors == 0))
+        ck_abort_msg("place %zu byte %zu: the answer and the messages agree", i, k);
+      arena_free(a);
+    }
+  }
+}
+END_TEST
+
 int main(void) {
   arena *a = arena_create(0, NULL);
+  diag_list none;
+  diag_init(&none, a);
+  shipped = catalog_load(a, &none, TEST_ROOT "/catalogs");
+  if (!shipped) return EXIT_FAILURE;
   find_cases(a);
   Suite *s = suite_create("bad files");
   TCase *t = tcase_create("bad files");
@@ -143,6 +190,7 @@ int main(void) {
   tcase_add_loop_test(t, the_messages_are_those_expected, 0, count);
   tcase_add_test(t, memory_may_run_out_anywhere);
   tcase_add_test(t, damaged_files_are_refused_or_read);
+  tcase_add_test(t, damaged_schedules_are_refused_or_read);
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
   srunner_run_all(r, CK_ENV);
