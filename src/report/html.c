@@ -123,6 +123,7 @@ void html_end_brief(html *h) {
 
 void html_section(html *h, const char *heading) {
   const char *id = text_format(h->report->arena, "s%d", ++h->sections);
+  h->grouped = false;
   markup_xml_open(&h->x, "section");
   markup_xml_attribute(&h->x, "aria-labelledby", id);
   markup_xml_open(&h->x, "h2");
@@ -136,6 +137,11 @@ void html_section_end(html *h) {
 }
 
 void html_heading(html *h, const char *heading) {
+  markup_xml_element(&h->x, h->grouped ? "h4" : "h3", NULL, heading);
+}
+
+void html_group(html *h, const char *heading) {
+  h->grouped = true;
   markup_xml_element(&h->x, "h3", NULL, heading);
 }
 
@@ -175,6 +181,7 @@ void html_box_end(html *h) {
 text *html_picture(html *h, const char *css_class) {
   markup_xml_open(&h->x, "figure");
   markup_xml_attribute(&h->x, "class", css_class);
+  if (text_equal(css_class, HTML_CHART)) markup_xml_attribute(&h->x, "tabindex", "0");
   return markup_xml_embed(&h->x);
 }
 

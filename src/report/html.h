@@ -28,6 +28,7 @@ typedef struct html {
   const report *report;
   markup_xml x;
   int sections; /* so far; also numbers the ids */
+  bool grouped; /* headings stand one level lower */
   int tables;
   int columns; /* of the open table */
   html_kind kind[HTML_MAX_COLUMNS];
@@ -51,8 +52,10 @@ void html_end_brief(html *h);
 /* A numbered section with its heading; not one in another. */
 void html_section(html *h, const char *heading);
 void html_section_end(html *h);
-/* A heading within a section. */
+/* A heading within a section, or within a group of it. */
 void html_heading(html *h, const char *heading);
+/* A part of a section with headings of its own, until the next group or the end of the section. */
+void html_group(html *h, const char *heading);
 void html_paragraph(html *h, const char *words);
 /* As html_paragraph with a class of the style sheet. */
 void html_note(html *h, const char *css_class, const char *words);
@@ -87,6 +90,8 @@ void html_box_end(html *h);
 /* What is seen only when asked for. */
 void html_more(html *h, const char *summary);
 void html_more_end(html *h);
+/* The class of charts: they scroll by themselves where the page is narrower. */
+#define HTML_CHART "chart"
 /* A picture with words under it: between these two goes one <svg>, written to what the first hands
  * out. */
 text *html_picture(html *h, const char *css_class);

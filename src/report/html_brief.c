@@ -3,7 +3,7 @@
 
 void html_brief(html *h, int climbs) {
   static const html_column columns[] = {
-      {"Field", HTML_HEAD}, {"Value", HTML_DATA}, {"", HTML_WORDS}};
+      {"Field", HTML_HEAD}, {"Value", HTML_DATA}, {"", HTML_CODE}};
   const report *r = h->report;
   view_brief *b = arena_alloc(r->arena, sizeof *b);
   view_brief_of(r, climbs, b);

@@ -102,7 +102,7 @@ void html_cost_parts(html *h, const assessment *x) {
   } else {
     put_rates(h, x);
     const char *id = html_picture_id(h);
-    chart_cost(h->report, id, x, html_picture(h, "chart"));
+    chart_cost(h->report, id, x, html_picture(h, HTML_CHART));
     html_picture_end(h, NULL);
     html_cost_by_section(h, x);
   }
@@ -126,7 +126,7 @@ void html_takeoff_table(html *h, const char *caption, const assessment *x) {
   const report *r = h->report;
   const html_column columns[] = {
       {"Section", HTML_CODE},   {"Item", HTML_ID},   {"Name", HTML_DATA},
-      {"Kind", HTML_WORDS},      {"Quantity", HTML_FIGURE}, {"Unit", HTML_WORDS},
+      {"Kind", HTML_CODE},      {"Quantity", HTML_FIGURE}, {"Unit", HTML_CODE},
       {"Rate", HTML_FIGURE},     {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE}};
   takeoff_rows *rows = arena_alloc(r->arena, sizeof *rows);
   takeoff_rows_of(r, x, rows);
@@ -149,7 +149,7 @@ static void put_buy_list(html *h, const assessment *x) {
   const report *r = h->report;
   const html_column columns[] = {
       {"Item", HTML_ID},     {"Name", HTML_DATA}, {"Needed", HTML_FIGURE},
-      {"Unit", HTML_WORDS},    {"Buy", HTML_FIGURE}, {"As", HTML_DATA},
+      {"Unit", HTML_CODE},    {"Buy", HTML_FIGURE}, {"As", HTML_DATA},
       {"Price", HTML_FIGURE},  {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE},
       {"Note", HTML_WORDS}};
   buy_list *list = arena_alloc(r->arena, sizeof *list);

@@ -91,7 +91,7 @@ static void put_glance(html *h, const ladder_answer *l) {
                 text_format(r->arena, "%d of them worth taking", worth));
     html_figures_end(h);
     const char *id = html_picture_id(h);
-    chart_ladder(r, id, l, html_picture(h, "chart"));
+    chart_ladder(r, id, l, html_picture(h, HTML_CHART));
     html_picture_end(h, NULL);
   }
   html_unpriced(h);

@@ -52,7 +52,7 @@ static void put_cloud(html *h, const explanation *e, const cloud *c) {
   if (!c || c->count == 0) return;
   const char *id = html_picture_id(h);
   html_section(h, "Among the walls that keep the brief");
-  chart_cloud(h->report, id, e, c, html_picture(h, "chart"));
+  chart_cloud(h->report, id, e, c, html_picture(h, HTML_CHART));
   html_picture_end(h, NULL);
   html_section_end(h);
 }

@@ -162,7 +162,7 @@ static void put_curve(html *h, const assessment *x, bool paths) {
   sound_metric asked = b->target_count > 0 ? b->targets[0].metric : METRIC_STC;
   chart_sound_options o = {.metric = asked, .paths = paths};
   const char *id = html_picture_id(h);
-  chart_sound(h->report, id, x, &o, html_picture(h, "chart"));
+  chart_sound(h->report, id, x, &o, html_picture(h, HTML_CHART));
   html_picture_end(h, NULL);
 }
 

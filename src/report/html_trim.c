@@ -125,6 +125,22 @@ static void put_terms(html *h, const trim_answer *t) {
   html_section_end(h);
 }
 
+/* "STC 54", and what it rests on where that is no prediction. */
+static const char *rating_words(html *h, const assessment *x) {
+  sound_metric m = view_trim_metric(h->report);
+  return text_format(h->report->arena, "%s %d%s", sound_metric_names[m],
+                     rating_of(&x->ratings, m), view_published(x, m) ? ", published" : "");
+}
+
+static const char *sure_words(html *h, const assessment *x) {
+  const report *r = h->report;
+  text t;
+  text_init(&t, r->arena, 200);
+  for (int i = 0; i < r->brief->target_count; i++)
+    text_putf(&t, "%s%s %%", i ? ", " : "", view_sureness(r, x->probability[i]));
+  return t.data;
+}
+
 /* --- the log --------------------------------------------------------------------------------- */
 
 static void put_log_row(html *h, const trim_answer *t, int i) {
@@ -133,11 +149,10 @@ static void put_log_row(html *h, const trim_answer *t, int i) {
   const assessment *from = t->specified, *x = p->wall;
   html_row(h, HTML_CELLS(text_format(r->arena, "%d", i + 1), x->line,
                          view_cents(r, p->saving_cents), saving_area(h, p->saving_per_m2),
-                         share_words(h, t, p->saving_cents), view_trim_rating(r, x),
-                         signed_words(h, view_trim_shift(r, from, x), 1), view_trim_sure(r, x),
+                         share_words(h, t, p->saving_cents), rating_words(h, x),
+                         signed_words(h, view_trim_shift(r, from, x), 1), sure_words(h, x),
                          thickness_change(h, from, x), mass_change(h, from, x),
-                         html_fire_words(h, x), html_height(h, x->height.limit_m),
-                         view_trim_losses(r, p)));
+                         html_fire_words(h, x), view_trim_losses(r, p)));
 }
 
 static void put_log(html *h, const trim_answer *t) {
@@ -148,17 +163,16 @@ static void put_log(html *h, const trim_answer *t) {
       {text_format(r->arena, "Saves, %s", r->prices->currency), HTML_FIGURE},
       {text_format(r->arena, "per %s", view_area(r)), HTML_FIGURE},
       {"Share", HTML_FIGURE},
-      {"Rating", HTML_WORDS},
+      {"Rating", HTML_CODE},
       {"Predicted, dB", HTML_FIGURE},
-      {"How sure", HTML_WORDS},
+      {"How sure", HTML_FIGURE},
       {"Thickness", HTML_FIGURE},
       {"Mass", HTML_FIGURE},
       {"Fire", HTML_FIGURE},
-      {"Height up to", HTML_FIGURE},
       {"Gives up", HTML_WORDS}};
   html_section(h, "Proposals");
   const char *id = html_picture_id(h);
-  chart_savings(r, id, t, html_picture(h, "chart"));
+  chart_savings(r, id, t, html_picture(h, HTML_CHART));
   html_picture_end(h, NULL);
   html_table(h,
              text_format(r->arena, "Against the specified wall: %s, %s, %s, up to %s",
@@ -233,7 +247,7 @@ static void put_differences(html *h, const trim_answer *t, const trim_proposal *
 }
 
 static void put_losses(html *h, const trim_proposal *p) {
-  html_heading(h, "What it gives up");
+  html_group(h, "What it gives up");
   if (p->loss_count == 0)
     html_paragraph(h, "Nothing of what is judged here.");
   else
@@ -250,19 +264,19 @@ static void put_proposal(html *h, const trim_answer *t, int i) {
   html_wall_drawing(h, p->wall, false);
   put_differences(h, t, p);
   put_losses(h, p);
-  html_heading(h, "Changes");
+  html_group(h, "Changes");
   put_changes(h, t, p);
-  html_heading(h, "Cost, before and after");
+  html_group(h, "Cost, before and after");
   const char *id = html_picture_id(h);
-  chart_before_after(r, id, t->specified, p->wall, name, html_picture(h, "chart"));
+  chart_before_after(r, id, t->specified, p->wall, name, html_picture(h, HTML_CHART));
   html_picture_end(h, NULL);
-  html_heading(h, "Sound");
+  html_group(h, "Sound");
   html_sound_parts(h, p->wall);
-  html_heading(h, "Fire, height and rules");
+  html_group(h, "Fire, height and rules");
   html_check_parts(h, p->wall);
-  html_heading(h, "Cost");
+  html_group(h, "Cost");
   html_cost_parts(h, p->wall);
-  html_heading(h, "Cautions");
+  html_group(h, "Cautions");
   const char *caution[VIEW_MAX_CAUTIONS];
   html_list(h, caution, view_cautions(r, p->wall, caution));
   html_section_end(h);
@@ -292,11 +306,11 @@ static void put_specified(html *h, const trim_answer *t) {
   html_section(h, "The specified wall");
   html_line(h, t->specified->line);
   html_wall_drawing(h, t->specified, false);
-  html_heading(h, "Sound");
+  html_group(h, "Sound");
   html_sound_parts(h, t->specified);
-  html_heading(h, "Fire, height and rules");
+  html_group(h, "Fire, height and rules");
   html_check_parts(h, t->specified);
-  html_heading(h, "Cost");
+  html_group(h, "Cost");
   html_cost_parts(h, t->specified);
   html_section_end(h);
 }

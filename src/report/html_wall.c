@@ -99,10 +99,15 @@ void html_wall_figures(html *h, const assessment *x) {
   html_figures_end(h);
 }
 
-void html_wall_drawing(html *h, const assessment *x, bool compact) {
+static void put_drawing(html *h, const assessment *x, const char *css_class, bool compact) {
   section_options o = {.prefix = html_picture_id(h), .compact = compact};
-  section_draw(h->report, &x->wall, &o, html_picture(h, compact ? "card-drawing" : "drawing"));
+  section_draw(h->report, &x->wall, &o, html_picture(h, css_class));
   html_picture_end(h, NULL);
+}
+
+void html_wall_drawing(html *h, const assessment *x, bool compact) {
+  if (!compact) put_drawing(h, x, "drawing wide", false);
+  put_drawing(h, x, compact ? "card-drawing" : "card-drawing narrow", true);
 }
 
 /* --- what it is ------------------------------------------------------------------------------ */

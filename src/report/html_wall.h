@@ -10,7 +10,8 @@
 
 /* The figures that answer at one glance: rating, cost, thickness, mass, fire, height. */
 void html_wall_figures(html *h, const assessment *x);
-/* The section through the wall, drawn. `compact`: small, without dimensions. */
+/* The section through the wall, drawn. `compact`: the plan alone, for a card; else in full, and where
+ * the page is narrow the plan alone. */
 void html_wall_drawing(html *h, const assessment *x, bool compact);
 /* Sections of their own. */
 void html_wall_parts(html *h, const assessment *x);

@@ -32,7 +32,7 @@ void html_others(html *h, const char *caption, assessment *const *x, int count, 
   const html_column columns[] = {
       {"Wall", HTML_LINE},        {per_area_head(h), HTML_FIGURE},
       {"STC", HTML_FIGURE},       {"Rw (C, Ctr)", HTML_FIGURE},
-      {"OITC", HTML_FIGURE},      {"Rests on", HTML_WORDS},
+      {"OITC", HTML_FIGURE},      {"Rests on", HTML_CODE},
       {"Thickness", HTML_FIGURE}, {"Mass", HTML_FIGURE},
       {fails ? "What it fails" : floor ? "Floor under it" : "", HTML_WORDS}};
   if (count == 0) return;
@@ -90,7 +90,7 @@ static const char *price_words(const report *r, const explain_break_even *b, dou
 void html_break_even(html *h, const explain_break_even *b, int count) {
   const report *r = h->report;
   static const html_column columns[] = {
-      {"Item", HTML_HEAD},       {"Unit", HTML_WORDS},     {"Price", HTML_FIGURE},
+      {"Item", HTML_HEAD},       {"Unit", HTML_CODE},     {"Price", HTML_FIGURE},
       {"Below", HTML_FIGURE},    {"this wall", HTML_LINE}, {"Above", HTML_FIGURE},
       {"this wall", HTML_LINE}};
   text idle;
