@@ -16,7 +16,8 @@ typedef enum cli_command {
   CLI_LADDER = 8,
   CLI_TRIM = 16,
   CLI_PRICES = 32,
-  CLI_ANY = CLI_RATE | CLI_PICK | CLI_CHECK | CLI_LADDER | CLI_TRIM | CLI_PRICES
+  CLI_PLAN = 64,
+  CLI_ANY = CLI_RATE | CLI_PICK | CLI_CHECK | CLI_LADDER | CLI_TRIM | CLI_PRICES | CLI_PLAN
 } cli_command;
 
 typedef struct cli_line {
