@@ -386,16 +386,24 @@ static int note_needs(const bag *g, cost_need *out) {
   return n;
 }
 
-int cost_needs(const price_book *book, const catalog *c, const brief *b, const wall *w,
-               cost_need out[COST_MAX_NEEDS]) {
+cost_parts cost_core_needs(const price_book *book, const catalog *c, const brief *b,
+                           const wall *core, cost_need need[COST_MAX_NEEDS], int *count) {
   extent e = extent_of(b);
   bag g;
   bag_start(&g, book, &e);
-  fill_core(&g, b, &e, c, w);
-  int n = note_needs(&g, out);
+  fill_core(&g, b, &e, c, core);
+  *count = note_needs(&g, need);
+  return bag_sum(&g);
+}
+
+cost_parts cost_leaves_needs(const price_book *book, const catalog *c, const brief *b,
+                             const wall *w, cost_need need[COST_MAX_NEEDS], int *count) {
+  extent e = extent_of(b);
+  bag g;
   bag_start(&g, book, &e);
   fill_leaves(&g, b, &e, c, w);
-  return n + note_needs(&g, out + n);
+  *count = note_needs(&g, need);
+  return bag_sum(&g);
 }
 
 static long long tax_cents(const price_book *book, long long material) {

@@ -71,10 +71,13 @@ typedef struct cost_need {
   int item; /* in the price book; the same item may come twice */
   double quantity;
 } cost_need;
-enum { COST_MAX_NEEDS = 112 }; /* twice the items of a core or of two leaves */
-/* What the takeoff's material lines say, whatever the items' prices; how many. */
-int cost_needs(const price_book *book, const catalog *c, const brief *b, const wall *w,
-               cost_need out[COST_MAX_NEEDS]);
+enum { COST_MAX_NEEDS = 56 }; /* more than the items of a core or of two leaves */
+/* As cost_core and cost_leaves, and what their material lines say of quantities, whatever the
+ * items' prices: *count of them in `need`. */
+cost_parts cost_core_needs(const price_book *book, const catalog *c, const brief *b,
+                           const wall *core, cost_need need[COST_MAX_NEEDS], int *count);
+cost_parts cost_leaves_needs(const price_book *book, const catalog *c, const brief *b,
+                             const wall *w, cost_need need[COST_MAX_NEEDS], int *count);
 /* Markups and total from summed parts; the same arithmetic that cost_takeoff uses. */
 cost_total cost_sum(const price_book *book, const brief *b, double thickness_m, cost_parts core,
                     cost_parts leaves);

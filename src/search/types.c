@@ -53,17 +53,15 @@ static void set_use(const finder *f, int c, const wall *w, const prediction *p,
 }
 
 static void set_needs(const finder *f, const types_entry *e, plan_type *t, long long *micro) {
-  int classes = f->x->schedule->class_count, items = f->sweep.goods.count;
-  for (int way = 0; way < 2; way++) {
-    const types_needs *n = &e->needs[way];
-    for (int i = 0; i < n->count; i++)
-      for (int c = 0; c < classes; c++) {
-        if (!t->use[c].fits || t->use[c].turned != (way == 1)) continue;
-        size_t at = (size_t)c * (size_t)items + (size_t)n->item[i];
-        micro[at] = n->amount[(size_t)i * (size_t)classes + (size_t)c];
-        t->need[at] = (double)micro[at] * TYPES_NEED_UNIT;
-      }
-  }
+  size_t classes = (size_t)f->x->schedule->class_count, items = (size_t)f->sweep.goods.count;
+  const types_needs *n = &e->needs;
+  for (int i = 0; i < n->count; i++)
+    for (size_t c = 0; c < classes; c++) {
+      if (!t->use[c].fits) continue;
+      size_t at = c * items + (size_t)n->item[i];
+      micro[at] = n->amount[n->sided && t->use[c].turned][(size_t)i * classes + c];
+      t->need[at] = (double)micro[at] * TYPES_NEED_UNIT;
+    }
 }
 
 /* The wall as the reference rates it. False when it fits no class after all. */

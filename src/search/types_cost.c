@@ -3,6 +3,8 @@
 #include <math.h>
 #include <string.h>
 
+#include "base/threads.h"
+
 enum { SPACINGS_MAX = 16, FIRST_PARTS = 64 };
 
 /* How far a sum of parts may lie from the cost of a wall, cents a copy: an item on two parts (at
@@ -109,64 +111,66 @@ typedef struct part_of {
   bool leaf;                  /* of the leaves, else of the core */
 } part_of;
 
-static cost_parts parts_of(const types_cost *t, const part_of *p, const wall *w, const brief *b) {
-  const plan_context *x = t->x;
-  return p->leaf ? cost_leaves(&t->goods->list, x->catalog, b, w)
-                 : cost_core(&t->goods->list, x->catalog, b, w);
-}
+/* Scratch of whoever works parts out. */
+typedef struct part_scratch {
+  double *quantity; /* per item of the goods */
+  long long *need;  /* per class and item */
+  bool *missing;    /* per class */
+} part_scratch;
 
 static double marked_up(const price_book *book, const cost_parts *p) {
   return ((double)p->material_cents * (1 + book->sales_tax) + (double)p->labour_cents) *
          (1 + book->overhead_profit);
 }
 
-/* Cents of the part in all walls of the class; goods at no price. */
-static double class_cents(const types_cost *t, int c, const part_of *p, bool *missing) {
-  const cost_class *k = &t->classes[c];
-  double sum = 0;
-  for (int i = 0; i < k->rows; i++) {
-    cost_parts with = parts_of(t, p, p->with, &k->row[i].brief), without = {0};
-    if (p->without) without = parts_of(t, p, p->without, &k->row[i].brief);
-    *missing = *missing || (with.missing && !without.missing);
-    sum += k->row[i].count *
-           (marked_up(&t->goods->list, &with) - marked_up(&t->goods->list, &without));
-  }
-  return sum;
-}
-
-static void add_needs(const types_cost *t, const brief *b, const wall *w, double count,
-                      double *quantity) {
+/* Cents (goods at no price) of one row of a class; adds what it needs of each of the goods. */
+static double add_row_of(const types_cost *t, const part_of *p, const wall *w, const cost_row *row,
+                         double sign, double *quantity, bool *missing) {
   cost_need need[COST_MAX_NEEDS];
-  int n = cost_needs(t->x->prices, t->x->catalog, b, w, need);
-  for (int i = 0; i < n; i++) {
+  const plan_context *x = t->x;
+  int n;
+  cost_parts cost = p->leaf
+                        ? cost_leaves_needs(&t->goods->list, x->catalog, &row->brief, w, need, &n)
+                        : cost_core_needs(&t->goods->list, x->catalog, &row->brief, w, need, &n);
+  for (int i = 0; t->goods->count > 0 && i < n; i++) {
     int at = t->goods->place[need[i].item];
-    if (at != TYPES_NONE) quantity[at] += count * need[i].quantity;
+    if (at != TYPES_NONE) quantity[at] += sign * row->count * need[i].quantity;
   }
+  *missing = cost.missing;
+  return sign * row->count * marked_up(&t->goods->list, &cost);
 }
 
-/* A part's need of each item of the goods, in all walls of the class, in millionths. */
-static void class_needs(const types_cost *t, int c, const part_of *p, double *quantity,
-                        long long *need) {
+/* Cents of the part in all walls of the class, and its needs in millionths; `quantity` is scratch.
+ */
+static double part_in_class(const types_cost *t, int c, const part_of *p, double *quantity,
+                            long long *need, bool *missing) {
   const cost_class *k = &t->classes[c];
+  double cents = 0;
+  *missing = false;
   for (int g = 0; g < t->goods->count; g++) quantity[g] = 0;
   for (int i = 0; i < k->rows; i++) {
-    add_needs(t, &k->row[i].brief, p->with, k->row[i].count, quantity);
-    if (p->without) add_needs(t, &k->row[i].brief, p->without, -k->row[i].count, quantity);
+    bool with, without = false;
+    cents += add_row_of(t, p, p->with, &k->row[i], 1, quantity, &with);
+    if (p->without) cents += add_row_of(t, p, p->without, &k->row[i], -1, quantity, &without);
+    *missing = *missing || (with && !without);
   }
   for (int g = 0; g < t->goods->count; g++)
     need[g] = llround(fmax(0, quantity[g]) / TYPES_NEED_UNIT);
+  return cents;
 }
 
 /* ---- one part in all classes ---- */
 
+/* Item `item` of the goods from the classes' needs, if there is any. */
 static void add_item(const types_cost *t, arena *a, cost_part *out, int item,
                      const long long *need) {
+  size_t all = (size_t)t->goods->count;
   bool any = false;
-  for (int c = 0; c < t->class_count; c++) any = any || need[(size_t)c * (size_t)t->goods->count] > 0;
+  for (int c = 0; c < t->class_count; c++) any = any || need[(size_t)c * all] > 0;
   if (!any) return;
   long long *of = arena_array(a, (size_t)t->class_count, sizeof *of);
   for (int c = 0; c < t->class_count; c++) {
-    of[c] = need[(size_t)c * (size_t)t->goods->count];
+    of[c] = need[(size_t)c * all];
     out->cents[c] += (double)of[c] * TYPES_NEED_UNIT * t->goods->price[item].least;
   }
   out->item[out->needs] = item;
@@ -178,25 +182,32 @@ static double part_thickness_m(const types_cost *t, const part_of *p) {
   return p->without ? with - wall_thickness_m(t->x->catalog, p->without) : with;
 }
 
-static void set_part(const types_cost *t, arena *a, const part_of *p, cost_part *out) {
-  double thickness_m = part_thickness_m(t, p);
+static void set_part(const types_cost *t, arena *a, const part_of *p, const part_scratch *x,
+                     cost_part *out) {
   size_t classes = (size_t)t->class_count, all = (size_t)t->goods->count;
-  bool *missing = arena_array(a, classes, sizeof *missing), any = false;
+  double thickness_m = part_thickness_m(t, p);
+  bool any = false;
   *out = (cost_part){.cents = arena_array(a, classes, sizeof *out->cents)};
-  for (int c = 0; c < t->class_count; c++) {
-    out->cents[c] = class_cents(t, c, p, &missing[c]) +
-                    thickness_m * t->classes[c].floor_cents_per_m;
-    any = any || missing[c];
+  for (size_t c = 0; c < classes; c++) {
+    double cents = part_in_class(t, (int)c, p, x->quantity, x->need + c * all, &x->missing[c]);
+    out->cents[c] = cents + thickness_m * t->classes[c].floor_cents_per_m;
+    any = any || x->missing[c];
   }
-  if (any) out->missing = missing;
+  if (any) {
+    out->missing = arena_array(a, classes, sizeof *out->missing);
+    memcpy(out->missing, x->missing, classes * sizeof *out->missing);
+  }
   if (all == 0) return;
-  double *quantity = arena_array(a, all, sizeof *quantity);
-  long long *need = arena_array(a, classes * all, sizeof *need);
-  for (int c = 0; c < t->class_count; c++)
-    class_needs(t, c, p, quantity, need + (size_t)c * all);
   out->item = arena_array(a, all, sizeof *out->item);
   out->need = arena_array(a, all, sizeof *out->need);
-  for (int g = 0; g < t->goods->count; g++) add_item(t, a, out, g, need + g);
+  for (int g = 0; g < t->goods->count; g++) add_item(t, a, out, g, x->need + g);
+}
+
+static part_scratch scratch_create(const types_cost *t, arena *a) {
+  size_t classes = (size_t)t->class_count, all = (size_t)t->goods->count;
+  return (part_scratch){arena_array(a, all, sizeof(double)),
+                        arena_array(a, classes * all, sizeof(long long)),
+                        arena_array(a, classes, sizeof(bool))};
 }
 
 /* ---- the parts of a space ---- */
@@ -308,30 +319,76 @@ static void list_parts(types_cost *t) {
   }
 }
 
-static void set_core_parts(types_cost *t, part_list *l, bool whole) {
-  l->part = arena_array(t->arena, (size_t)l->count, sizeof *l->part);
-  for (int i = 0; i < l->count; i++) {
-    part_of p = {&l->with[i], whole ? NULL : &l->without[i], false};
-    set_part(t, t->arena, &p, &l->part[i]);
-  }
+/* Whether all walls of every class have both sides finished alike: then it does not matter which
+ * side a leaf is on. */
+static bool sides_alike(const types_cost *t) {
+  for (int c = 0; c < t->class_count; c++)
+    for (int i = 0; i < t->classes[c].rows; i++) {
+      const brief *b = &t->classes[c].row[i].brief;
+      if (b->side[SIDE_A].finish_level != b->side[SIDE_B].finish_level ||
+          !equal(b->ceiling_m[SIDE_A], b->ceiling_m[SIDE_B]))
+        return false;
+    }
+  return true;
 }
 
-static void set_leaf(types_cost *t, int spacing, int at, int leaf) {
+static void set_core_part(const types_cost *t, arena *a, const part_scratch *x, int p, int i) {
+  const part_list *l = &t->part[p];
+  part_of of = {&l->with[i], p == PART_FRAME ? NULL : &l->without[i], false};
+  set_part(t, a, &of, x, &l->part[i]);
+}
+
+static void set_leaf(const types_cost *t, arena *a, const part_scratch *x, int spacing, int at,
+                     int leaf) {
   wall without = bare(&t->space->cores[0]);
   without.spacing_mm = t->spacing[spacing];
   wall with = without;
   with.side[at] = t->space->faces[leaf];
-  part_of p = {&with, &without, true};
-  set_part(t, t->arena, &p, &t->leaf[spacing][at][leaf]);
+  part_of of = {&with, &without, true};
+  set_part(t, a, &of, x, &t->leaf[spacing][at][leaf]);
 }
 
-static void set_leaves(types_cost *t) {
-  size_t faces = (size_t)t->space->face_count;
-  for (int i = 0; i < t->spacings; i++)
-    for (int at = 0; at < 2; at++) {
-      t->leaf[i][at] = arena_array(t->arena, faces, sizeof *t->leaf[i][at]);
-      for (int f = 0; f < t->space->face_count; f++) set_leaf(t, i, at, f);
+/* One worker's. */
+typedef struct part_worker {
+  arena *arena;
+  part_scratch scratch;
+} part_worker;
+
+static void *start_worker(void *shared, arena *a, int worker) {
+  part_worker *w = arena_alloc(a, sizeof *w);
+  (void)worker;
+  *w = (part_worker){a, scratch_create(shared, a)};
+  return w;
+}
+
+/* Block i: the i-th of all parts, core parts first. */
+static void set_one_part(void *shared, void *own, int block) {
+  const types_cost *t = shared;
+  const part_worker *w = own;
+  int i = block;
+  for (int p = 0; p < CORE_PARTS; i -= t->part[p++].count)
+    if (i < t->part[p].count) {
+      set_core_part(t, w->arena, &w->scratch, p, i);
+      return;
     }
+  int faces = t->space->face_count, at = i / (t->spacings * faces);
+  set_leaf(t, w->arena, &w->scratch, i / faces % t->spacings, at, i % faces);
+}
+
+static void set_parts(types_cost *t) {
+  size_t faces = (size_t)t->space->face_count;
+  int ways = sides_alike(t) ? 1 : 2, parts = ways * t->spacings * t->space->face_count;
+  for (int p = 0; p < CORE_PARTS; p++) {
+    part_list *l = &t->part[p];
+    l->part = arena_array(t->arena, (size_t)l->count, sizeof *l->part);
+    parts += l->count;
+  }
+  for (int i = 0; i < t->spacings; i++)
+    for (int at = 0; at < 2; at++)
+      t->leaf[i][at] = at < ways ? arena_array(t->arena, faces, sizeof *t->leaf[i][at])
+                                 : t->leaf[i][0];
+  threads_work work = {start_worker, set_one_part, t};
+  threads_run(t->arena, threads_count(0), parts, &work, NULL);
 }
 
 types_cost *types_cost_create(arena *a, const plan_context *x, const goods *g, const space *s) {
@@ -344,8 +401,7 @@ types_cost *types_cost_create(arena *a, const plan_context *x, const goods *g, c
   for (int c = 0; c < t->class_count; c++) set_class(t, c);
   if (!s || s->core_count == 0) return t;
   list_parts(t);
-  for (int p = 0; p < CORE_PARTS; p++) set_core_parts(t, &t->part[p], p == PART_FRAME);
-  set_leaves(t);
+  set_parts(t);
   return t;
 }
 
@@ -366,43 +422,75 @@ static void make_room(const types_cost *t, arena *a, types_needs *n, int items) 
   if (items <= n->cap) return;
   n->cap = 2 * items;
   n->item = arena_array(a, (size_t)n->cap, sizeof *n->item);
-  n->amount = arena_array(a, (size_t)n->cap * (size_t)t->class_count, sizeof *n->amount);
+  for (int way = 0; way < 2; way++)
+    n->amount[way] =
+        arena_array(a, (size_t)n->cap * (size_t)t->class_count, sizeof *n->amount[way]);
 }
 
-static void add_need(types_needs *n, int item, const long long *amount, int classes) {
+static int place_of(const types_needs *n, int item) {
   int at = 0;
   while (at < n->count && n->item[at] < item) at++;
-  size_t row = (size_t)classes, rest = (size_t)(n->count - at);
-  long long *to = n->amount + (size_t)at * row;
-  if (at == n->count || n->item[at] != item) {
-    memmove(n->item + at + 1, n->item + at, rest * sizeof *n->item);
-    memmove(to + row, to, rest * row * sizeof *to);
-    n->item[at] = item;
-    n->count++;
-    memcpy(to, amount, row * sizeof *to);
-    return;
-  }
-  for (size_t c = 0; c < row; c++) to[c] += amount[c];
+  return at;
 }
 
-void types_needs_of(const types_cost *t, arena *a, const cost_part *const part[PARTS],
+/* Makes a place for the item, in both ways round. */
+static int item_place(types_needs *n, int item, size_t classes) {
+  int at = place_of(n, item);
+  if (at < n->count && n->item[at] == item) return at;
+  size_t rest = (size_t)(n->count - at);
+  memmove(n->item + at + 1, n->item + at, rest * sizeof *n->item);
+  n->item[at] = item;
+  n->count++;
+  for (int way = 0; way <= n->sided; way++) {
+    long long *to = n->amount[way] + (size_t)at * classes;
+    memmove(to + classes, to, rest * classes * sizeof *to);
+    memset(to, 0, classes * sizeof *to);
+  }
+  return at;
+}
+
+static void add_needs_of(types_needs *n, int way, const cost_part *p, size_t classes) {
+  for (int i = 0; p && i < p->needs; i++) {
+    long long *to = n->amount[way] + (size_t)item_place(n, p->item[i], classes) * classes;
+    for (size_t c = 0; c < classes; c++) to[c] += p->need[i][c];
+  }
+}
+
+static bool same_needs(const cost_part *p, const cost_part *q, size_t classes) {
+  if (p == q) return true;
+  if (p->needs != q->needs) return false;
+  for (int i = 0; i < p->needs; i++)
+    if (p->item[i] != q->item[i] ||
+        memcmp(p->need[i], q->need[i], classes * sizeof *p->need[i]) != 0)
+      return false;
+  return true;
+}
+
+void types_needs_of(const types_cost *t, arena *a, const cost_part *part[2][PARTS],
                     types_needs *out) {
+  size_t classes = (size_t)t->class_count;
   int most = 0;
-  for (int p = 0; p < PARTS; p++) most += part[p] ? part[p]->needs : 0;
+  for (int p = 0; p < PARTS; p++) most += part[0][p] ? part[0][p]->needs : 0;
+  for (int p = PART_LEAF_A; p < PARTS; p++) most += part[1][p]->needs;
   make_room(t, a, out, most);
   out->count = 0;
-  for (int p = 0; p < PARTS; p++)
-    for (int i = 0; part[p] && i < part[p]->needs; i++)
-      add_need(out, part[p]->item[i], part[p]->need[i], t->class_count);
+  out->sided = false;
+  for (int p = PART_LEAF_A; p < PARTS; p++)
+    out->sided = out->sided || !same_needs(part[0][p], part[1][p], classes);
+  for (int way = 0; way <= out->sided; way++)
+    for (int p = 0; p < PARTS; p++) add_needs_of(out, way, part[way][p], classes);
 }
 
 types_needs types_needs_copy(arena *a, const types_needs *n, int classes) {
-  types_needs c = {.count = n->count, .cap = n->count};
+  types_needs c = {.count = n->count, .cap = n->count, .sided = n->sided};
   size_t items = (size_t)n->count, all = items * (size_t)classes;
+  if (items == 0) return c;
   c.item = arena_array(a, items, sizeof *c.item);
-  c.amount = arena_array(a, all, sizeof *c.amount);
-  if (items > 0) memcpy(c.item, n->item, items * sizeof *c.item);
-  if (all > 0) memcpy(c.amount, n->amount, all * sizeof *c.amount);
+  memcpy(c.item, n->item, items * sizeof *c.item);
+  for (int way = 0; way <= n->sided; way++) {
+    c.amount[way] = arena_array(a, all, sizeof *c.amount[way]);
+    memcpy(c.amount[way], n->amount[way], all * sizeof *c.amount[way]);
+  }
   return c;
 }
 
@@ -424,36 +512,36 @@ bool types_cost_exact(const types_cost *t, int of_class, const wall *w, long lon
   return true;
 }
 
-static void add_part_needs(const types_cost *t, int c, const wall *with, const wall *without,
-                           bool leaf, long long *sum) {
-  arena *a = t->arena;
-  part_of p = {with, without, leaf};
-  double *quantity = arena_array(a, (size_t)t->goods->count, sizeof *quantity);
-  long long *need = arena_array(a, (size_t)t->goods->count, sizeof *need);
-  class_needs(t, c, &p, quantity, need);
-  for (int g = 0; g < t->goods->count; g++) sum[g] += need[g];
+static void add_part_needs(const types_cost *t, int c, const part_of *p, const part_scratch *x,
+                           long long *sum) {
+  bool missing;
+  part_in_class(t, c, p, x->quantity, x->need, &missing);
+  for (int g = 0; g < t->goods->count; g++) sum[g] += x->need[g];
 }
 
 /* The parts that the sweep has, and sheaths and inner faces, which it does not. */
 void types_cost_needs(const types_cost *t, int of_class, const wall *w, long long *need) {
-  wall framing = bare(w), more = framing;
+  part_scratch x = scratch_create(t, t->arena);
+  wall framing = bare(w), more = framing, without = framing;
+  part_of of = {&framing, NULL, false};
   for (int g = 0; g < t->goods->count; g++) need[g] = 0;
-  add_part_needs(t, of_class, &framing, NULL, false, need);
+  add_part_needs(t, of_class, &of, &x, need);
+  of = (part_of){&more, &without, false};
   memcpy(more.fill, w->fill, sizeof more.fill);
-  add_part_needs(t, of_class, &more, &framing, false, need);
+  add_part_needs(t, of_class, &of, &x, need);
   more = framing;
   memcpy(more.mount, w->mount, sizeof more.mount);
-  add_part_needs(t, of_class, &more, &framing, false, need);
+  add_part_needs(t, of_class, &of, &x, need);
   more = framing;
   memcpy(more.sheath, w->sheath, sizeof more.sheath);
   memcpy(more.inner, w->inner, sizeof more.inner);
-  add_part_needs(t, of_class, &more, &framing, false, need);
+  add_part_needs(t, of_class, &of, &x, need);
+  memcpy(without.mount, w->mount, sizeof without.mount); /* what leaves are screwed to */
+  of.leaf = true;
   for (int s = 0; s < 2; s++) {
-    more = framing;
-    memcpy(more.mount, w->mount, sizeof more.mount); /* what the leaf is screwed to */
-    wall without = more;
+    more = without;
     more.side[s] = w->side[s];
-    add_part_needs(t, of_class, &more, &without, true, need);
+    add_part_needs(t, of_class, &of, &x, need);
   }
 }
 

@@ -50,12 +50,14 @@ const cost_part *types_cost_leaf(const types_cost *t, int core, int side, int le
 /* What a wall needs in every class. */
 typedef struct types_needs {
   int count, cap;
-  int *item;         /* of the goods, rising */
-  long long *amount; /* [item * classes + class], millionths */
+  bool sided;           /* as drawn and turned it needs different amounts */
+  int *item;            /* of the goods, rising */
+  long long *amount[2]; /* [item * classes + class], millionths: as drawn; where sided, turned */
 } types_needs;
-/* Adds up those of its parts (NULL where there is none). `out` zeroed before its first use; its
- * memory is of `a` and used again. */
-void types_needs_of(const types_cost *t, arena *a, const cost_part *const part[PARTS], types_needs *out);
+/* Adds up those of its parts (NULL where there is none), as drawn and turned. `out` zeroed before its
+ * first use; its memory is of `a` and used again. */
+void types_needs_of(const types_cost *t, arena *a, const cost_part *part[2][PARTS],
+                    types_needs *out);
 /* The same numbers in memory of their own. */
 types_needs types_needs_copy(arena *a, const types_needs *n, int classes);
 /* All walls of the class built as `w`, its side A at the class's side A: cost and floor value

@@ -5,96 +5,92 @@
 
 enum { FIRST_ENTRIES = 256 };
 
-void types_front_init(types_front *f, arena *a, const types_cost *cost, const goods *g, int classes,
-                      int depth) {
-  *f = (types_front){
-      .arena = a, .cost = cost, .goods = g, .classes = classes, .depth = depth};
-  f->extra = arena_array(a, (size_t)classes, sizeof *f->extra);
+void types_front_init(types_front *f, arena *a, const types_cost *cost, const goods *g,
+                      int all_classes) {
+  *f = (types_front){.arena = a, .cost = cost, .goods = g, .all_classes = all_classes};
+  f->extra = arena_array(a, (size_t)all_classes, sizeof *f->extra);
 }
 
 /* ---- goods ---- */
 
 static void add_up_needs(types_front *f, types_entry *e) {
-  if (e->needed) return;
-  for (int way = 0; way < 2; way++) types_needs_of(f->cost, f->arena, e->part[way], &e->needs[way]);
+  if (!e->needed) types_needs_of(f->cost, f->arena, e->part, &e->needs);
   e->needed = true;
 }
 
-static const long long *need_of(const types_needs *n, int item, int classes) {
-  for (int i = 0; i < n->count && n->item[i] <= item; i++)
-    if (n->item[i] == item) return n->amount + (size_t)i * (size_t)classes;
-  return NULL;
+/* What an entry needs of an item, per class; `at` past its items: nothing. */
+typedef struct item_need {
+  const long long *straight, *turned; /* NULL: none */
+  const ask_set *perhaps;
+} item_need;
+
+static item_need need_at(const types_front *f, const types_entry *e, int at, bool has) {
+  item_need n = {NULL, NULL, &e->perhaps};
+  if (!has) return n;
+  size_t from = (size_t)at * (size_t)f->all_classes;
+  n.straight = n.turned = e->needs.amount[0] + from;
+  if (e->needs.sided) n.turned = e->needs.amount[1] + from;
+  return n;
 }
 
-/* The need of a class that may take the wall: false where it depends on which way round. */
-static bool need_in(const types_entry *e, const long long *const of[2], int c, long long *need) {
-  long long straight = of[0] ? of[0][c] : 0, turned = of[1] ? of[1][c] : 0;
-  bool may_straight = ask_set_has(&e->perhaps, c), may_turn = ask_set_has(&e->perhaps, ASK_TURNED + c);
-  *need = may_straight ? straight : turned;
-  return straight == turned || !(may_straight && may_turn);
+/* The need in a class; false where it depends on which way round the wall will stand. */
+static bool need_in(const item_need *n, int c, long long *need) {
+  *need = n->straight ? n->straight[c] : 0;
+  if (n->straight == n->turned || n->straight[c] == n->turned[c]) return true;
+  bool straight = ask_set_has(n->perhaps, c), turned = ask_set_has(n->perhaps, ASK_TURNED + c);
+  if (turned) *need = n->turned[c];
+  return !(straight && turned);
 }
 
-static void add_item(types_front *f, const types_entry *x, const types_entry *y, int item) {
-  const long long *of_x[2], *of_y[2];
-  const goods_price *p = &f->goods->price[item];
-  for (int way = 0; way < 2; way++) {
-    of_x[way] = need_of(&x->needs[way], item, f->classes);
-    of_y[way] = need_of(&y->needs[way], item, f->classes);
-  }
-  for (int c = 0; c < f->classes; c++) {
+static void add_item(types_front *f, const types_entry *y, const goods_price *price,
+                     const item_need *of_x, const item_need *of_y) {
+  for (int i = 0; i < y->classes; i++) {
     long long is, was;
-    if (!ask_set_class(&y->perhaps, c)) continue;
-    if (!need_in(x, of_x, c, &is) || !need_in(y, of_y, c, &was))
-      f->extra[c] = INFINITY;
+    bool known = need_in(of_x, y->of[i], &is);
+    if (!need_in(of_y, y->of[i], &was) || !known)
+      f->extra[i] = INFINITY;
     else if (is != was)
-      f->extra[c] += goods_worst(p, (double)was * TYPES_NEED_UNIT, (double)is * TYPES_NEED_UNIT);
+      f->extra[i] +=
+          goods_worst(price, (double)was * TYPES_NEED_UNIT, (double)is * TYPES_NEED_UNIT);
   }
 }
 
-/* What goods bought for the whole project may make of the difference between the two, per class,
- * over their lowest prices. */
+/* What goods bought for the whole project may make of the difference between the two, over their
+ * lowest prices. */
 static void set_extra(types_front *f, types_entry *x, types_entry *y) {
-  for (int c = 0; c < f->classes; c++) f->extra[c] = 0;
-  if (f->goods->count == 0) return;
   add_up_needs(f, x);
   add_up_needs(f, y);
-  for (int way = 0; way < 2; way++) {
-    const types_needs *p = &x->needs[way], *q = &y->needs[way];
-    for (int i = 0; i < p->count; i++)
-      if (way == 0 || !need_of(&x->needs[0], p->item[i], f->classes)) add_item(f, x, y, p->item[i]);
-    for (int i = 0; i < q->count; i++) { /* those that only y needs */
-      bool seen = need_of(&x->needs[0], q->item[i], f->classes) ||
-                  need_of(&x->needs[1], q->item[i], f->classes) ||
-                  (way == 1 && need_of(&y->needs[0], q->item[i], f->classes));
-      if (!seen) add_item(f, x, y, q->item[i]);
-    }
+  for (int i = 0; i < y->classes; i++) f->extra[i] = 0;
+  const types_needs *p = &x->needs, *q = &y->needs;
+  for (int i = 0, j = 0; i < p->count || j < q->count;) {
+    bool in_x = i < p->count && (j == q->count || p->item[i] <= q->item[j]);
+    bool in_y = j < q->count && (i == p->count || q->item[j] <= p->item[i]);
+    int item = in_x ? p->item[i] : q->item[j];
+    item_need of_x = need_at(f, x, i, in_x), of_y = need_at(f, y, j, in_y);
+    add_item(f, y, &f->goods->price[item], &of_x, &of_y);
+    i += in_x;
+    j += in_y;
   }
 }
 
 /* ---- which makes which needless ---- */
 
-static bool no_dearer(const double *worst, const double *best, int classes) {
-  for (int c = 0; c < classes; c++)
-    if (worst[c] > best[c]) return false;
-  return true;
-}
-
-static bool no_nearer_to_targets(const types_entry *x, const types_entry *y, int classes) {
-  if (!x->margin_least) return true;
-  for (int c = 0; c < classes; c++)
-    if (ask_set_class(&y->perhaps, c) && x->margin_least[c] < y->margin_most[c]) return false;
-  return true;
-}
-
 /* Whether x, put in the place of y everywhere, costs no more and keeps every rule. */
 static bool beats(types_front *f, types_entry *x, types_entry *y) {
-  if (!no_dearer(x->worst, y->best, f->classes)) return false;
+  for (int i = 0; i < y->classes; i++)
+    if (x->worst[y->of[i]] > y->best[i]) return false;
   if (x->group != y->group || x->thickness_nm > y->thickness_nm) return false;
-  if (!no_nearer_to_targets(x, y, f->classes)) return false;
+  for (int i = 0; x->margin_least && i < y->classes; i++)
+    if (x->margin_least[y->of[i]] < y->margin_most[y->of[i]]) return false;
+  if (f->goods->count == 0) return true;
   set_extra(f, x, y);
-  for (int c = 0; c < f->classes; c++)
-    if (ask_set_class(&y->perhaps, c) && !(x->worst[c] + f->extra[c] <= y->best[c])) return false;
+  for (int i = 0; i < y->classes; i++)
+    if (!(x->worst[y->of[i]] + f->extra[i] <= y->best[i])) return false;
   return true;
+}
+
+static int weight(const types_entry *e) {
+  return e->spare ? BEATEN_BY_SPARE : BEATEN;
 }
 
 bool types_front_refuses(types_front *f, types_entry *e, int *beaten) {
@@ -103,52 +99,52 @@ bool types_front_refuses(types_front *f, types_entry *e, int *beaten) {
     types_entry *x = f->item[i];
     if (!beats(f, x, e)) continue;
     /* What beat one wall is apt to beat the next: nearer to the start it is found sooner. */
-    int to = i / 2, times = f->beaten[i];
+    int to = i / 2, weighs = f->beaten[i];
     f->item[i] = f->item[to];
     f->beaten[i] = f->beaten[to];
     f->item[to] = x;
-    f->beaten[to] = times;
-    if (++*beaten == f->depth) return true;
+    f->beaten[to] = weighs;
+    *beaten += weight(x);
+    if (*beaten >= BEATEN) return true;
   }
   return false;
 }
 
 /* ---- keeping ---- */
 
+static void *copied(arena *a, const void *from, size_t count, size_t size) {
+  void *to = arena_array(a, count, size);
+  if (count > 0) memcpy(to, from, count * size);
+  return to;
+}
+
 static types_entry *copy_of(types_front *f, types_entry *e) {
   types_entry *k = arena_alloc(f->arena, sizeof *k);
-  size_t n = (size_t)f->classes;
-  *k = *e;
-  k->worst = arena_array(f->arena, n, sizeof *k->worst);
-  k->best = arena_array(f->arena, n, sizeof *k->best);
-  memcpy(k->worst, e->worst, n * sizeof *k->worst);
-  memcpy(k->best, e->best, n * sizeof *k->best);
-  if (e->margin_least) {
-    k->margin_least = arena_array(f->arena, n, sizeof *k->margin_least);
-    k->margin_most = arena_array(f->arena, n, sizeof *k->margin_most);
-    memcpy(k->margin_least, e->margin_least, n * sizeof *k->margin_least);
-    memcpy(k->margin_most, e->margin_most, n * sizeof *k->margin_most);
-  }
+  size_t all = (size_t)f->all_classes, n = (size_t)e->classes;
   add_up_needs(f, e);
-  k->needed = true;
-  for (int way = 0; way < 2; way++)
-    k->needs[way] = types_needs_copy(f->arena, &e->needs[way], f->classes);
+  *k = *e;
+  k->of = copied(f->arena, e->of, n, sizeof *e->of);
+  k->best = copied(f->arena, e->best, n, sizeof *e->best);
+  k->worst = copied(f->arena, e->worst, all, sizeof *e->worst);
+  k->needs = types_needs_copy(f->arena, &e->needs, f->all_classes);
+  if (!e->margin_least) return k;
+  k->margin_least = copied(f->arena, e->margin_least, all, sizeof *e->margin_least);
+  k->margin_most = copied(f->arena, e->margin_most, all, sizeof *e->margin_most);
   return k;
 }
 
 static void drop_beaten(types_front *f, types_entry *e) {
   int kept = 0;
   for (int i = 0; i < f->count; i++) {
-    if (beats(f, e, f->item[i])) f->beaten[i]++;
-    if (f->beaten[i] == f->depth) continue;
+    if (beats(f, e, f->item[i])) f->beaten[i] += weight(e);
+    if (f->beaten[i] >= BEATEN) continue;
     f->item[kept] = f->item[i];
     f->beaten[kept++] = f->beaten[i];
   }
   f->count = kept;
 }
 
-void types_front_add(types_front *f, types_entry *e, int beaten) {
-  if (f->depth > 0) drop_beaten(f, e);
+static void append(types_front *f, types_entry *e, int beaten) {
   if (f->count == f->cap) {
     int cap = f->cap ? 2 * f->cap : FIRST_ENTRIES;
     f->item = arena_grow(f->arena, f->item, (size_t)f->cap * sizeof *f->item,
@@ -157,6 +153,16 @@ void types_front_add(types_front *f, types_entry *e, int beaten) {
                            (size_t)cap * sizeof *f->beaten);
     f->cap = cap;
   }
-  f->item[f->count] = copy_of(f, e);
+  f->item[f->count] = e;
   f->beaten[f->count++] = beaten;
+}
+
+void types_front_add(types_front *f, types_entry *e, int beaten) {
+  types_entry *kept = copy_of(f, e);
+  drop_beaten(f, kept);
+  append(f, kept, beaten);
+}
+
+void types_front_keep(types_front *f, types_entry *e) {
+  append(f, copy_of(f, e), 0);
 }

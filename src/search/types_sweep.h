@@ -21,7 +21,8 @@ typedef struct types_sweep {
   const kernel_leaves *leaves;
   const char **group; /* framing groups by name */
   int groups;
-  int *group_of;     /* per frame */
+  int *group_of;      /* per frame */
+  int *order;         /* cores, cheapest for the whole project first */
   types_entry **item; /* what is left, in no order that means anything */
   int count;
   long long walls, rated;
