@@ -14,3 +14,4 @@ for name in $sections; do
   section "$name" >"$source/tests/golden/$name.svg.new"
   mv "$source/tests/golden/$name.svg.new" "$source/tests/golden/$name.svg"
 done
+SEPTUM_GOLDEN=write CK_FORK=no "$build/bin/test_report_chart_golden" >/dev/null

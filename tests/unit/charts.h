@@ -5,6 +5,7 @@
 
 #include <check.h>
 #include <setjmp.h>
+#include <stdint.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -121,6 +122,32 @@ static inline trim_answer *trim(const char *line) {
   return found;
 }
 
+/* ---- what may come ---- */
+
+static uint32_t dice_state;
+static inline unsigned dice(unsigned below) {
+  dice_state = dice_state * 1664525u + 1013904223u;
+  return (dice_state >> 8) % below;
+}
+
+static const char *const awkward[] = {
+    "",
+    "x",
+    "<script>alert(1)</script>",
+    "a \"name\" & 'another'",
+    "\xD7\xA7\xD7\x99\xD7\xA8 \xD7\x92\xD7\x91\xD7\xA1",
+    "WWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWW",
+    "a name of many words that goes on and on until it has passed one hundred letters and still goes on",
+    "\xFF\xFE broken bytes \x01",
+};
+enum { AWKWARD = sizeof awkward / sizeof awkward[0] };
+
+static inline long long awkward_cents(void) {
+  static const long long size[] = {0, 1, 99, 12345, 9999999, 123456789012LL, 900000000000000000LL / 8};
+  long long most = size[dice(7)];
+  return most == 0 ? 0 : most - (long long)dice(7) * (most / 10);
+}
+
 /* ---- a chart taken apart ---- */
 
 enum { PIECES_MOST = 4000, WORDS_MOST = 600 };
@@ -222,6 +249,76 @@ static inline void check_layout(const char *drawn, const char *what) {
       ck_assert_msg(apart, "%s: \"%s\" stands on \"%s\"", what, p.text[i].value, p.text[k].value);
     }
   }
+}
+
+/* ---- well-formed ---- */
+
+static inline bool name_letter(char c) {
+  return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') || (c >= '0' && c <= '9') || c == '-' ||
+         c == ':';
+}
+
+/* After an ampersand: an entity of XML or a number. */
+static inline bool is_entity(const char *p) {
+  static const char *const known[] = {"amp;", "lt;", "gt;", "quot;", "apos;", "#"};
+  for (size_t i = 0; i < sizeof known / sizeof known[0]; i++)
+    if (strncmp(p, known[i], strlen(known[i])) == 0) return true;
+  return false;
+}
+
+/* Attributes up to the end of a tag: name="value", values without < and bare &. */
+static inline const char *check_attributes(const char *p) {
+  while (*p == ' ') {
+    p++;
+    if (*p == '/' || *p == '>') break;
+    ck_assert_msg(name_letter(*p), "attribute: %.40s", p);
+    while (name_letter(*p)) p++;
+    ck_assert_msg(p[0] == '=' && p[1] == '"', "attribute: %.40s", p);
+    for (p += 2; *p != '"'; p++)
+      ck_assert_msg(*p && *p != '<' && (*p != '&' || is_entity(p + 1)), "value: %.40s", p);
+    p++;
+  }
+  return p;
+}
+
+/* XML by its grammar as far as charts use it, and no number that is none. The golden charts are
+ * read by a parser of its own besides (tests/golden/check_charts.sh). */
+static inline void check_well_formed(const char *drawn) {
+  enum { DEEP = 40 };
+  const char *open[DEEP];
+  size_t length[DEEP];
+  int depth = 0;
+  for (const char *p = drawn; *p;) {
+    ck_assert_msg((unsigned char)*p >= 0x20 || *p == '\n', "control character");
+    if (*p == '&') ck_assert_msg(is_entity(p + 1), "entity: %.40s", p);
+    ck_assert_msg(*p != '>', "bare >: %.40s", p);
+    if (*p++ != '<') continue;
+    bool closing = *p == '/';
+    if (closing) p++;
+    const char *name = p;
+    while (name_letter(*p)) p++;
+    size_t n = (size_t)(p - name);
+    ck_assert_msg(n > 0, "tag: %.40s", p);
+    if (closing) {
+      ck_assert_msg(depth > 0 && length[depth - 1] == n && !strncmp(open[depth - 1], name, n),
+                    "closes what is not open: %.40s", name);
+      depth--;
+    } else {
+      p = check_attributes(p);
+      if (*p == '/')
+        p++;
+      else {
+        ck_assert_int_lt(depth, DEEP);
+        open[depth] = name;
+        length[depth++] = n;
+      }
+    }
+    ck_assert_msg(*p == '>', "tag end: %.40s", p);
+    p++;
+  }
+  ck_assert_int_eq(depth, 0);
+  ck_assert_ptr_null(strstr(drawn, "nan"));
+  ck_assert_ptr_null(strstr(drawn, "=\"inf"));
 }
 
 static inline text *new_picture(void) {

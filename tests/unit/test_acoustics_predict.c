@@ -278,6 +278,32 @@ static const struct {
     {"typex-16 | rc@610 | steel-92-18@610, stone-50 | typex-16", 2},
 };
 
+/* What a chart draws as thin lines. */
+static const char *const path_lines[] = {
+    "typex-16 | wood-89@406, glass-89 | typex-16",
+    "2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16",
+    "typex-16 | wood-89-double@406, glass-89, glass-89 | typex-16",
+    "typex-16 | rc@610 | on osb-11 | wood-89@406, glass-89 | typex-16",
+    "typex-16 | steel-64-18-stag-102@610 | typex-16",
+};
+
+START_TEST(energies_of_the_paths_add_up_to_the_curve) {
+  const double last_digits_db = 1e-9;
+  wall w = parsed(path_lines[_i]);
+  model_wall m;
+  double air[BANDS], bridge[BANDS];
+  prediction p = predicted(&w);
+  predict_model(cat, cat->acoustics, &w, &m);
+  model_paths(&m, cat->acoustics, air, bridge);
+  ck_assert(m.bridge == BRIDGE_LINE || isinf(bridge[0]));
+  for (int b = 0; b < BANDS; b++) {
+    double tau = pow(10, -air[b] / 10) + pow(10, -bridge[b] / 10) +
+                 pow(10, -cat->acoustics->ceiling_db / 10);
+    ck_assert_double_eq_tol(-10 * log10(tau), p.tl_db[b], last_digits_db);
+  }
+}
+END_TEST
+
 START_TEST(outside_is_said_and_widens) {
   wall w = parsed(ranges[_i].line);
   prediction p = predicted(&w);
@@ -305,6 +331,8 @@ static Suite *suite(void) {
   tcase_add_loop_test(t, directions, 0, (int)(sizeof steps / sizeof steps[0]));
   tcase_add_test(t, twenty_gauge_is_where_the_trade_has_it);
   tcase_add_test(t, short_circuit_takes_most_of_a_channel_away);
+  tcase_add_loop_test(t, energies_of_the_paths_add_up_to_the_curve, 0,
+                      (int)(sizeof path_lines / sizeof path_lines[0]));
   tcase_add_loop_test(t, outside_is_said_and_widens, 0, (int)(sizeof ranges / sizeof ranges[0]));
   suite_add_tcase(s, t);
   return s;

@@ -23,8 +23,12 @@ static void set_scene(scene *x, unsigned seed) {
   space_build(shop.memory, &x->context, &x->space);
   x->all = judge_all(&x->space);
   x->keep = 0;
-  for (int i = 0; i < x->all.count; i++)
-    if (x->all.wall[i].broken == 0) x->all.wall[x->keep++] = x->all.wall[i];
+  for (int i = 0; i < x->all.count; i++) {
+    if (x->all.wall[i].broken != 0) continue;
+    candidate kept = x->all.wall[i];
+    x->all.wall[i] = x->all.wall[x->keep];
+    x->all.wall[x->keep++] = kept;
+  }
   sweep_run(shop.memory, &x->space, &x->swept);
 }
 
@@ -123,6 +127,28 @@ START_TEST(the_edge_is_passed_by_none) {
 }
 END_TEST
 
+/* The list holds walls of which the kernel could not be sure: the reference refuses those that miss
+ * the target. */
+START_TEST(a_wall_that_misses_is_no_point) {
+  scene x;
+  cloud found;
+  feasible_block list = {0};
+  set_scene(&x, (unsigned)_i);
+  int misses = 0;
+  for (int i = x.keep; i < x.all.count && list.count < SWEEP_BLOCK; i++) {
+    const candidate *c = &x.all.wall[i];
+    if (c->is.promised_hundredth >= 0) continue;
+    list.wall[list.count++] =
+        (feasible_wall){c->core, (unsigned short)c->face_a, (unsigned short)c->face_b, false};
+    misses++;
+  }
+  x.swept.feasible = &list;
+  cloud_sample(shop.memory, &x.space, &x.swept, MANY, &found);
+  ck_assert_int_eq(found.walls, misses);
+  ck_assert_int_eq(found.count, 0);
+}
+END_TEST
+
 START_TEST(a_promise_on_the_axis) {
   brief b;
   job_defaults(&b);
@@ -143,6 +169,7 @@ static Suite *all_tests(void) {
   tcase_add_loop_test(c, a_sample_of_all_is_all, 0, n);
   tcase_add_loop_test(c, a_small_sample_is_of_walls_that_keep_the_brief, 0, n);
   tcase_add_loop_test(c, the_edge_is_passed_by_none, 0, n);
+  tcase_add_loop_test(c, a_wall_that_misses_is_no_point, 0, n);
   tcase_add_test(c, a_promise_on_the_axis);
   suite_add_tcase(s, c);
   return s;

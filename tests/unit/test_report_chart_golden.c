@@ -152,6 +152,7 @@ START_TEST(as_looked_at) {
   text_char(out, '\n');
   ck_assert(!out->cut);
   check_layout(out->data, row->name);
+  check_well_formed(out->data);
   const char *path = text_format(shop.memory, TEST_ROOT "/tests/golden/charts/%s.svg", row->name);
   const char *asked = getenv("SEPTUM_GOLDEN");
   if (asked && strcmp(asked, "write") == 0) {
