@@ -70,6 +70,13 @@ typedef struct row_values {
   int corners, tees, doors, mark;
 } row_values;
 
+/* Adjacencies met so far: thousands of rows name the same few. */
+enum { ROW_MAX_KNOWN = 64 };
+typedef struct row_known {
+  const char *cell;
+  const target_row *row;
+} row_known;
+
 /* What the reading of a table's rows needs, made once. */
 typedef struct row_reader {
   arena *arena;
@@ -80,6 +87,8 @@ typedef struct row_reader {
   int column[ROW_COLUMNS];  /* of the table; -1 where it is not there */
   double unit[ROW_COLUMNS]; /* SI of one unit that the header names; 0 = none */
   const csv_row *row;       /* the one being read */
+  row_known known[ROW_MAX_KNOWN];
+  int known_count;
 } row_reader;
 
 /* Finds the columns; faults of the header are reported. False after an error. */

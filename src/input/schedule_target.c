@@ -165,7 +165,7 @@ static void report_unknown(row_reader *r, const char *name) {
 
 /* The row of the catalog that the cell names: an id; else the code's own row; else the one
  * guideline's. NULL after a message. */
-static const target_row *find_adjacency(row_reader *r, const char *cell) {
+static const target_row *look_up(row_reader *r, const char *cell) {
   const char *name = with_hyphens(r->arena, cell);
   const target_row *guide = NULL;
   int guides = 0;
@@ -185,6 +185,14 @@ static const target_row *find_adjacency(row_reader *r, const char *cell) {
   else
     report_unknown(r, name);
   return NULL;
+}
+
+static const target_row *find_adjacency(row_reader *r, const char *cell) {
+  for (int i = 0; i < r->known_count; i++)
+    if (text_equal(r->known[i].cell, cell)) return r->known[i].row;
+  const target_row *row = look_up(r, cell);
+  if (row && r->known_count < ROW_MAX_KNOWN) r->known[r->known_count++] = (row_known){cell, row};
+  return row;
 }
 
 /* What an adjacency asks of a wall of this project. */
