@@ -45,6 +45,7 @@ typedef struct plan_how {
   int nodes;      /* most nodes of branch and bound a solve; 0 = no limit; for repeatable tests */
   bool margin;    /* best worst margin within the budget, then least cost */
   bool plain;     /* the whole model to the solver, nothing found or ruled out before: for tests */
+  bool no_conflicts;        /* INFEASIBLE need not say why: for the points of a curve */
   const int *start;         /* a choice to begin with, per class; may be NULL, may break rules */
   const volatile int *stop; /* ends early where it turns non-zero; may be NULL */
   /* currency; HUGE_VAL before the first plan; from another thread; must return. May be NULL. */
@@ -82,7 +83,8 @@ typedef struct plan_solution {
   int margin_bound;      /* with `margin`: no plan within the budget has a better worst margin */
   plan_buy *buy;         /* per item */
   unsigned conflict[PLAN_MAX_CONFLICTS]; /* INFEASIBLE: the smallest sets of plan_rule bits that
-                                            cannot hold together; none when a class has no type */
+                                            cannot hold together; none when a class has no type, or
+                                            none were asked */
   int conflict_count;
   bool conflicts_whole; /* false: time or nodes ran out before all sets were settled */
 } plan_solution;

@@ -28,7 +28,9 @@ typedef struct search {
   bool asked;
   double unsettled; /* the least bound of parts that were left; HUGE_VAL none was */
   double root;      /* bound of the whole */
+  double told;      /* the least cost that progress told */
   int parts;
+  plan_part below[DEEPEST]; /* the part at work a depth */
 } search;
 
 static bool no_way(const plan_case *x) {
@@ -49,10 +51,22 @@ static bool has_enough(const search *s) {
   return s->asked && s->guess.found && s->guess.tally.amount <= s->limit;
 }
 
-static void tell_progress(const search *s) {
+/* Found only falls and the bound is that of the whole, whatever part is at work. */
+static void tell(search *s, double found) {
   const plan_how *how = s->call->how;
-  if (how->progress)
-    how->progress(how->user, s->guess.found ? s->guess.tally.amount : HUGE_VAL, s->root);
+  s->told = fmin(s->told, found);
+  if (how->progress) how->progress(how->user, s->told, fmin(s->root, s->told));
+}
+
+static void tell_progress(search *s) {
+  tell(s, s->guess.found ? s->guess.tally.amount : HUGE_VAL);
+}
+
+/* What the solver tells of a part. */
+static void relay(void *user, double found, double bound) {
+  search *s = user;
+  (void)bound;
+  if (found < s->told) tell(s, found);
 }
 
 /* ---- whether there is any plan ---- */
@@ -88,7 +102,11 @@ static bool find_any(search *s, plan_least *out) {
   plan_case rules = *s->x;
   rules.open = needed_types(s->call->arena, s->x);
   plan_shape bare = {.bare = true};
-  if (!plan_ask_solver(s->call, &rules, &bare, NULL, HUGE_VAL, false, out)) return false;
+  plan_call quiet_call = *s->call;
+  plan_how quiet = *s->call->how;
+  quiet.progress = NULL; /* its costs are none */
+  quiet_call.how = &quiet;
+  if (!plan_ask_solver(&quiet_call, &rules, &bare, NULL, HUGE_VAL, false, out)) return false;
   if (out->found) (void)plan_guess_offer(&s->guess, out->type_of);
   out->found = false;
   out->bound = -HUGE_VAL;
@@ -121,7 +139,12 @@ static bool prove(search *s, const plan_part *part) {
   const int *start = fits_part(s, part) ? s->guess.best : NULL;
   double limit = ceiling(s);
   if (limit < HUGE_VAL) limit += sure;
-  if (!plan_ask_solver(s->call, &x, &shape, start, limit, s->asked, &found)) return false;
+  plan_call part_call = *s->call;
+  plan_how how = *s->call->how;
+  if (how.progress) how.progress = relay;
+  how.user = s;
+  part_call.how = &how;
+  if (!plan_ask_solver(&part_call, &x, &shape, start, limit, s->asked, &found)) return false;
   if (found.found) (void)plan_guess_offer(&s->guess, found.type_of);
   bool beyond = found.status == SOLVER_INFEASIBLE || found.bound > limit;
   if (found.status != SOLVER_OPTIMAL && !beyond && !has_enough(s))
@@ -146,11 +169,11 @@ static bool split(search *s, const plan_part *part, int depth) {
   for (int k = 0; k < tiers; k++) {
     int tier = k == 0 ? first : k <= first ? k - 1 : k;
     if (!(part->tiers[item] & 1u << tier)) continue;
-    plan_part one;
-    plan_part_copy(s->relax, part, &one);
-    one.tiers[item] = 1u << tier;
-    if (tier > 0) one.price[item] = s->x->terms->p->item[item].tier[tier - 1].price;
-    if (!settle(s, &one, depth + 1)) return false;
+    plan_part *one = &s->below[depth];
+    plan_part_copy(s->relax, part, one);
+    one->tiers[item] = 1u << tier;
+    if (tier > 0) one->price[item] = s->x->terms->p->item[item].tier[tier - 1].price;
+    if (!settle(s, one, depth + 1)) return false;
   }
   return true;
 }
@@ -232,7 +255,7 @@ static bool search_plan(search *s, const int *start, plan_least *out) {
 bool plan_least_cost(const plan_call *call, const plan_case *x, const int *start,
                      long long enough_cents, plan_least *out) {
   const plan_problem *p = x->terms->p;
-  search s = {.call = call, .x = x, .unsettled = HUGE_VAL, .root = -HUGE_VAL};
+  search s = {.call = call, .x = x, .unsettled = HUGE_VAL, .root = -HUGE_VAL, .told = HUGE_VAL};
   *out = (plan_least){.status = SOLVER_INFEASIBLE, .bound = -HUGE_VAL};
   out->type_of = arena_array(call->arena, (size_t)p->classes, sizeof *out->type_of);
   s.asked = enough_cents > LLONG_MIN;

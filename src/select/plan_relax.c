@@ -134,8 +134,13 @@ void plan_part_whole(plan_relax *r, plan_part *out) {
 
 void plan_part_copy(plan_relax *r, const plan_part *from, plan_part *out) {
   const plan_problem *p = r->x->terms->p;
+  if (!out->open) part_room(r, out);
+  plan_part room = *out;
   *out = *from;
-  part_room(r, out);
+  out->open = room.open;
+  out->tiers = room.tiers;
+  out->wage = room.wage;
+  out->price = room.price;
   memcpy(out->open, from->open, (size_t)p->classes * (size_t)p->types * sizeof *out->open);
   memcpy(out->tiers, from->tiers, (size_t)p->items * sizeof *out->tiers);
   memcpy(out->wage, from->wage, (size_t)p->classes * sizeof *out->wage);

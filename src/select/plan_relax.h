@@ -22,7 +22,7 @@ typedef struct plan_relax plan_relax;
 plan_relax *plan_relax_make(const plan_call *call, const plan_case *x, plan_guess *g);
 /* All open pairs of the case and all tiers. */
 void plan_part_whole(plan_relax *r, plan_part *out);
-/* A copy to work on. */
+/* A copy to work on, in the memory of `out` where it has some (all zero: none yet). */
 void plan_part_copy(plan_relax *r, const plan_part *from, plan_part *out);
 /* Raises the bound of a part by `steps` of the subgradient, tries plans on the way, and closes
  * pairs that no plan of the part below `ceiling` uses. */

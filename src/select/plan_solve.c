@@ -101,5 +101,6 @@ bool plan_solve(arena *a, diag_list *d, const plan_problem *p, const plan_how *h
     out->status = SOLVER_FAILED;
     return false;
   }
-  return out->status != SOLVER_INFEASIBLE || explain_none(&call, out);
+  if (out->status != SOLVER_INFEASIBLE || how->no_conflicts) return true;
+  return explain_none(&call, out);
 }
