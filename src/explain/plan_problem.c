@@ -3,8 +3,6 @@
 
 #include "explain/plan_parts.h"
 
-enum { NEED_PER_UNIT = 1000000 }; /* what types count needs in */
-
 /* ---- what a row costs ---- */
 
 int plan_goods_index(const plan_work *w, int item) {
@@ -84,7 +82,7 @@ static void set_locked_use(plan_work *w, int of_class, plan_type *t, const wall 
     for (int l = 0; l < w->lines->count; l++) {
       const cost_line *line = &w->lines->line[l];
       int goods = line->kind == LINE_MATERIAL ? plan_goods_index(w, line->item) : -1;
-      if (goods >= 0) need[goods] += row->count * line->quantity * NEED_PER_UNIT;
+      if (goods >= 0) need[goods] += row->count * line->quantity;
     }
   }
 }
@@ -203,7 +201,7 @@ static void set_pairs(plan_work *w) {
     floor_m2[k] = use->floor_m2;
     margin[k] = use->margin_hundredth;
     for (size_t i = 0; i < items; i++)
-      need[k * items + i] = t->need[of_class * items + i] / NEED_PER_UNIT;
+      need[k * items + i] = t->need[of_class * items + i];
   }
   p->cents = cents;
   p->need = need;

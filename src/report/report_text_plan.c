@@ -90,7 +90,7 @@ static void put_parts(const report *r, const plan_answer *p, text *out) {
   text t;
   text_init(&t, r->arena, 600);
   text_putf(&t, "Walls %s", report_plan_cents(r, m->walls));
-  if (p->goods_count > 0)
+  if (m->goods > 0)
     text_putf(&t, ", goods that are ordered for the whole project %s", report_plan_cents(r, m->goods));
   if (m->setup > 0) text_putf(&t, ", setting up types %s", report_plan_cents(r, m->setup));
   if (m->floor > 0) text_putf(&t, ", value of the floor under the walls %s", report_plan_cents(r, m->floor));

@@ -267,15 +267,12 @@ double view_plan_probability(const plan_answer *p, int of_class) {
 
 const char *view_plan_misses(const report *r, const plan_answer *p) {
   if (!p->found || p->asked_walls == 0) return "";
-  text n;
-  text_init(&n, r->arena, 100);
-  view_count(&n, p->asked_walls);
   return text_format(
       r->arena,
-      "Of %s walls with a sound target, %s would be expected to miss it in a laboratory's test, %s in a "
-      "test in the building that allows %s points for the field. Walls of one type share its error, so "
-      "most of a type pass or most miss.",
-      n.data, text_of(r->arena, p->miss_laboratory, 1), text_of(r->arena, p->miss_field, 1),
+      "%s with a sound target: %s of them would be expected to miss it in a laboratory's test, %s in a "
+      "test in the building that allows %s points for the field. Walls of one type share its error: "
+      "most of a type pass, or most miss.",
+      view_plan_count(r, p->asked_walls, "wall", "walls"), text_of(r->arena, p->miss_laboratory, 1), text_of(r->arena, p->miss_field, 1),
       text_of(r->arena, r->brief->field_mean, 0));
 }
 

@@ -1,0 +1,1 @@
+$SEPTUM plan --help

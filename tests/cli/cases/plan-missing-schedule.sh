@@ -1,0 +1,2 @@
+echo '{"septum": "project/1", "code": "ibc", "walls": "nowhere.csv"}' >project.json
+$SEPTUM plan project.json

@@ -1,0 +1,1 @@
+$SEPTUM plan "$EXAMPLES/party-wall.json"
