@@ -137,6 +137,38 @@ bool chart_label_near(chart *c, double x, double y, double gap, chart_letter l, 
   return false;
 }
 
+/* ---- notes ---- */
+
+enum { NOTE_PITCH = 14 };
+
+/* The first words of `words` that one line holds; *rest begins with those that follow. */
+static const char *note_line(const report *r, const char *words, const char **rest) {
+  const double room = CHART_WIDTH - 2 * CHART_EDGE;
+  size_t kept = 0;
+  for (size_t i = 1; words[i - 1]; i++) {
+    if (words[i] != ' ' && words[i]) continue;
+    if (kept > 0 && chart_text_width(CHART_SMALL, text_copyn(r->arena, words, i)) > room) break;
+    kept = i;
+  }
+  *rest = words + kept;
+  while (**rest == ' ') ++*rest;
+  return text_copyn(r->arena, words, kept);
+}
+
+double chart_note_height(const report *r, const char *words) {
+  double height = 0;
+  for (; *words; height += NOTE_PITCH) note_line(r, words, &words);
+  return height;
+}
+
+void chart_put_note(chart *c, double y, const char *words) {
+  for (; *words; y += NOTE_PITCH) {
+    const char *line = note_line(c->report, words, &words);
+    chart_label(c, CHART_EDGE, y + chart_letters[CHART_SMALL].size, SVG_START, CHART_SMALL,
+                chart_cut(c, CHART_SMALL, line, CHART_WIDTH - 2 * CHART_EDGE));
+  }
+}
+
 /* ---- marks ---- */
 
 static void hint_words(chart *c, const char *hint) {

@@ -68,6 +68,11 @@ bool chart_label_near(chart *c, double x, double y, double gap, chart_letter l, 
 /* `value` cut to a width of lettering `l`. */
 const char *chart_cut(const chart *c, chart_letter l, const char *value, double width);
 
+/* A note across the picture under a chart, from `y` down, in as many lines as it takes; the height
+ * it will take. */
+double chart_note_height(const report *r, const char *words);
+void chart_put_note(chart *c, double y, const char *words);
+
 /* Marks of five shapes, told apart without colour. */
 typedef enum chart_mark {
   CHART_DOT,

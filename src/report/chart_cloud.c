@@ -81,16 +81,25 @@ static void put_failing_words(const report *r, const explanation *e, text *t) {
   text_char(t, '.');
 }
 
+/* What the points stand for. */
+static const char *sample_words(const report *r, const cloud *c) {
+  text t;
+  text_init(&t, r->arena, 400);
+  text_put(&t, "Points: ");
+  if (c->count < c->walls) text_putf(&t, "%d of ", c->count);
+  text_put(&t, "the ");
+  view_count(&t, c->walls);
+  text_putf(&t, " walls that keep every rule%s.",
+            c->count < c->walls ? ", taken at even steps from the list of them" : "");
+  return t.data;
+}
+
 const char *chart_cloud_words(const report *r, const explanation *e, const cloud *c) {
   text t;
   text_init(&t, r->arena, 8000);
   text_putf(&t, "Cost of a wall over its sound: %s.", sound_title(r));
   if (!e->chosen || c->walls == 0) text_put(&t, " No wall keeps the brief.");
-  if (c->count > 0) {
-    text_putf(&t, " %d points, drawn evenly from the ", c->count);
-    view_count(&t, c->walls);
-    text_put(&t, " walls that keep every rule.");
-  }
+  if (c->count > 0) text_putf(&t, " %s", sample_words(r, c));
   if (c->edge_count > 0) put_edge_words(r, c, &t);
   if (e->chosen) {
     text_put(&t, " The chosen wall costs ");
@@ -256,6 +265,7 @@ void chart_cloud(const report *r, const char *id, const explanation *e, const cl
                            .per = chart_area_name(r),
                            .key = key,
                            .keys = keys_of(e, c, key),
+                           .note = c->count > 0 ? sample_words(r, c) : NULL,
                            .height = 350};
   set_ranges(r, e, c, &head);
   chart_plane_begin(&p->plane, r, &head, out);

@@ -52,9 +52,10 @@ static chart_scale over(const chart_ticks *t, double from, double to) {
 void chart_plane_begin(chart_plane *p, const report *r, const chart_plane_head *head, text *out) {
   double left = CHART_EDGE, right = CHART_WIDTH - CHART_EDGE;
   double key = head->keys > 0 ? chart_key_height(head->key, head->keys, left, right) + 4 : 0;
+  double note = head->note ? chart_note_height(r, head->note) + CHART_EDGE : 0;
   memset(p, 0, sizeof *p);
   set_ticks(p, r, head);
-  chart_begin(&p->chart, r, head->id, head->title, head->words, head->height + key, out);
+  chart_begin(&p->chart, r, head->id, head->title, head->words, head->height + key + note, out);
   chart_patterns(&p->chart);
   chart_put_key(&p->chart, head->key, head->keys, left, CHART_EDGE, right);
   p->frame.x = over(&p->x, left_edge(r, &p->y), CHART_WIDTH - RIGHT);
@@ -62,6 +63,7 @@ void chart_plane_begin(chart_plane *p, const report *r, const chart_plane_head *
   chart_axis_y(&p->chart, &p->frame, &p->y,
                text_format(r->arena, "%s, %s", head->y_words, p->money.words));
   chart_axis_x(&p->chart, &p->frame, &p->x, head->x_title);
+  if (head->note) chart_put_note(&p->chart, key + head->height, head->note);
 }
 
 double chart_plane_x(const chart_plane *p, double value) {

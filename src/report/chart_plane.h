@@ -28,7 +28,8 @@ typedef struct chart_plane_head {
   bool whole;            /* x: whole numbers only */
   const chart_key *key;  /* above the chart */
   int keys;
-  double height;         /* without the key */
+  const char *note;      /* under the chart; NULL = none */
+  double height;         /* without key and note */
 } chart_plane_head;
 
 /* Begins the picture and draws key and axes; the caller draws the rest and calls chart_end. */

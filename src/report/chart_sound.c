@@ -97,6 +97,25 @@ static void put_contour_words(const assessment *x, sound_metric metric, text *t)
             m == METRIC_STC ? " (at most 8)" : "", m == METRIC_STC ? "whole dB" : "tenths");
 }
 
+/* What must be seen with the picture: whose uncertainty the band is. */
+static const char *band_note(const report *r, const assessment *x, sound_metric m) {
+  text t;
+  text_init(&t, r->arena, 1000);
+  text_put(&t, "Pale band: the curve moved up and down by ");
+  text_number(&t, x->predicted.sd[m], 1);
+  text_putf(&t, " dB, the standard deviation of the single number %s, not of each band.",
+            sound_metric_names[m]);
+  sound_metric f = fitted(m);
+  int rating = rating_of(&x->predicted.ratings, f);
+  chart_lack lack = chart_lack_of(f, rating, x->predicted.tl_db);
+  if (lack.sum <= 0) return t.data;
+  text_put(&t, " Hatched: what it lacks of the ");
+  text_putf(&t, "%s of %s %d, ", contour_name(f), sound_metric_names[f], rating);
+  text_number(&t, lack.sum, 1);
+  text_put(&t, " dB in all; 32 may be lacking.");
+  return t.data;
+}
+
 static void put_path_words(const report *r, text *t) {
   text_put(t, " Thin lines: what would pass through the cavity alone, through studs and mounts "
               "alone, and the laboratory's own limit of ");
@@ -113,11 +132,7 @@ const char *chart_sound_words(const report *r, const assessment *x, const chart_
     text_putf(&t, " The wall is published with %s %d: the answer stands on that, the curve is "
                   "predicted all the same.",
               sound_metric_names[fitted(o->metric)], x->evidence.match->stc);
-  text_put(&t, " The pale band is the curve moved up and down by ");
-  put_number(&t, x->predicted.sd[o->metric], 1);
-  text_putf(&t, " dB: the standard deviation of the single number %s for walls of this kind, not "
-                "of each band.",
-            sound_metric_names[o->metric]);
+  text_putf(&t, " %s", band_note(r, x, o->metric));
   if (x->has_composite)
     text_putf(&t, " With the openings of the brief the whole comes to %s %d.",
               sound_metric_names[o->metric], rating_of(&x->composite, o->metric));
@@ -142,6 +157,7 @@ typedef struct picture {
   const assessment *x;
   const chart_sound_options *options;
   chart_frame frame;
+  double foot;              /* of the chart, where the note begins */
   curve curve[MOST_CURVES]; /* the last is the prediction: drawn on top */
   int curves;
   double composite[BANDS], air[BANDS], bridge[BANDS], ceiling[BANDS];
@@ -211,7 +227,7 @@ static void set_frame(picture *p, chart_ticks *ticks) {
   for (int i = 0; i < ticks->count; i++) ticks->value[i] *= GRID_DB;
   p->frame = (chart_frame){
       {0, BANDS - 1, LEFT + 8, CHART_WIDTH - NAMES},
-      {ticks->value[0], ticks->value[ticks->count - 1], p->chart.height - BELOW, TOP}};
+      {ticks->value[0], ticks->value[ticks->count - 1], p->foot - BELOW, TOP}};
 }
 
 static void draw_band(picture *p) {
@@ -309,7 +325,7 @@ static void define_frame(picture *p) {
 
 void chart_sound(const report *r, const char *id, const assessment *x,
                  const chart_sound_options *o, text *out) {
-  const double height = 360;
+  const double height = 350;
   picture *p = arena_alloc(r->arena, sizeof *p);
   chart_ticks ticks;
   p->x = x;
@@ -317,7 +333,10 @@ void chart_sound(const report *r, const char *id, const assessment *x,
   collect(p, r);
   const char *title = text_format(r->arena, "Transmission loss, %s %d", sound_metric_names[o->metric],
                                   rating_of(&x->ratings, o->metric));
-  chart_begin(&p->chart, r, id, title, chart_sound_words(r, x, o), height, out);
+  const char *note = band_note(r, x, o->metric);
+  p->foot = height;
+  chart_begin(&p->chart, r, id, title, chart_sound_words(r, x, o),
+              height + chart_note_height(r, note) + CHART_EDGE, out);
   set_frame(p, &ticks);
   chart_patterns(&p->chart);
   define_frame(p);
@@ -325,5 +344,6 @@ void chart_sound(const report *r, const char *id, const assessment *x,
   chart_axis_bands(&p->chart, &p->frame);
   draw_curves(p);
   draw_names(p);
+  chart_put_note(&p->chart, p->foot, note);
   chart_end(&p->chart);
 }

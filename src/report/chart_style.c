@@ -27,7 +27,7 @@ static const char areas[] =
     ".c-two{fill:var(--wash);stroke:var(--key);stroke-width:1}\n"
     ".c-three{fill:var(--rule)}\n"
     ".c-four{fill:var(--warm);fill-opacity:.45}\n"
-    ".c-cloud{fill:var(--key);fill-opacity:.28}\n"
+    ".c-cloud{fill:var(--key);fill-opacity:.4}\n"
     ".c-full{fill:var(--key);stroke:var(--paper);stroke-width:1}\n"
     ".c-open{fill:var(--paper);stroke:var(--key);stroke-width:1.5}\n"
     ".c-best{fill:var(--warm);stroke:var(--paper);stroke-width:1.2}\n"

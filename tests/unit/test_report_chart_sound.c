@@ -293,7 +293,7 @@ START_TEST(words_say_what_counts) {
   const assessment *x = rate("2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16");
   const chart_sound_options o = {METRIC_STC, true};
   const char *said = chart_sound_words(&shop.report, x, &o);
-  ck_assert_ptr_nonnull(strstr(said, "the standard deviation of the single number STC"));
+  ck_assert_ptr_nonnull(strstr(said, "the standard deviation of the single number STC, not of each band"));
   ck_assert_ptr_nonnull(strstr(said, "not of each band"));
   ck_assert_ptr_nonnull(strstr(said, text_format(shop.memory, "contour of STC %d stands at %d dB",
                                                  x->predicted.ratings.stc,
