@@ -227,16 +227,17 @@ static void put_terms(markup_json *j, const plan_answer *p) {
 }
 
 static void put_curve(markup_json *j, const report *r, const plan_answer *p) {
+  plan_point point[VIEW_PLAN_POINTS];
+  int count = view_plan_curve(p, point);
   markup_json_array(j, "curve", false);
-  for (int i = 0; i < PLAN_CURVE; i++) {
-    const plan_point *at = &p->curve[i];
-    if (!at->done) continue;
-    bool both = i > 0 && at->found && p->curve[i - 1].found;
+  for (int i = 0; i < count; i++) {
+    const plan_point *at = &point[i];
+    bool both = i > 0 && at->found && point[i - 1].found;
     markup_json_object(j, NULL, true);
-    markup_json_integer(j, "max_types", i + 1);
+    markup_json_integer(j, "max_types", at->max_types);
     markup_json_string(j, "status", view_plan_status(at->status));
     put_cents_or_null(j, "cost_total", at->found, at->cost_cents);
-    put_cents_or_null(j, "saves", both, both ? p->curve[i - 1].cost_cents - at->cost_cents : 0);
+    put_cents_or_null(j, "saves", both, both ? point[i - 1].cost_cents - at->cost_cents : 0);
     markup_json_integer(j, "types", at->types);
     put_margin(j, p, at->found, at->worst_margin);
     markup_json_close(j);

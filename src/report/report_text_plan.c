@@ -244,12 +244,11 @@ static void put_type(const report *r, const plan_answer *p, const plan_used *u, 
 
 enum { POINT_END = 20, COST_END = 36, SAVES_END = 52, NOTE_AT = 55 };
 
-static const char *point_note(const report *r, const plan_answer *p, int i) {
-  const plan_point *at = &p->curve[i];
+static const char *point_note(const report *r, const plan_answer *p, const plan_point *at) {
   text t;
   text_init(&t, r->arena, 200);
-  if (i + 1 == p->project->max_types) text_put(&t, "the plan");
-  if (at->types < i + 1) text_putf(&t, "%suses %d", t.len ? ", " : "", at->types);
+  if (at->max_types == p->project->max_types || at->types > PLAN_CURVE) text_put(&t, "the plan");
+  if (at->types < at->max_types) text_putf(&t, "%suses %d", t.len ? ", " : "", at->types);
   if (p->project->aim == AIM_MARGIN)
     text_putf(&t, "%smargin %s dB", t.len ? ", " : "",
               text_of(r->arena, at->worst_margin * 0.01, 2));
@@ -257,37 +256,35 @@ static const char *point_note(const report *r, const plan_answer *p, int i) {
   return t.data;
 }
 
-static void put_point(const report *r, const plan_answer *p, int i, text *out) {
-  const plan_point *at = &p->curve[i];
-  bool both = i > 0 && at->found && p->curve[i - 1].found;
+/* `before` NULL on the first. */
+static void put_point(const report *r, const plan_answer *p, const plan_point *before,
+                      const plan_point *at, text *out) {
   page_label(out, "");
-  page_right(out, POINT_END, text_format(r->arena, "%d", i + 1));
+  page_right(out, POINT_END, text_format(r->arena, "%d", at->max_types));
   if (!at->found) {
     text_pad(out, POINT_END + 2);
-    text_put(out, at->done && at->status == SOLVER_INFEASIBLE ? "no plan keeps every rule\n"
-                                                              : "none found within the time\n");
+    text_put(out, at->status == SOLVER_INFEASIBLE ? "no plan keeps every rule\n"
+                                                  : "none found within the time\n");
     return;
   }
   page_right(out, COST_END, report_plan_cents(r, at->cost_cents));
-  if (both)
-    page_right(out, SAVES_END,
-               report_plan_cents(r, p->curve[i - 1].cost_cents - at->cost_cents));
-  const char *note = point_note(r, p, i);
+  if (before && before->found)
+    page_right(out, SAVES_END, report_plan_cents(r, before->cost_cents - at->cost_cents));
+  const char *note = point_note(r, p, at);
   if (note[0]) text_pad(out, NOTE_AT);
   text_putf(out, "%s\n", note);
 }
 
 static void put_curve(const report *r, const plan_answer *p, text *out) {
-  bool any = false;
-  for (int i = 0; i < PLAN_CURVE; i++) any = any || p->curve[i].done;
-  if (!any) return;
+  plan_point point[VIEW_PLAN_POINTS];
+  int count = view_plan_curve(p, point);
+  if (count == 0) return;
   text_put(out, "\nHow many");
   page_right(out, POINT_END, "types");
   page_right(out, COST_END, text_format(r->arena, "cost %s", r->prices->currency));
-  page_right(out, SAVES_END, "saved by one more");
+  page_right(out, SAVES_END, "less than above");
   text_char(out, '\n');
-  for (int i = 0; i < PLAN_CURVE; i++)
-    if (p->curve[i].done) put_point(r, p, i, out);
+  for (int i = 0; i < count; i++) put_point(r, p, i > 0 ? &point[i - 1] : NULL, &point[i], out);
   const char *stop = view_plan_stop(r, p);
   if (stop[0]) page_line(out, "", stop);
 }

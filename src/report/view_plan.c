@@ -163,24 +163,60 @@ static const char *ordinal(const report *r, int n) {
   return n <= PLAN_CURVE ? words[n] : text_format(r->arena, "%dth", n);
 }
 
+int view_plan_curve(const plan_answer *p, plan_point out[VIEW_PLAN_POINTS]) {
+  int count = 0, own = p->project->max_types > 0 ? p->project->max_types : p->type_count;
+  for (int i = 0; i < PLAN_CURVE; i++)
+    if (p->curve[i].done) out[count++] = p->curve[i];
+  if (count == 0 || !p->found || own <= PLAN_CURVE) return count;
+  out[count++] = (plan_point){.done = true,
+                              .status = p->status,
+                              .found = true,
+                              .max_types = own,
+                              .types = p->type_count,
+                              .cost_cents = p->cost_cents,
+                              .bound_cents = p->bound_cents,
+                              .worst_margin = p->worst_margin};
+  return count;
+}
+
 static bool all_proved(const plan_answer *p) {
   for (int i = 0; i < PLAN_CURVE; i++)
     if (!p->curve[i].done || p->curve[i].status == SOLVER_LIMIT) return false;
   return true;
 }
 
+/* The fewest types with which there is a plan; 0 when none of the curve has one. */
+static int fewest(const plan_answer *p) {
+  for (int i = 0; i < PLAN_CURVE; i++)
+    if (p->curve[i].found) return i + 1;
+  return 0;
+}
+
+static const char *cents_words(const report *r, long long cents) {
+  return view_money(r, (double)cents / 100, NULL);
+}
+
 const char *view_plan_stop(const report *r, const plan_answer *p) {
   if (!all_proved(p) || p->stops_at == 0) return "";
   const plan_point *at = &p->curve[p->stops_at - 1];
   const plan_point *before = p->stops_at > 1 ? &p->curve[p->stops_at - 2] : NULL;
-  const char *last = before && before->found && p->project->aim == AIM_COST
-                         ? text_format(r->arena, "; the %s saves %s", ordinal(r, p->stops_at),
-                                       view_money(r, (double)(before->cost_cents - at->cost_cents) / 100, NULL))
-                         : "";
-  if (p->stops_at == PLAN_CURVE)
-    return text_format(r->arena, "Up to %d types each further one still pays%s.", PLAN_CURVE, last);
-  return text_format(r->arena, "Beyond %s another type, up to %d, gains nothing%s.",
-                     view_plan_count(r, p->stops_at, "type", "types"), PLAN_CURVE, last);
+  text t;
+  text_init(&t, r->arena, 1000);
+  if (fewest(p) > 1)
+    text_putf(&t, "No plan with fewer than %s. ", view_plan_count(r, fewest(p), "type", "types"));
+  if (p->stops_at < PLAN_CURVE)
+    text_putf(&t, "Beyond %s another, up to %d, gains nothing",
+              view_plan_count(r, p->stops_at, "type", "types"), PLAN_CURVE);
+  else
+    text_putf(&t, "Up to %d types the last one still pays", PLAN_CURVE);
+  if (before && before->found && p->project->aim == AIM_COST)
+    text_putf(&t, "; the %s saves %s", ordinal(r, p->stops_at),
+              cents_words(r, before->cost_cents - at->cost_cents));
+  text_char(&t, '.');
+  if (p->found && p->type_count > PLAN_CURVE && p->project->aim == AIM_COST)
+    text_putf(&t, " The %d types of the plan save %s more.", p->type_count,
+              cents_words(r, p->curve[PLAN_CURVE - 1].cost_cents - p->cost_cents));
+  return t.data;
 }
 
 /* ---- rules of the project ---- */

@@ -24,6 +24,10 @@ const char *view_plan_all_ids(const report *r, const plan_answer *p, const int *
 const char *view_plan_count(const report *r, int n, const char *one, const char *many);
 /* Cost a unit of area (m2 of wall) without floor value and setup. */
 double view_plan_per_m2(const plan_money *m, double area_m2);
+/* The points of cost against number of types that were solved, and behind them the plan's own where
+ * it has more types than the curve; each with the number of types allowed. How many. */
+enum { VIEW_PLAN_POINTS = PLAN_CURVE + 1 };
+int view_plan_curve(const plan_answer *p, plan_point out[VIEW_PLAN_POINTS]);
 /* Where another type stops paying, in a sentence; "" when the curve does not tell. */
 const char *view_plan_stop(const report *r, const plan_answer *p);
 /* What a rule of the project asks: "6 types", "100 ft"; "" for one that is not in force. */
