@@ -69,6 +69,10 @@ typedef struct range {
   bool published;
 } range;
 
+static double spread_of(const sound_aims *g, const sound_aim *a, double sd) {
+  return a->field ? sqrt(sd * sd + g->field_sd * g->field_sd) : sd;
+}
+
 static range range_of(const sound_aims *g, const sound_aim *a, const double *exact,
                       const double *sd, const wall_row *match) {
   range r = {.spread = sd[a->metric], .published = match && a->metric == METRIC_STC};
@@ -82,7 +86,7 @@ static range range_of(const sound_aims *g, const sound_aim *a, const double *exa
     r.printed_low = floor(r.exact - printed_below_db);
     r.printed_high = floor(r.exact + printed_above(a->metric));
   }
-  if (a->field) r.spread = sqrt(r.spread * r.spread + g->field_sd * g->field_sd);
+  r.spread = spread_of(g, a, r.spread);
   return r;
 }
 
@@ -145,6 +149,17 @@ void sound_bound(const sound_aims *g, const double *exact, const double *sd, con
   }
   out->certain = same_reach(&out->least, &out->most);
   out->wide = out->wide && !out->certain;
+}
+
+double sound_least_stc(const sound_aims *g, const double *sd) {
+  double least = g->screen_stc;
+  for (int i = 0; i < g->count; i++) {
+    const sound_aim *a = &g->aim[i];
+    if (a->published_only) return HUGE_VAL;
+    if (least > 0 && a->metric == METRIC_STC)
+      least = fmax(least, a->needed + a->z * spread_of(g, a, sd[METRIC_STC]) - screen_below_db);
+  }
+  return least;
 }
 
 void sound_screened(const sound_aims *g, double stc_at_most, const double *sd, sound_bounds *out) {

@@ -40,6 +40,10 @@ void sound_aims_set(const brief *b, sound_aims *out);
 void sound_bound(const sound_aims *g, const double *exact, const double *sd, const wall_row *match,
                  sound_bounds *out);
 
+/* No wall that is in no published row and whose STC the kernel puts below this reaches all targets at
+ * their confidence, its standard deviation being at least `sd`; 0 = not known. HUGE_VAL: no such wall does at
+ * all. */
+double sound_least_stc(const sound_aims *g, const double *sd);
 /* What is certain of a wall that is in no published row when its STC is at most `stc_at_most`, less than
  * screen_stc: it breaks the target, and promises at most so much. */
 void sound_screened(const sound_aims *g, double stc_at_most, const double *sd, sound_bounds *out);

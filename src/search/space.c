@@ -19,6 +19,7 @@ typedef struct builder {
   const brief *brief;
   space_wish wish;
   compat_level most; /* what a finding may be at most */
+  bool whole;        /* all that is legal: see space_build_whole */
   space *out;
   size_t face_cap, core_cap;
 } builder;
@@ -38,11 +39,11 @@ static bool named(const brief *b, catalog_kind kind, const char *id) {
 static bool usable(const builder *u, catalog_kind kind, int index, bool ordinary) {
   const char *id = catalog_id(u->catalog, (catalog_ref){kind, index});
   if (!rules_only_allows(u->catalog, u->brief, kind, id)) return false;
-  return ordinary || named(u->brief, kind, id);
+  return u->whole || ordinary || named(u->brief, kind, id);
 }
 
 static bool any_build(const builder *u) {
-  return u->brief->build == BUILD_ANY;
+  return u->whole || u->brief->build == BUILD_ANY;
 }
 
 static bool layer_usable(const builder *u, int i) {
@@ -105,6 +106,7 @@ static bool backs(const builder *u, int finish, int back) {
   const layer *f = &u->catalog->layers[finish], *l = &u->catalog->layers[back];
   if (back == finish || l->membrane || !layer_usable(u, back)) return false;
   if (l->backing || l->material == LAYER_CEMENT) return true;
+  if (u->whole) return false;
   bool asked = any_build(u) || u->wish.finishes_mixed;
   return l->material == LAYER_GYPSUM && (f->abuse || f->moisture) && asked;
 }
@@ -121,6 +123,7 @@ static void add_faces_of(builder *u, int board, int most) {
       face g = f;
       g.layer[g.count++] = back;
       add_face(u, &g);
+      if (u->whole) add_with_membranes(u, &g);
     }
   }
 }
@@ -287,7 +290,7 @@ static void build_pairs(builder *u) {
       bool same_board = s->faces[i].layer[0] == s->faces[j].layer[0];
       if (!same_board && !u->wish.finishes_differ) continue;
       s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <=
-                           (same_board ? u->most : COMPAT_FINE);
+                           (same_board || u->whole ? u->most : COMPAT_FINE);
     }
 }
 
@@ -365,10 +368,12 @@ space_wish space_wishes(const brief *b) {
   return (space_wish){rooms_particular(b), rooms_differ(b), rooms_alike(b)};
 }
 
-void space_build_for(arena *a, const judge_context *x, const space_wish *wish, space *out) {
+static void build_axes(arena *a, const judge_context *x, const space_wish *wish, bool whole,
+                       space *out) {
   *out = (space){.context = x, .mirror_once = wish->mirror_once};
   builder u = {.arena = a, .catalog = x->catalog, .brief = x->brief, .wish = *wish, .out = out};
-  u.most = x->brief->build == BUILD_ANY ? COMPAT_UNUSUAL : COMPAT_FINE;
+  u.whole = whole;
+  u.most = any_build(&u) ? COMPAT_UNUSUAL : COMPAT_FINE;
   build_faces(&u);
   build_cores(&u);
   build_supports(&u);
@@ -377,9 +382,19 @@ void space_build_for(arena *a, const judge_context *x, const space_wish *wish, s
   build_texts(&u);
 }
 
+void space_build_for(arena *a, const judge_context *x, const space_wish *wish, space *out) {
+  build_axes(a, x, wish, false, out);
+}
+
 void space_build(arena *a, const judge_context *x, space *out) {
   space_wish wish = space_wishes(x->brief);
-  space_build_for(a, x, &wish, out);
+  build_axes(a, x, &wish, false, out);
+}
+
+void space_build_whole(arena *a, const judge_context *x, space *out) {
+  space_wish wish = space_wishes(x->brief);
+  wish.finishes_differ = true;
+  build_axes(a, x, &wish, true, out);
 }
 
 bool space_legal(const space *s, int core, int face_a, int face_b) {
@@ -409,10 +424,28 @@ wall space_wall(const space *s, int core, int face_a, int face_b) {
   return w;
 }
 
-long long space_count(const space *s) {
+/* Pairs of faces that may stand on supports p (A) and q (B); `ordered`: of two mirror images one. */
+static long long count_pairs(const space *s, int p, int q, bool ordered) {
+  size_t n = (size_t)s->face_count;
   long long count = 0;
-  for (int k = 0; k < s->core_count; k++)
-    for (int i = 0; i < s->face_count; i++)
-      for (int j = 0; j < s->face_count; j++) count += space_legal(s, k, i, j);
+  for (size_t i = 0; i < n; i++) {
+    if (!s->on_support[(size_t)p * n + i]) continue;
+    const bool *on = s->on_support + (size_t)q * n, *pair = s->pair + i * n;
+    for (size_t j = ordered ? i : 0; j < n; j++) count += on[j] && pair[j];
+  }
+  return count;
+}
+
+/* Few cores differ in what their leaves may be: those alike follow one another. */
+long long space_count(const space *s) {
+  long long count = 0, each = 0;
+  for (int k = 0; k < s->core_count; k++) {
+    bool same = k > 0 && s->support[SIDE_A][k] == s->support[SIDE_A][k - 1] &&
+                s->support[SIDE_B][k] == s->support[SIDE_B][k - 1] &&
+                s->own_mirror[k] == s->own_mirror[k - 1];
+    if (!same)
+      each = count_pairs(s, s->support[SIDE_A][k], s->support[SIDE_B][k], s->own_mirror[k]);
+    count += each;
+  }
   return count;
 }

@@ -46,6 +46,10 @@ space_wish space_wishes(const brief *b);
 void space_build_for(arena *a, const judge_context *x, const space_wish *wish, space *out);
 /* Builds the axes after `only`, `without` (kept, as rules), build and compatibility. */
 void space_build(arena *a, const judge_context *x, space *out);
+/* The whole catalog under one rule for leaves: 1 to 3 boards, n equal finish boards, alone or over one
+ * backing board, with at most one membrane; any core and any pair that is legal. Of the brief's
+ * `build` and stock nothing is asked. Some 10^9 walls: for searches that do not look at each. */
+void space_build_whole(arena *a, const judge_context *x, space *out);
 /* Whether face i on A and j on B may stand on core k. */
 bool space_legal(const space *s, int core, int face_a, int face_b);
 /* The faces, rising, that may stand on B when face_a stands on A of a core: fills `face_b` (face_count

@@ -223,21 +223,38 @@ static cost_parts cached_cost(tables *t, int core, int face_a, int face_b) {
   return *kept;
 }
 
-bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candidate *out) {
+/* Everything but cost, and the rules that ask it. Returns the thickness in metres. */
+static double measure(const tables *t, const core_facts *k, int face_a, int face_b,
+                      candidate *out) {
   const face_facts *a = &t->face[face_a], *b = &t->face[face_b];
-  cost_parts leaves = cached_cost(t, k->core, face_a, face_b);
   double thickness_m = k->thickness_m + a->thickness_m + b->thickness_m;
-  cost_total cost = cost_sum(t->context->prices, t->context->brief, thickness_m, k->cost, leaves);
   *out = (candidate){.core = k->core, .face_a = face_a, .face_b = face_b};
-  out->is.total_cents = cost.total_cents;
-  out->is.cost_cents = cost.total_cents + cost.floor_value_cents;
   out->is.thickness_tenth_mm = rules_thickness(thickness_m);
   out->is.mass_hundredth = rules_mass(k->mass_kg_m2 + a->mass_kg_m2 + b->mass_kg_m2);
   out->is.height_mm = k->height_mm[a->height_key][b->height_key];
   if (t->fire_asked)
     out->is.fire_min = fire_pair(t->context->catalog, &k->fire, &a->fire, &b->fire, NULL);
+  return thickness_m;
+}
+
+static void break_rules(const tables *t, const core_facts *k, candidate *out) {
+  const face_facts *a = &t->face[out->face_a], *b = &t->face[out->face_b];
   out->broken =
       k->broken | a->broken[SIDE_A] | b->broken[SIDE_B] | rules_broken_by(&t->limits, &out->is);
+}
+
+void tables_measure(const tables *t, const core_facts *k, int face_a, int face_b, candidate *out) {
+  measure(t, k, face_a, face_b, out);
+  break_rules(t, k, out);
+}
+
+bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candidate *out) {
+  cost_parts leaves = cached_cost(t, k->core, face_a, face_b);
+  double thickness_m = measure(t, k, face_a, face_b, out);
+  cost_total cost = cost_sum(t->context->prices, t->context->brief, thickness_m, k->cost, leaves);
+  out->is.total_cents = cost.total_cents;
+  out->is.cost_cents = cost.total_cents + cost.floor_value_cents;
+  break_rules(t, k, out);
   return !k->cost.missing && !leaves.missing;
 }
 

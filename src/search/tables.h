@@ -38,6 +38,8 @@ void tables_core(tables *t, int core, core_facts *out);
 /* The numbers and rules of a wall but its sound. False when an item has no price: then its cost is
  * not known. */
 bool tables_wall(tables *t, const core_facts *k, int face_a, int face_b, candidate *out);
+/* The same but cost: its figures in `out` stay 0, and of the rules the greatest cost is not asked. */
+void tables_measure(const tables *t, const core_facts *k, int face_a, int face_b, candidate *out);
 /* What decides about sound beside the rating: sd (METRIC_COUNT values) of the prediction, and the
  * published row that the wall is, or NULL. */
 const wall_row *tables_sound(const tables *t, const core_facts *k, int face_a, int face_b,
