@@ -63,7 +63,7 @@ typedef struct septum_options {
   const char *save_csv;   /* rate, pick: path for the takeoff as CSV; trim: for the log of proposals;
                              ladder: for its rungs; plan: for the schedule with what is assigned;
                              NULL = none */
-  const char *save_html;  /* rate, pick, ladder, trim: path for the answer as one page that needs nothing
+  const char *save_html;  /* rate, pick, ladder, trim, plan: path for the answer as one page that needs nothing
                              else, in the units of text; NULL = none */
   const char *save_xlsx;  /* rate, pick: path for the takeoff as a spreadsheet; NULL = none */
   const char *save_prices; /* prices_update: path for the new price book; NULL = none */

@@ -2,6 +2,7 @@
 #include "api/call.h"
 #include "api/request.h"
 #include "base/file.h"
+#include "report/report_html.h"
 #include "report/report_plan.h"
 #include "wall/compat.h"
 #include "wall/line.h"
@@ -68,6 +69,8 @@ static status hand_out(call *k, plan_job *job, const report *r, const plan_answe
   report_plan_text(r, found, &t.words);
   report_plan_json(r, found, &t.json);
   report_plan_csv(r, found, &t.csv);
+  if (job->options.save_html) report_plan_html(r, found, &t.page);
+  if (!call_save_page(k, &t, job->options.save_html)) return k->diags.worst;
   job->made = call_deliver(k, &t, job->options.save_csv);
   if (job->made == NULL) return k->diags.worst;
   return found->found && found->unplanned_rows == 0 ? STATUS_OK : STATUS_NO_WALL;

@@ -105,6 +105,7 @@ static const char tables[] =
     ".total td,.total th{border-top:1px solid var(--ink);border-bottom:none;font-weight:600}\n"
     ".chosen td,.chosen th{background:var(--wash)}\n"
     ".bands,.bands thead th{font-size:.8rem}\n"
+    ".dense{font-size:.85rem}\n"
     ".bands th,.bands td{padding-right:.3rem;min-width:0}\n";
 
 static const char print[] =
@@ -129,7 +130,10 @@ static const char print[] =
     "thead th,td.w{font-size:7.5pt}\n"
     "th,td{padding:.6mm 2.5mm .6mm 0;min-width:0}\n"
     "td.w,th.w{min-width:38mm}\n"
-    ".bands,.bands thead th{font-size:6.5pt}}\n";
+    ".bands,.bands thead th,.dense,.dense thead th,.dense td.w{font-size:6pt}\n"
+    ".dense th,.dense td{padding-right:1.2mm}\n"
+    ".dense td[dir],.dense th[dir]{min-width:9mm}\n"
+    "td:not([class]),.dense td.w{min-width:16mm}}\n";
 
 void html_style(text *out) {
   text_put(out, colours);

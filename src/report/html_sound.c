@@ -142,7 +142,7 @@ void html_evidence(html *h, const assessment *x) {
 
 /* --- bands ----------------------------------------------------------------------------------- */
 
-static void put_bands(html *h, const assessment *x) {
+void html_bands(html *h, const assessment *x) {
   html_column columns[BANDS + 1] = {{"Hz", HTML_HEAD}};
   const char *cell[BANDS + 1] = {"TL, dB"};
   for (int i = 0; i < BANDS; i++) {
@@ -166,6 +166,10 @@ static void put_curve(html *h, const assessment *x, bool paths) {
   html_picture_end(h, NULL);
 }
 
+void html_curve(html *h, const assessment *x) {
+  put_curve(h, x, false);
+}
+
 static void put_other_sound(html *h, const assessment *x) {
   const report *r = h->report;
   if (!x->mounted && !x->has_composite) return;
@@ -182,14 +186,14 @@ static void put_other_sound(html *h, const assessment *x) {
 
 void html_sound_parts(html *h, const assessment *x) {
   put_targets(h, x);
-  put_curve(h, x, false);
+  html_curve(h, x);
   html_more(h, "The curve with its paths: what passes the cavity and what passes the studs");
   put_curve(h, x, true);
   html_more_end(h);
   html_ratings_table(h, x);
   put_other_sound(h, x);
   put_prediction(h, x);
-  put_bands(h, x);
+  html_bands(h, x);
   html_heading(h, "Evidence");
   html_evidence(h, x);
 }

@@ -219,6 +219,20 @@ void html_wall_checks(html *h, const assessment *x) {
   html_section_end(h);
 }
 
+void html_brief_sheet(html *h, const assessment *x) {
+  html_curve(h, x);
+  html_bands(h, x);
+  html_ratings_table(h, x);
+  html_evidence(h, x);
+  html_facts(h);
+  put_fire(h, x);
+  html_facts_end(h);
+  html_facts(h);
+  put_height(h, x);
+  html_facts_end(h);
+  html_broken(h, "Rules that it breaks there", x);
+}
+
 /* --- the ends of a page ---------------------------------------------------------------------- */
 
 void html_cautions(html *h, const char *const *caution, int count) {

@@ -24,6 +24,8 @@ void html_wall_takeoff(html *h, const assessment *x);
 void html_sound_parts(html *h, const assessment *x);
 void html_check_parts(html *h, const assessment *x);
 void html_cost_parts(html *h, const assessment *x);
+/* The same in brief, for pages of many walls: sound, fire, height, what it breaks. */
+void html_brief_sheet(html *h, const assessment *x);
 
 /* Parts of sections. */
 /* Money by section of the specification, material and labour apart. */
@@ -32,6 +34,9 @@ void html_cost_by_section(html *h, const assessment *x);
 void html_takeoff_table(html *h, const char *caption, const assessment *x);
 /* Ratings of every metric, where they come from, and what else they would be. */
 void html_ratings_table(html *h, const assessment *x);
+/* The curve of transmission loss, and its figures. */
+void html_curve(html *h, const assessment *x);
+void html_bands(html *h, const assessment *x);
 /* Published walls beside it. */
 void html_evidence(html *h, const assessment *x);
 /* The rules it breaks; nothing without. */

@@ -4,6 +4,7 @@
 #define REPORT_REPORT_HTML_H
 
 #include "explain/cloud.h"
+#include "explain/plan.h"
 #include "explain/trim.h"
 #include "report/html.h"
 #include "report/report_ladder.h"
@@ -14,5 +15,7 @@ void report_pick_html(const report *r, const explanation *e, const pick_choice *
                       const cloud *c, text *out);
 void report_ladder_html(const report *r, const ladder_answer *l, text *out);
 void report_trim_html(const report *r, const trim_answer *t, text *out);
+/* `r->brief` is what all walls of the project share. */
+void report_plan_html(const report *r, const plan_answer *p, text *out);
 
 #endif
