@@ -17,9 +17,18 @@ typedef struct front_member {
 /* A member whose figures are those of the reference. */
 front_member front_exact(const candidate *c);
 
+/* The numbers of a member that some rule in force reads, turned so that less is better: what beats
+ * another is no greater in any. */
+enum { FRONT_COORDINATES = 8 };
+typedef struct front_key {
+  int v[FRONT_COORDINATES];
+} front_key;
+
 /* Members that break the same rules at their worst. */
 typedef struct front_group {
   rule_mask broken, instead;
+  front_key least; /* of all that ever were members, each coordinate apart */
+  front_key *key;  /* of each item */
   front_member *item;
   int count, cap;
 } front_group;

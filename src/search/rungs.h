@@ -16,7 +16,7 @@ typedef struct rung_best {
 typedef struct rungs {
   rung_best at[RUNGS_MOST + 1]; /* by the target's value; [0] is not used */
   long long walls;              /* legal walls that were looked at */
-  long long rated;              /* of these, rated by the reference */
+  long long rated;              /* of these, rated by the reference; varies with the threads */
   int lowest, highest;          /* values that some wall reaches as its best; 0 when none keeps the
                                    rest of the brief */
 } rungs;

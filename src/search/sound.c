@@ -28,16 +28,20 @@ static void add_metric(sound_aims *g, sound_metric m) {
   g->metric[g->metrics++] = m;
 }
 
-/* With openings in scope a wall may pass by less than it has; below even odds the standard deviation
- * lifts what is promised. */
+/* With openings in scope a wall may pass by less than it has, as far as the lift goes. */
+static double allowance(const sound_aims *g, const sound_aim *a) {
+  return screen_below_db + (a->composite ? g->lift_db : 0);
+}
+
+/* Below even odds the standard deviation lifts what is promised: then nothing is known. */
 static void set_screen(sound_aims *g) {
   for (int i = 0; i < g->count; i++) {
     const sound_aim *a = &g->aim[i];
-    if (a->composite || a->z < 0) {
+    if (a->z < 0) {
       g->screen_stc = 0;
       return;
     }
-    if (a->metric == METRIC_STC) g->screen_stc = fmax(g->screen_stc, a->needed - screen_below_db);
+    if (a->metric == METRIC_STC) g->screen_stc = fmax(g->screen_stc, a->needed - allowance(g, a));
   }
 }
 
@@ -157,7 +161,7 @@ double sound_least_stc(const sound_aims *g, const double *sd) {
     const sound_aim *a = &g->aim[i];
     if (a->published_only) return HUGE_VAL;
     if (least > 0 && a->metric == METRIC_STC)
-      least = fmax(least, a->needed + a->z * spread_of(g, a, sd[METRIC_STC]) - screen_below_db);
+      least = fmax(least, a->needed + a->z * spread_of(g, a, sd[METRIC_STC]) - allowance(g, a));
   }
   return least;
 }
