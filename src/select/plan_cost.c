@@ -15,7 +15,19 @@ bool plan_fits(const plan_problem *p, int c, int t) {
   return p->cents[plan_pair(p, c, t)] >= 0 && !(p->locked_out && p->locked_out[t]);
 }
 
-/* Counted over locked types too, so that a plan costs the same with and without them. */
+/* An item's most, in `most` for all items. Counted over locked types too, so that a plan costs the
+ * same with and without them. A class at a time: needs lie in memory a pair after the other. */
+static void add_most_needed(const plan_problem *p, int c, double *top, double *most) {
+  for (int i = 0; i < p->items; i++) top[i] = 0;
+  for (int t = 0; t < p->types; t++) {
+    size_t k = plan_pair(p, c, t);
+    for (int i = 0; p->cents[k] >= 0 && i < p->items; i++)
+      top[i] = fmax(top[i], p->need[k * (size_t)p->items + (size_t)i]);
+  }
+  for (int i = 0; i < p->items; i++) most[i] += top[i];
+}
+
+/* The same for one item. */
 static double most_needed(const plan_problem *p, int item) {
   double sum = 0;
   for (int c = 0; c < p->classes; c++) {
@@ -113,18 +125,31 @@ static long long walls_cents(const plan_problem *p, const int *type_of, int *typ
   return cents + *types * p->setup_cents;
 }
 
-long long plan_cost(const plan_problem *p, const int *type_of, plan_buy *buy) {
+static long long buy_all(const plan_problem *p, const int *type_of, const double *slack,
+                         plan_buy *buy) {
   int types;
   double goods = 0;
   long long walls = walls_cents(p, type_of, &types);
   for (int i = 0; i < p->items; i++) {
+    double own = slack ? slack[i] : 0;
+    double need = needed(p, type_of, i);
+    /* it matters only where the need comes so near to the stock */
+    if (!slack && need > p->item[i].stock && need <= p->item[i].stock * (1 + 1e-6) + 1e-3)
+      own = slack_of(&p->item[i], most_needed(p, i));
     plan_buy one;
-    double slack = slack_of(&p->item[i], most_needed(p, i));
-    goods += buy_item(&p->item[i], needed(p, type_of, i), slack, &one);
+    goods += buy_item(&p->item[i], need, own, &one);
     if (buy) buy[i] = one;
   }
   if (buy) share_cents(p, whole_cents(goods), buy);
   return walls + whole_cents(goods);
+}
+
+long long plan_cost(const plan_problem *p, const int *type_of, plan_buy *buy) {
+  return buy_all(p, type_of, NULL, buy);
+}
+
+void plan_buys(const plan_terms *s, const int *type_of, plan_buy *buy) {
+  (void)buy_all(s->p, type_of, s->slack, buy);
 }
 
 /* ---- terms ---- */
@@ -132,13 +157,14 @@ long long plan_cost(const plan_problem *p, const int *type_of, plan_buy *buy) {
 static void list_goods(arena *a, plan_terms *s) {
   const plan_problem *p = s->p;
   size_t pairs = (size_t)p->classes * (size_t)p->types, items = (size_t)p->items, n = 0;
-  for (size_t k = 0; k < pairs * items; k++) n += p->need[k] > 0;
+  for (size_t k = 0; k < pairs; k++)
+    for (size_t i = 0; p->cents[k] >= 0 && i < items; i++) n += p->need[k * items + i] > 0;
   s->first_pair = arena_array(a, pairs + 1, sizeof *s->first_pair);
   s->good = arena_array(a, n + 1, sizeof *s->good);
   s->amount = arena_array(a, n + 1, sizeof *s->amount);
   n = 0;
   for (size_t k = 0; k < pairs; k++) {
-    for (size_t i = 0; i < items; i++) {
+    for (size_t i = 0; p->cents[k] >= 0 && i < items; i++) {
       if (!(p->need[k * items + i] > 0)) continue;
       s->good[n] = (int)i;
       s->amount[n++] = p->need[k * items + i];
@@ -156,10 +182,9 @@ void plan_terms_make(arena *a, const plan_problem *p, plan_terms *out) {
   out->slack = arena_array(a, (size_t)p->items + 1, sizeof *out->slack);
   for (int c = 0; c < p->classes; c++) out->run_mm[c] = llround(p->run_m[c] * PLAN_MM_PER_M);
   for (size_t k = 0; k < pairs; k++) out->floor[k] = llround(p->floor_m2[k] * PLAN_FLOOR_PER_M2);
-  for (int i = 0; i < p->items; i++) {
-    out->most[i] = most_needed(p, i);
-    out->slack[i] = slack_of(&p->item[i], out->most[i]);
-  }
+  double *top = arena_array(a, (size_t)p->items + 1, sizeof *top);
+  for (int c = 0; c < p->classes; c++) add_most_needed(p, c, top, out->most);
+  for (int i = 0; i < p->items; i++) out->slack[i] = slack_of(&p->item[i], out->most[i]);
   list_goods(a, out);
 }
 

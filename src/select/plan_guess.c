@@ -121,12 +121,69 @@ static int shortest(plan_guess *g, const int *open, int count) {
   return at;
 }
 
-/* Types with too little to do are closed until none is left. */
+/* What giving up an open type costs: its classes take the cheapest of the others. */
+static double cost_of_closing(const plan_guess *g, const int *open, int count, int type) {
+  const plan_problem *p = g->x->terms->p;
+  double sum = 0;
+  for (int c = 0; c < p->classes; c++) {
+    double least = HUGE_VAL;
+    if (g->trial[c] != type) continue;
+    for (int i = 0; i < count; i++)
+      if (open[i] != type && (!g->x->framed || p->group[open[i]] == p->group[type]))
+        least = fmin(least, g->cost[plan_pair(p, c, open[i])]);
+    sum += least - g->cost[plan_pair(p, c, type)];
+  }
+  return sum - (double)p->setup_cents / 100;
+}
+
+/* The class that best helps a type to its run: the least cost per length that counts. Its own type
+ * is left with enough, or with nothing. */
+static int best_helper(const plan_guess *g, int type, long long lacks, double *cost) {
+  const plan_terms *s = g->x->terms;
+  const plan_problem *p = s->p;
+  int best = PLAN_NONE;
+  double least = HUGE_VAL;
+  for (int c = 0; c < p->classes; c++) {
+    int from = g->trial[c];
+    double more = g->cost[plan_pair(p, c, type)] - g->cost[plan_pair(p, c, from)];
+    long long after = g->run[from] - s->run_mm[c];
+    if (from == type || s->run_mm[c] <= 0 || !(more < HUGE_VAL)) continue;
+    if (after > 0 && after < g->x->min_run_mm) continue;
+    if (g->x->framed && p->group[from] != p->group[type]) continue;
+    double counts = (double)(s->run_mm[c] < lacks ? s->run_mm[c] : lacks);
+    if (more / counts >= least) continue;
+    least = more / counts;
+    *cost = more;
+    best = c;
+  }
+  return best;
+}
+
+/* Moves classes to a short type when that is cheaper than to close it. */
+static bool fill(plan_guess *g, const int *open, int count, int type) {
+  const plan_terms *s = g->x->terms;
+  double close = cost_of_closing(g, open, count, type), spent = 0;
+  while (g->run[type] < g->x->min_run_mm) {
+    double more = 0;
+    int c = best_helper(g, type, g->x->min_run_mm - g->run[type], &more);
+    spent += more;
+    if (c == PLAN_NONE || spent >= close) return false;
+    g->run[g->trial[c]] -= s->run_mm[c];
+    g->run[type] += s->run_mm[c];
+    g->trial[c] = type;
+  }
+  return true;
+}
+
+/* Types with too little to do get more, or are closed, until none is left. */
 static int assign_with_runs(plan_guess *g, int *open, int count) {
   for (;;) {
-    int left = assign(g, open, count);
-    int at = left == 0 && g->x->min_run_mm > 0 ? shortest(g, open, count) : PLAN_NONE;
-    if (at == PLAN_NONE) return left;
+    int left = assign(g, open, count), at = PLAN_NONE;
+    if (left > 0 || g->x->min_run_mm <= 0) return left;
+    do {
+      at = shortest(g, open, count);
+    } while (at != PLAN_NONE && fill(g, open, count, open[at]));
+    if (at == PLAN_NONE) return 0;
     open[at] = open[--count];
   }
 }

@@ -50,6 +50,8 @@ bool plan_fits(const plan_problem *p, int c, int t);
 /* What `wanted` units more than the stock cost: the cheapest tier, of equals the one that buys
  * less. */
 double plan_spend(const plan_item *item, double wanted, int *tier, double *bought);
+/* What a choice buys. */
+void plan_buys(const plan_terms *s, const int *type_of, plan_buy *buy);
 void plan_tally_make(const plan_terms *s, const int *type_of, plan_tally *out);
 /* The plan_rule bits that a choice breaks in this case (never the budget). */
 unsigned plan_broken(const plan_case *x, const plan_tally *t);

@@ -121,7 +121,7 @@ static bool fits_part(const search *s, const plan_part *part) {
   if (!s->guess.found) return false;
   for (int c = 0; c < p->classes; c++)
     if (!part->open[plan_pair(p, c, s->guess.best[c])]) return false;
-  (void)plan_cost(p, s->guess.best, buy);
+  plan_buys(s->x->terms, s->guess.best, buy);
   for (int i = 0; i < p->items; i++)
     if (!(part->tiers[i] & 1u << (buy[i].tier + 1))) return false;
   return true;
@@ -157,7 +157,7 @@ static int preferred_tier(const search *s, int item) {
   const plan_problem *p = s->x->terms->p;
   plan_buy *buy = arena_array(s->call->arena, (size_t)p->items + 1, sizeof *buy);
   if (!s->guess.found) return 0;
-  (void)plan_cost(p, s->guess.best, buy);
+  plan_buys(s->x->terms, s->guess.best, buy);
   return buy[item].tier + 1;
 }
 

@@ -36,6 +36,12 @@ typedef struct pairs {
   int count;
 } pairs;
 
+/* A type that cannot be used without buying some of an item: all its pairs take more than the
+ * stock. */
+typedef struct demand {
+  int item, type;
+} demand;
+
 typedef struct span {
   double from, to;
 } span;
@@ -59,9 +65,60 @@ struct plan_relax {
   span *assumed; /* an item: the needs that its term holds for */
   double *scale; /* an item: so that its multiplier moves like a class's */
   double floor_scale;
-  double *wage, *price; /* at hand; the part holds the best */
+  demand *demand; /* by item */
+  int demand_count;
+  double *share, *dir_share; /* a demand */
+  double *least_spend;       /* an item: currency, when any of it is bought */
+  double *borne;             /* an item: sum of its shares, at most 1 */
+  double *paid;              /* an item: its price, less what is borne */
+  double *setup;             /* a type: with the least spends it bears */
+  double *wage, *price;      /* at hand; the part holds the best */
   double floor_price;
 };
+
+static bool always_buys(const plan_case *x, int t, int i) {
+  const plan_problem *p = x->terms->p;
+  double enough = p->item[i].stock + x->terms->slack[i];
+  for (int c = 0; c < p->classes; c++) {
+    size_t k = plan_pair(p, c, t);
+    if (x->open[k] && p->need[k * (size_t)p->items + (size_t)i] <= enough) return false;
+  }
+  return true;
+}
+
+static bool is_open(const plan_case *x, int t) {
+  const plan_problem *p = x->terms->p;
+  for (int c = 0; c < p->classes; c++)
+    if (x->open[plan_pair(p, c, t)]) return true;
+  return false;
+}
+
+static double least_spend(const plan_item *item) {
+  double least = HUGE_VAL;
+  for (int k = 0; k < item->tier_count; k++)
+    least = fmin(least, item->tier[k].from * item->tier[k].price);
+  return item->tier_count > 0 ? least : 0;
+}
+
+static void list_demands(plan_relax *r, arena *a) {
+  const plan_problem *p = r->x->terms->p;
+  size_t cap = 64;
+  r->demand = arena_array(a, cap, sizeof *r->demand);
+  for (int i = 0; i < p->items; i++) {
+    r->least_spend[i] = least_spend(&p->item[i]);
+    if (!(r->least_spend[i] > 0)) continue;
+    for (int t = 0; t < p->types; t++) {
+      if (!is_open(r->x, t) || !always_buys(r->x, t, i)) continue;
+      if ((size_t)r->demand_count == cap) {
+        r->demand = arena_grow(a, r->demand, cap * sizeof *r->demand, 2 * cap * sizeof *r->demand);
+        cap *= 2;
+      }
+      r->demand[r->demand_count++] = (demand){i, t};
+    }
+  }
+  r->share = arena_array(a, (size_t)r->demand_count + 1, sizeof *r->share);
+  r->dir_share = arena_array(a, (size_t)r->demand_count + 1, sizeof *r->dir_share);
+}
 
 plan_relax *plan_relax_make(const plan_call *call, const plan_case *x, plan_guess *g) {
   const plan_problem *p = x->terms->p;
@@ -92,6 +149,11 @@ plan_relax *plan_relax_make(const plan_call *call, const plan_case *x, plan_gues
   r->assumed = arena_array(a, items, sizeof *r->assumed);
   r->need = arena_array(a, items, sizeof *r->need);
   r->scale = arena_array(a, items, sizeof *r->scale);
+  r->least_spend = arena_array(a, items, sizeof *r->least_spend);
+  r->paid = arena_array(a, items, sizeof *r->paid);
+  r->borne = arena_array(a, items, sizeof *r->borne);
+  r->setup = arena_array(a, types, sizeof *r->setup);
+  list_demands(r, a);
   for (int i = 0; i < p->items; i++)
     r->scale[i] = x->terms->most[i] > 0 ? whole_scale / x->terms->most[i] : 0;
   r->floor_scale = x->floor_max > 0 ? whole_scale / (double)x->floor_max : 0;
@@ -107,6 +169,7 @@ static void part_room(plan_relax *r, plan_part *out) {
   out->tiers = arena_array(a, (size_t)p->items + 1, sizeof *out->tiers);
   out->wage = arena_array(a, (size_t)p->classes, sizeof *out->wage);
   out->price = arena_array(a, (size_t)p->items + 1, sizeof *out->price);
+  out->share = arena_array(a, (size_t)r->demand_count + 1, sizeof *out->share);
 }
 
 /* Goods at their lowest price: a line through the origin that no spend is below. */
@@ -141,10 +204,12 @@ void plan_part_copy(plan_relax *r, const plan_part *from, plan_part *out) {
   out->tiers = room.tiers;
   out->wage = room.wage;
   out->price = room.price;
+  out->share = room.share;
   memcpy(out->open, from->open, (size_t)p->classes * (size_t)p->types * sizeof *out->open);
   memcpy(out->tiers, from->tiers, (size_t)p->items * sizeof *out->tiers);
   memcpy(out->wage, from->wage, (size_t)p->classes * sizeof *out->wage);
   memcpy(out->price, from->price, (size_t)p->items * sizeof *out->price);
+  memcpy(out->share, from->share, (size_t)r->demand_count * sizeof *out->share);
 }
 
 /* A pair that needs goods which this part does not buy is closed. */
@@ -234,12 +299,33 @@ static double run_short(plan_relax *r, int t) {
   return lacks > sure ? HUGE_VAL : more;
 }
 
+/* Setups with the shares of least spends, and what that leaves to be paid by quantity. */
+static void bear_least_spends(plan_relax *r) {
+  const plan_problem *p = r->x->terms->p;
+  for (int i = 0; i < r->list_count; i++) r->setup[r->list[i]] = (double)p->setup_cents / 100;
+  for (int i = 0; i < p->items; i++) r->borne[i] = 0;
+  for (int d = 0; d < r->demand_count; d++) {
+    const demand *of = &r->demand[d];
+    if (!r->active[of->type]) r->share[d] = 0;
+    r->borne[of->item] += r->share[d];
+  }
+  for (int d = 0; d < r->demand_count; d++) {
+    const demand *of = &r->demand[d];
+    if (r->borne[of->item] > 1) r->share[d] /= r->borne[of->item];
+    r->setup[of->type] += r->share[d] * r->least_spend[of->item];
+  }
+  for (int i = 0; i < p->items; i++) {
+    r->borne[i] = fmin(r->borne[i], 1);
+    r->paid[i] = (1 - r->borne[i]) * r->price[i];
+  }
+}
+
 static void price_pairs(plan_relax *r) {
   const plan_terms *s = r->x->terms;
   const plan_problem *p = s->p;
-  double setup = (double)p->setup_cents / 100;
+  bear_least_spends(r);
   for (int i = 0; i < r->list_count; i++) {
-    r->sum[r->list[i]] = setup;
+    r->sum[r->list[i]] = r->setup[r->list[i]];
     r->run[r->list[i]] = 0;
   }
   for (int c = 0; c < p->classes; c++) {
@@ -248,7 +334,7 @@ static void price_pairs(plan_relax *r) {
       int pair = r->in.pair[k];
       double over = r->in.cost[k] - r->wage[c] + r->floor_price * (double)s->floor[pair];
       for (int e = s->first_pair[pair]; e < s->first_pair[pair + 1]; e++)
-        over += r->price[s->good[e]] * s->amount[e];
+        over += r->paid[s->good[e]] * s->amount[e];
       r->in.over[k] = over;
       if (over >= 0) continue;
       r->sum[r->in.type[k]] += over;
@@ -293,7 +379,7 @@ static double fixed_terms(plan_relax *r, const plan_part *part, bool with_gradie
   for (int c = 0; c < p->classes; c++) sum += r->wage[c];
   for (int i = 0; i < p->items; i++) {
     span at;
-    sum += goods_term(r, part->tiers, i, r->price[i], &at);
+    sum += (1 - r->borne[i]) * goods_term(r, part->tiers, i, r->price[i], &at);
     if (with_gradient) r->assumed[i] = at;
   }
   return sum;
@@ -334,9 +420,26 @@ static double gradient(plan_relax *r) {
   return norm + r->grad_floor * r->grad_floor;
 }
 
-static void move(plan_relax *r, double step, double towards) {
+/* Shares rise for types that are taken while an item's quantity pays less than its least spend. */
+static void share_gradient(plan_relax *r, const plan_part *part, double *norm) {
+  for (int d = 0; d < r->demand_count; d++) {
+    const demand *of = &r->demand[d];
+    if (!r->active[of->type] || !(part->tiers[of->item] & 1u)) continue;
+    double pays = fmin(r->price[of->item] * r->need[of->item] / r->least_spend[of->item], 2);
+    double up = (r->taken[of->type] ? 1 : 0) - pays;
+    if (up <= 0 && !(r->share[d] > 0)) {
+      r->dir_share[d] = 0;
+      continue;
+    }
+    r->dir_share[d] = up + kept_direction * r->dir_share[d];
+    *norm += r->dir_share[d] * r->dir_share[d];
+  }
+}
+
+static void move(plan_relax *r, const plan_part *part, double step, double towards) {
   const plan_problem *p = r->x->terms->p;
   double norm = 0;
+  share_gradient(r, part, &norm);
   for (int c = 0; c < p->classes; c++) {
     r->dir_wage[c] = r->grad_wage[c] + kept_direction * r->dir_wage[c];
     norm += r->dir_wage[c] * r->dir_wage[c];
@@ -352,6 +455,10 @@ static void move(plan_relax *r, double step, double towards) {
   for (int c = 0; c < p->classes; c++) r->wage[c] += by * r->dir_wage[c];
   for (int i = 0; i < p->items; i++)
     r->price[i] = fmax(r->price[i] + by * r->scale[i] * r->dir_price[i], 0);
+  for (int d = 0; d < r->demand_count; d++) {
+    double least = r->least_spend[r->demand[d].item];
+    r->share[d] = fmax(r->share[d] + by * r->dir_share[d] / least, 0);
+  }
   r->floor_price = fmax(r->floor_price + by * r->floor_scale * r->dir_floor, 0);
 }
 
@@ -359,6 +466,7 @@ static void keep_best(plan_relax *r, plan_part *part) {
   const plan_problem *p = r->x->terms->p;
   memcpy(part->wage, r->wage, (size_t)p->classes * sizeof *part->wage);
   memcpy(part->price, r->price, (size_t)p->items * sizeof *part->price);
+  memcpy(part->share, r->share, (size_t)r->demand_count * sizeof *part->share);
   part->floor_price = r->floor_price;
 }
 
@@ -366,6 +474,7 @@ static void recall_best(plan_relax *r, const plan_part *part) {
   const plan_problem *p = r->x->terms->p;
   memcpy(r->wage, part->wage, (size_t)p->classes * sizeof *part->wage);
   memcpy(r->price, part->price, (size_t)p->items * sizeof *part->price);
+  memcpy(r->share, part->share, (size_t)r->demand_count * sizeof *part->share);
   r->floor_price = part->floor_price;
 }
 
@@ -452,7 +561,8 @@ static int waverer(plan_relax *r, const plan_part *part, double ceiling) {
       double bought, spend = 0;
       if (needs[k] > p->item[i].stock + s->slack[i])
         spend = plan_spend(&p->item[i], needs[k] - p->item[i].stock, &tier, &bought);
-      gap = fmax(gap, spend - r->price[i] * needs[k] - term);
+      double least = needs[k] > p->item[i].stock ? r->borne[i] * r->least_spend[i] : 0;
+      gap = fmax(gap, spend - (1 - r->borne[i]) * (r->price[i] * needs[k] + term) - least);
     }
     if (gap <= gap_most) continue;
     gap_most = gap;
@@ -466,7 +576,10 @@ static int waverer(plan_relax *r, const plan_part *part, double ceiling) {
 static void begin(plan_relax *r, plan_part *part) {
   const plan_problem *p = r->x->terms->p;
   list_pairs(r, part);
+  for (int d = 0; d < r->demand_count; d++) /* where it is bought its term says the least spend */
+    if (!(part->tiers[r->demand[d].item] & 1u)) part->share[d] = 0;
   recall_best(r, part);
+  memset(r->dir_share, 0, (size_t)r->demand_count * sizeof *r->dir_share);
   memset(r->dir_wage, 0, (size_t)p->classes * sizeof *r->dir_wage);
   memset(r->dir_price, 0, ((size_t)p->items + 1) * sizeof *r->dir_price);
   r->dir_floor = 0;
@@ -518,7 +631,7 @@ static void climb(plan_relax *r, plan_part *part, double ceiling, int steps) {
     double aim =
         r->guess->found ? fmin(r->guess->tally.amount, ceiling) : best + hoped_share * fabs(best);
     if (ceiling < HUGE_VAL && !r->guess->found) aim = fmax(aim, ceiling);
-    move(r, step, fmax(aim - bound, sure));
+    move(r, part, step, fmax(aim - bound, sure));
   }
 }
 

@@ -12,6 +12,7 @@ typedef struct plan_part {
   double bound;       /* currency: no plan of this part costs less */
   double *wage;       /* a class: its multiplier */
   double *price;      /* an item: likewise, currency per unit */
+  double *share;      /* a demand (plan_relax.c): how much of an item's least spend it bears */
   double floor_price; /* per thousandth of a m2 */
   int pairs;          /* still open */
   int wavers;         /* the item whose tier matters most to the bound; PLAN_NONE: none does */
