@@ -12,14 +12,22 @@
 
 static const struct {
   double studs_added, studs_an_opening, stud_short_m, bridging_m;
+  int studs_a_corner, studs_a_tee, studs_an_end, jambs, headers, light_mil, jamb_mil;
   int plates, plates_bearing, tracks;
   double channel_ends_m, clip_ends_m, cut_below_m, cut_waste, opening_kept_m2, fireblock_m;
   double boxes_per_10m, finish_above_m, screws_m, sheet_m;
   int finish_hidden, finish_tile;
 } rules = {
     /* framing: common practice, no source */
-    .studs_added = 0.10,     /* share for corners, tees and free ends */
-    .studs_an_opening = 3,   /* two jambs, and the header cut from a stud */
+    .studs_added = 0.10,   /* share for corners, tees and free ends that are not counted */
+    .studs_an_opening = 3, /* two jambs, and the header cut from a stud */
+    .studs_a_corner = 2,
+    .studs_a_tee = 1,
+    .studs_an_end = 1,
+    .jambs = 2, /* a door that is counted */
+    .headers = 1,
+    .light_mil = 18, /* 25 gauge studs take jambs of 20 gauge drywall studs */
+    .jamb_mil = 30,
     .stud_short_m = 0.010,   /* precut studs, made for three plates, stand with two */
     .bridging_m = 48 * INCH, /* load-bearing steel: rows no further apart */
     .plates = 2,             /* wood, a row */
@@ -175,14 +183,30 @@ double cost_stud_length_m(const price_book *book, const catalog *c, const brief 
   return stock_length(&book->stock[f->material], clear);
 }
 
-static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w,
-                      const char *section) {
-  const frame *f = &c->frames[w->frame];
-  double spacing = wall_spacing_m(w->spacing_mm);
-  double run = (ceil(e->length_m / spacing - count_slack) + 1) * (1 + rules.studs_added);
-  double pieces = stud_rows(f) * (run + rules.studs_an_opening * b->opening_count);
-  double length = cost_stud_length_m(g->book, c, b, w);
-  price_slot stud = g->book->studs[w->frame];
+static bool is_counted(const brief *b) {
+  return b->corners >= 0 || b->tees >= 0 || b->free_ends >= 0 || b->doors >= 0;
+}
+
+static int counted(int n) {
+  return n > 0 ? n : 0; /* what is not said beside other counts is none */
+}
+
+/* The frame whose studs are the jambs of a counted door: of light steel the same web in 30 mil,
+ * where the catalog has it. */
+static int jamb_frame(const catalog *c, int frame_index) {
+  const frame *f = &c->frames[frame_index];
+  if (f->material != FRAME_STEEL || f->mil > rules.light_mil) return frame_index;
+  for (size_t i = 0; i < c->frame_count; i++) {
+    const frame *o = &c->frames[i];
+    bool heavier = o->material == FRAME_STEEL && o->layout == FRAME_SINGLE &&
+                   o->mil == rules.jamb_mil &&
+                   fabs(o->stud_depth_m - f->stud_depth_m) < count_slack;
+    if (heavier) return (int)i;
+  }
+  return frame_index;
+}
+
+static void put_pieces(bag *g, price_slot stud, double pieces, double length, const char *section) {
   double hours = 0;
   if (stud.item != CATALOG_NONE) {
     double above = fmax(0, length - g->book->tall_stud_m - rules.stud_short_m);
@@ -190,6 +214,26 @@ static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c,
         pieces * (g->book->items[stud.item].hours_each + g->book->tall_stud_hours_per_m * above);
   }
   put_all(g, stud, pieces * length, NET_WASTE, hours, section);
+}
+
+/* Studs at the spacing from end to end, and what stands besides: counted, or a share. */
+static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w,
+                      const char *section) {
+  int rows = stud_rows(&c->frames[w->frame]);
+  double length = cost_stud_length_m(g->book, c, b, w);
+  double run = ceil(e->length_m / wall_spacing_m(w->spacing_mm) - count_slack) + 1;
+  price_slot stud = g->book->studs[w->frame];
+  if (!is_counted(b)) {
+    run = run * (1 + rules.studs_added) + rules.studs_an_opening * b->opening_count;
+    put_pieces(g, stud, rows * run, length, section);
+    return;
+  }
+  int framed = b->doors > b->opening_count ? b->doors : b->opening_count;
+  run += rules.studs_a_corner * counted(b->corners) + rules.studs_a_tee * counted(b->tees) +
+         rules.studs_an_end * counted(b->free_ends) + rules.headers * framed;
+  put_pieces(g, stud, rows * run, length, section);
+  put_pieces(g, g->book->studs[jamb_frame(c, w->frame)], rows * rules.jambs * framed, length,
+             section);
 }
 
 static void put_frame(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w) {

@@ -70,6 +70,10 @@ void job_defaults(brief *b) {
       .code = CODE_NONE,
       .length_m = 3.0,
       .height_m = 2.7,
+      .corners = -1,
+      .tees = -1,
+      .free_ends = -1,
+      .doors = -1,
       .floors_above = -1,
       .shear_side = CATALOG_NONE,
       .lateral_pa = 240,
@@ -214,6 +218,10 @@ static void read_wall(reader *r, const json_value *v, brief *out) {
        AT(ceiling_m[1])},
       {"top", FIELD_CHOICE, 0, 0, 0, 0, job_top_words, AT(top)},
       {"head", FIELD_CHOICE, 0, 0, 0, 0, job_head_words, AT(head)},
+      {"corners", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(corners)},
+      {"tees", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(tees)},
+      {"free_ends", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(free_ends)},
+      {"doors", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(doors)},
   };
   read_object(r, v, table, COUNT(table), out);
   for (int i = 0; v && i < 2; i++)

@@ -74,6 +74,7 @@ typedef struct brief {
   bool storeys_given, sprinklered;
   double length_m, height_m; /* default 3.0 x 2.7 in a brief; 10 x 3 when rating without one */
   double ceiling_m[2];       /* 0 = none: boards to the deck */
+  int corners, tees, free_ends, doors; /* for the takeoff of studs; -1 = not said */
   wall_top top;
   wall_head head;
   target targets[BRIEF_MAX_TARGETS];

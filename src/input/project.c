@@ -206,6 +206,10 @@ static void read_walls(job_reader *r, const json_value *v, project *out) {
 
 /* Sizes that no project states for all its walls, and those it may leave to the rows. */
 static void settle_sizes(job_reader *r, const json_value *wall, brief *common) {
+  if (common->corners >= 0 || common->tees >= 0 || common->free_ends >= 0 || common->doors >= 0)
+    fault(r, ERROR_FIELD_UNKNOWN, wall,
+          "the corners, tees, free ends and doors of each wall stand in its row of the schedule, "
+          "not here");
   if (common->length_m < UNSAID_M)
     fault(r, ERROR_FIELD_UNKNOWN, wall,
           "the length of each wall stands in its row of the schedule, not here");

@@ -183,8 +183,8 @@ static void put_demand(builder *k, const row_values *v) {
     put_number(key, b->openings[i].stc);
   }
   for (int i = 0; limited && i < 2; i++) put_number(key, b->side[i].fastening_length_m);
-  const int counts[] = {v->corners, v->tees, v->doors};
-  for (int i = 0; limited && i < 3; i++) put_number(key, counts[i]);
+  const int counts[] = {b->corners, b->tees, b->free_ends, b->doors};
+  for (int i = 0; limited && i < 4; i++) put_number(key, counts[i]);
 }
 
 /* The index of the type that a wall keeps, CATALOG_NONE when it is free. */
@@ -234,9 +234,10 @@ static void add_wall(builder *k, row_values *v) {
       .length_m = v->b.length_m,
       .height_m = v->b.height_m,
       .fastening_length_m = {v->b.side[0].fastening_length_m, v->b.side[1].fastening_length_m},
-      .corners = v->corners,
-      .tees = v->tees,
-      .doors = v->doors,
+      .corners = v->b.corners,
+      .tees = v->b.tees,
+      .free_ends = v->b.free_ends,
+      .doors = v->b.doors,
       .existing_type = v->existing_type,
       .mark = v->mark,
       .basis = v->basis_words};
@@ -342,6 +343,10 @@ void schedule_brief(const schedule *s, int wall, brief *out) {
   *out = s->classes[w->of_class].demand;
   out->title = w->id;
   out->length_m = w->length_m;
+  out->corners = w->corners;
+  out->tees = w->tees;
+  out->free_ends = w->free_ends;
+  out->doors = w->doors;
   for (int i = 0; i < 2; i++) {
     int own = w->turned ? 1 - i : i;
     out->side[i].room = room[own];

@@ -15,7 +15,7 @@ typedef struct schedule_wall {
   int count;                           /* copies, at least 1 */
   double length_m, height_m;           /* of one copy */
   double fastening_length_m[2];        /* of the wall's own sides; 0 = the whole side */
-  int corners, tees, doors;            /* of one copy; -1 = not said */
+  int corners, tees, free_ends, doors; /* of one copy; -1 = not said */
   const char *existing_type;           /* "" = none */
   int mark;                            /* index of existing_type in the project's types;
                                           CATALOG_NONE without */

@@ -86,9 +86,10 @@ static const column_row columns[ROW_COLUMNS] = {
     [COLUMN_OPENING_KIND] = {"opening kind|opening", CELL_TEXT, 0, 0, 0, NULL, AT(opening_kind)},
     [COLUMN_OPENING_AREA] = {"opening area", CELL_AREA, 1, 0, 1000, NULL, AT(opening_area_m2)},
     [COLUMN_OPENING_STC] = {"opening stc", CELL_NUMBER, 1, 0, 100, NULL, AT(opening_stc)},
-    [COLUMN_CORNERS] = {"corners", CELL_INTEGER, 0, 0, 1000, NULL, AT(corners)},
-    [COLUMN_TEES] = {"tees", CELL_INTEGER, 0, 0, 1000, NULL, AT(tees)},
-    [COLUMN_DOORS] = {"doors", CELL_INTEGER, 0, 0, 1000, NULL, AT(doors)},
+    [COLUMN_CORNERS] = {"corners", CELL_INTEGER, 0, 0, JOB_COUNT_MAX, NULL, AT(b.corners)},
+    [COLUMN_TEES] = {"tees", CELL_INTEGER, 0, 0, JOB_COUNT_MAX, NULL, AT(b.tees)},
+    [COLUMN_FREE_ENDS] = {"free ends", CELL_INTEGER, 0, 0, JOB_COUNT_MAX, NULL, AT(b.free_ends)},
+    [COLUMN_DOORS] = {"doors", CELL_INTEGER, 0, 0, JOB_COUNT_MAX, NULL, AT(b.doors)},
     [COLUMN_EXISTING_TYPE] = {"existing type", CELL_TEXT, 0, 0, 0, NULL, AT(existing_type)},
     [COLUMN_NOTE] = {"note|notes|remark|remarks", CELL_TEXT, 0, 0, 0, NULL, AT(note)},
 };
@@ -456,9 +457,6 @@ static void set_defaults(const project *p, row_values *v) {
       .top = (int)b->top,
       .head = (int)b->head,
       .margin = p->margin,
-      .corners = -1,
-      .tees = -1,
-      .doors = -1,
       .mark = CATALOG_NONE,
   };
   v->b.title = "";

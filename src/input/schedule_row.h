@@ -52,6 +52,7 @@ typedef enum row_column {
   COLUMN_OPENING_STC,
   COLUMN_CORNERS,
   COLUMN_TEES,
+  COLUMN_FREE_ENDS,
   COLUMN_DOORS,
   COLUMN_EXISTING_TYPE,
   COLUMN_NOTE,
@@ -67,7 +68,7 @@ typedef struct row_values {
       floors_above; /* words as indices; scope -1 = not said */
   int noncombustible, shear_side, fastening[2], top, head;
   double margin, thickness_max_m, mass_max_kg_m2, opening_area_m2, opening_stc;
-  int corners, tees, doors, mark;
+  int mark;
 } row_values;
 
 /* Adjacencies met so far: thousands of rows name the same few. */

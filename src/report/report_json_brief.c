@@ -1,4 +1,5 @@
-/* A brief as a brief/1 file says it (docs/formats/brief.md), so that another call may be given it. */
+/* A brief as a brief/1 file says it (docs/formats/brief.md), so that another call may be given it.
+ */
 #include "input/job_fields.h"
 #include "report/report_json.h"
 #include "report/view.h"
@@ -12,6 +13,10 @@ static void put_length(markup_json *j, const char *key, double metres) {
   if (metres > 0) markup_json_number(j, key, metres, LENGTH_DIGITS);
 }
 
+static void put_count(markup_json *j, const char *key, int count) {
+  if (count >= 0) markup_json_number(j, key, count, 0);
+}
+
 static void put_size(markup_json *j, const brief *b) {
   markup_json_object(j, "wall", true);
   put_length(j, "length_m", b->length_m);
@@ -20,6 +25,10 @@ static void put_size(markup_json *j, const brief *b) {
   put_length(j, "ceiling_b_m", b->ceiling_m[SIDE_B]);
   markup_json_string(j, "top", job_top_words[b->top]);
   markup_json_string(j, "head", job_head_words[b->head]);
+  put_count(j, "corners", b->corners);
+  put_count(j, "tees", b->tees);
+  put_count(j, "free_ends", b->free_ends);
+  put_count(j, "doors", b->doors);
   markup_json_close(j);
 }
 

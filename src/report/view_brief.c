@@ -55,6 +55,19 @@ static void add_building(field_list *l) {
   add(l, "Sprinklered", yes_no(b->sprinklered), !b->sprinklered);
 }
 
+/* What was counted for the takeoff of studs. */
+static void add_counts(field_list *l) {
+  const brief *b = l->brief;
+  const struct {
+    const char *name;
+    int count;
+  } counts[] = {
+      {"Corners", b->corners}, {"Tees", b->tees}, {"Free ends", b->free_ends}, {"Doors", b->doors}};
+  for (size_t i = 0; i < sizeof counts / sizeof counts[0]; i++)
+    if (counts[i].count >= 0)
+      add(l, counts[i].name, text_format(l->report->arena, "%d", counts[i].count), false);
+}
+
 static void add_wall(field_list *l) {
   const brief *b = l->brief;
   static const char *const ceilings[] = {"Ceiling, side A", "Ceiling, side B"};
@@ -64,6 +77,7 @@ static void add_wall(field_list *l) {
     if (b->ceiling_m[s] > 0) add(l, ceilings[s], height(l, b->ceiling_m[s]), false);
   add(l, "Top of the wall", b->top == TOP_CEILING ? "at the ceiling" : "at the deck",
       b->top == l->usual.top);
+  add_counts(l);
   add(l, "Head", b->head == HEAD_SLIP ? "slip" : "rigid", b->head == l->usual.head);
 }
 
@@ -134,8 +148,7 @@ static const char *surface_mass(const field_list *l, double kg_m2) {
 static void add_limits(field_list *l) {
   const brief *b = l->brief;
   bool us = l->report->units == UNITS_US;
-  if (b->thickness_m.has_min)
-    add(l, "Thickness at least", thickness(l, b->thickness_m.min), false);
+  if (b->thickness_m.has_min) add(l, "Thickness at least", thickness(l, b->thickness_m.min), false);
   if (b->thickness_m.has_max) add(l, "Thickness at most", thickness(l, b->thickness_m.max), false);
   if (b->mass_kg_m2.has_min) add(l, "Mass at least", surface_mass(l, b->mass_kg_m2.min), false);
   if (b->mass_kg_m2.has_max) add(l, "Mass at most", surface_mass(l, b->mass_kg_m2.max), false);
@@ -220,15 +233,14 @@ static void add_means(field_list *l) {
   bool us = l->report->units == UNITS_US;
   double value = b->floor_area_value_per_m2;
   add(l, "Value of floor area",
-      value > 0
-          ? view_money(l->report, us ? value * UNITS_M2_PER_FT2 : value, us ? "ft2" : "m2")
-          : "not counted",
+      value > 0 ? view_money(l->report, us ? value * UNITS_M2_PER_FT2 : value, us ? "ft2" : "m2")
+                : "not counted",
       value == 0);
-  add(l, "Build", b->build == BUILD_ANY ? "any legal wall" : "ordinary", b->build == l->usual.build);
+  add(l, "Build", b->build == BUILD_ANY ? "any legal wall" : "ordinary",
+      b->build == l->usual.build);
   add_patterns(l, "Only", b->only, b->only_count);
   add_patterns(l, "Without", b->without, b->without_count);
-  if (l->report->prices)
-    add(l, "Price book", l->report->prices->name, l->report->usual_prices);
+  if (l->report->prices) add(l, "Price book", l->report->prices->name, l->report->usual_prices);
   for (int i = 0; i < b->listing_count; i++)
     add(l, "Fire listings", file_name(b->listings[i]), false);
 }

@@ -65,13 +65,18 @@ static bool same_sides(const brief *x, const brief *y) {
   return true;
 }
 
+static bool same_counts(const brief *x, const brief *y) {
+  return x->corners == y->corners && x->tees == y->tees && x->free_ends == y->free_ends &&
+         x->doors == y->doors;
+}
+
 /* Everything that a takeoff reads. */
 static bool same_takeoff(const brief *x, const brief *y) {
   return equal(x->length_m, y->length_m) && equal(x->height_m, y->height_m) && x->top == y->top &&
          x->head == y->head && x->loadbearing == y->loadbearing && x->fire_min == y->fire_min &&
          x->boxes_given == y->boxes_given && equal(x->boxes_per_10m, y->boxes_per_10m) &&
          equal(x->floor_area_value_per_m2, y->floor_area_value_per_m2) && same_openings(x, y) &&
-         same_sides(x, y);
+         same_counts(x, y) && same_sides(x, y);
 }
 
 static void add_row(cost_class *k, const brief *b, double count) {

@@ -80,7 +80,7 @@ for table, kind in tables.items():
 # What a project says as a brief does is asked as a brief asks it; openings and counts belong to a wall.
 brief, project = schemas["brief"].schema, schemas["project"].schema
 def plain(wall):
-    own = ("length_", "corners", "tees", "doors")
+    own = ("length_", "corners", "tees", "free_ends", "doors")
     keys = {k: v for k, v in wall["properties"].items() if not k.startswith(own)}
     return keys, [r for r in wall["allOf"] if not any(k.startswith(own) for k in r["not"]["required"])]
 shared = set(brief["properties"]) - {"septum", "openings"}

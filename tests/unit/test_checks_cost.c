@@ -223,6 +223,47 @@ static void large_opening(brief *b) {
   b->openings[0] = (opening){.kind = "glazing", .area_m2 = 40 * UNITS_M2_PER_FT2};
 }
 
+/* What stands in the wall, counted. */
+static void counted(brief *b, int corners, int tees, int free_ends, int doors) {
+  b->corners = corners;
+  b->tees = tees;
+  b->free_ends = free_ends;
+  b->doors = doors;
+}
+static void none_counted(brief *b) {
+  counted(b, 0, 0, 0, 0);
+}
+static void one_corner(brief *b) {
+  counted(b, 1, -1, -1, -1);
+}
+static void two_tees(brief *b) {
+  counted(b, -1, 2, -1, -1);
+}
+static void one_free_end(brief *b) {
+  counted(b, -1, -1, 1, -1);
+}
+static void one_door(brief *b) {
+  counted(b, -1, -1, -1, 1);
+}
+static void door_among_openings(brief *b) {
+  door(b);
+  counted(b, 0, 0, 0, 2);
+}
+static void opening_beside_counts(brief *b) {
+  door(b);
+  counted(b, 0, -1, -1, -1);
+}
+static void corridor_wall(brief *b) {
+  counted(b, 1, 3, 0, 2);
+}
+static void double_wall(brief *b) {
+  counted(b, 2, 1, 0, 1);
+}
+static void tall_wall(brief *b) {
+  b->head = HEAD_SLIP;
+  counted(b, 1, 0, 1, 1);
+}
+
 #define STEEL_LINE   "typex-16 | steel-92-18@610, glass-89 | typex-16"
 #define BEARING_LINE "typex-16 | steel-92-33@406, glass-89 | typex-16"
 #define WOOD_LINE    "typex-16 | wood-89@406, glass-89 | typex-16"
@@ -259,6 +300,43 @@ static const struct rule_row {
      "bridging", 2 * 24 * 1.04},
     {"door: two jambs and a header", "CP", STEEL_LINE, 24, 9, door, "steel-92-18",
      (13 * 1.1 + 3) * 9},
+    /* counted: n + 2 a corner + 1 a tee + 1 a free end + header and two jambs a door */
+    {"nothing beside the studs", "CP: counts take the place of 10 %", STEEL_LINE, 24, 9,
+     none_counted, "steel-92-18", 13 * 9},
+    {"a corner", "CP: + 2", STEEL_LINE, 24, 9, one_corner, "steel-92-18", (13 + 2) * 9},
+    {"two tees", "CP: + 1 each", STEEL_LINE, 24, 9, two_tees, "steel-92-18", (13 + 2) * 9},
+    {"a free end", "CP: + 1", STEEL_LINE, 24, 9, one_free_end, "steel-92-18", (13 + 1) * 9},
+    {"a door in 25 gauge: header", "CP", STEEL_LINE, 24, 9, one_door, "steel-92-18", (13 + 1) * 9},
+    {"a door in 25 gauge: jambs", "CP: 20 gauge", STEEL_LINE, 24, 9, one_door, "steel-92-30",
+     2 * 9},
+    {"a door in 20 gauge", "CP: its own studs", "typex-16 | steel-92-33@406 | typex-16", 24, 9,
+     one_door, "steel-92-33", (19 + 3) * 9},
+    {"a door in wood", "CP", WOOD_LINE, 24, 8, one_door, "wood-89", (19 + 3) * 92.625 / 12},
+    {"staggered: each face", "CP", STAG_LINE, 24, 8, two_tees, "wood-89",
+     2 * (19 + 2) * 92.625 / 12},
+    {"staggered steel: jambs of the face's studs", "CP",
+     "typex-16 | steel-64-18-stag-102@610, glass-65 | typex-16", 24, 9, one_door, "steel-64-30",
+     2 * 2 * 9},
+    {"two doors, one of them an opening: headers", "CP: once each", STEEL_LINE, 24, 9,
+     door_among_openings, "steel-92-18", (13 + 2) * 9},
+    {"two doors, one of them an opening: jambs", "CP: once each", STEEL_LINE, 24, 9,
+     door_among_openings, "steel-92-30", 4 * 9},
+    {"an opening beside other counts", "CP: framed as a door", STEEL_LINE, 24, 9,
+     opening_beside_counts, "steel-92-30", 2 * 9},
+    /* 30 ft of corridor at 16 in: ceil(360/16) + 1 = 24, a corner 2, tees 3, two doors 2 + 4 */
+    {"by hand: 30 ft corridor wall with two doors", "CP", WOOD_LINE, 30, 9, corridor_wall,
+     "wood-89", 35 * 104.625 / 12},
+    {"by hand: the same in 25 gauge at 16 in", "CP", "typex-16 | steel-92-18@406 | typex-16", 30, 9,
+     corridor_wall, "steel-92-18", 31 * 9},
+    {"by hand: its jambs", "CP", "typex-16 | steel-92-18@406 | typex-16", 30, 9, corridor_wall,
+     "steel-92-30", 4 * 9},
+    /* a row of 12 ft at 16 in: 9 + 1, corners 4, a tee 1, a door 3; two rows */
+    {"by hand: 9 ft double wood wall", "CP", DOUBLE_LINE, 12, 9, double_wall, "wood-89",
+     2 * 18 * 104.625 / 12},
+    /* 20 ft at 16 in: 15 + 1, a corner 2, a free end 1, a door 3, of 14 ft */
+    {"by hand: 14 ft steel wall with a slip head", "CP",
+     "typex-16 | steel-152-33@406, glass-140 | typex-16", 20, 14, tall_wall, "steel-152-33",
+     22 * 14},
     {"door: board is not deducted", "CP: only above 32 ft2", STEEL_LINE, 24, 9, door, "typex-16",
      2 * 216 * 1.1},
     {"door: batts are deducted", "CP", STEEL_LINE, 24, 9, door, "glass-89-24in", (216 - 21) * 1.03},
@@ -409,6 +487,7 @@ static brief seeded_brief(uint64_t *s) {
   }
   b.opening_count = (int)(next_random(s) % 2);
   b.openings[0] = (opening){.kind = "door", .area_m2 = 1.9};
+  if (next_random(s) % 2) counted(&b, (int)(next_random(s) % 3), (int)(next_random(s) % 3), -1, 1);
   return b;
 }
 
@@ -546,12 +625,26 @@ END_TEST
 
 #define ROWS(table) (int)(sizeof(table) / sizeof((table)[0]))
 
+/* A door's jambs by hand: 25 gauge, 9 ft, 24 in: two studs of 20 gauge are 18 ft x 1.20 = 21.60 and
+ * 2 x 0.132 h x 62 = 16.368; the other studs lose 10 % of 13 and gain the header. */
+START_TEST(jambs_have_their_own_price) {
+  takeoff t;
+  brief b = brief_of(24, 9);
+  one_door(&b);
+  (void)cost_of(&b, STEEL_LINE, &t);
+  ck_assert_int_eq(line_of(&t, "steel-92-30", LINE_MATERIAL).cents, 2160);
+  ck_assert_int_eq(line_of(&t, "steel-92-30", LINE_LABOUR).cents, 1637);
+  ck_assert_int_eq(line_of(&t, "steel-92-18", LINE_LABOUR).cents, 9548); /* 14 x 0.11 x 62 */
+}
+END_TEST
+
 int main(void) {
   Suite *s = suite_create("cost");
   TCase *t = tcase_create("cost");
   tcase_add_checked_fixture(t, setup, teardown);
   tcase_add_test(t, by_hand);
   tcase_add_loop_test(t, proportions, 0, ROWS(proportion_rows));
+  tcase_add_test(t, jambs_have_their_own_price);
   tcase_add_loop_test(t, single_rule, 0, ROWS(rule_rows));
   tcase_add_loop_test(t, labour, 0, ROWS(labour_rows));
   tcase_add_test(t, tall_studs);

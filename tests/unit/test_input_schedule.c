@@ -254,12 +254,13 @@ START_TEST(columns_of_a_pair_belong_to_their_sides) {
 END_TEST
 
 START_TEST(what_is_not_a_demand_stays_with_the_wall) {
-  ck_assert_msg(read_walls(IBC ", \"types\": {\"P1\": \"typex-16 | wood-89@406 | typex-16\"}",
-                           "id,level,from,to,length_ft,target,qty,corners,tees,doors,Existing "
-                           "Type,paint\n"
-                           "W-1,L2,a,b,10,50,3,2,0,1,p-1,red\n"
-                           "W2,l 2,c,d,20,50,,,,,,\n"),
-                "%s", messages());
+  ck_assert_msg(
+      read_walls(IBC ", \"types\": {\"P1\": \"typex-16 | wood-89@406 | typex-16\"}",
+                 "id,level,from,to,length_ft,target,qty,corners,tees,free ends,doors,Existing "
+                 "Type,paint\n"
+                 "W-1,L2,a,b,10,50,3,2,0,1,1,p-1,red\n"
+                 "W2,l 2,c,d,20,50,,,,,,,\n"),
+      "%s", messages());
   const schedule_wall *one = &s->wall[0], *two = &s->wall[1];
   ck_assert_int_eq(s->count, 2);
   ck_assert_int_eq(s->class_count, 1);
@@ -268,13 +269,16 @@ START_TEST(what_is_not_a_demand_stays_with_the_wall) {
   ck_assert_int_eq(s->storey_count, 1);
   ck_assert_int_eq(one->count, 3);
   ck_assert_int_eq(two->count, 1);
-  ck_assert(one->corners == 2 && one->tees == 0 && one->doors == 1);
-  ck_assert(two->corners == -1 && two->tees == -1 && two->doors == -1);
+  ck_assert(one->corners == 2 && one->tees == 0 && one->free_ends == 1 && one->doors == 1);
+  ck_assert(two->corners == -1 && two->tees == -1 && two->free_ends == -1 && two->doors == -1);
   ck_assert_int_eq(one->mark, 0);
   ck_assert_int_eq(two->mark, CATALOG_NONE);
   ck_assert_str_eq(csv_text(one->row, csv_column(s->table, "paint")), "red");
   ck_assert(fabs(s->classes[0].run_m - 50 * 0.3048) < LENGTH_ROUNDING);
+  schedule_brief(s, 0, &b);
+  ck_assert(b.corners == 2 && b.tees == 0 && b.free_ends == 1 && b.doors == 1);
   schedule_brief(s, 1, &b);
+  ck_assert(b.corners == -1 && b.doors == -1);
   ck_assert_str_eq(b.title, "W2");
   ck_assert_str_eq(shown(&b), "length=6.096 a(c) b(d)");
 }
