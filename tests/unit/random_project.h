@@ -1,5 +1,4 @@
-/* Projects made from a seed, and types as the solver's problem: for the tests and the measurements of
- * plan. */
+/* Projects made from a seed, for the tests and the measurements of plan. */
 #ifndef TESTS_RANDOM_PROJECT_H
 #define TESTS_RANDOM_PROJECT_H
 
@@ -7,7 +6,6 @@
 
 #include "base/text.h"
 #include "search/types.h"
-#include "select/plan.h"
 
 /* ---- dice ---- */
 
@@ -69,9 +67,10 @@ static const char *const project_demands[] = {
 };
 enum { PROJECT_DEMANDS = sizeof project_demands / sizeof project_demands[0] };
 
-/* A schedule of `rows` rows over the first `classes` demands from `first` on (round the end). */
-static inline const char *project_walls(arena *a, unsigned seed, int rows, int classes,
-                                        const int *demand) {
+/* A schedule of `rows` rows of up to `copies` walls, each of one of the `classes` demands (indices),
+ * which may stand twice in the list. */
+static inline const char *project_walls(arena *a, unsigned seed, int rows, unsigned copies,
+                                        int classes, const int *demand) {
   text t;
   text_init(&t, a, (size_t)rows * 120 + 400);
   text_putf(&t, "id,storey,length,height,count,target,fire,loadbearing,floors_above,noncombustible,"
@@ -82,8 +81,8 @@ static inline const char *project_walls(arena *a, unsigned seed, int rows, int c
     unsigned tenths = 12 + project_dice(96); /* 1.2 to 10.7 m */
     const char *asked = project_demands[demand[c]];
     bool podium = strstr(asked, "strict") != NULL;
-    text_putf(&t, "W%d,%s,%u.%um,%s,1,%s\n", i + 1, podium ? "1" : "2", tenths / 10, tenths % 10,
-              podium ? "3.6m" : "2.7m", asked);
+    text_putf(&t, "W%d,%s,%u.%um,%s,%u,%s\n", i + 1, podium ? "1" : "2", tenths / 10,
+              tenths % 10, podium ? "3.6m" : "2.7m", 1 + project_dice(copies), asked);
   }
   return t.data;
 }
@@ -101,91 +100,51 @@ static inline schedule *project_from(arena *a, diag_list *d, const catalog *c, c
   return t ? schedule_read(a, d, c, out, t) : NULL;
 }
 
-/* ---- types as a problem ---- */
+/* ---- small projects ---- */
 
-static inline void problem_items(arena *a, const plan_context *x, const plan_types *t,
-                                 plan_problem *p) {
-  const price_book *book = x->prices;
-  double markup = (1 + book->sales_tax) * (1 + book->overhead_profit);
-  plan_item *item = arena_array(a, (size_t)t->items, sizeof *item);
-  for (int i = 0; i < t->items; i++) {
-    const price_item *from = &book->items[t->item[i]];
-    bool breaks = x->project->quantity_breaks;
-    item[i] = (plan_item){.code = from->code, .tier_count = 1};
-    item[i].tier[0] = (plan_tier){breaks ? from->minimum_order : 0, from->price * markup};
-    for (size_t k = 0; breaks && k < from->break_count; k++)
-      item[i].tier[item[i].tier_count++] =
-          (plan_tier){from->breaks[k].from, from->breaks[k].price * markup};
-    for (int s = 0; s < x->project->stock_count; s++)
-      if (strcmp(x->project->stock[s].item, from->code) == 0)
-        item[i].stock += x->project->stock[s].quantity;
-  }
-  p->item = item;
-  p->items = t->items;
+/* Parts of the catalog for a small project, as patterns of `only`: goods of every kind that are
+ * bought with a least order or breaks among them. */
+static inline const char *project_only(arena *a) {
+  static const char *const boards[] = {"typex-16", "gyp-13-light", "typec-13", "typex-13"};
+  static const char *const special[] = {"abuse-16", "moist-16", "damp-16", "osb-11"};
+  static const char *const frames[] = {"steel-92-18", "steel-92-43", "steel-64-33", "wood-89",
+                                       "wood-140",    "wood-89-double"};
+  static const char *const fills[] = {"glass-89", "stone-89-dense", "cell-89", "glass-140"};
+  return text_format(a, "\"only\":[\"%s\",\"%s\",\"%s\",\"%s\",\"%s\",\"%s\",\"mount:%s\"],",
+                     boards[project_dice(4)], special[project_dice(4)], frames[project_dice(3)],
+                     frames[3 + project_dice(3)], fills[project_dice(4)], fills[project_dice(4)],
+                     project_dice(3) == 0 ? "rc" : "none-of-them");
 }
 
-static inline void problem_uses(arena *a, const plan_context *x, const plan_types *t,
-                                const int *class_of, plan_problem *p) {
-  size_t classes = (size_t)p->classes, types = (size_t)p->types, items = (size_t)t->items;
-  long long *cents = arena_array(a, classes * types, sizeof *cents);
-  double *need = arena_array(a, classes * types * items, sizeof *need);
-  double *floor_m2 = arena_array(a, classes * types, sizeof *floor_m2);
-  int *margin = arena_array(a, classes * types, sizeof *margin);
-  double *run_m = arena_array(a, classes, sizeof *run_m);
-  for (size_t k = 0; k < classes; k++) {
-    size_t c = (size_t)class_of[k];
-    run_m[k] = x->schedule->classes[c].run_m;
-    for (size_t i = 0; i < types; i++) {
-      const type_use *u = &t->type[i].use[c];
-      cents[k * types + i] = u->fits ? u->cents : -1;
-      floor_m2[k * types + i] = u->floor_m2;
-      margin[k * types + i] = u->margin_hundredth;
-      for (size_t n = 0; n < items; n++)
-        need[(k * types + i) * items + n] = t->type[i].need[c * items + n];
-    }
-  }
-  p->cents = cents;
-  p->need = need;
-  p->floor_m2 = floor_m2;
-  p->margin = margin;
-  p->run_m = run_m;
+/* Keys of the project that change what a type may be replaced by. */
+static inline const char *project_rules(arena *a) {
+  static const char *const framing[] = {"none", "none", "storey", "all"};
+  text t;
+  text_init(&t, a, 600);
+  text_putf(&t, "\"quantity_breaks\":%s,", project_dice(4) ? "true" : "false");
+  text_putf(&t, "\"same_framing\":\"%s\",", framing[project_dice(4)]);
+  if (project_dice(2)) text_putf(&t, "\"max_types\":%u,", 1 + project_dice(3));
+  if (project_dice(2)) text_putf(&t, "\"type_setup_cost\":%u,", 200 * project_dice(8));
+  if (project_dice(4) == 0) text_putf(&t, "\"min_run_m\":%u,", 4 * project_dice(8));
+  if (project_dice(2)) text_putf(&t, "\"floor_area_value_per_m2\":%u,", 400 * project_dice(9));
+  if (project_dice(4) == 0)
+    text_putf(&t, "\"stock\":[{\"item\":\"typex-16\",\"quantity\":%u,\"unit\":\"m2\"}],",
+              100 * (1 + project_dice(9)));
+  return t.data;
 }
 
-static inline void problem_framing(arena *a, const plan_context *x, const plan_types *t,
-                                   const int *class_of, plan_problem *p) {
-  int *storey = arena_array(a, (size_t)p->classes, sizeof *storey),
-      *group = arena_array(a, (size_t)p->types, sizeof *group);
-  for (int i = 0; i < p->types; i++) group[i] = t->type[i].group;
-  p->group = group;
-  p->groups = t->groups;
-  if (x->project->same_framing == FRAMING_FREE) return;
-  p->storey = storey;
-  p->storeys = 1;
-  if (x->project->same_framing == FRAMING_ALL) return;
-  p->storeys = x->schedule->storey_count + 1;
-  for (int k = 0; k < p->classes; k++) {
-    storey[k] = x->schedule->storey_count;
-    for (int s = 0; s < x->schedule->storey_count; s++)
-      if (strcmp(x->schedule->storey[s], x->schedule->classes[class_of[k]].storey) == 0)
-        storey[k] = s;
-  }
-}
-
-/* The problem of the classes that some type fits. */
-static inline plan_problem problem_of(arena *a, const plan_context *x, const plan_types *t) {
-  plan_problem p = {.types = t->count};
-  int *class_of = arena_array(a, (size_t)x->schedule->class_count, sizeof *class_of);
-  for (int c = 0; c < x->schedule->class_count; c++)
-    if (!t->refused[c]) class_of[p.classes++] = c;
-  problem_items(a, x, t, &p);
-  problem_uses(a, x, t, class_of, &p);
-  problem_framing(a, x, t, class_of, &p);
-  p.setup_cents = (long long)(x->project->type_setup_cost * 100 + 0.5);
-  p.budget_cents = (long long)(x->project->budget * 100 + 0.5);
-  p.min_run_m = x->project->min_run_m;
-  p.floor_max_m2 = x->project->floor_area_max_m2;
-  p.max_types = x->project->max_types;
-  return p;
+/* The project of a seed: up to `classes` demands that every one of a few walls may keep. */
+static inline schedule *project_small(arena *a, diag_list *d, const catalog *c, unsigned seed,
+                                      int classes, const char *more, project *out) {
+  /* undemanding ones, so that small parts of the catalog have walls for them */
+  static const int modest[] = {17, 18, 19, 20, 21, 22, 23, 25, 33, 34, 35, 29, 30};
+  int demand[8];
+  project_dice_state = seed * 2246822519u + 7;
+  const char *keys = text_format(a, "%s%s%s", project_only(a), project_rules(a), more);
+  for (int i = 0; i < classes; i++) demand[i] = modest[project_dice(13)];
+  unsigned copies = project_dice(3) ? 3 : 40; /* enough for breaks to count */
+  const char *walls = project_walls(a, seed, classes + 3, copies, classes, demand);
+  return project_from(a, d, c, keys, walls, out);
 }
 
 #endif
