@@ -28,6 +28,7 @@ static const double even = 1e-6;
 
 /* The pairs of a part, closed ones left out, a class after the other. */
 typedef struct pairs {
+  int *at;    /* a pair of the problem: which of these it is; PLAN_NONE */
   int *first; /* a class */
   int *pair;  /* which pair of the problem */
   int *type;
@@ -57,6 +58,7 @@ struct plan_relax {
   int *list, *chosen;   /* types in the part; those taken */
   int list_count, chosen_count;
   int near[MOST_NEAR];                   /* types to try in place of the chosen */
+  int *helper;                           /* a type: the pair that gives it its run; PLAN_NONE */
   int *mine;                             /* pairs of one type */
   double *grad_wage, *grad_price, *need; /* and the direction's */
   double grad_floor;
@@ -139,6 +141,8 @@ plan_relax *plan_relax_make(const plan_call *call, const plan_case *x, plan_gues
   r->taken = arena_array(a, types, sizeof *r->taken);
   r->list = arena_array(a, types, sizeof *r->list);
   r->chosen = arena_array(a, types, sizeof *r->chosen);
+  r->helper = arena_array(a, types, sizeof *r->helper);
+  r->in.at = arena_array(a, pairs_room, sizeof *r->in.at);
   r->mine = arena_array(a, classes, sizeof *r->mine);
   r->grad_wage = arena_array(a, classes, sizeof *r->grad_wage);
   r->dir_wage = arena_array(a, classes, sizeof *r->dir_wage);
@@ -231,8 +235,10 @@ static void list_pairs(plan_relax *r, plan_part *part) {
     in->first[c] = in->count;
     for (int t = 0; t < p->types; t++) {
       int k = (int)plan_pair(p, c, t);
+      in->at[k] = PLAN_NONE;
       part->open[k] = part->open[k] && can_buy(r, part, k);
       if (!part->open[k]) continue;
+      in->at[k] = in->count;
       in->pair[in->count] = k;
       in->type[in->count] = t;
       in->cost[in->count++] = (double)p->cents[k] / 100;
@@ -274,29 +280,52 @@ static double goods_term(const plan_relax *r, const unsigned *tiers, int i, doub
   return least;
 }
 
-/* What a type with too short a run must still take on, at best in parts of classes. */
-static double run_short(plan_relax *r, int t) {
+static double run_of(const plan_relax *r, int k) {
   const plan_terms *s = r->x->terms;
-  double lacks = (double)r->x->min_run_mm / PLAN_MM_PER_M - r->run[t], more = 0;
-  int n = 0;
-  for (int k = 0; k < r->in.count; k++)
-    if (r->in.type[k] == t && r->in.over[k] >= 0) r->mine[n++] = k;
+  return (double)s->run_mm[r->in.pair[k] / s->p->types] / PLAN_MM_PER_M;
+}
+
+/* The least cost of `lacks` m of run from `n` pairs shorter than that, at best in parts. */
+static double fill_in_parts(plan_relax *r, int n, double lacks) {
+  double more = 0;
   while (lacks > sure && n > 0) {
     int best = 0;
-    double least = HUGE_VAL;
-    for (int i = 0; i < n; i++) {
-      double run = (double)s->run_mm[r->in.pair[r->mine[i]] / s->p->types] / PLAN_MM_PER_M;
-      if (!(run > 0) || r->in.over[r->mine[i]] / run >= least) continue;
-      least = r->in.over[r->mine[i]] / run;
-      best = i;
-    }
-    if (least >= HUGE_VAL) break;
-    double run = (double)s->run_mm[r->in.pair[r->mine[best]] / s->p->types] / PLAN_MM_PER_M;
-    more += least * fmin(run, lacks);
-    lacks -= run;
+    for (int i = 1; i < n; i++)
+      if (r->in.over[r->mine[i]] * run_of(r, r->mine[best]) <
+          r->in.over[r->mine[best]] * run_of(r, r->mine[i]))
+        best = i;
+    int k = r->mine[best];
+    more += r->in.over[k] * fmin(1, lacks / run_of(r, k));
+    lacks -= run_of(r, k);
     r->mine[best] = r->mine[--n];
   }
   return lacks > sure ? HUGE_VAL : more;
+}
+
+/* What a type with too short a run must take on besides: one class that is long enough, or shorter
+ * ones, of which the last may be a part; no less. `forced` (PLAN_NONE: none) is taken anyway.
+ * *whole: the one class, where that is the least. */
+static double run_short(plan_relax *r, int t, int forced, int *whole) {
+  const plan_problem *p = r->x->terms->p;
+  double lacks = (double)r->x->min_run_mm / PLAN_MM_PER_M - r->run[t], least = HUGE_VAL;
+  int n = 0;
+  *whole = PLAN_NONE;
+  if (forced != PLAN_NONE && r->in.over[forced] >= 0) lacks -= run_of(r, forced);
+  if (lacks <= sure) return 0;
+  for (int c = 0; c < p->classes; c++) {
+    int k = r->in.at[plan_pair(p, c, t)];
+    if (k == PLAN_NONE || k == forced || r->in.over[k] < 0 || !(run_of(r, k) > 0)) continue;
+    if (run_of(r, k) < lacks) {
+      r->mine[n++] = k;
+    } else if (r->in.over[k] < least) {
+      least = r->in.over[k];
+      *whole = k;
+    }
+  }
+  double parts = fill_in_parts(r, n, lacks);
+  if (parts >= least) return least;
+  *whole = PLAN_NONE;
+  return parts;
 }
 
 /* Setups with the shares of least spends, and what that leaves to be paid by quantity. */
@@ -345,7 +374,8 @@ static void price_pairs(plan_relax *r) {
     int t = r->list[i];
     bool is_short = r->x->min_run_mm > 0 && r->sum[t] < 0 &&
                     r->run[t] * PLAN_MM_PER_M < (double)r->x->min_run_mm;
-    r->rho[t] = r->sum[t] + (is_short ? run_short(r, t) : 0);
+    r->helper[t] = PLAN_NONE;
+    r->rho[t] = r->sum[t] + (is_short ? run_short(r, t, PLAN_NONE, &r->helper[t]) : 0);
   }
 }
 
@@ -402,7 +432,8 @@ static double gradient(plan_relax *r) {
   for (int c = 0; c < p->classes; c++) {
     r->grad_wage[c] = 1;
     for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++) {
-      if (r->in.over[k] >= 0 || !r->taken[r->in.type[k]]) continue;
+      int type = r->in.type[k];
+      if (!r->taken[type] || (r->in.over[k] >= 0 && r->helper[type] != k)) continue;
       int pair = r->in.pair[k];
       r->grad_wage[c] -= 1;
       r->grad_floor += (double)s->floor[pair];
@@ -495,7 +526,7 @@ static void close_class(plan_relax *r, plan_part *part, int c, double fixed, dou
   for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++)
     if (r->in.over[k] < 0) r->sum[r->in.type[k]] -= r->in.over[k];
   for (int i = 0; i < r->list_count; i++) {
-    double rho = r->sum[r->list[i]];
+    double rho = fmax(r->sum[r->list[i]], r->rho[r->list[i]]);
     if (rho >= 0) continue;
     if (f.most <= 0) {
       f.sum += rho;
@@ -510,11 +541,14 @@ static void close_class(plan_relax *r, plan_part *part, int c, double fixed, dou
   for (int i = 0; i < f.count; i++) f.sum += kept[i];
   f.last = f.most > 0 && f.count == f.most ? kept[f.most - 1] : 0;
   for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++) {
-    double rho = r->sum[r->in.type[k]];
+    int t = r->in.type[k], whole;
+    double rho = fmax(r->sum[t], r->rho[t]);
     /* the type itself is open: it takes the place of its own term, or of the least of the others */
     double others = f.sum - (rho < 0 && rho <= f.last ? rho : f.last);
     if (f.most <= 0) others = f.sum - fmin(rho, 0);
-    if (fixed + r->in.over[k] + rho + others > ceiling + sure) part->open[r->in.pair[k]] = false;
+    double own = r->sum[t] + r->in.over[k];
+    if (r->x->min_run_mm > 0) own += run_short(r, t, k, &whole);
+    if (fixed + own + others > ceiling + sure) part->open[r->in.pair[k]] = false;
   }
   for (int k = r->in.first[c]; k < r->in.first[c + 1]; k++)
     if (r->in.over[k] < 0) r->sum[r->in.type[k]] += r->in.over[k];
