@@ -35,20 +35,14 @@ static bool out_of_time(const plan_work *w) {
   return w->order->seconds > 0 && clock_seconds() - w->began >= w->order->seconds;
 }
 
-/* Types that only serve plans without the type `without` (PLAN_NONE: without none) stay out. */
-static const bool *locked_out(const plan_work *w, int without) {
-  bool *out = arena_array(w->arena, (size_t)w->types.count, sizeof *out);
-  for (int t = 0; t < w->types.count; t++) {
-    int behind = w->types.type[t].behind;
-    out[t] = t == without || (behind != TYPES_NONE && behind != without);
-  }
-  return out;
-}
-
-static bool solve(plan_work *w, const char *stage, const plan_problem *p, const int *start,
+/* `nodes`: after so many the search gives up; 0 = never. */
+static bool solve(plan_work *w, const char *stage, const plan_problem *p, int nodes,
                   const char *save_path, plan_solution *out) {
+  bool same_types = p->cents == w->problem.cents;
+  const int *start = same_types && w->best.found ? w->best.type_of : NULL;
   watcher to = {w->order, stage};
   plan_how how = {.seconds = seconds_left(w),
+                  .nodes = nodes,
                   .margin = w->x->project->aim == AIM_MARGIN,
                   .start = start,
                   .stop = w->order->stop,
@@ -83,11 +77,12 @@ static plan_point point_of(const plan_work *w, const plan_problem *p, const plan
 }
 
 /* False only when the solver failed. */
-static bool solve_point(plan_work *w, const char *stage, const plan_problem *p, plan_point *out) {
+static bool solve_point(plan_work *w, const char *stage, const plan_problem *p, int nodes,
+                        plan_point *out) {
   *out = (plan_point){.max_types = p->max_types};
   if (stopped(w) || out_of_time(w)) return true;
   plan_solution *s = arena_alloc(w->arena, sizeof *s);
-  if (!solve(w, stage, p, w->best.found ? w->best.type_of : NULL, NULL, s)) return false;
+  if (!solve(w, stage, p, nodes, NULL, s)) return false;
   *out = point_of(w, p, s);
   return true;
 }
@@ -101,7 +96,7 @@ static bool set_curve(plan_work *w) {
         text_format(w->arena, "at most %d type%s", p.max_types, p.max_types == 1 ? "" : "s");
     if (p.max_types == w->problem.max_types)
       w->out->curve[i] = point_of(w, &p, &w->best);
-    else if (!solve_point(w, stage, &p, &w->out->curve[i]))
+    else if (!solve_point(w, stage, &p, 0, &w->out->curve[i]))
       return false;
   }
   return true;
@@ -128,14 +123,12 @@ static void set_stop(plan_work *w) {
 static bool set_keeping(plan_work *w) {
   for (int i = 0; i < w->out->type_count; i++) {
     plan_used *u = &w->out->type[i];
-    plan_problem p = w->problem;
+    plan_problem p;
     if (u->locked) continue;
-    p.locked_out = locked_out(w, u->candidate);
-    plan_solution *s = arena_alloc(w->arena, sizeof *s);
     if (stopped(w) || out_of_time(w)) return true;
-    const char *stage = text_format(w->arena, "without %s", u->name);
-    if (!solve(w, stage, &p, NULL, NULL, s)) return false;
-    u->without = point_of(w, &p, s);
+    plan_problem_without(w, u->candidate, &p);
+    if (!solve_point(w, text_format(w->arena, "without %s", u->name), &p, 0, &u->without))
+      return false;
   }
   return true;
 }
@@ -144,9 +137,6 @@ static bool set_keeping(plan_work *w) {
 static bool relax(plan_problem *p, plan_rule rule) {
   plan_problem was = *p;
   switch (rule) {
-  case PLAN_RULE_TYPES:
-    p->max_types = 0;
-    return was.max_types > 0;
   case PLAN_RULE_RUN:
     p->min_run_m = 0;
     return was.min_run_m > 0;
@@ -159,18 +149,23 @@ static bool relax(plan_problem *p, plan_rule rule) {
   case PLAN_RULE_FRAMING:
     p->storey = NULL;
     return was.storey != NULL;
+  case PLAN_RULE_TYPES:
   case PLAN_RULES:
     break;
   }
   return false;
 }
 
+/* The number of types is left out: the curve tells its price, and without any end to it a project
+ * is a far harder puzzle. Of the others, what so many nodes of branch and bound do not settle stands
+ * as the best found. */
 static bool set_relaxed(plan_work *w) {
+  enum { MOST_NODES = 200 };
   for (int r = 0; r < PLAN_RULES; r++) {
     plan_problem p = w->problem;
     if (!relax(&p, (plan_rule)r)) continue;
     const char *stage = text_format(w->arena, "without %s", plan_rule_names[r]);
-    if (!solve_point(w, stage, &p, &w->out->relaxed[r])) return false;
+    if (!solve_point(w, stage, &p, MOST_NODES, &w->out->relaxed[r])) return false;
   }
   return true;
 }
@@ -226,13 +221,12 @@ static void note_solution(plan_work *w) {
 
 /* Further solves tell what the plan's own could not when time is up, so they are left out then. */
 static bool solve_all(plan_work *w) {
-  w->problem.locked_out = locked_out(w, PLAN_NONE);
   if (w->problem.classes == 0) {
     w->best = (plan_solution){.status = SOLVER_INFEASIBLE, .bound_cents = LLONG_MIN};
     note_solution(w);
     return true;
   }
-  if (!solve(w, "plan", &w->problem, NULL, w->order->save_model, &w->best)) return false;
+  if (!solve(w, "plan", &w->problem, 0, w->order->save_model, &w->best)) return false;
   note_solution(w);
   if (w->best.found && !plan_set_rows(w)) return false;
   if (w->best.status == SOLVER_LIMIT) return true;
@@ -260,9 +254,9 @@ bool plan_explain(arena *a, diag_list *d, const plan_context *x, const wall *mar
   types_find(a, x, TYPES_AND_SECONDS, &w->types);
   out->walls = w->types.walls;
   out->rated = w->types.rated;
-  out->candidates = w->types.count;
   plan_lock(w);
   plan_set_problem(w);
+  out->candidates = w->problem.types;
   set_unplanned(w);
   if (!solve_all(w)) return false;
   plan_set_drawn(w);

@@ -154,7 +154,8 @@ typedef struct plan_answer {
   int goods_count;
   plan_point curve[PLAN_CURVE];
   int stops_at; /* the fewest types that no further one up to PLAN_CURVE improves on; 0: unknown */
-  plan_point relaxed[PLAN_RULES]; /* without one rule of the project; done where it is in force */
+  plan_point relaxed[PLAN_RULES]; /* without one rule of the project but the number of types; done
+                                    where it is in force */
   plan_reason *unplanned;
   int unplanned_count; /* classes that no type fits */
   int unplanned_rows, unplanned_walls;

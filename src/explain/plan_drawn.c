@@ -68,7 +68,7 @@ static void add_planned_row(scenario *s, const plan_work *w, int row) {
   s->money.walls += r->money.walls;
   s->money.floor += r->money.floor;
   s->floor_m2 += r->floor_m2;
-  for (int i = 0; i < w->types.items; i++) s->need[i] += w->row_need[row * w->types.items + i];
+  for (int i = 0; i < w->problem.items; i++) s->need[i] += w->row_need[row * w->problem.items + i];
 }
 
 /* `known` holds, per class and way round, how the mark stands there. */
@@ -158,7 +158,7 @@ void plan_set_drawn(plan_work *w) {
   const schedule *sched = w->x->schedule;
   size_t classes = (size_t)sched->class_count, marks = (size_t)w->x->project->mark_count;
   if (marks == 0) return;
-  scenario s = {.need = arena_array(w->arena, (size_t)w->types.items, sizeof *s.need),
+  scenario s = {.need = arena_array(w->arena, (size_t)w->problem.items, sizeof *s.need),
                 .mark_used = arena_array(w->arena, marks, sizeof *s.mark_used),
                 .type_used =
                     arena_array(w->arena, (size_t)w->out->type_count, sizeof *s.type_used)};

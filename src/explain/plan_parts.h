@@ -13,6 +13,9 @@ typedef struct plan_work {
   double began; /* clock_seconds */
   plan_types types;
   plan_problem problem;
+  int *goods;    /* of types.item: those that some wall of the problem or of the drawings needs */
+  int *goods_of; /* and back, of each of types.item; -1: needed by none */
+  int *kind;     /* of `types`, of each type of the problem: those that a plan can need */
   int *class_of; /* schedule class of each class of the problem */
   int *place_of; /* and back; PLAN_NONE: no type fits */
   plan_solution best;
@@ -29,7 +32,7 @@ typedef struct plan_costed {
 
 /* ---- plan_problem.c ---- */
 
-/* The index among the goods of the whole project, -1 for what is bought wall by wall. */
+/* The index among the goods of the problem, -1 for what is bought wall by wall. */
 int plan_goods_index(const plan_work *w, int item);
 /* What tax, overhead and profit make of one unit of material. */
 double plan_markup(const price_book *book);
@@ -37,9 +40,11 @@ double plan_markup(const price_book *book);
 plan_costed plan_cost_row(plan_work *w, int row, const wall *built);
 /* Sees to it that classes of a locked mark have its wall as their only type. */
 void plan_lock(plan_work *w);
-/* The problem of the classes that some type fits. */
+/* The problem of the classes that some type fits, with the types that a plan can need. */
 void plan_set_problem(plan_work *w);
-/* What the goods of a need per item (types.items values, takeoff units) cost, bought at once. */
+/* The same without one of its types (an index of w->types), with those that serve in its place. */
+void plan_problem_without(plan_work *w, int type, plan_problem *out);
+/* What the goods of a need per item (problem.items values, takeoff units) cost, bought at once. */
 long long plan_goods_cost(plan_work *w, const double *need);
 
 /* ---- plan_rows.c ---- */

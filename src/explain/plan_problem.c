@@ -5,10 +5,16 @@
 
 /* ---- what a row costs ---- */
 
-int plan_goods_index(const plan_work *w, int item) {
+/* Of types.item, whether any wall needs it or not; -1: bought wall by wall. */
+static int tiered(const plan_work *w, int item) {
   for (int i = 0; i < w->types.items; i++)
     if (w->types.item[i] == item) return i;
   return -1;
+}
+
+int plan_goods_index(const plan_work *w, int item) {
+  int i = tiered(w, item);
+  return i >= 0 ? w->goods_of[i] : -1;
 }
 
 double plan_markup(const price_book *book) {
@@ -19,7 +25,7 @@ static long long goods_material(const plan_work *w, const takeoff *t) {
   long long cents = 0;
   for (int i = 0; i < t->count; i++) {
     const cost_line *l = &t->line[i];
-    if (l->kind == LINE_MATERIAL && plan_goods_index(w, l->item) >= 0) cents += l->cents;
+    if (l->kind == LINE_MATERIAL && tiered(w, l->item) >= 0) cents += l->cents;
   }
   return cents;
 }
@@ -81,7 +87,7 @@ static void set_locked_use(plan_work *w, int of_class, plan_type *t, const wall 
     use->floor_m2 += row->count * row->length_m * judged->thickness_m;
     for (int l = 0; l < w->lines->count; l++) {
       const cost_line *line = &w->lines->line[l];
-      int goods = line->kind == LINE_MATERIAL ? plan_goods_index(w, line->item) : -1;
+      int goods = line->kind == LINE_MATERIAL ? tiered(w, line->item) : -1;
       if (goods >= 0) need[goods] += row->count * line->quantity;
     }
   }
@@ -118,11 +124,49 @@ static void set_tiers(const plan_work *w, const price_item *item, plan_item *out
   }
 }
 
-static const plan_item *goods_of(plan_work *w) {
-  const project *p = w->x->project;
-  plan_item *all = arena_array(w->arena, (size_t)w->types.items, sizeof *all);
+/* Marks what types need where they fit. */
+static void mark_typed(const plan_work *w, bool *needed) {
+  int items = w->types.items;
+  for (int t = 0; t < w->types.count; t++)
+    for (int c = 0; c < w->x->schedule->class_count; c++) {
+      const plan_type *one = &w->types.type[t];
+      for (int i = 0; one->use[c].fits && i < items; i++)
+        needed[i] = needed[i] || one->need[c * items + i] > 0;
+    }
+}
+
+/* And what the walls of the drawings need, which the plan is compared with. */
+static void mark_drawn(plan_work *w, bool *needed) {
+  const schedule *s = w->x->schedule;
+  for (int row = 0; row < s->count; row++) {
+    if (s->wall[row].mark == CATALOG_NONE) continue;
+    (void)plan_cost_row(w, row, &w->mark_wall[s->wall[row].mark]);
+    for (int l = 0; l < w->lines->count; l++) {
+      const cost_line *line = &w->lines->line[l];
+      int at = line->kind == LINE_MATERIAL ? tiered(w, line->item) : -1;
+      if (at >= 0) needed[at] = true;
+    }
+  }
+}
+
+static void list_goods(plan_work *w) {
+  size_t items = (size_t)w->types.items;
+  bool *needed = arena_array(w->arena, items, sizeof *needed);
+  w->goods = arena_array(w->arena, items, sizeof *w->goods);
+  w->goods_of = arena_array(w->arena, items, sizeof *w->goods_of);
+  mark_typed(w, needed);
+  mark_drawn(w, needed);
   for (int i = 0; i < w->types.items; i++) {
-    const price_item *item = &w->x->prices->items[w->types.item[i]];
+    w->goods_of[i] = needed[i] ? w->problem.items : -1;
+    if (needed[i]) w->goods[w->problem.items++] = i;
+  }
+}
+
+static const plan_item *set_goods(plan_work *w) {
+  const project *p = w->x->project;
+  plan_item *all = arena_array(w->arena, (size_t)w->problem.items, sizeof *all);
+  for (int i = 0; i < w->problem.items; i++) {
+    const price_item *item = &w->x->prices->items[w->types.item[w->goods[i]]];
     all[i].code = item->code;
     set_tiers(w, item, &all[i]);
     for (int k = 0; k < p->stock_count; k++)
@@ -137,7 +181,7 @@ long long plan_goods_cost(plan_work *w, const double *need) {
   const double none = 0;
   plan_problem p = {.classes = 1,
                     .types = 1,
-                    .items = w->types.items,
+                    .items = w->problem.items,
                     .cents = &nothing_else,
                     .need = need,
                     .floor_m2 = &none,
@@ -185,28 +229,51 @@ static int *storeys_of(plan_work *w, int *count) {
   return storey;
 }
 
-static void set_pairs(plan_work *w) {
-  plan_problem *p = &w->problem;
-  size_t items = (size_t)p->items, pairs = (size_t)p->classes * (size_t)p->types;
+/* The types that plans without type `without` can need (PLAN_NONE: all plans). */
+static int *list_kinds(plan_work *w, int without, int *count) {
+  int *kind = arena_array(w->arena, (size_t)w->types.count, sizeof *kind);
+  *count = 0;
+  for (int t = 0; t < w->types.count; t++) {
+    int behind = w->types.type[t].behind;
+    bool needed = behind == TYPES_NONE || (without != PLAN_NONE && behind == without);
+    if (t != without && needed) kind[(*count)++] = t;
+  }
+  return kind;
+}
+
+static void set_pairs(plan_work *w, const int *kind, plan_problem *p) {
+  size_t items = (size_t)p->items, all = (size_t)w->types.items;
+  size_t types = (size_t)p->types, pairs = (size_t)p->classes * types;
   long long *cents = arena_array(w->arena, pairs, sizeof *cents);
   double *need = arena_array(w->arena, pairs * items, sizeof *need);
   double *floor_m2 = arena_array(w->arena, pairs, sizeof *floor_m2);
   int *margin = arena_array(w->arena, pairs, sizeof *margin);
   for (size_t k = 0; k < pairs; k++) {
-    size_t of_class = (size_t)w->class_of[k / (size_t)p->types];
-    const plan_type *t = &w->types.type[k % (size_t)p->types];
+    size_t of_class = (size_t)w->class_of[k / types];
+    const plan_type *t = &w->types.type[kind[k % types]];
     const type_use *use = &t->use[of_class];
     cents[k] = use->fits ? use->cents : -1;
     if (!use->fits) continue;
     floor_m2[k] = use->floor_m2;
     margin[k] = use->margin_hundredth;
     for (size_t i = 0; i < items; i++)
-      need[k * items + i] = t->need[of_class * items + i];
+      need[k * items + i] = t->need[of_class * all + (size_t)w->goods[i]];
   }
   p->cents = cents;
   p->need = need;
   p->floor_m2 = floor_m2;
   p->margin = margin;
+}
+
+static void set_types(plan_work *w, const int *kind, plan_problem *p) {
+  int *group = arena_array(w->arena, (size_t)p->types, sizeof *group);
+  p->groups = 0;
+  for (int t = 0; t < p->types; t++) {
+    group[t] = w->types.type[kind[t]].group;
+    if (group[t] >= p->groups) p->groups = group[t] + 1;
+  }
+  p->group = group;
+  set_pairs(w, kind, p);
 }
 
 static void set_rules(plan_work *w) {
@@ -218,21 +285,23 @@ static void set_rules(plan_work *w) {
   p->floor_max_m2 = from->floor_area_max_m2;
   p->max_types = from->max_types;
   p->storey = storeys_of(w, &p->storeys);
-  for (int t = 0; t < p->types; t++)
-    if (w->types.type[t].group >= p->groups) p->groups = w->types.type[t].group + 1;
 }
 
 void plan_set_problem(plan_work *w) {
   plan_problem *p = &w->problem;
-  *p = (plan_problem){.types = w->types.count, .items = w->types.items};
+  *p = (plan_problem){0};
   number_classes(w);
-  p->item = goods_of(w);
-  set_pairs(w);
+  list_goods(w);
+  p->item = set_goods(w);
+  w->kind = list_kinds(w, PLAN_NONE, &p->types);
+  set_types(w, w->kind, p);
   double *run_m = arena_array(w->arena, (size_t)p->classes, sizeof *run_m);
-  int *group = arena_array(w->arena, (size_t)p->types, sizeof *group);
   for (int c = 0; c < p->classes; c++) run_m[c] = w->x->schedule->classes[w->class_of[c]].run_m;
-  for (int t = 0; t < p->types; t++) group[t] = w->types.type[t].group;
   p->run_m = run_m;
-  p->group = group;
   set_rules(w);
+}
+
+void plan_problem_without(plan_work *w, int type, plan_problem *out) {
+  *out = w->problem;
+  set_types(w, list_kinds(w, type, &out->types), out);
 }

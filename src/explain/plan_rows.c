@@ -60,7 +60,7 @@ static void set_place(plan_work *w, int of_class) {
   int place = w->place_of[of_class];
   *at = (plan_place){.type = PLAN_NONE, .locked = k->locked != CATALOG_NONE};
   if (place == PLAN_NONE) return;
-  at->type = w->best.type_of[place];
+  at->type = w->kind[w->best.type_of[place]];
   const plan_type *t = &w->types.type[at->type];
   judge_context asking = {
       .catalog = w->x->catalog, .prices = w->x->prices, .brief = &k->demand};
@@ -244,7 +244,7 @@ static void tally_lines(tally *k, int row, const wall *built) {
     plan_need *n = need_of(k, l->item, l->section, stud_length(w, row, built, l->item));
     n->quantity += copies * l->quantity;
     if (n->goods < 0) s->material_cents += copies * l->cents;
-    if (n->goods >= 0) w->row_need[row * w->types.items + n->goods] += copies * l->quantity;
+    if (n->goods >= 0) w->row_need[row * w->problem.items + n->goods] += copies * l->quantity;
   }
 }
 
@@ -270,7 +270,7 @@ static void set_row(tally *k, int row) {
 /* Each row bears of an item's price what it needs of it: shares that add up to the whole. */
 static void share_goods(plan_work *w) {
   plan_answer *out = w->out;
-  int items = w->types.items;
+  int items = w->problem.items;
   for (int i = 0; i < items; i++) {
     double all = 0, before = 0;
     long long given = 0;
@@ -360,10 +360,10 @@ static void set_goods(tally *k) {
   plan_work *w = k->w;
   plan_answer *out = w->out;
   double markup = plan_markup(w->x->prices);
-  out->goods_count = w->types.items;
+  out->goods_count = w->problem.items;
   out->goods = arena_array(w->arena, (size_t)out->goods_count, sizeof *out->goods);
   for (int i = 0; i < out->goods_count; i++) {
-    out->goods[i] = (plan_goods){.item = w->types.item[i], .buy = w->best.buy[i]};
+    out->goods[i] = (plan_goods){.item = w->types.item[w->goods[i]], .buy = w->best.buy[i]};
     if (out->goods[i].buy.cents == 0) continue;
     section_of(k, goods_section(out, w->x->prices, i))->material_cents +=
         llround((double)out->goods[i].buy.cents / markup);
@@ -403,7 +403,7 @@ bool plan_set_rows(plan_work *w) {
   tally k = {.w = w, .section_cap = SECTIONS_AT_FIRST, .need_cap = NEEDS_AT_FIRST};
   out->section = arena_array(w->arena, SECTIONS_AT_FIRST, sizeof *out->section);
   out->need = arena_array(w->arena, NEEDS_AT_FIRST, sizeof *out->need);
-  w->row_need = arena_array(w->arena, (size_t)(s->count * w->types.items), sizeof *w->row_need);
+  w->row_need = arena_array(w->arena, (size_t)(s->count * w->problem.items), sizeof *w->row_need);
   for (int c = 0; c < s->class_count; c++) set_place(w, c);
   set_types(w);
   for (int row = 0; row < s->count; row++) set_row(&k, row);
