@@ -65,7 +65,8 @@ typedef struct septum_options {
                              NULL = none */
   const char *save_html;  /* rate, pick, ladder, trim, plan: path for the answer as one page that needs nothing
                              else, in the units of text; NULL = none */
-  const char *save_xlsx;  /* rate, pick: path for the takeoff as a spreadsheet; NULL = none */
+  const char *save_xlsx;  /* rate, pick, ladder, trim: path for the answer as a workbook, in the units of
+                             text; NULL = none */
   const char *save_prices; /* prices_update: path for the new price book; NULL = none */
   const char *today;      /* prices: the date that ages count to, "2031-03-01"; NULL = the newest in
                              the files. There is no clock in here */

@@ -6,8 +6,7 @@
 #include "api/request.h"
 #include "base/file.h"
 #include "report/report_html.h"
-#include "report/report_xlsx.h"
-#include "report/takeoff.h"
+#include "report/sheets.h"
 
 void septum_options_init(septum_options *options) {
   memset(options, 0, sizeof *options);
@@ -67,33 +66,19 @@ typedef struct answer_job {
   septum_answer *made;
 } answer_job;
 
-/* The takeoff of `x` (NULL: no wall, no spreadsheet) in the spreadsheet that the options name. */
-static bool write_sheets(call *k, const answer_job *job, const report *r, const assessment *x) {
-  const char *xlsx = job->options.save_xlsx;
-  if (xlsx == NULL || x == NULL) return true;
-  sheet sheets[TAKEOFF_SHEETS];
-  takeoff_sheets(r, x, sheets);
-  return report_xlsx_write(k->memory, &k->diags, sheets, TAKEOFF_SHEETS, xlsx);
-}
-
 /* Writes the files that the options name, if any, and hands the answer out. */
-static status hand_out(call *k, answer_job *job, const report *r, const assessment *x,
-                       const call_texts *t, status when_done) {
-  if (!call_texts_whole(k, t) || !write_sheets(k, job, r, x) ||
+static status hand_out(call *k, answer_job *job, const sheet_book *book, const call_texts *t,
+                       status when_done) {
+  if (!call_texts_whole(k, t) || !call_save_book(k, t, book, job->options.save_xlsx) ||
       !call_save_page(k, t, job->options.save_html))
     return k->diags.worst;
   job->made = call_deliver(k, t, job->options.save_csv);
   return job->made != NULL ? when_done : k->diags.worst;
 }
 
-/* What the options ask for and this build lacks is said before any work. */
-static bool can_write(call *k, const answer_job *job) {
-  return job->options.save_xlsx == NULL || report_xlsx_there(&k->diags);
-}
-
 static status rate_stage(call *k, void *given) {
   answer_job *job = given;
-  if (!can_write(k, job)) return k->diags.worst;
+  if (!call_can_write(k, &job->options)) return k->diags.worst;
   request *prepared = arena_alloc(k->memory, sizeof *prepared);
   bool ready = request_prepare(k, job->handle, &job->options, job->options.brief, false, prepared);
   wall w = wall_empty();
@@ -113,7 +98,9 @@ static status rate_stage(call *k, void *given) {
   report_rate_json(&prepared->report, x, &t.json);
   report_takeoff_csv(&prepared->report, x, &t.csv);
   if (job->options.save_html) report_rate_html(&prepared->report, x, &t.page);
-  return hand_out(k, job, &prepared->report, x, &t, STATUS_OK);
+  sheet_book *book = call_book(k, &job->options);
+  if (book) sheets_rate(&prepared->report, x, book);
+  return hand_out(k, job, book, &t, STATUS_OK);
 }
 
 /* Most points of the chart of candidates. */
@@ -141,7 +128,7 @@ static bool choose(call *k, const answer_job *job, const request *prepared, pick
 
 static status pick_stage(call *k, void *given) {
   answer_job *job = given;
-  if (!can_write(k, job)) return k->diags.worst;
+  if (!call_can_write(k, &job->options)) return k->diags.worst;
   request *prepared = arena_alloc(k->memory, sizeof *prepared);
   explanation *why = arena_alloc(k->memory, sizeof *why);
   pick_choice *choice = arena_alloc(k->memory, sizeof *choice);
@@ -157,7 +144,9 @@ static status pick_stage(call *k, void *given) {
   report_takeoff_csv(&prepared->report, why->chosen, &t.csv);
   if (job->options.save_html)
     report_pick_html(&prepared->report, why, choice, candidates, &t.page);
-  return hand_out(k, job, &prepared->report, why->chosen, &t,
+  sheet_book *book = call_book(k, &job->options);
+  if (book) sheets_pick(&prepared->report, why, choice, book);
+  return hand_out(k, job, book, &t,
                   why->chosen != NULL ? STATUS_OK : STATUS_NO_WALL);
 }
 

@@ -4,6 +4,7 @@
 #include <string.h>
 
 #include "base/file.h"
+#include "report/report_xlsx.h"
 
 enum { LINE_MAX_BYTES = 4000, ANSWER_MAX_BYTES = 64 << 20 };
 
@@ -92,6 +93,19 @@ bool call_save_page(call *k, const call_texts *t, const char *path) {
   if (path == NULL) return true;
   return call_texts_whole(k, t) &&
          file_write(k->memory, &k->diags, path, t->page.data, t->page.len);
+}
+
+bool call_can_write(call *k, const septum_options *options) {
+  return options->save_xlsx == NULL || report_xlsx_there(&k->diags);
+}
+
+sheet_book *call_book(call *k, const septum_options *options) {
+  return options->save_xlsx ? arena_alloc(k->memory, sizeof(sheet_book)) : NULL;
+}
+
+bool call_save_book(call *k, const call_texts *t, const sheet_book *book, const char *path) {
+  if (path == NULL) return true;
+  return call_texts_whole(k, t) && report_xlsx_write(k->memory, &k->diags, book, path);
 }
 
 septum_answer *call_deliver(call *k, const call_texts *t, const char *csv_path) {

@@ -8,6 +8,7 @@
 #include "base/diag.h"
 #include "base/text.h"
 #include "input/catalog.h"
+#include "report/sheet.h"
 #include "septum.h"
 
 struct septum {
@@ -59,6 +60,13 @@ void call_texts_init(call *k, call_texts *t);
 bool call_texts_whole(call *k, const call_texts *t);
 /* Writes the page to `path` (NULL: nothing is done). False after messages. */
 bool call_save_page(call *k, const call_texts *t, const char *path);
+/* What the options ask for and this build lacks is said before any work: false after that. */
+bool call_can_write(call *k, const septum_options *options);
+/* A workbook to fill, in the call's memory; NULL where the options ask for none. */
+sheet_book *call_book(call *k, const septum_options *options);
+/* Writes the workbook to `path` (NULL: nothing is done), nothing when a text is cut. False after
+ * messages. */
+bool call_save_book(call *k, const call_texts *t, const sheet_book *book, const char *path);
 /* The answer, and its CSV in the file `csv_path` (NULL: none). NULL after messages. */
 septum_answer *call_deliver(call *k, const call_texts *t, const char *csv_path);
 

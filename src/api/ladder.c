@@ -3,6 +3,7 @@
 #include "api/request.h"
 #include "report/report_html.h"
 #include "report/report_ladder.h"
+#include "report/sheets.h"
 
 typedef struct ladder_job {
   const septum *handle;
@@ -84,7 +85,11 @@ static status hand_out(call *k, ladder_job *job, const request *q, const ladder_
   report_ladder_json(&q->report, found, &t.json);
   report_ladder_csv(&q->report, found, &t.csv);
   if (job->options.save_html) report_ladder_html(&q->report, found, &t.page);
-  if (!call_save_page(k, &t, job->options.save_html)) return k->diags.worst;
+  sheet_book *book = call_book(k, &job->options);
+  if (book) sheets_ladder(&q->report, found, book);
+  if (!call_save_book(k, &t, book, job->options.save_xlsx) ||
+      !call_save_page(k, &t, job->options.save_html))
+    return k->diags.worst;
   job->made = call_deliver(k, &t, job->options.save_csv);
   if (job->made == NULL) return k->diags.worst;
   return found->count > 0 ? STATUS_OK : STATUS_NO_WALL;
@@ -103,6 +108,7 @@ static status ladder_stage(call *k, void *given) {
   request *q = arena_alloc(k->memory, sizeof *q);
   ladder_terms terms;
   sound_metric metric;
+  if (!call_can_write(k, &job->options)) return k->diags.worst;
   if (!read_terms(k, &job->options, &metric, &terms)) return k->diags.worst;
   if (!request_prepare(k, job->handle, &job->options, job->path, false, q)) return k->diags.worst;
   terms.own_value = own_value(&q->brief, metric);

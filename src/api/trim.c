@@ -5,6 +5,7 @@
 #include "api/request.h"
 #include "report/report_html.h"
 #include "report/report_trim.h"
+#include "report/sheets.h"
 #include "report/view_trim.h"
 
 static const double SLACK_UNIT_M = 1e-3; /* a bare number is in millimetres */
@@ -153,7 +154,11 @@ static status hand_out(call *k, trim_job *job, const request *q, const trim_answ
   report_trim_json(&q->report, found, &t.json);
   report_trim_csv(&q->report, found, &t.csv);
   if (job->options.save_html) report_trim_html(&q->report, found, &t.page);
-  if (!call_save_page(k, &t, job->options.save_html)) return k->diags.worst;
+  sheet_book *book = call_book(k, &job->options);
+  if (book) sheets_trim(&q->report, found, book);
+  if (!call_save_book(k, &t, book, job->options.save_xlsx) ||
+      !call_save_page(k, &t, job->options.save_html))
+    return k->diags.worst;
   job->made = call_deliver(k, &t, job->options.save_csv);
   if (job->made == NULL) return k->diags.worst;
   return found->proposal_count > 0 ? STATUS_OK : STATUS_NO_WALL;
@@ -165,6 +170,7 @@ static status trim_stage(call *k, void *given) {
   trim_terms terms;
   wall w = wall_empty();
   const char *name = NULL;
+  if (!call_can_write(k, &job->options)) return k->diags.worst;
   if (!read_terms(k, &job->options, &terms)) return k->diags.worst;
   bool ready = request_prepare(k, job->handle, &job->options, job->path, false, q);
   if (!request_wall(k, job->handle->catalog, job->specified, &w, &name) || !ready)

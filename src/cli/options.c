@@ -89,7 +89,8 @@ static const option_row option_rows[] = {
      "units of text and CSV; default: the brief's, else us"},
     {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
     {"write", "FILE", OPTION_WRITE, CLI_PRICES, "write the price book with the list's prices"},
-    {"xlsx", "FILE", OPTION_XLSX, CLI_RATE | CLI_PICK, "also write the takeoff as a spreadsheet"},
+    {"xlsx", "FILE", OPTION_XLSX, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
+     "also write the answer as a spreadsheet"},
 };
 enum { OPTION_ROWS = sizeof option_rows / sizeof option_rows[0] };
 

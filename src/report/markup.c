@@ -343,3 +343,60 @@ void markup_csv_field(text *out, const char *value, bool first) {
 void markup_csv_end(text *out) {
   text_put(out, "\r\n");
 }
+
+/* ---- spreadsheet cells ---- */
+
+/* "_xHHHH_" stands for one character there (ECMA-376, ST_Xstring). */
+static bool is_cell_escape(const char *s) {
+  if (s[0] != '_' || s[1] != 'x') return false;
+  return strspn(s + 2, "0123456789ABCDEFabcdef") >= 4 && s[6] == '_';
+}
+
+static bool is_plain_cell(const char *value) {
+  size_t n = 0;
+  for (const unsigned char *s = (const unsigned char *)value; *s != '\0'; s++, n++)
+    if (*s >= 0x7F || (*s < 0x20 && *s != '\n' && *s != '\t') || is_cell_escape((const char *)s))
+      return false;
+  return n <= MARKUP_CELL_UNITS;
+}
+
+/* One character and what it counts: units of UTF-16, an escape as it is written. */
+static int put_cell_character(text *out, const char *s, size_t length) {
+  static const char guard[] = "_x005F_";
+  if (length == 0 || barred((const unsigned char *)s, length)) {
+    text_put(out, "\xEF\xBF\xBD");
+    return 1;
+  }
+  if (is_cell_escape(s)) {
+    text_put(out, guard);
+    return (int)sizeof guard - 1;
+  }
+  if (*s == '\r')
+    text_char(out, ' ');
+  else
+    text_putn(out, s, length);
+  return length == 4 ? 2 : 1;
+}
+
+const char *markup_cell(arena *a, const char *value) {
+  enum { MAX_BYTES = 4 * MARKUP_CELL_UNITS };
+  if (value == NULL) return "";
+  if (is_plain_cell(value)) return value;
+  text out;
+  text_init(&out, a, MAX_BYTES);
+  int units = 0;
+  size_t cut = 0; /* where an ellipsis still has room */
+  for (const char *s = value; *s != '\0';) {
+    size_t length = utf8_length((const unsigned char *)s);
+    if (units < MARKUP_CELL_UNITS) cut = out.len;
+    units += put_cell_character(&out, s, length);
+    s += length ? length : 1;
+    if (units > MARKUP_CELL_UNITS) {
+      out.len = cut;
+      out.data[cut] = '\0';
+      text_put(&out, "\xE2\x80\xA6");
+      break;
+    }
+  }
+  return out.data;
+}

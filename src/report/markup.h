@@ -89,4 +89,10 @@ void markup_csv_field(text *out, const char *value, bool first);
 /* Ends a CSV line: CR LF. */
 void markup_csv_end(text *out);
 
+/* Text of a spreadsheet cell: cleaned as between tags; what the format would read as an escape of its
+ * own ("_x0041_") is guarded; beyond what a cell holds it is cut and ends in an ellipsis. In `a`, or
+ * `value` itself where nothing changes. NULL is nothing. */
+enum { MARKUP_CELL_UNITS = 32767 }; /* of UTF-16 */
+const char *markup_cell(arena *a, const char *value);
+
 #endif

@@ -5,6 +5,7 @@
 #ifdef SEPTUM_XLSX
 
 #include <errno.h>
+#include <locale.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
@@ -34,9 +35,12 @@ static const struct {
     [SHEET_LABEL] = {NULL, true, false, false, false, 0},
     [SHEET_HEAD] = {NULL, true, true, true, false, 0},
     [SHEET_COUNT] = {"#,##0", false, false, false, false, 0},
+    [SHEET_TENTHS] = {"#,##0.0", false, false, false, false, 0},
     [SHEET_QUANTITY] = {"#,##0.00", false, false, false, false, 0},
+    [SHEET_LENGTH] = {"#,##0.000", false, false, false, false, 0},
     [SHEET_RATE] = {"#,##0.0000", false, false, false, false, 0},
     [SHEET_SHARE] = {"0.00%", false, false, false, false, 0},
+    [SHEET_WHOLE_SHARE] = {"0%", false, false, false, false, 0},
     [SHEET_MONEY] = {"#,##0.00", false, false, false, false, 0},
     [SHEET_TOTAL] = {"#,##0.00", true, false, false, true, 0},
 };
@@ -75,10 +79,13 @@ static void set_print(lxw_worksheet *page, const sheet *s) {
     worksheet_set_landscape(page);
   worksheet_set_paper(page, s->a4 ? A4 : LETTER);
   worksheet_fit_to_pages(page, 1, 0);
-  (void)worksheet_set_footer(page, "&L&A&RPage &P of &N");
+  (void)worksheet_set_footer(page, "&L&F, &A&RPage &P of &N");
   if (s->head < 0) return;
-  worksheet_freeze_panes(page, (lxw_row_t)s->head + 1, 0);
+  worksheet_freeze_panes(page, (lxw_row_t)s->head + 1, (lxw_col_t)s->keep);
   (void)worksheet_repeat_rows(page, (lxw_row_t)s->head, (lxw_row_t)s->head);
+  if (s->filter_last > 0)
+    (void)worksheet_autofilter(page, (lxw_row_t)s->head, 0, (lxw_row_t)s->filter_last,
+                               (lxw_col_t)(s->columns - 1));
 }
 
 static lxw_error put_sheet(lxw_workbook *book, const sheet *s, lxw_format *const *formats) {
@@ -94,17 +101,28 @@ static lxw_error put_sheet(lxw_workbook *book, const sheet *s, lxw_format *const
   return LXW_NO_ERROR;
 }
 
-static lxw_error put_book(const char *path, const sheet *sheets, int count) {
+static lxw_error put_book(const char *path, const sheet_book *b) {
   lxw_format *formats[SHEET_STYLES];
   lxw_workbook *book = workbook_new(path);
   if (book == NULL) return LXW_ERROR_MEMORY_MALLOC_FAILED;
   lxw_doc_properties about = {.created = made_at};
   lxw_error error = workbook_set_properties(book, &about), closed;
   make_formats(book, formats);
-  for (int i = 0; i < count && error == LXW_NO_ERROR; i++)
-    error = put_sheet(book, &sheets[i], formats);
+  for (int i = 0; i < b->count && error == LXW_NO_ERROR; i++)
+    error = put_sheet(book, &b->sheet[i], formats);
   closed = workbook_close(book);
   return error != LXW_NO_ERROR ? error : closed;
+}
+
+/* The library prints numbers by the locale of the thread; a file needs the point of the C locale. */
+static lxw_error put_book_in_c(const char *path, const sheet_book *b) {
+  locale_t plain = newlocale(LC_ALL_MASK, "C", (locale_t)0);
+  if (plain == (locale_t)0) return LXW_ERROR_MEMORY_MALLOC_FAILED;
+  locale_t before = uselocale(plain);
+  lxw_error error = put_book(path, b);
+  (void)uselocale(before);
+  freelocale(plain);
+  return error;
 }
 
 /* ---- the file ----
@@ -133,7 +151,7 @@ static int open_own(char *path) {
   return mkstemp(path);
 }
 
-bool report_xlsx_write(arena *a, diag_list *d, const sheet *sheets, int count, const char *path) {
+bool report_xlsx_write(arena *a, diag_list *d, const sheet_book *b, const char *path) {
   char own[PATH_BYTES];
   diag_place place = {.file = path};
   int descriptor = open_own(own);
@@ -143,7 +161,7 @@ bool report_xlsx_write(arena *a, diag_list *d, const sheet *sheets, int count, c
     return false;
   }
   (void)close(descriptor);
-  lxw_error error = put_book(own, sheets, count);
+  lxw_error error = put_book_in_c(own, b);
   size_t len = 0;
   bool full = false;
   char *bytes = error == LXW_NO_ERROR ? take_file(a, own, &len, &full) : NULL;
@@ -163,10 +181,9 @@ bool report_xlsx_there(diag_list *d) {
   return false;
 }
 
-bool report_xlsx_write(arena *a, diag_list *d, const sheet *sheets, int count, const char *path) {
+bool report_xlsx_write(arena *a, diag_list *d, const sheet_book *b, const char *path) {
   (void)a;
-  (void)sheets;
-  (void)count;
+  (void)b;
   (void)path;
   return report_xlsx_there(d);
 }

@@ -9,6 +9,6 @@
 bool report_xlsx_there(diag_list *d);
 /* Writes the sheets, in their order, whole or not at all. Equal sheets give equal bytes. False
  * after an error. */
-bool report_xlsx_write(arena *a, diag_list *d, const sheet *sheets, int count, const char *path);
+bool report_xlsx_write(arena *a, diag_list *d, const sheet_book *b, const char *path);
 
 #endif

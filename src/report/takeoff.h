@@ -1,10 +1,9 @@
-/* The takeoff of a wall as files: CSV and sheets. The lines of the answer by section, with what to
+/* The takeoff of a wall as CSV and sheets have it: the lines of the answer by section, with what to
  * buy beside them. */
 #ifndef REPORT_TAKEOFF_H
 #define REPORT_TAKEOFF_H
 
 #include "report/buy.h"
-#include "report/sheet.h"
 
 typedef struct takeoff_rows {
   int count;
@@ -17,9 +16,5 @@ typedef struct takeoff_rows {
 void takeoff_rows_of(const report *r, const assessment *x, takeoff_rows *out);
 /* "minimum order 640 ft2", "price from 8000 ft2 on"; "" without. */
 const char *takeoff_note(const report *r, const buy_line *b);
-
-enum { TAKEOFF_SHEETS = 3 };
-/* Summary, Takeoff, Buy list. */
-void takeoff_sheets(const report *r, const assessment *x, sheet out[TAKEOFF_SHEETS]);
 
 #endif

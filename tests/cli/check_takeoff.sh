@@ -11,4 +11,4 @@ if ! "$python" -c 'import openpyxl' 2>/dev/null; then
   exit 0
 fi
 unset SEPTUM_DATA
-exec "$python" "$1/tests/cli/takeoff.py" "$1" "$2"
+exec "$python" -B "$1/tests/cli/takeoff.py" "$1" "$2"
