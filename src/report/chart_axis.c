@@ -48,7 +48,8 @@ void chart_ticks_over(double low, double high, int most, bool whole, chart_ticks
     if (last <= first) last = first + 1;
     if (last - first + 1 <= most) break;
   }
-  *out = (chart_ticks){.count = (int)(last - first) + 1, .step = step, .decimals = decimals_of(step)};
+  *out =
+      (chart_ticks){.count = (int)(last - first) + 1, .step = step, .decimals = decimals_of(step)};
   for (int i = 0; i < out->count; i++) out->value[i] = (first + i) * step;
 }
 
@@ -74,7 +75,8 @@ chart_money chart_money_of(const report *r, double most, const char *per) {
   static const struct {
     double divisor;
     const char *word;
-  } sizes[] = {{1, ""}, {1e3, "thousand "}, {1e6, "million "}, {1e9, "billion "}, {1e12, "trillion "}};
+  } sizes[] = {
+      {1, ""}, {1e3, "thousand "}, {1e6, "million "}, {1e9, "billion "}, {1e12, "trillion "}};
   enum { SIZES = sizeof sizes / sizeof sizes[0], WIDEST = 120 };
   const double six_digits = 999999;
   int i = 0;
@@ -166,14 +168,35 @@ void chart_axis_bands(chart *c, const chart_frame *f) {
 
 /* ---- labels beside a frame ---- */
 
-/* Labels that touch move together, so that their mean stays with the mean of what they want. */
+/* Labels that touch, and move together. */
+typedef struct spread_group {
+  double start; /* of its first label */
+  double sum;   /* of what its labels want their first one's place to be */
+  int first, count;
+} spread_group;
+
+static void set_start(spread_group *g, double pitch, double top, double bottom) {
+  double last = bottom - (g->count - 1) * pitch;
+  g->start = fmax(top, fmin(last, g->sum / g->count));
+}
+
+/* Joins the last group to the one before while it would stand on it. Returns how many are left. */
+static int join_groups(spread_group *group, int groups, double pitch, double top, double bottom) {
+  for (;; groups--) {
+    spread_group *last = &group[groups - 1];
+    set_start(last, pitch, top, bottom);
+    if (groups == 1) return groups;
+    spread_group *before = last - 1;
+    if (last->start >= before->start + before->count * pitch) return groups;
+    before->sum += last->sum - last->count * before->count * pitch;
+    before->count += last->count;
+  }
+}
+
+/* Each group's mean stays with the mean of what its labels want: the least squares of moves. */
 void chart_spread(double *y, int count, double pitch, double top, double bottom) {
   enum { MOST = 64 };
-  struct {
-    double start; /* of its first label */
-    double sum;   /* of wanted starts */
-    int first, count;
-  } group[MOST];
+  spread_group group[MOST];
   int order[MOST], groups = 0;
   if (count > MOST) count = MOST;
   for (int i = 0; i < count; i++) {
@@ -182,21 +205,8 @@ void chart_spread(double *y, int count, double pitch, double top, double bottom)
     order[at] = i;
   }
   for (int i = 0; i < count; i++) {
-    group[groups].first = i;
-    group[groups].count = 1;
-    group[groups].sum = y[order[i]];
-    for (groups++;; groups--) {
-      double last = bottom - (group[groups - 1].count - 1) * pitch;
-      group[groups - 1].start =
-          fmax(top, fmin(last, group[groups - 1].sum / group[groups - 1].count));
-      if (groups == 1) break;
-      double free_from = group[groups - 2].start + group[groups - 2].count * pitch;
-      if (group[groups - 1].start >= free_from) break;
-      /* What the later group wants of the start of the earlier. */
-      group[groups - 2].sum += group[groups - 1].sum - group[groups - 1].count *
-                                                           group[groups - 2].count * pitch;
-      group[groups - 2].count += group[groups - 1].count;
-    }
+    group[groups] = (spread_group){.sum = y[order[i]], .first = i, .count = 1};
+    groups = join_groups(group, groups + 1, pitch, top, bottom);
   }
   for (int g = 0; g < groups; g++)
     for (int k = 0; k < group[g].count; k++)

@@ -146,11 +146,12 @@ static void draw_paired(picture *p, const chart_bar *bar, double y) {
 static void draw_row(picture *p, const chart_bar *bar, double y) {
   chart *c = &p->chart;
   const double apart = 14, line = y + 11;
-  const char *figure = chart_cut(c, CHART_PLAIN, figure_of(c->report, p->bars, bar),
-                                 0.6 * (p->right - p->left));
+  const char *figure =
+      chart_cut(c, CHART_PLAIN, figure_of(c->report, p->bars, bar), 0.6 * (p->right - p->left));
   double room = p->right - p->left - apart - chart_text_width(CHART_PLAIN, figure);
   chart_label(c, p->right, line, SVG_END, CHART_PLAIN, figure);
-  chart_label(c, p->left, line, SVG_START, CHART_PLAIN, chart_cut(c, CHART_PLAIN, bar->label, room));
+  chart_label(c, p->left, line, SVG_START, CHART_PLAIN,
+              chart_cut(c, CHART_PLAIN, bar->label, room));
   if (p->bars->paired)
     draw_paired(p, bar, y + WORDS_LINE);
   else
@@ -163,8 +164,8 @@ static int key_of(const chart_bars *b, chart_key key[CHART_MAX_PARTS]) {
     bool used = b->paired;
     for (int i = 0; i < b->count && !used; i++) used = b->bar[i].cents[k] != 0;
     if (used)
-      key[count++] = (chart_key){
-          .kind = KEY_AREA, .css_class = part_class[k], .words = b->part_name[k]};
+      key[count++] =
+          (chart_key){.kind = KEY_AREA, .css_class = part_class[k], .words = b->part_name[k]};
   }
   return count;
 }

@@ -6,7 +6,8 @@
 /* ---- points ---- */
 
 static double per_area(const report *r, long long cents) {
-  return chart_per_area(r, (double)cents / 100 / (r->brief->length_m * cost_built_height_m(r->brief)));
+  return chart_per_area(r,
+                        (double)cents / 100 / (r->brief->length_m * cost_built_height_m(r->brief)));
 }
 
 static double cost_of(const report *r, const assessment *x) {
@@ -74,7 +75,10 @@ static void put_failing_words(const report *r, const explanation *e, text *t) {
   if (count == 0) return;
   for (int i = 0; i < count; i++) far += !is_near(r, e, failing(e)[i]);
   text_putf(t, " %d %s", count, e->chosen ? "cheaper" : "near miss");
-  text_putf(t, "%s %s a rule", e->chosen ? (count == 1 ? " wall" : " walls") : count == 1 ? "" : "es",
+  text_putf(t, "%s %s a rule",
+            e->chosen    ? (count == 1 ? " wall" : " walls")
+            : count == 1 ? ""
+                         : "es",
             count == 1 ? "breaks" : "break");
   if (far < count) text_put(t, " (crosses)");
   if (far > 0) text_putf(t, "; %d of them too far left to be drawn", far);
@@ -240,8 +244,7 @@ static int keys_of(const explanation *e, const cloud *c, chart_key key[5]) {
   int n = 0;
   if (c->count > 0)
     key[n++] = (chart_key){KEY_MARK, CHART_DOT, "c-cloud", NULL, "a wall that keeps every rule"};
-  if (c->edge_count > 0)
-    key[n++] = (chart_key){KEY_LINE, CHART_DOT, "c-step", NULL, "least cost"};
+  if (c->edge_count > 0) key[n++] = (chart_key){KEY_LINE, CHART_DOT, "c-step", NULL, "least cost"};
   if (e->chosen) key[n++] = (chart_key){KEY_MARK, CHART_DOT, "c-best", NULL, "chosen"};
   if (e->runner_count > 0)
     key[n++] = (chart_key){KEY_MARK, CHART_DIAMOND, "c-other", NULL, "runner-up"};

@@ -187,9 +187,9 @@ static int pair_bars(const report *r, const section_sums *one, const section_sum
   chart_bar *bar = arena_array(r->arena, most, sizeof *bar);
   int count = union_of(one, two, all);
   for (int i = 0; i < count; i++)
-    bar[i] = (chart_bar){section_label(r, all[i]),
-                         {section_cents(find_section(one, all[i])),
-                          section_cents(find_section(two, all[i]))}};
+    bar[i] = (chart_bar){
+        section_label(r, all[i]),
+        {section_cents(find_section(one, all[i])), section_cents(find_section(two, all[i]))}};
   *out = bar;
   return count;
 }

@@ -166,9 +166,9 @@ static chart_bars parts_bars(const report *r, const char *by, const chart_plan_p
                              int count) {
   chart_bar *bar = arena_array(r->arena, (size_t)count, sizeof *bar);
   for (int i = 0; i < count; i++)
-    bar[i] = (chart_bar){part[i].label,
-                         {part[i].walls_cents, part[i].goods_cents, part[i].setup_cents,
-                          part[i].floor_cents}};
+    bar[i] = (chart_bar){
+        part[i].label,
+        {part[i].walls_cents, part[i].goods_cents, part[i].setup_cents, part[i].floor_cents}};
   return (chart_bars){.title = text_format(r->arena, "Cost by %s", by),
                       .lead = text_format(r->arena, "The cost of the project by %s:", by),
                       .parts = 4,

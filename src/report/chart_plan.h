@@ -22,7 +22,7 @@ typedef struct chart_types_point {
 typedef struct chart_types_data {
   const chart_types_point *point; /* rising in types */
   int count;
-  int chosen;            /* number of types of the plan; 0 = no plan */
+  int chosen; /* number of types of the plan; 0 = no plan */
   long long chosen_cents;
   long long budget_cents; /* 0 = none */
 } chart_types_data;

@@ -40,8 +40,8 @@ static double left_edge(const report *r, const chart_ticks *t) {
   const double gap = 8;
   double widest = 0;
   for (int i = 0; i < t->count; i++)
-    widest = fmax(widest, chart_text_width(CHART_SMALL,
-                                           chart_number(r->arena, t->value[i], t->decimals)));
+    widest = fmax(widest,
+                  chart_text_width(CHART_SMALL, chart_number(r->arena, t->value[i], t->decimals)));
   return CHART_EDGE + widest + gap;
 }
 

@@ -21,15 +21,15 @@ typedef struct chart_plane {
 
 typedef struct chart_plane_head {
   const char *id, *title, *words;
-  const char *x_title;   /* under the scale */
-  const char *y_words;   /* "cost": the currency is added */
-  const char *per;       /* "ft2", "m2" or NULL */
-  chart_range x, money;  /* money in currency; ranges without a value show 0 to 1 */
-  bool whole;            /* x: whole numbers only */
-  const chart_key *key;  /* above the chart */
+  const char *x_title;  /* under the scale */
+  const char *y_words;  /* "cost": the currency is added */
+  const char *per;      /* "ft2", "m2" or NULL */
+  chart_range x, money; /* money in currency; ranges without a value show 0 to 1 */
+  bool whole;           /* x: whole numbers only */
+  const chart_key *key; /* above the chart */
   int keys;
-  const char *note;      /* under the chart; NULL = none */
-  double height;         /* without key and note */
+  const char *note; /* under the chart; NULL = none */
+  double height;    /* without key and note */
 } chart_plane_head;
 
 /* Begins the picture and draws key and axes; the caller draws the rest and calls chart_end. */

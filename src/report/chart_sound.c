@@ -129,8 +129,9 @@ const char *chart_sound_words(const report *r, const assessment *x, const chart_
   put_curve_words(x, &t);
   put_contour_words(x, o->metric, &t);
   if (view_published(x, fitted(o->metric)))
-    text_putf(&t, " The wall is published with %s %d: the answer stands on that, the curve is "
-                  "predicted all the same.",
+    text_putf(&t,
+              " The wall is published with %s %d: the answer stands on that, the curve is "
+              "predicted all the same.",
               sound_metric_names[fitted(o->metric)], x->evidence.match->stc);
   text_putf(&t, " %s", band_note(r, x, o->metric));
   if (x->has_composite)
@@ -225,9 +226,8 @@ static void set_frame(picture *p, chart_ticks *ticks) {
   enum { GRID_DB = 10, MOST_TICKS = 20, LEFT = 40, NAMES = 138, TOP = 34, BELOW = 40 };
   chart_ticks_over((low - sd) / GRID_DB, (high + sd) / GRID_DB, MOST_TICKS, true, ticks);
   for (int i = 0; i < ticks->count; i++) ticks->value[i] *= GRID_DB;
-  p->frame = (chart_frame){
-      {0, BANDS - 1, LEFT + 8, CHART_WIDTH - NAMES},
-      {ticks->value[0], ticks->value[ticks->count - 1], p->foot - BELOW, TOP}};
+  p->frame = (chart_frame){{0, BANDS - 1, LEFT + 8, CHART_WIDTH - NAMES},
+                           {ticks->value[0], ticks->value[ticks->count - 1], p->foot - BELOW, TOP}};
 }
 
 static void draw_band(picture *p) {
@@ -323,16 +323,16 @@ static void define_frame(picture *p) {
   svg_defs_end(s);
 }
 
-void chart_sound(const report *r, const char *id, const assessment *x,
-                 const chart_sound_options *o, text *out) {
+void chart_sound(const report *r, const char *id, const assessment *x, const chart_sound_options *o,
+                 text *out) {
   const double height = 350;
   picture *p = arena_alloc(r->arena, sizeof *p);
   chart_ticks ticks;
   p->x = x;
   p->options = o;
   collect(p, r);
-  const char *title = text_format(r->arena, "Transmission loss, %s %d", sound_metric_names[o->metric],
-                                  rating_of(&x->ratings, o->metric));
+  const char *title = text_format(r->arena, "Transmission loss, %s %d",
+                                  sound_metric_names[o->metric], rating_of(&x->ratings, o->metric));
   const char *note = band_note(r, x, o->metric);
   p->foot = height;
   chart_begin(&p->chart, r, id, title, chart_sound_words(r, x, o),

@@ -23,7 +23,7 @@ chart_lack chart_lack_of(sound_metric metric, double value, const double tl_db[B
 
 /* What the chart shows, in words; also its description. */
 const char *chart_sound_words(const report *r, const assessment *x, const chart_sound_options *o);
-void chart_sound(const report *r, const char *id, const assessment *x,
-                 const chart_sound_options *o, text *out);
+void chart_sound(const report *r, const char *id, const assessment *x, const chart_sound_options *o,
+                 text *out);
 
 #endif

@@ -19,20 +19,19 @@ static const char lines[] =
     ".c-hull{fill:none;stroke:var(--warm);stroke-width:1.4;stroke-dasharray:6 3}\n"
     ".c-hatch{fill:none;stroke:var(--ink);stroke-width:1;stroke-opacity:.55}\n";
 
-static const char areas[] =
-    ".c-band{fill:var(--key);fill-opacity:.14}\n"
-    ".c-lack{fill:var(--warm);fill-opacity:.28}\n"
-    ".c-zone{fill:var(--wash)}\n"
-    ".c-one{fill:var(--key)}\n"
-    ".c-two{fill:var(--wash);stroke:var(--key);stroke-width:1}\n"
-    ".c-three{fill:var(--rule)}\n"
-    ".c-four{fill:var(--warm);fill-opacity:.45}\n"
-    ".c-cloud{fill:var(--key);fill-opacity:.4}\n"
-    ".c-full{fill:var(--key);stroke:var(--paper);stroke-width:1}\n"
-    ".c-open{fill:var(--paper);stroke:var(--key);stroke-width:1.5}\n"
-    ".c-best{fill:var(--warm);stroke:var(--paper);stroke-width:1.2}\n"
-    ".c-other{fill:var(--paper);stroke:var(--ink);stroke-width:1.4}\n"
-    ".c-fail{fill:none;stroke:var(--bad);stroke-width:1.6}\n";
+static const char areas[] = ".c-band{fill:var(--key);fill-opacity:.14}\n"
+                            ".c-lack{fill:var(--warm);fill-opacity:.28}\n"
+                            ".c-zone{fill:var(--wash)}\n"
+                            ".c-one{fill:var(--key)}\n"
+                            ".c-two{fill:var(--wash);stroke:var(--key);stroke-width:1}\n"
+                            ".c-three{fill:var(--rule)}\n"
+                            ".c-four{fill:var(--warm);fill-opacity:.45}\n"
+                            ".c-cloud{fill:var(--key);fill-opacity:.4}\n"
+                            ".c-full{fill:var(--key);stroke:var(--paper);stroke-width:1}\n"
+                            ".c-open{fill:var(--paper);stroke:var(--key);stroke-width:1.5}\n"
+                            ".c-best{fill:var(--warm);stroke:var(--paper);stroke-width:1.2}\n"
+                            ".c-other{fill:var(--paper);stroke:var(--ink);stroke-width:1.4}\n"
+                            ".c-fail{fill:none;stroke:var(--bad);stroke-width:1.6}\n";
 
 /* Paper around letters, so that they can be read on lines and points. */
 static const char halo[] =

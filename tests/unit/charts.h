@@ -38,8 +38,8 @@ static demo shop;
 static inline void ask(const char *file) {
   job_defaults(&shop.brief);
   if (file) {
-    const json_value *root = json_load(
-        shop.memory, &shop.faults, text_format(shop.memory, EXAMPLES "%s.json", file));
+    const json_value *root =
+        json_load(shop.memory, &shop.faults, text_format(shop.memory, EXAMPLES "%s.json", file));
     ck_assert_ptr_nonnull(root);
     ck_assert(job_read(shop.memory, &shop.faults, shop.catalog, root, false, &shop.brief));
   }
@@ -136,14 +136,17 @@ static const char *const awkward[] = {
     "<script>alert(1)</script>",
     "a \"name\" & 'another'",
     "\xD7\xA7\xD7\x99\xD7\xA8 \xD7\x92\xD7\x91\xD7\xA1",
-    "WWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWW",
-    "a name of many words that goes on and on until it has passed one hundred letters and still goes on",
+    "WWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWWW"
+    "WWWWWW",
+    "a name of many words that goes on and on until it has passed one hundred letters and still "
+    "goes on",
     "\xFF\xFE broken bytes \x01",
 };
 enum { AWKWARD = sizeof awkward / sizeof awkward[0] };
 
 static inline long long awkward_cents(void) {
-  static const long long size[] = {0, 1, 99, 12345, 9999999, 123456789012LL, 900000000000000000LL / 8};
+  static const long long size[] = {
+      0, 1, 99, 12345, 9999999, 123456789012LL, 900000000000000000LL / 8};
   long long most = size[dice(7)];
   return most == 0 ? 0 : most - (long long)dice(7) * (most / 10);
 }
@@ -243,8 +246,7 @@ static inline void check_layout(const char *drawn, const char *what) {
                   "%s: \"%s\" leaves the picture", what, p.text[i].value);
     for (int k = 0; k < i; k++) {
       const chart_box *b = &p.text[k].box;
-      bool apart = a->x + a->width <= b->x + rounding_px ||
-                   b->x + b->width <= a->x + rounding_px ||
+      bool apart = a->x + a->width <= b->x + rounding_px || b->x + b->width <= a->x + rounding_px ||
                    a->y + a->height <= b->y + rounding_px || b->y + b->height <= a->y + rounding_px;
       ck_assert_msg(apart, "%s: \"%s\" stands on \"%s\"", what, p.text[i].value, p.text[k].value);
     }

@@ -27,11 +27,16 @@ static const struct ticks_row {
   double first, step;
   int count, decimals;
 } ticks_rows[] = {
-    {0, 10, 11, false, 0, 1, 11, 0},       {0, 10, 6, false, 0, 2, 6, 0},
-    {0.3, 9.7, 6, false, 0, 2, 6, 0},      {8.43, 18.21, 9, false, 8, 2, 7, 0},
-    {0, 1, 6, false, 0, 0.2, 6, 1},        {0, 1, 6, true, 0, 1, 2, 0},
-    {-7, 12, 6, false, -10, 5, 6, 0},      {586000, 618500, 6, false, 580000, 10000, 5, 0},
-    {0.0012, 0.0031, 5, false, 0.001, 0.001, 4, 3}, {35, 62, 10, true, 35, 5, 7, 0},
+    {0, 10, 11, false, 0, 1, 11, 0},
+    {0, 10, 6, false, 0, 2, 6, 0},
+    {0.3, 9.7, 6, false, 0, 2, 6, 0},
+    {8.43, 18.21, 9, false, 8, 2, 7, 0},
+    {0, 1, 6, false, 0, 0.2, 6, 1},
+    {0, 1, 6, true, 0, 1, 2, 0},
+    {-7, 12, 6, false, -10, 5, 6, 0},
+    {586000, 618500, 6, false, 580000, 10000, 5, 0},
+    {0.0012, 0.0031, 5, false, 0.001, 0.001, 4, 3},
+    {35, 62, 10, true, 35, 5, 7, 0},
 };
 
 START_TEST(round_steps) {
@@ -48,8 +53,8 @@ START_TEST(round_steps) {
 END_TEST
 
 START_TEST(steps_cover_whatever_comes) {
-  static const double wild[] = {0,    1,     -1,       1e-7,     1e9,  1e15, -3e12, 12.5,
-                                HUGE_VAL, -HUGE_VAL, NAN, 1e300, 99.999999, 100.0000001};
+  static const double wild[] = {0,    1,        -1,        1e-7, 1e9,   1e15,      -3e12,
+                                12.5, HUGE_VAL, -HUGE_VAL, NAN,  1e300, 99.999999, 100.0000001};
   enum { WILD = sizeof wild / sizeof wild[0] };
   for (int i = 0; i < WILD; i++)
     for (int k = 0; k < WILD; k++)
@@ -76,9 +81,14 @@ static const struct number_row {
   int decimals;
   const char *words;
 } number_rows[] = {
-    {0, 0, "0"},           {999, 0, "999"},           {1000, 0, "1,000"},
-    {-1234567, 0, "-1,234,567"}, {12500.25, 2, "12,500.25"}, {0.5, 1, "0.5"},
-    {-999.5, 1, "-999.5"}, {100000, 0, "100,000"},
+    {0, 0, "0"},
+    {999, 0, "999"},
+    {1000, 0, "1,000"},
+    {-1234567, 0, "-1,234,567"},
+    {12500.25, 2, "12,500.25"},
+    {0.5, 1, "0.5"},
+    {-999.5, 1, "-999.5"},
+    {100000, 0, "100,000"},
 };
 
 START_TEST(thousands_stand_apart) {
@@ -222,8 +232,8 @@ END_TEST
 /* Lengths of bars are in the proportion of their amounts. */
 START_TEST(lengths_are_amounts) {
   const chart_bar bar[] = {{"a", {30000, 10000}}, {"b", {5000, 0}}, {"c", {0, 20000}}};
-  const chart_bars b = {.title = "t", .lead = "Bars:", .parts = 2, .part_name = {"m", "l"},
-                        .bar = bar, .count = 3};
+  const chart_bars b = {
+      .title = "t", .lead = "Bars:", .parts = 2, .part_name = {"m", "l"}, .bar = bar, .count = 3};
   text *out = new_picture();
   chart_bars_draw(&shop.report, "b", &b, out);
   double length[16];
@@ -245,8 +255,12 @@ END_TEST
 START_TEST(rows_beyond_the_most_are_one) {
   chart_bar bar[CHART_MAX_BARS + 3];
   for (int i = 0; i < CHART_MAX_BARS + 3; i++) bar[i] = (chart_bar){"row", {100}};
-  const chart_bars b = {.title = "t", .lead = "Bars:", .parts = 1, .part_name = {"m"},
-                        .bar = bar, .count = CHART_MAX_BARS + 3};
+  const chart_bars b = {.title = "t",
+                        .lead = "Bars:",
+                        .parts = 1,
+                        .part_name = {"m"},
+                        .bar = bar,
+                        .count = CHART_MAX_BARS + 3};
   const char *said = chart_bars_words(&shop.report, &b);
   ck_assert_ptr_nonnull(strstr(said, " 4 more: 4.00 USD."));
 }
@@ -281,9 +295,10 @@ START_TEST(curves_of_anything) {
 END_TEST
 
 START_TEST(the_plan_in_words) {
-  const chart_types_point point[] = {
-      {2, CHART_INFEASIBLE, 0}, {3, CHART_PROVEN, 12345600}, {4, CHART_FOUND, 12000050},
-      {5, CHART_UNSOLVED, 0}};
+  const chart_types_point point[] = {{2, CHART_INFEASIBLE, 0},
+                                     {3, CHART_PROVEN, 12345600},
+                                     {4, CHART_FOUND, 12000050},
+                                     {5, CHART_UNSOLVED, 0}};
   const chart_types_data d = {point, 4, 3, 12345600, 0};
   ck_assert_str_eq(chart_types_words(&shop.report, &d),
                    "The least cost of the project with at most so many wall types: 2 types: no "

@@ -87,8 +87,8 @@ static void trim_before_after(text *out) {
 /* Invented figures. */
 static void plan_types(text *out) {
   const chart_types_point point[] = {
-      {1, CHART_INFEASIBLE, 0},     {2, CHART_INFEASIBLE, 0},     {3, CHART_PROVEN, 61850000},
-      {4, CHART_PROVEN, 59210000},  {5, CHART_PROVEN, 58640000},  {6, CHART_FOUND, 58600000},
+      {1, CHART_INFEASIBLE, 0},    {2, CHART_INFEASIBLE, 0},    {3, CHART_PROVEN, 61850000},
+      {4, CHART_PROVEN, 59210000}, {5, CHART_PROVEN, 58640000}, {6, CHART_FOUND, 58600000},
       {7, CHART_UNSOLVED, 0},
   };
   const chart_types_data d = {point, sizeof point / sizeof point[0], 4, 59210000, 60000000};

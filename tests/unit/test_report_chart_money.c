@@ -256,7 +256,8 @@ static void check_cloud(int seed) {
   const char *at = strstr(out->data, "<g class=\"c-cloud\"");
   ck_assert_ptr_nonnull(at);
   if (c.count > 0)
-    for (const char *end = strstr(at, "</g>"); (at = strstr(at, "<circle")) != NULL && at < end; at++)
+    for (const char *end = strstr(at, "</g>"); (at = strstr(at, "<circle")) != NULL && at < end;
+         at++)
       points++;
   ck_assert_int_eq(points, c.count);
 }

@@ -9,7 +9,8 @@
 /* ---- contours by the standards ---- */
 
 /* ASTM E413, contour of STC 50 at 125 to 4000 Hz. */
-static const double e413_stc_50[] = {34, 37, 40, 43, 46, 49, 50, 51, 52, 53, 54, 54, 54, 54, 54, 54};
+static const double e413_stc_50[] = {34, 37, 40, 43, 46, 49, 50, 51,
+                                     52, 53, 54, 54, 54, 54, 54, 54};
 /* ISO 717-1, reference values at 100 to 3150 Hz: Rw 52. */
 static const double iso717_rw_52[] = {33, 36, 39, 42, 45, 48, 51, 52,
                                       53, 54, 55, 56, 56, 56, 56, 56};
@@ -53,10 +54,14 @@ static const char *random_line(void) {
   static const char *const faces[] = {"typex-16", "2*typex-16",       "gyp-13",
                                       "2*gyp-13", "3*typex-16",       "gyp-13 + mlv-5",
                                       "abuse-16", "typex-16 + osb-11"};
-  static const char *const frames[] = {"wood-89@406",          "wood-140@610",
-                                       "steel-92-18@610",      "steel-64-18@406",
-                                       "steel-92-54@305",      "wood-89-stag-140@406",
-                                       "wood-89-double@406~100", "steel-92-18-double@610"};
+  static const char *const frames[] = {"wood-89@406",
+                                       "wood-140@610",
+                                       "steel-92-18@610",
+                                       "steel-64-18@406",
+                                       "steel-92-54@305",
+                                       "wood-89-stag-140@406",
+                                       "wood-89-double@406~100",
+                                       "steel-92-18-double@610"};
   static const char *const fills[] = {"", ", glass-89", ", stone-50"};
   static const char *const mounts[] = {"", "", "rc@610 | ", "clip@406 | "};
   return text_format(shop.memory, "%s | %s%s%s | %s", faces[dice(8)], mounts[dice(4)],
@@ -166,7 +171,8 @@ START_TEST(the_picture_says_the_numbers) {
 }
 END_TEST
 
-/* The bars of deficiency reach from curve to contour, in just the bands where the curve is lower. */
+/* The bars of deficiency reach from curve to contour, in just the bands where the curve is lower.
+ */
 static void bars_of(void) {
   const assessment *x = random_wall();
   const char *drawn = drawn_of(x, METRIC_STC, false);
@@ -258,8 +264,8 @@ START_TEST(a_published_wall_shows_its_contour) {
   for (int i = 0; i < RATING_FIT_BANDS; i++)
     ck_assert_double_eq_tol(db_at(&a, py[i]), x->evidence.match->stc - 50 + e413_stc_50[i],
                             read_error_db);
-  ck_assert_ptr_nonnull(strstr(drawn, text_format(shop.memory, ">published STC %d<",
-                                                  x->evidence.match->stc)));
+  ck_assert_ptr_nonnull(
+      strstr(drawn, text_format(shop.memory, ">published STC %d<", x->evidence.match->stc)));
   /* Of the same height one contour is enough. */
   x->predicted.ratings.stc = x->evidence.match->stc;
   ck_assert_ptr_null(strstr(drawn_of(x, METRIC_STC, false), "c-proof"));
@@ -293,11 +299,12 @@ START_TEST(words_say_what_counts) {
   const assessment *x = rate("2*typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16");
   const chart_sound_options o = {METRIC_STC, true};
   const char *said = chart_sound_words(&shop.report, x, &o);
-  ck_assert_ptr_nonnull(strstr(said, "the standard deviation of the single number STC, not of each band"));
+  ck_assert_ptr_nonnull(
+      strstr(said, "the standard deviation of the single number STC, not of each band"));
   ck_assert_ptr_nonnull(strstr(said, "not of each band"));
-  ck_assert_ptr_nonnull(strstr(said, text_format(shop.memory, "contour of STC %d stands at %d dB",
-                                                 x->predicted.ratings.stc,
-                                                 x->predicted.ratings.stc)));
+  ck_assert_ptr_nonnull(
+      strstr(said, text_format(shop.memory, "contour of STC %d stands at %d dB",
+                               x->predicted.ratings.stc, x->predicted.ratings.stc)));
   ck_assert_ptr_nonnull(strstr(said, "their energies add up to the curve"));
 }
 END_TEST
