@@ -44,6 +44,7 @@ INLINE void side_points(kernel_core *k, const kernel_block *a, int at, int first
     p->w2[i] = w;
     p->w1[i] = 2.0 * w * own_re;
     p->w0[i] = w * (own_re * own_re + own_im * own_im);
+    p->g[i] = c->g[i];
   }
 }
 
@@ -81,7 +82,7 @@ INLINE fraction fraction_sum(fraction x, fraction y) {
 /* Air path at point i for one lane. */
 INLINE fraction air_path(const kernel_core *k, int i, double m, double v, double u, double t) {
   const kernel_points *p = &k->point;
-  double g = k->cavity->g[i], y_re = g * u, y_im = m - g * v;
+  double g = p->g[i], y_re = g * u, y_im = m - g * v;
   double r_re = p->r_re[i] + y_re, r_im = p->r_im[i] + y_im;
   double q_re = p->q_re[i] + y_re, q_im = p->q_im[i] + y_im;
   double re = t * r_re + (p->k_re[i] * q_re - p->k_im[i] * q_im);
@@ -102,31 +103,25 @@ INLINE fraction bridged_path(const kernel_core *k, int i, const kernel_block *b,
                     radiation * heave * (1.0 + t->roll[i] * p->resonance[j])};
 }
 
-/* Transmission of tone i for lane j: all its fractions as one. */
-INLINE fraction tone_of(const kernel_core *k, int i, const kernel_block *b, int j) {
-  const int p = i * MODEL_ANGLES;
-  double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j] + k->fill_loss * v;
-  double t = k->tone.soft_a[i] + k->tone.bay[SIDE_B][i] * b->slack[j];
-  fraction x = fraction_sum(air_path(k, p, m, v, u, t), air_path(k, p + 1, m, v, u, t));
-  fraction y = fraction_sum(air_path(k, p + 2, m, v, u, t), air_path(k, p + 3, m, v, u, t));
-  return fraction_sum(fraction_sum(x, y), bridged_path(k, i, b, j));
-}
-
+/* Adds the transmission of tone i: all its fractions over one division. */
 INLINE void tone_add(const kernel_core *k, int i, const kernel_block *restrict b, lanes l,
                      double *restrict tau) {
+  const int p = i * MODEL_ANGLES;
   for (int j = l.from; j < l.to; j++) {
-    fraction all = tone_of(k, i, b, j);
+    double m = b->mass[j], v = b->mass_fc2[j], u = b->loss_fc2[j] + k->fill_loss * v;
+    double t = k->tone.soft_a[i] + k->tone.bay[SIDE_B][i] * b->slack[j];
+    fraction x = fraction_sum(air_path(k, p, m, v, u, t), air_path(k, p + 1, m, v, u, t));
+    fraction y = fraction_sum(air_path(k, p + 2, m, v, u, t), air_path(k, p + 3, m, v, u, t));
+    fraction all = fraction_sum(fraction_sum(x, y), bridged_path(k, i, b, j));
     tau[j] += all.num / all.den;
   }
 }
 
-INLINE void pair_set(kernel_core *k, const kernel_block *b, lanes l) {
-  kernel_pair *p = &k->pair;
-  double heave_a = k->side_block->heave[k->side_lane];
-  double mass_minus1_a = k->side_block->mass_minus1[k->side_lane];
+INLINE void pair_lanes(const kernel_block *restrict b, lanes l, double heave_a,
+                       double mass_minus1_a, double resonance_k, kernel_pair *restrict p) {
   for (int j = l.from; j < l.to; j++) {
     double heave = heave_a + b->heave[j];
-    double f0_2 = k->resonance_k * (mass_minus1_a + b->mass_minus1[j]);
+    double f0_2 = resonance_k * (mass_minus1_a + b->mass_minus1[j]);
     p->twice_heave[j] = 2.0 * heave;
     p->heave_square[j] = 2.0 * heave * heave;
     p->resonance[j] = f0_2 * f0_2;
@@ -134,12 +129,18 @@ INLINE void pair_set(kernel_core *k, const kernel_block *b, lanes l) {
   }
 }
 
+INLINE void pair_set(kernel_core *k, const kernel_block *b, lanes l) {
+  const kernel_block *a = k->side_block;
+  pair_lanes(b, l, a->heave[k->side_lane], a->mass_minus1[k->side_lane], k->resonance_k, &k->pair);
+}
+
 /* Transmission factors of bands first .. last into k->level. */
 INLINE void bands_tau(kernel_core *k, const kernel_block *b, lanes l, int first, int last) {
+  const double ceiling = k->ceiling_tau;
   pair_set(k, b, l);
   for (int band = first; band <= last; band++) {
-    double *tau = k->level[band];
-    for (int j = l.from; j < l.to; j++) tau[j] = k->ceiling_tau;
+    double *restrict tau = k->level[band];
+    for (int j = l.from; j < l.to; j++) tau[j] = ceiling;
     for (int i = 0; i < MODEL_SUBBANDS; i++) tone_add(k, band * MODEL_SUBBANDS + i, b, l, tau);
   }
 }
@@ -254,17 +255,15 @@ INLINE void block_bound(kernel_core *k, const kernel_block *b, lanes l) {
 INLINE void block_screen(kernel_core *k, const kernel_block *b, lanes l, double tau_most) {
   double *restrict tau = k->level[BAND_125];
   unsigned char *restrict open = k->open;
+  const double ceiling = k->ceiling_tau;
   int left = 1;
   pair_set(k, b, l);
-  for (int j = l.from; j < l.to; j++) tau[j] = k->ceiling_tau;
-  for (int j = l.from; j < l.to; j++) open[j] = 0;
+  for (int j = l.from; j < l.to; j++) tau[j] = ceiling;
   for (int i = 0; i < MODEL_SUBBANDS && left; i++) {
-    double passed = 0.0;
+    left = 0;
     tone_add(k, BAND_125 * MODEL_SUBBANDS + i, b, l, tau);
-    for (int j = l.from; j < l.to; j++) passed += tau[j] <= tau_most ? 1.0 : 0.0;
-    left = passed > 0.0;
+    for (int j = l.from; j < l.to; j++) left |= tau[j] <= tau_most;
   }
-  if (!left) return;
   for (int j = l.from; j < l.to; j++) open[j] = tau[j] <= tau_most;
 }
 
@@ -293,11 +292,16 @@ INLINE void block_any(kernel_core *k, const kernel_block *b, lanes l, const kern
 /* ------------------------------------------------------------------ widths */
 
 /* One compilation of the loops above. */
-typedef struct kernel_build {
+struct kernel_build {
   const char *vectors;
+  bool (*able)(void); /* whether this machine is */
   void (*side)(kernel_core *k, const kernel_block *a, int at, int first, int last);
   void (*block)(kernel_core *k, const kernel_block *b, lanes l, const kernel_job *job);
-} kernel_build;
+};
+
+static bool able_always(void) {
+  return true;
+}
 
 static void side_portable(kernel_core *k, const kernel_block *a, int at, int first, int last) {
   side_any(k, a, at, first, last);
@@ -324,28 +328,45 @@ AVX512 static void block_avx512(kernel_core *k, const kernel_block *b, lanes l,
   block_any(k, b, l, job);
 }
 
-static kernel_build widest(void) {
-  bool wide = __builtin_cpu_supports("avx512f") && __builtin_cpu_supports("avx512dq") &&
-              __builtin_cpu_supports("avx512bw") && __builtin_cpu_supports("avx512vl");
-  if (wide) return (kernel_build){"avx512", side_avx512, block_avx512};
-  if (__builtin_cpu_supports("avx2")) return (kernel_build){"avx2", side_avx2, block_avx2};
-  return (kernel_build){"portable", side_portable, block_portable};
+static bool able_avx2(void) {
+  return __builtin_cpu_supports("avx2");
 }
-#else
-static kernel_build widest(void) {
-  return (kernel_build){"portable", side_portable, block_portable};
+static bool able_avx512(void) {
+  return __builtin_cpu_supports("avx512f") && __builtin_cpu_supports("avx512dq") &&
+         __builtin_cpu_supports("avx512bw") && __builtin_cpu_supports("avx512vl");
 }
 #endif
 
+/* The widest first. */
+static const kernel_build builds[] = {
+#if defined(SEPTUM_SIMD) && defined(__GNUC__) && defined(__x86_64__)
+    {"avx512", able_avx512, side_avx512, block_avx512},
+    {"avx2", able_avx2, side_avx2, block_avx2},
+#endif
+    {"portable", able_always, side_portable, block_portable},
+};
+enum { BUILDS = sizeof builds / sizeof *builds };
+
+bool kernel_use(kernel_core *k, const char *vectors) {
+  for (int i = 0; i < BUILDS; i++) {
+    if (vectors && strcmp(vectors, builds[i].vectors) != 0) continue;
+    if (!builds[i].able()) continue;
+    k->build = &builds[i];
+    return true;
+  }
+  return false;
+}
+
 const char *kernel_vectors(void) {
-  return widest().vectors;
+  int i = 0;
+  while (!builds[i].able()) i++;
+  return builds[i].vectors;
 }
 
 /* ------------------------------------------------------------------ calls */
 
 /* Makes the tables of bands first .. last that are not there yet, with leaf `a` on side A. */
-static void prepare(kernel_core *k, const kernel_build *build, const kernel_leaves *leaves, int a,
-                    int first, int last) {
+static void prepare(kernel_core *k, const kernel_leaves *leaves, int a, int first, int last) {
   const kernel_block *block = &leaves->block[a / KERNEL_LANES];
   int lane = a % KERNEL_LANES;
   if (k->side_block != block || k->side_lane != lane)
@@ -358,7 +379,7 @@ static void prepare(kernel_core *k, const kernel_build *build, const kernel_leav
     if (!k->core_ready[band]) kernel_core_band(k, band);
     k->side_ready[band] = true;
   }
-  build->side(k, block, lane, first, last);
+  k->build->side(k, block, lane, first, last);
 }
 
 static int step_up(int lane) {
@@ -393,11 +414,10 @@ static void hand_out(const kernel_core *k, const kernel_job *job, int lane, int 
  * in `out`. */
 static void sweep(kernel_core *k, const kernel_leaves *leaves, int side_a, int first_b, int n,
                   const kernel_job *job, double *out) {
-  kernel_build build = widest();
-  prepare(k, &build, leaves, side_a, job->first, job->last);
+  prepare(k, leaves, side_a, job->first, job->last);
   for (int done = 0; done < n;) {
     stretch s = stretch_at(first_b, done, n);
-    build.block(k, &leaves->block[s.block], s.lanes, job);
+    k->build->block(k, &leaves->block[s.block], s.lanes, job);
     hand_out(k, job, s.lane, s.count, n, out + done);
     done += s.count;
   }
@@ -437,11 +457,10 @@ void kernel_screen(kernel_core *k, const kernel_leaves *leaves_a, int a,
                    const kernel_leaves *leaves_b, int first_b, int n, double screen,
                    unsigned char *open) {
   kernel_job job = {.screen = true, .first = BAND_125, .last = BAND_125, .tau_most = screen};
-  kernel_build build = widest();
-  prepare(k, &build, leaves_a, a, BAND_125, BAND_125);
+  prepare(k, leaves_a, a, BAND_125, BAND_125);
   for (int done = 0; done < n;) {
     stretch s = stretch_at(first_b, done, n);
-    build.block(k, &leaves_b->block[s.block], s.lanes, &job);
+    k->build->block(k, &leaves_b->block[s.block], s.lanes, &job);
     memcpy(open + done, &k->open[s.lane], (size_t)s.count);
     done += s.count;
   }
@@ -461,14 +480,13 @@ void kernel_rate_listed(kernel_core *k, const kernel_leaves *leaves_a, int a,
                         const kernel_leaves *leaves_b, const int *b, int n, sound_metric metric,
                         double *exact) {
   kernel_job job = job_of(k, metric);
-  kernel_build build = widest();
-  prepare(k, &build, leaves_a, a, job.first, job.last);
+  prepare(k, leaves_a, a, job.first, job.last);
   for (int done = 0, count; done < n; done += count) {
     count = n - done < KERNEL_LANES ? n - done : KERNEL_LANES;
     lanes l = {0, step_up(count)};
     for (int i = 0; i < l.to; i++)
       gather(&k->gathered, i, leaves_b, b[done + (i < count ? i : count - 1)]);
-    build.block(k, &k->gathered, l, &job);
+    k->build->block(k, &k->gathered, l, &job);
     hand_out(k, &job, 0, count, n, exact + done);
   }
 }

@@ -40,6 +40,8 @@ void kernel_screen(kernel_core *k, const kernel_leaves *leaves_a, int a, const k
 /* kernel_rate for the `n` faces b[] of leaves_b: the same bits. */
 void kernel_rate_listed(kernel_core *k, const kernel_leaves *leaves_a, int a, const kernel_leaves *leaves_b, const int *b, int n,
                         sound_metric metric, double *exact);
+/* For tests: makes `k` run in these vectors (NULL: the widest, as created). False when this machine or this build lacks them. */
+bool kernel_use(kernel_core *k, const char *vectors);
 /* Which vectors the lanes run in on this machine: "avx512", "avx2" or "portable". All give the same bits. */
 const char *kernel_vectors(void);
 

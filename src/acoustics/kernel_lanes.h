@@ -35,6 +35,7 @@ typedef struct kernel_cavity {
 /* The air path with the leaf on side A, for a lane with y = g u + j (m - g v) and t the reciprocal
  * of its low-frequency spring: tau = (w2 t^2 + w1 t + w0) / |t (r + y) + k (q + y)|^2. */
 typedef struct kernel_points {
+  double g[KERNEL_POINTS]; /* the cavity's, here for the loops over lanes to read */
   double r_re[KERNEL_POINTS], r_im[KERNEL_POINTS], k_re[KERNEL_POINTS], k_im[KERNEL_POINTS];
   double q_re[KERNEL_POINTS], q_im[KERNEL_POINTS];
   double w2[KERNEL_POINTS], w1[KERNEL_POINTS], w0[KERNEL_POINTS];
@@ -92,8 +93,11 @@ typedef struct kernel_order {
 } kernel_order;
 enum { KERNEL_SORT_STEPS = 63 }; /* Batcher's merge exchange of 16 rows */
 
+typedef struct kernel_build kernel_build;
+
 struct kernel_core {
   const catalog *catalog;
+  const kernel_build *build; /* of the loops over lanes */
   double ceiling_tau;
   double fill_loss; /* of the core, added to the loss of every leaf */
   kernel_sum sum[METRIC_COUNT];

@@ -74,6 +74,7 @@ static void order_set(kernel_order order[KERNEL_SORT_STEPS]) {
 kernel_core *kernel_core_create(arena *a, const catalog *c) {
   kernel_core *k = arena_alloc(a, sizeof *k);
   k->arena = a;
+  kernel_use(k, NULL);
   k->catalog = c;
   sums_set(k->sum);
   order_set(k->order);

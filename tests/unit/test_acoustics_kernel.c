@@ -5,6 +5,7 @@
 #include <check.h>
 #include <math.h>
 #include <stdlib.h>
+#include <string.h>
 
 #include "acoustics/predict.h"
 #include "wall/compat.h"
@@ -187,6 +188,42 @@ START_TEST(listed_faces_give_the_same) {
 }
 END_TEST
 
+/* Every width that this machine has gives the same bits. */
+START_TEST(vectors_give_the_same) {
+  static const char *const vectors[] = {"portable", "avx2", "avx512"};
+  dice d = {77u + (unsigned)_i};
+  face *faces = arena_array(memory, FACES, sizeof *faces);
+  double *all = arena_array(memory, FACES * METRIC_COUNT, sizeof *all);
+  double *other = arena_array(memory, FACES * METRIC_COUNT, sizeof *other);
+  unsigned char *open = arena_array(memory, 2 * FACES, sizeof *open);
+  double screen = kernel_screen_of(50);
+  fill_faces(&d, faces);
+  kernel_leaves *leaves = kernel_leaves_create(memory, cat, faces, FACES);
+  kernel_core *k = kernel_core_create(memory, cat);
+  ck_assert(kernel_use(k, "portable"));
+  ck_assert(kernel_use(k, kernel_vectors()));
+  ck_assert(!kernel_use(k, "none of them"));
+  for (int i = 0; i < 4; i++) {
+    wall core;
+    ck_assert(random_core(&d, (sound_family)_i, &core));
+    int a = roll(&d, FACES);
+    ck_assert(kernel_use(k, NULL));
+    kernel_core_set(k, &core);
+    kernel_rate_all(k, leaves, a, 0, FACES, all);
+    kernel_screen(k, leaves, a, leaves, 0, FACES, screen, open);
+    for (size_t v = 0; v < sizeof vectors / sizeof *vectors; v++) {
+      if (!kernel_use(k, vectors[v])) continue;
+      kernel_core_set(k, &core);
+      kernel_rate_all(k, leaves, a, 0, FACES, other);
+      kernel_screen(k, leaves, a, leaves, 0, FACES, screen, open + FACES);
+      ck_assert_msg(memcmp(all, other, FACES * METRIC_COUNT * sizeof *all) == 0, "%s", vectors[v]);
+      for (int j = 0; j < FACES; j++)
+        ck_assert_msg(open[j] == open[FACES + j], "%s: screen of face %d", vectors[v], j);
+    }
+  }
+}
+END_TEST
+
 /* Refuses no wall that reaches the value, and of those that miss it most. */
 START_TEST(screen_refuses_what_fails_only) {
   static const double values[] = {40, 45.3, 50, 55, 60.1};
@@ -225,6 +262,7 @@ int main(void) {
   tcase_add_test(t, parts_give_the_same);
   tcase_add_loop_test(t, bound_is_never_passed, 0, FAMILY_COUNT);
   tcase_add_test(t, listed_faces_give_the_same);
+  tcase_add_loop_test(t, vectors_give_the_same, 0, FAMILY_COUNT);
   tcase_add_loop_test(t, screen_refuses_what_fails_only, 0, FAMILY_COUNT);
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
