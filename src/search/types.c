@@ -16,8 +16,8 @@ typedef struct finder {
   const plan_context *x;
   types_sweep sweep;
   plan_types *out;
-  long long **micro;  /* per type: needs in millionths, as plan_type.need */
-  long long *total;   /* per type: cents of all classes that it fits */
+  long long **micro; /* per type: needs in millionths, as plan_type.need */
+  long long *total;  /* per type: cents of all classes that it fits */
 } finder;
 
 /* ---- one type, to the cent ---- */
@@ -150,8 +150,7 @@ static void drop_beaten(finder *f, int keep) {
   int *by = arena_array(f->arena, n, sizeof *by), *times = arena_array(f->arena, n, sizeof *times);
   int *place = arena_array(f->arena, n, sizeof *place), kept = 0;
   for (int i = 0; i < o->count; i++) times[i] = beaten_by(f, i, &by[i]);
-  for (int i = 0; i < o->count; i++)
-    place[i] = times[i] < keep ? kept++ : TYPES_NONE;
+  for (int i = 0; i < o->count; i++) place[i] = times[i] < keep ? kept++ : TYPES_NONE;
   for (int i = 0; i < o->count; i++) {
     if (place[i] == TYPES_NONE) continue;
     plan_type t = o->type[i];
@@ -213,8 +212,7 @@ static bool fits_some(const plan_types *o, int c) {
 
 static type_refusal *refusal_of(const finder *f, int c) {
   type_refusal *r = arena_alloc(f->arena, sizeof *r);
-  r->context =
-      (judge_context){f->x->catalog, f->x->prices, &f->x->schedule->classes[c].demand};
+  r->context = (judge_context){f->x->catalog, f->x->prices, &f->x->schedule->classes[c].demand};
   space_build(f->arena, &r->context, &r->space);
   sweep_run(f->arena, &r->space, &r->why);
   return r;
@@ -262,8 +260,7 @@ static void set_drawn(const catalog *c, const wall *w, drawn *out) {
 }
 
 /* `as` is scratch. */
-static bool set_drawn_use(const finder *f, int c, const drawn way[2], assessment *as,
-                          type_use *u) {
+static bool set_drawn_use(const finder *f, int c, const drawn way[2], assessment *as, type_use *u) {
   judge_context asking = {f->x->catalog, f->x->prices, &f->x->schedule->classes[c].demand};
   bool fits[2];
   int margin[2];

@@ -56,8 +56,8 @@ typedef struct type_refusal {
 typedef struct plan_types {
   plan_type *type; /* in tie order: cost if all classes that it fits took it, then wall line */
   int count;
-  const int *item; /* tiered items, by index in the price book: those with a minimum order, breaks or
-                      stock on hand; none with quantity_breaks off and no stock */
+  const int *item; /* tiered items, by index in the price book: those with a minimum order, breaks
+                      or stock on hand; none with quantity_breaks off and no stock */
   int items;
   const char *const *group; /* names of the framing groups */
   int groups;
@@ -69,10 +69,11 @@ typedef struct plan_types {
 
 /* `keep` one of TYPES_. */
 void types_find(arena *a, const plan_context *x, int keep, plan_types *out);
-/* Any wall as a type (a wall of the drawings), of the items and groups of `t` from types_find. `use`
- * and `need` are told in whole for the classes that it does not fit, too, as drawn; an item without
- * a price makes it fit nothing and cost nothing: then false. Needs are those of the takeoff, added up
- * part by part (framing, fills, mounts, each leaf), every part rounded to a millionth of a unit. */
+/* Any wall as a type (a wall of the drawings), of the items and groups of `t` from types_find.
+ * `use` and `need` are told in whole for the classes that it does not fit, too, as drawn; an item
+ * without a price makes it fit nothing and cost nothing: then false. Needs are those of the
+ * takeoff, added up part by part (framing, fills, mounts, each leaf), every part rounded to a
+ * millionth of a unit. */
 bool types_of_wall(arena *a, const plan_context *x, const plan_types *t, const wall *w,
                    plan_type *out);
 

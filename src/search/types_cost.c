@@ -390,8 +390,8 @@ static void set_parts(types_cost *t) {
   }
   for (int i = 0; i < t->spacings; i++)
     for (int at = 0; at < 2; at++)
-      t->leaf[i][at] = at < ways ? arena_array(t->arena, faces, sizeof *t->leaf[i][at])
-                                 : t->leaf[i][0];
+      t->leaf[i][at] =
+          at < ways ? arena_array(t->arena, faces, sizeof *t->leaf[i][at]) : t->leaf[i][0];
   threads_work work = {start_worker, set_one_part, t};
   threads_run(t->arena, threads_count(0), parts, &work, NULL);
 }

@@ -32,9 +32,9 @@ typedef struct cost_class {
   cost_row *row;
   int rows;
   double copies;
-  double floor_m;          /* length of all copies */
+  double floor_m;           /* length of all copies */
   double floor_cents_per_m; /* value of the floor under a metre of thickness */
-  double stray_cents;      /* the parts' sum is that near the cost */
+  double stray_cents;       /* the parts' sum is that near the cost */
 } cost_class;
 
 typedef struct types_cost types_cost;
@@ -54,8 +54,8 @@ typedef struct types_needs {
   int *item;            /* of the goods, rising */
   long long *amount[2]; /* [item * classes + class], millionths: as drawn; where sided, turned */
 } types_needs;
-/* Adds up those of its parts (NULL where there is none), as drawn and turned. `out` zeroed before its
- * first use; its memory is of `a` and used again. */
+/* Adds up those of its parts (NULL where there is none), as drawn and turned. `out` zeroed before
+ * its first use; its memory is of `a` and used again. */
 void types_needs_of(const types_cost *t, arena *a, const cost_part *part[2][PARTS],
                     types_needs *out);
 /* The same numbers in memory of their own. */

@@ -19,7 +19,7 @@ typedef struct types_entry {
   double *worst;            /* cents at most, for every class; INFINITY where it may not fit */
   int *margin_least, *margin_most; /* 0.01 dB, for every class; NULL where margin is no aim */
   const cost_part *part[2][PARTS]; /* as drawn, and turned */
-  types_needs needs; /* of these; not yet added up when `needed` is false */
+  types_needs needs;               /* of these; not yet added up when `needed` is false */
   bool needed;
 } types_entry;
 

@@ -18,13 +18,15 @@ typedef struct goods {
   int *item; /* in the price book */
   goods_price *price;
   int count;
-  int *place;      /* per item of the price book: its index here, TYPES_NONE */
-  price_book list; /* the project's book with these goods at no price: what walls cost without them */
+  int *place; /* per item of the price book: its index here, TYPES_NONE */
+  price_book
+      list; /* the project's book with these goods at no price: what walls cost without them */
 } goods;
 
 void goods_set(arena *a, const plan_context *x, goods *out);
-/* Cents that a need of `is` units of an item may cost more than one of `was`, over goods_price.least
- * a unit of the difference: in any plan, at most. Infinite where nothing can be said. */
+/* Cents that a need of `is` units of an item may cost more than one of `was`, over
+ * goods_price.least a unit of the difference: in any plan, at most. Infinite where nothing can be
+ * said. */
 double goods_worst(const goods_price *p, double was, double is);
 
 #endif

@@ -279,7 +279,8 @@ static void drop_unsized(const types_rules *r, const types_core *k, const face_f
   }
 }
 
-static void drop_dear(const types_rules *r, const types_core *k, int face_a, int face_b, ask_set *who) {
+static void drop_dear(const types_rules *r, const types_core *k, int face_a, int face_b,
+                      ask_set *who) {
   for (int i = 0; i < r->asks->count; i++) {
     int bit = r->asks->item[i].bit;
     candidate c;

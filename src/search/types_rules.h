@@ -17,9 +17,9 @@ typedef struct types_core {
   match_list published;
   ask_set keep; /* bearing, services, noncombustible, fastening, without */
   ask_set height[TABLES_HEIGHT_KEYS][TABLES_HEIGHT_KEYS];
-  fire_core *fire;      /* per kind of fire question */
-  double *mass_kg_m2;   /* per wall height asked of a mass */
-  tables **dear;        /* per ask, NULL without a cost limit */
+  fire_core *fire;    /* per kind of fire question */
+  double *mass_kg_m2; /* per wall height asked of a mass */
+  tables **dear;      /* per ask, NULL without a cost limit */
   core_facts **priced;
 } types_core;
 

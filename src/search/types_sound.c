@@ -74,8 +74,9 @@ static void set_aims(const brief *b, int which, sound_aims *out) {
 
 static void add_target(types_sound *t, const brief *b, int which, int bit) {
   int g = 0;
-  while (g < t->aims && !same_target(t->aim[g].example, &t->aim[g].example->targets[t->aim[g].target],
-                                     b, &b->targets[which]))
+  while (g < t->aims &&
+         !same_target(t->aim[g].example, &t->aim[g].example->targets[t->aim[g].target], b,
+                      &b->targets[which]))
     g++;
   if (g == t->aims) {
     t->aim[t->aims++] = (aim_group){.example = b, .target = which};

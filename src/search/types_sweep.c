@@ -26,13 +26,13 @@ typedef struct looker {
   types_core *core;
   types_sound *sound;
   kernel_core *kernel;
-  int order;            /* of the core */
-  bool kernel_set;      /* the kernel holds the core */
-  double *core_cents;   /* per class */
-  double *row_cents[2]; /* with the leaf on A, as drawn and turned */
-  ask_set *who;         /* per leaf on B: who finds all rules kept but those of sound */
-  int *open;            /* leaves on B that somebody may take */
-  double *bound;        /* per leaf on B: STC at most */
+  int order;                   /* of the core */
+  bool kernel_set;             /* the kernel holds the core */
+  double *core_cents;          /* per class */
+  double *row_cents[2];        /* with the leaf on A, as drawn and turned */
+  ask_set *who;                /* per leaf on B: who finds all rules kept but those of sound */
+  int *open;                   /* leaves on B that somebody may take */
+  double *bound;               /* per leaf on B: STC at most */
   double *exact[METRIC_COUNT]; /* per open leaf */
   sound_metric metric[METRIC_COUNT];
   int metrics;
@@ -263,8 +263,7 @@ static int open_row(looker *k, int face_a, const ask_set *may) {
 
 static void set_row_cents(looker *k, int face_a) {
   for (int way = 0; way < 2; way++) {
-    const double *leaf =
-        types_cost_leaf(k->all->cost, k->core->core, SIDE_A, face_a, way)->cents;
+    const double *leaf = types_cost_leaf(k->all->cost, k->core->core, SIDE_A, face_a, way)->cents;
     for (int c = 0; c < k->front.all_classes; c++)
       k->row_cents[way][c] = k->core_cents[c] + leaf[c];
   }

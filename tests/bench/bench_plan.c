@@ -1,5 +1,5 @@
-/* Speed of plan: 2,000 walls in 40 classes (a project made from a seed) over the shipped catalog and
- * prices, from the read schedule to the proven plan; one JSON line a figure on stdout. */
+/* Speed of plan: 2,000 walls in 40 classes (a project made from a seed) over the shipped catalog
+ * and prices, from the read schedule to the proven plan; one JSON line a figure on stdout. */
 #include <string.h>
 
 #include "../unit/random_project.h"
@@ -12,10 +12,12 @@ enum { ROWS = 2000, SEED = 1, REPEATS = 3, LIMIT_S = 40 };
 static const char rules[] =
     "\"max_types\":9,\"type_setup_cost\":1500,\"min_run_m\":20,\"floor_area_value_per_m2\":60,";
 /* Few enough walls that all those that fit somewhere may stand in the model. */
-static const char coarse[] =
-    "\"only\":[\"board:typex-16\",\"board:abuse-16\",\"board:moist-16\",\"board:cement-13\",\"frame:steel-92-18\",\"frame:steel-152-18\","
-    "\"frame:steel-92-33\",\"frame:steel-152-33\",\"frame:wood-89\",\"frame:wood-140\",\"frame:wood-89-double\","
-    "\"frame:steel-92-18-double\",\"frame:steel-64-33\",\"glass-89\",\"glass-140\",\"glass-65\",\"rc\"],";
+static const char coarse[] = "\"only\":[\"board:typex-16\",\"board:abuse-16\",\"board:moist-16\","
+                             "\"board:cement-13\",\"frame:steel-92-18\",\"frame:steel-152-18\","
+                             "\"frame:steel-92-33\",\"frame:steel-152-33\",\"frame:wood-89\","
+                             "\"frame:wood-140\",\"frame:wood-89-double\","
+                             "\"frame:steel-92-18-double\",\"frame:steel-64-33\",\"glass-89\","
+                             "\"glass-140\",\"glass-65\",\"rc\"],";
 
 typedef struct ground {
   arena *memory;
@@ -30,8 +32,7 @@ static bool set_project(ground *g, const char *keys) {
   int demand[PROJECT_DEMANDS];
   for (int i = 0; i < PROJECT_DEMANDS; i++) demand[i] = i;
   const char *walls = project_walls(g->memory, SEED, ROWS, 1, PROJECT_DEMANDS, demand);
-  const schedule *s =
-      project_from(g->memory, &g->faults, g->catalog, keys, walls, &g->project);
+  const schedule *s = project_from(g->memory, &g->faults, g->catalog, keys, walls, &g->project);
   g->x = (plan_context){g->catalog, g->prices, &g->project, s};
   return s != NULL;
 }
@@ -76,11 +77,13 @@ static run plan_best(ground *g, jmp_buf *fail, int keep, bool plain, int repeats
 }
 
 static void say(const run *r, const char *what) {
-  fprintf(stderr, "%s: %d types, %d pairs with classes, %d classes without a wall, %s, %.2f; %.2f s of processor\n",
+  fprintf(stderr,
+          "%s: %d types, %d pairs with classes, %d classes without a wall, %s, %.2f; %.2f s of "
+          "processor\n",
           what, r->types, r->pairs, r->refused,
-          !r->plan.found                          ? "no plan"
+          !r->plan.found                     ? "no plan"
           : r->plan.status == SOLVER_OPTIMAL ? "proven"
-                                                  : "not proven in time",
+                                             : "not proven in time",
           (double)r->plan.cost_cents / 100, r->cpu);
 }
 
@@ -92,8 +95,8 @@ static double curves_seconds(ground *g, jmp_buf *fail) {
   double start = wall_s();
   bool done = plan_explain(a, &g->faults, &g->x, NULL, &order, out);
   double spent = wall_s() - start;
-  fprintf(stderr, "with curves: %s, %d types used\n",
-          done && out->found ? "planned" : "no plan", out->type_count);
+  fprintf(stderr, "with curves: %s, %d types used\n", done && out->found ? "planned" : "no plan",
+          out->type_count);
   arena_free(a);
   return spent;
 }
@@ -132,8 +135,7 @@ int main(void) {
   diag_init(&g.faults, g.memory);
   g.catalog = catalog_load(g.memory, &g.faults, TEST_ROOT "/catalogs");
   if (g.catalog)
-    g.prices =
-        prices_load(g.memory, &g.faults, g.catalog, TEST_ROOT "/prices/kestrel-yard.json");
+    g.prices = prices_load(g.memory, &g.faults, g.catalog, TEST_ROOT "/prices/kestrel-yard.json");
   if (!g.prices || !set_project(&g, rules)) return EXIT_FAILURE;
   bench_whole(&g, &out_of_memory);
   if (!set_project(&g, text_format(g.memory, "%s%s", rules, coarse))) return EXIT_FAILURE;

@@ -18,7 +18,8 @@ static inline unsigned project_dice(unsigned below) {
 /* ---- a project as text ---- */
 
 /* What the walls of one class ask, as the columns of a schedule: target, fire, loadbearing, floors
- * above, noncombustible, fastening a and b, wet a and b, abuse a and b, thickness max, riser, head. */
+ * above, noncombustible, fastening a and b, wet a and b, abuse a and b, thickness max, riser, head.
+ */
 static const char *const project_demands[] = {
     /* between dwellings, on each storey */
     "36,1 h,yes,3,,,,,,,,,,",
@@ -67,27 +68,29 @@ static const char *const project_demands[] = {
 };
 enum { PROJECT_DEMANDS = sizeof project_demands / sizeof project_demands[0] };
 
-/* A schedule of `rows` rows of up to `copies` walls, each of one of the `classes` demands (indices),
- * which may stand twice in the list. */
+/* A schedule of `rows` rows of up to `copies` walls, each of one of the `classes` demands
+ * (indices), which may stand twice in the list. */
 static inline const char *project_walls(arena *a, unsigned seed, int rows, unsigned copies,
                                         int classes, const int *demand) {
   text t;
   text_init(&t, a, (size_t)rows * 120 + 400);
-  text_putf(&t, "id,storey,length,height,count,target,fire,loadbearing,floors_above,noncombustible,"
-                "fastening_a,fastening_b,wet_a,wet_b,abuse_a,abuse_b,thickness_max_mm,riser_mm,head\n");
+  text_putf(&t,
+            "id,storey,length,height,count,target,fire,loadbearing,floors_above,noncombustible,"
+            "fastening_a,fastening_b,wet_a,wet_b,abuse_a,abuse_b,thickness_max_mm,riser_mm,head\n");
   project_dice_state = seed * 2654435761u + 99;
   for (int i = 0; i < rows; i++) {
     int c = i < classes ? i : (int)project_dice((unsigned)classes);
     unsigned tenths = 12 + project_dice(96); /* 1.2 to 10.7 m */
     const char *asked = project_demands[demand[c]];
     bool podium = strstr(asked, "strict") != NULL;
-    text_putf(&t, "W%d,%s,%u.%um,%s,%u,%s\n", i + 1, podium ? "1" : "2", tenths / 10,
-              tenths % 10, podium ? "3.6m" : "2.7m", 1 + project_dice(copies), asked);
+    text_putf(&t, "W%d,%s,%u.%um,%s,%u,%s\n", i + 1, podium ? "1" : "2", tenths / 10, tenths % 10,
+              podium ? "3.6m" : "2.7m", 1 + project_dice(copies), asked);
   }
   return t.data;
 }
 
-/* Reads both; NULL after messages. `more` are further keys of the project, each with a comma behind.
+/* Reads both; NULL after messages. `more` are further keys of the project, each with a comma
+ * behind.
  */
 static inline schedule *project_from(arena *a, diag_list *d, const catalog *c, const char *more,
                                      const char *walls, project *out) {
@@ -107,8 +110,8 @@ static inline schedule *project_from(arena *a, diag_list *d, const catalog *c, c
 static inline const char *project_only(arena *a) {
   static const char *const boards[] = {"typex-16", "gyp-13-light", "typec-13", "typex-13"};
   static const char *const special[] = {"abuse-16", "moist-16", "damp-16", "osb-11"};
-  static const char *const frames[] = {"steel-92-18", "steel-92-43", "steel-64-33", "wood-89",
-                                       "wood-140",    "wood-89-double"};
+  static const char *const frames[] = {"steel-92-18", "steel-92-43", "steel-64-33",
+                                       "wood-89",     "wood-140",    "wood-89-double"};
   static const char *const fills[] = {"glass-89", "stone-89-dense", "cell-89", "glass-140"};
   return text_format(a, "\"only\":[\"%s\",\"%s\",\"%s\",\"%s\",\"%s\",\"%s\",\"mount:%s\"],",
                      boards[project_dice(4)], special[project_dice(4)], frames[project_dice(3)],

@@ -7,7 +7,8 @@
 #include "share.h"
 
 enum { PROJECTS = 24, CLASSES = 4 };
-/* Needs are rounded to a millionth of a unit for each of a wall's seven parts; printed are tenths. */
+/* Needs are rounded to a millionth of a unit for each of a wall's seven parts; printed are tenths.
+ */
 static const double need_slack = 1e-5;
 /* Floor areas are sums of metres times millimetres: only the last bits differ. */
 static const double floor_slack_m2 = 1e-6;
@@ -42,7 +43,8 @@ static int goods_place(const plan_types *t, int item) {
   return -1;
 }
 
-/* One copy of a row, line by line: goods of the whole project, and the markups on them, left out. */
+/* One copy of a row, line by line: goods of the whole project, and the markups on them, left out.
+ */
 static long long row_cents(const plan_types *t, const brief *b, const wall *w, double count,
                            double *need) {
   takeoff *lines = arena_alloc(shop.memory, sizeof *lines);
@@ -284,9 +286,8 @@ END_TEST
 /* A plumbing wall between a bath and a classroom has a different board on either side: drawn the
  * other way round it serves the same rows as well. */
 START_TEST(a_type_serves_from_either_side) {
-  static const char walls[] =
-      "id,length,height,target,wet_a,wet_b,abuse_a,abuse_b,fastening_a\n"
-      "W1,6m,2.7m,40,yes,,,yes,light\nW2,4m,2.7m,40,,yes,yes,,none\n";
+  static const char walls[] = "id,length,height,target,wet_a,wet_b,abuse_a,abuse_b,fastening_a\n"
+                              "W1,6m,2.7m,40,yes,,,yes,light\nW2,4m,2.7m,40,,yes,yes,,none\n";
   static const char more[] =
       "\"only\":[\"moist-16\",\"abuse-16\",\"steel-92-18\",\"glass-89\",\"mount:none-of-them\"],";
   scene s;

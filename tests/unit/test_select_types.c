@@ -84,8 +84,7 @@ static bool keeps_rules(const plan_problem *p, const int *type_of) {
 static int worst_margin(const plan_problem *p, const int *type_of) {
   int worst = INT_MAX;
   for (int c = 0; c < p->classes; c++)
-    if (p->margin[c * p->types + type_of[c]] < worst)
-      worst = p->margin[c * p->types + type_of[c]];
+    if (p->margin[c * p->types + type_of[c]] < worst) worst = p->margin[c * p->types + type_of[c]];
   return worst;
 }
 
