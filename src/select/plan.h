@@ -42,7 +42,8 @@ typedef struct plan_problem {
 
 typedef struct plan_how {
   double seconds; /* 0 = no limit */
-  int nodes;      /* most nodes of branch and bound a solve; 0 = no limit; for repeatable tests */
+  int nodes;      /* most nodes of branch and bound, over all parts of a solve; 0 = no limit: an end
+                     that is the same on every run */
   bool margin;    /* best worst margin within the budget, then least cost */
   bool plain;     /* the whole model to the solver, nothing found or ruled out before: for tests */
   bool no_conflicts;        /* INFEASIBLE need not say why: for the points of a curve */

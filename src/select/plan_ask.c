@@ -45,6 +45,7 @@ static bool take_answer(const plan_call *call, const plan_case *x, const plan_sh
                         plan_least *out) {
   out->status = r->status;
   out->bound = r->bound + base;
+  out->nodes = r->nodes;
   out->found = r->found;
   if (!r->found) return true;
   take_choice(x, at, r, out->type_of);

@@ -102,6 +102,7 @@ typedef struct plan_least {
   int *type_of;
   plan_tally tally;
   double bound; /* currency: no choice of the case costs less; -HUGE_VAL unknown */
+  int nodes;    /* of branch and bound, looked at */
 } plan_least;
 
 /* Whether the time is up or the call was stopped. */

@@ -30,6 +30,7 @@ typedef struct search {
   double root;      /* bound of the whole */
   double told;      /* the least cost that progress told */
   int parts;
+  int nodes;                /* the solver looked at, in all parts */
   plan_part below[DEEPEST]; /* the part at work a depth */
 } search;
 
@@ -141,10 +142,16 @@ static bool prove(search *s, const plan_part *part) {
   if (limit < HUGE_VAL) limit += sure;
   plan_call part_call = *s->call;
   plan_how how = *s->call->how;
+  if (how.nodes > 0 && s->nodes >= how.nodes) {
+    leave(s, part->bound);
+    return true;
+  }
+  if (how.nodes > 0) how.nodes -= s->nodes;
   if (how.progress) how.progress = relay;
   how.user = s;
   part_call.how = &how;
   if (!plan_ask_solver(&part_call, &x, &shape, start, limit, s->asked, &found)) return false;
+  s->nodes += found.nodes;
   if (found.found) (void)plan_guess_offer(&s->guess, found.type_of);
   bool beyond = found.status == SOLVER_INFEASIBLE || found.bound > limit;
   if (found.status != SOLVER_OPTIMAL && !beyond && !has_enough(s))

@@ -55,6 +55,7 @@ typedef struct solver_result {
   bool found;       /* value[] and objective are a solution */
   double objective; /* in the unit of the columns' costs */
   double bound;     /* no solution is below it; -HUGE_VAL when nothing was proved */
+  int nodes;        /* of branch and bound, looked at */
   double *value;    /* column_count values, in the arena given to solver_run */
 } solver_result;
 

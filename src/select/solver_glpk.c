@@ -195,6 +195,7 @@ static void listen(glp_tree *tree, void *info) {
   int nodes = 0;
   watch(tree, t);
   glp_ios_tree_size(tree, NULL, NULL, &nodes);
+  t->result->nodes = nodes;
   bool enough = t->how->nodes > 0 && nodes > t->how->nodes;
   if (enough || stopped(t) || settled(glp_ios_get_prob(tree), t)) {
     t->cut_short = true;

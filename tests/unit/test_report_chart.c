@@ -294,6 +294,24 @@ START_TEST(curves_of_anything) {
 }
 END_TEST
 
+START_TEST(the_curve_goes_on_to_the_plan) {
+  const chart_types_point point[] = {
+      {1, CHART_INFEASIBLE, 0}, {2, CHART_PROVEN, 300000}, {3, CHART_PROVEN, 200000}};
+  const chart_types_data d = {point, 3, 5, 150000, 0};
+  text *out = new_picture();
+  chart_types(&shop.report, "c", &d, out);
+  const char *at = strstr(out->data, "<polyline class=\"c-step\" points=\"");
+  ck_assert_ptr_nonnull(at);
+  at = strstr(at, "points=\"") + strlen("points=\"");
+  double xy[6];
+  char *end = NULL;
+  for (int i = 0; i < 6; i++, at = end) xy[i] = strtod(at, &end);
+  ck_assert_int_eq(*end, '"');
+  ck_assert_double_eq_tol(xy[4] - xy[2], 2 * (xy[2] - xy[0]), 2 * rounding_px);
+  ck_assert_double_eq_tol(xy[3] - xy[1], 2 * (xy[5] - xy[3]), 2 * rounding_px);
+}
+END_TEST
+
 START_TEST(the_plan_in_words) {
   const chart_types_point point[] = {{2, CHART_INFEASIBLE, 0},
                                      {3, CHART_PROVEN, 12345600},
@@ -326,6 +344,7 @@ static Suite *all_tests(void) {
   tcase_add_test(c, lengths_are_amounts);
   tcase_add_test(c, rows_beyond_the_most_are_one);
   tcase_add_test(c, curves_of_anything);
+  tcase_add_test(c, the_curve_goes_on_to_the_plan);
   tcase_add_test(c, the_plan_in_words);
   suite_add_tcase(s, c);
   return s;
