@@ -304,5 +304,6 @@ void report_ladder_html(const report *r, const ladder_answer *l, text *out) {
   html_brief(h, l->terms.climbs);
   int count = view_ladder_all_cautions(r, l, caution);
   if (count > 0) html_cautions(h, caution, count);
+  html_exclusions(h, r->brief);
   html_end_brief(h);
 }

@@ -218,6 +218,7 @@ void report_plan_html(const report *r, const plan_answer *p, text *out) {
   if (p->found) {
     const char *caution[VIEW_MAX_PLAN_CAUTIONS];
     html_cautions(h, caution, view_plan_cautions(r, p, caution));
+    html_exclusions(h, view_plan_any_brief(r, p));
   }
   html_end(h, files, HTML_COUNT(files));
 }

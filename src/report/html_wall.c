@@ -1,6 +1,7 @@
 /* What it is, fire, height and rules of one wall. */
 #include "report/html_wall.h"
 
+#include "report/exclusions.h"
 #include "report/section.h"
 #include "report/view.h"
 
@@ -241,9 +242,17 @@ void html_cautions(html *h, const char *const *caution, int count) {
   html_section_end(h);
 }
 
+void html_exclusions(html *h, const brief *b) {
+  const char *words[EXCLUSIONS_MAX];
+  html_section(h, "Not in the price");
+  html_list(h, words, exclusions_of(b, words));
+  html_section_end(h);
+}
+
 void html_wall_cautions(html *h, const assessment *x) {
   const char *caution[VIEW_MAX_CAUTIONS];
   html_cautions(h, caution, view_cautions(h->report, x, caution));
+  html_exclusions(h, h->report->brief);
 }
 
 void html_unpriced(html *h) {

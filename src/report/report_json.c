@@ -3,6 +3,7 @@
  * the amount to the cent. */
 #include <math.h>
 
+#include "report/exclusions.h"
 #include "report/report_json.h"
 #include "report/view.h"
 #include "septum.h"
@@ -297,15 +298,19 @@ static void put_cost(markup_json *j, const report *r, const assessment *x) {
 
 /* --- answers --------------------------------------------------------------------------------- */
 
+static void put_rating(markup_json *j, const report *r, const assessment *x) {
+  markup_json_string(j, "septum", "rating/1");
+  markup_json_string(j, "version", SEPTUM_VERSION);
+  report_json_rating_facts(j, r, x);
+}
+
 void report_json_rating(markup_json *j, const report *r, const char *key, const assessment *x) {
   if (x == NULL) {
     markup_json_null(j, key);
     return;
   }
   markup_json_object(j, key, false);
-  markup_json_string(j, "septum", "rating/1");
-  markup_json_string(j, "version", SEPTUM_VERSION);
-  report_json_rating_facts(j, r, x);
+  put_rating(j, r, x);
   markup_json_close(j);
 }
 
@@ -329,7 +334,10 @@ void report_json_rating_facts(markup_json *j, const report *r, const assessment 
 void report_rate_json(const report *r, const assessment *x, text *out) {
   markup_json j;
   markup_json_init(&j, out);
-  report_json_rating(&j, r, NULL, x);
+  markup_json_object(&j, NULL, false);
+  put_rating(&j, r, x);
+  exclusions_json(r->brief, &j);
+  markup_json_close(&j);
 }
 
 /* A wall that was not chosen: enough to compare. `fails`: with the rules it breaks. */
@@ -433,6 +441,7 @@ void report_pick_json(const report *r, const explanation *e, const pick_choice *
   for (int i = 0; i < e->conflict_count; i++) report_json_rules(&j, r, NULL, e->conflicts[i]);
   markup_json_close(&j);
   report_json_others(&j, r, "nearest", e->nearest, e->nearest_count, true);
+  exclusions_json(r->brief, &j);
   markup_json_close(&j);
 }
 

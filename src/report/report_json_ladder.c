@@ -1,4 +1,5 @@
 /* ladder/1: the keys of docs/formats/answers.md. */
+#include "report/exclusions.h"
 #include "report/report_json.h"
 #include "report/view_ladder.h"
 #include "septum.h"
@@ -184,5 +185,6 @@ void report_ladder_json(const report *r, const ladder_answer *l, text *out) {
   put_value(&j, "priced_at", l->priced_at);
   report_json_rule_prices(&j, l->prices, l->price_count);
   put_why(&j, r, l->why);
+  exclusions_json(r->brief, &j);
   markup_json_close(&j);
 }

@@ -3,6 +3,7 @@
 #include <math.h>
 
 #include "report/buy_plan.h"
+#include "report/exclusions.h"
 #include "report/report_json.h"
 #include "report/report_plan.h"
 #include "report/view_plan.h"
@@ -463,5 +464,6 @@ void report_plan_json(const report *r, const plan_answer *p, text *out) {
   markup_json_array(&j, "cautions", false);
   for (int i = 0; i < cautions; i++) markup_json_string(&j, NULL, caution[i]);
   markup_json_close(&j);
+  exclusions_json(view_plan_any_brief(r, p), &j);
   markup_json_close(&j);
 }

@@ -1,4 +1,5 @@
 /* trim/1: the keys of docs/formats/answers.md. */
+#include "report/exclusions.h"
 #include "report/report_json.h"
 #include "report/report_trim.h"
 #include "report/view_trim.h"
@@ -194,5 +195,6 @@ void report_trim_json(const report *r, const trim_answer *t, text *out) {
   put_cheapest(&j, t);
   report_json_others(&j, r, "cheaper_but", t->cheaper, t->cheaper_count, true);
   report_json_rule_prices(&j, t->prices, t->price_count);
+  exclusions_json(r->brief, &j);
   markup_json_close(&j);
 }

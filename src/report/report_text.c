@@ -3,6 +3,7 @@
 
 #include <math.h>
 
+#include "report/exclusions.h"
 #include "report/page.h"
 #include "report/view.h"
 #include "septum.h"
@@ -295,6 +296,7 @@ void report_wall_text(const report *r, const assessment *x, text *out) {
   put_cost(r, x, out);
   put_takeoff(r, x, out);
   put_cautions(r, x, out);
+  exclusions_text(r->brief, out);
 }
 
 void report_unpriced_text(const report *r, text *out) {

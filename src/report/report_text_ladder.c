@@ -1,4 +1,5 @@
 /* `ladder` for the estimator: a line of figures a rung, its wall, what changed. */
+#include "report/exclusions.h"
 #include "report/page.h"
 #include "report/report_text.h"
 #include "report/view_ladder.h"
@@ -244,5 +245,6 @@ void report_ladder_text(const report *r, const ladder_answer *l, text *out) {
     report_rule_prices_text(r, l->prices, l->price_count, "", out);
   }
   put_cautions(r, l, out);
+  exclusions_text(r->brief, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }

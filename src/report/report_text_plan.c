@@ -2,6 +2,7 @@
 #include <limits.h>
 #include <math.h>
 
+#include "report/exclusions.h"
 #include "report/page.h"
 #include "report/report_text.h"
 #include "report/report_text_plan.h"
@@ -390,6 +391,7 @@ static void put_plan(const report *r, const plan_answer *p, text *out) {
   report_plan_drawings_text(r, p, out);
   report_plan_quantities_text(r, p, out);
   put_cautions(r, p, out);
+  exclusions_text(view_plan_any_brief(r, p), out);
 }
 
 void report_plan_text(const report *r, const plan_answer *p, text *out) {

@@ -1,6 +1,7 @@
 /* `trim` for the contractor: the specified wall, then what may stand in its place. */
 #include <math.h>
 
+#include "report/exclusions.h"
 #include "report/page.h"
 #include "report/report_text.h"
 #include "report/report_trim.h"
@@ -230,5 +231,6 @@ void report_trim_text(const report *r, const trim_answer *t, text *out) {
   text_char(out, '\n');
   report_rule_prices_text(r, t->prices, t->price_count, t->base_line, out);
   put_cautions(r, t, out);
+  exclusions_text(r->brief, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }

@@ -388,3 +388,28 @@ int view_plan_cautions(const report *r, const plan_answer *p,
   add_type_cautions(r, p, caution, &count);
   return count;
 }
+
+const brief *view_plan_any_brief(const report *r, const plan_answer *p) {
+  brief *any = arena_alloc(r->arena, sizeof *any);
+  *any = p->project->common;
+  for (int i = 0; i < p->schedule->class_count; i++) {
+    const brief *b = &p->schedule->classes[i].demand;
+    for (int s = 0; s < 2; s++) {
+      any->side[s].wet = any->side[s].wet || b->side[s].wet;
+      if (b->side[s].fastening > any->side[s].fastening)
+        any->side[s].fastening = b->side[s].fastening;
+    }
+    any->loadbearing = any->loadbearing || b->loadbearing;
+    if (b->riser_m > any->riser_m) any->riser_m = b->riser_m;
+    if (b->run_m > any->run_m) any->run_m = b->run_m;
+    if (b->opening_count > any->opening_count) any->opening_count = b->opening_count;
+    for (int t = 0; t < b->target_count; t++)
+      if (b->targets[t].basis == BASIS_FIELD) {
+        any->target_count = 1;
+        any->targets[0] = b->targets[t];
+      }
+  }
+  for (int i = 0; i < p->schedule->count; i++)
+    if (p->schedule->wall[i].doors > any->doors) any->doors = p->schedule->wall[i].doors;
+  return any;
+}

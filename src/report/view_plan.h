@@ -47,5 +47,7 @@ long long view_plan_saving(const plan_comparison *c);
 enum { VIEW_MAX_PLAN_CAUTIONS = 120 };
 int view_plan_cautions(const report *r, const plan_answer *p,
                        const char *caution[VIEW_MAX_PLAN_CAUTIONS]);
+/* What the project asks of some wall or other, as one brief, for what is said of all of them. */
+const brief *view_plan_any_brief(const report *r, const plan_answer *p);
 
 #endif
