@@ -6,7 +6,6 @@
 #include "base/clock.h"
 #include "explain/plan_parts.h"
 
-
 /* ---- solving ---- */
 
 typedef struct watcher {
@@ -157,8 +156,8 @@ static bool relax(plan_problem *p, plan_rule rule) {
 }
 
 /* The number of types is left out: the curve tells its price, and without any end to it a project
- * is a far harder puzzle. Of the others, what so many nodes of branch and bound do not settle stands
- * as the best found. */
+ * is a far harder puzzle. Of the others, what so many nodes of branch and bound do not settle
+ * stands as the best found. */
 static bool set_relaxed(plan_work *w) {
   enum { MOST_NODES = 200 };
   for (int r = 0; r < PLAN_RULES; r++) {

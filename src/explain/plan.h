@@ -20,21 +20,21 @@ typedef struct plan_money {
 
 /* One of each row of the schedule, in its order. */
 typedef struct plan_row {
-  int type;              /* of plan_answer.type; PLAN_NONE: no type fits */
-  bool mirrored;         /* the type's side A is towards `to`; false for a wall that is its own mirror */
-  const char *line;      /* as built, side A towards `from`; NULL when unplanned */
-  plan_money money;      /* its share of the goods goes by what it needs of them */
-  long long list_cents;  /* the row costed alone, as `rate` does: list prices, without floor value */
+  int type;         /* of plan_answer.type; PLAN_NONE: no type fits */
+  bool mirrored;    /* the type's side A is towards `to`; false for a wall that is its own mirror */
+  const char *line; /* as built, side A towards `from`; NULL when unplanned */
+  plan_money money; /* its share of the goods goes by what it needs of them */
+  long long list_cents; /* the row costed alone, as `rate` does: list prices, without floor value */
   double run_m, area_m2; /* area as built, one face */
   double floor_m2;
 } plan_row;
 
 /* One of each class of the schedule, in its order. */
 typedef struct plan_place {
-  int type;             /* PLAN_NONE: no type fits */
-  bool turned;          /* against the type's own line */
-  assessment *wall;     /* the type as it stands here, side A as the class has it, under its demand */
-  double margin_db;     /* least over the targets of promised rating - target */
+  int type;         /* PLAN_NONE: no type fits */
+  bool turned;      /* against the type's own line */
+  assessment *wall; /* the type as it stands here, side A as the class has it, under its demand */
+  double margin_db; /* least over the targets of promised rating - target */
   double in_laboratory; /* least over the targets: probability that a wall meets it in a test in the
                            laboratory (asked in the field: there); 1 without a target */
   double in_field;      /* that a field test meets the target less the field allowance, the field's
@@ -60,10 +60,10 @@ typedef struct plan_used {
   int candidate;    /* its index among those put to the solver */
   wall wall;
   const char *line;
-  int judged_as;    /* index of the class it is judged under: where its margin is least */
-  assessment *as;   /* its assessment there, seen from the type's own side A */
+  int judged_as;       /* index of the class it is judged under: where its margin is least */
+  assessment *as;      /* its assessment there, seen from the type's own side A */
   const brief *demand; /* of that class, from the type's own side A */
-  int *row;         /* of the schedule */
+  int *row;            /* of the schedule */
   int row_count, walls;
   double run_m, area_m2, floor_m2;
   plan_money money;
@@ -71,7 +71,7 @@ typedef struct plan_used {
 } plan_used;
 
 typedef struct plan_storey {
-  const char *name; /* "" where rows name none */
+  const char *name;                /* "" where rows name none */
   int row_count, walls, unplanned; /* unplanned counts rows */
   double run_m, area_m2, floor_m2;
   plan_money money;
@@ -86,7 +86,7 @@ typedef struct plan_section {
 
 /* What the walls need of an item, by the length of stud that it is cut from. */
 typedef struct plan_need {
-  int item;        /* in the price book */
+  int item; /* in the price book */
   const char *section;
   double stud_m;   /* stock length; 0: not a stud */
   double quantity; /* takeoff units, waste included */
@@ -107,8 +107,8 @@ typedef struct plan_drawn {
   const char *missing_code; /* what the price book lacks, when not costed */
   int row_count, walls;
   double run_m;
-  long long list_cents; /* rows costed alone, as plan_row; 0 when not costed */
-  int used;             /* the plan's type that is the same wall; PLAN_NONE */
+  long long list_cents;    /* rows costed alone, as plan_row; 0 when not costed */
+  int used;                /* the plan's type that is the same wall; PLAN_NONE */
   const assessment **miss; /* for each class that it misses the demand of */
   int *miss_class;
   int miss_count;
@@ -118,8 +118,9 @@ typedef struct plan_drawn {
 /* The drawings against the plan, over the rows that both have a wall for. */
 typedef struct plan_comparison {
   bool done;
-  int row_count, left_out; /* rows compared; with a wall in the drawings that has no cost or no plan */
-  int types;               /* of the drawings on the compared rows */
+  int row_count,
+      left_out; /* rows compared; with a wall in the drawings that has no cost or no plan */
+  int types;    /* of the drawings on the compared rows */
   plan_money drawings, plan;
   double drawings_floor_m2, plan_floor_m2;
 } plan_comparison;
@@ -140,9 +141,9 @@ typedef struct plan_answer {
   int type_count; /* by run length, longest first */
   plan_money money;
   long long cost_cents, bound_cents; /* bound LLONG_MIN: nothing was proved */
-  int worst_margin; /* 0.01 dB, least over all planned walls */
-  int margin_bound; /* of AIM_MARGIN: no plan has a better one */
-  bool has_margin;  /* some planned wall has a target */
+  int worst_margin;                  /* 0.01 dB, least over all planned walls */
+  int margin_bound;                  /* of AIM_MARGIN: no plan has a better one */
+  bool has_margin;                   /* some planned wall has a target */
   plan_storey *storey;
   int storey_count; /* in the order of the schedule */
   plan_section *section;
@@ -159,7 +160,8 @@ typedef struct plan_answer {
   plan_reason *unplanned;
   int unplanned_count; /* classes that no type fits */
   int unplanned_rows, unplanned_walls;
-  unsigned conflict[PLAN_MAX_CONFLICTS]; /* infeasible: the smallest sets of plan_rule bits that cannot hold */
+  unsigned conflict[PLAN_MAX_CONFLICTS]; /* infeasible: the smallest sets of plan_rule bits that
+                                            cannot hold */
   int conflict_count;
   bool conflicts_whole; /* false: time ran out before all were settled */
   plan_drawn *drawn;
@@ -167,7 +169,8 @@ typedef struct plan_answer {
   plan_comparison against;
   double floor_m2;
   int asked_walls; /* planned walls with a sound target */
-  double miss_laboratory, miss_field; /* of them, how many are expected to miss it: see plan_place */
+  double miss_laboratory,
+      miss_field; /* of them, how many are expected to miss it: see plan_place */
   long long walls, rated;
   int candidates; /* types put to the solver */
 } plan_answer;

@@ -117,13 +117,12 @@ static void start_marks(plan_work *w) {
   out->drawn_count = p->mark_count;
   out->drawn = arena_array(w->arena, (size_t)p->mark_count, sizeof *out->drawn);
   for (int i = 0; i < p->mark_count; i++)
-    out->drawn[i] =
-        (plan_drawn){.mark = p->mark[i].mark,
-                     .line = line_print(w->arena, w->x->catalog, &w->mark_wall[i]),
-                     .wall = w->mark_wall[i],
-                     .locked = p->mark[i].locked,
-                     .costed = true,
-                     .used = used_as(out, w->x->catalog, &w->mark_wall[i])};
+    out->drawn[i] = (plan_drawn){.mark = p->mark[i].mark,
+                                 .line = line_print(w->arena, w->x->catalog, &w->mark_wall[i]),
+                                 .wall = w->mark_wall[i],
+                                 .locked = p->mark[i].locked,
+                                 .costed = true,
+                                 .used = used_as(out, w->x->catalog, &w->mark_wall[i])};
 }
 
 /* ---- the comparison ---- */

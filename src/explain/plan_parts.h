@@ -26,8 +26,9 @@ typedef struct plan_work {
 
 /* One copy of a row of the schedule, built as some wall. */
 typedef struct plan_costed {
-  cost_total list;  /* as `rate` costs it */
-  cost_total alone; /* without the material of goods bought for the whole project, and its markups */
+  cost_total list; /* as `rate` costs it */
+  cost_total
+      alone; /* without the material of goods bought for the whole project, and its markups */
 } plan_costed;
 
 /* ---- plan_problem.c ---- */

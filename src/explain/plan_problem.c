@@ -70,8 +70,7 @@ static int add_type(plan_work *w, const wall *given) {
  * it. */
 static void set_locked_use(plan_work *w, int of_class, plan_type *t, const wall *given) {
   const schedule_class *k = &w->x->schedule->classes[of_class];
-  judge_context asking = {
-      .catalog = w->x->catalog, .prices = w->x->prices, .brief = &k->demand};
+  judge_context asking = {.catalog = w->x->catalog, .prices = w->x->prices, .brief = &k->demand};
   assessment *judged = arena_alloc(w->arena, sizeof *judged);
   judge_wall(w->arena, &asking, given, judged);
   type_use *use = &t->use[of_class];
@@ -220,8 +219,8 @@ static int *storeys_of(plan_work *w, int *count) {
   int *storey = arena_array(w->arena, (size_t)w->problem.classes, sizeof *storey);
   for (int c = 0; c < w->problem.classes; c++) {
     int before = 0;
-    while (before < c && !text_equal(s->classes[w->class_of[before]].storey,
-                                     s->classes[w->class_of[c]].storey))
+    while (before < c &&
+           !text_equal(s->classes[w->class_of[before]].storey, s->classes[w->class_of[c]].storey))
       before++;
     bool alike = framing == FRAMING_ALL && c > 0;
     storey[c] = alike ? 0 : before < c ? storey[before] : (*count)++;

@@ -47,8 +47,8 @@ static void set_probabilities(const brief *b, plan_place *at) {
   at->in_laboratory = 1;
   at->in_field = 1;
   for (int i = 0; i < b->target_count; i++) {
-    at->in_laboratory = fmin(at->in_laboratory,
-                             test_probability(b, at->wall, &b->targets[i], false));
+    at->in_laboratory =
+        fmin(at->in_laboratory, test_probability(b, at->wall, &b->targets[i], false));
     at->in_field = fmin(at->in_field, test_probability(b, at->wall, &b->targets[i], true));
   }
 }
@@ -62,8 +62,7 @@ static void set_place(plan_work *w, int of_class) {
   if (place == PLAN_NONE) return;
   at->type = w->kind[w->best.type_of[place]];
   const plan_type *t = &w->types.type[at->type];
-  judge_context asking = {
-      .catalog = w->x->catalog, .prices = w->x->prices, .brief = &k->demand};
+  judge_context asking = {.catalog = w->x->catalog, .prices = w->x->prices, .brief = &k->demand};
   wall seen = as_class_sees(w, t, &t->use[of_class]);
   at->wall = arena_alloc(w->arena, sizeof *at->wall);
   judge_wall(w->arena, &asking, &seen, at->wall);
@@ -177,7 +176,8 @@ static void set_types(plan_work *w) {
   name_types(w);
   for (int c = 0; c < w->x->schedule->class_count; c++) {
     plan_place *at = &w->out->place[c];
-    if (at->type != PLAN_NONE) at->turned = !wall_same(&at->wall->wall, &w->out->type[at->type].wall);
+    if (at->type != PLAN_NONE)
+      at->turned = !wall_same(&at->wall->wall, &w->out->type[at->type].wall);
   }
 }
 

@@ -49,7 +49,8 @@ static void put_head(row_writer *w, const plan_answer *p) {
                                "plan_class",
                                "plan_basis",
                                "plan_note"};
-  for (size_t i = 0; i < p->schedule->table->columns; i++) put(w, p->schedule->table->header[i].text);
+  for (size_t i = 0; i < p->schedule->table->columns; i++)
+    put(w, p->schedule->table->header[i].text);
   for (size_t i = 0; i < sizeof heads / sizeof heads[0]; i++) put(w, heads[i]);
   markup_csv_end(w->out);
 }
@@ -88,7 +89,8 @@ static void put_planned(row_writer *w, const plan_answer *p, int row) {
   put(w, as->line);
   put_sound(w, p, c);
   put(w, at->wall->fire.minutes > 0 ? text_format(w->r->arena, "%d", at->wall->fire.minutes) : "");
-  put_number(w, us ? at->wall->thickness_m / UNITS_M_PER_IN : at->wall->thickness_m * 1e3, us ? 3 : 1);
+  put_number(w, us ? at->wall->thickness_m / UNITS_M_PER_IN : at->wall->thickness_m * 1e3,
+             us ? 3 : 1);
   put_number(w, us ? as->area_m2 / UNITS_M2_PER_FT2 : as->area_m2, 2);
   put_cents(w, as->list_cents);
   put_cents(w, as->money.walls + as->money.goods);

@@ -1,5 +1,5 @@
-/* Answers of `plan` in words, JSON and CSV (the schedule with what is assigned). Every function adds
- * to `out`. Keys and columns: docs/formats/answers.md. */
+/* Answers of `plan` in words, JSON and CSV (the schedule with what is assigned). Every function
+ * adds to `out`. Keys and columns: docs/formats/answers.md. */
 #ifndef REPORT_REPORT_PLAN_H
 #define REPORT_REPORT_PLAN_H
 

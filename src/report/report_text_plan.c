@@ -65,7 +65,8 @@ static void put_found(const report *r, const plan_answer *p, text *out) {
                         view_money(r, (double)p->cost_cents / 100, NULL), least));
   if (p->unplanned_rows > 0)
     page_line(out, "",
-              text_format(r->arena, "%s without a type: no wall fits what is asked there, see below.",
+              text_format(r->arena,
+                          "%s without a type: no wall fits what is asked there, see below.",
                           view_plan_count(r, p->unplanned_walls, "wall is", "walls are")));
 }
 
@@ -73,15 +74,16 @@ static void put_counts(const report *r, const plan_answer *p, text *out) {
   text t;
   text_init(&t, r->arena, 600);
   view_count(&t, p->schedule->count);
-  text_put(&t, p->schedule->count == 1 ? " row of the schedule asks " : " rows of the schedule ask ");
-  text_putf(&t, "%s; ",
-            view_plan_count(r, p->schedule->class_count, "thing", "different things"));
+  text_put(&t,
+           p->schedule->count == 1 ? " row of the schedule asks " : " rows of the schedule ask ");
+  text_putf(&t, "%s; ", view_plan_count(r, p->schedule->class_count, "thing", "different things"));
   view_count(&t, p->walls);
   text_put(&t, " walls judged, ");
   view_count(&t, p->candidates);
   text_put(&t, " types put to the solver");
   if (p->found && p->status == SOLVER_LIMIT && p->bound_cents != LLONG_MIN)
-    text_putf(&t, "; no plan costs less than %s", view_money(r, (double)p->bound_cents / 100, NULL));
+    text_putf(&t, "; no plan costs less than %s",
+              view_money(r, (double)p->bound_cents / 100, NULL));
   text_put(&t, p->found && p->status == SOLVER_OPTIMAL ? "; proven." : ".");
   page_line(out, "", t.data);
 }
@@ -92,18 +94,22 @@ static void put_parts(const report *r, const plan_answer *p, text *out) {
   text_init(&t, r->arena, 600);
   text_putf(&t, "Walls %s", report_plan_cents(r, m->walls));
   if (m->goods > 0)
-    text_putf(&t, ", goods that are ordered for the whole project %s", report_plan_cents(r, m->goods));
+    text_putf(&t, ", goods that are ordered for the whole project %s",
+              report_plan_cents(r, m->goods));
   if (m->setup > 0) text_putf(&t, ", setting up types %s", report_plan_cents(r, m->setup));
-  if (m->floor > 0) text_putf(&t, ", value of the floor under the walls %s", report_plan_cents(r, m->floor));
+  if (m->floor > 0)
+    text_putf(&t, ", value of the floor under the walls %s", report_plan_cents(r, m->floor));
   text_putf(&t, "; in %s, tax and markups included.", r->prices->currency);
   page_line(out, "Cost", t.data);
   text_init(&t, r->arena, 400);
-  text_putf(&t, "The walls stand on %s %s of floor.",
-            text_of(r->arena, r->units == UNITS_US ? p->floor_m2 / UNITS_M2_PER_FT2 : p->floor_m2, 1),
-            area_unit(r));
+  text_putf(
+      &t, "The walls stand on %s %s of floor.",
+      text_of(r->arena, r->units == UNITS_US ? p->floor_m2 / UNITS_M2_PER_FT2 : p->floor_m2, 1),
+      area_unit(r));
   if (p->has_margin)
-    text_putf(&t, " The wall nearest to its target holds it with %s dB to spare at the confidence asked.",
-              text_of(r->arena, p->worst_margin * 0.01, 2));
+    text_putf(
+        &t, " The wall nearest to its target holds it with %s dB to spare at the confidence asked.",
+        text_of(r->arena, p->worst_margin * 0.01, 2));
   page_line(out, "", t.data);
   const char *misses = view_plan_misses(r, p);
   if (misses[0]) page_line(out, "Tests", misses);
@@ -179,9 +185,10 @@ static void put_type_row(const report *r, const plan_answer *p, const plan_used 
 static void put_type_table(const report *r, const plan_answer *p, text *out) {
   put_type_heads(r, out);
   for (int i = 0; i < p->type_count; i++) put_type_row(r, p, &p->type[i], out);
-  page_line(out, "",
-            "Per area: what all its walls cost, without floor and set-up. Without it: what the project "
-            "would cost more if this type were not to be had.");
+  page_line(
+      out, "",
+      "Per area: what all its walls cost, without floor and set-up. Without it: what the project "
+      "would cost more if this type were not to be had.");
 }
 
 static const char *storeys_words(const report *r, const plan_answer *p, const plan_used *u) {
@@ -212,16 +219,16 @@ static void put_judged(const report *r, const plan_answer *p, const plan_used *u
                               text_of(r->arena, x->predicted.exact[METRIC_STC], 1),
                               text_of(r->arena, x->predicted.sd[METRIC_STC], 1)));
   text_putf(&t, "; fire %s; height up to ",
-            x->fire.minutes > 0 ? text_format(r->arena, "%d min: %s", x->fire.minutes, x->fire.basis)
-                                : "not shown");
+            x->fire.minutes > 0
+                ? text_format(r->arena, "%d min: %s", x->fire.minutes, x->fire.basis)
+                : "not shown");
   units_put_height(&t, x->height.limit_m, r->units);
   text_put(&t, ".");
   page_line(out, "", t.data);
-  const char *sure =
-      view_published(x, METRIC_STC)
-          ? " There the published rating counts as it stands."
-          : text_format(r->arena, " There %s %% sure.",
-                        view_sureness(r, view_plan_probability(p, u->judged_as)));
+  const char *sure = view_published(x, METRIC_STC)
+                         ? " There the published rating counts as it stands."
+                         : text_format(r->arena, " There %s %% sure.",
+                                       view_sureness(r, view_plan_probability(p, u->judged_as)));
   page_line(out, "",
             text_format(r->arena, "%s %s: %s.%s", asked ? "Hardest for" : "Longest run in",
                         view_plan_class(r, u->judged_as), view_plan_demand(r, p, u->judged_as),
@@ -293,11 +300,11 @@ static void put_curve(const report *r, const plan_answer *p, text *out) {
 static void put_rule_price(const report *r, const plan_answer *p, int rule, text *out) {
   const plan_point *at = &p->relaxed[rule];
   const char *words = view_plan_rule(r, p, (plan_rule)rule);
-  const char *then =
-      at->found ? text_format(r->arena, "%s with %s", view_money(r, (double)at->cost_cents / 100, NULL),
-                              view_plan_count(r, at->types, "type", "types"))
-      : at->status == SOLVER_INFEASIBLE ? "no plan even then"
-                                        : "none found within the time";
+  const char *then = at->found                         ? text_format(r->arena, "%s with %s",
+                                                                     view_money(r, (double)at->cost_cents / 100, NULL),
+                                                                     view_plan_count(r, at->types, "type", "types"))
+                     : at->status == SOLVER_INFEASIBLE ? "no plan even then"
+                                                       : "none found within the time";
   if (p->found && at->found && at->cost_cents == p->cost_cents) then = "nothing changes";
   page_line(out, "",
             text_format(r->arena, "Without \"%s\": %s%s.", words, then,
@@ -341,8 +348,9 @@ static void put_unplanned(const report *r, const plan_answer *p, text *out) {
     page_line(out, "Unplanned",
               text_format(r->arena, "%s: %s.", view_plan_all_ids(r, p, k->wall, k->count),
                           view_plan_reason(r, p, why)));
-    page_line(out, "", text_format(r->arena, "Asked (%s): %s.", view_plan_class(r, why->class_of),
-                                   view_plan_demand(r, p, why->class_of)));
+    page_line(out, "",
+              text_format(r->arena, "Asked (%s): %s.", view_plan_class(r, why->class_of),
+                          view_plan_demand(r, p, why->class_of)));
     if (why->why)
       report_others_text(&as, "Near misses", "Walls that come nearest", why->why->nearest,
                          why->why->nearest_count, true, out);

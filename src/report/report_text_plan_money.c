@@ -6,7 +6,13 @@
 
 /* ---- storeys and sections ---- */
 
-enum { STOREY_AT = PAGE_LABEL, STOREY_COLUMNS = 22, COUNT_END = 44, LENGTH_END = 56, MONEY_END = 72 };
+enum {
+  STOREY_AT = PAGE_LABEL,
+  STOREY_COLUMNS = 22,
+  COUNT_END = 44,
+  LENGTH_END = 56,
+  MONEY_END = 72
+};
 
 static void put_storeys(const report *r, const plan_answer *p, text *out) {
   text_put(out, "\nStoreys");
@@ -112,8 +118,7 @@ static void put_buy_note(const report *r, const buy_plan_line *l, text *out) {
   if (l->buy.from > 0)
     text_putf(&t, "at the price from %s on", quantity_words(r, item, l->buy.from));
   if (l->buy.least > 0)
-    text_putf(&t, "%sorder at least %s", t.len ? "; " : "",
-              quantity_words(r, item, l->buy.least));
+    text_putf(&t, "%sorder at least %s", t.len ? "; " : "", quantity_words(r, item, l->buy.least));
   if (l->from_stock > 0)
     text_putf(&t, "%s%s are on hand", t.len ? "; " : "", quantity_words(r, item, l->from_stock));
   if (t.len == 0) return;
@@ -164,15 +169,16 @@ static void put_misses(const report *r, const plan_answer *p, const plan_drawn *
                 view_clause(r, broke->found));
     }
     text_pad(out, PAGE_LABEL + 2);
-    page_words(out, PAGE_LABEL + 4,
-               text_format(r->arena, "misses %s (%s)", view_plan_class(r, d->miss_class[i]), t.data));
+    page_words(
+        out, PAGE_LABEL + 4,
+        text_format(r->arena, "misses %s (%s)", view_plan_class(r, d->miss_class[i]), t.data));
   }
 }
 
 static void put_drawn(const report *r, const plan_answer *p, const plan_drawn *d, text *out) {
-  const char *cost =
-      d->costed ? view_money(r, (double)d->list_cents / 100, NULL)
-                : text_format(r->arena, "no cost: no price for %s", d->missing_code ? d->missing_code : "an item");
+  const char *cost = d->costed ? view_money(r, (double)d->list_cents / 100, NULL)
+                               : text_format(r->arena, "no cost: no price for %s",
+                                             d->missing_code ? d->missing_code : "an item");
   page_line(out, "",
             text_format(r->arena, "%s%s, %s, %s %s, %s: %s%s", d->mark, d->locked ? " (kept)" : "",
                         view_plan_count(r, d->walls, "wall", "walls"), report_plan_run(r, d->run_m),
@@ -192,8 +198,8 @@ static void put_comparison(const report *r, const plan_answer *p, text *out) {
   text t;
   text_init(&t, r->arena, 1000);
   text_putf(&t, "As drawn the same walls cost %s with %s: the plan %s %s",
-            view_money(r, (double)drawn / 100, NULL),
-            view_plan_count(r, c->types, "type", "types"), saving >= 0 ? "saves" : "costs more by",
+            view_money(r, (double)drawn / 100, NULL), view_plan_count(r, c->types, "type", "types"),
+            saving >= 0 ? "saves" : "costs more by",
             view_money(r, (double)(saving >= 0 ? saving : -saving) / 100, NULL));
   if (drawn > 0)
     text_putf(&t, " (%s %%)", text_of(r->arena, 100 * (double)saving / (double)drawn, 1));
@@ -202,11 +208,12 @@ static void put_comparison(const report *r, const plan_answer *p, text *out) {
             us ? "ft2" : "m2");
   page_line(out, "", t.data);
   if (c->row_count < p->schedule->count)
-    page_line(out, "",
-              text_format(r->arena,
-                          "%s compared; where the drawings have no wall that can be costed, the plan's "
-                          "stands on both sides.",
-                          view_plan_count(r, c->row_count, "row is", "rows are")));
+    page_line(
+        out, "",
+        text_format(r->arena,
+                    "%s compared; where the drawings have no wall that can be costed, the plan's "
+                    "stands on both sides.",
+                    view_plan_count(r, c->row_count, "row is", "rows are")));
 }
 
 void report_plan_drawings_text(const report *r, const plan_answer *p, text *out) {

@@ -158,7 +158,7 @@ const char *view_plan_all_ids(const report *r, const plan_answer *p, const int *
 /* ---- how many types ---- */
 
 static const char *ordinal(const report *r, int n) {
-  static const char *const words[] = {"",       "first", "second", "third", "fourth",
+  static const char *const words[] = {"",      "first", "second",  "third", "fourth",
                                       "fifth", "sixth", "seventh", "eighth"};
   return n <= PLAN_CURVE ? words[n] : text_format(r->arena, "%dth", n);
 }
@@ -238,22 +238,20 @@ const char *view_plan_rule(const report *r, const plan_answer *p, plan_rule rule
   const project *from = p->project;
   switch (rule) {
   case PLAN_RULE_TYPES:
-    return from->max_types > 0
-               ? text_format(r->arena, "at most %s",
-                             view_plan_count(r, from->max_types, "type", "types"))
-               : "";
+    return from->max_types > 0 ? text_format(r->arena, "at most %s",
+                                             view_plan_count(r, from->max_types, "type", "types"))
+                               : "";
   case PLAN_RULE_RUN:
     return from->min_run_m > 0
                ? text_format(r->arena, "a type runs at least %s", length(r, from->min_run_m))
                : "";
   case PLAN_RULE_BUDGET:
-    return from->budget > 0
-               ? text_format(r->arena, "at most %s", view_money(r, from->budget, NULL))
-               : "";
+    return from->budget > 0 ? text_format(r->arena, "at most %s", view_money(r, from->budget, NULL))
+                            : "";
   case PLAN_RULE_FLOOR:
-    return from->floor_area_max_m2 > 0
-               ? text_format(r->arena, "walls stand on at most %s", area(r, from->floor_area_max_m2))
-               : "";
+    return from->floor_area_max_m2 > 0 ? text_format(r->arena, "walls stand on at most %s",
+                                                     area(r, from->floor_area_max_m2))
+                                       : "";
   case PLAN_RULE_FRAMING:
     return from->same_framing == FRAMING_FREE        ? ""
            : from->same_framing == FRAMING_BY_STOREY ? "one framing a storey"
@@ -303,13 +301,15 @@ double view_plan_probability(const plan_answer *p, int of_class) {
 
 const char *view_plan_misses(const report *r, const plan_answer *p) {
   if (!p->found || p->asked_walls == 0) return "";
-  return text_format(
-      r->arena,
-      "%s with a sound target: %s of them would be expected to miss it in a laboratory's test, %s in a "
-      "test in the building that allows %s points for the field. Walls of one type share its error: "
-      "most of a type pass, or most miss.",
-      view_plan_count(r, p->asked_walls, "wall", "walls"), text_of(r->arena, p->miss_laboratory, 1), text_of(r->arena, p->miss_field, 1),
-      text_of(r->arena, r->brief->field_mean, 0));
+  return text_format(r->arena,
+                     "%s with a sound target: %s of them would be expected to miss it in a "
+                     "laboratory's test, %s in a "
+                     "test in the building that allows %s points for the field. Walls of one type "
+                     "share its error: "
+                     "most of a type pass, or most miss.",
+                     view_plan_count(r, p->asked_walls, "wall", "walls"),
+                     text_of(r->arena, p->miss_laboratory, 1), text_of(r->arena, p->miss_field, 1),
+                     text_of(r->arena, r->brief->field_mean, 0));
 }
 
 long long view_plan_saving(const plan_comparison *c) {
@@ -330,14 +330,14 @@ static const char *locked_caution(const report *r, const plan_answer *p, const p
   for (int c = 0; c < p->schedule->class_count; c++) {
     const plan_place *at = &p->place[c];
     if (at->type == PLAN_NONE || &p->type[at->type] != u || !at->locked) continue;
-    if (at->wall->broken != 0)
-      text_putf(&t, "%s%s", t.len ? ", " : "", view_plan_class(r, c));
+    if (at->wall->broken != 0) text_putf(&t, "%s%s", t.len ? ", " : "", view_plan_class(r, c));
   }
   if (t.len == 0) return NULL;
-  return text_format(r->arena,
-                     "%s is kept because its mark is locked, though it misses what these classes ask: "
-                     "%s.",
-                     u->name, t.data);
+  return text_format(
+      r->arena,
+      "%s is kept because its mark is locked, though it misses what these classes ask: "
+      "%s.",
+      u->name, t.data);
 }
 
 typedef struct caution_list {

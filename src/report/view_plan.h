@@ -38,7 +38,8 @@ const char *view_plan_rules(const report *r, unsigned rules);
 double view_plan_probability(const plan_answer *p, int of_class);
 /* How many walls a test would find below their target, as sentences; "" without targets. */
 const char *view_plan_misses(const report *r, const plan_answer *p);
-/* Why no type fits a class, as one clause: the smallest sets of rules that cannot be had together. */
+/* Why no type fits a class, as one clause: the smallest sets of rules that cannot be had together.
+ */
 const char *view_plan_reason(const report *r, const plan_answer *p, const plan_reason *why);
 /* "USD 1,234.50 saved" has no sign: the saving of the plan against the drawings, cents. */
 long long view_plan_saving(const plan_comparison *c);
