@@ -64,16 +64,23 @@ static void set_ranges(const chart_types_data *d, chart_plane_head *head) {
   chart_range_add(&head->x, head->x.high + 1);
 }
 
+static void add_point(chart_plane *p, double *xy, int *n, int types, long long cents) {
+  double *at = xy + 2 * *n;
+  at[0] = chart_plane_x(p, types);
+  at[1] = chart_plane_y(p, currency_of(cents));
+  if (*n > 0) chart_take_line(&p->chart, at[-2], at[-1], at[0], at[1]);
+  ++*n;
+}
+
+/* The plan itself may have more types than were tried apart. */
 static void draw_curve(chart_plane *p, const report *r, const chart_types_data *d) {
-  double *xy = arena_array(r->arena, 2 * (size_t)d->count, sizeof *xy);
-  int n = 0;
+  double *xy = arena_array(r->arena, 2 * ((size_t)d->count + 1), sizeof *xy);
+  int n = 0, last = 0;
   for (int i = 0; i < d->count; i++) {
-    if (!has_cost(&d->point[i])) continue;
-    xy[2 * n] = chart_plane_x(p, d->point[i].types);
-    xy[2 * n + 1] = chart_plane_y(p, currency_of(d->point[i].cost_cents));
-    if (n > 0) chart_take_line(&p->chart, xy[2 * n - 2], xy[2 * n - 1], xy[2 * n], xy[2 * n + 1]);
-    n++;
+    last = d->point[i].types;
+    if (has_cost(&d->point[i])) add_point(p, xy, &n, last, d->point[i].cost_cents);
   }
+  if (d->chosen > last) add_point(p, xy, &n, d->chosen, d->chosen_cents);
   if (n > 1) svg_polyline(&p->chart.svg, xy, n, "c-step");
 }
 
