@@ -5,7 +5,7 @@ build=${SEPTUM_BUILD:-$root/build}
 
 # Package lists: what the program needs, and what the tests need besides.
 packages_build="cmake ninja-build pkg-config libglpk-dev libcjson-dev libxlsxwriter-dev"
-packages_test="check libsubunit-dev libgsl-dev glpk-utils coinor-cbc python3 python3-jsonschema python3-openpyxl clang libclang-rt-dev"
+packages_test="check libsubunit-dev libgsl-dev glpk-utils coinor-cbc python3 python3-jsonschema python3-openpyxl python3-html5lib clang libclang-rt-dev chromium poppler-utils"
 
 septum_talk() { printf '%s\n' "$*" >&2; }
 

@@ -52,7 +52,7 @@ static void put_head(html *h, const char *kind, const char *title) {
 }
 
 void html_begin(html *h, const report *r, const char *kind, const char *title, text *out) {
-  if (!title) title = "";
+  if (!title || title[strspn(title, " \t\r\n")] == '\0') title = "";
   memset(h, 0, sizeof *h);
   h->report = r;
   markup_xml_init(&h->x, out);

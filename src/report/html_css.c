@@ -49,6 +49,7 @@ static const char layout[] =
     ".pair{display:grid;gap:1.5rem 2.5rem;grid-template-columns:minmax(0,1fr)}\n"
     ".cards{display:grid;gap:1.25rem;grid-template-columns:repeat(auto-fill,minmax(min(100%,19rem),"
     "1fr))}\n"
+    ".cards{margin:0 0 1.5rem}\n"
     ".card{border:1px solid var(--rule);padding:1rem;break-inside:avoid;min-width:0}\n"
     ".card h3{margin-top:0}\n"
     "figure{margin:0 0 1rem;min-width:0;break-inside:avoid}\n"

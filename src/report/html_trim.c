@@ -254,6 +254,12 @@ static void put_losses(html *h, const trim_proposal *p) {
     html_list(h, p->loss, p->loss_count);
 }
 
+static void put_own_cautions(html *h, const assessment *x) {
+  const char *caution[VIEW_MAX_CAUTIONS];
+  html_group(h, "Cautions");
+  html_list(h, caution, view_cautions(h->report, x, caution));
+}
+
 static void put_proposal(html *h, const trim_answer *t, int i) {
   const report *r = h->report;
   const trim_proposal *p = &t->proposal[i];
@@ -276,9 +282,7 @@ static void put_proposal(html *h, const trim_answer *t, int i) {
   html_check_parts(h, p->wall);
   html_group(h, "Cost");
   html_cost_parts(h, p->wall);
-  html_group(h, "Cautions");
-  const char *caution[VIEW_MAX_CAUTIONS];
-  html_list(h, caution, view_cautions(r, p->wall, caution));
+  put_own_cautions(h, p->wall);
   html_section_end(h);
 }
 
@@ -305,6 +309,7 @@ static void put_cheapest(html *h, const trim_answer *t) {
 static void put_specified(html *h, const trim_answer *t) {
   html_section(h, "The specified wall");
   html_line(h, t->specified->line);
+  html_wall_figures(h, t->specified);
   html_wall_drawing(h, t->specified, false);
   html_group(h, "Sound");
   html_sound_parts(h, t->specified);
@@ -312,6 +317,7 @@ static void put_specified(html *h, const trim_answer *t) {
   html_check_parts(h, t->specified);
   html_group(h, "Cost");
   html_cost_parts(h, t->specified);
+  put_own_cautions(h, t->specified);
   html_section_end(h);
 }
 

@@ -1,5 +1,5 @@
 #!/bin/sh
-# Golden answers: text and JSON of `pick` for the demo briefs; drawings of four walls. After a change that is meant: rewrite.sh,
+# Golden answers: text and JSON of `pick` for the demo briefs; drawings of four walls, pages. After a change that is meant: rewrite.sh,
 # then review the diff.
 # Usage: check_golden.sh SOURCE BUILD
 set -u
@@ -18,6 +18,10 @@ done
 for name in $sections; do
   section "$name" >"$work/found" || bad=1
   diff -u "$source/tests/golden/$name.svg" "$work/found" || bad=1
+done
+for name in $pages; do
+  page "$name" >"$work/found" || bad=1
+  diff -u "$source/tests/golden/$name.html" "$work/found" || bad=1
 done
 [ "$bad" = 0 ] || echo "if this change is meant: sh tests/golden/rewrite.sh BUILD, then review the diff"
 exit $bad

@@ -14,4 +14,8 @@ for name in $sections; do
   section "$name" >"$source/tests/golden/$name.svg.new"
   mv "$source/tests/golden/$name.svg.new" "$source/tests/golden/$name.svg"
 done
+for name in $pages; do
+  page "$name" >"$source/tests/golden/$name.html.new"
+  mv "$source/tests/golden/$name.html.new" "$source/tests/golden/$name.html"
+done
 SEPTUM_GOLDEN=write CK_FORK=no "$build/bin/test_report_chart_golden" >/dev/null

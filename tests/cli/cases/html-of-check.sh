@@ -1,0 +1,1 @@
+"$SEPTUM" check --html page.html "$EXAMPLES/party-wall.json"
