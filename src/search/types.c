@@ -1,5 +1,6 @@
 #include "search/types.h"
 
+#include <math.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -17,6 +18,7 @@ typedef struct finder {
   types_sweep sweep;
   plan_types *out;
   long long **micro; /* per type: needs in millionths, as plan_type.need */
+  double *least;     /* per type and class: see least_cents */
   long long *total;  /* per type: cents of all classes that it fits */
 } finder;
 
@@ -91,35 +93,57 @@ static bool set_type(finder *f, const types_entry *e, plan_type *t, long long **
 
 /* ---- which makes which needless ---- */
 
-/* What y's need of goods in class c becomes when x takes its place: cents, at most; *differs where
- * it does. */
-static double goods_change(const finder *f, int x, int y, int c, bool *differs) {
+/* The cents of a use with goods at their lowest prices. */
+static double least_cents(const finder *f, const plan_type *t, int c) {
   const goods *g = &f->sweep.goods;
+  if (!t->use[c].fits) return INFINITY;
+  double cents = (double)t->use[c].cents;
+  for (int i = 0; i < g->count; i++)
+    cents += t->need[(size_t)c * (size_t)g->count + (size_t)i] * g->price[i].least;
+  return cents;
+}
+
+static void set_least(finder *f) {
+  size_t classes = (size_t)f->x->schedule->class_count;
+  f->least = arena_array(f->arena, (size_t)f->out->count * classes, sizeof *f->least);
+  for (size_t t = 0; t < (size_t)f->out->count; t++)
+    for (size_t c = 0; c < classes; c++)
+      f->least[t * classes + c] = least_cents(f, &f->out->type[t], (int)c);
+}
+
+/* Whether all that goods can make of it leaves x no dearer than y in class c. */
+static bool costs_no_more(const finder *f, int x, int y, int c) {
+  const goods *g = &f->sweep.goods;
+  const type_use *p = &f->out->type[x].use[c], *q = &f->out->type[y].use[c];
   const long long *is = f->micro[x] + (size_t)c * (size_t)g->count,
                   *was = f->micro[y] + (size_t)c * (size_t)g->count;
   double change = 0;
-  *differs = false;
+  bool more = false; /* x needs more of something */
   for (int i = 0; i < g->count; i++) {
     if (is[i] == was[i]) continue;
-    double q = (double)is[i] * TYPES_NEED_UNIT, p = (double)was[i] * TYPES_NEED_UNIT;
-    *differs = true;
-    change += g->price[i].least * (q - p) + goods_worst(&g->price[i], p, q);
+    double now = (double)is[i] * TYPES_NEED_UNIT, before = (double)was[i] * TYPES_NEED_UNIT;
+    more = more || is[i] > was[i];
+    change += g->price[i].least * (now - before) + goods_worst(&g->price[i], before, now);
   }
-  return change;
+  if (!more && p->cents <= q->cents) return true;
+  return (double)(p->cents - q->cents) + change <= -last_bits_cents;
 }
 
-static bool costs_no_more(const finder *f, int x, int y, int c) {
-  const type_use *p = &f->out->type[x].use[c], *q = &f->out->type[y].use[c];
-  bool differs;
-  double change = goods_change(f, x, y, c, &differs);
-  if (!differs) return p->cents <= q->cents;
-  return (double)(p->cents - q->cents) + change <= -last_bits_cents;
+/* Most pairs are told apart by this: goods make no difference smaller than their lowest prices do.
+ */
+static bool may_cost_no_more(const finder *f, int x, int y) {
+  size_t classes = (size_t)f->x->schedule->class_count;
+  const double *p = f->least + (size_t)x * classes, *q = f->least + (size_t)y * classes;
+  for (size_t c = 0; c < classes; c++)
+    if (p[c] > q[c] + last_bits_cents) return false;
+  return true;
 }
 
 /* Whether x in the place of y keeps every rule of the project and never costs more. */
 static bool stands_for(const finder *f, int x, int y) {
   const plan_type *p = &f->out->type[x], *q = &f->out->type[y];
   const project *j = f->x->project;
+  if (!may_cost_no_more(f, x, y)) return false;
   if (j->same_framing != FRAMING_FREE && p->group != q->group) return false;
   for (int c = 0; c < f->x->schedule->class_count; c++) {
     const type_use *u = &p->use[c], *v = &q->use[c];
@@ -149,6 +173,7 @@ static void drop_beaten(finder *f, int keep) {
   size_t n = (size_t)o->count;
   int *by = arena_array(f->arena, n, sizeof *by), *times = arena_array(f->arena, n, sizeof *times);
   int *place = arena_array(f->arena, n, sizeof *place), kept = 0;
+  set_least(f);
   for (int i = 0; i < o->count; i++) times[i] = beaten_by(f, i, &by[i]);
   for (int i = 0; i < o->count; i++) place[i] = times[i] < keep ? kept++ : TYPES_NONE;
   for (int i = 0; i < o->count; i++) {

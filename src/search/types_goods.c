@@ -94,7 +94,7 @@ double goods_worst(const goods_price *p, double was, double is) {
     bool first = p->stock > 0 || !(was > 0);
     return (p->most - p->least) * (is - was) + (first ? p->most * short_of : 0) + rounding_cents;
   }
-  if (is < was)
-    return fmin(p->buys_up + p->least * p->stock, p->least * (was - is)) + rounding_cents;
+  if (is < was) /* spending on less never rises, rounded or not */
+    return fmin(p->buys_up + p->least * p->stock + rounding_cents, p->least * (was - is));
   return 0;
 }
