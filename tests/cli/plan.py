@@ -245,7 +245,7 @@ def check_curve(where, data):
             if price["price_total"] is not None and price["price_total"] < 0:
                 say(where, "%s is worth less than nothing" % price["rule"])
     if data["stops_at"] and data["objective"] == "cost":
-        at = [p["cost_total"] for p in points if p["max_types"] >= data["stops_at"]]
+        at = [p["cost_total"] for p in points if data["stops_at"] <= p["max_types"] <= 8]
         before = [p["cost_total"] for p in points if p["max_types"] == data["stops_at"] - 1]
         if len(set(at)) != 1 or (before and before[0] is not None and before[0] <= at[0]):
             say(where, "types stop paying at %d: %s" % (data["stops_at"], costs))
