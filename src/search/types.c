@@ -17,9 +17,8 @@ typedef struct finder {
   const plan_context *x;
   types_sweep sweep;
   plan_types *out;
-  long long **micro; /* per type: needs in millionths, as plan_type.need */
-  double *least;     /* per type and class: see least_cents */
-  long long *total;  /* per type: cents of all classes that it fits */
+  double *least;    /* per type and class: see least_cents */
+  long long *total; /* per type: cents of all classes that it fits */
 } finder;
 
 /* ---- one type, to the cent ---- */
@@ -54,20 +53,20 @@ static void set_use(const finder *f, int c, const wall *w, const prediction *p,
   u->floor_m2 = types_cost_floor_m2(f->sweep.cost, c, w);
 }
 
-static void set_needs(const finder *f, const types_entry *e, plan_type *t, long long *micro) {
+static void set_needs(const finder *f, const types_entry *e, plan_type *t) {
   size_t classes = (size_t)f->x->schedule->class_count, items = (size_t)f->sweep.goods.count;
   const types_needs *n = &e->needs;
   for (int i = 0; i < n->count; i++)
     for (size_t c = 0; c < classes; c++) {
       if (!t->use[c].fits) continue;
       size_t at = c * items + (size_t)n->item[i];
-      micro[at] = n->amount[n->sided && t->use[c].turned][(size_t)i * classes + c];
-      t->need[at] = (double)micro[at] * TYPES_NEED_UNIT;
+      long long amount = n->amount[n->sided && t->use[c].turned][(size_t)i * classes + c];
+      t->need[at] = (double)amount * TYPES_NEED_UNIT; /* the same number for the same amount */
     }
 }
 
 /* The wall as the reference rates it. False when it fits no class after all. */
-static bool set_type(finder *f, const types_entry *e, plan_type *t, long long **micro) {
+static bool set_type(finder *f, const types_entry *e, plan_type *t) {
   const types_sweep *s = &f->sweep;
   size_t classes = (size_t)f->x->schedule->class_count, items = (size_t)s->goods.count;
   wall w = space_wall(&s->space, e->core, e->face_a, e->face_b);
@@ -86,8 +85,7 @@ static bool set_type(finder *f, const types_entry *e, plan_type *t, long long **
   if (!any) return false;
   t->line = line_print(f->arena, f->x->catalog, &w);
   t->need = arena_array(f->arena, classes * items, sizeof *t->need);
-  *micro = arena_array(f->arena, classes * items, sizeof **micro);
-  set_needs(f, e, t, *micro);
+  set_needs(f, e, t);
   return true;
 }
 
@@ -115,15 +113,14 @@ static void set_least(finder *f) {
 static bool costs_no_more(const finder *f, int x, int y, int c) {
   const goods *g = &f->sweep.goods;
   const type_use *p = &f->out->type[x].use[c], *q = &f->out->type[y].use[c];
-  const long long *is = f->micro[x] + (size_t)c * (size_t)g->count,
-                  *was = f->micro[y] + (size_t)c * (size_t)g->count;
+  size_t from = (size_t)c * (size_t)g->count;
+  const double *is = f->out->type[x].need + from, *was = f->out->type[y].need + from;
   double change = 0;
   bool more = false; /* x needs more of something */
   for (int i = 0; i < g->count; i++) {
-    if (is[i] == was[i]) continue;
-    double now = (double)is[i] * TYPES_NEED_UNIT, before = (double)was[i] * TYPES_NEED_UNIT;
+    if (!(is[i] < was[i]) && !(is[i] > was[i])) continue;
     more = more || is[i] > was[i];
-    change += g->price[i].least * (now - before) + goods_worst(&g->price[i], before, now);
+    change += g->price[i].least * (is[i] - was[i]) + goods_worst(&g->price[i], was[i], is[i]);
   }
   if (!more && p->cents <= q->cents) return true;
   return (double)(p->cents - q->cents) + change <= -last_bits_cents;
@@ -189,7 +186,6 @@ static void drop_beaten(finder *f, int keep) {
 
 typedef struct ordered_type {
   plan_type type;
-  long long *micro;
   long long total;
 } ordered_type;
 
@@ -213,17 +209,13 @@ static void set_types(finder *f) {
   int count = 0;
   for (int i = 0; i < s->count; i++) {
     ordered_type *t = &list[count];
-    if (!set_type(f, s->item[i], &t->type, &t->micro)) continue;
+    if (!set_type(f, s->item[i], &t->type)) continue;
     t->total = total_of(&t->type, f->x->schedule->class_count);
     count++;
   }
   if (count > 0) qsort(list, (size_t)count, sizeof *list, in_tie_order);
   f->out->type = arena_array(f->arena, (size_t)count, sizeof *f->out->type);
-  f->micro = arena_array(f->arena, (size_t)count, sizeof *f->micro);
-  for (int i = 0; i < count; i++) {
-    f->out->type[i] = list[i].type;
-    f->micro[i] = list[i].micro;
-  }
+  for (int i = 0; i < count; i++) f->out->type[i] = list[i].type;
   f->out->count = count;
 }
 
