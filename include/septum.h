@@ -59,14 +59,18 @@ typedef void (*septum_progress)(void *user, const char *stage, double found, dou
 typedef struct septum_options {
   const char *prices;     /* price book; NULL = the brief's, else the data folder's default */
   const char *brief;      /* rate: judge under this brief; NULL = reference wall 10 m x 3 m */
+  const char *length, *height; /* rate, pick: size of the wall with its unit, "30ft", "9'-6\"", "3.2m",
+                             in place of the brief's or the reference wall's; NULL = theirs */
+  int corners, tees, doors; /* rate, pick: how many, 0 to 1000, for the takeoff of studs, in place of
+                             the brief's; -1 (as septum_options_init sets them) = the brief's */
   const char *save_model; /* pick, plan: path for the 0-1 model in CPLEX LP format; NULL = none */
   const char *save_csv;   /* rate, pick: path for the takeoff as CSV; trim: for the log of proposals;
                              ladder: for its rungs; plan: for the schedule with what is assigned;
                              NULL = none */
   const char *save_html;  /* rate, pick, ladder, trim, plan: path for the answer as one page that needs nothing
                              else, in the units of text; NULL = none */
-  const char *save_xlsx;  /* rate, pick, ladder, trim: path for the answer as a workbook, in the units of
-                             text; NULL = none */
+  const char *save_xlsx;  /* rate, pick, ladder, trim, plan: path for the answer as a workbook, in the
+                             units of text; NULL = none */
   const char *save_prices; /* prices_update: path for the new price book; NULL = none */
   const char *today;      /* prices: the date that ages count to, "2031-03-01"; NULL = the newest in
                              the files. There is no clock in here */

@@ -4,6 +4,7 @@
 #include "base/file.h"
 #include "report/report_html.h"
 #include "report/report_plan.h"
+#include "report/sheets.h"
 #include "wall/compat.h"
 #include "wall/line.h"
 
@@ -70,7 +71,11 @@ static status hand_out(call *k, plan_job *job, const report *r, const plan_answe
   report_plan_json(r, found, &t.json);
   report_plan_csv(r, found, &t.csv);
   if (job->options.save_html) report_plan_html(r, found, &t.page);
-  if (!call_save_page(k, &t, job->options.save_html)) return k->diags.worst;
+  sheet_book *book = call_book(k, &job->options);
+  if (book) sheets_plan(r, found, book);
+  if (!call_save_book(k, &t, book, job->options.save_xlsx) ||
+      !call_save_page(k, &t, job->options.save_html))
+    return k->diags.worst;
   job->made = call_deliver(k, &t, job->options.save_csv);
   if (job->made == NULL) return k->diags.worst;
   return found->found && found->unplanned_rows == 0 ? STATUS_OK : STATUS_NO_WALL;
@@ -80,7 +85,7 @@ static status plan_stage(call *k, void *given) {
   plan_job *job = given;
   plan_request *p = arena_alloc(k->memory, sizeof *p);
   plan_answer *found = arena_alloc(k->memory, sizeof *found);
-  if (!prepare(k, job, p)) return k->diags.worst;
+  if (!call_can_write(k, &job->options) || !prepare(k, job, p)) return k->diags.worst;
   call_tell(k); /* a long solve should not hold warnings back */
   const plan_context x = {.catalog = &p->q.catalog,
                           .prices = p->q.prices,

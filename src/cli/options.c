@@ -9,17 +9,21 @@ typedef enum option_id {
   OPTION_ALLOW,
   OPTION_BRIEF,
   OPTION_CATALOGS,
+  OPTION_CORNERS,
   OPTION_COUNT,
   OPTION_CSV,
   OPTION_DESIGN,
+  OPTION_DOORS,
   OPTION_FIRE,
   OPTION_FROM,
   OPTION_FROM_CSV,
   OPTION_HAVE,
+  OPTION_HEIGHT,
   OPTION_HELP,
   OPTION_HTML,
   OPTION_JSON,
   OPTION_KEEP,
+  OPTION_LENGTH,
   OPTION_METRIC,
   OPTION_PRICES,
   OPTION_RATING,
@@ -27,6 +31,7 @@ typedef enum option_id {
   OPTION_SAVE_MODEL,
   OPTION_SLACK,
   OPTION_SPEC,
+  OPTION_TEES,
   OPTION_TIME_LIMIT,
   OPTION_TO,
   OPTION_TO_CSV,
@@ -54,20 +59,26 @@ static const option_row option_rows[] = {
      "what may be given up: thinner-studs, plain-boards, thicker, combustible, less-fire"},
     {"brief", "FILE", OPTION_BRIEF, CLI_RATE, "judge the wall under this brief (brief/1)"},
     {"catalogs", "DIR", OPTION_CATALOGS, CLI_ANY, "folder with the catalogs"},
+    {"corners", "N", OPTION_CORNERS, CLI_RATE | CLI_PICK, "corners in the wall, for its studs"},
     {"count", "N", OPTION_COUNT, CLI_TRIM, "most walls to list, 1 to 100; default 8"},
     {"csv", "FILE", OPTION_CSV, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM | CLI_PLAN,
      "also write the table of the answer as CSV; - prints it in place of the text"},
     {"design", "TEXT", OPTION_DESIGN, CLI_TRIM, "the listed design that the drawings name"},
+    {"doors", "N", OPTION_DOORS, CLI_RATE | CLI_PICK, "doors in the wall, for its studs"},
     {"fire", "MINUTES", OPTION_FIRE, CLI_TRIM, "fire resistance that the drawings promise"},
     {"from", "N", OPTION_FROM, CLI_LADDER, "lowest rating, 1 to 100; default: what the cheapest wall meets"},
     {"from-csv", "FILE", OPTION_FROM_CSV, CLI_PRICES, "a supplier's list to put into the price book"},
     {"have", "LINE|FILE", OPTION_HAVE, CLI_LADDER,
      "a given wall: what it takes from there (a wall line or a wall/1 file)"},
+    {"height", "LENGTH", OPTION_HEIGHT, CLI_RATE | CLI_PICK,
+     "height of the wall, as 9'-6\", 9ft or 3.2m, in place of the brief's"},
     {"help", NULL, OPTION_HELP, CLI_ANY, "print this and stop"},
     {"html", "FILE", OPTION_HTML, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM | CLI_PLAN,
      "also write the answer as one page with drawings and charts"},
     {"json", NULL, OPTION_JSON, CLI_ANY, "answer as JSON"},
     {"keep", "WORDS", OPTION_KEEP, CLI_TRIM, "what must stay as it is: frame, fire, thickness"},
+    {"length", "LENGTH", OPTION_LENGTH, CLI_RATE | CLI_PICK,
+     "length of the wall, as 30ft or 9.1m, in place of the brief's"},
     {"metric", "NAME", OPTION_METRIC, CLI_LADDER,
      "STC, Rw, Rw+C, Rw+Ctr or OITC; default: the brief's, else STC"},
     {"prices", "FILE", OPTION_PRICES,
@@ -80,6 +91,7 @@ static const option_row option_rows[] = {
     {"slack", "LENGTH", OPTION_SLACK, CLI_TRIM,
      "walls may be so much thicker than the specified one, as 1/2in or 12mm"},
     {"spec", "LINE|FILE", OPTION_SPEC, CLI_TRIM, "the specified wall: a wall line or a wall/1 file"},
+    {"tees", "N", OPTION_TEES, CLI_RATE | CLI_PICK, "walls that meet this one, for its studs"},
     {"time-limit", "S", OPTION_TIME_LIMIT, CLI_PICK | CLI_PLAN, "seconds for the solver; the gap is printed"},
     {"to", "N", OPTION_TO, CLI_LADDER, "highest rating, 1 to 100; default: what any wall meets"},
     {"to-csv", "FILE", OPTION_TO_CSV, CLI_PRICES, "write the price book as a list; - prints it"},
@@ -89,7 +101,7 @@ static const option_row option_rows[] = {
      "units of text and CSV; default: the brief's, else us"},
     {"version", NULL, OPTION_VERSION, CLI_ANY, "print the version and stop"},
     {"write", "FILE", OPTION_WRITE, CLI_PRICES, "write the price book with the list's prices"},
-    {"xlsx", "FILE", OPTION_XLSX, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM,
+    {"xlsx", "FILE", OPTION_XLSX, CLI_RATE | CLI_PICK | CLI_LADDER | CLI_TRIM | CLI_PLAN,
      "also write the answer as a spreadsheet"},
 };
 enum { OPTION_ROWS = sizeof option_rows / sizeof option_rows[0] };
@@ -190,6 +202,12 @@ static bool read_whole(const char *name, const char *value, int *count) {
   return read_up_to(name, value, 100, count);
 }
 
+static bool read_count(const char *name, const char *value, int *count) {
+  if (strcmp(value, "0") != 0) return read_up_to(name, value, 1000, count);
+  *count = 0;
+  return true;
+}
+
 static bool read_money(const char *name, const char *value, double *money) {
   char *end = NULL;
   errno = 0;
@@ -208,6 +226,21 @@ static bool read_units(const char *value, septum_units *units) {
     complain("--units wants us or si, found", value);
     return false;
   }
+  return true;
+}
+
+/* The size of the wall and what stands in it. */
+static bool apply_size(option_id id, const char *value, septum_options *options) {
+  if (id == OPTION_LENGTH)
+    options->length = value;
+  else if (id == OPTION_HEIGHT)
+    options->height = value;
+  else if (id == OPTION_CORNERS)
+    return read_count("corners", value, &options->corners);
+  else if (id == OPTION_TEES)
+    return read_count("tees", value, &options->tees);
+  else
+    return read_count("doors", value, &options->doors);
   return true;
 }
 
@@ -234,6 +267,12 @@ static bool apply(option_id id, const char *value, cli_line *out) {
   case OPTION_CATALOGS:
     out->catalogs = value;
     return true;
+  case OPTION_CORNERS:
+  case OPTION_DOORS:
+  case OPTION_HEIGHT:
+  case OPTION_LENGTH:
+  case OPTION_TEES:
+    return apply_size(id, value, &out->options);
   case OPTION_COUNT:
     return read_whole("count", value, &out->options.count);
   case OPTION_CSV:

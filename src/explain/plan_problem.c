@@ -98,7 +98,10 @@ void plan_lock(plan_work *w) {
     if (s->classes[c].locked == CATALOG_NONE) continue;
     const wall *given = &w->mark_wall[s->classes[c].locked];
     int type = find_type(w, given);
-    if (type == PLAN_NONE) type = add_type(w, given);
+    if (type == PLAN_NONE)
+      type = add_type(w, given);
+    else
+      w->types.type[type].behind = TYPES_NONE; /* needed, whatever other type is as good elsewhere */
     for (int t = 0; t < w->types.count; t++) w->types.type[t].use[c].fits = false;
     if (type != PLAN_NONE) set_locked_use(w, c, &w->types.type[type], given);
   }

@@ -256,7 +256,7 @@ static void put_rules(const report *r, const ladder_answer *l, const char *area,
 void sheets_ladder(const report *r, const ladder_answer *l, sheet_book *out) {
   const char *caution[VIEW_LADDER_CAUTIONS];
   sheet_book_init(out, r->arena, r->units == UNITS_SI);
-  sheet *s = sheets_summary(r, "What each rating costs", r->brief->title, out);
+  sheet *s = sheets_summary("What each rating costs", "Brief", r->brief->title, out);
   put_reach(r, l, s);
   const char *area = sheets_size(r, s);
   const sheet *takeoffs = put_takeoffs(r, l, out);

@@ -81,7 +81,7 @@ double sheets_probability(const report *r, const assessment *x) {
 
 enum { LABEL_WIDTH = 30, WORDS_WIDTH = 90 };
 
-sheet *sheets_summary(const report *r, const char *kind, const char *title, sheet_book *out) {
+sheet *sheets_summary(const char *kind, const char *label, const char *title, sheet_book *out) {
   sheet *s = sheet_book_add(out, "Summary");
   s->portrait = true;
   s->columns = 2;
@@ -89,10 +89,7 @@ sheet *sheets_summary(const report *r, const char *kind, const char *title, shee
   s->width[1] = WORDS_WIDTH;
   sheet_text(s, 0, 0, SHEET_TITLE, kind);
   s->row = 2;
-  if (title && title[0] != '\0')
-    (void)sheets_fact(s, "Brief", title);
-  else if (!r->asked)
-    (void)sheets_fact(s, "Brief", "none was given: cost and height are those of a reference wall");
+  if (title && title[0] != '\0') (void)sheets_fact(s, label, title);
   return s;
 }
 

@@ -30,9 +30,9 @@ double sheets_probability(const report *r, const assessment *x);
 
 /* ---- the summary ---- */
 
-/* The first sheet: what it is, and the brief's title. Facts follow from its row on, one under the
- * other. */
-sheet *sheets_summary(const report *r, const char *kind, const char *title, sheet_book *out);
+/* The first sheet: what it is, and the title of what was asked (`label` "Brief", "Project"; NULL or
+ * empty: nothing). Facts follow from its row on, one under the other. */
+sheet *sheets_summary(const char *kind, const char *label, const char *title, sheet_book *out);
 /* Each answers in which row it stands. Words NULL: nothing, and no row. */
 int sheets_fact(sheet *s, const char *label, const char *words);
 int sheets_value(sheet *s, const char *label, sheet_style style, double value);

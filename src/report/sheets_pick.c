@@ -90,7 +90,7 @@ static void put_none(const report *r, const explanation *e, sheet *s, sheet_book
 void sheets_pick(const report *r, const explanation *e, const pick_choice *proof,
                  sheet_book *out) {
   sheet_book_init(out, r->arena, r->units == UNITS_SI);
-  sheet *s = sheets_summary(r, e->chosen ? "The wall for a brief" : "No wall for a brief",
+  sheet *s = sheets_summary(e->chosen ? "The wall for a brief" : "No wall for a brief", "Brief",
                             r->brief->title, out);
   if (e->chosen) (void)sheets_fact(s, "Wall", e->chosen->line);
   put_search(r, e, proof, s);

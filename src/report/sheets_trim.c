@@ -282,7 +282,7 @@ static void put_cautions(const report *r, const trim_answer *t, sheet *s) {
 
 void sheets_trim(const report *r, const trim_answer *t, sheet_book *out) {
   sheet_book_init(out, r->arena, r->units == UNITS_SI);
-  sheet *s = sheets_summary(r, "Cheaper walls for a specified one", r->brief->title, out);
+  sheet *s = sheets_summary("Cheaper walls for a specified one", "Brief", r->brief->title, out);
   const char *redesign = put_terms(r, t, s);
   put_cheapest(r, t, s);
   const char *area = sheets_size(r, s);

@@ -142,7 +142,11 @@ void sheets_wall_money(const report *r, const assessment *x, const char *area, s
 void sheets_rate(const report *r, const assessment *x, sheet_book *out) {
   const char *caution[VIEW_MAX_CAUTIONS];
   sheet_book_init(out, r->arena, r->units == UNITS_SI);
-  sheet *s = sheets_summary(r, "A wall rated", r->asked ? r->brief->title : NULL, out);
+  sheet *s = sheets_summary(
+      "A wall rated", "Brief",
+      r->asked ? r->brief->title
+               : "none was given: cost and height are those of a reference wall",
+      out);
   (void)sheets_fact(s, "Wall", x->line);
   (void)sheets_fact(s, "Name", x->name);
   const char *area = sheets_size(r, s);

@@ -1,5 +1,5 @@
 #!/bin/sh
-# Workbooks of every command read back by another program: sheets.py. Usage: check_sheets.sh SOURCE BUILD
+# Workbooks of rate, pick, ladder and trim read back by another program: sheets.py. Usage: check_sheets.sh SOURCE BUILD
 set -eu
 python=${PYTHON:-/usr/bin/python3}
 if ! "$python" -c 'import openpyxl' 2>/dev/null; then

@@ -1,5 +1,5 @@
 """Reads a workbook back: its parts as XML, its cells by openpyxl, its formulas worked out here."""
-import re, xml.parsers.expat, zipfile
+import re, subprocess, xml.parsers.expat, zipfile
 import openpyxl
 from openpyxl.utils import column_index_from_string, get_column_letter
 
@@ -8,6 +8,48 @@ MONEY = "#,##0.00"
 CELL_CHARACTERS, NAME_CHARACTERS = 32767, 31
 # Formulas are worked out in binary here as there; a cent is 0.01.
 SLACK = 1e-6
+
+
+# One of each printed unit in its SI unit; exact: international inch, foot and pound.
+IN, FT, LB = 25.4, 0.3048, 0.45359237
+
+
+class Units:
+    def __init__(self, us, currency="USD"):
+        self.us = us
+        self.area = FT ** 2 if us else 1
+        self.per = "%s per %s" % (currency, "ft2" if us else "m2")
+        self.thickness, self.mass, self.length = ("in", "psf", "ft") if us else ("mm", "kg/m2", "m")
+
+    def mm(self, found):
+        return found * IN if self.us else found
+
+    def metres(self, found):
+        return found * FT if self.us else found
+
+    def m2(self, found):
+        return found * self.area
+
+    def kg_m2(self, found):
+        return found * LB / FT ** 2 if self.us else found
+
+    def rate(self, unit):
+        """A rate as JSON has it, per what text has."""
+        return {"m2": FT ** 2, "m": FT}.get(unit, 1) if self.us else 1
+
+
+def run_with(build, *words):
+    done = subprocess.run([build + "/bin/septum", *words], capture_output=True)
+    return done.returncode, done.stdout.decode("utf-8"), done.stderr.decode("utf-8")
+
+
+def same_with(say, where, what, found, wanted, slack):
+    """Both missing, equal words, or figures so near."""
+    if isinstance(found, (int, float)) and isinstance(wanted, (int, float)):
+        if abs(found - wanted) > slack:
+            say(where, "%s: %r, JSON has %r" % (what, found, wanted))
+    elif (found or None) != (wanted or None):
+        say(where, "%s: %r, JSON has %r" % (what, found, wanted))
 
 
 class Book:

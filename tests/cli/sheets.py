@@ -1,11 +1,9 @@
 """Workbooks of rate, pick, ladder and trim against their own --json: see check_sheets.sh."""
-import json, os, re, subprocess, sys, tempfile, zipfile
-from sheetread import CELL_CHARACTERS, check_book
+import json, os, re, sys, tempfile, zipfile
+from sheetread import CELL_CHARACTERS, Units, check_book, run_with, same_with
 
 source, build = sys.argv[1], sys.argv[2]
 faults = 0
-# One of each printed unit in its SI unit; exact: international inch, foot, pound, standard gravity left out.
-IN, FT, LB = 25.4, 0.3048, 0.45359237
 # JSON rounds money per area to a hundredth of a cent and lengths to a tenth of a millimetre.
 NEAR, MM = 1e-4, 0.051
 WALLS = {
@@ -21,35 +19,11 @@ def say(where, message):
 
 
 def run(*words):
-    done = subprocess.run([build + "/bin/septum", *words], capture_output=True)
-    return done.returncode, done.stdout.decode("utf-8"), done.stderr.decode("utf-8")
+    return run_with(build, *words)
 
 
 def same(where, what, found, wanted, slack=1e-6):
-    """Both missing, equal words, or figures so near."""
-    if isinstance(found, (int, float)) and isinstance(wanted, (int, float)):
-        if abs(found - wanted) > slack:
-            say(where, "%s: %r, JSON has %r" % (what, found, wanted))
-    elif (found or None) != (wanted or None):
-        say(where, "%s: %r, JSON has %r" % (what, found, wanted))
-
-
-class Units:
-    def __init__(self, us, currency="USD"):
-        self.us = us
-        self.area = FT ** 2 if us else 1
-        self.per = "%s per %s" % (currency, "ft2" if us else "m2")
-        self.thickness, self.mass, self.length = ("in", "psf", "ft") if us else ("mm", "kg/m2", "m")
-
-    def mm(self, found):
-        return found * IN if self.us else found
-
-    def kg_m2(self, found):
-        return found * LB / FT ** 2 if self.us else found
-
-    def rate(self, unit):
-        """A rate as JSON has it, per what text has."""
-        return {"m2": FT ** 2, "m": FT}.get(unit, 1) if self.us else 1
+    same_with(say, where, what, found, wanted, slack)
 
 
 def two_runs(where, words, folder):
