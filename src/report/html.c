@@ -86,8 +86,7 @@ static void put_editions(html *h, const html_file *asked, int count) {
   for (int i = 0; i < count; i++) put_edition(&t, asked[i].path, asked[i].crc);
   for (const price_book *b = h->report->prices; b; b = b->base)
     if (b->json) put_edition(&t, b->json->file, b->json->crc);
-  for (int i = 0; i < CATALOG_FILES; i++)
-    put_edition(&t, c->edition[i].file, c->edition[i].crc);
+  for (int i = 0; i < CATALOG_FILES; i++) put_edition(&t, c->edition[i].file, c->edition[i].crc);
   html_fact_data(h, "Files read, with their CRC-32", t.data);
 }
 

@@ -38,11 +38,11 @@ static const char *cents_if(html *h, long long cents) {
 
 void html_cost_by_section(html *h, const assessment *x) {
   const report *r = h->report;
-  const html_column columns[] = {{"Section", HTML_ID},
-                                 {"Material", HTML_FIGURE},
-                                 {"Labour", HTML_FIGURE},
-                                 {text_format(r->arena, "Together, %s", r->prices->currency),
-                                  HTML_FIGURE}};
+  const html_column columns[] = {
+      {"Section", HTML_ID},
+      {"Material", HTML_FIGURE},
+      {"Labour", HTML_FIGURE},
+      {text_format(r->arena, "Together, %s", r->prices->currency), HTML_FIGURE}};
   takeoff_rows *rows = arena_alloc(r->arena, sizeof *rows);
   section_sum *sum = arena_array(r->arena, COST_MAX_LINES, sizeof *sum);
   takeoff_rows_of(r, x, rows);
@@ -97,8 +97,7 @@ static void put_rates(html *h, const assessment *x) {
 
 void html_cost_parts(html *h, const assessment *x) {
   if (!view_cost_of(h->report, x).costed) {
-    html_note(h, "care",
-              text_format(h->report->arena, "Not known: %s.", html_cost_words(h, x)));
+    html_note(h, "care", text_format(h->report->arena, "Not known: %s.", html_cost_words(h, x)));
   } else {
     put_rates(h, x);
     const char *id = html_picture_id(h);
@@ -125,9 +124,14 @@ static const char *rate_words(const report *r, const view_quantity *q) {
 void html_takeoff_table(html *h, const char *caption, const assessment *x) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Section", HTML_CODE},   {"Item", HTML_ID},   {"Name", HTML_DATA},
-      {"Kind", HTML_CODE},      {"Quantity", HTML_FIGURE}, {"Unit", HTML_CODE},
-      {"Rate", HTML_FIGURE},     {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE}};
+      {"Section", HTML_CODE},
+      {"Item", HTML_ID},
+      {"Name", HTML_DATA},
+      {"Kind", HTML_CODE},
+      {"Quantity", HTML_FIGURE},
+      {"Unit", HTML_CODE},
+      {"Rate", HTML_FIGURE},
+      {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE}};
   takeoff_rows *rows = arena_alloc(r->arena, sizeof *rows);
   takeoff_rows_of(r, x, rows);
   html_table(h, caption, columns, HTML_COUNT(columns));
@@ -139,18 +143,23 @@ void html_takeoff_table(html *h, const char *caption, const assessment *x) {
                            text_of(r->arena, q.quantity, 2), markup ? r->prices->currency : q.unit,
                            rate_words(r, &q), view_cents(r, l->cents)));
   }
-  html_row_as(h, "total",
-              HTML_CELLS(NULL, "total", NULL, NULL, NULL, NULL, NULL,
-                         view_cents(r, x->cost.total_cents)));
+  html_row_as(
+      h, "total",
+      HTML_CELLS(NULL, "total", NULL, NULL, NULL, NULL, NULL, view_cents(r, x->cost.total_cents)));
   html_table_end(h);
 }
 
 static void put_buy_list(html *h, const assessment *x) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Item", HTML_ID},     {"Name", HTML_DATA}, {"Needed", HTML_FIGURE},
-      {"Unit", HTML_CODE},    {"Buy", HTML_FIGURE}, {"As", HTML_DATA},
-      {"Price", HTML_FIGURE},  {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE},
+      {"Item", HTML_ID},
+      {"Name", HTML_DATA},
+      {"Needed", HTML_FIGURE},
+      {"Unit", HTML_CODE},
+      {"Buy", HTML_FIGURE},
+      {"As", HTML_DATA},
+      {"Price", HTML_FIGURE},
+      {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE},
       {"Note", HTML_WORDS}};
   buy_list *list = arena_alloc(r->arena, sizeof *list);
   buy_list_of(r, x, list);
@@ -159,17 +168,16 @@ static void put_buy_list(html *h, const assessment *x) {
   for (int i = 0; i < list->count; i++) {
     const buy_line *b = &list->line[i];
     const price_item *p = &r->prices->items[b->item];
-    cost_line l = {
-        .unit = price_unit_names[p->unit], .quantity = b->needed, .rate = b->price};
+    cost_line l = {.unit = price_unit_names[p->unit], .quantity = b->needed, .rate = b->price};
     view_quantity q = view_quantity_of(r, &l);
-    html_row(h, HTML_CELLS(p->code, p->name, text_of(r->arena, q.quantity, 2), q.unit,
-                           text_format(r->arena, "%lld", b->count), b->as,
-                           text_of(r->arena, q.rate, 3), view_cents(r, b->cents),
-                           takeoff_note(r, b)));
+    html_row(h,
+             HTML_CELLS(p->code, p->name, text_of(r->arena, q.quantity, 2), q.unit,
+                        text_format(r->arena, "%lld", b->count), b->as,
+                        text_of(r->arena, q.rate, 3), view_cents(r, b->cents), takeoff_note(r, b)));
   }
-  html_row_as(h, "total",
-              HTML_CELLS("total", NULL, NULL, NULL, NULL, NULL, NULL, view_cents(r, list->cents),
-                         NULL));
+  html_row_as(
+      h, "total",
+      HTML_CELLS("total", NULL, NULL, NULL, NULL, NULL, NULL, view_cents(r, list->cents), NULL));
   html_table_end(h);
 }
 

@@ -17,7 +17,8 @@ static const char colours[] =
 static const char words[] =
     "*{box-sizing:border-box}\n"
     "html{-webkit-text-size-adjust:100%;text-size-adjust:100%}\n"
-    "body{margin:0 auto;max-width:76rem;padding:0 clamp(1rem,4vw,3rem) 3rem;background:var(--paper);"
+    "body{margin:0 auto;max-width:76rem;padding:0 clamp(1rem,4vw,3rem) "
+    "3rem;background:var(--paper);"
     "color:var(--ink);font:1rem/1.5 system-ui,-apple-system,\"Segoe UI\",Roboto,\"Noto Sans\","
     "\"Liberation Sans\",sans-serif;overflow-wrap:anywhere}\n"
     "h1,h2,h3,h4{font-family:\"Iowan Old Style\",\"Palatino Linotype\",Palatino,Georgia,"
@@ -87,7 +88,8 @@ static const char layout[] =
 static const char tables[] =
     ".scroll{overflow-x:auto;margin:0 0 1.25rem}\n"
     ".scroll:focus-visible,.chart:focus-visible{outline:2px solid var(--key);outline-offset:2px}\n"
-    "table{border-collapse:collapse;min-width:min(100%,36rem);font-size:.93rem;font-variant-numeric:tabular-nums}\n"
+    "table{border-collapse:collapse;min-width:min(100%,36rem);font-size:.93rem;font-variant-"
+    "numeric:tabular-nums}\n"
     "caption{text-align:left;font-weight:600;padding:0 0 .4rem}\n"
     "th,td{text-align:left;vertical-align:baseline;padding:.3rem 1rem .3rem 0;"
     "border-bottom:1px solid var(--hair);font-weight:400;min-width:3.2rem}\n"

@@ -35,14 +35,14 @@ static bool with_floor(const html *h) {
 
 static void put_end(html *h, const ladder_answer *l, const char *label, const ladder_rung *g) {
   const report *r = h->report;
-  html_figure(h, label, text_format(r->arena, "%s %d", view_ladder_metric(r, l), g->rating),
-              text_format(r->arena, "%s; %s; %s",
-                          view_money(r, view_per_area(r, view_cost_of(r, g->wall).per_m2),
-                                     view_area(r)),
-                          html_thickness(h, g->wall->thickness_m),
-                          g->wall->fire.minutes
-                              ? text_format(r->arena, "fire %s", html_fire_words(h, g->wall))
-                              : "fire not shown"));
+  html_figure(
+      h, label, text_format(r->arena, "%s %d", view_ladder_metric(r, l), g->rating),
+      text_format(r->arena, "%s; %s; %s",
+                  view_money(r, view_per_area(r, view_cost_of(r, g->wall).per_m2), view_area(r)),
+                  html_thickness(h, g->wall->thickness_m),
+                  g->wall->fire.minutes
+                      ? text_format(r->arena, "fire %s", html_fire_words(h, g->wall))
+                      : "fire not shown"));
 }
 
 static const char *answer_words(const report *r, const ladder_answer *l) {
@@ -81,8 +81,8 @@ static void put_glance(html *h, const ladder_answer *l) {
   put_range(h, l);
   for (int i = 0; i < r->brief->target_count; i++)
     if (i != l->terms.climbs)
-      html_paragraph(h, text_format(r->arena, "Every rung keeps %s.",
-                                    view_target(r, &r->brief->targets[i])));
+      html_paragraph(
+          h, text_format(r->arena, "Every rung keeps %s.", view_target(r, &r->brief->targets[i])));
   if (l->count > 0) {
     html_figures(h);
     put_end(h, l, "First rung", &l->rung[0]);
@@ -105,33 +105,32 @@ static void put_rung(html *h, const ladder_answer *l, const ladder_rung *g) {
   const assessment *x = g->wall;
   double step = (double)g->step_cents;
   bool first = g->points == 0;
-  html_row(h, HTML_CELLS(number(h, g->rating), g->worth ? "worth taking" : NULL,
-                         by_area(h, x, (double)x->cost.total_cents, false),
-                         view_cents(r, x->cost.total_cents),
-                         first ? NULL : by_area(h, x, step, true),
-                         first ? NULL : by_area(h, x, step / g->points, true),
-                         html_thickness(h, x->thickness_m), html_mass(h, x->mass_kg_m2),
-                         predicted_words(h, l, x), x->line,
-                         with_floor(h) ? view_cents(r, x->cost.floor_value_cents) : NULL,
-                         with_floor(h) ? view_cents(r, g->cost_cents) : NULL));
+  html_row(h,
+           HTML_CELLS(number(h, g->rating), g->worth ? "worth taking" : NULL,
+                      by_area(h, x, (double)x->cost.total_cents, false),
+                      view_cents(r, x->cost.total_cents), first ? NULL : by_area(h, x, step, true),
+                      first ? NULL : by_area(h, x, step / g->points, true),
+                      html_thickness(h, x->thickness_m), html_mass(h, x->mass_kg_m2),
+                      predicted_words(h, l, x), x->line,
+                      with_floor(h) ? view_cents(r, x->cost.floor_value_cents) : NULL,
+                      with_floor(h) ? view_cents(r, g->cost_cents) : NULL));
 }
 
 static void put_rungs(html *h, const ladder_answer *l) {
   const report *r = h->report;
   const char *area = view_area(r), *currency = r->prices->currency;
-  const html_column columns[] = {
-      {view_ladder_metric(r, l), HTML_ID},
-      {"", HTML_CODE},
-      {text_format(r->arena, "%s per %s", currency, area), HTML_FIGURE},
-      {"The wall", HTML_FIGURE},
-      {text_format(r->arena, "Step, per %s", area), HTML_FIGURE},
-      {"A point", HTML_FIGURE},
-      {"Thickness", HTML_FIGURE},
-      {"Mass", HTML_FIGURE},
-      {"Predicted", HTML_WORDS},
-      {"Wall", HTML_LINE},
-      {"Floor under it", HTML_FIGURE},
-      {"With the floor", HTML_FIGURE}};
+  const html_column columns[] = {{view_ladder_metric(r, l), HTML_ID},
+                                 {"", HTML_CODE},
+                                 {text_format(r->arena, "%s per %s", currency, area), HTML_FIGURE},
+                                 {"The wall", HTML_FIGURE},
+                                 {text_format(r->arena, "Step, per %s", area), HTML_FIGURE},
+                                 {"A point", HTML_FIGURE},
+                                 {"Thickness", HTML_FIGURE},
+                                 {"Mass", HTML_FIGURE},
+                                 {"Predicted", HTML_WORDS},
+                                 {"Wall", HTML_LINE},
+                                 {"Floor under it", HTML_FIGURE},
+                                 {"With the floor", HTML_FIGURE}};
   html_section(h, "The rungs");
   html_table(h, "For each rating the cheapest wall", columns,
              HTML_COUNT(columns) - (with_floor(h) ? 0 : 2));
@@ -158,28 +157,26 @@ static const char *remarks(html *h, const ladder_rung *g) {
 
 static void put_changes(html *h, const ladder_answer *l) {
   const report *r = h->report;
-  const html_column columns[] = {
-      {view_ladder_metric(r, l), HTML_ID},
-      {"From the rung below", HTML_WORDS},
-      {"Step", HTML_FIGURE},
-      {"Remarks", HTML_WORDS},
-      {"From your wall", HTML_WORDS},
-      {text_format(r->arena, "More per %s", view_area(r)), HTML_FIGURE},
-      {"More for the wall", HTML_FIGURE}};
+  const html_column columns[] = {{view_ladder_metric(r, l), HTML_ID},
+                                 {"From the rung below", HTML_WORDS},
+                                 {"Step", HTML_FIGURE},
+                                 {"Remarks", HTML_WORDS},
+                                 {"From your wall", HTML_WORDS},
+                                 {text_format(r->arena, "More per %s", view_area(r)), HTML_FIGURE},
+                                 {"More for the wall", HTML_FIGURE}};
   html_table(h, "What changes from rung to rung", columns,
              HTML_COUNT(columns) - (l->terms.have ? 0 : 3));
   for (int i = 0; i < l->count; i++) {
     const ladder_rung *g = &l->rung[i];
     bool first = g->points == 0;
-    html_row(h,
-             HTML_CELLS(number(h, g->rating),
-                        first ? "the first rung"
-                              : text_format(r->arena, "from %d: %s", g->rating - g->points,
-                                            changes_words(r->arena, &g->changes)),
-                        first ? NULL : signed_cents(h, g->step_cents), remarks(h, g),
-                        l->terms.have ? changes_words(r->arena, &g->from_have) : NULL,
-                        l->terms.have ? by_area(h, g->wall, (double)g->extra_cents, true) : NULL,
-                        l->terms.have ? signed_cents(h, g->extra_cents) : NULL));
+    html_row(h, HTML_CELLS(number(h, g->rating),
+                           first ? "the first rung"
+                                 : text_format(r->arena, "from %d: %s", g->rating - g->points,
+                                               changes_words(r->arena, &g->changes)),
+                           first ? NULL : signed_cents(h, g->step_cents), remarks(h, g),
+                           l->terms.have ? changes_words(r->arena, &g->from_have) : NULL,
+                           l->terms.have ? by_area(h, g->wall, (double)g->extra_cents, true) : NULL,
+                           l->terms.have ? signed_cents(h, g->extra_cents) : NULL));
   }
   html_table_end(h);
   html_section_end(h);
@@ -281,8 +278,9 @@ static void put_prices(html *h, const ladder_answer *l) {
   if (l->price_count == 0) return;
   html_section(h, "What the other rules cost");
   html_paragraph(
-      h, text_format(r->arena, "Priced at %s %d, %s.", view_ladder_metric(r, l), l->priced_at,
-                     l->terms.to > 0 ? "the end of the range asked for" : "the value of the brief"));
+      h,
+      text_format(r->arena, "Priced at %s %d, %s.", view_ladder_metric(r, l), l->priced_at,
+                  l->terms.to > 0 ? "the end of the range asked for" : "the value of the brief"));
   html_rule_prices(h, "What giving up one rule would save, floor value included", l->prices,
                    l->price_count, NULL);
   html_section_end(h);

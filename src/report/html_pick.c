@@ -28,9 +28,8 @@ static const char *verdict(const explanation *e) {
     return e->status == SOLVER_OPTIMAL
                ? "The cheapest wall that keeps every rule of the brief."
                : "The cheapest wall found within the time limit; a cheaper one may exist.";
-  return e->status == SOLVER_INFEASIBLE
-             ? "No wall fits this brief."
-             : "No wall found within the time limit; one may exist.";
+  return e->status == SOLVER_INFEASIBLE ? "No wall fits this brief."
+                                        : "No wall found within the time limit; one may exist.";
 }
 
 static void put_decides(html *h, const explanation *e) {

@@ -54,7 +54,8 @@ static const char *search_words(const report *r, const plan_answer *p) {
   view_count(&t, p->candidates);
   text_put(&t, " types put to the solver.");
   if (p->found && p->bound_cents != LLONG_MIN)
-    text_putf(&t, " No plan costs less than %s.", view_money(r, (double)p->bound_cents / 100, NULL));
+    text_putf(&t, " No plan costs less than %s.",
+              view_money(r, (double)p->bound_cents / 100, NULL));
   return t.data;
 }
 
@@ -95,10 +96,10 @@ static void put_figures(html *h, const plan_answer *p) {
                 "of the wall nearest to its target, at the confidence asked");
   if (p->against.done) {
     long long saving = view_plan_saving(&p->against);
-    html_figure(h, saving >= 0 ? "Saves against the drawings" : "Costs more than the drawings",
-                view_cents(r, saving >= 0 ? saving : -saving),
-                text_format(r->arena, "%s; rows compared: %d", r->prices->currency,
-                            p->against.row_count));
+    html_figure(
+        h, saving >= 0 ? "Saves against the drawings" : "Costs more than the drawings",
+        view_cents(r, saving >= 0 ? saving : -saving),
+        text_format(r->arena, "%s; rows compared: %d", r->prices->currency, p->against.row_count));
   }
   html_figures_end(h);
 }
@@ -114,8 +115,7 @@ static void put_conflicts(html *h, const plan_answer *p) {
       if (p->conflict[i] >> k & 1u)
         text_putf(&t, "%s%s: %s", rules++ ? "; and " : "", plan_rule_names[k],
                   view_plan_rule(r, p, (plan_rule)k));
-    item[i] =
-        text_format(r->arena, "Cannot be had%s: %s.", rules > 1 ? " together" : "", t.data);
+    item[i] = text_format(r->arena, "Cannot be had%s: %s.", rules > 1 ? " together" : "", t.data);
   }
   html_list(h, item, p->conflict_count);
 }
@@ -146,18 +146,17 @@ static void put_rules(html *h, const plan_answer *p) {
   html_fact(h, "Objective",
             from->aim == AIM_MARGIN ? "the best worst margin within the budget, then least cost"
                                     : "least cost");
-  html_fact(h, "Types", from->max_types > 0 ? view_plan_rule(r, p, PLAN_RULE_TYPES)
-                                            : "as many as it takes (default)");
+  html_fact(h, "Types",
+            from->max_types > 0 ? view_plan_rule(r, p, PLAN_RULE_TYPES)
+                                : "as many as it takes (default)");
   html_fact(h, "Run of a type",
             from->min_run_m > 0 ? view_plan_rule(r, p, PLAN_RULE_RUN) : "any (default)");
   html_fact(h, "Setting up a type",
             from->type_setup_cost > 0 ? view_money(r, from->type_setup_cost, NULL)
                                       : "nothing (default)");
-  html_fact(h, "Budget",
-            from->budget > 0 ? view_money(r, from->budget, NULL) : "none (default)");
+  html_fact(h, "Budget", from->budget > 0 ? view_money(r, from->budget, NULL) : "none (default)");
   html_fact(h, "Floor under the walls",
-            from->floor_area_max_m2 > 0 ? view_plan_rule(r, p, PLAN_RULE_FLOOR)
-                                        : "any (default)");
+            from->floor_area_max_m2 > 0 ? view_plan_rule(r, p, PLAN_RULE_FLOOR) : "any (default)");
   html_fact(h, "Framing", framings[from->same_framing]);
   html_fact(h, "Orders for the whole project",
             from->quantity_breaks ? "minimum orders and quantity breaks count"

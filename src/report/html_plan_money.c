@@ -24,8 +24,7 @@ static void put_chart(html *h, const plan_answer *p) {
                         .budget_cents = cost_cents(p->project->budget)};
   for (int i = 0; i < PLAN_CURVE; i++)
     if (p->curve[i].done)
-      point[d.count++] =
-          (chart_types_point){i + 1, solved(&p->curve[i]), p->curve[i].cost_cents};
+      point[d.count++] = (chart_types_point){i + 1, solved(&p->curve[i]), p->curve[i].cost_cents};
   if (d.count == 0) return;
   const char *id = html_picture_id(h);
   chart_types(h->report, id, &d, html_picture(h, HTML_CHART));
@@ -86,17 +85,16 @@ static void put_rule_prices(html *h, const plan_answer *p) {
   bool any = false;
   for (int i = 0; i < PLAN_RULES; i++) any = any || p->relaxed[i].done;
   if (!any) return;
-  html_table(h, "What giving up one rule of the project would bring", columns,
-             HTML_COUNT(columns));
+  html_table(h, "What giving up one rule of the project would bring", columns, HTML_COUNT(columns));
   for (int i = 0; i < PLAN_RULES; i++) {
     const plan_point *at = &p->relaxed[i];
     if (!at->done) continue;
-    html_row(h, HTML_CELLS(plan_rule_names[i], view_plan_rule(r, p, (plan_rule)i),
-                           at->found ? view_cents(r, at->cost_cents) : NULL,
-                           at->found && p->found ? view_cents(r, p->cost_cents - at->cost_cents)
-                                                 : NULL,
-                           at->found ? number(h, at->types) : NULL, margin_words(h, p, at),
-                           status_words(at)));
+    html_row(
+        h, HTML_CELLS(plan_rule_names[i], view_plan_rule(r, p, (plan_rule)i),
+                      at->found ? view_cents(r, at->cost_cents) : NULL,
+                      at->found && p->found ? view_cents(r, p->cost_cents - at->cost_cents) : NULL,
+                      at->found ? number(h, at->types) : NULL, margin_words(h, p, at),
+                      status_words(at)));
   }
   html_table_end(h);
 }
@@ -120,8 +118,8 @@ static void put_storey_chart(html *h, const plan_answer *p) {
   const char *id = html_picture_id(h);
   for (int i = 0; i < p->storey_count; i++) {
     const plan_money *m = &p->storey[i].money;
-    part[i] = (chart_plan_part){html_storey(p->storey[i].name), m->walls, m->goods, m->setup,
-                                m->floor};
+    part[i] =
+        (chart_plan_part){html_storey(p->storey[i].name), m->walls, m->goods, m->setup, m->floor};
   }
   chart_plan_cost(h->report, id, "storey", part, p->storey_count, html_picture(h, HTML_CHART));
   html_picture_end(h, NULL);
@@ -130,12 +128,18 @@ static void put_storey_chart(html *h, const plan_answer *p) {
 void html_plan_storeys(html *h, const plan_answer *p) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Storey", HTML_HEAD},   {"Walls", HTML_FIGURE},
-      {"Rows", HTML_FIGURE},   {"Rows without a type", HTML_FIGURE},
-      {"Run", HTML_FIGURE},    {"Area", HTML_FIGURE},
-      {"Floor", HTML_FIGURE},  {text_format(r->arena, "%s per %s", r->prices->currency, view_area(r)), HTML_FIGURE},
-      {"Walls", HTML_FIGURE},  {"Goods", HTML_FIGURE},
-      {"Value of floor", HTML_FIGURE}, {text_format(r->arena, "Together, %s", r->prices->currency), HTML_FIGURE}};
+      {"Storey", HTML_HEAD},
+      {"Walls", HTML_FIGURE},
+      {"Rows", HTML_FIGURE},
+      {"Rows without a type", HTML_FIGURE},
+      {"Run", HTML_FIGURE},
+      {"Area", HTML_FIGURE},
+      {"Floor", HTML_FIGURE},
+      {text_format(r->arena, "%s per %s", r->prices->currency, view_area(r)), HTML_FIGURE},
+      {"Walls", HTML_FIGURE},
+      {"Goods", HTML_FIGURE},
+      {"Value of floor", HTML_FIGURE},
+      {text_format(r->arena, "Together, %s", r->prices->currency), HTML_FIGURE}};
   if (!p->found || p->storey_count == 0) return;
   html_section(h, "By storey");
   put_storey_chart(h, p);
@@ -143,13 +147,13 @@ void html_plan_storeys(html *h, const plan_answer *p) {
   for (int i = 0; i < p->storey_count; i++) {
     const plan_storey *s = &p->storey[i];
     const plan_money *m = &s->money;
-    html_row(h, HTML_CELLS(html_storey(s->name), number(h, s->walls), number(h, s->row_count),
-                           number(h, s->unplanned), html_run(h, s->run_m),
-                           html_area(h, s->area_m2), html_area(h, s->floor_m2),
-                           view_cents(r, view_in_cents(view_per_area(
-                                             r, view_plan_per_m2(m, s->area_m2)))),
-                           view_cents(r, m->walls), view_cents(r, m->goods),
-                           view_cents(r, m->floor), view_cents(r, plan_money_total(m))));
+    html_row(h, HTML_CELLS(
+                    html_storey(s->name), number(h, s->walls), number(h, s->row_count),
+                    number(h, s->unplanned), html_run(h, s->run_m), html_area(h, s->area_m2),
+                    html_area(h, s->floor_m2),
+                    view_cents(r, view_in_cents(view_per_area(r, view_plan_per_m2(m, s->area_m2)))),
+                    view_cents(r, m->walls), view_cents(r, m->goods), view_cents(r, m->floor),
+                    view_cents(r, plan_money_total(m))));
   }
   html_table_end(h);
   html_section_end(h);
@@ -175,8 +179,8 @@ void html_plan_sections(html *h, const plan_answer *p) {
                            text_of(r->arena, s->hours, 2),
                            view_cents(r, s->material_cents + s->labour_cents)));
   }
-  html_row(h, HTML_CELLS("tax, overhead and profit", NULL, NULL, NULL,
-                         view_cents(r, p->markup_cents)));
+  html_row(
+      h, HTML_CELLS("tax, overhead and profit", NULL, NULL, NULL, view_cents(r, p->markup_cents)));
   html_row_as(h, "total", HTML_CELLS("walls and goods", NULL, NULL, NULL, view_cents(r, sum)));
   html_table_end(h);
   html_section_end(h);
@@ -215,8 +219,8 @@ static void put_order(html *h, const buy_plan_line *l) {
   text count;
   text_init(&count, r->arena, 64);
   view_count(&count, l->buy.count);
-  html_row(h, HTML_CELLS(l->section, item->code, item->name,
-                         text_of(r->arena, needed.quantity, 2), needed.unit,
+  html_row(h, HTML_CELLS(l->section, item->code, item->name, text_of(r->arena, needed.quantity, 2),
+                         needed.unit,
                          l->from_stock > 0 ? quantity(h, l->buy.item, l->from_stock) : NULL,
                          count.data, l->buy.as, quantity(h, l->buy.item, l->buy.bought),
                          quantity(h, l->buy.item, over), text_of(r->arena, needed.rate, 3),
@@ -226,9 +230,12 @@ static void put_order(html *h, const buy_plan_line *l) {
 static void put_goods(html *h, const plan_answer *p) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Item", HTML_ID},         {"Unit", HTML_CODE},
-      {"Needed", HTML_FIGURE},   {"On hand", HTML_FIGURE},
-      {"Bought", HTML_FIGURE},   {"Over", HTML_FIGURE},
+      {"Item", HTML_ID},
+      {"Unit", HTML_CODE},
+      {"Needed", HTML_FIGURE},
+      {"On hand", HTML_FIGURE},
+      {"Bought", HTML_FIGURE},
+      {"Over", HTML_FIGURE},
       {text_format(r->arena, "In the plan, %s", r->prices->currency), HTML_FIGURE}};
   if (p->goods_count == 0) return;
   html_table(h, "Goods of the plan: ordered together, tax and markups included", columns,
@@ -236,11 +243,11 @@ static void put_goods(html *h, const plan_answer *p) {
   for (int i = 0; i < p->goods_count; i++) {
     const plan_goods *g = &p->goods[i];
     if (g->buy.need <= 0) continue;
-    html_row(h, HTML_CELLS(r->prices->items[g->item].code, shown(h, g->item, 0, 0).unit,
-                           quantity(h, g->item, g->buy.need),
-                           quantity(h, g->item, g->buy.from_stock),
-                           quantity(h, g->item, g->buy.bought),
-                           quantity(h, g->item, g->buy.surplus), view_cents(r, g->buy.cents)));
+    html_row(h,
+             HTML_CELLS(r->prices->items[g->item].code, shown(h, g->item, 0, 0).unit,
+                        quantity(h, g->item, g->buy.need), quantity(h, g->item, g->buy.from_stock),
+                        quantity(h, g->item, g->buy.bought), quantity(h, g->item, g->buy.surplus),
+                        view_cents(r, g->buy.cents)));
   }
   html_table_end(h);
 }
@@ -248,10 +255,18 @@ static void put_goods(html *h, const plan_answer *p) {
 void html_plan_buy(html *h, const plan_answer *p) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Section", HTML_CODE},  {"Item", HTML_ID},       {"Name", HTML_DATA},
-      {"Needed", HTML_FIGURE}, {"Unit", HTML_CODE},     {"On hand", HTML_FIGURE},
-      {"Order", HTML_FIGURE},  {"As", HTML_DATA},       {"Bought", HTML_FIGURE},
-      {"Over", HTML_FIGURE},   {"Price", HTML_FIGURE},  {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE},
+      {"Section", HTML_CODE},
+      {"Item", HTML_ID},
+      {"Name", HTML_DATA},
+      {"Needed", HTML_FIGURE},
+      {"Unit", HTML_CODE},
+      {"On hand", HTML_FIGURE},
+      {"Order", HTML_FIGURE},
+      {"As", HTML_DATA},
+      {"Bought", HTML_FIGURE},
+      {"Over", HTML_FIGURE},
+      {"Price", HTML_FIGURE},
+      {text_format(r->arena, "Amount, %s", r->prices->currency), HTML_FIGURE},
       {"Note", HTML_WORDS}};
   buy_plan list;
   if (!p->found) return;
@@ -322,8 +337,7 @@ static void put_comparison(html *h, const plan_answer *p) {
                          html_area(h, c->drawings_floor_m2)));
   html_row(h, HTML_CELLS("as planned", view_cents(r, b->walls), view_cents(r, b->goods),
                          view_cents(r, b->setup), view_cents(r, b->floor),
-                         view_cents(r, plan_money_total(b)), NULL,
-                         html_area(h, c->plan_floor_m2)));
+                         view_cents(r, plan_money_total(b)), NULL, html_area(h, c->plan_floor_m2)));
   html_row_as(h, "total",
               HTML_CELLS("saved", view_cents(r, a->walls - b->walls),
                          view_cents(r, a->goods - b->goods), view_cents(r, a->setup - b->setup),
@@ -335,11 +349,16 @@ static void put_comparison(html *h, const plan_answer *p) {
 void html_plan_drawings(html *h, const plan_answer *p) {
   const report *r = h->report;
   const html_column columns[] = {
-      {"Mark", HTML_HEAD},     {"", HTML_CODE},
-      {"Walls", HTML_FIGURE},  {"Rows", HTML_FIGURE},
-      {"Run", HTML_FIGURE},    {text_format(r->arena, "Cost by itself, %s", r->prices->currency), HTML_FIGURE},
-      {"Type of the plan", HTML_CODE}, {"Walls that miss", HTML_FIGURE},
-      {"What it misses", HTML_WORDS}, {"Wall", HTML_LINE}};
+      {"Mark", HTML_HEAD},
+      {"", HTML_CODE},
+      {"Walls", HTML_FIGURE},
+      {"Rows", HTML_FIGURE},
+      {"Run", HTML_FIGURE},
+      {text_format(r->arena, "Cost by itself, %s", r->prices->currency), HTML_FIGURE},
+      {"Type of the plan", HTML_CODE},
+      {"Walls that miss", HTML_FIGURE},
+      {"What it misses", HTML_WORDS},
+      {"Wall", HTML_LINE}};
   if (p->drawn_count == 0) return;
   html_section(h, "Beside the drawings");
   if (p->against.done) put_comparison(h, p);

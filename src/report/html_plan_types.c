@@ -31,9 +31,9 @@ static const char *storeys_words(html *h, const plan_answer *p, const plan_used 
 
 static void put_where(html *h, const plan_answer *p) {
   static const html_column columns[] = {
-      {"Type", HTML_ID},       {"Walls", HTML_FIGURE},     {"Rows", HTML_FIGURE},
-      {"Run", HTML_FIGURE},    {"Area", HTML_FIGURE},      {"STC", HTML_FIGURE},
-      {"Fire", HTML_FIGURE},   {"Thickness", HTML_FIGURE}, {"Floor", HTML_FIGURE},
+      {"Type", HTML_ID},        {"Walls", HTML_FIGURE},     {"Rows", HTML_FIGURE},
+      {"Run", HTML_FIGURE},     {"Area", HTML_FIGURE},      {"STC", HTML_FIGURE},
+      {"Fire", HTML_FIGURE},    {"Thickness", HTML_FIGURE}, {"Floor", HTML_FIGURE},
       {"By storey", HTML_DATA}, {"Wall", HTML_LINE}};
   html_table(h, "Types and where they stand", columns, HTML_COUNT(columns));
   for (int i = 0; i < p->type_count; i++) {
@@ -54,8 +54,8 @@ static const char *without_words(html *h, const plan_answer *p, const plan_used 
   if (!w->done || (w->status == SOLVER_LIMIT && !w->found)) return "not known";
   if (!w->found) return "no plan";
   long long more = w->cost_cents - p->cost_cents;
-  return text_format(h->report->arena, "%s%s%s", more >= 0 ? "+" : "",
-                     view_cents(h->report, more), w->status == SOLVER_OPTIMAL ? "" : ", not proven");
+  return text_format(h->report->arena, "%s%s%s", more >= 0 ? "+" : "", view_cents(h->report, more),
+                     w->status == SOLVER_OPTIMAL ? "" : ", not proven");
 }
 
 static void put_money(html *h, const plan_answer *p) {
@@ -109,8 +109,7 @@ static void put_card(html *h, const plan_used *u) {
   html_heading(h, u->name);
   html_line(h, u->line);
   html_figures(h);
-  html_figure(h, "Rating",
-              text_format(r->arena, "STC %d", u->as->ratings.stc),
+  html_figure(h, "Rating", text_format(r->arena, "STC %d", u->as->ratings.stc),
               view_published(u->as, METRIC_STC) ? "published" : "predicted");
   html_figure(h, text_format(r->arena, "%s per %s", r->prices->currency, view_area(r)),
               per_area(h, &u->money, u->area_m2),
@@ -186,27 +185,38 @@ static void put_row(html *h, const plan_answer *p, int row) {
       planned && asked
           ? text_format(a, "%s %%", view_sureness(r, view_plan_probability(p, w->of_class)))
           : NULL;
-  html_row(
-      h, HTML_CELLS(
-             w->id, w->storey, w->from, w->to, number(h, w->count), html_height(h, w->length_m),
-             html_height(h, w->height_m), planned ? p->type[as->type].name : "none",
-             planned && as->mirrored ? "other way round" : NULL, view_plan_class(r, w->of_class),
-             planned && asked ? text_of(a, at->margin_db, 2) : NULL, sure,
-             planned && asked ? text_format(a, "%s %%", view_sureness(r, at->in_field)) : NULL,
-             planned ? view_cents(r, as->list_cents) : NULL,
-             planned ? view_cents(r, as->money.walls) : NULL,
-             planned ? view_cents(r, as->money.goods) : NULL,
-             planned ? view_cents(r, as->money.floor) : NULL, planned ? as->line : NULL));
+  html_row(h,
+           HTML_CELLS(
+               w->id, w->storey, w->from, w->to, number(h, w->count), html_height(h, w->length_m),
+               html_height(h, w->height_m), planned ? p->type[as->type].name : "none",
+               planned && as->mirrored ? "other way round" : NULL, view_plan_class(r, w->of_class),
+               planned && asked ? text_of(a, at->margin_db, 2) : NULL, sure,
+               planned && asked ? text_format(a, "%s %%", view_sureness(r, at->in_field)) : NULL,
+               planned ? view_cents(r, as->list_cents) : NULL,
+               planned ? view_cents(r, as->money.walls) : NULL,
+               planned ? view_cents(r, as->money.goods) : NULL,
+               planned ? view_cents(r, as->money.floor) : NULL, planned ? as->line : NULL));
 }
 
 void html_plan_schedule(html *h, const plan_answer *p) {
-  static const html_column columns[] = {
-      {"Wall", HTML_ID},         {"Storey", HTML_DATA},     {"From", HTML_DATA},
-      {"To", HTML_DATA},         {"Copies", HTML_FIGURE},   {"Length", HTML_FIGURE},
-      {"Height", HTML_FIGURE},   {"Type", HTML_CODE},       {"", HTML_CODE},
-      {"Class", HTML_CODE},      {"To spare, dB", HTML_FIGURE}, {"How sure", HTML_FIGURE},
-      {"in a field test", HTML_FIGURE}, {"By itself", HTML_FIGURE}, {"Walls", HTML_FIGURE},
-      {"Goods", HTML_FIGURE},    {"Floor", HTML_FIGURE},    {"As built, side A towards From", HTML_LINE}};
+  static const html_column columns[] = {{"Wall", HTML_ID},
+                                        {"Storey", HTML_DATA},
+                                        {"From", HTML_DATA},
+                                        {"To", HTML_DATA},
+                                        {"Copies", HTML_FIGURE},
+                                        {"Length", HTML_FIGURE},
+                                        {"Height", HTML_FIGURE},
+                                        {"Type", HTML_CODE},
+                                        {"", HTML_CODE},
+                                        {"Class", HTML_CODE},
+                                        {"To spare, dB", HTML_FIGURE},
+                                        {"How sure", HTML_FIGURE},
+                                        {"in a field test", HTML_FIGURE},
+                                        {"By itself", HTML_FIGURE},
+                                        {"Walls", HTML_FIGURE},
+                                        {"Goods", HTML_FIGURE},
+                                        {"Floor", HTML_FIGURE},
+                                        {"As built, side A towards From", HTML_LINE}};
   if (!p->found) return;
   html_section(h, "Which wall gets which type");
   html_paragraph(
@@ -223,7 +233,8 @@ void html_plan_schedule(html *h, const plan_answer *p) {
 /* --- what is asked --------------------------------------------------------------------------- */
 
 /* The fields of a class that the project's common ones do not say. */
-static const char *own_words(html *h, const plan_answer *p, int of_class, const view_brief *common) {
+static const char *own_words(html *h, const plan_answer *p, int of_class,
+                             const view_brief *common) {
   report own = view_plan_report(h->report, p, of_class);
   view_brief *b = arena_alloc(own.arena, sizeof *b);
   text t;
@@ -259,16 +270,16 @@ static void put_class(html *h, const plan_answer *p, int c, const view_brief *co
   const plan_place *at = &p->place[c];
   bool planned = at->type != PLAN_NONE;
   html_row(h, HTML_CELLS(view_plan_class(r, c), planned ? p->type[at->type].name : "none",
-                         number(h, k->count), html_run(h, k->run_m),
-                         view_plan_demand(r, p, c), own_words(h, p, c, common), k->basis,
-                         misses_words(h, p, c), view_plan_all_ids(r, p, k->wall, k->count)));
+                         number(h, k->count), html_run(h, k->run_m), view_plan_demand(r, p, c),
+                         own_words(h, p, c, common), k->basis, misses_words(h, p, c),
+                         view_plan_all_ids(r, p, k->wall, k->count)));
 }
 
 void html_plan_classes(html *h, const plan_answer *p) {
   static const html_column columns[] = {
-      {"Class", HTML_ID},       {"Type", HTML_CODE},
-      {"Rows", HTML_FIGURE},    {"Run", HTML_FIGURE},
-      {"Asks", HTML_WORDS},     {"Fields beyond the project's common ones", HTML_DATA},
+      {"Class", HTML_ID},         {"Type", HTML_CODE},
+      {"Rows", HTML_FIGURE},      {"Run", HTML_FIGURE},
+      {"Asks", HTML_WORDS},       {"Fields beyond the project's common ones", HTML_DATA},
       {"Comes from", HTML_WORDS}, {"Its type misses", HTML_WORDS},
       {"Walls", HTML_DATA}};
   view_brief *common = arena_alloc(h->report->arena, sizeof *common);

@@ -21,8 +21,8 @@ static void put_ratings(html *h, const char *css_class, const char *name, const 
 }
 
 void html_ratings_table(html *h, const assessment *x) {
-  static const html_column columns[] = {{"", HTML_HEAD},    {"STC", HTML_FIGURE},
-                                        {"Rw", HTML_FIGURE}, {"C", HTML_FIGURE},
+  static const html_column columns[] = {{"", HTML_HEAD},      {"STC", HTML_FIGURE},
+                                        {"Rw", HTML_FIGURE},  {"C", HTML_FIGURE},
                                         {"Ctr", HTML_FIGURE}, {"OITC", HTML_FIGURE}};
   bool published = x->evidence.match != NULL;
   html_table(h, "Ratings", columns, HTML_COUNT(columns));
@@ -39,9 +39,8 @@ void html_ratings_table(html *h, const assessment *x) {
 }
 
 static void put_prediction(html *h, const assessment *x) {
-  static const html_column columns[] = {{"Metric", HTML_HEAD},
-                                        {"Exact", HTML_FIGURE},
-                                        {"Standard deviation", HTML_FIGURE}};
+  static const html_column columns[] = {
+      {"Metric", HTML_HEAD}, {"Exact", HTML_FIGURE}, {"Standard deviation", HTML_FIGURE}};
   static const html_column with_openings[] = {{"Metric", HTML_HEAD},
                                               {"Exact", HTML_FIGURE},
                                               {"Standard deviation", HTML_FIGURE},
@@ -62,8 +61,8 @@ static void put_prediction(html *h, const assessment *x) {
 /* --- targets --------------------------------------------------------------------------------- */
 
 static bool breaks_sound(const assessment *x) {
-  return (x->broken & (rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) |
-                       rule_bit(RULE_EVIDENCE) | rule_bit(RULE_COMPOSITE))) != 0;
+  return (x->broken & (rule_bit(RULE_TARGET) | rule_bit(RULE_CONFIDENCE) | rule_bit(RULE_EVIDENCE) |
+                       rule_bit(RULE_COMPOSITE))) != 0;
 }
 
 static void put_targets(html *h, const assessment *x) {
@@ -107,9 +106,9 @@ static void put_nearest(html *h, const assessment *x) {
     text_init(&differs, h->report->arena, 2000);
     for (int k = 0; k < n->differ_count; k++)
       text_putf(&differs, "%s%s", k ? "; " : "", n->differs[k]);
-    html_row(h, HTML_CELLS(n->row->id, whole(h, n->row->stc), n->line,
-                           n->differ_count ? differs.data : "nothing: the same wall",
-                           n->row->source));
+    html_row(h,
+             HTML_CELLS(n->row->id, whole(h, n->row->stc), n->line,
+                        n->differ_count ? differs.data : "nothing: the same wall", n->row->source));
   }
   html_table_end(h);
 }
@@ -122,9 +121,9 @@ static void put_basis(html *h, const assessment *x) {
   html_fact(h, "The STC rests on", m ? "a published rating" : "a prediction, not a test");
   if (m) {
     html_fact_data(h, "Published wall", text_format(r->arena, "%s: %s", m->id, m->name));
-    html_fact(h, "Its rating",
-              text_format(r->arena, "STC %d, standard deviation %s", m->stc,
-                          decimal(h, m->stc_sd, 2)));
+    html_fact(
+        h, "Its rating",
+        text_format(r->arena, "STC %d, standard deviation %s", m->stc, decimal(h, m->stc_sd, 2)));
     html_fact_data(h, "Its source", m->source);
   } else
     html_fact(h, "Confidence",
@@ -176,7 +175,8 @@ static void put_other_sound(html *h, const assessment *x) {
   html_facts(h);
   if (x->mounted)
     html_fact(h, "Short-circuited mount",
-              text_format(r->arena, "%s (exact %s): %s", view_ratings(r, &x->short_predicted.ratings),
+              text_format(r->arena, "%s (exact %s): %s",
+                          view_ratings(r, &x->short_predicted.ratings),
                           decimal(h, x->short_predicted.exact[METRIC_STC], 1), x->short_line));
   if (x->has_composite)
     html_fact(h, "No wall with these openings passes",

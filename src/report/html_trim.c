@@ -31,7 +31,7 @@ static const char *height_change(html *h, const assessment *from, const assessme
 }
 
 static const char *heavy_words(const bool heavy[2]) {
-  return heavy[SIDE_A] ? heavy[SIDE_B] ? "on both sides" : "on side A"
+  return heavy[SIDE_A]   ? heavy[SIDE_B] ? "on both sides" : "on side A"
          : heavy[SIDE_B] ? "on side B"
                          : "on neither side";
 }
@@ -128,8 +128,8 @@ static void put_terms(html *h, const trim_answer *t) {
 /* "STC 54", and what it rests on where that is no prediction. */
 static const char *rating_words(html *h, const assessment *x) {
   sound_metric m = view_trim_metric(h->report);
-  return text_format(h->report->arena, "%s %d%s", sound_metric_names[m],
-                     rating_of(&x->ratings, m), view_published(x, m) ? ", published" : "");
+  return text_format(h->report->arena, "%s %d%s", sound_metric_names[m], rating_of(&x->ratings, m),
+                     view_published(x, m) ? ", published" : "");
 }
 
 static const char *sure_words(html *h, const assessment *x) {
@@ -147,12 +147,12 @@ static void put_log_row(html *h, const trim_answer *t, int i) {
   const report *r = h->report;
   const trim_proposal *p = &t->proposal[i];
   const assessment *from = t->specified, *x = p->wall;
-  html_row(h, HTML_CELLS(text_format(r->arena, "%d", i + 1), x->line,
-                         view_cents(r, p->saving_cents), saving_area(h, p->saving_per_m2),
-                         share_words(h, t, p->saving_cents), rating_words(h, x),
-                         signed_words(h, view_trim_shift(r, from, x), 1), sure_words(h, x),
-                         thickness_change(h, from, x), mass_change(h, from, x),
-                         html_fire_words(h, x), view_trim_losses(r, p)));
+  html_row(h,
+           HTML_CELLS(text_format(r->arena, "%d", i + 1), x->line, view_cents(r, p->saving_cents),
+                      saving_area(h, p->saving_per_m2), share_words(h, t, p->saving_cents),
+                      rating_words(h, x), signed_words(h, view_trim_shift(r, from, x), 1),
+                      sure_words(h, x), thickness_change(h, from, x), mass_change(h, from, x),
+                      html_fire_words(h, x), view_trim_losses(r, p)));
 }
 
 static void put_log(html *h, const trim_answer *t) {
@@ -200,9 +200,9 @@ static void put_changes(html *h, const trim_answer *t, const trim_proposal *p) {
   html_table(h, "Change by change", columns, HTML_COUNT(columns));
   for (int i = 0; i < p->change_count; i++) {
     const trim_change *c = &p->change[i];
-    html_row(h, HTML_CELLS(c->what, c->from, c->to,
-                           c->alone ? view_cents(r, c->saving_cents) : NULL,
-                           view_trim_effect(r, t, c), c->alone ? c->alone->line : NULL));
+    html_row(h,
+             HTML_CELLS(c->what, c->from, c->to, c->alone ? view_cents(r, c->saving_cents) : NULL,
+                        view_trim_effect(r, t, c), c->alone ? c->alone->line : NULL));
   }
   html_row(h, HTML_CELLS("together", NULL, NULL, view_cents(r, p->together_cents),
                          "what all of them save beyond that", NULL));
@@ -223,9 +223,9 @@ static void put_differences(html *h, const trim_answer *t, const trim_proposal *
                         share_words(h, t, p->saving_cents)));
   if (r->brief->floor_area_value_per_m2 > 0)
     html_fact(h, "Of this floor area",
-              view_money(
-                  r,
-                  (double)(from->cost.floor_value_cents - x->cost.floor_value_cents) / 100, NULL));
+              view_money(r,
+                         (double)(from->cost.floor_value_cents - x->cost.floor_value_cents) / 100,
+                         NULL));
   if (t->terms.redesign_cents > 0)
     html_fact(h, "Net of redesign and resubmittal",
               view_money(r, (double)p->net_cents / 100, NULL));
@@ -295,10 +295,9 @@ static void put_cheapest(html *h, const trim_answer *t) {
   if (t->cheapest && text_equal(t->cheapest->line, t->specified->line))
     words = "The specified wall is the cheapest that holds all of that.";
   else if (t->cheapest)
-    words = text_format(r->arena,
-                        "The cheapest of the walls judged that holds all of that costs %s more: %s",
-                        view_money(r, (double)t->cheapest_more_cents / 100, NULL),
-                        t->cheapest->line);
+    words = text_format(
+        r->arena, "The cheapest of the walls judged that holds all of that costs %s more: %s",
+        view_money(r, (double)t->cheapest_more_cents / 100, NULL), t->cheapest->line);
   html_paragraph(h, words);
   html_others(h, "Cheaper walls, and what they fail", t->cheaper, t->cheaper_count, true);
   html_section_end(h);

@@ -86,9 +86,9 @@ void html_wall_figures(html *h, const assessment *x) {
   put_rating(h, x);
   put_cost(h, x);
   html_figure(h, "Thickness", html_thickness(h, x->thickness_m),
-              b->thickness_m.has_max ? text_format(r->arena, "at most %s",
-                                                   html_thickness(h, b->thickness_m.max))
-                                     : NULL);
+              b->thickness_m.has_max
+                  ? text_format(r->arena, "at most %s", html_thickness(h, b->thickness_m.max))
+                  : NULL);
   html_figure(h, "Mass", html_mass(h, x->mass_kg_m2), NULL);
   html_figure(h, "Fire rating", html_fire_words(h, x),
               b->fire_min > 0

@@ -5,13 +5,13 @@
 #include "report/html.h"
 
 /* A key and a value of a table literal. */
-#define HTML_CELLS(...) ((const char *const[]){__VA_ARGS__})
+#define HTML_CELLS(...)   ((const char *const[]){__VA_ARGS__})
 #define HTML_COUNT(array) ((int)(sizeof(array) / sizeof(array)[0]))
 
 /* The figures that answer at one glance: rating, cost, thickness, mass, fire, height. */
 void html_wall_figures(html *h, const assessment *x);
-/* The section through the wall, drawn. `compact`: the plan alone, for a card; else in full, and where
- * the page is narrow the plan alone. */
+/* The section through the wall, drawn. `compact`: the plan alone, for a card; else in full, and
+ * where the page is narrow the plan alone. */
 void html_wall_drawing(html *h, const assessment *x, bool compact);
 /* Sections of their own. */
 void html_wall_parts(html *h, const assessment *x);

@@ -1,4 +1,5 @@
-/* What a page says about other walls: those next to the answer, those that fail, what rules cost. */
+/* What a page says about other walls: those next to the answer, those that fail, what rules cost.
+ */
 #include "report/html_wall.h"
 
 #include "report/view.h"
@@ -29,12 +30,18 @@ static const char *fails_words(html *h, const assessment *x) {
 void html_others(html *h, const char *caption, assessment *const *x, int count, bool fails) {
   const report *r = h->report;
   bool floor = r->brief->floor_area_value_per_m2 > 0;
-  const html_column columns[] = {
-      {"Wall", HTML_LINE},        {per_area_head(h), HTML_FIGURE},
-      {"STC", HTML_FIGURE},       {"Rw (C, Ctr)", HTML_FIGURE},
-      {"OITC", HTML_FIGURE},      {"Rests on", HTML_CODE},
-      {"Thickness", HTML_FIGURE}, {"Mass", HTML_FIGURE},
-      {fails ? "What it fails" : floor ? "Floor under it" : "", HTML_WORDS}};
+  const html_column columns[] = {{"Wall", HTML_LINE},
+                                 {per_area_head(h), HTML_FIGURE},
+                                 {"STC", HTML_FIGURE},
+                                 {"Rw (C, Ctr)", HTML_FIGURE},
+                                 {"OITC", HTML_FIGURE},
+                                 {"Rests on", HTML_CODE},
+                                 {"Thickness", HTML_FIGURE},
+                                 {"Mass", HTML_FIGURE},
+                                 {fails   ? "What it fails"
+                                  : floor ? "Floor under it"
+                                          : "",
+                                  HTML_WORDS}};
   if (count == 0) return;
   html_table(h, caption, columns, HTML_COUNT(columns) - !(fails || floor));
   for (int i = 0; i < count; i++) {
@@ -59,21 +66,19 @@ void html_others(html *h, const char *caption, assessment *const *x, int count, 
 void html_rule_prices(html *h, const char *caption, const explain_rule_price *price, int count,
                       const char *base) {
   const report *r = h->report;
-  const html_column columns[] = {{"Rule", HTML_HEAD},
-                                 {"Asked", HTML_WORDS},
-                                 {"In its place", HTML_WORDS},
-                                 {per_area_head(h), HTML_FIGURE},
-                                 {"The wall", HTML_FIGURE},
-                                 {"Then the cheapest is", HTML_LINE}};
+  const html_column columns[] = {{"Rule", HTML_HEAD},          {"Asked", HTML_WORDS},
+                                 {"In its place", HTML_WORDS}, {per_area_head(h), HTML_FIGURE},
+                                 {"The wall", HTML_FIGURE},    {"Then the cheapest is", HTML_LINE}};
   if (count == 0) return;
   html_table(h, caption, columns, HTML_COUNT(columns));
   for (int i = 0; i < count; i++) {
     const explain_rule_price *p = &price[i];
-    const char *then = !p->wall                                   ? "no wall"
+    const char *then = !p->wall                                  ? "no wall"
                        : base && text_equal(p->wall->line, base) ? "the same wall"
-                                                                  : p->wall->line;
-    html_row(h, HTML_CELLS(p->name, p->from, p->to, p->reachable ? per_area(h, p->price_per_m2) : NULL,
-                           p->reachable ? view_cents(r, view_in_cents(p->price_total)) : NULL, then));
+                                                                 : p->wall->line;
+    html_row(h,
+             HTML_CELLS(p->name, p->from, p->to, p->reachable ? per_area(h, p->price_per_m2) : NULL,
+                        p->reachable ? view_cents(r, view_in_cents(p->price_total)) : NULL, then));
   }
   html_table_end(h);
 }
@@ -89,10 +94,10 @@ static const char *price_words(const report *r, const explain_break_even *b, dou
 
 void html_break_even(html *h, const explain_break_even *b, int count) {
   const report *r = h->report;
-  static const html_column columns[] = {
-      {"Item", HTML_HEAD},       {"Unit", HTML_CODE},     {"Price", HTML_FIGURE},
-      {"Below", HTML_FIGURE},    {"this wall", HTML_LINE}, {"Above", HTML_FIGURE},
-      {"this wall", HTML_LINE}};
+  static const html_column columns[] = {{"Item", HTML_HEAD},      {"Unit", HTML_CODE},
+                                        {"Price", HTML_FIGURE},   {"Below", HTML_FIGURE},
+                                        {"this wall", HTML_LINE}, {"Above", HTML_FIGURE},
+                                        {"this wall", HTML_LINE}};
   text idle;
   int limited = 0;
   text_init(&idle, r->arena, 8000);
@@ -121,5 +126,6 @@ void html_break_even(html *h, const explain_break_even *b, int count) {
     html_table_end(h);
   }
   if (idle.len)
-    html_paragraph(h, text_format(r->arena, "At any price of these the wall stays: %s.", idle.data));
+    html_paragraph(h,
+                   text_format(r->arena, "At any price of these the wall stays: %s.", idle.data));
 }
