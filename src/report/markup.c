@@ -353,15 +353,17 @@ static bool is_cell_escape(const char *s) {
 }
 
 static bool is_plain_cell(const char *value) {
-  size_t n = 0;
-  for (const unsigned char *s = (const unsigned char *)value; *s != '\0'; s++, n++)
+  size_t n = 0, lines = 0;
+  for (const unsigned char *s = (const unsigned char *)value; *s != '\0'; s++, n++) {
     if (*s >= 0x7F || (*s < 0x20 && *s != '\n' && *s != '\t') || is_cell_escape((const char *)s))
       return false;
-  return n <= MARKUP_CELL_UNITS;
+    lines += *s == '\n';
+  }
+  return n <= MARKUP_CELL_UNITS && lines <= MARKUP_CELL_LINES;
 }
 
 /* One character and what it counts: units of UTF-16, an escape as it is written. */
-static int put_cell_character(text *out, const char *s, size_t length) {
+static int put_cell_character(text *out, const char *s, size_t length, int *lines) {
   static const char guard[] = "_x005F_";
   if (length == 0 || barred((const unsigned char *)s, length)) {
     text_put(out, "\xEF\xBF\xBD");
@@ -371,7 +373,7 @@ static int put_cell_character(text *out, const char *s, size_t length) {
     text_put(out, guard);
     return (int)sizeof guard - 1;
   }
-  if (*s == '\r')
+  if (*s == '\r' || (*s == '\n' && ++*lines > MARKUP_CELL_LINES))
     text_char(out, ' ');
   else
     text_putn(out, s, length);
@@ -384,12 +386,12 @@ const char *markup_cell(arena *a, const char *value) {
   if (is_plain_cell(value)) return value;
   text out;
   text_init(&out, a, MAX_BYTES);
-  int units = 0;
+  int units = 0, lines = 0;
   size_t cut = 0; /* where an ellipsis still has room */
   for (const char *s = value; *s != '\0';) {
     size_t length = utf8_length((const unsigned char *)s);
     if (units < MARKUP_CELL_UNITS) cut = out.len;
-    units += put_cell_character(&out, s, length);
+    units += put_cell_character(&out, s, length, &lines);
     s += length ? length : 1;
     if (units > MARKUP_CELL_UNITS) {
       out.len = cut;

@@ -90,9 +90,10 @@ void markup_csv_field(text *out, const char *value, bool first);
 void markup_csv_end(text *out);
 
 /* Text of a spreadsheet cell: cleaned as between tags; what the format would read as an escape of its
- * own ("_x0041_") is guarded; beyond what a cell holds it is cut and ends in an ellipsis. In `a`, or
- * `value` itself where nothing changes. NULL is nothing. */
-enum { MARKUP_CELL_UNITS = 32767 }; /* of UTF-16 */
+ * own ("_x0041_") is guarded; line feeds beyond those that a cell holds become blanks; beyond the
+ * characters that it holds it is cut and ends in an ellipsis. In `a`, or `value` itself where nothing
+ * changes. NULL is nothing. The limits are those that spreadsheet programs document for a cell. */
+enum { MARKUP_CELL_UNITS = 32767 /* of UTF-16 */, MARKUP_CELL_LINES = 253 /* line feeds */ };
 const char *markup_cell(arena *a, const char *value);
 
 #endif

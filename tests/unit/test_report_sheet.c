@@ -80,6 +80,16 @@ START_TEST(cells_are_cut) {
 }
 END_TEST
 
+START_TEST(cells_hold_so_many_lines) {
+  const char *full = many("\n", MARKUP_CELL_LINES);
+  ck_assert_ptr_eq(markup_cell(memory, full), full);
+  const char *over = markup_cell(memory, many("\n", MARKUP_CELL_LINES + 2));
+  ck_assert_uint_eq(strlen(over), MARKUP_CELL_LINES + 2);
+  ck_assert_uint_eq(strspn(over, "\n"), MARKUP_CELL_LINES);
+  ck_assert_str_eq(over + MARKUP_CELL_LINES, "  ");
+}
+END_TEST
+
 /* ---- references ---- */
 
 static const struct {
@@ -159,6 +169,7 @@ int main(void) {
   tcase_add_checked_fixture(cells, open_memory, close_memory);
   tcase_add_loop_test(cells, cells_hold_text, 0, ROWS(texts));
   tcase_add_loop_test(cells, cells_are_cut, 0, ROWS(lengths));
+  tcase_add_test(cells, cells_hold_so_many_lines);
   tcase_add_loop_test(cells, references_name_cells, 0, ROWS(places));
   tcase_add_test(cells, tables_fill_from_the_left);
   tcase_add_test(cells, numbers_are_tidy);
