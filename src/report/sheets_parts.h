@@ -70,6 +70,9 @@ void sheets_brief(const report *r, int climbs, sheet_book *out);
 void sheets_rules(const report *r, const assessment *x, const explain_rule_price *price, int count,
                   const char *base, const char *area, sheet_book *out);
 
+/* The predicted curve by bands, and the published walls nearest to it. */
+void sheets_sound(const report *r, const assessment *x, sheet_book *out);
+
 /* Walls to compare, one a row. */
 sheet *sheets_candidates(const report *r, sheet_book *out);
 /* `first`: the wall of the first row, which costs are held against; NULL: none. */

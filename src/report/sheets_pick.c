@@ -75,6 +75,7 @@ static void put_chosen(const report *r, const explanation *e, sheet *s, sheet_bo
   sheet_end_table(all);
   sheets_rules(r, x, e->prices, e->price_count, x->line, area, out);
   put_break_even(r, e, out);
+  sheets_sound(r, x, out);
   sheets_cautions(s, caution, view_cautions(r, x, caution));
 }
 

@@ -18,6 +18,44 @@ void sheets_brief(const report *r, int climbs, sheet_book *out) {
   sheet_end_table(s);
 }
 
+/* ---- sound ---- */
+
+static const char *differ_words(const report *r, const evidence_near *n) {
+  text t;
+  text_init(&t, r->arena, 4000);
+  for (int i = 0; i < n->differ_count; i++) text_putf(&t, "%s%s", i ? "; " : "", n->differs[i]);
+  return t.data;
+}
+
+void sheets_sound(const report *r, const assessment *x, sheet_book *out) {
+  static const sheet_column bands[] = {{"Band, Hz", 10, SHEET_COUNT},
+                                       {"Predicted transmission loss, dB", 16, SHEET_TENTHS}};
+  static const sheet_column walls[] = {{"Published wall", 20, SHEET_TEXT},
+                                       {"STC", 6, SHEET_COUNT},
+                                       {"Wall line", 60, SHEET_WRAP},
+                                       {"What differs from it", 50, SHEET_WRAP},
+                                       {"Source", 50, SHEET_WRAP}};
+  sheet *s = sheet_book_add(out, "Curve");
+  sheet_table(s, 0, bands, SHEETS_COUNT(bands));
+  for (int i = 0; i < BANDS; i++) {
+    sheet_put_figure(s, bands_hz[i]);
+    sheet_put_figure(s, x->predicted.tl_db[i]);
+    sheet_end_row(s);
+  }
+  s = sheet_book_add(out, "Evidence");
+  sheet_table(s, 0, walls, SHEETS_COUNT(walls));
+  for (int i = 0; i < x->evidence.nearest_count; i++) {
+    const evidence_near *n = &x->evidence.nearest[i];
+    sheet_put(s, n->row->id);
+    sheet_put_figure(s, n->row->stc);
+    sheet_put(s, n->line);
+    sheet_put(s, differ_words(r, n));
+    sheet_put(s, n->row->source);
+    sheet_end_row(s);
+  }
+  sheet_end_table(s);
+}
+
 /* ---- rules ---- */
 
 static const char *put_words(const report *r, void (*put)(text *, double, units_system),

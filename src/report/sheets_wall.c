@@ -153,6 +153,7 @@ void sheets_rate(const report *r, const assessment *x, sheet_book *out) {
   sheets_wall_facts(r, x, s);
   sheets_wall_money(r, x, area, s, out);
   sheets_rules(r, x, NULL, 0, NULL, area, out);
+  sheets_sound(r, x, out);
   sheets_brief(r, CATALOG_NONE, out);
   sheets_cautions(s, caution, view_cautions(r, x, caution));
   sheets_rests_on_brief(r, s);

@@ -92,6 +92,47 @@ def check_others(where, rows, others, units, role):
             say(where, "fails %r" % fails)
 
 
+def check_sound(where, book, x):
+    rows = book.rows("Curve")
+    same(where, "bands", [r["Band, Hz"] for r in rows], x["bands_hz"])
+    for row, tl in zip(rows, x["tl_db"]):
+        same(where, "TL at %g Hz" % row["Band, Hz"], row["Predicted transmission loss, dB"], tl, 0.051)
+    rows, near = book.rows("Evidence"), x["evidence"]["nearest"]
+    same(where, "evidence", [[r["Published wall"], r["STC"], r["Wall line"], r["Source"]] for r in rows],
+         [[n["id"], n["rating"], n["line"], n["source"]] for n in near])
+    for row, n in zip(rows, near):
+        same(where, "differs", row["What differs from it"], "; ".join(n["differs"]))
+
+
+def check_rate(where, words, us, folder):
+    units = Units(us)
+    data, book = two_runs(where, ["rate", *words, "--units", "us" if us else "si"], folder)
+    if book is None:
+        return
+    same(where, "sheets", book.names, ["Summary", "Takeoff", "Buy list", "Rules", "Curve", "Evidence", "Brief"])
+    facts = book.facts()
+    check_brief(where, book)
+    check_sound(where, book, data)
+    for metric in ("STC", "Rw", "C", "Ctr", "OITC"):
+        same(where, metric, facts[metric], data["ratings"][metric])
+    same(where, "exact", facts["Predicted STC, exact"], data["stc_exact"], 0.051)
+    same(where, "sd", facts["Standard deviation of it, dB"], data["sd"], 0.0051)
+    same(where, "bridged", facts.get("STC if the mount is bridged"), data["short_circuit"] and data["short_circuit"]["ratings"]["STC"])
+    same(where, "thickness", units.mm(facts["Thickness, " + units.thickness]), data["thickness_mm"], MM)
+    same(where, "mass", units.kg_m2(facts["Mass, " + units.mass]), data["mass_kg_m2"], 0.0051)
+    same(where, "fire", facts["Fire rating shown, min"], data["fire"]["minutes"] or "not shown")
+    same(where, "height", units.metres(facts["Limiting height, " + units.length]), data["height"]["limit_m"], 0.0051)
+    same(where, "hours", facts["Labour hours"], data["cost"]["hours_per_m2"] * data["cost"]["area_m2"], 0.01)
+    rules = {r["Rule"]: r for r in book.rows("Rules")}
+    same(where, "rules", sorted(rules), sorted(set(data["rules"]["in_force"]) - {"price"}))
+    broken = {b["rule"]: b for b in data["rules"]["broken"]}
+    for name, row in rules.items():
+        same(where, name + " kept", row["Kept"], "no" if name in broken else "yes")
+        if name in broken:
+            same(where, name + " asked", row["Asked"], broken[name]["limit"])
+            same(where, name + " found", row["Found"], broken[name]["found"].rstrip("."))
+
+
 def check_pick(where, words, us, folder):
     units = Units(us)
     data, book = two_runs(where, words + ["--units", "us" if us else "si"], folder)
@@ -109,7 +150,7 @@ def check_pick(where, words, us, folder):
         if not set(data["rules"]) - {"price"} <= rules:
             say(where, "rules %s, JSON has %s" % (rules, data["rules"]))
         return
-    same(where, "sheets", book.names, ["Summary", "Takeoff", "Buy list", "Candidates", "Rules", "Break-even", "Brief"])
+    same(where, "sheets", book.names, ["Summary", "Takeoff", "Buy list", "Candidates", "Rules", "Break-even", "Curve", "Evidence", "Brief"])
     same(where, "wall", facts["Wall"], chosen["line"])
     same(where, "total", facts["Total"], chosen["cost"]["total"])
     same(where, "per area", facts["Cost per " + ("ft2" if us else "m2")], chosen["cost"]["per_m2"] * units.area, NEAR)
@@ -132,6 +173,7 @@ def check_pick(where, words, us, folder):
     rules = check_rules(where, book, data, units, chosen["line"])
     if any(r["Kept"] != "yes" or not r["Found"] for r in rules.values()) or "target" not in rules:
         say(where, "rules of the chosen wall: %s" % rules)
+    check_sound(where, book, chosen)
     limits = book.rows("Break-even")
     if len(limits) != len(data["break_even"]):
         say(where, "break-even")
@@ -342,6 +384,8 @@ def main(work):
         brief = json.load(f)
     with open(floor, "w", encoding="utf-8") as f:
         json.dump(dict(brief, floor_area_value_per_m2=4000), f)
+    check_rate("rate", [WALLS["plain"]], True, work)
+    check_rate("rate under a brief", [WALLS["plain"], "--brief", example("heavy-fastening")], False, work)
     for name in ("party-wall", "heavy-fastening", "tall-wall", "impossible"):
         check_pick("pick " + name, ["pick", example(name)], name != "tall-wall", work)
     check_pick("pick with floor", ["pick", floor], True, work)
