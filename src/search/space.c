@@ -281,17 +281,50 @@ static void build_supports(builder *u) {
                               &s->faces[f]) <= u->most;
 }
 
+static bool same_boards(const catalog *c, const face *f, const face *g) {
+  int i = 0, j = 0;
+  for (;;) {
+    while (i < f->count && c->layers[f->layer[i]].membrane) i++;
+    while (j < g->count && c->layers[g->layer[j]].membrane) j++;
+    if (i == f->count || j == g->count) return i == f->count && j == g->count;
+    if (f->layer[i++] != g->layer[j++]) return false;
+  }
+}
+
+/* Faces with the same boards, whatever their membranes: all that compat_pair looks at. `kind` gets
+ * the kind of each face, `example` a face of each. Returns how many kinds. */
+static int board_kinds(const builder *u, int *kind, int *example) {
+  const space *s = u->out;
+  int kinds = 0;
+  for (int i = 0; i < s->face_count; i++) {
+    int k = 0;
+    while (k < kinds && !same_boards(u->catalog, &s->faces[i], &s->faces[example[k]])) k++;
+    if (k == kinds) example[kinds++] = i;
+    kind[i] = k;
+  }
+  return kinds;
+}
+
+static bool may_meet(const builder *u, const face *a, const face *b) {
+  bool same_board = a->layer[0] == b->layer[0];
+  if (!same_board && !u->wish.finishes_differ) return false;
+  return compat_pair(u->catalog, a, b) <= (same_board || u->whole ? u->most : COMPAT_FINE);
+}
+
 static void build_pairs(builder *u) {
   space *s = u->out;
   size_t n = (size_t)s->face_count;
+  int *kind = arena_array(u->arena, n, sizeof *kind);
+  int *example = arena_array(u->arena, n, sizeof *example);
+  size_t kinds = (size_t)board_kinds(u, kind, example);
+  bool *meet = arena_array(u->arena, kinds * kinds, sizeof *meet);
+  for (size_t p = 0; p < kinds; p++)
+    for (size_t q = 0; q < kinds; q++)
+      meet[p * kinds + q] = may_meet(u, &s->faces[example[p]], &s->faces[example[q]]);
   s->pair = arena_array(u->arena, n * n, sizeof *s->pair);
   for (size_t i = 0; i < n; i++)
-    for (size_t j = 0; j < n; j++) {
-      bool same_board = s->faces[i].layer[0] == s->faces[j].layer[0];
-      if (!same_board && !u->wish.finishes_differ) continue;
-      s->pair[i * n + j] = compat_pair(u->catalog, &s->faces[i], &s->faces[j]) <=
-                           (same_board || u->whole ? u->most : COMPAT_FINE);
-    }
+    for (size_t j = 0; j < n; j++)
+      s->pair[i * n + j] = meet[(size_t)kind[i] * kinds + (size_t)kind[j]];
 }
 
 static void build_partners(builder *u) {
@@ -303,7 +336,7 @@ static void build_partners(builder *u) {
   count = 0;
   for (size_t i = 0; i < n; i++) {
     for (size_t j = 0; j < n; j++)
-      if (s->pair[i * n + j]) s->partner[count++] = (int)j;
+      if (s->pair[i * n + j]) s->partner[count++] = (unsigned short)j;
     s->partner_first[i + 1] = (int)count;
   }
 }

@@ -24,7 +24,7 @@ typedef struct space {
   int support_count;
   bool *on_support; /* support_count x face_count */
   bool *pair;       /* face_count x face_count: may stand opposite */
-  int *partner;     /* the same as lists: faces partner[partner_first[i]] .. before
+  unsigned short *partner; /* the same as lists: faces partner[partner_first[i]] .. before
                        partner[partner_first[i + 1]], rising, may stand opposite i */
   int *partner_first;
   int threads; /* that may work on it (base/threads.h); 0, as built: as many as there are */

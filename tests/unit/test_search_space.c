@@ -281,6 +281,68 @@ START_TEST(lines_compare_as_strings) {
 }
 END_TEST
 
+/* Leaves of the whole catalog: n equal finish boards, alone or over one backing board, at most one
+ * membrane; their walls can all be built, and any two leaves that compat lets meet do. */
+START_TEST(the_whole_catalog_keeps_its_leaf_rule) {
+  brief b = plain_brief();
+  judge_context x = {shop.catalog, shop.prices, &b};
+  space s;
+  space_build_whole(shop.memory, &x, &s);
+  for (int i = 0; i < s.face_count; i++) {
+    const face *f = &s.faces[i];
+    int boards = face_boards(shop.catalog, f), others = 0;
+    ck_assert(boards >= 1 && boards <= 3 && f->count - boards <= 1);
+    for (int k = 0; k < f->count; k++)
+      others += f->layer[k] != f->layer[0] && !shop.catalog->layers[f->layer[k]].membrane;
+    ck_assert_int_le(others, 1);
+  }
+  ck_assert(space_count(&s) >= 500000000LL);
+  dice_state = 5;
+  int legal = 0;
+  for (int n = 0; n < ANY_SAMPLES; n++) {
+    int core = (int)dice((unsigned)s.core_count), i = (int)dice((unsigned)s.face_count);
+    int j = (int)dice((unsigned)s.face_count);
+    bool meet = compat_pair(shop.catalog, &s.faces[i], &s.faces[j]) <= COMPAT_UNUSUAL;
+    ck_assert(s.pair[(size_t)i * (size_t)s.face_count + (size_t)j] == meet);
+    if (!space_legal(&s, core, i, j)) continue;
+    compat_report r;
+    wall w = space_wall(&s, core, i, j);
+    compat_check(shop.catalog, &w, &r);
+    ck_assert_int_le(r.worst, COMPAT_UNUSUAL);
+    legal++;
+  }
+  ck_assert_int_gt(legal, ANY_SAMPLES / 10);
+}
+END_TEST
+
+/* The row of a leaf is what is legal, and the count is their sum. */
+START_TEST(rows_and_count_are_what_is_legal) {
+  for (unsigned seed = 0; seed < 40; seed++) {
+    brief b = random_brief(seed);
+    judge_context x = {shop.catalog, shop.prices, &b};
+    space s;
+    if (seed % 2)
+      space_build_whole(shop.memory, &x, &s);
+    else
+      space_build(shop.memory, &x, &s);
+    int *row = arena_array(shop.memory, (size_t)s.face_count, sizeof *row);
+    long long count = 0;
+    for (int k = 0; k < s.core_count; k++)
+      for (int i = 0; i < s.face_count; i++) {
+        int n = space_row(&s, k, i, row), at = 0;
+        for (int j = 0; j < s.face_count; j++) {
+          if (!space_legal(&s, k, i, j)) continue;
+          ck_assert(at < n && row[at] == j);
+          at++;
+        }
+        ck_assert_int_eq(at, n);
+        count += n;
+      }
+    ck_assert_int_eq(count, space_count(&s));
+  }
+}
+END_TEST
+
 int main(void) {
   Suite *s = suite_create("search_space");
   TCase *t = tcase_create("walls");
@@ -295,6 +357,8 @@ int main(void) {
   tcase_add_test(t, a_record_named_in_full_is_used_though_not_proposed);
   tcase_add_test(t, a_heavy_side_never_gets_a_mount);
   tcase_add_test(t, lines_compare_as_strings);
+  tcase_add_test(t, the_whole_catalog_keeps_its_leaf_rule);
+  tcase_add_test(t, rows_and_count_are_what_is_legal);
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
   srunner_run_all(r, CK_NORMAL);
