@@ -469,16 +469,30 @@ static long long count_pairs(const space *s, int p, int q, bool ordered) {
   return count;
 }
 
-/* Few cores differ in what their leaves may be: those alike follow one another. */
+/* Cores on the same supports have as many walls each: remembered for as many supports as fit. */
+typedef struct counted {
+  int a, b;
+  bool ordered;
+  long long pairs;
+} counted;
+enum { COUNTED_MAX = 512 };
+
 long long space_count(const space *s) {
-  long long count = 0, each = 0;
+  counted known[COUNTED_MAX];
+  int kinds = 0;
+  long long count = 0;
   for (int k = 0; k < s->core_count; k++) {
-    bool same = k > 0 && s->support[SIDE_A][k] == s->support[SIDE_A][k - 1] &&
-                s->support[SIDE_B][k] == s->support[SIDE_B][k - 1] &&
-                s->own_mirror[k] == s->own_mirror[k - 1];
-    if (!same)
-      each = count_pairs(s, s->support[SIDE_A][k], s->support[SIDE_B][k], s->own_mirror[k]);
-    count += each;
+    counted c = {s->support[SIDE_A][k], s->support[SIDE_B][k], s->own_mirror[k], 0};
+    int i = 0;
+    while (i < kinds && (known[i].a != c.a || known[i].b != c.b || known[i].ordered != c.ordered))
+      i++;
+    if (i == kinds) {
+      c.pairs = count_pairs(s, c.a, c.b, c.ordered);
+      if (kinds < COUNTED_MAX) known[kinds++] = c;
+      count += c.pairs;
+    } else {
+      count += known[i].pairs;
+    }
   }
   return count;
 }
