@@ -174,13 +174,13 @@ static void put_log(html *h, const trim_answer *t) {
   const char *id = html_picture_id(h);
   chart_savings(r, id, t, html_picture(h, HTML_CHART));
   html_picture_end(h, NULL);
-  html_table(h,
-             text_format(r->arena, "Against the specified wall: %s, %s, %s, up to %s",
-                         view_trim_rating(r, t->specified),
-                         html_thickness(h, t->specified->thickness_m),
-                         html_mass(h, t->specified->mass_kg_m2),
-                         html_height(h, t->specified->height.limit_m)),
-             columns, HTML_COUNT(columns));
+  html_table_as(h, "dense",
+                text_format(r->arena, "Against the specified wall: %s, %s, %s, up to %s",
+                            view_trim_rating(r, t->specified),
+                            html_thickness(h, t->specified->thickness_m),
+                            html_mass(h, t->specified->mass_kg_m2),
+                            html_height(h, t->specified->height.limit_m)),
+                columns, HTML_COUNT(columns));
   for (int i = 0; i < t->proposal_count; i++) put_log_row(h, t, i);
   html_table_end(h);
   html_section_end(h);

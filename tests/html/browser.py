@@ -29,6 +29,8 @@ PAGES = {
 }
 # Widths in CSS pixels: a telephone and a desk.
 WIDTHS = (400, 1280)
+# Headings of pages are alike; one that is smaller by more than this share is of a page that was shrunk.
+SHRUNK = 0.01
 # Of 255: how far paper and ink are apart at least in relative lightness of the screen's values.
 LIGHTER_BY = 150
 # The test looks at the pages from outside, through frames as wide as a window would be.
@@ -115,9 +117,14 @@ def check_print(name, path, paper, inches):
         out = [w[4] for w in words if w[0] < 1 or w[2] > size[0] - 1 or w[3] > size[1] - 1]
         if out:
             faults.append("%s on %s, sheet %d: beyond the paper: %s" % (name, paper, number, out[:6]))
-    text = " ".join(w[4] for _, words in sheets for w in words)
+    # A browser shrinks the whole page until its widest part fits: then the heading is smaller than the style sheet has it.
     with open(path, encoding="utf-8") as file:
-        captions = re.findall(r"<caption[^>]*>([^<&]*)</caption>", file.read())
+        page = file.read()
+    first = re.search(r"<h1[^>]*>([^\s<]+)", page).group(1)
+    heading = max(w[3] - w[1] for w in sheets[0][1] if w[4] == first)
+    headings["%s on %s" % (name, paper)] = heading
+    text = " ".join(w[4] for _, words in sheets for w in words)
+    captions = re.findall(r"<caption[^>]*>([^<&]*)</caption>", page)
     for caption in captions:
         if " ".join(caption.split()) not in text:
             faults.append("%s on %s: %s is not printed" % (name, paper, caption))
@@ -137,6 +144,7 @@ def write_project():
 write_project()
 sheets = {}
 paths = {}
+headings = {}
 for name, arguments in PAGES.items():
     path = os.path.join(work, name + ".html")
     done = subprocess.run([septum] + arguments + ["--html", path], stdout=subprocess.DEVNULL, stderr=subprocess.PIPE)
@@ -151,6 +159,9 @@ for name, path in paths.items():
     if name in ("trim", "plan"):  # the widest tables
         sheets[name].append(check_print(name, path, "Letter", (8.5, 11)))
 shutil.rmtree(work, ignore_errors=True)
+for where, height in headings.items():
+    if height < (1 - SHRUNK) * max(headings.values()):
+        faults.append("%s: shrunk to the paper, the heading is %.1f pt high" % (where, height))
 for fault in faults:
     print(fault)
 print("%d pages, sheets in A4 and Letter: %s; %d faults" % (len(PAGES), sheets, len(faults)))
