@@ -3,6 +3,7 @@
 #include <math.h>
 
 #include "base/units.h"
+#include "checks/structure.h"
 
 /* ---- rules of the takeoff ----
  * Each with its source; prices, waste and hours are the price book's. */
@@ -11,11 +12,11 @@
 #define FOOT UNITS_M_PER_FT
 
 static const struct {
-  double studs_added, studs_an_opening, stud_short_m, bridging_m;
+  double studs_added, studs_an_opening, stud_short_m, bridging_m, brace_m;
   int studs_a_corner, studs_a_tee, studs_an_end, jambs, headers, light_mil, jamb_mil;
   int plates, plates_bearing, tracks;
   double channel_ends_m, clip_ends_m, cut_below_m, cut_waste, opening_kept_m2, fireblock_m;
-  double boxes_per_10m, finish_above_m, screws_m, sheet_m;
+  double boxes_per_10m, finish_above_m, screws_m, sheet_m, course_m, handling;
   int finish_hidden, finish_tile;
 } rules = {
     /* framing: common practice, no source */
@@ -29,7 +30,8 @@ static const struct {
     .light_mil = 18, /* 25 gauge studs take jambs of 20 gauge drywall studs */
     .jamb_mil = 30,
     .stud_short_m = 0.010,   /* precut studs, made for three plates, stand with two */
-    .bridging_m = 48 * INCH, /* load-bearing steel: rows no further apart */
+    .bridging_m = 48 * INCH, /* steel that no boards hold: rows no further apart */
+    .brace_m = 48 * INCH,    /* along a row of bridging: cross-braces between two rows of steel */
     .plates = 2,             /* wood, a row */
     .plates_bearing = 3,
     .tracks = 2, /* steel, a row */
@@ -52,6 +54,9 @@ static const struct {
     .finish_tile = 2,
     .screws_m = 12 * INCH, /* at edges and in the field: ASTM C840, from memory */
     .sheet_m = 48 * INCH,
+    /* sheets laid out: common practice, no source */
+    .course_m = 12 * FOOT, /* lying courses are cut from sheets of this length */
+    .handling = 0.05,      /* lost beside what the layout cuts off */
 };
 
 /* Lengths in inches are not exact in metres: 24 ft is 12 spaces of 24 in, not 13. */
@@ -236,6 +241,22 @@ static void put_studs(bag *g, const brief *b, const extent *e, const catalog *c,
              section);
 }
 
+/* Rows across steel studs that no boards hold on both flanges. The rule looks at no leaf, so that
+ * bridging belongs to the core. Two rows are also braced to one another, as those of the published
+ * ratings are. */
+static void put_bridging(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w,
+                         const char *section) {
+  const frame *f = &c->frames[w->frame];
+  bool bridged = f->material == FRAME_STEEL && (b->loadbearing || structure_bare(c, b, w));
+  if (!bridged) return;
+  double rows = ceil(e->height_m / rules.bridging_m - count_slack) - 1;
+  put_all(g, g->book->work[WORK_BRIDGING], stud_rows(f) * rows * e->length_m, NET_WASTE, 0,
+          section);
+  if (f->layout != FRAME_DOUBLE) return;
+  double along = ceil(e->length_m / rules.brace_m - count_slack);
+  put_all(g, g->book->work[WORK_CROSS_BRACE], rows * along, NET_WASTE, 0, section);
+}
+
 static void put_frame(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w) {
   const frame *f = &c->frames[w->frame];
   bool bearing_steel = b->loadbearing && f->material == FRAME_STEEL;
@@ -247,10 +268,7 @@ static void put_frame(bag *g, const brief *b, const extent *e, const catalog *c,
     put_all(g, g->book->heads[w->frame], f->rows * e->length_m, NET_WASTE, 0, section);
   }
   put_all(g, g->book->runners[w->frame], f->rows * below * e->length_m, NET_WASTE, 0, section);
-  if (bearing_steel) {
-    double rows = ceil(e->height_m / rules.bridging_m - count_slack) - 1;
-    put_work(g, WORK_BRIDGING, stud_rows(f) * rows * e->length_m);
-  }
+  put_bridging(g, b, e, c, w, section);
 }
 
 /* Plates close the bays of wood studs at floor and ceiling; more stands between, and between two
@@ -324,12 +342,52 @@ static double screws_per_m2(const extent *e, double spacing) {
   return lines * (e->height_m / rules.screws_m + 1) / (rules.sheet_m * e->height_m);
 }
 
-static void put_face(bag *g, const extent *e, const catalog *c, const face *f, double spacing) {
+/* Upright sheets: the next length, on top of whole ones of the longest where a face is higher than
+ * that. */
+static double upright_m(const stock_lengths *s, double height_m) {
+  double longest = s->metres[s->count - 1], whole = floor(height_m / longest + count_slack);
+  double rest = height_m - whole * longest;
+  for (int i = 0; i < s->count; i++) {
+    if (rest <= count_slack) break;
+    if (s->metres[i] + count_slack < rest) continue;
+    return whole * longest + s->metres[i];
+  }
+  return whole * longest;
+}
+
+/* Lying sheets: whole courses of the width that wastes least, of those sold in the length that
+ * courses are cut from. */
+static double courses_m(const price_book *book, double height_m) {
+  double least = HUGE_VAL;
+  for (int i = 0; i < book->sheet_widths; i++) {
+    const sheet_stock *s = &book->sheets[i];
+    if (s->lengths.metres[s->lengths.count - 1] + count_slack < rules.course_m) continue;
+    least = fmin(least, ceil(height_m / s->width_m - count_slack) * s->width_m);
+  }
+  return isfinite(least) ? least : height_m;
+}
+
+/* What is lost of a gypsum board, as a share of the face. Upright sheets are of the narrowest width:
+ * their edges stand on studs. */
+static double layout_waste(const price_book *book, const brief *b, const extent *e) {
+  double cut = e->height_m;
+  if (book->sheet_widths > 0)
+    cut = b->boards == BOARDS_VERTICAL ? upright_m(&book->sheets[0].lengths, e->height_m)
+                                       : courses_m(book, e->height_m);
+  return cut / e->height_m * (1 + rules.handling) - 1;
+}
+
+static void put_face(bag *g, const brief *b, const extent *e, const catalog *c, const face *f,
+                     double spacing) {
   if (f->count == 0) return;
   double screws = screws_per_m2(e, spacing) * e->board_m2;
   for (int i = 0; i < f->count; i++) {
-    put(g, g->book->layers[f->layer[i]], e->board_m2);
-    if (!c->layers[f->layer[i]].membrane) put_work(g, WORK_SCREW, screws);
+    const layer *l = &c->layers[f->layer[i]];
+    /* Other panels, and gypsum that is no face (shaft liner), have sheets of their own. */
+    bool laid_out = b->boards != BOARDS_LUMP && l->material == LAYER_GYPSUM && l->face;
+    put_all(g, g->book->layers[f->layer[i]], e->board_m2,
+            laid_out ? layout_waste(g->book, b, e) : NET_WASTE, 0, NULL);
+    if (!l->membrane) put_work(g, WORK_SCREW, screws);
   }
 }
 
@@ -369,15 +427,15 @@ static void fill_core(bag *g, const brief *b, const extent *e, const catalog *c,
   for (int s = 0; s < 2; s++) put_mount(g, e, c, &w->mount[s]);
   put_fills(g, e, c, w);
   for (int s = 0; s < 2; s++) {
-    put_face(g, e, c, &w->sheath[s], stud_spacing);
-    put_face(g, e, c, &w->inner[s], stud_spacing);
+    put_face(g, b, e, c, &w->sheath[s], stud_spacing);
+    put_face(g, b, e, c, &w->inner[s], stud_spacing);
   }
   put_seals(g, b, e);
   put_backing(g, b, e, f);
 }
 
 static void fill_leaves(bag *g, const brief *b, const extent *e, const catalog *c, const wall *w) {
-  for (int s = 0; s < 2; s++) put_face(g, e, c, &w->side[s], support_spacing_m(w, s));
+  for (int s = 0; s < 2; s++) put_face(g, b, e, c, &w->side[s], support_spacing_m(w, s));
   for (int s = 0; s < 2; s++) put_finish(g, b, e, c, w, s);
 }
 

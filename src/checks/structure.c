@@ -118,10 +118,13 @@ unsigned structure_height_key(const catalog *c, const face *f) {
   return (stiffens ? LEAF_STIFFENS : 0u) | (room->material == LAYER_CEMENT ? LEAF_TILED : 0u);
 }
 
+bool structure_bare(const catalog *c, const brief *b, const wall *w) {
+  return frame_of(c, w)->layout != FRAME_SINGLE || wall_is_mounted(w) || b->top == TOP_CEILING;
+}
+
 /* Boards help only where they are screwed straight to both flanges over the full height. */
 static bool acts_composite(const catalog *c, const brief *b, const wall *w) {
-  if (frame_of(c, w)->layout != FRAME_SINGLE || wall_is_mounted(w) || b->top == TOP_CEILING)
-    return false;
+  if (structure_bare(c, b, w)) return false;
   unsigned both =
       structure_height_key(c, &w->side[SIDE_A]) & structure_height_key(c, &w->side[SIDE_B]);
   return (both & LEAF_STIFFENS) != 0;

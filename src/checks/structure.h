@@ -17,6 +17,9 @@ typedef struct height_verdict {
 /* Limiting height under the brief's lateral load and deflection limit (both above 0). `a` NULL: no
  * basis. */
 height_verdict structure_height(arena *a, const catalog *c, const brief *b, const wall *w);
+/* Whether the studs stand bare whatever the leaves: by brief, frame and mounts alone no boards hold
+ * both flanges over the full height. Steel studs that do take bridging. */
+bool structure_bare(const catalog *c, const brief *b, const wall *w);
 /* All that the height depends on in a room-side leaf, as bits (0..3): walls of one core whose
  * leaves have the same bits, side by side, have the same limiting height. */
 unsigned structure_height_key(const catalog *c, const face *f);

@@ -21,6 +21,7 @@ const char *const job_noncombustible_words[] = {"no", "strict", "frt_ok", NULL};
 const char *const job_shear_words[] = {"none", "a", "b", NULL};
 const char *const job_top_words[] = {"deck", "ceiling", NULL};
 const char *const job_head_words[] = {"rigid", "slip", NULL};
+const char *const job_boards_words[] = {"lump", "vertical", "horizontal", NULL};
 static const char *const build_words[] = {"ordinary", "any", NULL};
 
 static const char opening_source[] = "common practice, no source";
@@ -34,6 +35,10 @@ const opening_kind job_opening_kinds[] = {
     {"glass-25-insulating", 33, opening_source},
 };
 const int job_opening_kind_count = (int)COUNT(job_opening_kinds);
+
+static const char *const ceiling_above[] = {"the ceiling of side a is above the top of the wall",
+                                            "the ceiling of side b is above the top of the wall"};
+static const char fastening_longer[] = "the fastening is longer than the wall";
 
 typedef job_reader reader;
 
@@ -210,14 +215,15 @@ static void read_limits(reader *r, const json_value *v, brief *out) {
 #define AT(member) offsetof(brief, member)
 static void read_wall(reader *r, const json_value *v, brief *out) {
   static const field table[] = {
-      {"length_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 1000, 0, NULL, AT(length_m)},
-      {"height_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, 30, 0, NULL, AT(height_m)},
+      {"length_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, JOB_LENGTH_MAX_M, 0, NULL, AT(length_m)},
+      {"height_m", FIELD_LENGTH, FIELD_ABOVE_MIN, 0, JOB_HEIGHT_MAX_M, 0, NULL, AT(height_m)},
       {"ceiling_a_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL,
        AT(ceiling_m[0])},
       {"ceiling_b_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL,
        AT(ceiling_m[1])},
       {"top", FIELD_CHOICE, 0, 0, 0, 0, job_top_words, AT(top)},
       {"head", FIELD_CHOICE, 0, 0, 0, 0, job_head_words, AT(head)},
+      {"boards", FIELD_CHOICE, 0, 0, 0, 0, job_boards_words, AT(boards)},
       {"corners", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(corners)},
       {"tees", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(tees)},
       {"free_ends", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(free_ends)},
@@ -225,10 +231,7 @@ static void read_wall(reader *r, const json_value *v, brief *out) {
   };
   read_object(r, v, table, COUNT(table), out);
   for (int i = 0; v && i < 2; i++)
-    if (out->ceiling_m[i] > out->height_m)
-      contradiction(r, v,
-                    i == 0 ? "the ceiling of side a is above the top of the wall"
-                           : "the ceiling of side b is above the top of the wall");
+    if (out->ceiling_m[i] > out->height_m) contradiction(r, v, ceiling_above[i]);
 }
 
 static void read_building(reader *r, const json_value *v, brief *out) {
@@ -330,7 +333,7 @@ static void read_side(reader *r, const json_value *v, const brief *b, room_side 
   };
   read_object(r, v, table, COUNT(table), out);
   if (v && out->fastening_length_m > b->length_m)
-    contradiction(r, v, "the fastening is longer than the wall");
+    contradiction(r, v, fastening_longer);
   if (v && out->fastening_length_m > 0 && out->fastening == FASTENING_NONE)
     caution(r, v, "a fastening length without a fastening has no effect");
 }
@@ -409,11 +412,26 @@ static void read_opening(reader *r, const json_value *v, brief *out) {
 }
 #undef AT
 
+static double openings_m2(const brief *b) {
+  double area = 0;
+  for (int i = 0; i < b->opening_count; i++) area += b->openings[i].area_m2;
+  return area;
+}
+
+const char *job_misfit(const brief *b) {
+  for (int i = 0; i < 2; i++) {
+    if (b->ceiling_m[i] > b->height_m) return ceiling_above[i];
+    if (b->side[i].fastening_length_m > b->length_m) return fastening_longer;
+  }
+  if (b->opening_count > 0 && openings_m2(b) >= b->length_m * b->height_m)
+    return "the openings leave nothing of the wall";
+  return NULL;
+}
+
 static void read_openings(reader *r, const json_value *v, brief *out) {
   if (!v || !is_array(r, v, BRIEF_MAX_OPENINGS)) return;
-  double area = 0;
   for (const json_value *x = v->first; x; x = x->next) read_opening(r, x, out);
-  for (int i = 0; i < out->opening_count; i++) area += out->openings[i].area_m2;
+  double area = openings_m2(out);
   if (area >= out->length_m * out->height_m)
     contradiction(r, v,
                   text_format(r->arena, "the openings (%s m2) leave nothing of the wall (%s m2)",

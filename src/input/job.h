@@ -10,6 +10,8 @@
 #include "input/catalog.h"
 #include "input/coefficients.h"
 
+/* Guards against slips: length and height of a wall in metres; corners, tees, free ends, doors. */
+enum { JOB_LENGTH_MAX_M = 1000, JOB_HEIGHT_MAX_M = 30, JOB_COUNT_MAX = 1000 };
 enum { BRIEF_MAX_TARGETS = 5, BRIEF_MAX_OPENINGS = 16, BRIEF_MAX_PATTERNS = 64 };
 
 typedef enum basis { BASIS_LAB, BASIS_FIELD } basis;
@@ -22,6 +24,8 @@ typedef enum noncombustible {
 } noncombustible;
 typedef enum wall_top { TOP_DECK, TOP_CEILING } wall_top;
 typedef enum wall_head { HEAD_RIGID, HEAD_SLIP } wall_head;
+/* How sheets are hung, for the takeoff: not said (a share is lost), upright, or lying in courses. */
+typedef enum board_layout { BOARDS_LUMP, BOARDS_VERTICAL, BOARDS_HORIZONTAL } board_layout;
 typedef enum build { BUILD_ORDINARY, BUILD_ANY } build;
 
 typedef struct target {
@@ -77,6 +81,7 @@ typedef struct brief {
   int corners, tees, free_ends, doors; /* for the takeoff of studs; -1 = not said */
   wall_top top;
   wall_head head;
+  board_layout boards;
   target targets[BRIEF_MAX_TARGETS];
   int target_count;
   limit thickness_m, mass_kg_m2, cost_per_m2;
@@ -111,6 +116,9 @@ typedef struct brief {
 
 /* The defaults: 3.0 x 2.7 m, no target, ordinary build. */
 void job_defaults(brief *b);
+/* What of the brief does not fit the size of its wall: a static sentence; NULL when all does. Of a
+ * brief as read nothing does not. */
+const char *job_misfit(const brief *b);
 /* A kind of opening that may be named without a rating. */
 typedef struct opening_kind {
   const char *kind;

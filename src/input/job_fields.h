@@ -15,8 +15,8 @@ extern const char *const job_noncombustible_words[];
 extern const char *const job_shear_words[];
 extern const char *const job_top_words[];
 extern const char *const job_head_words[];
+extern const char *const job_boards_words[];
 
-enum { JOB_COUNT_MAX = 1000 }; /* corners, tees, free ends, doors: a guard against slips */
 enum { JOB_SPAN_MIN = 60, JOB_SPAN_MAX = 2000 };
 /* The span over the deflection from "L/240" or "240"; false when it is none or out of range. */
 bool job_span(const char *words, double *span);

@@ -10,39 +10,17 @@
 /* Reading goes in two steps: the records by table, then their codes are looked up for everything
  * that a takeoff can ask for. */
 
-const char *const price_unit_names[UNIT_COUNT] = {"m2", "m", "each"};
-const char *const trade_names[TRADE_COUNT] = {"hanger", "taper", "insulator"};
-
 /* ---- records ---- */
 
-const char *const price_unit_words[] = {"m2", "ft2", "m", "ft", "each", NULL};
 static const char *const trade_words[] = {"hanger", "taper", "insulator", NULL};
-/* What the words mean, in their order. */
-static const struct {
-  price_unit unit;
-  double si; /* one of it in the SI unit of takeoff */
-} units[] = {{UNIT_M2, 1},
-             {UNIT_M2, UNITS_M2_PER_FT2},
-             {UNIT_M, 1},
-             {UNIT_M, UNITS_M_PER_FT},
-             {UNIT_EACH, 1}};
-
-bool prices_unit(const char *word, price_unit *unit, double *si) {
-  for (size_t i = 0; price_unit_words[i]; i++) {
-    if (!text_equal(word, price_unit_words[i])) continue;
-    *unit = units[i].unit;
-    *si = units[i].si;
-    return true;
-  }
-  return false;
-}
 
 /* Wide guards against slips of a digit or a unit. */
-#define MAX_MONEY    1e6
-#define MAX_HOURS    1e3
-#define MAX_WEEKS    200
-#define MAX_QUANTITY 1e7
-#define PRICE_SLACK  1e-9 /* prices this near are equal but for rounding */
+#define MAX_MONEY       1e6
+#define MAX_HOURS       1e3
+#define MAX_WEEKS       200
+#define MAX_SHEET_WIDTH 5 /* m */
+#define MAX_QUANTITY    1e7
+#define PRICE_SLACK     1e-9 /* prices this near are equal but for rounding */
 
 typedef struct raw_item {
   price_item item;
@@ -270,12 +248,11 @@ static void read_item(reader *r, const json_value *v) {
   const price_item *base = at == CATALOG_NONE ? NULL : &r->book->items[at];
   if (!read_fields(r, v, base, &raw) || twice) return;
   price_item *item = &raw.item;
-  if (base && !json_get(v, "bought_quantity"))
-    item->bought_quantity = base->bought_quantity / units[raw.unit].si;
-  settle_price(r, v, &raw, base);
-  item->unit = units[raw.unit].unit;
   item->unit_word = price_unit_words[raw.unit];
-  item->unit_si = units[raw.unit].si;
+  (void)prices_unit(item->unit_word, &item->unit, &item->unit_si);
+  if (base && !json_get(v, "bought_quantity"))
+    item->bought_quantity = base->bought_quantity / item->unit_si;
+  settle_price(r, v, &raw, base);
   item->trade = (trade)raw.trade;
   item->json = v;
   settle_figures(v, item, base);
@@ -376,19 +353,47 @@ static void read_lengths(reader *r, const json_value *v, stock_lengths *out) {
   }
 }
 
+typedef struct raw_sheets {
+  double width_m;
+  const json_value *lengths;
+} raw_sheets;
+
+static void read_sheets(reader *r, const json_value *v) {
+  static const field table[] = {
+      {"width_m", FIELD_LENGTH, REQUIRED | FIELD_ABOVE_MIN, 0, MAX_SHEET_WIDTH, 0, NULL,
+       offsetof(raw_sheets, width_m)},
+      {"lengths", FIELD_VALUE, REQUIRED, 0, 0, 0, NULL, offsetof(raw_sheets, lengths)},
+  };
+  price_book *b = r->book;
+  double before = 0;
+  if (!is_array(r, v, PRICES_MAX_WIDTHS)) return;
+  b->sheet_widths = 0;
+  for (const json_value *e = v->first; e; e = e->next) {
+    raw_sheets raw = {0, NULL};
+    sheet_stock *s = &b->sheets[b->sheet_widths];
+    if (!fields_read(r->arena, r->diags, e, table, COUNT(table), &raw)) continue;
+    must_rise(r, e, raw.width_m, before);
+    before = s->width_m = raw.width_m;
+    read_lengths(r, raw.lengths, &s->lengths);
+    b->sheet_widths++;
+  }
+}
+
 static void read_stock(reader *r, const json_value *v) {
   typedef struct raw_stock {
-    const json_value *of[FRAME_STEEL + 1];
+    const json_value *of[FRAME_STEEL + 1], *sheets;
   } raw_stock;
   static const field table[] = {
       {"wood", FIELD_VALUE, 0, 0, 0, 0, NULL, FRAME_WOOD * sizeof(const json_value *)},
       {"steel", FIELD_VALUE, 0, 0, 0, 0, NULL, FRAME_STEEL * sizeof(const json_value *)},
+      {"sheets", FIELD_VALUE, 0, 0, 0, 0, NULL, offsetof(raw_stock, sheets)},
   };
-  raw_stock raw = {{NULL, NULL}};
+  raw_stock raw = {{NULL, NULL}, NULL};
   if (!fields_read(r->arena, r->diags, v, table, COUNT(table), &raw)) return;
   for (int m = FRAME_WOOD; m <= FRAME_STEEL; m++) {
     if (raw.of[m]) read_lengths(r, raw.of[m], &r->book->stock[m]);
   }
+  if (raw.sheets) read_sheets(r, raw.sheets);
 }
 
 /* ---- what a takeoff can ask for ---- */
@@ -412,6 +417,7 @@ static const struct {
     [WORK_FIREBLOCK_WOOD] = {"fireblock-2x", UNIT_M},
     [WORK_FIREBLOCK_BATT] = {"fireblock-batt", UNIT_M},
     [WORK_BRIDGING] = {"bridging", UNIT_M},
+    [WORK_CROSS_BRACE] = {"cross-brace", UNIT_EACH},
 };
 
 static const char *const batt_suffixes[BATT_WIDTHS] = {"15in", "23in", "16in", "24in"};
@@ -421,13 +427,6 @@ int prices_item(const price_book *b, const char *code) {
     if (text_equal(b->items[i].code, code)) return (int)i;
   }
   return CATALOG_NONE;
-}
-
-batt_width prices_batt_width(frame_material m, double spacing_m) {
-  /* Between the usual 16 and 24 in: 20 in. Bays at 12 in are cut from the narrow stock. */
-  bool wide = spacing_m > 20 * UNITS_M_PER_IN;
-  if (m == FRAME_WOOD) return wide ? BATT_23IN : BATT_15IN;
-  return wide ? BATT_24IN : BATT_16IN;
 }
 
 static const char *const unit_kinds[UNIT_COUNT] = {"area: m2 or ft2", "length: m or ft",

@@ -67,6 +67,7 @@ typedef enum work_item {
   WORK_FIREBLOCK_WOOD,
   WORK_FIREBLOCK_BATT,
   WORK_BRIDGING,
+  WORK_CROSS_BRACE,
   WORK_COUNT
 } work_item;
 
@@ -76,6 +77,7 @@ typedef enum batt_width { BATT_15IN, BATT_23IN, BATT_16IN, BATT_24IN, BATT_WIDTH
 enum {
   PRICES_MAX_HEIGHTS = 8,
   PRICES_MAX_STOCK = 24,
+  PRICES_MAX_WIDTHS = 4,
   PRICES_MAX_ITEMS = 4000,
   PRICES_MAX_BREAKS = 8,
   PRICES_MAX_BASES = 8 /* books below one another */
@@ -85,6 +87,12 @@ typedef struct stock_lengths {
   double metres[PRICES_MAX_STOCK]; /* rising */
   int count;                       /* 0 = studs are bought to length */
 } stock_lengths;
+
+/* Sheets of gypsum board of one width. */
+typedef struct sheet_stock {
+  double width_m;
+  stock_lengths lengths;
+} sheet_stock;
 
 typedef struct price_book {
   const json_value *json;        /* the file it was read from */
@@ -100,6 +108,8 @@ typedef struct price_book {
   double tall_stud_m,
       tall_stud_hours_per_m;            /* hours added to a stud for each metre above a length */
   stock_lengths stock[FRAME_STEEL + 1]; /* lengths studs are sold in, per frame_material */
+  sheet_stock sheets[PRICES_MAX_WIDTHS]; /* sheets that gypsum boards are sold in; width rising */
+  int sheet_widths;                      /* 0 = boards come to measure */
   price_item *items;
   size_t count;
   /* Items of the catalog's records, in its order. The book serves the catalog it was read with, and

@@ -25,6 +25,7 @@ static void put_size(markup_json *j, const brief *b) {
   put_length(j, "ceiling_b_m", b->ceiling_m[SIDE_B]);
   markup_json_string(j, "top", job_top_words[b->top]);
   markup_json_string(j, "head", job_head_words[b->head]);
+  if (b->boards != BOARDS_LUMP) markup_json_string(j, "boards", job_boards_words[b->boards]);
   put_count(j, "corners", b->corners);
   put_count(j, "tees", b->tees);
   put_count(j, "free_ends", b->free_ends);

@@ -77,6 +77,8 @@ static void add_wall(field_list *l) {
     if (b->ceiling_m[s] > 0) add(l, ceilings[s], height(l, b->ceiling_m[s]), false);
   add(l, "Top of the wall", b->top == TOP_CEILING ? "at the ceiling" : "at the deck",
       b->top == l->usual.top);
+  if (b->boards != BOARDS_LUMP)
+    add(l, "Boards", b->boards == BOARDS_VERTICAL ? "upright" : "in lying courses", false);
   add_counts(l);
   add(l, "Head", b->head == HEAD_SLIP ? "slip" : "rigid", b->head == l->usual.head);
 }

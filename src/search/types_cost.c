@@ -73,7 +73,7 @@ static bool same_counts(const brief *x, const brief *y) {
 /* Everything that a takeoff reads. */
 static bool same_takeoff(const brief *x, const brief *y) {
   return equal(x->length_m, y->length_m) && equal(x->height_m, y->height_m) && x->top == y->top &&
-         x->head == y->head && x->loadbearing == y->loadbearing && x->fire_min == y->fire_min &&
+         x->head == y->head && x->boards == y->boards && x->loadbearing == y->loadbearing && x->fire_min == y->fire_min &&
          x->boxes_given == y->boxes_given && equal(x->boxes_per_10m, y->boxes_per_10m) &&
          equal(x->floor_area_value_per_m2, y->floor_area_value_per_m2) && same_openings(x, y) &&
          same_counts(x, y) && same_sides(x, y);
@@ -233,15 +233,17 @@ static bool priced(const types_cost *t, const wall *w) {
   return true;
 }
 
-/* Of the framing fills and mounts see rows, material and spacing: the first frame that has them
- * stands for all, if what it takes itself has prices. */
+/* Of the framing fills and mounts see rows, layout (a mount on a single row brings bridging),
+ * material and spacing: the first frame that has them stands for all, if what it takes itself has
+ * prices. */
 static int find_like(const types_cost *t, const wall *w) {
   const catalog *c = t->x->catalog;
   const frame *f = &c->frames[w->frame];
   wall other = bare(w);
   for (other.frame = 0; other.frame < w->frame; other.frame++) {
     const frame *o = &c->frames[other.frame];
-    if (o->material == f->material && o->rows == f->rows && priced(t, &other)) break;
+    bool like = o->material == f->material && o->rows == f->rows && o->layout == f->layout;
+    if (like && priced(t, &other)) break;
   }
   return other.frame;
 }

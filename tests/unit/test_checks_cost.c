@@ -188,6 +188,16 @@ static void plain(brief *b) {
 static void bearing(brief *b) {
   b->loadbearing = true;
 }
+static void to_ceiling(brief *b) {
+  b->top = TOP_CEILING;
+  b->ceiling_m[0] = b->ceiling_m[1] = 9 * UNITS_M_PER_FT - 0.1;
+}
+static void upright(brief *b) {
+  b->boards = BOARDS_VERTICAL;
+}
+static void courses(brief *b) {
+  b->boards = BOARDS_HORIZONTAL;
+}
 static void slip(brief *b) {
   b->head = HEAD_SLIP;
 }
@@ -256,13 +266,6 @@ static void opening_beside_counts(brief *b) {
 static void corridor_wall(brief *b) {
   counted(b, 1, 3, 0, 2);
 }
-static void double_wall(brief *b) {
-  counted(b, 2, 1, 0, 1);
-}
-static void tall_wall(brief *b) {
-  b->head = HEAD_SLIP;
-  counted(b, 1, 0, 1, 1);
-}
 
 #define STEEL_LINE   "typex-16 | steel-92-18@610, glass-89 | typex-16"
 #define BEARING_LINE "typex-16 | steel-92-33@406, glass-89 | typex-16"
@@ -271,6 +274,9 @@ static void tall_wall(brief *b) {
 #define STAG_LINE    "typex-16 | wood-89-stag-140@406, glass-89 | typex-16"
 #define RC_LINE      "typex-16 | rc@610 | wood-89@406, glass-89 | typex-16"
 #define CLIP_LINE    "typex-16 | clip@610 | wood-89@406, glass-89 | typex-16"
+#define STEEL_RC     "typex-16 | rc@610 | steel-92-18@610, glass-89 | typex-16"
+#define STEEL_DOUBLE "typex-16 | steel-92-18-double@610, glass-89, glass-89 | typex-16"
+#define STEEL_STAG   "typex-16 | steel-64-18-stag-102@610, glass-65 | typex-16"
 
 /* Quantities in the unit of the item: ft, ft2 or each. Sources: CP = common practice, no source. */
 static const struct rule_row {
@@ -298,6 +304,41 @@ static const struct rule_row {
     {"plates, load-bearing", "CP: 3 L", WOOD_LINE, 24, 8, bearing, "plate-89", 3 * 24 * 1.05},
     {"bridging of bearing steel", "CP: rows 48 in apart or closer", BEARING_LINE, 24, 9, bearing,
      "bridging", 2 * 24 * 1.04},
+    /* bare steel: ceil(9/4) - 1 = 2 rows, of each row of studs, + 4 % */
+    {"boards hold both flanges", "CP: no bridging", STEEL_LINE, 24, 9, plain, "bridging", 0},
+    {"a mounted side leaves them bare", "CP: bridging at 48 in or closer", STEEL_RC, 24, 9, plain,
+     "bridging", 2 * 24 * 1.04},
+    {"boards that stop at the ceiling", "CP: bridging", STEEL_LINE, 24, 12, to_ceiling, "bridging",
+     2 * 24 * 1.04},
+    {"staggered studs", "CP: bridging, each face's", STEEL_STAG, 24, 9, plain, "bridging",
+     2 * 2 * 24 * 1.04},
+    {"two rows", "CP: bridging, each row's", STEEL_DOUBLE, 24, 9, plain, "bridging",
+     2 * 2 * 24 * 1.04},
+    {"two rows at 8 ft", "CP: one row each", STEEL_DOUBLE, 24, 8, plain, "bridging", 2 * 24 * 1.04},
+    {"wood takes none", "CP: bare or not", RC_LINE, 24, 9, plain, "bridging", 0},
+    {"load-bearing and mounted: once", "CP",
+     "typex-16 | rc@610 | steel-92-33@406, glass-89 | typex-16", 24, 9, bearing, "bridging",
+     2 * 24 * 1.04},
+    {"two rows of steel are braced", "CP: every 48 in of a row of bridging", STEEL_DOUBLE, 25, 9,
+     plain, "cross-brace", 2 * 7 * 1.05},
+    {"two rows of wood are not tied", "IBC 718.2.1 accepts batts, from memory", DOUBLE_LINE, 25, 9,
+     plain, "cross-brace", 0},
+    /* boards laid out: sheets 48 in x 8 9 10 12 14 ft, 54 in x 12 ft; 5 % handling */
+    {"upright sheets of 9 ft", "CP", STEEL_LINE, 24, 9, upright, "typex-16", 2 * 216 * 1.05},
+    {"upright sheets of 12 ft for 10-1/2 ft", "CP: next length", STEEL_LINE, 24, 10.5, upright,
+     "typex-16", 2 * 24 * 12 * 1.05},
+    {"upright, higher than any sheet", "CP: 14 ft and 8 ft for 16 ft", STEEL_LINE, 24, 16, upright,
+     "typex-16", 2 * 24 * 22 * 1.05},
+    {"upright, two of the longest", "CP: 14 ft and 14 ft", STEEL_LINE, 24, 28, upright, "typex-16",
+     2 * 24 * 28 * 1.05},
+    {"two courses of 54 in for 9 ft", "CP: ceil(H/width)", STEEL_LINE, 24, 9, courses, "typex-16",
+     2 * 216 * 1.05},
+    {"three courses of 48 in for 10 ft", "CP: 12 ft, not 13-1/2", STEEL_LINE, 24, 10, courses,
+     "typex-16", 2 * 24 * 12 * 1.05},
+    {"wood panels are not laid out", "sheets of their own: the item's waste",
+     "typex-16 + osb-11 | wood-89@406 | typex-16", 24, 9, courses, "osb-11", 216 * 1.1},
+    {"the board over them is", "CP", "typex-16 + osb-11 | wood-89@406 | typex-16", 24, 10, upright,
+     "typex-16", 2 * 240 * 1.05},
     {"door: two jambs and a header", "CP", STEEL_LINE, 24, 9, door, "steel-92-18",
      (13 * 1.1 + 3) * 9},
     /* counted: n + 2 a corner + 1 a tee + 1 a free end + header and two jambs a door */
@@ -323,20 +364,11 @@ static const struct rule_row {
      door_among_openings, "steel-92-30", 4 * 9},
     {"an opening beside other counts", "CP: framed as a door", STEEL_LINE, 24, 9,
      opening_beside_counts, "steel-92-30", 2 * 9},
-    /* 30 ft of corridor at 16 in: ceil(360/16) + 1 = 24, a corner 2, tees 3, two doors 2 + 4 */
-    {"by hand: 30 ft corridor wall with two doors", "CP", WOOD_LINE, 30, 9, corridor_wall,
-     "wood-89", 35 * 104.625 / 12},
-    {"by hand: the same in 25 gauge at 16 in", "CP", "typex-16 | steel-92-18@406 | typex-16", 30, 9,
+    /* 30 ft of corridor at 16 in: ceil(360/16) + 1 = 24, a corner 2, tees 3, headers 2, jambs 4 */
+    {"by hand: corridor wall in 25 gauge at 16 in", "CP", "typex-16 | steel-92-18@406 | typex-16", 30, 9,
      corridor_wall, "steel-92-18", 31 * 9},
     {"by hand: its jambs", "CP", "typex-16 | steel-92-18@406 | typex-16", 30, 9, corridor_wall,
      "steel-92-30", 4 * 9},
-    /* a row of 12 ft at 16 in: 9 + 1, corners 4, a tee 1, a door 3; two rows */
-    {"by hand: 9 ft double wood wall", "CP", DOUBLE_LINE, 12, 9, double_wall, "wood-89",
-     2 * 18 * 104.625 / 12},
-    /* 20 ft at 16 in: 15 + 1, a corner 2, a free end 1, a door 3, of 14 ft */
-    {"by hand: 14 ft steel wall with a slip head", "CP",
-     "typex-16 | steel-152-33@406, glass-140 | typex-16", 20, 14, tall_wall, "steel-152-33",
-     22 * 14},
     {"door: board is not deducted", "CP: only above 32 ft2", STEEL_LINE, 24, 9, door, "typex-16",
      2 * 216 * 1.1},
     {"door: batts are deducted", "CP", STEEL_LINE, 24, 9, door, "glass-89-24in", (216 - 21) * 1.03},
@@ -458,6 +490,8 @@ static const char *const part_lines[] = {
     RC_LINE,
     CLIP_LINE,
     BEARING_LINE,
+    STEEL_RC,
+    STEEL_STAG,
     "moist-16 + typex-16 | rc@406 | on osb-11 | wood-140@610, stone-140 | abuse-16 + mlv-5",
     "damp-16 | wood-89-double@406~50, cell-89, inner-a osb-11 | cement-13 + typex-16",
     "gyp-13 + damp-layer + gyp-13 | steel-64-18-double@305, glass-65, stone-65 | 3*gyp-13",
@@ -485,6 +519,8 @@ static brief seeded_brief(uint64_t *s) {
     b.side[i].fastening = (fastening)(next_random(s) % 3);
     b.ceiling_m[i] = next_random(s) % 2 == 0 ? 0 : 2.1;
   }
+  b.top = next_random(s) % 4 == 0 ? TOP_CEILING : TOP_DECK;
+  b.boards = (board_layout)(next_random(s) % 3);
   b.opening_count = (int)(next_random(s) % 2);
   b.openings[0] = (opening){.kind = "door", .area_m2 = 1.9};
   if (next_random(s) % 2) counted(&b, (int)(next_random(s) % 3), (int)(next_random(s) % 3), -1, 1);
@@ -585,10 +621,9 @@ END_TEST
 START_TEST(stops_at_ceiling) {
   brief b = brief_of(24, 12), low = brief_of(24, 9);
   takeoff t, u;
-  b.top = TOP_CEILING;
-  b.ceiling_m[0] = b.ceiling_m[1] = 9 * UNITS_M_PER_FT - 0.1;
-  ck_assert_int_eq(cost_of(&b, STEEL_LINE, &t).total_cents,
-                   cost_of(&low, STEEL_LINE, &u).total_cents);
+  to_ceiling(&b);
+  ck_assert_int_eq(cost_of(&b, WOOD_LINE, &t).total_cents,
+                   cost_of(&low, WOOD_LINE, &u).total_cents);
 }
 END_TEST
 

@@ -60,6 +60,8 @@ static const price_book *plain_book(void) {
       "\"price\":0,\"trade\":\"hanger\"},"
       "{\"code\":\"channel\",\"name\":\"c\",\"section\":\"09 22 16\",\"unit\":\"ft\","
       "\"price\":1,\"trade\":\"hanger\"},"
+      "{\"code\":\"bridging\",\"name\":\"r\",\"section\":\"09 22 16\",\"unit\":\"ft\","
+      "\"price\":0,\"trade\":\"hanger\"},"
       "{\"code\":\"glass-89-16in\",\"name\":\"g\",\"section\":\"09 81 16\",\"unit\":\"ft2\","
       "\"price\":1,\"trade\":\"insulator\"},"
       "{\"code\":\"glass-89-24in\",\"name\":\"g\",\"section\":\"09 81 16\",\"unit\":\"ft2\","

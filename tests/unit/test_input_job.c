@@ -49,6 +49,7 @@ START_TEST(defaults) {
   ck_assert_double_eq(b.height_m, 2.7);
   ck_assert_double_eq(b.ceiling_m[0], 0);
   ck_assert(b.corners == -1 && b.tees == -1 && b.free_ends == -1 && b.doors == -1);
+  ck_assert(b.boards == BOARDS_LUMP);
   ck_assert(b.top == TOP_DECK && b.head == HEAD_RIGID && b.build == BUILD_ORDINARY);
   ck_assert_int_eq(b.target_count, 1);
   ck_assert_int_eq(b.targets[0].metric, METRIC_STC);
@@ -79,7 +80,7 @@ static const char everything[] =
     "\"building\": {\"storeys\": 4, \"sprinklered\": true},"
     "\"wall\": {\"length_ft\": 30, \"height_m\": \"9ft-6in\", \"ceiling_a_mm\": 2400, "
     "\"ceiling_b_in\": 96, \"top\": \"ceiling\","
-    "          \"head\": \"slip\", \"corners\": 1, \"tees\": 2, \"free_ends\": 0, \"doors\": 3},"
+    "          \"head\": \"slip\", \"boards\": \"horizontal\", \"corners\": 1, \"tees\": 2, \"free_ends\": 0, \"doors\": 3},"
     "\"targets\": [{\"metric\": \"Rw+Ctr\", \"value\": 52.5, \"basis\": \"field\", \"confidence\": "
     "0.9, \"evidence\": \"published\","
     "               \"scope\": \"composite\", \"margin\": 2}, {\"metric\": \"OITC\", \"value\": "
@@ -116,7 +117,7 @@ START_TEST(every_field_is_read) {
   ck_assert(b.corners == 1 && b.tees == 2 && b.free_ends == 0 && b.doors == 3);
   ck_assert(near(b.length_m, 9.144) && near(b.height_m, 2.8956) && near(b.ceiling_m[0], 2.4) &&
             near(b.ceiling_m[1], 2.4384));
-  ck_assert(b.top == TOP_CEILING && b.head == HEAD_SLIP);
+  ck_assert(b.top == TOP_CEILING && b.head == HEAD_SLIP && b.boards == BOARDS_HORIZONTAL);
   ck_assert(near(b.thickness_m.min, 0.1) && near(b.thickness_m.max, 0.15875));
   ck_assert(near(b.mass_kg_m2.max, 12 * 4.882427636) && !b.mass_kg_m2.has_min);
   ck_assert(near(b.cost_per_m2.max, 15 / 0.09290304));

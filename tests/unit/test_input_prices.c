@@ -113,7 +113,9 @@ START_TEST(labour_and_stock) {
       MORE("\"heights\":[{\"above_ft\":10,\"factor\":1.15},{\"above_m\":3.6,\"factor\":1.25}],"
            "\"short_wall\":{\"below_ft\":4,\"factor\":1.3},\"tall_studs\":{\"above_ft\":10,\"hours_"
            "per_ft\":0.008},"
-           "\"stock\":{\"wood\":[\"92-5/8in\",\"12ft\"],\"steel\":[\"2.44m\"]}"));
+           "\"stock\":{\"wood\":[\"92-5/8in\",\"12ft\"],\"steel\":[\"2.44m\"],"
+           "\"sheets\":[{\"width_in\":48,\"lengths\":[\"8ft\",\"9ft\"]},{\"width_mm\":1372,"
+           "\"lengths\":[\"12ft\"]}]}"));
   ck_assert_ptr_nonnull(b);
   ck_assert_int_eq(b->height_steps, 2);
   near("height", b->height_step_m[0], 10 * UNITS_M_PER_FT);
@@ -123,6 +125,11 @@ START_TEST(labour_and_stock) {
   ck_assert_int_eq(b->stock[FRAME_WOOD].count, 2);
   near("precut", b->stock[FRAME_WOOD].metres[0], 92.625 * UNITS_M_PER_IN);
   near("steel", b->stock[FRAME_STEEL].metres[0], 2.44);
+  ck_assert_int_eq(b->sheet_widths, 2);
+  near("sheet", b->sheets[0].width_m, 4 * UNITS_M_PER_FT);
+  ck_assert_int_eq(b->sheets[0].lengths.count, 2);
+  near("its length", b->sheets[0].lengths.metres[1], 9 * UNITS_M_PER_FT);
+  near("wide sheet", b->sheets[1].width_m, 1.372);
 }
 END_TEST
 
@@ -207,6 +214,14 @@ static const struct refusal {
      "$.stock.wood[0]"},
     {"stock lengths that fall", MORE("\"stock\":{\"wood\":[\"9ft\",\"8ft\"]}"), ERROR_FIELD_RANGE,
      "before", "$.stock.wood[1]"},
+    {"sheets without a width", MORE("\"stock\":{\"sheets\":[{\"lengths\":[\"8ft\"]}]}"),
+     ERROR_FIELD_MISSING, "width", "$.stock.sheets[0]"},
+    {"sheets of no length", MORE("\"stock\":{\"sheets\":[{\"width_in\":48,\"lengths\":[]}]}"),
+     ERROR_FIELD_RANGE, "", "$.stock.sheets[0].lengths"},
+    {"widths that fall",
+     MORE("\"stock\":{\"sheets\":[{\"width_in\":54,\"lengths\":[\"12ft\"]},{\"width_in\":48,"
+          "\"lengths\":[\"8ft\"]}]}"),
+     ERROR_FIELD_RANGE, "before", "$.stock.sheets[1]"},
     {"stock of what", MORE("\"stock\":{\"brick\":[\"9ft\"]}"), ERROR_FIELD_UNKNOWN, "brick",
      "$.stock.brick"},
     {"tall studs twice said",
