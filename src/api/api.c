@@ -10,6 +10,7 @@
 
 void septum_options_init(septum_options *options) {
   memset(options, 0, sizeof *options);
+  options->corners = options->tees = options->doors = -1;
 }
 
 const char *septum_version(void) {
@@ -80,7 +81,9 @@ static status rate_stage(call *k, void *given) {
   answer_job *job = given;
   if (!call_can_write(k, &job->options)) return k->diags.worst;
   request *prepared = arena_alloc(k->memory, sizeof *prepared);
-  bool ready = request_prepare(k, job->handle, &job->options, job->options.brief, false, prepared);
+  bool ready =
+      request_prepare(k, job->handle, &job->options, job->options.brief, false, prepared) &&
+      request_resize(k, &job->options, &prepared->brief);
   wall w = wall_empty();
   const char *name = NULL;
   if (!request_wall(k, job->handle->catalog, job->operand, &w, &name) || !ready)
@@ -132,7 +135,8 @@ static status pick_stage(call *k, void *given) {
   request *prepared = arena_alloc(k->memory, sizeof *prepared);
   explanation *why = arena_alloc(k->memory, sizeof *why);
   pick_choice *choice = arena_alloc(k->memory, sizeof *choice);
-  if (!request_prepare(k, job->handle, &job->options, job->operand, true, prepared))
+  if (!request_prepare(k, job->handle, &job->options, job->operand, true, prepared) ||
+      !request_resize(k, &job->options, &prepared->brief))
     return k->diags.worst;
   cloud *candidates = NULL;
   if (!choose(k, job, prepared, choice, why, &candidates))
@@ -153,6 +157,7 @@ static status pick_stage(call *k, void *given) {
 static septum_status run(septum *handle, const char *operand, const septum_options *options,
                          call_stage stage, septum_answer **out) {
   answer_job job = {.handle = handle, .operand = operand};
+  septum_options_init(&job.options);
   if (options != NULL) job.options = *options;
   bool made = false;
   septum_status answer = call_run(handle->listener, handle->user, stage, &job, &made);

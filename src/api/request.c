@@ -123,6 +123,45 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
   return false;
 }
 
+static bool resize(call *k, const char *what, const char *words, int most_m, double *metres) {
+  const char *expected = NULL;
+  if (words == NULL) return true;
+  double found = 0;
+  if (!units_parse_length(words, 0, &found, &expected)) {
+    diag_error(&k->diags, ERROR_USAGE, "the %s: expected %s, found \"%s\"", what, expected, words);
+    return false;
+  }
+  if (found > 0 && found <= most_m) {
+    *metres = found;
+    return true;
+  }
+  diag_error(&k->diags, ERROR_USAGE, "the %s: expected above 0, to %d m, found \"%s\"", what, most_m,
+             words);
+  return false;
+}
+
+static bool recount(call *k, const char *what, int given, int *count) {
+  if (given == -1) return true;
+  if (given >= 0 && given <= JOB_COUNT_MAX) {
+    *count = given;
+    return true;
+  }
+  diag_error(&k->diags, ERROR_USAGE, "the %s: expected 0 to %d, found %d", what, JOB_COUNT_MAX,
+             given);
+  return false;
+}
+
+bool request_resize(call *k, const septum_options *options, brief *b) {
+  bool sound = resize(k, "length", options->length, JOB_LENGTH_MAX_M, &b->length_m);
+  sound = resize(k, "height", options->height, JOB_HEIGHT_MAX_M, &b->height_m) && sound;
+  sound = recount(k, "corners", options->corners, &b->corners) && sound;
+  sound = recount(k, "tees", options->tees, &b->tees) && sound;
+  sound = recount(k, "doors", options->doors, &b->doors) && sound;
+  const char *misfit = sound ? job_misfit(b) : NULL;
+  if (misfit != NULL) diag_error(&k->diags, ERROR_USAGE, "a wall of this size: %s", misfit);
+  return sound && misfit == NULL;
+}
+
 /* A wall line holds bars; what holds none is a path when such a file is there or it looks like one.
  */
 static bool is_path(const char *words) {

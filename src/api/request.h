@@ -21,6 +21,8 @@ bool request_prepare(call *k, const septum *handle, const septum_options *option
 /* The same for a brief that is there already, in out->brief; `asked`: somebody gave it. */
 bool request_settle(call *k, const septum *handle, const septum_options *options, bool asked,
                     request *out);
+/* Length, height and counts that the options give in place of the brief's. False after messages. */
+bool request_resize(call *k, const septum_options *options, brief *b);
 /* The wall of a wall line or wall/1 file, checked: it can be built. False after messages. */
 bool request_wall(call *k, const catalog *c, const char *words, wall *out, const char **name);
 

@@ -187,25 +187,23 @@ static bool read_seconds(const char *value, double *seconds) {
   return false;
 }
 
-static bool read_up_to(const char *name, const char *value, int most, int *count) {
+static bool read_number(const char *name, const char *value, int least, int most, int *number) {
   char *end = NULL;
   long n = strtol(value, &end, 10);
-  if (end != value && *end == '\0' && n >= 1 && n <= most) {
-    *count = (int)n;
+  if (end != value && *end == '\0' && n >= least && n <= most) {
+    *number = (int)n;
     return true;
   }
-  fprintf(stderr, "septum: --%s wants a number from 1 to %d, found %s\n", name, most, value);
+  fprintf(stderr, "septum: --%s wants a number from %d to %d, found %s\n", name, least, most, value);
   return false;
 }
 
 static bool read_whole(const char *name, const char *value, int *count) {
-  return read_up_to(name, value, 100, count);
+  return read_number(name, value, 1, 100, count);
 }
 
 static bool read_count(const char *name, const char *value, int *count) {
-  if (strcmp(value, "0") != 0) return read_up_to(name, value, 1000, count);
-  *count = 0;
-  return true;
+  return read_number(name, value, 0, 1000, count);
 }
 
 static bool read_money(const char *name, const char *value, double *money) {
@@ -253,7 +251,7 @@ static bool apply(option_id id, const char *value, cli_line *out) {
     out->options.design = value;
     return true;
   case OPTION_FIRE:
-    return read_up_to("fire", value, 480, &out->options.promised_fire);
+    return read_number("fire", value, 1, 480, &out->options.promised_fire);
   case OPTION_KEEP:
     out->options.keep = value;
     return true;

@@ -56,6 +56,60 @@ START_TEST(answers_outlive_their_handle) {
 }
 END_TEST
 
+/* Sizes and counts beside the brief: studs of 24 ft at 24 in are 13; a corner 2, a tee 1, a door 1
+ * and two jambs of 20 gauge, 9 ft each. */
+START_TEST(sizes_beside_the_brief) {
+  heard h = {0};
+  septum *handle = open_usual(&h);
+  septum_options options = usual();
+  septum_answer *answer = NULL;
+  options.length = "24ft";
+  options.height = "9'-0\"";
+  options.corners = options.tees = options.doors = 1;
+  options.units = SEPTUM_UNITS_US;
+  const char *wall = "typex-16 | steel-92-18@610 | typex-16";
+  ck_assert_int_eq(septum_rate(handle, wall, &options, &answer), SEPTUM_OK);
+  const char *csv = septum_answer_csv(answer);
+  ck_assert_ptr_nonnull(strstr(csv, "3-5/8 in 18 mil (25 ga) stud,material,153,ft"));
+  ck_assert_ptr_nonnull(strstr(csv, "3-5/8 in 30 mil (20 ga drywall) stud,material,18,ft"));
+  ck_assert_ptr_nonnull(strstr(septum_answer_text(answer), "24 ft 0 in x 9 ft 0 in"));
+  septum_answer_free(answer);
+  septum_close(handle);
+  ck_assert_int_eq(h.errors, 0);
+}
+END_TEST
+
+static const struct size_row {
+  const char *name, *brief, *length, *height;
+  int doors;
+  const char *told;
+} size_rows[] = {
+    {"a length without unit", NULL, "30", NULL, -1, "the length: expected a length"},
+    {"no length", NULL, "0ft", NULL, -1, "above 0, to 1000 m"},
+    {"a tower", NULL, NULL, "31m", -1, "above 0, to 30 m"},
+    {"fewer than no doors", NULL, NULL, NULL, -2, "the doors: expected 0 to 1000, found -2"},
+    {"many doors", NULL, NULL, NULL, 1001, "found 1001"},
+    {"openings larger than the wall", TEST_ROOT "/docs/examples/corridor.json", "1ft", "2ft", -1, "leave nothing of the wall"},
+};
+
+START_TEST(bad_sizes) {
+  const struct size_row *row = &size_rows[_i];
+  heard h = {0};
+  septum *handle = open_usual(&h);
+  septum_options options = usual();
+  septum_answer *answer = NULL;
+  options.brief = row->brief;
+  options.length = row->length;
+  options.height = row->height;
+  options.doors = row->doors;
+  ck_assert_int_eq(septum_rate(handle, WALL, &options, &answer), SEPTUM_USAGE);
+  ck_assert_ptr_null(answer);
+  ck_assert_msg(strstr(h.last, row->told) != NULL, "%s: %s", row->name, h.last);
+  ck_assert_int_eq(h.last_code, 101);
+  septum_close(handle);
+}
+END_TEST
+
 static const struct bad_row {
   const char *name, *wall;
   septum_status status;
@@ -177,6 +231,8 @@ int main(void) {
   tcase_set_timeout(cases, 300);
   tcase_add_test(cases, answers_outlive_their_handle);
   tcase_add_loop_test(cases, bad_walls, 0, (int)(sizeof bad_rows / sizeof bad_rows[0]));
+  tcase_add_test(cases, sizes_beside_the_brief);
+  tcase_add_loop_test(cases, bad_sizes, 0, (int)(sizeof size_rows / sizeof size_rows[0]));
   tcase_add_test(cases, a_faulty_folder_opens_nothing);
   tcase_add_test(cases, pick_answers_as_text_and_json);
   tcase_add_test(cases, null_is_fine);

@@ -1,0 +1,1 @@
+$SEPTUM pick "$EXAMPLES/corridor.json" --doors 1001

@@ -1,0 +1,1 @@
+$SEPTUM pick "$EXAMPLES/corridor.json" --length 1ft --height 2ft

@@ -1,0 +1,1 @@
+$SEPTUM ladder "$EXAMPLES/corridor.json" --doors 1

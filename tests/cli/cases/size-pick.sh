@@ -1,0 +1,1 @@
+$SEPTUM pick "$EXAMPLES/corridor.json" --length 30ft --doors 2 --units us
