@@ -77,6 +77,13 @@ static status hand_out(call *k, answer_job *job, const sheet_book *book, const c
   return job->made != NULL ? when_done : k->diags.worst;
 }
 
+static void compare_fastening(call *k, request *r, const assessment *given) {
+  fastening_choice *ways = arena_array(k->memory, 2, sizeof *ways);
+  r->report.fastening = ways;
+  r->report.fastening_count =
+      r->report.asked ? fastening_choices(k->memory, &r->context, given, ways) : 0;
+}
+
 static status rate_stage(call *k, void *given) {
   answer_job *job = given;
   if (!call_can_write(k, &job->options)) return k->diags.worst;
@@ -95,6 +102,7 @@ static status rate_stage(call *k, void *given) {
     diag_add(&k->diags, DIAG_WARNING, ERROR_PRICE_MISSING,
              (diag_place){.file = prepared->prices->file},
              "no price for \"%s\": the wall is not costed", x->takeoff.missing_code);
+  compare_fastening(k, prepared, x);
   call_texts t;
   call_texts_init(k, &t);
   report_rate_text(&prepared->report, x, &t.words);
@@ -141,6 +149,7 @@ static status pick_stage(call *k, void *given) {
   cloud *candidates = NULL;
   if (!choose(k, job, prepared, choice, why, &candidates))
     return k->diags.worst == STATUS_OK ? STATUS_INTERNAL : k->diags.worst;
+  compare_fastening(k, prepared, why->chosen);
   call_texts t;
   call_texts_init(k, &t);
   report_pick_text(&prepared->report, why, choice, &t.words);

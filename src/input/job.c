@@ -222,6 +222,8 @@ static void read_wall(reader *r, const json_value *v, brief *out) {
       {"ceiling_b_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 30, 0, NULL,
        AT(ceiling_m[1])},
       {"top", FIELD_CHOICE, 0, 0, 0, 0, job_top_words, AT(top)},
+      {"ceiling_class", FIELD_NUMBER, FIELD_NULL_OK, 5, 70, 0, NULL, AT(ceiling_class)},
+      {"ceiling_batts", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(ceiling_batts)},
       {"head", FIELD_CHOICE, 0, 0, 0, 0, job_head_words, AT(head)},
       {"boards", FIELD_CHOICE, 0, 0, 0, 0, job_boards_words, AT(boards)},
       {"corners", FIELD_INTEGER, 0, 0, JOB_COUNT_MAX, 0, NULL, AT(corners)},
@@ -232,6 +234,8 @@ static void read_wall(reader *r, const json_value *v, brief *out) {
   read_object(r, v, table, COUNT(table), out);
   for (int i = 0; v && i < 2; i++)
     if (out->ceiling_m[i] > out->height_m) contradiction(r, v, ceiling_above[i]);
+  if (v && out->top != TOP_CEILING && (out->ceiling_class > 0 || out->ceiling_batts))
+    caution(r, v, "ceiling_class and ceiling_batts count only where top is \"ceiling\"");
 }
 
 static void read_building(reader *r, const json_value *v, brief *out) {
@@ -327,6 +331,8 @@ static void read_side(reader *r, const json_value *v, const brief *b, room_side 
       {"room", FIELD_STRING, 0, 0, 0, 0, NULL, AT(room)},
       {"fastening", FIELD_CHOICE, 0, 0, 0, 0, job_fastening_words, AT(fastening)},
       {"fastening_length_m", FIELD_LENGTH, 0, 0, 1000, 0, NULL, AT(fastening_length_m)},
+      {"room_depth_m", FIELD_LENGTH, FIELD_ABOVE_MIN | FIELD_NULL_OK, 0, 300, 0, NULL,
+       AT(room_depth_m)},
       {"wet", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(wet)},
       {"abuse", FIELD_BOOL, 0, 0, 0, 0, NULL, AT(abuse)},
       {"finish_level", FIELD_INTEGER, 0, 0, MAX_FINISH_LEVEL, 0, NULL, AT(finish_level)},
@@ -556,12 +562,22 @@ static void read_lists(reader *r, const json_value *root, const job_raw *raw, br
   if (out->prices) out->prices = file_beside(r->arena, root->file, out->prices);
 }
 
+bool job_needs_deck(const brief *b) {
+  for (int i = 0; i < b->target_count; i++)
+    if (b->targets[i].value + b->targets[i].margin >= JOB_DECK_FROM) return true;
+  return b->fire_min > 0;
+}
+
 /* What only the whole brief shows. */
 static void check_whole(reader *r, const json_value *root, const brief *b) {
-  const json_value *fire = json_get(root, "fire_min");
+  const json_value *fire = json_get(root, "fire_min"), *wall = json_get(root, "wall");
   if (b->fire_min > 0 && b->code == CODE_NONE && b->listing_count == 0)
     caution(r, fire,
             "without a code and without listings no wall can be shown to have a fire rating");
+  if (b->top == TOP_CEILING && job_needs_deck(b))
+    caution(r, wall ? wall : root,
+            "fire-rated walls and walls for targets of 45 or more have to run to the deck; this one "
+            "stops at the ceiling");
 }
 
 void job_take(job_reader *r, const json_value *root, const job_raw *raw, bool target_required,

@@ -48,6 +48,7 @@ typedef struct room_side {
   const char *room;
   fastening fastening;
   double fastening_length_m; /* 0 = the whole side */
+  double room_depth_m;       /* away from the wall; 0 = not said */
   bool wet, abuse;
   int finish_level; /* 0..5, default 4 */
 } room_side;
@@ -80,6 +81,8 @@ typedef struct brief {
   double ceiling_m[2];       /* 0 = none: boards to the deck */
   int corners, tees, free_ends, doors; /* for the takeoff of studs; -1 = not said */
   wall_top top;
+  double ceiling_class; /* attenuation class of the ceilings; 0 = not said */
+  bool ceiling_batts;   /* laid on the ceilings along the wall */
   wall_head head;
   board_layout boards;
   target targets[BRIEF_MAX_TARGETS];
@@ -113,6 +116,12 @@ typedef struct brief {
   const char *reports[16];
   int report_count;
 } brief;
+
+/* A target from which on a wall has to run to the deck: common practice, no source. */
+#define JOB_DECK_FROM 45.0
+/* Whether the brief asks what a wall that stops at the ceiling cannot be trusted with: a fire rating,
+ * or a target of JOB_DECK_FROM or more. It does not depend on the wall. */
+bool job_needs_deck(const brief *b);
 
 /* The defaults: 3.0 x 2.7 m, no target, ordinary build. */
 void job_defaults(brief *b);

@@ -5,6 +5,7 @@
 #define REPORT_REPORT_H
 
 #include "explain/explain.h"
+#include "explain/fastening.h"
 
 typedef struct report {
   arena *arena;
@@ -13,6 +14,8 @@ typedef struct report {
   const brief *brief;
   bool asked;         /* somebody gave this brief; false: the reference wall, nothing is asked */
   bool usual_prices;  /* neither brief nor options name the price book */
+  const fastening_choice *fastening; /* ways to carry heavy fixtures over a stretch of a side */
+  int fastening_count;
   units_system units; /* of text, CSV and pages; JSON is SI */
 } report;
 

@@ -4,7 +4,9 @@
 #include <math.h>
 
 #include "report/exclusions.h"
+#include "report/fixtures.h"
 #include "report/report_json.h"
+#include "report/setting.h"
 #include "report/view.h"
 #include "septum.h"
 
@@ -322,6 +324,7 @@ void report_json_rating_facts(markup_json *j, const report *r, const assessment 
   put_evidence(j, x);
   put_checks(j, r, x);
   put_other_sound(j, x);
+  setting_json(r, x, j);
   put_rules(j, r, x);
   put_cost(j, r, x);
   const char *caution[VIEW_MAX_CAUTIONS];
@@ -336,6 +339,7 @@ void report_rate_json(const report *r, const assessment *x, text *out) {
   markup_json_init(&j, out);
   markup_json_object(&j, NULL, false);
   put_rating(&j, r, x);
+  fixtures_json(r, &j);
   exclusions_json(r->brief, &j);
   markup_json_close(&j);
 }
@@ -441,6 +445,7 @@ void report_pick_json(const report *r, const explanation *e, const pick_choice *
   for (int i = 0; i < e->conflict_count; i++) report_json_rules(&j, r, NULL, e->conflicts[i]);
   markup_json_close(&j);
   report_json_others(&j, r, "nearest", e->nearest, e->nearest_count, true);
+  fixtures_json(r, &j);
   exclusions_json(r->brief, &j);
   markup_json_close(&j);
 }

@@ -24,6 +24,8 @@ static void put_size(markup_json *j, const brief *b) {
   put_length(j, "ceiling_a_m", b->ceiling_m[SIDE_A]);
   put_length(j, "ceiling_b_m", b->ceiling_m[SIDE_B]);
   markup_json_string(j, "top", job_top_words[b->top]);
+  if (b->ceiling_class > 0) markup_json_number(j, "ceiling_class", b->ceiling_class, DIGITS);
+  if (b->ceiling_batts) markup_json_bool(j, "ceiling_batts", true);
   markup_json_string(j, "head", job_head_words[b->head]);
   if (b->boards != BOARDS_LUMP) markup_json_string(j, "boards", job_boards_words[b->boards]);
   put_count(j, "corners", b->corners);
@@ -83,6 +85,7 @@ static void put_side(markup_json *j, const char *key, const room_side *s) {
   if (s->room != NULL && s->room[0] != '\0') markup_json_string(j, "room", s->room);
   markup_json_string(j, "fastening", job_fastening_words[s->fastening]);
   put_length(j, "fastening_length_m", s->fastening_length_m);
+  put_length(j, "room_depth_m", s->room_depth_m);
   markup_json_bool(j, "wet", s->wet);
   markup_json_bool(j, "abuse", s->abuse);
   markup_json_integer(j, "finish_level", s->finish_level);

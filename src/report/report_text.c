@@ -4,7 +4,9 @@
 #include <math.h>
 
 #include "report/exclusions.h"
+#include "report/fixtures.h"
 #include "report/page.h"
+#include "report/setting.h"
 #include "report/view.h"
 #include "septum.h"
 
@@ -123,6 +125,7 @@ static void put_sound(const report *r, const assessment *x, text *out) {
               text_format(r->arena, "With its openings: %s; no wall gets past STC %s with these.",
                           view_ratings(r, &x->composite),
                           text_of(r->arena, x->composite_ceiling, 1)));
+  setting_text(r, x, out);
   put_evidence(r, x, out);
 }
 
@@ -316,6 +319,7 @@ void report_unpriced_text(const report *r, text *out) {
 void report_rate_text(const report *r, const assessment *x, text *out) {
   if (r->asked && r->brief->title[0] != '\0') page_line(out, "Brief", r->brief->title);
   report_wall_text(r, x, out);
+  fixtures_text(r, out);
   page_line(out, "Made by", "septum " SEPTUM_VERSION);
 }
 

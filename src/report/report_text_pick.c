@@ -1,4 +1,5 @@
 /* `pick` for people: the wall, then why this one. */
+#include "report/fixtures.h"
 #include "report/page.h"
 #include "report/report_text.h"
 #include "report/view.h"
@@ -190,6 +191,7 @@ void report_pick_text(const report *r, const explanation *e, const pick_choice *
                   : "No wall found within the time limit; one may exist.");
     put_counts(r, e, proof, out);
     report_unpriced_text(r, out);
+    fixtures_text(r, out);
     put_infeasible(r, e, out);
     return;
   }
@@ -204,6 +206,7 @@ void report_pick_text(const report *r, const explanation *e, const pick_choice *
   text_char(out, '\n');
   report_others_text(r, "Next best", "Walls that keep every rule too", e->runners, e->runner_count,
                      false, out);
+  fixtures_text(r, out);
   report_others_text(r, "Cheaper but", "Cheaper walls, and what they fail", e->cheaper,
                      e->cheaper_count, true, out);
   report_rule_prices_text(r, e->prices, e->price_count, e->chosen->line, out);

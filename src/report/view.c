@@ -3,6 +3,8 @@
 #include <math.h>
 #include <string.h>
 
+#include "explain/ceiling.h"
+
 /* --- what it is ------------------------------------------------------------------------------ */
 
 static void add_part(view_parts *out, view_part part) {
@@ -293,12 +295,31 @@ static void add_caution(const char **caution, int *count, const char *words) {
   if (*count < VIEW_MAX_CAUTIONS) caution[(*count)++] = words;
 }
 
+static void add_ceiling(const report *r, const assessment *x, const char **caution, int *count) {
+  ceiling_path path = ceiling_path_of(r->brief);
+  if (!path.there) return;
+  const char *batts = r->brief->ceiling_batts ? ", batts laid on it included" : "";
+  const char *said = path.assumed ? ": mineral tile, assumed as the brief does not say" : "";
+  add_caution(caution, count,
+              text_format(r->arena,
+                          "The wall stops at the ceiling: with the path over it (ceiling "
+                          "attenuation class %s%s%s; common practice, no source) STC %d of the wall "
+                          "comes to about %s.",
+                          text_of(r->arena, path.class_all, 0), batts, said, x->ratings.stc,
+                          text_of(r->arena, ceiling_capped(&path, x->ratings.stc), 1)));
+  if (job_needs_deck(r->brief))
+    add_caution(caution, count,
+                "Fire-rated walls and walls for targets of 45 or more have to run to the deck: "
+                "this one stops at the ceiling.");
+}
+
 int view_cautions(const report *r, const assessment *x, const char *caution[VIEW_MAX_CAUTIONS]) {
   /* From these ratings on, what surrounds a wall decides (common practice, no source). */
   enum { CARE_FROM = 50, FLANKING_FROM = 60 };
   int count = 0;
   for (int i = 0; i < x->caution_count; i++)
     add_caution(caution, &count, as_sentence(r, x->caution[i]));
+  add_ceiling(r, x, caution, &count);
   int best = x->ratings.stc;
   for (int i = 0; i < r->brief->target_count; i++)
     if (r->brief->targets[i].value > best) best = (int)r->brief->targets[i].value;

@@ -4,6 +4,7 @@
 
 #include "base/file.h"
 #include "checks/cost.h"
+#include "explain/ceiling.h"
 #include "report/view.h"
 
 typedef struct field_list {
@@ -77,6 +78,11 @@ static void add_wall(field_list *l) {
     if (b->ceiling_m[s] > 0) add(l, ceilings[s], height(l, b->ceiling_m[s]), false);
   add(l, "Top of the wall", b->top == TOP_CEILING ? "at the ceiling" : "at the deck",
       b->top == l->usual.top);
+  if (b->top == TOP_CEILING) {
+    ceiling_path path = ceiling_path_of(b);
+    add(l, "Ceiling attenuation class", number(l, path.tile_class, 1), path.assumed);
+    add(l, "Batts on the ceiling", yes_no(b->ceiling_batts), !b->ceiling_batts);
+  }
   if (b->boards != BOARDS_LUMP)
     add(l, "Boards", b->boards == BOARDS_VERTICAL ? "upright" : "in lying courses", false);
   add_counts(l);
@@ -208,6 +214,8 @@ static void add_side(field_list *l, int s) {
     add(l, text_format(a, "%s: fastening over", of),
         side->fastening_length_m > 0 ? height(l, side->fastening_length_m) : "the whole side",
         side->fastening_length_m == 0);
+  if (side->room_depth_m > 0)
+    add(l, text_format(a, "%s: depth of the room", of), height(l, side->room_depth_m), false);
   add(l, text_format(a, "%s: wet", of), yes_no(side->wet), !side->wet);
   add(l, text_format(a, "%s: abuse", of), yes_no(side->abuse), !side->abuse);
   add(l, text_format(a, "%s: finish", of), text_format(a, "Level %d", side->finish_level),

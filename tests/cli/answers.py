@@ -175,7 +175,9 @@ def check_pick(path):
     if not data["price_of_rules"] or not data["break_even"]:
         say(where, "price_of_rules and break_even are always filled")
     same = rate(chosen["line"], "--brief", path)
-    if same is not None and {**same, "wall": None} != {**chosen, "wall": None}:
+    # What concerns the bid as a whole stands once: beside the chosen wall, within a rating.
+    of_bid = {key: data[key] for key in ("exclusions", "fastening_options") if key in data}
+    if same is not None and {**same, "wall": None} != {**chosen, **of_bid, "wall": None}:
         say(where, "rate of the chosen wall answers otherwise")
     least = chosen["cost"]["per_m2"]
     for other in data["cheaper_but"]:

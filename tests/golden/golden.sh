@@ -1,6 +1,6 @@
 # Shared by check_golden.sh and rewrite.sh: the briefs that have golden answers, the walls that have golden drawings, the pages, and
 # how they are made. Sets $briefs, $sections and $pages; `answer BRIEF EXTENSION`, `section NAME` and `page NAME` write to stdout.
-briefs="heavy-fastening one-hour thin-wall tall-wall impossible specified-party-wall ladder-one-hour plan-kestrel-yard"
+briefs="heavy-fastening one-hour thin-wall tall-wall impossible kitchen-stretch specified-party-wall ladder-one-hour plan-kestrel-yard"
 unset SEPTUM_DATA
 # A specified wall is trimmed under the brief whose name follows, a ladder climbed under it, a project planned; a
 # brief is picked for.
