@@ -461,7 +461,43 @@ static bool matches_any(const catalog *c, const char *kind, const char *pattern)
   return false;
 }
 
-static void check_pattern(reader *r, const json_value *v) {
+static void say_unknown(reader *r, const json_value *v, const char *pattern) {
+  const char *near = catalog_nearest(r->catalog, pattern);
+  diag_add(r->diags, DIAG_WARNING, ERROR_CATALOG_UNKNOWN_ID, json_place(r->arena, v),
+           "\"%s\" matches nothing in the catalogs%s%s%s", v->string,
+           near ? "; did you mean \"" : "", near ? near : "", near ? "\"?" : "");
+}
+
+enum { MEANINGS_SHOWN = 8 };
+
+static void say_ambiguous(reader *r, const json_value *v, const catalog_ref *found, size_t count) {
+  text t;
+  text_init(&t, r->arena, 1000);
+  for (size_t i = 0; i < count && i < MEANINGS_SHOWN; i++)
+    text_putf(&t, "%s%s", i ? ", " : "", catalog_id(r->catalog, found[i]));
+  diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_CHOICE, json_place(r->arena, v),
+           "\"%s\" may mean %s; name one, or use * and ? for several", v->string, t.data);
+}
+
+/* What people say for one record ("5/8X") becomes its id; a pattern stays one. */
+static const char *said_id(reader *r, const json_value *v, const char *kind, const char *word) {
+  catalog_ref found[MEANINGS_SHOWN], kept[MEANINGS_SHOWN];
+  bool open = strpbrk(word, "*?") != NULL;
+  size_t count = 0, all = open ? 0 : catalog_find(r->catalog, word, found, MEANINGS_SHOWN);
+  for (size_t i = 0; i < all && i < MEANINGS_SHOWN; i++)
+    if (!kind[0] || text_equal(kind, catalog_kind_names[found[i].kind])) kept[count++] = found[i];
+  if (count == 1)
+    return text_format(r->arena, "%s:%s", catalog_kind_names[kept[0].kind],
+                       catalog_id(r->catalog, kept[0]));
+  if (count > 1)
+    say_ambiguous(r, v, kept, count);
+  else
+    say_unknown(r, v, word);
+  return v->string;
+}
+
+/* The pattern as it is used from here on. */
+static const char *check_pattern(reader *r, const json_value *v) {
   static const char *const kinds[] = {"board", "frame", "mount", "fill"};
   const char *colon = strchr(v->string, ':');
   const char *kind = colon ? text_copyn(r->arena, v->string, (size_t)(colon - v->string)) : "";
@@ -471,13 +507,10 @@ static void check_pattern(reader *r, const json_value *v) {
   if (!known) {
     diag_add(r->diags, DIAG_ERROR, ERROR_FIELD_CHOICE, json_place(r->arena, v),
              "expected board:, frame:, mount: or fill: before the pattern; found \"%s:\"", kind);
-    return;
+    return v->string;
   }
-  if (!r->catalog || matches_any(r->catalog, kind, pattern)) return;
-  const char *near = catalog_nearest(r->catalog, pattern);
-  diag_add(r->diags, DIAG_WARNING, ERROR_CATALOG_UNKNOWN_ID, json_place(r->arena, v),
-           "\"%s\" matches nothing in the catalogs%s%s%s", v->string,
-           near ? "; did you mean \"" : "", near ? near : "", near ? "\"?" : "");
+  if (!r->catalog || matches_any(r->catalog, kind, pattern)) return v->string;
+  return said_id(r, v, kind, pattern);
 }
 
 static bool is_text(reader *r, const json_value *v) {
@@ -505,9 +538,10 @@ static int read_words(reader *r, const json_value *v, int max, const char **out)
 static int read_patterns(reader *r, const json_value *v, const char **out) {
   int count = read_words(r, v, BRIEF_MAX_PATTERNS, out);
   if (!v) return 0;
-  if (v->kind == JSON_STRING) check_pattern(r, v);
-  for (const json_value *x = v->first; x; x = x->next)
-    if (x->kind == JSON_STRING) check_pattern(r, x);
+  int at = 0;
+  if (v->kind == JSON_STRING && count > 0) out[at++] = check_pattern(r, v);
+  for (const json_value *x = v->first; x && at < count; x = x->next)
+    if (x->kind == JSON_STRING && x->string[0]) out[at++] = check_pattern(r, x);
   return count;
 }
 

@@ -251,6 +251,42 @@ START_TEST(patterns_are_checked_against_the_catalogs) {
 }
 END_TEST
 
+/* Words of the shipped catalogs that stand for one record become its id; patterns and ids stay. */
+START_TEST(spoken_words_name_records) {
+  const catalog *c = catalog_load(memory, &faults, TEST_ROOT "/catalogs");
+  ck_assert_ptr_nonnull(c);
+  ck_assert(read(c,
+                 "{\"septum\": \"brief/1\", \"target\": {\"value\": 50}, \"only\": [\"5/8X\", "
+                 "\"frame:2x4\", \"typex-16\", \"typex-*\"], \"without\": \"5/8 Type X\"}",
+                 true));
+  ck_assert_uint_eq(faults.count, 0);
+  ck_assert_int_eq(b.only_count, 4);
+  ck_assert_str_eq(b.only[0], "board:typex-16");
+  ck_assert_str_eq(b.only[1], "frame:wood-89");
+  ck_assert_str_eq(b.only[2], "typex-16");
+  ck_assert_str_eq(b.only[3], "typex-*");
+  ck_assert_int_eq(b.without_count, 1);
+  ck_assert_str_eq(b.without[0], "board:typex-16");
+}
+END_TEST
+
+START_TEST(an_ambiguous_word_lists_its_meanings) {
+  const catalog *c = catalog_load(memory, &faults, TEST_ROOT "/catalogs");
+  ck_assert_ptr_nonnull(c);
+  ck_assert(!read(c,
+                  "{\"septum\": \"brief/1\", \"target\": {\"value\": 50}, \"without\": "
+                  "[\"5/8\", \"board:2x4\"]}",
+                  true));
+  ck_assert_uint_eq(faults.count, 2);
+  ck_assert_uint_eq(faults.errors, 1);
+  ck_assert_str_eq(
+      faults.items[0].message,
+      "\"5/8\" may mean gyp-16, typex-16; name one, or use * and ? for several");
+  /* what the prefix names is no frame */
+  ck_assert_int_eq(faults.items[1].code, ERROR_CATALOG_UNKNOWN_ID);
+}
+END_TEST
+
 /* Every shipped brief reads without a message. */
 START_TEST(shipped_briefs_are_sound) {
   DIR *folder = opendir(TEST_ROOT "/docs/examples");
@@ -374,6 +410,8 @@ int main(void) {
   tcase_add_test(t, a_target_may_be_left_out_where_it_is_not_needed);
   tcase_add_test(t, every_kind_of_opening_has_a_rating_and_a_source);
   tcase_add_test(t, patterns_are_checked_against_the_catalogs);
+  tcase_add_test(t, spoken_words_name_records);
+  tcase_add_test(t, an_ambiguous_word_lists_its_meanings);
   tcase_add_test(t, shipped_briefs_are_sound);
   tcase_add_loop_test(t, the_reader_knows_the_keys_of_the_schema, 0, ROWS(object_rows));
   tcase_add_loop_test(t, the_schema_knows_the_keys_of_the_reader, 0, ROWS(object_rows));
