@@ -163,6 +163,14 @@ void ladder_explain(arena *a, const space *s, const rungs *r, const ladder_terms
 
 /* ---- single changes of the given wall ---- */
 
+const int ladder_gains[LADDER_GAINS] = {3, 5};
+
+/* They rise in rating and in cost: the first that gains enough is the cheapest. */
+bool ladder_least_for(const ladder_answer *l, int i, int gain) {
+  int wanted = l->terms.have_reaches + ladder_gains[gain];
+  return l->edit[i].reaches >= wanted && (i == 0 || l->edit[i - 1].reaches < wanted);
+}
+
 typedef struct editor {
   arena *arena;
   const judge_context *context;

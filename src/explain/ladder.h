@@ -10,6 +10,9 @@
 /* From this rating on, what surrounds a wall decides the field rating (common practice, no source).
  */
 enum { LADDER_FLANKING_FROM = 60, LADDER_MAX_EDITS = 16 };
+/* Small steps that people ask for: this many points more. */
+enum { LADDER_GAINS = 2 };
+extern const int ladder_gains[LADDER_GAINS];
 
 typedef struct ladder_terms {
   int climbs;             /* index of the brief's target whose value is varied */
@@ -68,5 +71,7 @@ void ladder_explain(arena *a, const space *s, const rungs *r, const ladder_terms
                     ladder_answer *out);
 /* Single changes of the given wall that keep what it keeps: see ladder_answer. */
 void ladder_edits(arena *a, const judge_context *x, ladder_answer *out);
+/* Whether edit `i` is the single change that gains at least ladder_gains[gain] at the least cost. */
+bool ladder_least_for(const ladder_answer *l, int i, int gain);
 
 #endif

@@ -104,6 +104,10 @@ static void put_edits(markup_json *j, const report *r, const ladder_answer *l) {
     put_changes(j, "changes", &e->change);
     markup_json_integer(j, "rating", e->reaches);
     markup_json_integer(j, "points", e->reaches - l->terms.have_reaches);
+    markup_json_array(j, "least_for", true);
+    for (int gain = 0; gain < LADDER_GAINS; gain++)
+      if (ladder_least_for(l, i, gain)) markup_json_integer(j, NULL, ladder_gains[gain]);
+    markup_json_close(j);
     put_money(j, e->wall, "extra_total", "extra_per_m2", "extra_per_ft2", e->extra_cents);
     put_sound(j, r, l, e->wall);
     put_figures(j, r, e->wall);

@@ -84,6 +84,16 @@ static void put_have(const report *r, const ladder_answer *l, text *out) {
   }
 }
 
+/* ", the least for +3 and +5" */
+static const char *least_words(const report *r, const ladder_answer *l, int i) {
+  text t;
+  text_init(&t, r->arena, 200);
+  for (int gain = 0; gain < LADDER_GAINS; gain++)
+    if (ladder_least_for(l, i, gain))
+      text_putf(&t, "%s +%d", t.len ? " and" : ", the least for", ladder_gains[gain]);
+  return t.data;
+}
+
 static void put_edits(const report *r, const ladder_answer *l, text *out) {
   if (!l->terms.have || l->edit_count == 0) return;
   text_char(out, '\n');
@@ -93,8 +103,9 @@ static void put_edits(const report *r, const ladder_answer *l, text *out) {
     const ladder_edit *e = &l->edit[i];
     page_label(out, "");
     page_words(out, PAGE_LABEL + 2,
-               text_format(r->arena, "%s %d (+%d): %s: %s", view_ladder_metric(r, l), e->reaches,
-                           e->reaches - l->terms.have_reaches, changes_words(r->arena, &e->change),
+               text_format(r->arena, "%s %d (+%d%s): %s: %s", view_ladder_metric(r, l),
+                           e->reaches, e->reaches - l->terms.have_reaches, least_words(r, l, i),
+                           changes_words(r->arena, &e->change),
                            money_words(r, e->wall, e->extra_cents)));
     text_pad(out, PAGE_LABEL + 2);
     page_words(out, PAGE_LABEL + 2, e->wall->line);

@@ -180,6 +180,11 @@ def check_have(name):
             say(name, "a change costs otherwise: %s" % change["changes"])
         if len(change["changes"]) != 1 or change["points"] != change["rating"] - have["rating"]:
             say(name, "not one change: %s" % change["changes"])
+    for gain in (3, 5):
+        enough = [c for c in have["single_changes"] if c["points"] >= gain]
+        least = min(enough, key=lambda c: c["extra_total"]) if enough else None
+        if [c for c in have["single_changes"] if gain in c["least_for"]] != ([least] if least else []):
+            say(name, "not the least for %d points more" % gain)
     for rung in data["rungs"]:
         if rung["rating"] <= have["rating"] or abs(total[rung["line"]] - total[GIVEN] - rung["from_have"]["extra_total"]) > 0.001:
             say(name, "from the given wall to %d" % rung["rating"])

@@ -224,6 +224,21 @@ START_TEST(from_a_given_wall) {
 }
 END_TEST
 
+/* Changes of a wall that reaches 36, rising in cost: the first that gains 3, and 5, is the least. */
+static const struct {
+  int reaches[3], least_for_3, least_for_5; /* -1: none gains as much */
+} gains[] = {{{38, 39, 44}, 1, 2}, {{41, 45, 50}, 0, 0}, {{37, 38, 40}, 2, -1}, {{37, 38, 38}, -1, -1}};
+
+START_TEST(small_steps_at_least_cost) {
+  ladder_answer l = {.terms.have_reaches = 36, .edit_count = 3};
+  for (int i = 0; i < 3; i++) l.edit[i].reaches = gains[_i].reaches[i];
+  for (int i = 0; i < 3; i++) {
+    ck_assert_int_eq(ladder_least_for(&l, i, 0), i == gains[_i].least_for_3);
+    ck_assert_int_eq(ladder_least_for(&l, i, 1), i == gains[_i].least_for_5);
+  }
+}
+END_TEST
+
 int main(void) {
   Suite *s = suite_create("explain_ladder");
   TCase *t = tcase_create("ladder");
@@ -236,6 +251,7 @@ int main(void) {
   tcase_add_loop_test(t, a_range_cuts_the_same_ladder, 0, share_of(LADDER_BRIEFS));
   tcase_add_loop_test(t, worth_taking_are_the_corners_of_the_lower_hull, 0, HULLS);
   tcase_add_test(t, the_target_that_climbs);
+  tcase_add_loop_test(t, small_steps_at_least_cost, 0, sizeof gains / sizeof gains[0]);
   tcase_add_loop_test(t, from_a_given_wall, 0, share_of(HAVE_BRIEFS));
   suite_add_tcase(s, t);
   SRunner *r = srunner_create(s);
