@@ -69,7 +69,8 @@ int explain_cheaper(arena *a, const space *s, const sweep_result *r, long long b
 int explain_conflicts(arena *a, const rule_mask *broken, int count, rule_mask **out);
 /* One entry a rule in force but the target and prices (of `only`, what it leaves of the frames); of
  * the greatest thickness one more for each step at which a thicker wall costs less. The dearest
- * first, then in the order of the rules. Of `chosen` only the cost is read. */
+ * first, then in the order of the rules, those without a price last. Of `chosen` only the cost is
+ * read. */
 void explain_prices(arena *a, const space *s, const sweep_result *r, const candidate *chosen,
                     explanation *out);
 /* One entry an item and a labour rate of the chosen wall. */

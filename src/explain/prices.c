@@ -282,12 +282,18 @@ static void step_thickness(arena *a, const space *s, const sweep_result *r, cons
 
 /* ---- the whole ---- */
 
+/* What has no price, since no wall is there even without the rule, comes last. */
+static bool dearer(const explain_rule_price *x, const explain_rule_price *y) {
+  if (x->reachable != y->reachable) return x->reachable;
+  return x->price_total > y->price_total;
+}
+
 /* Entries stand in the order of the rules before; equals keep it. */
 static void sort_dearest_first(explanation *out) {
   for (int i = 1; i < out->price_count; i++) {
     explain_rule_price p = out->prices[i];
     int at = i;
-    for (; at > 0 && out->prices[at - 1].price_total < p.price_total; at--)
+    for (; at > 0 && dearer(&p, &out->prices[at - 1]); at--)
       out->prices[at] = out->prices[at - 1];
     out->prices[at] = p;
   }

@@ -263,7 +263,8 @@ def check_trim(path, wall, *more):
         for other in data["alternatives"]:
             if other is not entry and all(x >= y for x, y in zip(figures(other), figures(entry))):
                 say(where, "%s is beaten by %s" % (entry["line"], other["line"]))
-    prices = [p["price_total"] for p in data["price_of_rules"]]
+    # A rule that not even its own absence helps has no price and stands last.
+    prices = [-1 if p["price_total"] is None else p["price_total"] for p in data["price_of_rules"]]
     if prices != sorted(prices, reverse=True):
         say(where, "prices of rules are not sorted")
     check_trim_text(where, run(*words)[1], data)
