@@ -32,7 +32,20 @@ static const char *length(const report *r, double metres) {
   return t.data;
 }
 
-static const char *figures(const report *r, const fastening_choice *c, const fastening_option *o) {
+const char *fixtures_way(int way) {
+  return way_words[way];
+}
+
+const char *fixtures_furring(void) {
+  return furring_note;
+}
+
+const char *fixtures_intro(const report *r, const fastening_choice *c) {
+  return text_format(r->arena, "Side %s carries heavy fixtures over %s of %s. Ways to build it:",
+                     sides[c->side], length(r, c->stretch_m), length(r, r->brief->length_m));
+}
+
+const char *fixtures_figures(const report *r, const fastening_choice *c, const fastening_option *o) {
   text t;
   text_init(&t, r->arena, 1000);
   if (o->costed) {
@@ -75,15 +88,13 @@ static void put_way(const report *r, const fastening_choice *c, int way, text *o
   put_item(out, text_format(r->arena, "%s:", way_words[way]));
   put_more(out, o->wall->line);
   if (o->stretch) put_more(out, text_format(r->arena, "over the stretch %s", o->stretch->line));
-  put_more(out, figures(r, c, o));
+  put_more(out, fixtures_figures(r, c, o));
 }
 
 void fixtures_text(const report *r, text *out) {
   for (int i = 0; i < r->fastening_count; i++) {
     const fastening_choice *c = &r->fastening[i];
-    page_line(out, "Fastening",
-              text_format(r->arena, "Side %s carries heavy fixtures over %s of %s. Ways to build it:",
-                          sides[c->side], length(r, c->stretch_m), length(r, r->brief->length_m)));
+    page_line(out, "Fastening", fixtures_intro(r, c));
     for (int way = 0; way < FASTENING_WAYS; way++) put_way(r, c, way, out);
     put_item(out, furring_note);
   }

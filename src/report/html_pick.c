@@ -93,6 +93,7 @@ static void put_chosen(html *h, const explanation *e, const cloud *c) {
   html_wall_parts(h, x);
   html_wall_sound(h, x);
   html_wall_checks(h, x);
+  html_fixtures(h);
   html_wall_cost(h, x);
   put_cloud(h, e, c);
   put_others(h, e);

@@ -25,6 +25,7 @@ void report_rate_html(const report *r, const assessment *x, text *out) {
   html_wall_parts(h, x);
   html_wall_sound(h, x);
   html_wall_checks(h, x);
+  html_fixtures(h);
   html_wall_cost(h, x);
   html_wall_takeoff(h, x);
   html_brief(h, CATALOG_NONE);

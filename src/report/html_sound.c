@@ -2,6 +2,7 @@
 #include "report/html_wall.h"
 
 #include "report/chart_sound.h"
+#include "report/setting.h"
 #include "report/view.h"
 
 static const char *decimal(html *h, double value, int decimals) {
@@ -199,7 +200,12 @@ void html_sound_parts(html *h, const assessment *x) {
 }
 
 void html_wall_sound(html *h, const assessment *x) {
+  const char *there = setting_words(h->report, x);
   html_section(h, "Sound");
   html_sound_parts(h, x);
+  if (there) {
+    html_heading(h, "In the building");
+    html_paragraph(h, there);
+  }
   html_section_end(h);
 }

@@ -56,6 +56,8 @@ const char *html_mass(html *h, double kg_m2);
 /* `climbs` as in view_brief_of. */
 void html_brief(html *h, int climbs);
 void html_cautions(html *h, const char *const *caution, int count);
+/* Ways to carry heavy fixtures over a stretch, as a section; nothing where the brief names none. */
+void html_fixtures(html *h);
 /* What the price does not hold under a brief, as a section. */
 void html_exclusions(html *h, const brief *b);
 void html_wall_cautions(html *h, const assessment *x);

@@ -18,9 +18,9 @@ static const char *received(const report *r, const room_rating *f, int side) {
                      depth.data);
 }
 
-void setting_text(const report *r, const assessment *x, text *out) {
+const char *setting_words(const report *r, const assessment *x) {
   room_rating f = rooms_rating(r->brief, x);
-  if (!f.there) return;
+  if (!f.there) return NULL;
   text t;
   text_init(&t, r->arena, 2000);
   text_putf(&t, "In the building about ASTC %s", text_of(r->arena, f.astc, SETTING_DIGITS));
@@ -30,7 +30,12 @@ void setting_text(const report *r, const assessment *x, text *out) {
             text_of(r->arena, r->brief->field_mean, SETTING_DIGITS));
   if (f.has_nnic[SIDE_A] || f.has_nnic[SIDE_B]) text_putf(&t, "; %s", assumption);
   text_put(&t, ").");
-  page_line(out, "", t.data);
+  return t.data;
+}
+
+void setting_text(const report *r, const assessment *x, text *out) {
+  const char *words = setting_words(r, x);
+  if (words) page_line(out, "", words);
 }
 
 static void put_field(const report *r, const assessment *x, markup_json *j) {
