@@ -56,7 +56,7 @@ void sheets_plan_buy(const report *r, const plan_answer *p, sheet_book *out) {
                                   [BUY_AMOUNT] = {sheets_money_head(r, "Amount"), 14, SHEET_MONEY},
                                   {"Note", 34, SHEET_WRAP}};
   buy_plan list;
-  sheet *s = sheet_book_add(out, "Buy list");
+  sheet *s = sheet_book_add(out, "Takeoff");
   sheet_table(s, 0, columns, SHEETS_COUNT(columns));
   buy_plan_of(r, p, &list);
   for (int i = 0; i < list.count; i++) put_buy_line(r, &list.line[i], s);

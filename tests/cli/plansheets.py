@@ -111,7 +111,7 @@ def check_lists(where, book, data, units):
         same(where, s["section"] + " labour", row["Labour, USD"], s["labour"])
     same(where, "markup", rows[-2]["Both, USD"], data["markup"])
     same(where, "walls and goods", rows[-1]["Both, USD"], data["parts"]["walls"] + data["parts"]["goods"])
-    rows = book.rows("Buy list")
+    rows = book.rows("Takeoff")
     for row, b in zip(rows, data["buy"]):
         at = "%s, %s" % (where, b["item"])
         same(at, "item", row["Item"], b["item"])
@@ -171,7 +171,7 @@ def check(where, words, us, folder, twice):
     data, book = json.loads(out), check_book(path, lambda words: say(where, words))
     facts = book.facts()
     names = ["Summary", "Schedule", "Types", "Classes", "How many types", "Rules"]
-    names += ["Buy list", "By storey", "By section"] if data["cost_total"] is not None else []
+    names += ["Takeoff", "By storey", "By section"] if data["cost_total"] is not None else []
     same(where, "sheets", book.names, names + (["Drawings"] if data["drawings"] else []))
     same(where, "project", facts.get("Project"), data["title"])
     same(where, "types", facts["Types"], len(data["types"]))
