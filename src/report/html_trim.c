@@ -335,6 +335,7 @@ static void put_cautions(html *h, const trim_answer *t) {
   caution[count++] = "A change of a specified wall needs the acceptance of the owner and the "
                      "designer.";
   html_cautions(h, caution, count);
+  html_exclusions(h, h->report->brief);
 }
 
 void report_trim_html(const report *r, const trim_answer *t, text *out) {
