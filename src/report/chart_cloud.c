@@ -179,21 +179,10 @@ static void draw_edge(picture *p) {
   const cloud *c = p->cloud;
   svg *s = &p->plane.chart.svg;
   if (c->edge_count == 0) return;
-  double x = x_of(p, asked_rating(p->report)), y = 0;
+  chart_stair stair = {.x = x_of(p, asked_rating(p->report))};
   svg_path(s, "c-step");
-  for (int i = 0; i < c->edge_count; i++) {
-    double next_x = x_of(p, c->edge[i].rating), next_y = y_of(p, c->edge[i].cost_cents);
-    if (i == 0)
-      svg_move(s, x, next_y);
-    else {
-      svg_to(s, x, next_y);
-      chart_take_line(&p->plane.chart, x, y, x, next_y);
-    }
-    svg_to(s, next_x, next_y);
-    chart_take_line(&p->plane.chart, x, next_y, next_x, next_y);
-    x = next_x;
-    y = next_y;
-  }
+  for (int i = 0; i < c->edge_count; i++)
+    chart_plane_step(&p->plane, &stair, x_of(p, c->edge[i].rating), y_of(p, c->edge[i].cost_cents));
   svg_path_end(s);
 }
 

@@ -107,22 +107,11 @@ static void draw_steps(picture *p) {
   const ladder_answer *l = p->ladder;
   svg *s = &p->plane.chart.svg;
   if (l->count == 0) return;
-  double x = chart_plane_x(&p->plane, first_from(l) - 1), y = 0;
+  chart_stair stair = {.x = chart_plane_x(&p->plane, first_from(l) - 1)};
   svg_path(s, "c-step");
-  for (int i = 0; i < l->count; i++) {
-    double next_x = chart_plane_x(&p->plane, l->rung[i].rating);
-    double next_y = chart_plane_y(&p->plane, rung_cost(p->report, &l->rung[i]));
-    if (i == 0)
-      svg_move(s, x, next_y);
-    else {
-      svg_to(s, x, next_y);
-      chart_take_line(&p->plane.chart, x, y, x, next_y);
-    }
-    svg_to(s, next_x, next_y);
-    chart_take_line(&p->plane.chart, x, next_y, next_x, next_y);
-    x = next_x;
-    y = next_y;
-  }
+  for (int i = 0; i < l->count; i++)
+    chart_plane_step(&p->plane, &stair, chart_plane_x(&p->plane, l->rung[i].rating),
+                     chart_plane_y(&p->plane, rung_cost(p->report, &l->rung[i])));
   svg_path_end(s);
 }
 

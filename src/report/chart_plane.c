@@ -101,3 +101,16 @@ void chart_plane_level(chart_plane *p, double money, const char *words) {
   if (!put_if_free(&p->chart, left + gap, y - gap, SVG_START, words))
     put_if_free(&p->chart, right - gap, y + size + 2, SVG_END, words);
 }
+
+void chart_plane_step(chart_plane *p, chart_stair *t, double x, double y) {
+  svg *s = &p->chart.svg;
+  if (!t->begun)
+    svg_move(s, t->x, y);
+  else {
+    svg_to(s, t->x, y);
+    chart_take_line(&p->chart, t->x, t->y, t->x, y);
+  }
+  svg_to(s, x, y);
+  chart_take_line(&p->chart, t->x, y, x, y);
+  *t = (chart_stair){x, y, true};
+}

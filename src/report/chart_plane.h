@@ -41,4 +41,13 @@ double chart_plane_y(const chart_plane *p, double currency);
 void chart_plane_upright(chart_plane *p, double x, const char *words);
 void chart_plane_level(chart_plane *p, double money, const char *words);
 
+/* A line in steps, in an open path: what holds up to a value costs what the point there does. Starts
+ * with the place that the first step comes from. */
+typedef struct chart_stair {
+  double x, y; /* in the picture */
+  bool begun;
+} chart_stair;
+/* The next step, level to `x` at `y` of the picture. */
+void chart_plane_step(chart_plane *p, chart_stair *t, double x, double y);
+
 #endif

@@ -215,7 +215,7 @@ static void put_checks(markup_json *j, const report *r, const assessment *x) {
   markup_json_close(j);
 }
 
-static void put_broken(markup_json *j, const report *r, const char *key, const assessment *x) {
+void report_json_broken(markup_json *j, const report *r, const char *key, const assessment *x) {
   markup_json_array(j, key, false);
   for (int i = 0; i < x->broken_count; i++) {
     const broken_rule *b = &x->broke[i];
@@ -238,7 +238,7 @@ void report_json_rules(markup_json *j, const report *r, const char *key, rule_ma
 static void put_rules(markup_json *j, const report *r, const assessment *x) {
   markup_json_object(j, "rules", false);
   report_json_rules(j, r, "in_force", rules_in_force(r->brief));
-  put_broken(j, r, "broken", x);
+  report_json_broken(j, r, "broken", x);
   markup_json_close(j);
 }
 
@@ -359,7 +359,7 @@ static void put_other(markup_json *j, const report *r, const assessment *x, bool
   markup_json_string(j, "evidence", x->evidence.match != NULL ? "published" : "predicted");
   markup_json_number(j, "thickness_mm", x->thickness_m * 1e3, MM_DIGITS);
   markup_json_number(j, "mass_kg_m2", x->mass_kg_m2, MASS_DIGITS);
-  if (fails) put_broken(j, r, "fails", x);
+  if (fails) report_json_broken(j, r, "fails", x);
   markup_json_close(j);
 }
 

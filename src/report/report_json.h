@@ -16,6 +16,8 @@ void report_json_ratings(markup_json *j, const char *key, const ratings *v);
 /* Walls to compare with; `fails`: with the rules that they break. */
 void report_json_others(markup_json *j, const report *r, const char *key, assessment *const *x,
                         int count, bool fails);
+/* The rules that a wall breaks: {"rule", "limit", "found"} each. */
+void report_json_broken(markup_json *j, const report *r, const char *key, const assessment *x);
 /* The names of rules. */
 void report_json_rules(markup_json *j, const report *r, const char *key, rule_mask mask);
 /* "unpriced": codes that the price book lacks */

@@ -126,16 +126,7 @@ static void put_have(markup_json *j, const report *r, const ladder_answer *l) {
   put_value(j, "rating", l->terms.have_reaches);
   put_sound(j, r, l, x);
   put_figures(j, r, x);
-  markup_json_array(j, "broken", false);
-  for (int i = 0; i < x->broken_count; i++) {
-    const broken_rule *b = &x->broke[i];
-    markup_json_object(j, NULL, true);
-    markup_json_string(j, "rule", rule_name(r->arena, r->brief, b->rule));
-    markup_json_string(j, "limit", b->limit);
-    markup_json_string(j, "found", b->found);
-    markup_json_close(j);
-  }
-  markup_json_close(j);
+  report_json_broken(j, r, "broken", x);
   put_edits(j, r, l);
   put_cautions(j, r, l, l->terms.have_reaches, x);
   markup_json_close(j);

@@ -92,7 +92,7 @@ static void put_without(markup_json *j, const plan_answer *p, const plan_used *u
     return;
   }
   markup_json_object(j, "without", true);
-  markup_json_string(j, "status", view_plan_status(w->status));
+  markup_json_string(j, "status", view_solver_status(w->status));
   put_cents_or_null(j, "cost_total", w->found, w->cost_cents);
   put_cents_or_null(j, "costs_more", w->found, w->cost_cents - p->cost_cents);
   markup_json_integer(j, "types", w->types);
@@ -236,7 +236,7 @@ static void put_curve(markup_json *j, const report *r, const plan_answer *p) {
     bool both = i > 0 && at->found && point[i - 1].found;
     markup_json_object(j, NULL, true);
     markup_json_integer(j, "max_types", at->max_types);
-    markup_json_string(j, "status", view_plan_status(at->status));
+    markup_json_string(j, "status", view_solver_status(at->status));
     put_cents_or_null(j, "cost_total", at->found, at->cost_cents);
     put_cents_or_null(j, "saves", both, both ? point[i - 1].cost_cents - at->cost_cents : 0);
     markup_json_integer(j, "types", at->types);
@@ -259,7 +259,7 @@ static void put_rules(markup_json *j, const report *r, const plan_answer *p) {
     markup_json_object(j, NULL, true);
     markup_json_string(j, "rule", plan_rule_names[i]);
     markup_json_string(j, "from", view_plan_rule(r, p, (plan_rule)i));
-    markup_json_string(j, "status", view_plan_status(at->status));
+    markup_json_string(j, "status", view_solver_status(at->status));
     put_cents_or_null(j, "cost_total", at->found, at->cost_cents);
     put_cents_or_null(j, "price_total", at->found && p->found, p->cost_cents - at->cost_cents);
     markup_json_integer(j, "types", at->types);
@@ -421,7 +421,7 @@ static void put_head(markup_json *j, const report *r, const plan_answer *p) {
   markup_json_string(j, "septum", "plan/1");
   markup_json_string(j, "version", SEPTUM_VERSION);
   markup_json_string(j, "title", p->project->title);
-  markup_json_string(j, "status", view_plan_status(p->status));
+  markup_json_string(j, "status", view_solver_status(p->status));
   markup_json_string(j, "objective", p->project->aim == AIM_MARGIN ? "margin" : "cost");
   put_cents_or_null(j, "cost_total", p->found, p->cost_cents);
   put_bound(j, p);

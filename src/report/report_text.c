@@ -336,3 +336,18 @@ void report_check_text(const checked_file *files, size_t count, text *out) {
     text_char(out, '\n');
   }
 }
+
+void report_conflicts_text(const report *r, const explanation *e, text *out) {
+  for (int i = 0; i < e->conflict_count; i++) {
+    text t;
+    int rules = 0;
+    text_init(&t, r->arena, 2000);
+    for (int k = 0; k < RULES_MAX; k++)
+      if ((e->conflicts[i] >> k) & 1u)
+        text_putf(&t, "%s%s", rules++ ? " and " : "", rule_name(r->arena, r->brief, k));
+    text_put(&t, rules > 1 ? " cannot be had together." : " cannot be had at all.");
+    page_line(out, i == 0 ? "In the way" : "", t.data);
+  }
+  report_others_text(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count,
+                     true, out);
+}

@@ -197,21 +197,6 @@ static void put_reach(const report *r, const ladder_answer *l, text *out) {
   page_line(out, "", n.data);
 }
 
-static void put_none(const report *r, const explanation *e, text *out) {
-  for (int i = 0; i < e->conflict_count; i++) {
-    text t;
-    int rules = 0;
-    text_init(&t, r->arena, 2000);
-    for (int k = 0; k < RULES_MAX; k++)
-      if ((e->conflicts[i] >> k) & 1u)
-        text_putf(&t, "%s%s", rules++ ? " and " : "", rule_name(r->arena, r->brief, k));
-    text_put(&t, rules > 1 ? " cannot be had together." : " cannot be had at all.");
-    page_line(out, i == 0 ? "In the way" : "", t.data);
-  }
-  report_others_text(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count,
-                     true, out);
-}
-
 static void put_legend(const report *r, text *out) {
   page_line(out, "*",
             "Worth taking: between two starred rungs no rung in between gives its points as "
@@ -239,7 +224,7 @@ void report_ladder_text(const report *r, const ladder_answer *l, text *out) {
   put_reach(r, l, out);
   report_unpriced_text(r, out);
   put_have(r, l, out);
-  if (l->why) put_none(r, l->why, out);
+  if (l->why) report_conflicts_text(r, l->why, out);
   if (l->count > 0) {
     text_char(out, '\n');
     put_head(r, l, out);

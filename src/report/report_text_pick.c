@@ -166,22 +166,6 @@ static void put_counts(const report *r, const explanation *e, const pick_choice 
   page_line(out, "", t.data);
 }
 
-static void put_infeasible(const report *r, const explanation *e, text *out) {
-  for (int i = 0; i < e->conflict_count; i++) {
-    text t;
-    int rules = 0;
-    text_init(&t, r->arena, 2000);
-    for (int k = 0; k < RULES_MAX; k++)
-      if ((e->conflicts[i] >> k) & 1u)
-        text_putf(&t, "%s%s", rules++ ? " and " : "", rule_name(r->arena, r->brief, k));
-    text_put(&t, rules > 1 ? " cannot be had together." : " cannot be had at all.");
-    page_line(out, i == 0 ? "In the way" : "", t.data);
-  }
-  report_others_text(r, "Near misses", "Walls that come nearest", e->nearest, e->nearest_count,
-                     true, out);
-  page_line(out, "Made by", "septum " SEPTUM_VERSION);
-}
-
 void report_pick_text(const report *r, const explanation *e, const pick_choice *proof, text *out) {
   if (r->brief->title[0] != '\0') page_line(out, "Brief", r->brief->title);
   if (e->chosen == NULL) {
@@ -192,7 +176,8 @@ void report_pick_text(const report *r, const explanation *e, const pick_choice *
     put_counts(r, e, proof, out);
     report_unpriced_text(r, out);
     fixtures_text(r, out);
-    put_infeasible(r, e, out);
+    report_conflicts_text(r, e, out);
+    page_line(out, "Made by", "septum " SEPTUM_VERSION);
     return;
   }
   page_line(out, "Answer",

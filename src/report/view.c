@@ -259,8 +259,8 @@ const char *view_code(const report *r) {
   return "none";
 }
 
-const char *view_status(const explanation *e) {
-  switch (e->status) {
+const char *view_solver_status(solver_status s) {
+  switch (s) {
   case SOLVER_OPTIMAL:
     return "optimal";
   case SOLVER_INFEASIBLE:
@@ -270,6 +270,10 @@ const char *view_status(const explanation *e) {
     break; /* the API answers a failure itself */
   }
   return "limit";
+}
+
+const char *view_status(const explanation *e) {
+  return view_solver_status(e->status);
 }
 
 const char *view_clause(const report *r, const char *sentence) {

@@ -79,6 +79,7 @@ const char *view_fire_rests_on(const report *r, const assessment *x);
  * the shelf, as far as the price book says). */
 double view_lead_weeks(const report *r, const assessment *x, const char **item);
 /* "optimal", "infeasible", "limit": what the solver proved. */
+const char *view_solver_status(solver_status s);
 const char *view_status(const explanation *e);
 /* "ibc" */
 const char *view_code(const report *r);

@@ -7,19 +7,6 @@
 
 enum { WORDS_MAX = 64 << 10 };
 
-const char *view_plan_status(solver_status s) {
-  switch (s) {
-  case SOLVER_OPTIMAL:
-    return "optimal";
-  case SOLVER_INFEASIBLE:
-    return "infeasible";
-  case SOLVER_LIMIT:
-  case SOLVER_FAILED:
-    break; /* the API answers a failure itself */
-  }
-  return "limit";
-}
-
 const char *view_plan_class(const report *r, int of_class) {
   return text_format(r->arena, "C%d", of_class + 1);
 }

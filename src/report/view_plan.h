@@ -5,8 +5,6 @@
 #include "explain/plan.h"
 #include "report/view.h"
 
-/* "optimal", "infeasible", "limit": what the solver proved. */
-const char *view_plan_status(solver_status s);
 /* "C3": how answers name a class of walls. */
 const char *view_plan_class(const report *r, int of_class);
 /* The report of one class: its brief is the class's demand. */
